@@ -1,0 +1,9 @@
+/** What a caller may lend the engine, which has no clock and no channel of its own. */
+export interface AnalyseOptions {
+  /** Called between stages, with the share of the whole work that is done (0 to 1). */
+  onProgress?(stage: string, fraction: number): void;
+  /** Asked between stages; true ends the run with UnusableInput code `stopped`. */
+  shouldStop?(): boolean;
+  /** Milliseconds; lent only to fill `timings`. */
+  now?(): number;
+}

@@ -1,0 +1,29 @@
+/** Why an input cannot be used at all (exit code 2 of the command line). */
+export type UnusableCode =
+  | 'empty'
+  | 'truncated'
+  | 'no_triangles'
+  | 'count_mismatch'
+  | 'non_finite'
+  | 'out_of_range'
+  | 'not_a_mesh'
+  | 'unsupported'
+  | 'too_large_file'
+  | 'invalid_recipe'
+  | 'stopped';
+
+/**
+ * Thrown for input that no report can be made of. `message` is one line: what, where, what to do;
+ * `reasons` holds the single facts behind it.
+ */
+export class UnusableInput extends Error {
+  readonly code: UnusableCode;
+  readonly reasons: string[];
+
+  constructor(code: UnusableCode, message: string, reasons: string[] = []) {
+    super(message);
+    this.name = 'UnusableInput';
+    this.code = code;
+    this.reasons = reasons;
+  }
+}
