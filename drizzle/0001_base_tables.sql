@@ -743,6 +743,7 @@ CREATE POLICY "idempotency_keys_tenant" ON "idempotency_keys" AS PERMISSIVE FOR 
 CREATE POLICY "outbox_relay" ON "outbox" AS PERMISSIVE FOR ALL TO "firstpull_relay" USING (true) WITH CHECK (true);--> statement-breakpoint
 CREATE POLICY "outbox_tenant" ON "outbox" AS PERMISSIVE FOR ALL TO "firstpull_app" USING ("workspace_id" = any((select app_workspaces())::uuid[])) WITH CHECK ("workspace_id" = any((select app_workspaces())::uuid[]));--> statement-breakpoint
 CREATE POLICY "outbox_studio_tenant" ON "outbox" AS PERMISSIVE FOR ALL TO "firstpull_app" USING ("studio_id" = any((select app_studios())::uuid[])) WITH CHECK ("studio_id" = any((select app_studios())::uuid[]));--> statement-breakpoint
+CREATE POLICY "outbox_identity" ON "outbox" AS PERMISSIVE FOR INSERT TO "firstpull_auth" WITH CHECK (workspace_id is null and studio_id is null and kind = 'mail');--> statement-breakpoint
 CREATE POLICY "studio_entries_tenant" ON "studio_entries" AS PERMISSIVE FOR ALL TO "firstpull_app" USING ("studio_id" = any((select app_studios())::uuid[])) WITH CHECK ("studio_id" = any((select app_studios())::uuid[]));--> statement-breakpoint
 CREATE POLICY "gate_plans_tenant" ON "gate_plans" AS PERMISSIVE FOR ALL TO "firstpull_app" USING ("workspace_id" = any((select app_workspaces())::uuid[])) WITH CHECK ("workspace_id" = any((select app_workspaces())::uuid[]));--> statement-breakpoint
 CREATE POLICY "invitations_auth" ON "invitations" AS PERMISSIVE FOR ALL TO "firstpull_auth" USING (true) WITH CHECK (true);--> statement-breakpoint

@@ -207,7 +207,7 @@ grant delete on machines, printers, sheets, filaments to firstpull_app;
 grant select, insert on gate_plans, meshes, recipes, reports, derivatives, findings, waivers, signatures, locks,
   releases, packs, notes, audit_entries, studio_entries, idempotency_keys to firstpull_app;
 --> statement-breakpoint
-grant insert on outbox to firstpull_app;
+grant insert on outbox to firstpull_app, firstpull_auth;
 --> statement-breakpoint
 grant select, insert on revisions to firstpull_app;
 --> statement-breakpoint

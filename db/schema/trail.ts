@@ -1,6 +1,7 @@
-import { index, integer, jsonb, pgTable, primaryKey, text, unique, uuid } from 'drizzle-orm/pg-core';
+import { index, integer, jsonb, pgPolicy, pgTable, primaryKey, text, unique, uuid } from 'drizzle-orm/pg-core';
 import { createdAt, id, instant, printedName, studioId, workspaceId } from '../columns';
-import { relayPolicy, studioPolicy, workspacePolicy } from '../policies';
+import { sql } from 'drizzle-orm';
+import { authRole, relayPolicy, studioPolicy, workspacePolicy } from '../policies';
 import { studios, workspaces } from './workspaces';
 import { users } from './identity';
 
@@ -75,6 +76,12 @@ export const outbox = pgTable(
     relayPolicy('outbox'),
     workspacePolicy('outbox'),
     studioPolicy('outbox_studio'),
+    // Mails of identity (verify an address, reset a password) belong to no tenant.
+    pgPolicy('outbox_identity', {
+      for: 'insert',
+      to: authRole,
+      withCheck: sql`workspace_id is null and studio_id is null and kind = 'mail'`,
+    }),
   ],
 );
 

@@ -1,0 +1,35 @@
+import { sql, type ExtractTablesWithRelations } from 'drizzle-orm';
+import type { NodePgQueryResultHKT } from 'drizzle-orm/node-postgres';
+import type { PgTransaction } from 'drizzle-orm/pg-core';
+import { appDatabase } from './client';
+import type { Scope } from './scope';
+
+declare const tenanted: unique symbol;
+type EmptySchema = Record<string, never>;
+
+/** The only handle that a data file accepts: a transaction whose row policies know what it may see. */
+export type TenantTx = PgTransaction<NodePgQueryResultHKT, EmptySchema, ExtractTablesWithRelations<EmptySchema>> & {
+  readonly [tenanted]: true;
+};
+
+/**
+ * Runs `fn` in one transaction that sees exactly what `ctx.scope` allows. No network, store, mail or
+ * engine work belongs inside: it would hold the row locks.
+ */
+export async function withTenant<T>(ctx: { readonly scope: Scope }, fn: (tx: TenantTx) => Promise<T>): Promise<T> {
+  const { scope } = ctx;
+  const person = 'personId' in scope ? scope.personId : '';
+  const workspace = scope.kind === 'workspace' ? scope.workspaceId : '';
+  const studio = scope.kind === 'studio' ? scope.studioId : '';
+  const jobWorkspace = scope.kind === 'job' ? scope.workspaceId : '';
+  const jobStudio = scope.kind === 'studio-job' ? scope.studioId : '';
+  return appDatabase().transaction(async (tx) => {
+    await tx.execute(sql`select
+      set_config('app.person', ${person}, true),
+      set_config('app.workspace', ${workspace}, true),
+      set_config('app.studio', ${studio}, true),
+      set_config('app.job_workspace', ${jobWorkspace}, true),
+      set_config('app.job_studio', ${jobStudio}, true)`);
+    return fn(tx as unknown as TenantTx);
+  });
+}

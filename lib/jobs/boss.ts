@@ -1,0 +1,30 @@
+import PgBoss from 'pg-boss';
+import { databaseEnv } from '@/lib/env/env';
+
+let starting: Promise<PgBoss> | undefined;
+
+/** The queue, on the application's own database role; its tables and queues were made by the migration. */
+export function boss(): Promise<PgBoss> {
+  starting ??= (async () => {
+    const made = new PgBoss({
+      connectionString: databaseEnv().DATABASE_URL,
+      schema: 'pgboss',
+      migrate: false,
+      supervise: false,
+      schedule: false,
+      max: 3,
+      application_name: 'firstpull-queue',
+    });
+    made.on('error', () => undefined);
+    await made.start();
+    return made;
+  })();
+  starting.catch(() => (starting = undefined));
+  return starting;
+}
+
+export async function stopBoss(): Promise<void> {
+  const running = await starting?.catch(() => undefined);
+  starting = undefined;
+  await running?.stop({ graceful: true, close: true, timeout: 5_000 });
+}

@@ -1,0 +1,48 @@
+import { z } from 'zod';
+
+const recipient = z.object({ email: z.email(), name: z.string() });
+/** A member of a workspace: whether they still are is read again when the mail is sent. */
+const memberRecipient = recipient.extend({ personId: z.uuid() });
+const revisionRef = {
+  workspaceId: z.uuid(),
+  workspaceName: z.string(),
+  number: z.string(),
+  title: z.string(),
+  letter: z.string(),
+  /** Path on our own host, e.g. `/w/quillon/templates/…`. */
+  path: z.string().startsWith('/'),
+};
+
+/** Every mail that the product sends, by occasion; lib/mail renders text and HTML from these. */
+export const mailRequest = z.discriminatedUnion('template', [
+  z.object({ template: z.literal('verify-address'), to: recipient, url: z.url() }),
+  z.object({ template: z.literal('reset-password'), to: recipient, url: z.url() }),
+  z.object({
+    template: z.literal('invitation'),
+    to: recipient,
+    inviterName: z.string(),
+    studioName: z.string(),
+    workspaceName: z.string().nullable(),
+    role: z.string(),
+    path: z.string().startsWith('/'),
+    expiresAt: z.iso.datetime(),
+  }),
+  z.object({ template: z.literal('revision-posted'), to: memberRecipient, ...revisionRef, authorName: z.string(), note: z.string() }),
+  z.object({ template: z.literal('gate-waits'), to: memberRecipient, ...revisionRef, gateName: z.string(), openItems: z.number() }),
+  z.object({ template: z.literal('note-posted'), to: memberRecipient, ...revisionRef, authorName: z.string(), text: z.string(), mentioned: z.boolean() }),
+  z.object({
+    template: z.literal('revision-signed'),
+    to: memberRecipient,
+    ...revisionRef,
+    printedName: z.string(),
+    role: z.string(),
+    meaning: z.string(),
+    signedAt: z.iso.datetime(),
+    timeZone: z.string(),
+    digest: z.string(),
+    locked: z.boolean(),
+  }),
+  z.object({ template: z.literal('revision-returned'), to: memberRecipient, ...revisionRef, printedName: z.string(), role: z.string(), reason: z.string() }),
+  z.object({ template: z.literal('revision-released'), to: memberRecipient, ...revisionRef, printedName: z.string(), note: z.string(), digest: z.string() }),
+]);
+export type MailRequest = z.infer<typeof mailRequest>;
