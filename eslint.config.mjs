@@ -11,7 +11,9 @@ const dangerousHtml = {
 };
 
 const config = [
-  { ignores: ['**/node_modules/**', '.next*/**', '.data*/**', 'next-env.d.ts', 'tests/.out/**', 'drizzle/**'] },
+  {
+    ignores: ['**/node_modules/**', '.next*/**', '.data*/**', 'next-env.d.ts', 'tests/.out/**', 'drizzle/**'],
+  },
   ...next,
   ...tseslint.configs.recommended,
   {
@@ -32,7 +34,11 @@ const config = [
       'no-restricted-properties': [
         'error',
         ...['it', 'test', 'describe'].flatMap((object) =>
-          ['only', 'skip', 'todo'].map((property) => ({ object, property, message: 'Every committed test runs.' })),
+          ['only', 'skip', 'todo'].map((property) => ({
+            object,
+            property,
+            message: 'Every committed test runs.',
+          })),
         ),
       ],
     },

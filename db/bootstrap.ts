@@ -1,6 +1,11 @@
 import { Client, escapeIdentifier, escapeLiteral } from 'pg';
 
-export const databaseRoles = ['firstpull_owner', 'firstpull_app', 'firstpull_auth', 'firstpull_relay'] as const;
+export const databaseRoles = [
+  'firstpull_owner',
+  'firstpull_app',
+  'firstpull_auth',
+  'firstpull_relay',
+] as const;
 export type DatabaseRole = (typeof databaseRoles)[number];
 
 export type BootstrapInput = {
@@ -17,7 +22,12 @@ export type BootstrapInput = {
  * Makes the roles and the database, once; running it again only sets the passwords anew.
  * The owner migrates; the other three own nothing and cannot bypass row policies.
  */
-export async function bootstrapDatabase({ adminUrl, database, passwords, template }: BootstrapInput): Promise<void> {
+export async function bootstrapDatabase({
+  adminUrl,
+  database,
+  passwords,
+  template,
+}: BootstrapInput): Promise<void> {
   const admin = new Client({ connectionString: adminUrl });
   await admin.connect();
   try {

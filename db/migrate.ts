@@ -28,16 +28,25 @@ export async function migrate(ownerUrl: string): Promise<void> {
 }
 
 async function prepareQueues(ownerUrl: string, client: Client): Promise<void> {
-  const boss = new PgBoss({ connectionString: ownerUrl, schema: queueSchema, supervise: false, schedule: false, max: 2 });
+  const boss = new PgBoss({
+    connectionString: ownerUrl,
+    schema: queueSchema,
+    supervise: false,
+    schedule: false,
+    max: 2,
+  });
   await boss.start();
   try {
     // Retries are ours (lib/jobs): a lease with an attempt number, which survives a killed worker.
-    for (const name of queueNames) await boss.createQueue(name, { name, retryLimit: 0, expireInSeconds: 900 });
+    for (const name of queueNames)
+      await boss.createQueue(name, { name, retryLimit: 0, expireInSeconds: 900 });
   } finally {
     await boss.stop({ graceful: false, close: true });
   }
   await client.query(`grant usage on schema ${queueSchema} to firstpull_app`);
-  await client.query(`grant select, insert, update, delete on all tables in schema ${queueSchema} to firstpull_app`);
+  await client.query(
+    `grant select, insert, update, delete on all tables in schema ${queueSchema} to firstpull_app`,
+  );
   await client.query(`grant execute on all functions in schema ${queueSchema} to firstpull_app`);
 }
 

@@ -8,7 +8,11 @@ declare const tenanted: unique symbol;
 type EmptySchema = Record<string, never>;
 
 /** The only handle that a data file accepts: a transaction whose row policies know what it may see. */
-export type TenantTx = PgTransaction<NodePgQueryResultHKT, EmptySchema, ExtractTablesWithRelations<EmptySchema>> & {
+export type TenantTx = PgTransaction<
+  NodePgQueryResultHKT,
+  EmptySchema,
+  ExtractTablesWithRelations<EmptySchema>
+> & {
   readonly [tenanted]: true;
 };
 
@@ -16,7 +20,10 @@ export type TenantTx = PgTransaction<NodePgQueryResultHKT, EmptySchema, ExtractT
  * Runs `fn` in one transaction that sees exactly what `ctx.scope` allows. No network, store, mail or
  * engine work belongs inside: it would hold the row locks.
  */
-export async function withTenant<T>(ctx: { readonly scope: Scope }, fn: (tx: TenantTx) => Promise<T>): Promise<T> {
+export async function withTenant<T>(
+  ctx: { readonly scope: Scope },
+  fn: (tx: TenantTx) => Promise<T>,
+): Promise<T> {
   const { scope } = ctx;
   const person = 'personId' in scope ? scope.personId : '';
   const workspace = scope.kind === 'workspace' ? scope.workspaceId : '';

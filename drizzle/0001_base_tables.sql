@@ -508,8 +508,8 @@ CREATE TABLE "idempotency_keys" (
 	"route" text NOT NULL,
 	"key" text NOT NULL,
 	"request_hash" text NOT NULL,
-	"status" integer NOT NULL,
-	"response" jsonb NOT NULL,
+	"status" integer DEFAULT 0 NOT NULL,
+	"response" jsonb,
 	"created_at" timestamp (3) with time zone DEFAULT clock_timestamp() NOT NULL,
 	CONSTRAINT "idempotency_keys_workspace_id_user_id_route_key_pk" PRIMARY KEY("workspace_id","user_id","route","key")
 );

@@ -200,12 +200,12 @@ grant select (id, name, email, units, time_zone) on users to firstpull_app;
 grant select, insert, update on studios, workspaces, templates, uploads, jobs, check_runs, threads, placements, gates,
   invitations, studio_invitations, audit_heads, machines, printers, sheets, filaments, studio_limits to firstpull_app;
 --> statement-breakpoint
-grant select, insert, update, delete on studio_members, members, drafts to firstpull_app;
+grant select, insert, update, delete on studio_members, members, drafts, idempotency_keys to firstpull_app;
 --> statement-breakpoint
 grant delete on machines, printers, sheets, filaments to firstpull_app;
 --> statement-breakpoint
 grant select, insert on gate_plans, meshes, recipes, reports, derivatives, findings, waivers, signatures, locks,
-  releases, packs, notes, audit_entries, studio_entries, idempotency_keys to firstpull_app;
+  releases, packs, notes, audit_entries, studio_entries to firstpull_app;
 --> statement-breakpoint
 grant insert on outbox to firstpull_app, firstpull_auth;
 --> statement-breakpoint

@@ -13,5 +13,8 @@ export function signChannel(
 ): { auth: string; channel_data?: string } {
   if (!socketIdPattern.test(socketId)) throw new TypeError('not a socket id');
   if (channel.kind !== 'revision') return pusher().authorizeChannel(socketId, channelName);
-  return pusher().authorizeChannel(socketId, channelName, { user_id: person.id, user_info: { name: person.name } });
+  return pusher().authorizeChannel(socketId, channelName, {
+    user_id: person.id,
+    user_info: { name: person.name },
+  });
 }

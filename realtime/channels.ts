@@ -15,7 +15,8 @@ export const workspaceChannel = (workspaceId: string) => `private-workspace-${wo
 /** What concerns one person across workspaces. */
 export const personChannel = (personId: string) => `private-person-${personId}`;
 /** Who has a revision open. */
-export const revisionChannel = (workspaceId: string, revisionId: string) => `presence-revision-${workspaceId}-${revisionId}`;
+export const revisionChannel = (workspaceId: string, revisionId: string) =>
+  `presence-revision-${workspaceId}-${revisionId}`;
 
 /** Reads a channel name; null for any name that this program never makes. */
 export function parseChannel(name: string): Channel | null {

@@ -9,13 +9,20 @@ export const liveEvents = {
   'upload.changed': z.object({ id, templateId: id }),
   'revision.changed': z.object({ id, templateId: id, version: z.number().optional() }),
   'docket.changed': z.object({ revisionId: id, threadId: id.optional() }),
-  'job.progressed': z.object({ id, subjectId: id, stage: z.string().max(60), progress: z.number().min(0).max(1) }),
+  'job.progressed': z.object({
+    id,
+    subjectId: id,
+    stage: z.string().max(60),
+    progress: z.number().min(0).max(1),
+  }),
   'people.changed': z.object({ id }),
   'today.changed': z.object({ id }),
 } as const;
 
 export type LiveEventName = keyof typeof liveEvents;
-export type LiveEvent = { [N in LiveEventName]: { name: N; data: z.infer<(typeof liveEvents)[N]> } }[LiveEventName];
+export type LiveEvent = {
+  [N in LiveEventName]: { name: N; data: z.infer<(typeof liveEvents)[N]> };
+}[LiveEventName];
 
 export const liveEventNames = Object.keys(liveEvents) as LiveEventName[];
 

@@ -22,7 +22,9 @@ export function pusher(): Pusher {
 /** Hands live events to the realtime server, at most ten a call (its limit). Throws when it cannot be reached. */
 export async function publish(events: LivePayload[]): Promise<void> {
   for (let i = 0; i < events.length; i += 10) {
-    const batch = events.slice(i, i + 10).map(({ channel, name, data }) => ({ channel, name, data: JSON.stringify(data) }));
+    const batch = events
+      .slice(i, i + 10)
+      .map(({ channel, name, data }) => ({ channel, name, data: JSON.stringify(data) }));
     await pusher().triggerBatch(batch as never);
   }
 }

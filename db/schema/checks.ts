@@ -1,4 +1,16 @@
-import { bigint, doublePrecision, foreignKey, index, integer, jsonb, pgTable, primaryKey, text, unique, uuid } from 'drizzle-orm/pg-core';
+import {
+  bigint,
+  doublePrecision,
+  foreignKey,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  primaryKey,
+  text,
+  unique,
+  uuid,
+} from 'drizzle-orm/pg-core';
 import { createdAt, id, instant, printedName, version, workspaceId } from '../columns';
 import { relayPolicy, workspacePolicy } from '../policies';
 import { users } from './identity';
@@ -14,7 +26,9 @@ export const jobs = pgTable(
     subjectId: uuid('subject_id').notNull(),
     /** Digest of the inputs, so that a late worker cannot answer another question. */
     inputDigest: text('input_digest').notNull(),
-    state: text('state', { enum: ['queued', 'running', 'done', 'failed', 'cancelled'] }).notNull().default('queued'),
+    state: text('state', { enum: ['queued', 'running', 'done', 'failed', 'cancelled'] })
+      .notNull()
+      .default('queued'),
     attempt: integer('attempt').notNull().default(0),
     leaseUntil: instant('lease_until'),
     worker: text('worker'),
@@ -63,7 +77,9 @@ export const checkRuns = pgTable(
     workspaceId: workspaceId(),
     revisionId: uuid('revision_id').notNull(),
     jobId: uuid('job_id').notNull(),
-    state: text('state', { enum: ['queued', 'running', 'finished', 'failed'] }).notNull().default('queued'),
+    state: text('state', { enum: ['queued', 'running', 'finished', 'failed'] })
+      .notNull()
+      .default('queued'),
     verdict: text('verdict', { enum: ['pass', 'caution', 'fail'] }),
     reportId: uuid('report_id'),
     error: text('error'),
@@ -74,7 +90,10 @@ export const checkRuns = pgTable(
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('check_runs_one').on(t.workspaceId, t.revisionId),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
     foreignKey({ columns: [t.workspaceId, t.jobId], foreignColumns: [jobs.workspaceId, jobs.id] }),
     foreignKey({ columns: [t.workspaceId, t.reportId], foreignColumns: [reports.workspaceId, reports.id] }),
     workspacePolicy('check_runs'),
@@ -128,7 +147,10 @@ export const findings = pgTable(
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('findings_check').on(t.workspaceId, t.revisionId, t.checkId, t.ordinal),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
     workspacePolicy('findings'),
   ],
 );
@@ -151,8 +173,14 @@ export const waivers = pgTable(
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('waivers_one').on(t.workspaceId, t.findingId),
-    foreignKey({ columns: [t.workspaceId, t.findingId], foreignColumns: [findings.workspaceId, findings.id] }),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.findingId],
+      foreignColumns: [findings.workspaceId, findings.id],
+    }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
     workspacePolicy('waivers'),
   ],
 );

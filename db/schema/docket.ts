@@ -1,4 +1,15 @@
-import { boolean, doublePrecision, foreignKey, index, jsonb, pgTable, primaryKey, text, unique, uuid } from 'drizzle-orm/pg-core';
+import {
+  boolean,
+  doublePrecision,
+  foreignKey,
+  index,
+  jsonb,
+  pgTable,
+  primaryKey,
+  text,
+  unique,
+  uuid,
+} from 'drizzle-orm/pg-core';
 import { createdAt, id, instant, printedName, version, workspaceId } from '../columns';
 import { workspacePolicy } from '../policies';
 import { findings } from './checks';
@@ -21,7 +32,9 @@ export const threads = pgTable(
     mustSettle: boolean('must_settle').notNull().default(false),
     /** Opened after the revision was locked: outside what was agreed. */
     afterApproval: boolean('after_approval').notNull().default(false),
-    state: text('state', { enum: ['open', 'settled'] }).notNull().default('open'),
+    state: text('state', { enum: ['open', 'settled'] })
+      .notNull()
+      .default('open'),
     settledBy: uuid('settled_by').references(() => users.id),
     settledByName: text('settled_by_name'),
     settledAt: instant('settled_at'),
@@ -36,9 +49,18 @@ export const threads = pgTable(
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('threads_finding').on(t.workspaceId, t.findingId),
     index('threads_template').on(t.workspaceId, t.templateId),
-    foreignKey({ columns: [t.workspaceId, t.templateId], foreignColumns: [templates.workspaceId, templates.id] }),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
-    foreignKey({ columns: [t.workspaceId, t.findingId], foreignColumns: [findings.workspaceId, findings.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.templateId],
+      foreignColumns: [templates.workspaceId, templates.id],
+    }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
+    foreignKey({
+      columns: [t.workspaceId, t.findingId],
+      foreignColumns: [findings.workspaceId, findings.id],
+    }),
     workspacePolicy('threads'),
   ],
 );
@@ -63,7 +85,10 @@ export const placements = pgTable(
     unique('placements_one').on(t.workspaceId, t.threadId, t.revisionId),
     index('placements_revision').on(t.workspaceId, t.revisionId),
     foreignKey({ columns: [t.workspaceId, t.threadId], foreignColumns: [threads.workspaceId, threads.id] }),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
     workspacePolicy('placements'),
   ],
 );
@@ -93,7 +118,10 @@ export const notes = pgTable(
     unique('notes_client_key').on(t.workspaceId, t.authorId, t.clientKey),
     index('notes_thread').on(t.workspaceId, t.threadId, t.createdAt),
     foreignKey({ columns: [t.workspaceId, t.threadId], foreignColumns: [threads.workspaceId, threads.id] }),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
     workspacePolicy('notes'),
   ],
 );

@@ -1,4 +1,14 @@
-import { foreignKey, index, integer, jsonb, pgTable, primaryKey, text, unique, uuid } from 'drizzle-orm/pg-core';
+import {
+  foreignKey,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  primaryKey,
+  text,
+  unique,
+  uuid,
+} from 'drizzle-orm/pg-core';
 import { createdAt, id, instant, printedName, version, workspaceId } from '../columns';
 import { workspacePolicy } from '../policies';
 import { users } from './identity';
@@ -14,7 +24,9 @@ export const gates = pgTable(
     revisionId: uuid('revision_id').notNull(),
     ordinal: integer('ordinal').notNull(),
     rule: jsonb('rule').$type<GateRule>().notNull(),
-    state: text('state', { enum: ['waiting', 'open', 'passed', 'returned', 'closed'] }).notNull().default('waiting'),
+    state: text('state', { enum: ['waiting', 'open', 'passed', 'returned', 'closed'] })
+      .notNull()
+      .default('waiting'),
     openedAt: instant('opened_at'),
     passedAt: instant('passed_at'),
     version: version(),
@@ -22,7 +34,10 @@ export const gates = pgTable(
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('gates_order').on(t.workspaceId, t.revisionId, t.ordinal),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
     workspacePolicy('gates'),
   ],
 );
@@ -52,7 +67,10 @@ export const signatures = pgTable(
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('signatures_once').on(t.workspaceId, t.gateId, t.signerId),
     index('signatures_revision').on(t.workspaceId, t.revisionId),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
     foreignKey({ columns: [t.workspaceId, t.gateId], foreignColumns: [gates.workspaceId, gates.id] }),
     workspacePolicy('signatures'),
   ],
@@ -72,7 +90,10 @@ export const locks = pgTable(
   },
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.revisionId] }),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
     workspacePolicy('locks'),
   ],
 );
@@ -95,7 +116,10 @@ export const releases = pgTable(
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('releases_one').on(t.workspaceId, t.revisionId),
-    foreignKey({ columns: [t.workspaceId, t.revisionId], foreignColumns: [revisions.workspaceId, revisions.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.revisionId],
+      foreignColumns: [revisions.workspaceId, revisions.id],
+    }),
     workspacePolicy('releases'),
   ],
 );
@@ -117,7 +141,10 @@ export const packs = pgTable(
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('packs_one').on(t.workspaceId, t.releaseId),
-    foreignKey({ columns: [t.workspaceId, t.releaseId], foreignColumns: [releases.workspaceId, releases.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.releaseId],
+      foreignColumns: [releases.workspaceId, releases.id],
+    }),
     workspacePolicy('packs'),
   ],
 );

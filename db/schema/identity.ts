@@ -15,7 +15,9 @@ export const users = pgTable(
     units: text('units').notNull().default('mm'),
     timeZone: text('time_zone').notNull().default('Europe/Lisbon'),
     createdAt: createdAt(),
-    updatedAt: instant('updated_at').notNull().default(sql`clock_timestamp()`),
+    updatedAt: instant('updated_at')
+      .notNull()
+      .default(sql`clock_timestamp()`),
   },
   (t) => [
     uniqueIndex('users_email_key').on(sql`lower(${t.email})`),
@@ -41,7 +43,9 @@ export const sessions = pgTable(
     userAgent: text('user_agent'),
     activeOrganizationId: uuid('active_organization_id'),
     createdAt: createdAt(),
-    updatedAt: instant('updated_at').notNull().default(sql`clock_timestamp()`),
+    updatedAt: instant('updated_at')
+      .notNull()
+      .default(sql`clock_timestamp()`),
   },
   () => [authPolicy('sessions')],
 );
@@ -63,7 +67,9 @@ export const accounts = pgTable(
     scope: text('scope'),
     password: text('password'),
     createdAt: createdAt(),
-    updatedAt: instant('updated_at').notNull().default(sql`clock_timestamp()`),
+    updatedAt: instant('updated_at')
+      .notNull()
+      .default(sql`clock_timestamp()`),
   },
   () => [authPolicy('accounts')],
 );
@@ -76,7 +82,9 @@ export const verifications = pgTable(
     value: text('value').notNull(),
     expiresAt: instant('expires_at').notNull(),
     createdAt: createdAt(),
-    updatedAt: instant('updated_at').notNull().default(sql`clock_timestamp()`),
+    updatedAt: instant('updated_at')
+      .notNull()
+      .default(sql`clock_timestamp()`),
   },
   () => [authPolicy('verifications')],
 );

@@ -19,7 +19,11 @@ export const machines = pgTable(
     createdAt: createdAt(),
     version: version(),
   },
-  (t) => [unique('machines_pk').on(t.studioId, t.id), unique('machines_name').on(t.studioId, t.name), studioPolicy('machines')],
+  (t) => [
+    unique('machines_pk').on(t.studioId, t.id),
+    unique('machines_name').on(t.studioId, t.name),
+    studioPolicy('machines'),
+  ],
 );
 
 /** Filament printers with the nozzle that is usually fitted. Lengths in mm. */
@@ -38,7 +42,11 @@ export const printers = pgTable(
     createdAt: createdAt(),
     version: version(),
   },
-  (t) => [unique('printers_pk').on(t.studioId, t.id), unique('printers_name').on(t.studioId, t.name), studioPolicy('printers')],
+  (t) => [
+    unique('printers_pk').on(t.studioId, t.id),
+    unique('printers_name').on(t.studioId, t.name),
+    studioPolicy('printers'),
+  ],
 );
 
 /** Sheet stock: a generic polymer of the engine's table, in the gauges that the studio keeps (mm). */
@@ -55,7 +63,11 @@ export const sheets = pgTable(
     createdAt: createdAt(),
     version: version(),
   },
-  (t) => [unique('sheets_pk').on(t.studioId, t.id), unique('sheets_name').on(t.studioId, t.name), studioPolicy('sheets')],
+  (t) => [
+    unique('sheets_pk').on(t.studioId, t.id),
+    unique('sheets_name').on(t.studioId, t.name),
+    studioPolicy('sheets'),
+  ],
 );
 
 /** Filaments: a generic polymer of the engine's table and how this studio prints it. */
@@ -73,7 +85,11 @@ export const filaments = pgTable(
     createdAt: createdAt(),
     version: version(),
   },
-  (t) => [unique('filaments_pk').on(t.studioId, t.id), unique('filaments_name').on(t.studioId, t.name), studioPolicy('filaments')],
+  (t) => [
+    unique('filaments_pk').on(t.studioId, t.id),
+    unique('filaments_name').on(t.studioId, t.name),
+    studioPolicy('filaments'),
+  ],
 );
 
 /** Limits that a studio has moved from the engine's defaults: limit id → value, with who moved it in the audit. */
@@ -86,5 +102,9 @@ export const studioLimits = pgTable(
     createdAt: createdAt(),
     version: version(),
   },
-  (t) => [unique('studio_limits_pk').on(t.studioId, t.id), unique('studio_limits_one').on(t.studioId), studioPolicy('studio_limits')],
+  (t) => [
+    unique('studio_limits_pk').on(t.studioId, t.id),
+    unique('studio_limits_one').on(t.studioId),
+    studioPolicy('studio_limits'),
+  ],
 );

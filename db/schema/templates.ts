@@ -1,10 +1,32 @@
-import { bigint, date, foreignKey, index, integer, jsonb, pgTable, primaryKey, text, unique, uuid } from 'drizzle-orm/pg-core';
+import {
+  bigint,
+  date,
+  foreignKey,
+  index,
+  integer,
+  jsonb,
+  pgTable,
+  primaryKey,
+  text,
+  unique,
+  uuid,
+} from 'drizzle-orm/pg-core';
 import { createdAt, id, instant, printedName, version, workspaceId } from '../columns';
 import { workspacePolicy } from '../policies';
 import { users } from './identity';
 import { gatePlans, workspaces } from './workspaces';
 
-export const standings = ['draft', 'in_review', 'approved', 'returned', 'withdrawn', 'released', 'recalled', 'superseded', 'retired'] as const;
+export const standings = [
+  'draft',
+  'in_review',
+  'approved',
+  'returned',
+  'withdrawn',
+  'released',
+  'recalled',
+  'superseded',
+  'retired',
+] as const;
 
 /** A forming tool that studio and client settle, through lettered revisions. */
 export const templates = pgTable(
@@ -53,7 +75,9 @@ export const uploads = pgTable(
     multipartId: text('multipart_id').notNull(),
     partBytes: integer('part_bytes').notNull(),
     parts: jsonb('parts').$type<UploadedPart[]>().notNull().default([]),
-    state: text('state', { enum: ['sending', 'reading', 'ready', 'refused', 'cancelled'] }).notNull().default('sending'),
+    state: text('state', { enum: ['sending', 'reading', 'ready', 'refused', 'cancelled'] })
+      .notNull()
+      .default('sending'),
     /** Why the file was refused: what is wrong, where, what to do. */
     refusal: jsonb('refusal').$type<{ code: string; message: string; reasons: string[] }>(),
     meshId: uuid('mesh_id'),
@@ -65,7 +89,10 @@ export const uploads = pgTable(
   },
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
-    foreignKey({ columns: [t.workspaceId, t.templateId], foreignColumns: [templates.workspaceId, templates.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.templateId],
+      foreignColumns: [templates.workspaceId, templates.id],
+    }),
     index('uploads_template').on(t.workspaceId, t.templateId),
     workspacePolicy('uploads'),
   ],
@@ -93,7 +120,10 @@ export const meshes = pgTable(
   },
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
-    foreignKey({ columns: [t.workspaceId, t.templateId], foreignColumns: [templates.workspaceId, templates.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.templateId],
+      foreignColumns: [templates.workspaceId, templates.id],
+    }),
     workspacePolicy('meshes'),
   ],
 );
@@ -118,7 +148,10 @@ export const drafts = pgTable(
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('drafts_one').on(t.workspaceId, t.templateId),
-    foreignKey({ columns: [t.workspaceId, t.templateId], foreignColumns: [templates.workspaceId, templates.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.templateId],
+      foreignColumns: [templates.workspaceId, templates.id],
+    }),
     foreignKey({ columns: [t.workspaceId, t.uploadId], foreignColumns: [uploads.workspaceId, uploads.id] }),
     workspacePolicy('drafts'),
   ],
@@ -170,10 +203,16 @@ export const revisions = pgTable(
     primaryKey({ columns: [t.workspaceId, t.id] }),
     unique('revisions_ordinal').on(t.workspaceId, t.templateId, t.ordinal),
     unique('revisions_letter').on(t.workspaceId, t.templateId, t.letter),
-    foreignKey({ columns: [t.workspaceId, t.templateId], foreignColumns: [templates.workspaceId, templates.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.templateId],
+      foreignColumns: [templates.workspaceId, templates.id],
+    }),
     foreignKey({ columns: [t.workspaceId, t.meshId], foreignColumns: [meshes.workspaceId, meshes.id] }),
     foreignKey({ columns: [t.workspaceId, t.recipeId], foreignColumns: [recipes.workspaceId, recipes.id] }),
-    foreignKey({ columns: [t.workspaceId, t.gatePlanId], foreignColumns: [gatePlans.workspaceId, gatePlans.id] }),
+    foreignKey({
+      columns: [t.workspaceId, t.gatePlanId],
+      foreignColumns: [gatePlans.workspaceId, gatePlans.id],
+    }),
     workspacePolicy('revisions'),
   ],
 );

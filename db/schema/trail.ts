@@ -1,4 +1,14 @@
-import { index, integer, jsonb, pgPolicy, pgTable, primaryKey, text, unique, uuid } from 'drizzle-orm/pg-core';
+import {
+  index,
+  integer,
+  jsonb,
+  pgPolicy,
+  pgTable,
+  primaryKey,
+  text,
+  unique,
+  uuid,
+} from 'drizzle-orm/pg-core';
 import { createdAt, id, instant, printedName, studioId, workspaceId } from '../columns';
 import { sql } from 'drizzle-orm';
 import { authRole, relayPolicy, studioPolicy, workspacePolicy } from '../policies';
@@ -96,9 +106,13 @@ export const idempotencyKeys = pgTable(
     route: text('route').notNull(),
     key: text('key').notNull(),
     requestHash: text('request_hash').notNull(),
-    status: integer('status').notNull(),
-    response: jsonb('response').$type<unknown>().notNull(),
+    /** 0 while the first request is still at work. */
+    status: integer('status').notNull().default(0),
+    response: jsonb('response').$type<unknown>(),
     createdAt: createdAt(),
   },
-  (t) => [primaryKey({ columns: [t.workspaceId, t.userId, t.route, t.key] }), workspacePolicy('idempotency_keys')],
+  (t) => [
+    primaryKey({ columns: [t.workspaceId, t.userId, t.route, t.key] }),
+    workspacePolicy('idempotency_keys'),
+  ],
 );

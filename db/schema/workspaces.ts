@@ -1,5 +1,15 @@
 import { sql } from 'drizzle-orm';
-import { index, integer, jsonb, pgPolicy, pgTable, text, unique, uniqueIndex, uuid } from 'drizzle-orm/pg-core';
+import {
+  index,
+  integer,
+  jsonb,
+  pgPolicy,
+  pgTable,
+  text,
+  unique,
+  uniqueIndex,
+  uuid,
+} from 'drizzle-orm/pg-core';
 import { createdAt, id, instant, studioId, version, workspaceId } from '../columns';
 import { appRole, authPolicy, studioPolicy, workspacePolicy } from '../policies';
 import { users } from './identity';
@@ -109,7 +119,9 @@ export const invitations = pgTable(
     workspaceId: workspaceId().references(() => workspaces.id),
     email: text('email').notNull(),
     role: text('role', { enum: ['reviewer', 'approver'] }).notNull(),
-    status: text('status', { enum: ['pending', 'accepted', 'rejected', 'canceled'] }).notNull().default('pending'),
+    status: text('status', { enum: ['pending', 'accepted', 'rejected', 'canceled'] })
+      .notNull()
+      .default('pending'),
     expiresAt: instant('expires_at').notNull(),
     inviterId: uuid('inviter_id')
       .notNull()
@@ -117,7 +129,9 @@ export const invitations = pgTable(
     createdAt: createdAt(),
   },
   (t) => [
-    uniqueIndex('invitations_one_pending').on(t.workspaceId, sql`lower(${t.email})`).where(sql`status = 'pending'`),
+    uniqueIndex('invitations_one_pending')
+      .on(t.workspaceId, sql`lower(${t.email})`)
+      .where(sql`status = 'pending'`),
     authPolicy('invitations'),
     workspacePolicy('invitations'),
   ],
@@ -130,7 +144,9 @@ export const studioInvitations = pgTable(
     studioId: studioId().references(() => studios.id),
     email: text('email').notNull(),
     role: text('role', { enum: ['designer', 'lead', 'producer'] }).notNull(),
-    status: text('status', { enum: ['pending', 'accepted', 'rejected', 'canceled'] }).notNull().default('pending'),
+    status: text('status', { enum: ['pending', 'accepted', 'rejected', 'canceled'] })
+      .notNull()
+      .default('pending'),
     expiresAt: instant('expires_at').notNull(),
     inviterId: uuid('inviter_id')
       .notNull()
@@ -138,7 +154,9 @@ export const studioInvitations = pgTable(
     createdAt: createdAt(),
   },
   (t) => [
-    uniqueIndex('studio_invitations_one_pending').on(t.studioId, sql`lower(${t.email})`).where(sql`status = 'pending'`),
+    uniqueIndex('studio_invitations_one_pending')
+      .on(t.studioId, sql`lower(${t.email})`)
+      .where(sql`status = 'pending'`),
     authPolicy('studio_invitations'),
     studioPolicy('studio_invitations'),
   ],
@@ -175,4 +193,3 @@ export const gatePlans = pgTable(
     workspacePolicy('gate_plans'),
   ],
 );
-

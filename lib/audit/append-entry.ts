@@ -6,7 +6,22 @@ import { insertEntry, lockHead } from './data';
 export type AuditEvent = {
   /** `subject.verb` in the past tense, e.g. `revision.posted`. */
   action: string;
-  subjectKind: 'workspace' | 'person' | 'invitation' | 'template' | 'upload' | 'revision' | 'finding' | 'thread' | 'note' | 'gate' | 'release' | 'pack' | 'check-run' | 'gate-plan' | 'draft';
+  subjectKind:
+    | 'workspace'
+    | 'person'
+    | 'invitation'
+    | 'template'
+    | 'upload'
+    | 'revision'
+    | 'finding'
+    | 'thread'
+    | 'note'
+    | 'gate'
+    | 'release'
+    | 'pack'
+    | 'check-run'
+    | 'gate-plan'
+    | 'draft';
   subjectId: string;
   /** JSON only; what a reader needs to understand the entry in years: letters, names, digests, reasons. */
   detail: Record<string, unknown>;
@@ -16,7 +31,11 @@ export type AuditEvent = {
  * Adds one entry to the workspace's chain in the caller's transaction. The chain head is the last row
  * that a command locks (template → revision → gate → head), so writers queue and never fork it.
  */
-export async function appendEntry(tx: TenantTx, ctx: WorkspaceContext | JobContext, event: AuditEvent): Promise<void> {
+export async function appendEntry(
+  tx: TenantTx,
+  ctx: WorkspaceContext | JobContext,
+  event: AuditEvent,
+): Promise<void> {
   const workspaceId = workspaceIdOf(ctx);
   const head = await lockHead(tx, workspaceId);
   const seq = head.seq + 1;

@@ -6,10 +6,17 @@ import { genesis } from './chain';
 export type AuditRow = typeof auditEntries.$inferSelect;
 
 /** Locks the head of the workspace's chain (making it at first use) and returns it with the database's time. */
-export async function lockHead(tx: TenantTx, workspaceId: string): Promise<{ seq: number; hash: string; now: Date }> {
+export async function lockHead(
+  tx: TenantTx,
+  workspaceId: string,
+): Promise<{ seq: number; hash: string; now: Date }> {
   await tx.insert(auditHeads).values({ workspaceId, seq: 0, hash: genesis }).onConflictDoNothing();
   const [head] = await tx
-    .select({ seq: auditHeads.seq, hash: auditHeads.hash, now: sql<string>`date_trunc('milliseconds', clock_timestamp())::text` })
+    .select({
+      seq: auditHeads.seq,
+      hash: auditHeads.hash,
+      now: sql<string>`date_trunc('milliseconds', clock_timestamp())::text`,
+    })
     .from(auditHeads)
     .where(eq(auditHeads.workspaceId, workspaceId))
     .for('update');
@@ -19,7 +26,10 @@ export async function lockHead(tx: TenantTx, workspaceId: string): Promise<{ seq
 
 export async function insertEntry(tx: TenantTx, row: typeof auditEntries.$inferInsert): Promise<void> {
   await tx.insert(auditEntries).values(row);
-  await tx.update(auditHeads).set({ seq: row.seq, hash: row.hash }).where(eq(auditHeads.workspaceId, row.workspaceId));
+  await tx
+    .update(auditHeads)
+    .set({ seq: row.seq, hash: row.hash })
+    .where(eq(auditHeads.workspaceId, row.workspaceId));
 }
 
 export async function readHead(tx: TenantTx, workspaceId: string) {
@@ -27,7 +37,12 @@ export async function readHead(tx: TenantTx, workspaceId: string) {
   return head ?? null;
 }
 
-export async function entriesAfter(tx: TenantTx, workspaceId: string, seq: number, limit: number): Promise<AuditRow[]> {
+export async function entriesAfter(
+  tx: TenantTx,
+  workspaceId: string,
+  seq: number,
+  limit: number,
+): Promise<AuditRow[]> {
   return tx
     .select()
     .from(auditEntries)

@@ -3,7 +3,14 @@ import { uuidv7 } from 'uuidv7';
 import { authDatabase } from '@/db/client';
 import { users } from '@/db/schema/identity';
 import { outbox } from '@/db/schema/trail';
-import { invitations, members, studioInvitations, studioMembers, studios, workspaces } from '@/db/schema/workspaces';
+import {
+  invitations,
+  members,
+  studioInvitations,
+  studioMembers,
+  studios,
+  workspaces,
+} from '@/db/schema/workspaces';
 import type { MailRequest } from '@/lib/mail/messages';
 
 const uuid = /^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/;
@@ -40,7 +47,13 @@ export async function listMemberships(personId: string) {
       .where(eq(studioMembers.userId, personId))
       .orderBy(asc(studios.name)),
     authDatabase()
-      .select({ id: workspaces.id, name: workspaces.name, slug: workspaces.slug, studioName: studios.name, role: members.role })
+      .select({
+        id: workspaces.id,
+        name: workspaces.name,
+        slug: workspaces.slug,
+        studioName: studios.name,
+        role: members.role,
+      })
       .from(members)
       .innerJoin(workspaces, eq(workspaces.id, members.workspaceId))
       .innerJoin(studios, eq(studios.id, workspaces.studioId))
@@ -75,5 +88,7 @@ export async function findInvitation(id: string) {
 
 /** Mails of identity belong to no tenant; they leave through the same outbox. */
 export async function queueIdentityMail(request: MailRequest): Promise<void> {
-  await authDatabase().insert(outbox).values({ kind: 'mail', payload: request as never, dedupeKey: uuidv7() });
+  await authDatabase()
+    .insert(outbox)
+    .values({ kind: 'mail', payload: request as never, dedupeKey: uuidv7() });
 }

@@ -15,12 +15,24 @@ import { queueIdentityMail } from './auth-data';
  * transaction with the audit entry and the mail, which the plugin's own endpoints cannot do.
  */
 const closedPaths = [
-  '/organization/create', '/organization/update', '/organization/delete', '/organization/leave',
-  '/organization/invite-member', '/organization/accept-invitation', '/organization/reject-invitation',
-  '/organization/cancel-invitation', '/organization/remove-member', '/organization/update-member-role',
-  '/organization/get-invitation', '/organization/list-invitations', '/organization/list-user-invitations',
-  '/organization/check-slug', '/organization/get-full-organization', '/organization/list-members',
-  '/delete-user', '/change-email',
+  '/organization/create',
+  '/organization/update',
+  '/organization/delete',
+  '/organization/leave',
+  '/organization/invite-member',
+  '/organization/accept-invitation',
+  '/organization/reject-invitation',
+  '/organization/cancel-invitation',
+  '/organization/remove-member',
+  '/organization/update-member-role',
+  '/organization/get-invitation',
+  '/organization/list-invitations',
+  '/organization/list-user-invitations',
+  '/organization/check-slug',
+  '/organization/get-full-organization',
+  '/organization/list-members',
+  '/delete-user',
+  '/change-email',
 ];
 
 function build() {
@@ -36,7 +48,16 @@ function build() {
     database: drizzleAdapter(authDatabase(), {
       provider: 'pg',
       transaction: true,
-      schema: { users, sessions, accounts, verifications, rate_limits: rateLimits, workspaces, members, invitations },
+      schema: {
+        users,
+        sessions,
+        accounts,
+        verifications,
+        rate_limits: rateLimits,
+        workspaces,
+        members,
+        invitations,
+      },
     }),
     user: {
       modelName: 'users',
@@ -45,7 +66,12 @@ function build() {
         timeZone: { type: 'string', defaultValue: 'Europe/Lisbon', input: true },
       },
     },
-    session: { modelName: 'sessions', expiresIn: 60 * 60 * 24 * 7, updateAge: 60 * 60 * 12, cookieCache: { enabled: false } },
+    session: {
+      modelName: 'sessions',
+      expiresIn: 60 * 60 * 24 * 7,
+      updateAge: 60 * 60 * 12,
+      cookieCache: { enabled: false },
+    },
     account: { modelName: 'accounts' },
     verification: { modelName: 'verifications' },
     emailAndPassword: {
@@ -80,7 +106,9 @@ function build() {
       cookiePrefix: 'firstpull',
       useSecureCookies: env.APP_URL.startsWith('https://'),
       database: { generateId: () => uuidv7() },
-      ipAddress: env.TRUSTED_PROXY ? { ipAddressHeaders: ['x-forwarded-for'], trustedProxies: [env.TRUSTED_PROXY] } : {},
+      ipAddress: env.TRUSTED_PROXY
+        ? { ipAddressHeaders: ['x-forwarded-for'], trustedProxies: [env.TRUSTED_PROXY] }
+        : {},
     },
     plugins: [
       organization({

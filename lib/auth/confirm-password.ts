@@ -21,7 +21,11 @@ export async function confirmPassword(person: Person, password: string): Promise
   const fresh = limit && now - limit.lastRequest < windowMs;
   if (fresh && limit.count >= attempts) {
     const retryAfterS = Math.ceil((limit.lastRequest + windowMs - now) / 1000);
-    throw new AppError('limit_exceeded', 'Too many wrong passwords. Wait a quarter of an hour and try again.', { retryAfterS });
+    throw new AppError(
+      'limit_exceeded',
+      'Too many wrong passwords. Wait a quarter of an hour and try again.',
+      { retryAfterS },
+    );
   }
   const [account] = await database
     .select({ password: accounts.password })

@@ -1,5 +1,11 @@
 import { notFound } from '@/lib/errors/app-error';
-import { studioContext, workspaceContext, type Person, type StudioContext, type WorkspaceContext } from './context';
+import {
+  studioContext,
+  workspaceContext,
+  type Person,
+  type StudioContext,
+  type WorkspaceContext,
+} from './context';
 import { findMembership, findStudioMembership } from './auth-data';
 
 /** Enters the workspace named in the address (slug or id). Not a member and no such workspace answer alike. */

@@ -4,7 +4,14 @@ import { AppError } from '@/lib/errors/app-error';
 import { auth } from './auth';
 import type { Person } from './context';
 
-type SessionUser = { id: string; name: string; email: string; emailVerified: boolean; units?: unknown; timeZone?: unknown };
+type SessionUser = {
+  id: string;
+  name: string;
+  email: string;
+  emailVerified: boolean;
+  units?: unknown;
+  timeZone?: unknown;
+};
 
 function personOf(user: SessionUser): Person {
   return {
@@ -27,6 +34,7 @@ export const currentPerson = cache(async (): Promise<Person | null> => personFro
 
 export async function requirePerson(requestHeaders: Headers): Promise<Person> {
   const person = await personFromHeaders(requestHeaders);
-  if (!person) throw new AppError('unauthenticated', 'Sign in to go on. What you wrote is kept on this device.');
+  if (!person)
+    throw new AppError('unauthenticated', 'Sign in to go on. What you wrote is kept on this device.');
   return person;
 }

@@ -45,7 +45,11 @@ export class AppError extends Error {
 
 /** A foreign object and a missing one answer alike: this sentence never says which it was. */
 export const notFound = (what: string) =>
-  new AppError('not_found', `There is no such ${what} here. It may have been moved, or the address is not complete.`);
+  new AppError(
+    'not_found',
+    `There is no such ${what} here. It may have been moved, or the address is not complete.`,
+  );
 export const forbidden = (detail: string, reason?: string) => new AppError('forbidden', detail, { reason });
 export const conflict = (reason: string, detail: string) => new AppError('conflict', detail, { reason });
-export const invalid = (detail: string, errors: FieldError[] = []) => new AppError('invalid', detail, { errors });
+export const invalid = (detail: string, errors: FieldError[] = []) =>
+  new AppError('invalid', detail, { errors });

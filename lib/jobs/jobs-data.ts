@@ -14,10 +14,13 @@ export function bossExecutor(tx: TenantTx) {
   return {
     async executeSql(text: string, values: unknown[] = []) {
       // pg-boss speaks $1, $2 …; drizzle's raw client of this transaction takes the same text.
-      const session = (tx as unknown as { session: { client: { query(t: string, v: unknown[]): Promise<{ rows: unknown[] }> } } }).session;
+      const session = (
+        tx as unknown as {
+          session: { client: { query(t: string, v: unknown[]): Promise<{ rows: unknown[] }> } };
+        }
+      ).session;
       const { rows } = await session.client.query(text, values);
       return { rows: rows as never[], rowCount: rows.length };
     },
   };
 }
-

@@ -6,9 +6,16 @@ import { liveEvents, type LiveEvent } from '@/realtime/events';
 import { insertOutbox } from './outbox-data';
 
 /** Tells everybody in the workspace, after commit, that something changed. */
-export async function queueLive(tx: TenantTx, ctx: WorkspaceContext | JobContext, ...events: LiveEvent[]): Promise<void> {
+export async function queueLive(
+  tx: TenantTx,
+  ctx: WorkspaceContext | JobContext,
+  ...events: LiveEvent[]
+): Promise<void> {
   const workspaceId = workspaceIdOf(ctx);
-  await insertOutbox(tx, events.map((event) => row(workspaceId, workspaceChannel(workspaceId), event)));
+  await insertOutbox(
+    tx,
+    events.map((event) => row(workspaceId, workspaceChannel(workspaceId), event)),
+  );
 }
 
 /** Tells single people, e.g. that their Today changed. */
@@ -18,10 +25,18 @@ export async function queueLiveToPeople(
   personIds: string[],
   event: LiveEvent,
 ): Promise<void> {
-  await insertOutbox(tx, personIds.map((id) => row(workspaceIdOf(ctx), personChannel(id), event)));
+  await insertOutbox(
+    tx,
+    personIds.map((id) => row(workspaceIdOf(ctx), personChannel(id), event)),
+  );
 }
 
 function row(workspaceId: string, channel: string, event: LiveEvent) {
   const data = liveEvents[event.name].parse(event.data);
-  return { workspaceId, kind: 'live' as const, payload: { channel, name: event.name, data }, dedupeKey: uuidv7() };
+  return {
+    workspaceId,
+    kind: 'live' as const,
+    payload: { channel, name: event.name, data },
+    dedupeKey: uuidv7(),
+  };
 }

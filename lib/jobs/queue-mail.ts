@@ -13,6 +13,11 @@ export async function queueMail(
 ): Promise<void> {
   await insertOutbox(
     tx,
-    mails.map(({ request, dedupeKey }) => ({ ...home, kind: 'mail' as const, payload: request as never, dedupeKey })),
+    mails.map(({ request, dedupeKey }) => ({
+      ...home,
+      kind: 'mail' as const,
+      payload: request as never,
+      dedupeKey,
+    })),
   );
 }

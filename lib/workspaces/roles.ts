@@ -25,7 +25,12 @@ const statements = {
 
 export const accessControl = createAccessControl(statements);
 
-const everyone = { workspace: ['read'], people: ['read'], docket: ['note', 'settle'], activity: ['read'] } as const;
+const everyone = {
+  workspace: ['read'],
+  people: ['read'],
+  docket: ['note', 'settle'],
+  activity: ['read'],
+} as const;
 const makes = { template: ['create', 'change'], revision: ['post', 'withdraw'] } as const;
 
 /** Roles as the organization plugin knows them; `permits` below is how verbs ask. */
@@ -40,7 +45,11 @@ export const accessRoles = {
     finding: ['waive'],
     pack: ['download'],
   }),
-  producer: accessControl.newRole({ ...everyone, revision: ['release', 'recall', 'retire'], pack: ['download'] }),
+  producer: accessControl.newRole({
+    ...everyone,
+    revision: ['release', 'recall', 'retire'],
+    pack: ['download'],
+  }),
   reviewer: accessControl.newRole(everyone),
   approver: accessControl.newRole({ ...everyone, gate: ['sign'], pack: ['download'] }),
 };

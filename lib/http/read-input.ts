@@ -1,0 +1,46 @@
+import type { z } from 'zod';
+import { AppError, invalid } from '@/lib/errors/app-error';
+
+const maxBodyBytes = 1_000_000;
+
+/** Parses with a zod schema; what does not fit is named by JSON pointer. */
+export function parseInput<S extends z.ZodType>(schema: S, value: unknown): z.output<S> {
+  const result = schema.safeParse(value);
+  if (result.success) return result.data;
+  const errors = result.error.issues.map((issue) => ({
+    pointer: `/${issue.path.map((part) => String(part).replaceAll('~', '~0').replaceAll('/', '~1')).join('/')}`,
+    detail: issue.message,
+  }));
+  throw invalid('Some of the input is not right. Each field says what it needs.', errors);
+}
+
+function refuseNul(value: unknown, depth = 0): void {
+  if (depth > 200) throw invalid('The input is nested too deeply.');
+  if (typeof value === 'string' && value.includes('\u0000'))
+    throw invalid('The text holds a NUL character. Remove it.');
+  if (value && typeof value === 'object')
+    for (const [key, inner] of Object.entries(value)) {
+      if (key === '__proto__' || key.includes('\u0000'))
+        throw invalid('The input holds a name that is not allowed.');
+      refuseNul(inner, depth + 1);
+    }
+}
+
+/** Reads a JSON body of at most 1 MB. Bytes of models never come this way: they go straight to the store. */
+export async function readJson(request: Request): Promise<unknown> {
+  const type = request.headers.get('content-type') ?? '';
+  if (!/^application\/json\b/i.test(type)) throw invalid('Send JSON with the content type application/json.');
+  if (Number(request.headers.get('content-length') ?? 0) > maxBodyBytes)
+    throw new AppError('invalid', 'The request is larger than 1 MB.', { reason: 'too-large' });
+  const text = await request.text();
+  if (text.length > maxBodyBytes)
+    throw new AppError('invalid', 'The request is larger than 1 MB.', { reason: 'too-large' });
+  let value: unknown;
+  try {
+    value = text === '' ? {} : JSON.parse(text);
+  } catch {
+    throw invalid('The body is not valid JSON.');
+  }
+  refuseNul(value);
+  return value;
+}

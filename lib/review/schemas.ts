@@ -1,0 +1,384 @@
+import { z } from 'zod';
+
+/**
+ * Inputs and outputs of everything about templates, revisions, docket and gates. Browser-safe: the one
+ * source for the verb, the route, the form and the client's hook.
+ */
+
+const id = z.uuid();
+const instant = z.iso.datetime();
+const point = z.tuple([z.number(), z.number(), z.number()]);
+
+export const standing = z.enum([
+  'draft',
+  'in_review',
+  'approved',
+  'returned',
+  'withdrawn',
+  'released',
+  'recalled',
+  'superseded',
+  'retired',
+]);
+export type Standing = z.infer<typeof standing>;
+export const verdict = z.enum(['pass', 'caution', 'fail']);
+export const lengthUnit = z.enum(['mm', 'cm', 'm', 'in', 'ft', 'micron']);
+
+// Templates
+
+export const CreateTemplateInput = z.object({
+  title: z
+    .string()
+    .trim()
+    .min(1, 'Give the template a title.')
+    .max(25, 'At most 25 characters (ISO 7200 title field).'),
+  dueOn: z.iso.date('Write the date as YYYY-MM-DD.').nullable().default(null),
+});
+export type CreateTemplateInput = z.infer<typeof CreateTemplateInput>;
+
+export const ListTemplatesInput = z.object({
+  search: z.string().trim().max(80).default(''),
+  standing: standing.optional(),
+  sort: z.enum(['changed', 'number', 'title', 'due']).default('changed'),
+  direction: z.enum(['asc', 'desc']).default('desc'),
+  cursor: z.string().max(400).optional(),
+  limit: z.coerce.number().int().min(1).max(100).default(25),
+});
+export type ListTemplatesInput = z.infer<typeof ListTemplatesInput>;
+
+export const TemplateSummary = z.object({
+  id,
+  number: z.string(),
+  title: z.string(),
+  dueOn: z.iso.date().nullable(),
+  standing,
+  latestRevisionId: id.nullable(),
+  latestLetter: z.string().nullable(),
+  verdict: verdict.nullable(),
+  openMustSettle: z.number(),
+  thumbnailUrl: z.string().nullable(),
+  changedAt: instant,
+  version: z.number(),
+});
+export type TemplateSummary = z.infer<typeof TemplateSummary>;
+
+export const TemplatePage = z.object({
+  items: z.array(TemplateSummary),
+  nextCursor: z.string().nullable(),
+  total: z.number(),
+});
+export type TemplatePage = z.infer<typeof TemplatePage>;
+
+export const RevisionSummary = z.object({
+  id,
+  letter: z.string(),
+  ordinal: z.number(),
+  state: standing,
+  stateReason: z.string().nullable(),
+  stateAt: instant,
+  postedAt: instant,
+  authorName: z.string(),
+  note: z.string(),
+  verdict: verdict.nullable(),
+});
+export type RevisionSummary = z.infer<typeof RevisionSummary>;
+
+// Uploads and drafts
+
+export const StartUploadInput = z.object({
+  fileName: z.string().trim().min(1).max(200),
+  bytes: z.number().int().min(1, 'The file is empty.').max(500_000_000, 'At most 500 MB.'),
+  unit: lengthUnit.default('mm'),
+});
+export type StartUploadInput = z.infer<typeof StartUploadInput>;
+
+export const UploadView = z.object({
+  id,
+  fileName: z.string(),
+  bytes: z.number(),
+  unit: lengthUnit,
+  partBytes: z.number(),
+  partCount: z.number(),
+  /** Numbers (from 1) of the parts that the store has. */
+  partsDone: z.array(z.number()),
+  state: z.enum(['sending', 'reading', 'ready', 'refused', 'cancelled']),
+  refusal: z.object({ code: z.string(), message: z.string(), reasons: z.array(z.string()) }).nullable(),
+  mesh: z
+    .object({
+      id,
+      sha256: z.string(),
+      triangles: z.number(),
+      boundsMm: z.object({ min: z.array(z.number()), max: z.array(z.number()) }),
+    })
+    .nullable(),
+});
+export type UploadView = z.infer<typeof UploadView>;
+
+export const PresignPartsInput = z.object({
+  parts: z.array(z.number().int().min(1).max(10_000)).min(1).max(20),
+});
+export const PresignedParts = z.object({
+  parts: z.array(z.object({ number: z.number(), url: z.url(), bytes: z.number() })),
+});
+export const PartDoneInput = z.object({
+  number: z.number().int().min(1).max(10_000),
+  etag: z.string().min(1).max(100),
+});
+
+/** The recipe as a person edits it; the engine's own schema (lib/formability/recipe.ts) fills and checks it. */
+export const SaveDraftInput = z.object({
+  uploadId: id.nullable(),
+  recipe: z.record(z.string(), z.unknown()),
+  note: z.string().max(2000),
+  version: z.number().int(),
+});
+export type SaveDraftInput = z.infer<typeof SaveDraftInput>;
+
+export const DraftView = z.object({
+  id,
+  templateId: id,
+  nextLetter: z.string(),
+  recipe: z.record(z.string(), z.unknown()),
+  note: z.string(),
+  upload: UploadView.nullable(),
+  version: z.number(),
+  changedAt: instant,
+});
+export type DraftView = z.infer<typeof DraftView>;
+
+export const PostRevisionInput = z.object({ version: z.number().int() });
+export type PostRevisionInput = z.infer<typeof PostRevisionInput>;
+
+// The revision as its page shows it
+
+export const FindingView = z.object({
+  id,
+  checkId: z.string(),
+  status: z.enum(['pass', 'caution', 'fail', 'not-run']),
+  measured: z.number().nullable(),
+  limit: z.number().nullable(),
+  unit: z.string(),
+  message: z.string(),
+  remedy: z.string(),
+  basis: z.object({ source: z.string(), kind: z.string() }),
+  places: z.array(z.object({ at: point, areaMm2: z.number() })),
+  waiver: z.object({ reason: z.string(), by: z.string(), at: instant }).nullable(),
+  threadId: id.nullable(),
+});
+export type FindingView = z.infer<typeof FindingView>;
+
+export const PinInput = z.object({
+  at: point,
+  normal: point,
+  view: z
+    .object({
+      position: z.array(z.number()).length(3),
+      target: z.array(z.number()).length(3),
+      up: z.array(z.number()).length(3),
+    })
+    .nullable(),
+});
+export type PinInput = z.infer<typeof PinInput>;
+
+export const NoteView = z.object({
+  id,
+  authorId: id,
+  authorName: z.string(),
+  body: z.record(z.string(), z.unknown()),
+  text: z.string(),
+  createdAt: instant,
+});
+export type NoteView = z.infer<typeof NoteView>;
+
+export const ThreadView = z.object({
+  id,
+  openedOn: z.string(),
+  findingId: id.nullable(),
+  mustSettle: z.boolean(),
+  afterApproval: z.boolean(),
+  state: z.enum(['open', 'settled']),
+  settledByName: z.string().nullable(),
+  settledAt: instant.nullable(),
+  pin: PinInput.nullable(),
+  standing: z.enum(['placed', 'carried', 'kept', 'moved', 'lost', 'free']),
+  distanceMm: z.number().nullable(),
+  openedByName: z.string(),
+  createdAt: instant,
+  notes: z.array(NoteView),
+  version: z.number(),
+});
+export type ThreadView = z.infer<typeof ThreadView>;
+
+export const DocketView = z.object({
+  revisionId: id,
+  findings: z.array(FindingView),
+  threads: z.array(ThreadView),
+  /** What keeps the next gate shut: failing findings not waived, open threads that must be settled. */
+  counts: z.object({ mustSettle: z.number(), look: z.number(), settled: z.number() }),
+});
+export type DocketView = z.infer<typeof DocketView>;
+
+export const SignatureView = z.object({
+  id,
+  decision: z.enum(['sign', 'return']),
+  printedName: z.string(),
+  role: z.string(),
+  meaning: z.string(),
+  reason: z.string().nullable(),
+  contentDigest: z.string(),
+  signedAt: instant,
+  timeZone: z.string(),
+});
+export type SignatureView = z.infer<typeof SignatureView>;
+
+export const GateView = z.object({
+  id,
+  ordinal: z.number(),
+  key: z.string(),
+  name: z.string(),
+  kind: z.enum(['automatic', 'people']),
+  meaning: z.string(),
+  quorum: z.number(),
+  state: z.enum(['waiting', 'open', 'passed', 'returned', 'closed']),
+  openedAt: instant.nullable(),
+  passedAt: instant.nullable(),
+  signatures: z.array(SignatureView),
+  /** Names of those who may still sign an open gate. */
+  awaited: z.array(z.string()),
+});
+export type GateView = z.infer<typeof GateView>;
+
+export const RevisionView = z.object({
+  id,
+  template: z.object({ id, number: z.string(), title: z.string(), dueOn: z.iso.date().nullable() }),
+  letter: z.string(),
+  state: standing,
+  stateReason: z.string().nullable(),
+  postedAt: instant,
+  author: z.object({ id, name: z.string() }),
+  note: z.string(),
+  mesh: z.object({
+    fileName: z.string(),
+    bytes: z.number(),
+    sha256: z.string(),
+    triangles: z.number(),
+    format: z.string(),
+    unit: z.string(),
+  }),
+  recipe: z.record(z.string(), z.unknown()),
+  check: z.object({
+    state: z.enum(['queued', 'running', 'finished', 'failed']),
+    stage: z.string().nullable(),
+    progress: z.number(),
+    verdict: verdict.nullable(),
+    error: z.string().nullable(),
+    finishedAt: instant.nullable(),
+    engineVersion: z.string().nullable(),
+  }),
+  model: z
+    .object({ url: z.string(), pictureUrl: z.string(), meta: z.record(z.string(), z.unknown()) })
+    .nullable(),
+  gates: z.array(GateView),
+  /** Digest of the content as it stands now; equal to the signed one once locked. */
+  contentDigest: z.string().nullable(),
+  lockedAt: instant.nullable(),
+  release: z
+    .object({
+      id,
+      byName: z.string(),
+      at: instant,
+      note: z.string(),
+      pack: z.object({ fileName: z.string(), bytes: z.number(), sha256: z.string() }).nullable(),
+    })
+    .nullable(),
+  siblings: z.array(z.object({ id, letter: z.string(), state: standing })),
+  /** What the reader may do here and now; the server decides again when they do it. */
+  can: z.object({
+    note: z.boolean(),
+    settle: z.boolean(),
+    waive: z.boolean(),
+    sign: z.object({ gateId: id, gateName: z.string(), meaning: z.string() }).nullable(),
+    withdraw: z.boolean(),
+    release: z.boolean(),
+    recall: z.boolean(),
+    retire: z.boolean(),
+    download: z.boolean(),
+    post: z.boolean(),
+  }),
+  version: z.number(),
+});
+export type RevisionView = z.infer<typeof RevisionView>;
+
+// Docket commands
+
+export const NoteInput = z.object({ clientKey: id, body: z.record(z.string(), z.unknown()) });
+export const OpenThreadInput = NoteInput.extend({
+  findingId: id.nullable().default(null),
+  pin: PinInput.nullable().default(null),
+  mustSettle: z.boolean().default(false),
+});
+export type OpenThreadInput = z.infer<typeof OpenThreadInput>;
+export type NoteInput = z.infer<typeof NoteInput>;
+export const SettleInput = z.object({ settled: z.boolean(), version: z.number().int() });
+export const WaiveInput = z.object({
+  reason: z.string().trim().min(10, 'Say why in at least ten characters: it stays on record.').max(1000),
+});
+
+// Gates
+
+/** Exactly what a signer puts their name to. */
+export const ContentView = z.object({
+  digest: z.string(),
+  content: z.record(z.string(), z.unknown()),
+  summary: z.object({
+    revision: z.string(),
+    meshSha256: z.string(),
+    meshFile: z.string(),
+    meshBytes: z.number(),
+    recipe: z.array(z.object({ label: z.string(), value: z.string() })),
+    verdict: verdict.nullable(),
+    findings: z.array(
+      z.object({
+        checkId: z.string(),
+        status: z.string(),
+        message: z.string(),
+        waived: z.string().nullable(),
+      }),
+    ),
+    openItems: z.array(z.string()),
+    gatePlan: z.string(),
+  }),
+});
+export type ContentView = z.infer<typeof ContentView>;
+
+export const SignInput = z.object({
+  digest: z.string().length(64),
+  password: z.string().min(1, 'Type your password.').max(128),
+});
+export const ReturnInput = SignInput.extend({
+  reason: z.string().trim().min(5, 'Say what must change.').max(2000),
+});
+export const ReasonInput = z.object({
+  reason: z.string().trim().min(5, 'Give a reason; it stays on record.').max(2000),
+});
+export const ReleaseInput = z.object({ note: z.string().trim().max(2000).default('') });
+
+// Today
+
+export const TodayItem = z.object({
+  kind: z.enum(['sign', 'settle', 'answer', 'fix', 'release', 'draft', 'mention']),
+  workspace: z.object({ name: z.string(), slug: z.string() }),
+  templateNumber: z.string(),
+  templateTitle: z.string(),
+  letter: z.string().nullable(),
+  path: z.string(),
+  text: z.string(),
+  since: instant,
+  dueOn: z.iso.date().nullable(),
+});
+export type TodayItem = z.infer<typeof TodayItem>;
+export const TodayView = z.object({
+  items: z.array(TodayItem),
+  recent: z.array(z.object({ workspace: z.string(), text: z.string(), path: z.string(), at: instant })),
+});
+export type TodayView = z.infer<typeof TodayView>;
