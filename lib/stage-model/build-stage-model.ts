@@ -1,0 +1,151 @@
+import { Document, WebIO, type Accessor } from '@gltf-transform/core';
+import { EXTMeshoptCompression, KHRMeshQuantization } from '@gltf-transform/extensions';
+import { MeshoptEncoder } from 'meshoptimizer/encoder';
+import { measureDraftArea } from './draft-histogram';
+import { findCreaseEdges } from './find-crease-edges';
+import { simplifyStageMesh, TRIANGLE_TARGET } from './simplify-stage-mesh';
+import { splitVertices, type SplitMesh } from './split-vertices';
+import {
+  DRAFT_ATTRIBUTE,
+  DRAFT_STEP_DEG,
+  FLAGS_ATTRIBUTE,
+  type StageGeometry,
+  type StageModelMeta,
+} from './stage-model-meta';
+
+export interface StageModel {
+  /** binary glTF 2.0 with EXT_meshopt_compression and KHR_mesh_quantization */
+  glb: Uint8Array;
+  meta: StageModelMeta;
+}
+
+/**
+ * The compact model that the browser draws, from the engine's geometry: welded, split where colours or shading may
+ * not mix, simplified above `triangleTarget`, positions on a 16-bit grid (mm by the node's scale), `_DRAFT` in counts
+ * of 0.01°, `_FLAGS` (1 bed, 2 undercut), a second primitive of ink lines. Throws RangeError on unusable geometry.
+ */
+export async function buildStageModel(
+  geometry: StageGeometry,
+  { triangleTarget = TRIANGLE_TARGET }: { triangleTarget?: number } = {},
+): Promise<StageModel> {
+  assertUsable(geometry);
+  await MeshoptEncoder.ready;
+  const area = measureDraftArea(geometry);
+  const mesh = splitVertices(geometry);
+  if (mesh.vertices === 0) throw new RangeError('The mesh has no facet with an area; there is nothing to show.');
+  const { index, boundMm, errorMm } = await simplifyStageMesh(mesh, triangleTarget);
+  const lines = findCreaseEdges(mesh, index);
+  const [remap, vertices] = MeshoptEncoder.reorderMesh(index, true, true);
+  const lineIndex = lines.map((v) => remap[v]);
+  const meta: StageModelMeta = {
+    schema: 1,
+    triangles: index.length / 3,
+    vertices,
+    sourceTriangles: geometry.facetDraftDeg.length,
+    bytes: 0,
+    boundsMm: bounds(mesh),
+    draftRangeDeg: area.rangeDeg,
+    quantumMm: mesh.stepMm / 2,
+    simplificationBoundMm: boundMm,
+    simplificationErrorMm: errorMm,
+    draftSplitDeg: mesh.draftSplitDeg,
+    areaMm2: area.areaMm2,
+    histogram: area.histogram,
+  };
+  const glb = await writeGlb(mesh, remap, vertices, index, lineIndex, meta);
+  return { glb, meta: { ...meta, bytes: glb.byteLength } };
+}
+
+async function writeGlb(
+  mesh: SplitMesh,
+  remap: Uint32Array,
+  vertices: number,
+  index: Uint32Array,
+  lineIndex: Uint32Array,
+  meta: StageModelMeta,
+): Promise<Uint8Array> {
+  const { position, normal, draft, flags } = vertexArrays(mesh, remap, vertices);
+  const doc = new Document();
+  const buffer = doc.createBuffer();
+  const accessor = (type: 'SCALAR' | 'VEC3', array: Parameters<Accessor['setArray']>[0]) =>
+    doc.createAccessor().setType(type).setArray(array).setBuffer(buffer);
+  const attributes = {
+    POSITION: accessor('VEC3', position),
+    NORMAL: accessor('VEC3', normal),
+    [DRAFT_ATTRIBUTE]: accessor('SCALAR', draft),
+    [FLAGS_ATTRIBUTE]: accessor('SCALAR', flags),
+  };
+  const surface = doc.createPrimitive().setIndices(accessor('SCALAR', narrow(index, vertices)));
+  for (const [name, value] of Object.entries(attributes)) surface.setAttribute(name, value);
+  const shape = doc.createMesh('template').addPrimitive(surface);
+  if (lineIndex.length > 0) {
+    const ink = doc.createPrimitive().setMode(1).setIndices(accessor('SCALAR', narrow(lineIndex, vertices)));
+    shape.addPrimitive(ink.setAttribute('POSITION', attributes.POSITION));
+  }
+  shape.setExtras({
+    unit: 'mm',
+    up: 'z',
+    draft: { attribute: DRAFT_ATTRIBUTE, unit: 'deg', step: DRAFT_STEP_DEG, range: meta.draftRangeDeg },
+    flags: { attribute: FLAGS_ATTRIBUTE, bed: 1, undercut: 2 },
+    sourceTriangles: meta.sourceTriangles,
+    simplificationErrorMm: meta.simplificationErrorMm,
+  });
+  const node = doc.createNode('template').setMesh(shape).setTranslation(mesh.origin);
+  node.setScale([mesh.stepMm, mesh.stepMm, mesh.stepMm]);
+  doc.createScene().addChild(node);
+  doc.createExtension(KHRMeshQuantization).setRequired(true);
+  doc
+    .createExtension(EXTMeshoptCompression)
+    .setRequired(true)
+    .setEncoderOptions({ method: EXTMeshoptCompression.EncoderMethod.FILTER });
+  const io = new WebIO()
+    .registerExtensions([EXTMeshoptCompression, KHRMeshQuantization])
+    .registerDependencies({ 'meshopt.encoder': MeshoptEncoder });
+  return io.writeBinary(doc);
+}
+
+/** Vertices in the order of the reordered index; `remap` holds 0xffffffff for those no triangle uses. */
+function vertexArrays(mesh: SplitMesh, remap: Uint32Array, vertices: number) {
+  const position = new Uint16Array(vertices * 3);
+  const normal = new Float32Array(vertices * 3);
+  const draft = new Int16Array(vertices);
+  const flags = new Uint8Array(vertices);
+  for (let v = 0; v < mesh.vertices; v++) {
+    const to = remap[v];
+    if (to === 0xffffffff) continue;
+    for (let a = 0; a < 3; a++) {
+      position[to * 3 + a] = mesh.grid[mesh.place[v] * 3 + a];
+      normal[to * 3 + a] = mesh.normals[v * 3 + a];
+    }
+    draft[to] = mesh.draft[v];
+    flags[to] = mesh.flags[v];
+  }
+  return { position, normal, draft, flags };
+}
+
+function narrow(index: Uint32Array, vertices: number): Uint16Array<ArrayBuffer> | Uint32Array<ArrayBuffer> {
+  return vertices <= 65535 ? Uint16Array.from(index) : Uint32Array.from(index);
+}
+
+function bounds({ grid, origin, stepMm }: SplitMesh): StageModelMeta['boundsMm'] {
+  const top = [0, 0, 0];
+  for (let i = 0; i < grid.length; i++) top[i % 3] = Math.max(top[i % 3], grid[i]);
+  const max = origin.map((o, a) => o + top[a] * stepMm) as [number, number, number];
+  return { min: [...origin], max };
+}
+
+function assertUsable({ positions, facetDraftDeg, facetFlags }: StageGeometry): void {
+  const facets = facetDraftDeg.length;
+  if (facets === 0) throw new RangeError('The mesh has no triangle; there is nothing to show.');
+  if (positions.length !== facets * 9 || facetFlags.length !== facets) {
+    throw new RangeError(
+      `Geometry does not agree: ${positions.length} coordinates, ${facets} drafts, ${facetFlags.length} flags; ` +
+        'nine coordinates, one draft and one flag a triangle are needed.',
+    );
+  }
+  for (let i = 0; i < positions.length; i++) {
+    if (!Number.isFinite(positions[i])) {
+      throw new RangeError(`Triangle ${Math.floor(i / 9)} has a coordinate that is not a number; parse the mesh again.`);
+    }
+  }
+}

@@ -1,0 +1,85 @@
+import { FLAG_BED, FLAG_UNDERCUT, type DraftHistogram, type StageGeometry } from './stage-model-meta';
+
+/** Half a degree where walls are judged, coarse where nothing hangs on it. Bin [a, b), the last one closed. */
+export const HISTOGRAM_EDGES_DEG: readonly number[] = [
+  -90,
+  -60,
+  -30,
+  -10,
+  -5,
+  -2,
+  -1,
+  -0.5,
+  ...Array.from({ length: 41 }, (_, i) => i / 2),
+  25,
+  30,
+  45,
+  60,
+  75,
+  90,
+];
+
+export interface DraftArea {
+  histogram: DraftHistogram;
+  rangeDeg: [number, number];
+  areaMm2: { total: number; bed: number; undercut: number };
+}
+
+/** Area of the facets by draft, in mm²; bed facets count in `areaMm2.total` and `.bed` only. */
+export function measureDraftArea({ positions, facetDraftDeg, facetFlags }: StageGeometry): DraftArea {
+  const edges = [...HISTOGRAM_EDGES_DEG];
+  const areas = new Array<number>(edges.length - 1).fill(0);
+  const area = { total: 0, bed: 0, undercut: 0 };
+  let low = Infinity;
+  let high = -Infinity;
+  for (let f = 0; f < facetDraftDeg.length; f++) {
+    const a = facetArea(positions, f);
+    area.total += a;
+    if (facetFlags[f] & FLAG_BED) {
+      area.bed += a;
+      continue;
+    }
+    if (facetFlags[f] & FLAG_UNDERCUT) area.undercut += a;
+    if (a === 0) continue;
+    const draft = Math.min(90, Math.max(-90, facetDraftDeg[f]));
+    low = Math.min(low, draft);
+    high = Math.max(high, draft);
+    areas[binOf(edges, draft)] += a;
+  }
+  return {
+    histogram: { edgesDeg: edges, areaMm2: areas },
+    rangeDeg: low > high ? [0, 0] : [low, high],
+    areaMm2: area,
+  };
+}
+
+/** Area of the non-bed facets whose draft is below the limit, mm²; a bin that the limit cuts counts in proportion. */
+export function areaBelowDraft(histogram: DraftHistogram, limitDeg: number): number {
+  const { edgesDeg, areaMm2 } = histogram;
+  return areaMm2.reduce((sum, area, i) => {
+    const share = (limitDeg - edgesDeg[i]) / (edgesDeg[i + 1] - edgesDeg[i]);
+    return sum + area * Math.min(1, Math.max(0, share));
+  }, 0);
+}
+
+function binOf(edges: number[], draft: number): number {
+  let low = 0;
+  let high = edges.length - 2;
+  while (low < high) {
+    const mid = (low + high + 1) >> 1;
+    if (edges[mid] <= draft) low = mid;
+    else high = mid - 1;
+  }
+  return low;
+}
+
+function facetArea(p: Float32Array, facet: number): number {
+  const i = facet * 9;
+  const ux = p[i + 3] - p[i];
+  const uy = p[i + 4] - p[i + 1];
+  const uz = p[i + 5] - p[i + 2];
+  const vx = p[i + 6] - p[i];
+  const vy = p[i + 7] - p[i + 1];
+  const vz = p[i + 8] - p[i + 2];
+  return Math.hypot(uy * vz - uz * vy, uz * vx - ux * vz, ux * vy - uy * vx) / 2;
+}

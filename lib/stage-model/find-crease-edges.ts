@@ -1,0 +1,75 @@
+import { CREASE_DEG, type SplitMesh } from './split-vertices';
+
+const CREASE_COS = Math.cos((CREASE_DEG * Math.PI) / 180);
+/** A mesh that is rough all over would be inked black; beyond this share of its edges none is drawn. */
+const MOST_SHARE = 0.25;
+
+/** Pairs of vertices: the edges between facets that meet sharply, and open ones; drawn as ink lines. */
+export function findCreaseEdges(mesh: SplitMesh, index: Uint32Array): Uint32Array {
+  const edges = index.length;
+  let size = 1024;
+  while (size < edges * 2) size *= 2;
+  const mask = size - 1;
+  const table = new Int32Array(size).fill(-1);
+  // Per edge: the corner that made it first, and how it stands (0 seen once, 1 smooth pair, 2 sharp).
+  const firstCorner = new Uint32Array(edges);
+  const state = new Uint8Array(edges);
+  const normals = unitNormals(mesh, index);
+  let found = 0;
+  for (let c = 0; c < index.length; c++) {
+    const next = c % 3 === 2 ? c - 2 : c + 1;
+    const p = mesh.place[index[c]];
+    const q = mesh.place[index[next]];
+    const low = Math.min(p, q);
+    const high = Math.max(p, q);
+    let h = (Math.imul(low, 0x9e3779b1) ^ Math.imul(high, 0x85ebca6b)) >>> 0;
+    h = (h ^ (h >>> 15)) & mask;
+    for (;;) {
+      const e = table[h];
+      if (e < 0) {
+        table[h] = found;
+        firstCorner[found++] = c;
+        break;
+      }
+      const [a, b] = endPlaces(mesh, index, firstCorner[e]);
+      if (Math.min(a, b) === low && Math.max(a, b) === high) {
+        state[e] = state[e] === 0 && smooth(normals, firstCorner[e], c) ? 1 : 2;
+        break;
+      }
+      h = (h + 1) & mask;
+    }
+  }
+  const pairs: number[] = [];
+  for (let e = 0; e < found; e++) {
+    if (state[e] === 1) continue;
+    const c = firstCorner[e];
+    pairs.push(index[c], index[c % 3 === 2 ? c - 2 : c + 1]);
+  }
+  const few = pairs.length / 2 <= Math.max(2000, found * MOST_SHARE);
+  return few ? Uint32Array.from(pairs) : new Uint32Array(0);
+}
+
+function endPlaces(mesh: SplitMesh, index: Uint32Array, c: number): [number, number] {
+  return [mesh.place[index[c]], mesh.place[index[c % 3 === 2 ? c - 2 : c + 1]]];
+}
+
+function smooth(normals: Float32Array, corner: number, other: number): boolean {
+  const a = ((corner / 3) | 0) * 3;
+  const b = ((other / 3) | 0) * 3;
+  return normals[a] * normals[b] + normals[a + 1] * normals[b + 1] + normals[a + 2] * normals[b + 2] >= CREASE_COS;
+}
+
+function unitNormals({ grid, place }: SplitMesh, index: Uint32Array): Float32Array {
+  const normals = new Float32Array(index.length);
+  for (let i = 0; i < index.length; i += 3) {
+    const [a, b, c] = [place[index[i]] * 3, place[index[i + 1]] * 3, place[index[i + 2]] * 3];
+    const [ux, uy, uz] = [grid[b] - grid[a], grid[b + 1] - grid[a + 1], grid[b + 2] - grid[a + 2]];
+    const [vx, vy, vz] = [grid[c] - grid[a], grid[c + 1] - grid[a + 1], grid[c + 2] - grid[a + 2]];
+    const [x, y, z] = [uy * vz - uz * vy, uz * vx - ux * vz, ux * vy - uy * vx];
+    const length = Math.hypot(x, y, z) || 1;
+    normals[i] = x / length;
+    normals[i + 1] = y / length;
+    normals[i + 2] = z / length;
+  }
+  return normals;
+}

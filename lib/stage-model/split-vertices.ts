@@ -1,0 +1,252 @@
+import { DRAFT_STEP_DEG, type StageGeometry } from './stage-model-meta';
+
+/** An indexed mesh whose vertices are split wherever shading or colour may not run across an edge. */
+export interface SplitMesh {
+  /** three corners a triangle */
+  index: Uint32Array;
+  /** place (welded point) of each vertex */
+  place: Uint32Array;
+  /** three counts of the position grid for each place */
+  grid: Uint16Array;
+  /** unit normal of each vertex, three numbers */
+  normals: Float32Array;
+  /** counts of DRAFT_STEP_DEG */
+  draft: Int16Array;
+  flags: Uint8Array;
+  vertices: number;
+  places: number;
+  origin: [number, number, number];
+  stepMm: number;
+  draftSplitDeg: number;
+}
+
+/** Facets meeting at more than this angle keep a sharp edge between them. */
+export const CREASE_DEG = 32;
+const CREASE_COS = Math.cos((CREASE_DEG * Math.PI) / 180);
+/** At 180 nothing is split: the mesh is rough all over (a noisy scan) and its mean is what can be shown. */
+const DRAFT_SPLITS_DEG = [1, 3, 10, 180];
+
+/**
+ * Rounds positions to a 16-bit grid over the bounds, welds equal ones, and splits vertices by crease, draft and flag.
+ * The draft step is widened from 1° upwards only when a rough mesh would give more than 1.5 vertices a triangle.
+ */
+export function splitVertices(geometry: StageGeometry): SplitMesh {
+  const welded = weldCorners(geometry.positions);
+  const kept = keepSoundFacets(welded.corner, geometry);
+  const normals = facetNormals(kept.corner, welded.grid);
+  const incident = cornersByPlace(kept.corner, welded.places);
+  // A look at some of the places tells which tolerance will do, before all are gone through.
+  const most = Math.max(1, (kept.draft.length * 1.5) / welded.places);
+  const stride = Math.max(1, Math.floor(welded.places / 10_000));
+  const splitDeg =
+    DRAFT_SPLITS_DEG.find((deg) => {
+      const sample = clusterCorners(kept, normals, incident, welded.places, deg, stride);
+      return sample.vertices <= most * Math.ceil(welded.places / stride) || sample.vertices < 3000;
+    }) ?? 180;
+  const split = clusterCorners(kept, normals, incident, welded.places, splitDeg, 1);
+  return { ...split, grid: welded.grid, places: welded.places, origin: welded.origin, stepMm: welded.stepMm };
+}
+
+function weldCorners(positions: Float32Array) {
+  const corners = positions.length / 3;
+  const min = [Infinity, Infinity, Infinity];
+  const max = [-Infinity, -Infinity, -Infinity];
+  for (let i = 0; i < positions.length; i += 3) {
+    for (let a = 0; a < 3; a++) {
+      const v = positions[i + a];
+      if (v < min[a]) min[a] = v;
+      if (v > max[a]) max[a] = v;
+    }
+  }
+  const span = Math.max(max[0] - min[0], max[1] - min[1], max[2] - min[2]);
+  const stepMm = span > 0 ? span / 65535 : 1;
+  let size = 1024;
+  while (size < corners) size *= 2;
+  const mask = size - 1;
+  const table = new Int32Array(size).fill(-1);
+  const corner = new Uint32Array(corners);
+  let grid = new Uint16Array(Math.max(96, corners));
+  let places = 0;
+  for (let c = 0; c < corners; c++) {
+    const x = Math.round((positions[c * 3] - min[0]) / stepMm);
+    const y = Math.round((positions[c * 3 + 1] - min[1]) / stepMm);
+    const z = Math.round((positions[c * 3 + 2] - min[2]) / stepMm);
+    let h = (Math.imul(x, 0x9e3779b1) ^ Math.imul(y, 0x85ebca6b) ^ Math.imul(z, 0xc2b2ae35)) >>> 0;
+    h = (h ^ (h >>> 15)) & mask;
+    for (;;) {
+      const at = table[h];
+      if (at < 0) {
+        if (places * 3 + 3 > grid.length) grid = grow(grid);
+        grid[places * 3] = x;
+        grid[places * 3 + 1] = y;
+        grid[places * 3 + 2] = z;
+        table[h] = places;
+        corner[c] = places++;
+        break;
+      }
+      if (grid[at * 3] === x && grid[at * 3 + 1] === y && grid[at * 3 + 2] === z) {
+        corner[c] = at;
+        break;
+      }
+      h = (h + 1) & mask;
+    }
+  }
+  const origin = min as [number, number, number];
+  return { corner, grid: grid.slice(0, places * 3), places, origin, stepMm };
+}
+
+function grow(grid: Uint16Array<ArrayBuffer>): Uint16Array<ArrayBuffer> {
+  const next = new Uint16Array(grid.length * 2);
+  next.set(grid);
+  return next;
+}
+
+/** Facets that the grid has closed to a line or a point have no area to show and are left out. */
+function keepSoundFacets(corner: Uint32Array, { facetDraftDeg, facetFlags }: StageGeometry) {
+  const kept = new Uint32Array(corner.length);
+  const draft = new Int16Array(facetDraftDeg.length);
+  const flags = new Uint8Array(facetDraftDeg.length);
+  let n = 0;
+  for (let f = 0; f < facetDraftDeg.length; f++) {
+    const a = corner[f * 3];
+    const b = corner[f * 3 + 1];
+    const c = corner[f * 3 + 2];
+    if (a === b || b === c || c === a) continue;
+    kept.set([a, b, c], n * 3);
+    draft[n] = Math.round(facetDraftDeg[f] / DRAFT_STEP_DEG);
+    flags[n++] = facetFlags[f];
+  }
+  return { corner: kept.subarray(0, n * 3), draft: draft.subarray(0, n), flags: flags.subarray(0, n) };
+}
+
+/** Area-weighted (not unit) normals in grid counts, three numbers a facet. */
+function facetNormals(corner: Uint32Array, grid: Uint16Array): Float32Array {
+  const normals = new Float32Array(corner.length);
+  for (let i = 0; i < corner.length; i += 3) {
+    const a = corner[i] * 3;
+    const b = corner[i + 1] * 3;
+    const c = corner[i + 2] * 3;
+    const ux = grid[b] - grid[a];
+    const uy = grid[b + 1] - grid[a + 1];
+    const uz = grid[b + 2] - grid[a + 2];
+    const vx = grid[c] - grid[a];
+    const vy = grid[c + 1] - grid[a + 1];
+    const vz = grid[c + 2] - grid[a + 2];
+    normals[i] = uy * vz - uz * vy;
+    normals[i + 1] = uz * vx - ux * vz;
+    normals[i + 2] = ux * vy - uy * vx;
+  }
+  return normals;
+}
+
+function cornersByPlace(corner: Uint32Array, places: number) {
+  const start = new Uint32Array(places + 1);
+  for (let c = 0; c < corner.length; c++) start[corner[c] + 1]++;
+  for (let p = 0; p < places; p++) start[p + 1] += start[p];
+  const fill = start.slice(0, places);
+  const list = new Uint32Array(corner.length);
+  for (let c = 0; c < corner.length; c++) list[fill[corner[c]]++] = c;
+  return { start, list };
+}
+
+type Kept = ReturnType<typeof keepSoundFacets>;
+type Incident = ReturnType<typeof cornersByPlace>;
+
+function clusterCorners(
+  kept: Kept,
+  normals: Float32Array,
+  { start, list }: Incident,
+  places: number,
+  splitDeg: number,
+  stride: number,
+) {
+  const tolerance = splitDeg / DRAFT_STEP_DEG;
+  const rough = splitDeg === 180;
+  const creaseCos = rough ? -2 : CREASE_COS;
+  const lengths = new Float32Array(kept.draft.length);
+  for (let f = 0; f < lengths.length; f++) {
+    lengths[f] = Math.hypot(normals[f * 3], normals[f * 3 + 1], normals[f * 3 + 2]);
+  }
+  const corners = kept.corner.length;
+  const index = new Uint32Array(corners);
+  const place = new Uint32Array(corners);
+  const outNormals = new Float32Array(corners * 3);
+  const draft = new Int16Array(corners);
+  const flags = new Uint8Array(corners);
+  let vertices = 0;
+  // Per place: smooth groups carry the normal, draft groups inside them become the vertices.
+  let leader: number[] = [];
+  let sums: number[] = [];
+  let groupOf: number[] = [];
+  for (let p = 0; p < places; p += stride) {
+    const from = start[p];
+    const to = start[p + 1];
+    leader = [];
+    sums = [];
+    groupOf = [];
+    for (let k = from; k < to; k++) {
+      const f = (list[k] / 3) | 0;
+      const nx = normals[f * 3];
+      const ny = normals[f * 3 + 1];
+      const nz = normals[f * 3 + 2];
+      let g = 0;
+      for (; g < leader.length; g++) {
+        const l = leader[g];
+        const dot = nx * normals[l * 3] + ny * normals[l * 3 + 1] + nz * normals[l * 3 + 2];
+        if (dot >= creaseCos * lengths[f] * lengths[l]) break;
+      }
+      if (g === leader.length) {
+        leader.push(f);
+        sums.push(0, 0, 0);
+      }
+      sums[g * 3] += nx;
+      sums[g * 3 + 1] += ny;
+      sums[g * 3 + 2] += nz;
+      groupOf.push(g);
+    }
+    const first = vertices;
+    for (let k = from; k < to; k++) {
+      const f = (list[k] / 3) | 0;
+      const g = groupOf[k - from];
+      let v = first;
+      for (; v < vertices; v++) {
+        const alike = rough || (flags[v] === kept.flags[f] && Math.abs(draft[v] - kept.draft[f]) <= tolerance);
+        if (place[v] === g && alike) break;
+      }
+      if (v === vertices) {
+        const length = Math.hypot(sums[g * 3], sums[g * 3 + 1], sums[g * 3 + 2]) || 1;
+        for (let a = 0; a < 3; a++) outNormals[v * 3 + a] = sums[g * 3 + a] / length;
+        place[v] = g;
+        draft[v] = kept.draft[f];
+        flags[v] = kept.flags[f];
+        vertices++;
+      }
+      index[list[k]] = v;
+    }
+    for (let v = first; v < vertices; v++) place[v] = p;
+  }
+  return {
+    index,
+    place: place.slice(0, vertices),
+    normals: outNormals.slice(0, vertices * 3),
+    draft: averageDraft(index, kept.draft, lengths, vertices),
+    flags: flags.slice(0, vertices),
+    vertices,
+    draftSplitDeg: splitDeg,
+  };
+}
+
+/** Area-weighted mean of the facets that share a vertex; they differ by the split tolerance at most. */
+function averageDraft(index: Uint32Array, facetDraft: Int16Array, areas: Float32Array, vertices: number) {
+  const sum = new Float64Array(vertices);
+  const weight = new Float64Array(vertices);
+  for (let c = 0; c < index.length; c++) {
+    const f = (c / 3) | 0;
+    const w = areas[f] + 1e-9;
+    sum[index[c]] += facetDraft[f] * w;
+    weight[index[c]] += w;
+  }
+  const draft = new Int16Array(vertices);
+  for (let v = 0; v < vertices; v++) draft[v] = Math.round(sum[v] / weight[v]);
+  return draft;
+}
