@@ -65,7 +65,7 @@ export function AppShell({
           <Wordmark />
           <nav
             aria-label="Where you are"
-            className="order-last min-w-0 basis-full md:order-none md:basis-auto"
+            className="order-last min-w-0 basis-full lg:order-none lg:basis-auto"
           >
             <ol className="flex flex-wrap items-center gap-x-2 gap-y-0.5 text-base text-slate">
               {spaces.length > 0 ? (

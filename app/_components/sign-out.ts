@@ -8,5 +8,5 @@ export async function signOut(): Promise<void> {
   window.localStorage.clear();
   const databases = (await window.indexedDB.databases?.()) ?? [];
   for (const { name } of databases) if (name) window.indexedDB.deleteDatabase(name);
-  window.location.assign('/sign-in');
+  window.location.replace('/sign-in');
 }
