@@ -1,0 +1,2 @@
+export function packagesAreCurrent(folder: string): boolean;
+export function ensurePackages(folder: string): Promise<boolean>;

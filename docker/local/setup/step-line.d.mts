@@ -1,0 +1,5 @@
+export interface StepPrinter {
+  step<T>(name: string, work: () => Promise<T>, describe?: (result: T) => string): Promise<T>;
+  note(text: string): void;
+}
+export function stepPrinter(out?: { write(text: string): unknown }): StepPrinter;
