@@ -43,7 +43,7 @@ module.exports = {
       name: 'only-data-files-query',
       comment: 'A feature queries its tables in its own data files; everything else calls them.',
       severity: 'error',
-      from: { path: '^lib/(review|production|workspaces|studio)/', pathNot: '(^|/)([a-z-]+-)?data\\.ts$' },
+      from: { path: '^lib/(review|production|workspaces|studio)/', pathNot: 'data\\.ts$' },
       to: { path: '^db/schema/', dependencyTypesNot: ['type-only'] },
     },
     {
