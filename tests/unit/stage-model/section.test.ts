@@ -30,7 +30,7 @@ describe('cutSection of a square frustum', () => {
     expect(walls.map((w) => w.kind).sort()).toEqual(['bed', 'flat', 'wall', 'wall']);
   });
 
-  it('cuts the sloping end walls as the hyperbola-free trapezium of a plane wall', () => {
+  it('reaches as high as the sloping end wall does at the cut', () => {
     // At y = -29 the front wall is met at z = (30 - 29) / tan(5°) below the top's own edge.
     const atMm = -29;
     const section = cutSection({ positions }, { axis: 'y', atMm });

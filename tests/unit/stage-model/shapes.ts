@@ -122,7 +122,7 @@ export interface TrayOptions {
 
 /**
  * A drafted plinth with fluted cups standing on it, each with an optional vent bore to the bed: one closed solid.
- * The top of the plinth is triangulated as one square cell a cup, its outline joined to the cup's foot ring.
+ * The top of the plinth is one square cell a cup, joined corner by corner to the cup's foot ring.
  */
 export function tray(options: Partial<TrayOptions> = {}): Float32Array {
   const o = { columns: 3, rows: 2, segments: 96, drafts: [9, 9, 4, 9, 9, 6], flute: 0.8, ventMm: 1.2, ...options };
@@ -130,12 +130,6 @@ export function tray(options: Partial<TrayOptions> = {}): Float32Array {
   const [plinth, height, foot] = [14, 26, 23];
   const soup = new Soup();
   const n = o.segments;
-  const cell = (x: number, y: number, z: number, grow: number) =>
-    Array.from({ length: n }, (_, i): Point => {
-      const t = ((i + 0.5) / n) * 2 * Math.PI;
-      const k = pitch / 2 / Math.max(Math.abs(Math.cos(t)), Math.abs(Math.sin(t)));
-      return [x + k * Math.cos(t) * grow, y + k * Math.sin(t) * grow, z];
-    });
   const corners = (x: number, y: number, z: number): Point[] => rectangle(pitch, pitch, z, x, y);
   for (let r = 0; r < o.rows; r++) {
     for (let c = 0; c < o.columns; c++) {
@@ -156,12 +150,10 @@ export function tray(options: Partial<TrayOptions> = {}): Float32Array {
       }
     }
   }
-  void cell;
   const [w, d] = [o.columns * pitch, o.rows * pitch];
   const flange = plinth * Math.tan((7 * Math.PI) / 180);
-  const split = (ring: Point[]) => ring;
-  const low = split(rectangle(w + 2 * flange, d + 2 * flange, 0));
-  const high = split(rectangle(w, d, plinth));
+  const low = rectangle(w + 2 * flange, d + 2 * flange, 0);
+  const high = rectangle(w, d, plinth);
   soup.band(low, high);
   const inner = rectangle(w, d, 0);
   for (let i = 0; i < 4; i++) {
@@ -174,7 +166,7 @@ export function tray(options: Partial<TrayOptions> = {}): Float32Array {
 /** Flat floor between a square and a ring inside it: each ring edge goes to the nearest corner, corners in turn. */
 function ringFloor(soup: Soup, square: Point[], ring: Point[], up: boolean): void {
   const n = ring.length;
-  const quarter = (i: number) => Math.floor(((((i + 0.5) / n) * 4 + 4) % 4) + 0) % 4;
+  const quarter = (i: number) => Math.floor(((i + 0.5) / n) * 4) % 4;
   const cornerOf = [2, 3, 0, 1];
   for (let i = 0; i < n; i++) {
     const j = (i + 1) % n;
