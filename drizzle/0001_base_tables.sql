@@ -58,6 +58,7 @@ CREATE TABLE "jobs" (
 	"input_digest" text NOT NULL,
 	"state" text DEFAULT 'queued' NOT NULL,
 	"attempt" integer DEFAULT 0 NOT NULL,
+	"handed_back" integer DEFAULT 0 NOT NULL,
 	"lease_until" timestamp (3) with time zone,
 	"worker" text,
 	"stage" text,
@@ -560,6 +561,7 @@ CREATE TABLE "invitations" (
 	"email" text NOT NULL,
 	"role" text NOT NULL,
 	"status" text DEFAULT 'pending' NOT NULL,
+	"token_hash" text NOT NULL,
 	"expires_at" timestamp (3) with time zone NOT NULL,
 	"inviter_id" uuid NOT NULL,
 	"created_at" timestamp (3) with time zone DEFAULT clock_timestamp() NOT NULL
@@ -582,6 +584,7 @@ CREATE TABLE "studio_invitations" (
 	"email" text NOT NULL,
 	"role" text NOT NULL,
 	"status" text DEFAULT 'pending' NOT NULL,
+	"token_hash" text NOT NULL,
 	"expires_at" timestamp (3) with time zone NOT NULL,
 	"inviter_id" uuid NOT NULL,
 	"created_at" timestamp (3) with time zone DEFAULT clock_timestamp() NOT NULL
@@ -700,7 +703,8 @@ CREATE UNIQUE INDEX "users_email_key" ON "users" USING btree (lower("email"));--
 CREATE INDEX "templates_changed" ON "templates" USING btree ("workspace_id","changed_at" DESC NULLS LAST,"id");--> statement-breakpoint
 CREATE INDEX "templates_due" ON "templates" USING btree ("workspace_id","due_on","id");--> statement-breakpoint
 CREATE INDEX "uploads_template" ON "uploads" USING btree ("workspace_id","template_id");--> statement-breakpoint
-CREATE INDEX "outbox_due" ON "outbox" USING btree ("due_at");--> statement-breakpoint
+CREATE INDEX "outbox_due" ON "outbox" USING btree ("due_at") WHERE sent_at is null and failure is null;--> statement-breakpoint
+CREATE UNIQUE INDEX "outbox_occasion" ON "outbox" USING btree ("dedupe_key");--> statement-breakpoint
 CREATE UNIQUE INDEX "invitations_one_pending" ON "invitations" USING btree ("workspace_id",lower("email")) WHERE status = 'pending';--> statement-breakpoint
 CREATE INDEX "members_user" ON "members" USING btree ("user_id");--> statement-breakpoint
 CREATE UNIQUE INDEX "studio_invitations_one_pending" ON "studio_invitations" USING btree ("studio_id",lower("email")) WHERE status = 'pending';--> statement-breakpoint

@@ -187,6 +187,16 @@ begin
 end $$;
 --> statement-breakpoint
 
+-- Workers listen: a committed job or outbox row wakes them at once; their polling is the net beneath.
+create function tell_workers() returns trigger
+  language plpgsql set search_path = public, pg_catalog, pg_temp
+  as $$ begin perform pg_notify('firstpull_work', tg_table_name); return null; end $$;
+--> statement-breakpoint
+create trigger tell_workers after insert on outbox for each statement execute function tell_workers();
+--> statement-breakpoint
+create trigger tell_workers after insert or update of state on jobs for each statement execute function tell_workers();
+--> statement-breakpoint
+
 -- Rights, table by table.
 grant usage on schema public to firstpull_app, firstpull_auth, firstpull_relay;
 --> statement-breakpoint

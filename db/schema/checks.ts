@@ -29,7 +29,10 @@ export const jobs = pgTable(
     state: text('state', { enum: ['queued', 'running', 'done', 'failed', 'cancelled'] })
       .notNull()
       .default('queued'),
+    /** Rises with every try and fences out the earlier ones. */
     attempt: integer('attempt').notNull().default(0),
+    /** Tries that a stopping worker gave back unspent. */
+    handedBack: integer('handed_back').notNull().default(0),
     leaseUntil: instant('lease_until'),
     worker: text('worker'),
     stage: text('stage'),

@@ -7,6 +7,7 @@ import {
   primaryKey,
   text,
   unique,
+  uniqueIndex,
   uuid,
 } from 'drizzle-orm/pg-core';
 import { createdAt, id, instant, printedName, studioId, workspaceId } from '../columns';
@@ -82,7 +83,10 @@ export const outbox = pgTable(
     createdAt: createdAt(),
   },
   (t) => [
-    index('outbox_due').on(t.dueAt),
+    index('outbox_due')
+      .on(t.dueAt)
+      .where(sql`sent_at is null and failure is null`),
+    uniqueIndex('outbox_occasion').on(t.dedupeKey),
     relayPolicy('outbox'),
     workspacePolicy('outbox'),
     studioPolicy('outbox_studio'),
