@@ -8,6 +8,7 @@ export type ApiErrorCode =
   | 'conflict'
   | 'limit_exceeded'
   | 'precondition_failed'
+  | 'precondition_required'
   | 'unavailable'
   | 'internal'
   | 'offline';
@@ -26,7 +27,7 @@ const codeOfStatus: Record<number, ApiErrorCode> = {
   409: 'conflict',
   412: 'precondition_failed',
   413: 'limit_exceeded',
-  428: 'precondition_failed',
+  428: 'precondition_required',
   429: 'limit_exceeded',
   502: 'unavailable',
   503: 'unavailable',
@@ -42,9 +43,12 @@ export class ApiError extends Error {
     readonly title: string,
     readonly detail: string,
     readonly errors: readonly FieldProblem[] = [],
-    readonly requestId: string | null = null,
+    /** Finds the line in the server's log. */
+    readonly reference: string | null = null,
     /** Seconds to wait before another try, from `Retry-After`. */
     readonly retryAfter: number | null = null,
+    /** Stable name of the case from the problem's `type`, such as `revision-locked`. */
+    readonly reason: string | null = null,
   ) {
     super(detail || title);
     this.code = codeOfStatus[status] ?? (status >= 500 ? 'internal' : 'invalid');
@@ -127,8 +131,9 @@ function problemFrom(response: Response, payload: unknown): ApiError {
     asText(problem.title) ?? 'The request was refused',
     asText(problem.detail) ?? `The server answered ${response.status} without saying why. Try again.`,
     Array.isArray(problem.errors) ? problem.errors.filter(isFieldProblem) : [],
-    asText(problem.requestId) ?? response.headers.get('x-request-id'),
+    asText(problem.reference) ?? response.headers.get('x-request-id'),
     Number.isFinite(retry) ? retry : null,
+    asText(problem.type)?.split('/').pop() || null,
   );
 }
 
@@ -160,13 +165,13 @@ export function fieldName(pointer: string): string {
 }
 
 /** What to show a person for anything that was thrown. */
-export function explainError(error: unknown): { title: string; detail: string; requestId: string | null } {
+export function explainError(error: unknown): { title: string; detail: string; reference: string | null } {
   if (error instanceof ApiError) {
-    return { title: error.title, detail: error.detail, requestId: error.requestId };
+    return { title: error.title, detail: error.detail, reference: error.reference };
   }
   return {
     title: 'This did not work',
     detail: 'Something unexpected went wrong on this page. Reload it and try again.',
-    requestId: null,
+    reference: null,
   };
 }

@@ -42,7 +42,7 @@ export function formatSpan(milliseconds: number): string {
   if (span < minute) return 'under a minute';
   if (span < hour) return `${Math.floor(span / minute)} min`;
   if (span < 2 * day) return `${Math.floor(span / hour)} h`;
-  if (span < 60 * day) return `${Math.floor(span / day)} days`;
+  if (span < 90 * day) return `${Math.floor(span / day)} days`;
   if (span < 730 * day) return `${Math.floor(span / (30.44 * day))} months`;
   return `${Math.floor(span / (365.25 * day))} years`;
 }

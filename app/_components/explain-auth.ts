@@ -1,0 +1,49 @@
+/** The part of better-auth's error that is shown to a person. */
+export interface AuthRefusal {
+  status?: number;
+  code?: string;
+  message?: string;
+}
+
+const sentences: Record<string, string> = {
+  INVALID_EMAIL_OR_PASSWORD: 'The e-mail or the password is not right. Check both, or set a new password.',
+  INVALID_PASSWORD: 'This is not your current password. Check it, or set a new one from the sign-in page.',
+  INVALID_EMAIL: 'This is not an e-mail address. Write it like name@firm.example.',
+  EMAIL_NOT_VERIFIED:
+    'Your address is not confirmed yet. Open the link in the mail that was just sent to it.',
+  INVALID_TOKEN: 'This link has been used or has run out. Ask for a new one.',
+  TOKEN_EXPIRED: 'This link has run out. Ask for a new one.',
+  PASSWORD_TOO_SHORT: 'The password is too short. Use 12 characters or more.',
+  PASSWORD_TOO_LONG: 'The password is too long. Use 128 characters or fewer.',
+  SESSION_NOT_FRESH: 'You signed in more than a day ago. Sign out and in again to do this.',
+  SESSION_EXPIRED: 'Your session has ended. Sign in again.',
+};
+
+/** One sentence for a refusal of the sign-in service: what happened and what to do. */
+export function explainAuth(refusal: AuthRefusal): string {
+  const known = refusal.code ? sentences[refusal.code] : undefined;
+  if (known) return known;
+  if (refusal.status === 429) return 'Too many tries in a short time. Wait a minute, then try again.';
+  if (refusal.status === 401) return 'Your session has ended. Sign in again.';
+  if (refusal.status !== undefined && refusal.status >= 500)
+    return 'The server could not do this now. Nothing was changed; try again in a moment.';
+  return refusal.message ? refusal.message : 'The request was refused. Check what you wrote and try again.';
+}
+
+/** Runs a call of the sign-in client; a lost connection becomes a refusal instead of an exception. */
+export async function askAuth<T>(
+  call: () => Promise<{ data: T; error: AuthRefusal | null }>,
+): Promise<{ data: T | null; problem: string | null; refusal: AuthRefusal | null }> {
+  try {
+    const { data, error } = await call();
+    return error
+      ? { data: null, problem: explainAuth(error), refusal: error }
+      : { data, problem: null, refusal: null };
+  } catch {
+    return {
+      data: null,
+      problem: 'The server did not answer. Check the connection and try again.',
+      refusal: { status: 0 },
+    };
+  }
+}
