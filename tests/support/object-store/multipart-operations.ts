@@ -37,10 +37,10 @@ export function completeUpload(bucket: Bucket, call: Call): Answer {
     etag: (part.match(/<ETag>(.*?)<\/ETag>/)?.[1] ?? '').replace(/&quot;|&#34;|"/g, ''),
   }));
   if (named.length === 0) throw new StoreError(400, 'MalformedXML', 'The parts are missing.');
+  if (named.some(({ number }, index) => index > 0 && number <= named[index - 1].number)) {
+    throw new StoreError(400, 'InvalidPartOrder', 'The list of parts was not in ascending order.');
+  }
   named.forEach(({ number, etag }, index) => {
-    if (index > 0 && number <= named[index - 1].number) {
-      throw new StoreError(400, 'InvalidPartOrder', 'The list of parts was not in ascending order.');
-    }
     const part = upload.parts.get(number);
     if (part?.etag !== etag) {
       throw new StoreError(
