@@ -1,0 +1,150 @@
+'use client';
+
+import { useState } from 'react';
+import { Button } from '@/app/_components/button';
+import { Digest } from '@/app/_components/digest';
+import { ErrorState } from '@/app/_components/error-state';
+import { FileDrop } from '@/app/_components/file-drop';
+import { formatBytes } from '@/app/_components/format-figure';
+import { Length } from '@/app/_components/length';
+import { ProgressBar } from '@/app/_components/progress-bar';
+import { Select } from '@/app/_components/select';
+import type { useUpload } from '../_hooks/use-upload';
+
+type Props = ReturnType<typeof useUpload> & { unit: string; onUnit: (unit: string) => void };
+
+const accept = ['.stl'];
+const units = [
+  { value: 'mm', label: 'millimetres' },
+  { value: 'cm', label: 'centimetres' },
+  { value: 'm', label: 'metres' },
+  { value: 'in', label: 'inches' },
+  { value: 'ft', label: 'feet' },
+  { value: 'micron', label: 'microns' },
+];
+
+/** The mesh of the draft: picked, sent, read by the worker; refused with what is wrong and what to do. */
+export function FilePanel({ sending, begin, resume, pause, cancel, unit, onUnit }: Props) {
+  const [wrongName, setWrongName] = useState<string | null>(null);
+  const { upload, phase } = sending;
+
+  function pick(file: File) {
+    if (!accept.some((ending) => file.name.toLowerCase().endsWith(ending))) {
+      setWrongName(
+        `${file.name} is not an STL file. Export the template as binary or ASCII STL and pick that.`,
+      );
+      return;
+    }
+    if (file.size === 0) {
+      setWrongName(`${file.name} is empty. Export it again.`);
+      return;
+    }
+    setWrongName(null);
+    if (phase === 'paused') resume(file);
+    else void begin(file, unit);
+  }
+
+  if (phase === 'idle' || phase === 'starting')
+    return (
+      <div className="flex flex-col gap-4">
+        <Select
+          label="Unit of the file"
+          help="STL files carry no unit. The check run warns when another one is likelier."
+          options={units}
+          value={unit}
+          onChange={onUnit}
+          disabled={phase === 'starting'}
+        />
+        <FileDrop
+          label="Drop the template’s mesh here"
+          accept={accept}
+          onFiles={([file]) => pick(file)}
+          help="Binary or ASCII STL, up to 500 MB. It stands on the bed with its base at z = 0; parts are pulled off upwards."
+          error={wrongName ?? sending.trouble}
+          disabled={phase === 'starting'}
+        />
+      </div>
+    );
+  if (!upload) return null;
+
+  return (
+    <div className="border border-ink bg-sheet">
+      <div className="flex flex-wrap items-baseline justify-between gap-x-4 gap-y-1 border-b border-rule px-4 py-3">
+        <span className="min-w-0 font-semibold break-all">{upload.fileName}</span>
+        <span className="font-mono text-sm text-slate">{formatBytes(upload.bytes)}</span>
+      </div>
+      <div className="flex flex-col gap-3 px-4 py-3">
+        {phase === 'sending' || phase === 'paused' ? (
+          <>
+            <ProgressBar
+              label={phase === 'sending' ? 'Sending to the store' : 'Sending is paused'}
+              value={sending.progress}
+              detail={`${formatBytes(sending.progress * upload.bytes)} of ${formatBytes(upload.bytes)}`}
+            />
+            {sending.needsFile ? (
+              <FileDrop
+                label={`Pick ${upload.fileName} again to go on`}
+                accept={accept}
+                onFiles={([file]) => pick(file)}
+                help={`${upload.partsDone.length} of ${upload.partCount} parts are in the store already.`}
+                error={wrongName}
+              />
+            ) : null}
+          </>
+        ) : null}
+        {phase === 'reading' ? (
+          <ProgressBar label="Reading the file: hash, soundness, size" value={null} />
+        ) : null}
+        {phase === 'ready' && upload.mesh ? <MeshFacts mesh={upload.mesh} /> : null}
+        {phase === 'refused' && upload.refusal ? (
+          <ErrorState title="This file cannot be used" level={3}>
+            <p>{upload.refusal.message}</p>
+            {upload.refusal.reasons.length > 0 ? (
+              <ul className="mt-2 list-disc pl-5">
+                {upload.refusal.reasons.map((reason) => (
+                  <li key={reason}>{reason}</li>
+                ))}
+              </ul>
+            ) : null}
+            <p className="mt-2">Your draft is kept. Mend the file and pick it again.</p>
+          </ErrorState>
+        ) : null}
+        {sending.trouble ? (
+          <p role="alert" className="text-sm font-medium text-madder">
+            {sending.trouble}
+          </p>
+        ) : null}
+        <div className="flex flex-wrap gap-2">
+          {phase === 'sending' ? <Button onPress={pause}>Pause</Button> : null}
+          {phase === 'paused' && !sending.needsFile ? <Button onPress={() => resume()}>Resume</Button> : null}
+          <Button variant="plain" onPress={() => void cancel()}>
+            {phase === 'ready' || phase === 'refused' ? 'Choose another file' : 'Cancel'}
+          </Button>
+        </div>
+      </div>
+    </div>
+  );
+}
+
+function MeshFacts({ mesh }: { mesh: NonNullable<NonNullable<Props['sending']['upload']>['mesh']> }) {
+  const size = mesh.boundsMm.max.map((max, axis) => max - mesh.boundsMm.min[axis]);
+  return (
+    <dl className="grid grid-cols-[auto_1fr] gap-x-4 gap-y-1 text-sm">
+      <dt className="text-slate">Size</dt>
+      <dd className="flex flex-wrap gap-x-1.5">
+        {size.map((mm, axis) => (
+          <span key={axis}>
+            {axis > 0 ? '× ' : ''}
+            <Length mm={mm} digits={1} />
+          </span>
+        ))}
+      </dd>
+      <dt className="text-slate">Triangles</dt>
+      <dd className="font-mono">{mesh.triangles.toLocaleString('en-GB')}</dd>
+      <dt className="text-slate">SHA-256</dt>
+      <dd>
+        <Digest value={mesh.sha256} />
+      </dd>
+    </dl>
+  );
+}

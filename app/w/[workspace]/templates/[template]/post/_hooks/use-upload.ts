@@ -1,0 +1,212 @@
+'use client';
+
+import { useCallback, useEffect, useRef, useState } from 'react';
+import { api, explainError } from '@/app/_components/api-client';
+import type { PresignedParts, UploadView as UploadViewSchema } from '@/lib/review/schemas';
+import type { z } from 'zod';
+import { sendPart } from './send-part';
+
+type UploadView = z.infer<typeof UploadViewSchema>;
+type Part = z.infer<typeof PresignedParts>['parts'][number];
+
+export type Sending = {
+  upload: UploadView | null;
+  /** Share of the bytes that the store has, 0 to 1. */
+  progress: number;
+  phase: 'idle' | 'starting' | 'sending' | 'paused' | 'reading' | 'ready' | 'refused';
+  /** What went wrong on the way; sending can be taken up again. */
+  trouble: string | null;
+  /** True when the file must be picked again before sending can go on (after a reload). */
+  needsFile: boolean;
+};
+
+const atOnce = 3;
+const triesPerPart = 5;
+
+function phaseOf(upload: UploadView | null, running: boolean): Sending['phase'] {
+  if (!upload || upload.state === 'cancelled') return 'idle';
+  if (upload.state === 'sending') return running ? 'sending' : 'paused';
+  return upload.state;
+}
+
+/**
+ * Sends a file straight to the store, part by part: pause, resume, cancel, and take up again after a
+ * reload or a lost connection. The application's server sees numbers and ETags only.
+ */
+export function useUpload(
+  workspacePath: string,
+  templateId: string,
+  initial: UploadView | null,
+  onChange: (upload: UploadView | null) => void,
+) {
+  const [upload, setUpload] = useState<UploadView | null>(initial);
+  const [running, setRunning] = useState(false);
+  const [starting, setStarting] = useState(false);
+  const [trouble, setTrouble] = useState<string | null>(null);
+  const [sentBytes, setSentBytes] = useState(0);
+  const file = useRef<File | null>(null);
+  const stop = useRef<AbortController | null>(null);
+
+  const take = useCallback(
+    (next: UploadView | null) => {
+      setUpload(next);
+      onChange(next);
+    },
+    [onChange],
+  );
+
+  const run = useCallback(
+    async (current: UploadView) => {
+      const controller = new AbortController();
+      stop.current = controller;
+      setRunning(true);
+      setTrouble(null);
+      const base = `${workspacePath}/uploads/${current.id}`;
+      const done = new Set(current.partsDone);
+      const inFlight = new Map<number, number>();
+      const report = () => {
+        const whole = [...done].reduce((sum, number) => sum + bytesOf(current, number), 0);
+        setSentBytes(whole + [...inFlight.values()].reduce((sum, bytes) => sum + bytes, 0));
+      };
+      report();
+      try {
+        let latest = current;
+        const missing = Array.from({ length: current.partCount }, (_, i) => i + 1).filter(
+          (n) => !done.has(n),
+        );
+        for (let at = 0; at < missing.length; at += atOnce) {
+          const numbers = missing.slice(at, at + atOnce);
+          const { parts } = await api<{ parts: Part[] }>(`${base}/parts`, {
+            body: { parts: numbers },
+            signal: controller.signal,
+          });
+          const answers = await Promise.all(
+            parts.map(async (part) => {
+              const from = (part.number - 1) * current.partBytes;
+              const etag = await sendPart(part.url, file.current!.slice(from, from + part.bytes), {
+                signal: controller.signal,
+                tries: triesPerPart,
+                onProgress: (bytes) => {
+                  inFlight.set(part.number, bytes);
+                  report();
+                },
+              });
+              const answer = await api<UploadView>(`${base}/parts/done`, {
+                body: { number: part.number, etag },
+              });
+              inFlight.delete(part.number);
+              done.add(part.number);
+              report();
+              return answer;
+            }),
+          );
+          latest = answers.reduce((a, b) => (b.partsDone.length > a.partsDone.length ? b : a), latest);
+          take(latest);
+        }
+        take(await api<UploadView>(`${base}/complete`, { method: 'POST', body: {} }));
+      } catch (error) {
+        if (!controller.signal.aborted) setTrouble(explainError(error).detail);
+      } finally {
+        if (stop.current === controller) stop.current = null;
+        setRunning(false);
+      }
+    },
+    [take, workspacePath],
+  );
+
+  const begin = useCallback(
+    async (picked: File, unit: string) => {
+      file.current = picked;
+      setStarting(true);
+      setTrouble(null);
+      try {
+        const made = await api<UploadView>(`${workspacePath}/templates/${templateId}/uploads`, {
+          body: { fileName: picked.name, bytes: picked.size, unit },
+        });
+        take(made);
+        void run(made);
+      } catch (error) {
+        setTrouble(explainError(error).detail);
+      } finally {
+        setStarting(false);
+      }
+    },
+    [run, take, templateId, workspacePath],
+  );
+
+  /** Goes on with an upload that a reload or a lost connection broke off; the same file must be picked. */
+  const resume = useCallback(
+    (picked?: File) => {
+      if (!upload) return;
+      const source = picked ?? file.current;
+      if (!source) return;
+      if (source.name !== upload.fileName || source.size !== upload.bytes) {
+        setTrouble(`That is another file. Pick ${upload.fileName} to go on, or cancel and start anew.`);
+        return;
+      }
+      file.current = source;
+      void run(upload);
+    },
+    [run, upload],
+  );
+
+  const pause = useCallback(() => stop.current?.abort(), []);
+
+  const cancel = useCallback(async () => {
+    stop.current?.abort();
+    if (upload) {
+      try {
+        await api(`${workspacePath}/uploads/${upload.id}/cancel`, { method: 'POST', body: {} });
+      } catch (error) {
+        setTrouble(explainError(error).detail);
+        return;
+      }
+    }
+    file.current = null;
+    setSentBytes(0);
+    setTrouble(null);
+    take(null);
+  }, [take, upload, workspacePath]);
+
+  useReading(workspacePath, upload, take);
+  useEffect(() => () => stop.current?.abort(), []);
+
+  const phase = starting ? 'starting' : phaseOf(upload, running);
+  const storedBytes = upload?.partsDone.reduce((sum, n) => sum + bytesOf(upload, n), 0) ?? 0;
+  const sending: Sending = {
+    upload,
+    progress: upload ? Math.min(1, Math.max(sentBytes, storedBytes) / upload.bytes) : 0,
+    phase,
+    trouble,
+    needsFile: phase === 'paused' && file.current === null,
+  };
+  return { sending, begin, resume, pause, cancel };
+}
+
+const bytesOf = (upload: UploadView, number: number) =>
+  Math.min(upload.partBytes, upload.bytes - (number - 1) * upload.partBytes);
+
+/** While the worker reads the file, asks how far it is; the live event only makes this sooner. */
+function useReading(
+  workspacePath: string,
+  upload: UploadView | null,
+  take: (next: UploadView) => void,
+): void {
+  const reading = upload?.state === 'reading' ? upload.id : null;
+  useEffect(() => {
+    if (!reading) return;
+    let alive = true;
+    const timer = setInterval(async () => {
+      try {
+        const next = await api<UploadView>(`${workspacePath}/uploads/${reading}`);
+        if (alive && next.state !== 'reading') take(next);
+      } catch {
+        // The next tick asks again; a lost connection is shown by the live state in the frame.
+      }
+    }, 1000);
+    return () => {
+      alive = false;
+      clearInterval(timer);
+    };
+  }, [reading, take, workspacePath]);
+}
