@@ -138,6 +138,7 @@ CREATE TABLE "threads" (
 	"template_id" uuid NOT NULL,
 	"revision_id" uuid NOT NULL,
 	"finding_id" uuid,
+	"continues" jsonb DEFAULT '[]'::jsonb NOT NULL,
 	"must_settle" boolean DEFAULT false NOT NULL,
 	"after_approval" boolean DEFAULT false NOT NULL,
 	"state" text DEFAULT 'open' NOT NULL,

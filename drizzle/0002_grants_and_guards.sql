@@ -161,8 +161,8 @@ declare
 begin
   if tg_table_name = 'threads' then
     after_lock := new.after_approval;
-    if tg_op = 'UPDATE' and (new.after_approval, new.template_id, new.revision_id, new.finding_id, new.opened_by)
-       is distinct from (old.after_approval, old.template_id, old.revision_id, old.finding_id, old.opened_by) then
+    if tg_op = 'UPDATE' and (new.after_approval, new.template_id, new.revision_id, new.finding_id, new.continues, new.opened_by)
+       is distinct from (old.after_approval, old.template_id, old.revision_id, old.finding_id, old.continues, old.opened_by) then
       raise exception 'what a thread is about is frozen' using errcode = '23001', constraint = 'frozen';
     end if;
   else

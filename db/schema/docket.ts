@@ -29,6 +29,8 @@ export const threads = pgTable(
     /** The revision on which it was opened. */
     revisionId: uuid('revision_id').notNull(),
     findingId: uuid('finding_id'),
+    /** Threads of an older, locked docket that this one goes on with, oldest first: their notes are read along. */
+    continues: jsonb('continues').$type<string[]>().notNull().default([]),
     mustSettle: boolean('must_settle').notNull().default(false),
     /** Opened after the revision was locked: outside what was agreed. */
     afterApproval: boolean('after_approval').notNull().default(false),
