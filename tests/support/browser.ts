@@ -8,8 +8,8 @@ import {
   type Page,
 } from 'playwright-core';
 import { afterAll, inject } from 'vitest';
+import { outFolder } from './out-folder';
 
-export const outFolder = path.resolve(import.meta.dirname, '../.out');
 const executable = '/usr/bin/chromium';
 
 let opened: Promise<Browser> | undefined;

@@ -4,13 +4,15 @@ import type { AddressInfo } from 'node:net';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import type { TestProject } from 'vitest/node';
-import { isRoot, openDataFolder, root } from '@/docker/local/folders';
+import { isRoot, openDataFolder } from '@/docker/local/folders';
 import { anyFreePort, type Ports } from '@/docker/local/ports';
 import { databaseName } from '@/docker/local/product-environment';
 import type { DemoSignIn } from '@/docker/local/seed-demo';
 import type { Service } from '@/docker/local/service';
 import { stepPrinter } from '@/docker/local/setup/step-line.mjs';
 import { startProduct, stopAll, type Product } from '@/docker/local/start-product';
+import { endWithProcess } from './end-with-process';
+import { outFolder } from './out-folder';
 
 export interface ProductUnderTest {
   baseUrl: string;
@@ -39,10 +41,11 @@ export default async function setup(project: TestProject): Promise<() => Promise
   if (isRoot()) chmodSync(base, 0o711);
   const dataFolder = openDataFolder(path.join(base, 'data'));
   const started: Service[] = [];
+  endWithProcess(started, base);
   const printer = stepPrinter(process.stderr);
   const teardown = async () => {
     await stopAll(started);
-    const kept = path.join(root, 'tests/.out/product-logs');
+    const kept = path.join(outFolder, 'product-logs');
     mkdirSync(kept, { recursive: true });
     cpSync(path.join(dataFolder, 'logs'), kept, { recursive: true });
     rmSync(base, { recursive: true, force: true });

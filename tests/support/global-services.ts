@@ -10,6 +10,7 @@ import { definePostgres } from '@/docker/local/postgres';
 import { defineRealtime, realtimeAppId } from '@/docker/local/realtime';
 import { makeSecrets, type Secrets } from '@/docker/local/secrets';
 import type { Service } from '@/docker/local/service';
+import { endWithProcess } from './end-with-process';
 import { startObjectStore } from './object-store/start-object-store';
 import { startSmtpCatcher } from './smtp-catcher';
 
@@ -36,6 +37,7 @@ export default async function setup(project: TestProject): Promise<() => Promise
   if (isRoot()) chmodSync(folder, 0o711);
   const secrets = makeSecrets();
   const started: Service[] = [];
+  endWithProcess(started, folder);
   const store = await startObjectStore();
   const mail = await startSmtpCatcher();
   const teardown = async () => {
