@@ -11,7 +11,7 @@ import { FormProblem } from '../../_components/form-problem';
 import { Link } from '../../_components/link';
 import { notify } from '../../_components/notices';
 import { PasswordField } from '../../_components/password-field';
-import { newPasswordHelp, newPasswordRules } from '../_components/new-password-rules';
+import { newPasswordHelp, newPasswordRules } from '../../_components/new-password-rules';
 
 export function ResetForm({ token }: { token: string }) {
   const router = useRouter();

@@ -12,7 +12,7 @@ import { FormProblem } from '../../../_components/form-problem';
 import { Link } from '../../../_components/link';
 import { PasswordField } from '../../../_components/password-field';
 import { TextField } from '../../../_components/text-field';
-import { newPasswordHelp, newPasswordRules } from '../../_components/new-password-rules';
+import { newPasswordHelp, newPasswordRules } from '../../../_components/new-password-rules';
 import { acceptInvitation } from './accept-invitation';
 
 interface Values {

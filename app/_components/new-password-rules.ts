@@ -1,4 +1,4 @@
-import { passwordLimits } from '../../_components/password-field';
+import { passwordLimits } from './password-field';
 
 /** NIST SP 800-63B-4: length counts, composition does not. */
 export const newPasswordRules = {
