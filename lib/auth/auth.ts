@@ -105,7 +105,8 @@ function build() {
     advanced: {
       cookiePrefix: 'firstpull',
       useSecureCookies: env.APP_URL.startsWith('https://'),
-      database: { generateId: () => uuidv7() },
+      // Our verbs fill columns of workspaces and invitations that the plugin does not know; it never writes them.
+      database: { generateId: () => uuidv7(), validateSchema: false },
       ipAddress: env.TRUSTED_PROXY
         ? { ipAddressHeaders: ['x-forwarded-for'], trustedProxies: [env.TRUSTED_PROXY] }
         : {},
