@@ -122,6 +122,8 @@ export const invitations = pgTable(
     status: text('status', { enum: ['pending', 'accepted', 'rejected', 'canceled'] })
       .notNull()
       .default('pending'),
+    /** SHA-256 of the secret that only the mailed link carries: who opens it holds the address. */
+    tokenHash: text('token_hash').notNull(),
     expiresAt: instant('expires_at').notNull(),
     inviterId: uuid('inviter_id')
       .notNull()
@@ -147,6 +149,8 @@ export const studioInvitations = pgTable(
     status: text('status', { enum: ['pending', 'accepted', 'rejected', 'canceled'] })
       .notNull()
       .default('pending'),
+    /** SHA-256 of the secret that only the mailed link carries: who opens it holds the address. */
+    tokenHash: text('token_hash').notNull(),
     expiresAt: instant('expires_at').notNull(),
     inviterId: uuid('inviter_id')
       .notNull()

@@ -1,4 +1,4 @@
-import { and, asc, eq } from 'drizzle-orm';
+import { and, asc, eq, inArray } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { authDatabase } from '@/db/client';
 import { users } from '@/db/schema/identity';
@@ -84,6 +84,33 @@ export async function findInvitation(id: string) {
     .innerJoin(studios, eq(studios.id, studioInvitations.studioId))
     .where(eq(studioInvitations.id, id));
   return staff ? { kind: 'studio' as const, ...staff } : null;
+}
+
+/** Whether a person is a client in any workspace of a studio; asked before they may become its staff. */
+export async function isClientOfStudio(personId: string, studioId: string): Promise<boolean> {
+  const rows = await authDatabase()
+    .select({ id: members.id })
+    .from(members)
+    .innerJoin(workspaces, eq(workspaces.id, members.workspaceId))
+    .where(
+      and(
+        eq(members.userId, personId),
+        eq(workspaces.studioId, studioId),
+        inArray(members.role, ['reviewer', 'approver']),
+      ),
+    )
+    .limit(1);
+  return rows.length > 0;
+}
+
+export type PersonChange = { name?: string; units?: 'mm' | 'in'; timeZone?: string };
+
+/** Changes what a person may change of themselves. */
+export async function updatePerson(personId: string, change: PersonChange): Promise<void> {
+  await authDatabase()
+    .update(users)
+    .set({ ...change, updatedAt: new Date() })
+    .where(eq(users.id, personId));
 }
 
 /** Mails of identity belong to no tenant; they leave through the same outbox. */

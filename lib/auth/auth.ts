@@ -35,6 +35,9 @@ const closedPaths = [
   '/change-email',
 ];
 
+/** Columns that our verbs write; the library knows of them and neither takes nor gives them. */
+const ours = { type: 'string', required: true, input: false, returned: false } as const;
+
 function build() {
   const env = authEnv();
   return betterAuth({
@@ -120,9 +123,16 @@ function build() {
         requireEmailVerificationOnInvitation: true,
         schema: {
           session: { fields: { activeOrganizationId: 'activeOrganizationId' } },
-          organization: { modelName: 'workspaces' },
+          organization: {
+            modelName: 'workspaces',
+            additionalFields: { studioId: ours, code: ours },
+          },
           member: { modelName: 'members', fields: { organizationId: 'workspaceId' } },
-          invitation: { modelName: 'invitations', fields: { organizationId: 'workspaceId' } },
+          invitation: {
+            modelName: 'invitations',
+            fields: { organizationId: 'workspaceId' },
+            additionalFields: { tokenHash: ours },
+          },
         },
       }),
       nextCookies(),

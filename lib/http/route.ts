@@ -36,6 +36,9 @@ export function json(value: unknown, status = 200, headers: Record<string, strin
   return Response.json(value, { status, headers: { 'cache-control': 'private, no-store', ...headers } });
 }
 
+export const noContent = () =>
+  new Response(null, { status: 204, headers: { 'cache-control': 'private, no-store' } });
+
 function makeRoute<C>(enter: (request: Request, params: Record<string, unknown>) => Promise<C>) {
   return function route<P extends z.ZodType, Q extends z.ZodType, B extends z.ZodType>(
     declared: Declared<P, Q, B>,

@@ -7,6 +7,10 @@ export type Role = (typeof roles)[number];
 export type StudioRole = (typeof studioRoles)[number];
 export type ClientRole = (typeof clientRoles)[number];
 
+export const isStudioRole = (role: Role): role is StudioRole =>
+  (studioRoles as readonly string[]).includes(role);
+export const sideOf = (role: Role): 'studio' | 'client' => (isStudioRole(role) ? 'studio' : 'client');
+
 /** What can be done in a workspace. The organization plugin's own resources are named so that it may ask too. */
 const statements = {
   organization: ['update', 'delete'],

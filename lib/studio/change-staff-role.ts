@@ -1,0 +1,25 @@
+import { withTenant } from '@/db/tenant';
+import { requireStudioRole, type StudioContext } from '@/lib/auth/context';
+import { notFound } from '@/lib/errors/app-error';
+import { parseInput } from '@/lib/http/read-input';
+import { findPersonName } from '@/lib/workspaces/people-data';
+import { StaffRoleInput } from '@/lib/workspaces/schemas';
+import { insertStudioEntry, lockStaff, updateStaffRole } from './studio-data';
+
+/**
+ * A lead gives staff another role, in every workspace at once. The database keeps the last lead: demoting
+ * them is refused with `last-lead`.
+ */
+export async function changeStaffRole(ctx: StudioContext, personId: string, input: unknown): Promise<void> {
+  requireStudioRole(ctx, 'lead');
+  const { role } = parseInput(StaffRoleInput, input);
+  await withTenant(ctx, async (tx) => {
+    const staff = await lockStaff(tx, ctx.studio.id, personId);
+    if (!staff) throw notFound('person');
+    if (staff.role === role) return;
+    const person = await findPersonName(tx, personId);
+    const entry = { personId, name: person?.name ?? '', from: staff.role, to: role };
+    await insertStudioEntry(tx, ctx, 'person.role-changed', entry);
+    await updateStaffRole(tx, ctx.studio.id, personId, role);
+  });
+}

@@ -1,0 +1,25 @@
+import { withTenant } from '@/db/tenant';
+import { requireStudioRole, type StudioContext } from '@/lib/auth/context';
+import { notFound } from '@/lib/errors/app-error';
+import { endPersonSockets } from '@/lib/workspaces/end-person-sockets';
+import { findPersonName } from '@/lib/workspaces/people-data';
+import { deleteStaff, insertStudioEntry, lockStaff } from './studio-data';
+
+/**
+ * Ends a person's work at the studio, in every workspace at once: a lead for anyone, anyone for themselves.
+ * The last lead stays (`last-lead`). What they signed or wrote stays.
+ */
+export async function removeStaff(ctx: StudioContext, personId: string): Promise<void> {
+  if (personId !== ctx.person.id) requireStudioRole(ctx, 'lead');
+  await withTenant(ctx, async (tx) => {
+    const staff = await lockStaff(tx, ctx.studio.id, personId);
+    if (!staff) throw notFound('person');
+    const person = await findPersonName(tx, personId);
+    const left = personId === ctx.person.id;
+    const entry = { personId, name: person?.name ?? '', role: staff.role, left };
+    await insertStudioEntry(tx, ctx, 'person.removed', entry);
+    // Last: who leaves loses sight of the studio with this row.
+    await deleteStaff(tx, ctx.studio.id, personId);
+  });
+  await endPersonSockets(personId);
+}

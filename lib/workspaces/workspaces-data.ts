@@ -1,0 +1,73 @@
+import { and, asc, count, eq, inArray, sql } from 'drizzle-orm';
+import { gatePlans, invitations, members, workspaces, type GateRule } from '@/db/schema/workspaces';
+import type { TenantTx } from '@/db/tenant';
+
+export type NewWorkspace = {
+  id: string;
+  studioId: string;
+  name: string;
+  slug: string;
+  code: string;
+  timeZone: string;
+};
+
+/** False when the slug is taken. Nothing is read back: the row is visible only after its staff rows stand. */
+export async function insertWorkspace(tx: TenantTx, row: NewWorkspace): Promise<boolean> {
+  const result = await tx.insert(workspaces).values(row).onConflictDoNothing();
+  return (result.rowCount ?? 0) === 1;
+}
+
+export async function findWorkspaceByCode(tx: TenantTx, studioId: string, code: string) {
+  const [row] = await tx
+    .select({ id: workspaces.id, name: workspaces.name })
+    .from(workspaces)
+    .where(and(eq(workspaces.studioId, studioId), eq(workspaces.code, code)));
+  return row ?? null;
+}
+
+export async function insertGatePlan(
+  tx: TenantTx,
+  row: { id: string; workspaceId: string; number: number; gates: GateRule[]; createdBy: string },
+): Promise<void> {
+  await tx.insert(gatePlans).values(row);
+}
+
+/** The version of the gate plan that the next posted revision gets. */
+export async function findLatestGatePlan(tx: TenantTx, workspaceId: string) {
+  const [row] = await tx
+    .select()
+    .from(gatePlans)
+    .where(eq(gatePlans.workspaceId, workspaceId))
+    .orderBy(sql`${gatePlans.number} desc`)
+    .limit(1);
+  return row ?? null;
+}
+
+/** A studio's workspaces with the counts of its list, in three statements whatever their number. */
+export async function listStudioWorkspaces(tx: TenantTx, studioId: string) {
+  const rows = await tx
+    .select()
+    .from(workspaces)
+    .where(eq(workspaces.studioId, studioId))
+    .orderBy(asc(workspaces.name), asc(workspaces.id));
+  const ids = rows.map((row) => row.id);
+  if (!ids.length) return [];
+  const clients = await tx
+    .select({ id: members.workspaceId, n: count() })
+    .from(members)
+    .where(and(inArray(members.workspaceId, ids), inArray(members.role, ['reviewer', 'approver'])))
+    .groupBy(members.workspaceId);
+  const pending = await tx
+    .select({ id: invitations.workspaceId, n: count() })
+    .from(invitations)
+    .where(
+      and(
+        inArray(invitations.workspaceId, ids),
+        eq(invitations.status, 'pending'),
+        sql`${invitations.expiresAt} > now()`,
+      ),
+    )
+    .groupBy(invitations.workspaceId);
+  const of = (counts: { id: string; n: number }[], id: string) => counts.find((c) => c.id === id)?.n ?? 0;
+  return rows.map((row) => ({ ...row, clients: of(clients, row.id), pending: of(pending, row.id) }));
+}
