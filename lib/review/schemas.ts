@@ -36,6 +36,13 @@ export const CreateTemplateInput = z.object({
 });
 export type CreateTemplateInput = z.infer<typeof CreateTemplateInput>;
 
+export const ChangeTemplateInput = z.object({
+  title: CreateTemplateInput.shape.title.optional(),
+  dueOn: z.iso.date('Write the date as YYYY-MM-DD.').nullable().optional(),
+  version: z.number().int(),
+});
+export type ChangeTemplateInput = z.infer<typeof ChangeTemplateInput>;
+
 export const ListTemplatesInput = z.object({
   search: z.string().trim().max(80).default(''),
   standing: standing.optional(),
@@ -297,7 +304,15 @@ export const RevisionView = z.object({
     note: z.boolean(),
     settle: z.boolean(),
     waive: z.boolean(),
-    sign: z.object({ gateId: id, gateName: z.string(), meaning: z.string() }).nullable(),
+    sign: z
+      .object({
+        gateId: id,
+        gateName: z.string(),
+        meaning: z.string(),
+        /** Why signing would be refused at this moment, as a sentence; null when it would not. Returning is open. */
+        blocked: z.string().nullable(),
+      })
+      .nullable(),
     withdraw: z.boolean(),
     release: z.boolean(),
     recall: z.boolean(),
@@ -382,3 +397,22 @@ export const TodayView = z.object({
   recent: z.array(z.object({ workspace: z.string(), text: z.string(), path: z.string(), at: instant })),
 });
 export type TodayView = z.infer<typeof TodayView>;
+
+// Activity
+
+export const ActivityPage = z.object({
+  items: z.array(
+    z.object({
+      seq: z.number(),
+      at: instant,
+      actorName: z.string(),
+      action: z.string(),
+      /** A whole sentence without the actor's name, e.g. "posted revision B of QLN-003". */
+      text: z.string(),
+      /** Page of what it is about, where there is one. */
+      path: z.string().nullable(),
+    }),
+  ),
+  nextCursor: z.string().nullable(),
+});
+export type ActivityPage = z.infer<typeof ActivityPage>;

@@ -1,0 +1,35 @@
+import { withTenant } from '@/db/tenant';
+import { appendEntry } from '@/lib/audit/append-entry';
+import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
+import { queueLive } from '@/lib/jobs/queue-live';
+import { store } from '@/lib/storage/store';
+import { asId } from './as-id';
+import { requireSender } from './require-sending';
+import type { UploadView } from './schemas';
+import { changeUpload, lockUpload } from './upload-data';
+import { uploadView } from './upload-view';
+
+/** Gives up a file that has not become a mesh; one that has stays. Asked twice, it answers the same. */
+export async function cancelUpload(ctx: WorkspaceContext, uploadId: string): Promise<UploadView> {
+  requirePermission(ctx, 'revision.post');
+  const id = asId(uploadId, 'upload');
+  const { view, abort } = await withTenant(ctx, async (tx) => {
+    const upload = await lockUpload(tx, ctx.workspace.id, id);
+    requireSender(ctx, upload);
+    const { templateId } = upload;
+    // What was read is a mesh for good; a draft that no longer wants it names another file or none.
+    if (upload.state === 'cancelled' || upload.state === 'ready')
+      return { view: await uploadView(tx, upload), abort: null };
+    const cancelled = await changeUpload(tx, upload, { state: 'cancelled' });
+    await appendEntry(tx, ctx, {
+      action: 'upload.cancelled',
+      subjectKind: 'upload',
+      subjectId: id,
+      detail: { templateId, fileName: upload.fileName },
+    });
+    await queueLive(tx, ctx, { name: 'upload.changed', data: { id, templateId } });
+    return { view: await uploadView(tx, cancelled), abort: upload.state === 'sending' ? upload : null };
+  });
+  if (abort) await store().abortMultipart(abort.storeKey, abort.multipartId);
+  return view;
+}
