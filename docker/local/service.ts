@@ -1,5 +1,5 @@
 import { spawn, type ChildProcess } from 'node:child_process';
-import { closeSync, openSync, readFileSync } from 'node:fs';
+import { closeSync, createWriteStream, fstatSync, openSync, readFileSync } from 'node:fs';
 import { setTimeout as pause } from 'node:timers/promises';
 import { LocalError, type Account } from './folders';
 import { signalGroup } from './process-identity';
@@ -25,8 +25,10 @@ export interface ServiceOptions {
   env: Record<string, string>;
   account?: Account | null;
   logFile: string;
-  /** Whether it answers; asked again and again until it does. */
-  answers: () => Promise<boolean>;
+  /** Whether it answers; asked again and again until it does. Without it, `readyLine` tells. */
+  answers?: () => Promise<boolean>;
+  /** Words in its output that say it is ready. */
+  readyLine?: string;
   answersWithin?: number;
   stopSignal?: NodeJS.Signals;
   stopWithin?: number;
@@ -71,6 +73,7 @@ export function defineService(options: ServiceOptions): Service {
   // The child that has answered once; only its end is a crash, an earlier end is a failed start.
   let up: ChildProcess | undefined;
   let recovery: Promise<void> | undefined;
+  let outputFrom = 0;
   let crashes: number[] = [];
 
   const hasEnded = () => !child || child.exitCode !== null || child.signalCode !== null;
@@ -82,6 +85,7 @@ export function defineService(options: ServiceOptions): Service {
 
   async function launch(): Promise<void> {
     const log = openSync(options.logFile, 'a', 0o600);
+    outputFrom = fstatSync(log).size;
     const [program, ...args] = options.command;
     const started = spawn(program, args, {
       cwd: options.cwd,
@@ -94,7 +98,12 @@ export function defineService(options: ServiceOptions): Service {
     child = started;
     const failure = new Promise<never>((_, reject) => started.once('error', reject));
     failure.catch(() => undefined);
-    if (options.echo) for (const stream of [started.stdout, started.stderr]) echoLines(stream, options.echo);
+    if (options.echo) {
+      for (const stream of [started.stdout, started.stderr]) {
+        echoLines(stream!, options.echo);
+        stream!.pipe(createWriteStream(options.logFile, { flags: 'a', mode: 0o600 }));
+      }
+    }
     if (started.pid) events.onStart?.(name, started.pid);
     started.once('exit', (code, signal) => {
       events.onEnd?.(name);
@@ -110,7 +119,7 @@ export function defineService(options: ServiceOptions): Service {
       if (started.exitCode !== null || started.signalCode !== null) {
         throw new LocalError(`The ${name} ended at once. Its log ${options.logFile} says:\n${lastLines()}`);
       }
-      if (await options.answers().catch(() => false)) return;
+      if (await isReady().catch(() => false)) return;
       if (Date.now() > deadline) {
         throw new LocalError(
           `The ${name} did not answer within ${answersWithin / 1000} s. Its log ${options.logFile} says:\n${lastLines()}`,
@@ -142,6 +151,13 @@ export function defineService(options: ServiceOptions): Service {
         cause = 'it did not come up';
       }
     }
+  }
+
+  async function isReady(): Promise<boolean> {
+    if (options.answers) return options.answers();
+    return readFileSync(options.logFile)
+      .subarray(outputFrom)
+      .includes(options.readyLine ?? '');
   }
 
   function lastLines(): string {
@@ -192,9 +208,9 @@ export function defineService(options: ServiceOptions): Service {
   };
 }
 
-function echoLines(stream: NodeJS.ReadableStream | null, echo: (line: string) => void): void {
+function echoLines(stream: NodeJS.ReadableStream, echo: (line: string) => void): void {
   let rest = '';
-  stream?.on('data', (chunk: Buffer) => {
+  stream.on('data', (chunk: Buffer) => {
     const lines = (rest + chunk.toString()).split('\n');
     rest = lines.pop() ?? '';
     lines.forEach(echo);

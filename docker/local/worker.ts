@@ -22,8 +22,8 @@ export function defineWorker({ env, dev, logFile, echo, events }: WorkerOptions)
     cwd: root,
     env,
     logFile,
-    // It serves no port; it counts as up once it runs, and a crash is noticed at any time.
-    answers: async () => true,
+    // It serves no port; it says so in its log.
+    readyLine: 'worker is ready',
     // A job in hand may finish a step before it lets go.
     stopWithin: 15_000,
     echo,
