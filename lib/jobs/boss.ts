@@ -3,14 +3,20 @@ import { databaseEnv } from '@/lib/env/env';
 
 let starting: Promise<PgBoss> | undefined;
 
-/** The queue, on the application's own database role; its tables and queues were made by the migration. */
-export function boss(): Promise<PgBoss> {
+/**
+ * The queue, on the application's own database role; its tables and queues were made by the migration.
+ * Workers also clear out what is settled (`supervise`).
+ */
+export function boss({ supervise = false } = {}): Promise<PgBoss> {
   starting ??= (async () => {
     const made = new PgBoss({
       connectionString: databaseEnv().DATABASE_URL,
       schema: 'pgboss',
       migrate: false,
-      supervise: false,
+      supervise,
+      maintenanceIntervalSeconds: 60,
+      archiveCompletedAfterSeconds: 3_600,
+      deleteAfterDays: 3,
       schedule: false,
       max: 3,
       application_name: 'firstpull-queue',

@@ -14,7 +14,17 @@ export async function enqueueJob(
 ): Promise<string> {
   const workspaceId = workspaceIdOf(ctx);
   const jobId = await insertJob(tx, { workspaceId, ...job });
-  const message: JobMessage = { workspaceId, jobId };
-  await (await boss()).send(job.kind, message, { db: bossExecutor(tx) });
+  await sendMessage(tx, job.kind, { workspaceId, jobId });
   return jobId;
+}
+
+/** Puts a message about a job on the queue, in the caller's transaction. */
+export async function sendMessage(
+  tx: TenantTx,
+  kind: JobKind,
+  { workspaceId, jobId }: JobMessage,
+  afterS = 0,
+): Promise<void> {
+  const message: JobMessage = { workspaceId, jobId };
+  await (await boss()).send(kind, message, { startAfter: afterS, db: bossExecutor(tx) });
 }

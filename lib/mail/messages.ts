@@ -77,5 +77,19 @@ export const mailRequest = z.discriminatedUnion('template', [
     note: z.string(),
     digest: z.string(),
   }),
+  z.object({
+    template: z.literal('revision-recalled'),
+    to: memberRecipient,
+    ...revisionRef,
+    printedName: z.string(),
+    reason: z.string(),
+  }),
+  z.object({
+    template: z.literal('revision-retired'),
+    to: memberRecipient,
+    ...revisionRef,
+    printedName: z.string(),
+    reason: z.string(),
+  }),
 ]);
 export type MailRequest = z.infer<typeof mailRequest>;

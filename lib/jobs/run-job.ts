@@ -1,0 +1,121 @@
+import { withTenant } from '@/db/tenant';
+import { jobContext } from '@/lib/auth/context';
+import { log } from '@/lib/log/log';
+import type { EnginePool } from './engine-pool';
+import { sendMessage, type JobMessage } from './enqueue-job';
+import { JobStopped, PermanentFailure, reasonOf } from './job-errors';
+import type { JobAtWork, JobHandler } from './job-handler';
+import {
+  claimJob,
+  leaseS,
+  markDone,
+  markFailed,
+  markQueued,
+  renewLease,
+  triesAllowed,
+  type JobKind,
+} from './jobs-data';
+import { progressReporter } from './report-progress';
+
+const heartbeatMs = 10_000;
+
+export type JobRunner = {
+  worker: string;
+  engine: EnginePool;
+  handlers: Record<JobKind, JobHandler>;
+  /** Aborted when this process stops. */
+  stopping: AbortSignal;
+};
+
+/**
+ * One message of the queue: takes the job if it is to be had, keeps its lease alive, runs its handler and
+ * settles the row. Never throws for a job's own failure; a message for a job that is settled or held is dropped.
+ */
+export async function runJob(message: JobMessage, runner: JobRunner): Promise<void> {
+  const ctx = jobContext(message.workspaceId);
+  if (runner.stopping.aborted) return;
+  const job = await withTenant(ctx, (tx) => claimJob(tx, { ...message, worker: runner.worker }));
+  if (!job) return;
+  const fence = { jobId: job.id, attempt: job.attempt };
+  const handler = runner.handlers[job.kind];
+  const stop = new AbortController();
+  const halt = (why: JobStopped['why']) => () => stop.abort(new JobStopped(why));
+  const work: JobAtWork = {
+    ctx,
+    job,
+    fence,
+    signal: stop.signal,
+    engine: runner.engine,
+    onProgress: progressReporter(ctx, job),
+  };
+  if (job.attempt - job.handedBack > triesAllowed) {
+    const reason = job.error ?? `The worker stopped ${triesAllowed} times in the middle of it.`;
+    return giveUp(work, handler, reason);
+  }
+
+  const onStopping = halt('worker-stops');
+  runner.stopping.addEventListener('abort', onStopping, { once: true });
+  const limit = setTimeout(halt('time-limit'), handler.timeLimitS * 1000);
+  const endHeartbeat = startHeartbeat(work, halt('lease-lost'));
+  try {
+    await handler.run(work);
+    stop.signal.throwIfAborted();
+    const held = { workspaceId: job.workspaceId, ...fence };
+    await withTenant(ctx, (tx) => markDone(tx, held));
+    log().info({ job: job.id, kind: job.kind, attempt: job.attempt }, 'job done');
+  } catch (error) {
+    await settleFailure(work, handler, stop.signal.aborted ? stop.signal.reason : error);
+  } finally {
+    clearTimeout(limit);
+    endHeartbeat();
+    runner.stopping.removeEventListener('abort', onStopping);
+  }
+}
+
+/** Renews the lease; stops the work once another try could begin, also when the database cannot be asked. */
+function startHeartbeat({ ctx, job, fence }: JobAtWork, lost: () => void): () => void {
+  const held = { workspaceId: job.workspaceId, ...fence };
+  let goodUntil = Date.now() + leaseS * 1000;
+  const timer = setInterval(() => {
+    const asked = Date.now();
+    withTenant(ctx, (tx) => renewLease(tx, held)).then(
+      (still) => (still ? (goodUntil = asked + leaseS * 1000) : lost()),
+      () => Date.now() > goodUntil && lost(),
+    );
+  }, heartbeatMs);
+  return () => clearInterval(timer);
+}
+
+async function settleFailure(work: JobAtWork, handler: JobHandler, error: unknown): Promise<void> {
+  const { job } = work;
+  const stopped = error instanceof JobStopped ? error.why : null;
+  if (stopped === 'lease-lost') return void log().warn({ job: job.id }, 'job left to another try');
+  if (stopped === 'worker-stops') return requeue(work, { error: job.error, unspent: true, afterS: 0 });
+
+  log().error({ job: job.id, kind: job.kind, attempt: job.attempt, err: error }, 'job failed');
+  const tries = job.attempt - job.handedBack;
+  if (error instanceof PermanentFailure || tries >= triesAllowed)
+    return giveUp(work, handler, reasonOf(error));
+  await requeue(work, { error: reasonOf(error), unspent: false, afterS: 2 ** tries });
+}
+
+async function requeue(
+  { ctx, job, fence }: JobAtWork,
+  { error, unspent, afterS }: { error: string | null; unspent: boolean; afterS: number },
+): Promise<void> {
+  const { workspaceId } = job;
+  await withTenant(ctx, async (tx) => {
+    if (!(await markQueued(tx, { workspaceId, ...fence, error, unspent }))) return;
+    await sendMessage(tx, job.kind, { workspaceId, jobId: job.id }, afterS);
+  });
+}
+
+/** The people concerned are told first: were this process to die in between, the next try tells them again. */
+async function giveUp(work: JobAtWork, handler: JobHandler, reason: string): Promise<void> {
+  const { ctx, job, fence } = work;
+  try {
+    await handler.giveUp(work, reason);
+  } finally {
+    await withTenant(ctx, (tx) => markFailed(tx, { workspaceId: job.workspaceId, ...fence, error: reason }));
+  }
+}

@@ -1,0 +1,58 @@
+import type { MailRequest } from '../messages';
+import type { MailContent } from './content';
+import { invitation, resetPassword, verifyAddress } from './identity';
+import {
+  gateWaits,
+  notePosted,
+  revisionPosted,
+  revisionRecalled,
+  revisionReleased,
+  revisionRetired,
+  revisionReturned,
+  revisionSigned,
+} from './revision';
+import { toHtml } from './to-html';
+import { toText } from './to-text';
+
+export type RenderedMail = { subject: string; text: string; html: string };
+
+/** Text and HTML of a mail. `origin` is our own address; every link leads there and changes nothing by itself. */
+export function renderMail(request: MailRequest, origin: string): RenderedMail {
+  const content = contentOf(request, origin);
+  return { subject: content.subject, text: toText(content), html: toHtml(content) };
+}
+
+function contentOf(request: MailRequest, origin: string): MailContent {
+  const url = 'path' in request ? ownLink(request.path, origin) : '';
+  switch (request.template) {
+    case 'verify-address':
+      return verifyAddress({ ...request, url: ownLink(request.url, origin) });
+    case 'reset-password':
+      return resetPassword({ ...request, url: ownLink(request.url, origin) });
+    case 'invitation':
+      return invitation(request, url);
+    case 'revision-posted':
+      return revisionPosted(request, url);
+    case 'gate-waits':
+      return gateWaits(request, url);
+    case 'note-posted':
+      return notePosted(request, url);
+    case 'revision-signed':
+      return revisionSigned(request, url);
+    case 'revision-returned':
+      return revisionReturned(request, url);
+    case 'revision-released':
+      return revisionReleased(request, url);
+    case 'revision-recalled':
+      return revisionRecalled(request, url);
+    case 'revision-retired':
+      return revisionRetired(request, url);
+  }
+}
+
+/** An absolute link on our own host; a path that would leave it (`//elsewhere`) is a fault of ours. */
+function ownLink(path: string, origin: string): string {
+  const url = new URL(path, origin);
+  if (url.origin !== new URL(origin).origin) throw new TypeError('a mail may only link to our own host');
+  return url.href;
+}

@@ -1,0 +1,155 @@
+import { shortCautions } from '@/lib/production/cautions';
+import { zonedTime } from '@/lib/time/zoned-time';
+import type { MailRequest } from '../messages';
+import { oneLine, revisionName, type MailContent } from './content';
+
+type Of<T extends MailRequest['template']> = Extract<MailRequest, { template: T }>;
+type AnyRevision = { workspaceName: string; number: string; title: string; letter: string };
+
+const facts = (request: AnyRevision): MailContent['facts'] => [
+  { label: 'Template', value: `${request.number}  ${request.title}` },
+  { label: 'Revision', value: request.letter },
+  { label: 'Workspace', value: request.workspaceName },
+];
+const footer = (request: AnyRevision) =>
+  `You get this as a member of ${request.workspaceName}. The link only opens the page; nothing is signed or changed by it.`;
+const subject = (request: AnyRevision, what: string) =>
+  oneLine(`${revisionName(request)} ${what} (${request.title})`);
+
+export function revisionPosted(request: Of<'revision-posted'>, url: string): MailContent {
+  const { authorName, note } = request;
+  return {
+    subject: subject(request, 'is posted'),
+    heading: `${authorName} posted ${revisionName(request)}`,
+    preview: note ? oneLine(note) : 'It is being checked for forming.',
+    paragraphs: ['Mesh and recipe are frozen from now on. The check for forming runs by itself.'],
+    quote: note ? { by: authorName, text: note } : undefined,
+    facts: facts(request),
+    action: { label: 'Look at the revision', url },
+    footer: footer(request),
+  };
+}
+
+export function gateWaits(request: Of<'gate-waits'>, url: string): MailContent {
+  const { gateName, openItems } = request;
+  const items =
+    openItems === 0
+      ? 'Nothing on its docket is open.'
+      : openItems === 1
+        ? 'One item on its docket is still open.'
+        : `${openItems} items on its docket are still open.`;
+  return {
+    subject: subject(request, 'waits for your signature'),
+    heading: `${revisionName(request)} waits for you at the gate ${gateName}`,
+    preview: items,
+    paragraphs: [
+      `${items} Look at the model, the findings and the notes, then sign or return it with a reason.`,
+    ],
+    facts: [...facts(request), { label: 'Gate', value: gateName }],
+    action: { label: 'Look and decide', url },
+    footer: footer(request),
+  };
+}
+
+export function notePosted(request: Of<'note-posted'>, url: string): MailContent {
+  const { authorName, text, mentioned } = request;
+  return {
+    subject: subject(request, mentioned ? 'has a note that mentions you' : `has a note by ${authorName}`),
+    heading: mentioned
+      ? `${authorName} mentions you on ${revisionName(request)}`
+      : `${authorName} wrote on ${revisionName(request)}`,
+    preview: oneLine(text),
+    paragraphs: [],
+    quote: { by: authorName, text },
+    facts: facts(request),
+    action: { label: 'Answer on the docket', url },
+    footer: footer(request),
+  };
+}
+
+export function revisionSigned(request: Of<'revision-signed'>, url: string): MailContent {
+  const { printedName, role, meaning, signedAt, timeZone, digest, locked } = request;
+  return {
+    subject: subject(request, locked ? 'is approved and locked' : `is signed by ${printedName}`),
+    heading: locked
+      ? `${revisionName(request)} is approved and locked`
+      : `${printedName} signed ${revisionName(request)}`,
+    preview: oneLine(`${printedName}, ${role}: ${meaning}`),
+    paragraphs: [
+      locked
+        ? 'All gates have passed. Mesh, recipe, report, docket and signatures can no longer be changed by anybody; a change is a new revision.'
+        : 'The signature stands on exactly the content with the digest below.',
+    ],
+    quote: { by: `${printedName}, ${role}`, text: meaning },
+    facts: [
+      ...facts(request),
+      { label: 'Signed', value: zonedTime(signedAt, timeZone), code: true },
+      { label: 'Content digest', value: digest, code: true },
+    ],
+    action: { label: 'See what was agreed', url },
+    footer: `${footer(request)} If you did not expect a signature in this name, tell a lead of the studio.`,
+  };
+}
+
+export function revisionReturned(request: Of<'revision-returned'>, url: string): MailContent {
+  const { printedName, role, reason } = request;
+  return {
+    subject: subject(request, 'is returned'),
+    heading: `${printedName} returned ${revisionName(request)}`,
+    preview: oneLine(reason),
+    paragraphs: ['The revision is closed. What is open on its docket moves on to the next one.'],
+    quote: { by: `${printedName}, ${role}`, text: reason },
+    facts: facts(request),
+    action: { label: 'See what must change', url },
+    footer: footer(request),
+  };
+}
+
+export function revisionReleased(request: Of<'revision-released'>, url: string): MailContent {
+  const { printedName, note, digest } = request;
+  return {
+    subject: subject(request, 'is released to production'),
+    heading: `${printedName} released ${revisionName(request)} to production`,
+    preview: note ? oneLine(note) : 'Its release pack is on the revision’s page.',
+    paragraphs: [
+      'The release pack holds the exact mesh, the recipe, the report, the signatures and their certificate, with sums to check them by. It is on the revision’s page as soon as it is built, usually within a minute.',
+      'Make only from the pack of this revision, not from a file that came another way.',
+    ],
+    quote: note ? { by: printedName, text: note } : undefined,
+    facts: [...facts(request), { label: 'Content digest', value: digest, code: true }],
+    action: { label: 'Get the release pack', url },
+    cautions: shortCautions,
+    footer: footer(request),
+  };
+}
+
+export function revisionRecalled(request: Of<'revision-recalled'>, url: string): MailContent {
+  const { printedName, reason } = request;
+  return {
+    subject: subject(request, 'is RECALLED: stop making it'),
+    heading: `${printedName} recalled ${revisionName(request)}`,
+    preview: oneLine(reason),
+    paragraphs: [
+      'Stop printing and forming from this revision, and set aside what was made from it until the studio says what to do with it.',
+    ],
+    quote: { by: printedName, text: reason },
+    facts: facts(request),
+    action: { label: 'See the revision', url },
+    cautions: [shortCautions[1], shortCautions[2]],
+    footer: footer(request),
+  };
+}
+
+export function revisionRetired(request: Of<'revision-retired'>, url: string): MailContent {
+  const { printedName, reason } = request;
+  return {
+    subject: subject(request, 'is retired'),
+    heading: `${printedName} retired ${revisionName(request)}`,
+    preview: oneLine(reason),
+    paragraphs: ['Nothing new is made from this revision. Its records stay.'],
+    quote: { by: printedName, text: reason },
+    facts: facts(request),
+    action: { label: 'See the revision', url },
+    footer: footer(request),
+  };
+}

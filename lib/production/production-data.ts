@@ -1,0 +1,77 @@
+import { and, eq } from 'drizzle-orm';
+import { derivatives } from '@/db/schema/checks';
+import { packs, releases } from '@/db/schema/gates';
+import type { TenantTx } from '@/db/tenant';
+
+export type ReleaseRow = typeof releases.$inferSelect;
+export type PackRow = typeof packs.$inferSelect;
+
+export async function insertRelease(
+  tx: TenantTx,
+  row: typeof releases.$inferInsert & { id: string },
+): Promise<ReleaseRow> {
+  const [made] = await tx.insert(releases).values(row).returning();
+  return made;
+}
+
+export async function findRelease(
+  tx: TenantTx,
+  workspaceId: string,
+  releaseId: string,
+): Promise<ReleaseRow | null> {
+  const [row] = await tx
+    .select()
+    .from(releases)
+    .where(and(eq(releases.workspaceId, workspaceId), eq(releases.id, releaseId)));
+  return row ?? null;
+}
+
+export async function releaseOfRevision(
+  tx: TenantTx,
+  workspaceId: string,
+  revisionId: string,
+): Promise<ReleaseRow | null> {
+  const [row] = await tx
+    .select()
+    .from(releases)
+    .where(and(eq(releases.workspaceId, workspaceId), eq(releases.revisionId, revisionId)));
+  return row ?? null;
+}
+
+/** The pack of a release; null until a worker has built it. */
+export async function packOfRelease(
+  tx: TenantTx,
+  workspaceId: string,
+  releaseId: string,
+): Promise<PackRow | null> {
+  const [row] = await tx
+    .select()
+    .from(packs)
+    .where(and(eq(packs.workspaceId, workspaceId), eq(packs.releaseId, releaseId)));
+  return row ?? null;
+}
+
+/** Keeps a pack; false when the release has one already, which then stands. */
+export async function keepPack(tx: TenantTx, row: typeof packs.$inferInsert): Promise<boolean> {
+  const made = await tx.insert(packs).values(row).onConflictDoNothing().returning({ id: packs.id });
+  return made.length > 0;
+}
+
+/** Where the drawn picture of a mesh lies in the store; null where there is none. */
+export async function pictureOf(
+  tx: TenantTx,
+  workspaceId: string,
+  meshId: string,
+): Promise<{ storeKey: string; bytes: number; sha256: string } | null> {
+  const [row] = await tx
+    .select({ storeKey: derivatives.storeKey, bytes: derivatives.bytes, sha256: derivatives.sha256 })
+    .from(derivatives)
+    .where(
+      and(
+        eq(derivatives.workspaceId, workspaceId),
+        eq(derivatives.meshId, meshId),
+        eq(derivatives.kind, 'picture'),
+      ),
+    );
+  return row ?? null;
+}
