@@ -18,3 +18,9 @@ export function signChannel(
     user_info: { name: person.name },
   });
 }
+
+/** Signs a socket in as a person; without it the server ends the socket (`enableUserAuthentication`). */
+export function signPerson(socketId: string, person: { id: string }): { auth: string; user_data: string } {
+  if (!socketIdPattern.test(socketId)) throw new TypeError('not a socket id');
+  return pusher().authenticateUser(socketId, { id: person.id }) as { auth: string; user_data: string };
+}

@@ -1,4 +1,5 @@
 import { betterAuth } from 'better-auth';
+import { isAPIError } from 'better-auth/api';
 import { drizzleAdapter } from 'better-auth/adapters/drizzle';
 import { nextCookies } from 'better-auth/next-js';
 import { organization } from 'better-auth/plugins';
@@ -8,38 +9,18 @@ import { accounts, rateLimits, sessions, users, verifications } from '@/db/schem
 import { invitations, members, workspaces } from '@/db/schema/workspaces';
 import { authEnv } from '@/lib/env/env';
 import { accessControl, accessRoles } from '@/lib/workspaces/roles';
+import { log } from '@/lib/log/log';
 import { queueIdentityMail } from './auth-data';
-
-/**
- * Endpoints of the organization plugin that write are closed: our verbs write the same tables in one
- * transaction with the audit entry and the mail, which the plugin's own endpoints cannot do.
- */
-const closedPaths = [
-  '/organization/create',
-  '/organization/update',
-  '/organization/delete',
-  '/organization/leave',
-  '/organization/invite-member',
-  '/organization/accept-invitation',
-  '/organization/reject-invitation',
-  '/organization/cancel-invitation',
-  '/organization/remove-member',
-  '/organization/update-member-role',
-  '/organization/get-invitation',
-  '/organization/list-invitations',
-  '/organization/list-user-invitations',
-  '/organization/check-slug',
-  '/organization/get-full-organization',
-  '/organization/list-members',
-  '/delete-user',
-  '/change-email',
-];
+import { after, before } from './auth-hooks';
+import { closedPaths } from './endpoints';
+import { passwordMax, passwordMin } from './password-rules';
 
 /** Columns that our verbs write; the library knows of them and neither takes nor gives them. */
 const ours = { type: 'string', required: true, input: false, returned: false } as const;
 
 function build() {
   const env = authEnv();
+  const secure = env.APP_URL.startsWith('https://');
   return betterAuth({
     appName: 'Firstpull',
     baseURL: env.APP_URL,
@@ -48,6 +29,18 @@ function build() {
     trustedOrigins: [env.APP_URL],
     disabledPaths: closedPaths,
     telemetry: { enabled: false },
+    onAPIError: {
+      errorURL: '/sign-in',
+      // Refusals are answers, and the service logs those of interest itself; what is left is ours to mend.
+      onError: (error) => {
+        if (!isAPIError(error)) log().error({ service: 'identity', err: error }, 'identity request failed');
+      },
+    },
+    logger: {
+      level: 'warn',
+      log: (level, message) => log()[level === 'error' ? 'error' : 'warn']({ service: 'identity' }, message),
+    },
+    hooks: { before, after },
     database: drizzleAdapter(authDatabase(), {
       provider: 'pg',
       transaction: true,
@@ -65,8 +58,8 @@ function build() {
     user: {
       modelName: 'users',
       additionalFields: {
-        units: { type: 'string', defaultValue: 'mm', input: true },
-        timeZone: { type: 'string', defaultValue: 'Europe/Lisbon', input: true },
+        units: { type: 'string', defaultValue: 'mm', input: false },
+        timeZone: { type: 'string', defaultValue: 'Europe/Lisbon', input: false },
       },
     },
     session: {
@@ -79,8 +72,8 @@ function build() {
     verification: { modelName: 'verifications' },
     emailAndPassword: {
       enabled: true,
-      minPasswordLength: 12,
-      maxPasswordLength: 128,
+      minPasswordLength: passwordMin,
+      maxPasswordLength: passwordMax,
       requireEmailVerification: true,
       revokeSessionsOnPasswordReset: true,
       sendResetPassword: async ({ user, url }) =>
@@ -98,21 +91,28 @@ function build() {
       storage: 'database',
       modelName: 'rate_limits',
       window: 60,
-      max: 200,
+      max: env.TRUSTED_PROXY ? 200 : 2000,
+      // Callers are told apart behind a trusted proxy only; otherwise all share one count, which is wider. Each
+      // address has its own limit besides (auth-hooks.ts).
       customRules: {
-        '/sign-in/email': { window: 60, max: 20 },
-        '/request-password-reset': { window: 300, max: 10 },
-        '/send-verification-email': { window: 300, max: 10 },
+        '/sign-in/email': { window: 60, max: env.TRUSTED_PROXY ? 20 : 300 },
+        '/sign-up/email': { window: 300, max: env.TRUSTED_PROXY ? 10 : 100 },
+        '/change-password': { window: 60, max: env.TRUSTED_PROXY ? 10 : 100 },
+        '/request-password-reset': { window: 300, max: env.TRUSTED_PROXY ? 10 : 100 },
+        '/send-verification-email': { window: 300, max: env.TRUSTED_PROXY ? 10 : 100 },
+        '/get-session': { window: 60, max: 6000 },
       },
     },
     advanced: {
-      cookiePrefix: 'firstpull',
-      useSecureCookies: env.APP_URL.startsWith('https://'),
-      // Our verbs fill columns of workspaces and invitations that the plugin does not know; it never writes them.
-      database: { generateId: () => uuidv7(), validateSchema: false },
+      // __Host-: sent to this host only, over https only. The library's own switch would say __Secure-.
+      cookiePrefix: secure ? '__Host-firstpull' : 'firstpull',
+      useSecureCookies: false,
+      defaultCookieAttributes: { secure, sameSite: 'lax', httpOnly: true, path: '/' },
+      database: { generateId: () => uuidv7() },
+      // Without a proxy that we trust, anybody may write X-Forwarded-For: then no header tells the address.
       ipAddress: env.TRUSTED_PROXY
         ? { ipAddressHeaders: ['x-forwarded-for'], trustedProxies: [env.TRUSTED_PROXY] }
-        : {},
+        : { ipAddressHeaders: [] },
     },
     plugins: [
       organization({

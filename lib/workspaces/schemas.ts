@@ -36,6 +36,10 @@ export const InvitationParams = z.object({ invitation: z.uuid() });
 /** The token of a mailed invitation link. */
 export const TokenParams = z.object({ invitation: z.string().max(200) });
 
+/** What a Pusher client sends for a channel, and for signing its socket in. */
+export const SocketInput = z.object({ socket_id: z.string().max(100) });
+export const ChannelInput = SocketInput.extend({ channel_name: z.string().max(300) });
+
 export const CreateWorkspaceInput = z.object({
   name: shortText('the client’s name', 60),
   code: z

@@ -39,6 +39,20 @@ async function authorize(socketId: string, channelName: string) {
   return (await response.json()) as { auth: string; channel_data?: string };
 }
 
+type Done = (error: Error | null, answer: unknown) => void;
+
+/** Says whose socket this is; the server ends those that nobody signs in, and those of who was removed. */
+async function signIn(socketId: string) {
+  const response = await fetch('/api/v1/realtime/sign-in', {
+    method: 'POST',
+    headers: { 'content-type': 'application/x-www-form-urlencoded' },
+    body: new URLSearchParams({ socket_id: socketId }),
+    credentials: 'same-origin',
+  });
+  if (!response.ok) throw new Error(`The socket was refused (${response.status}).`);
+  return (await response.json()) as { auth: string; user_data: string };
+}
+
 /** Opens one socket for the page and subscribes to `channels`. The client library comes only when called. */
 export async function openLiveConnection(
   config: LiveConfig,
@@ -58,14 +72,23 @@ export async function openLiveConnection(
     pongTimeout: 6_000,
     unavailableTimeout: 6_000,
     channelAuthorization: {
-      customHandler: ({ socketId, channelName }, done) => {
+      customHandler: ({ socketId, channelName }: { socketId: string; channelName: string }, done: Done) => {
         authorize(socketId, channelName).then(
           (answer) => done(null, answer),
           (error: Error) => done(error, null),
         );
       },
     } as never,
+    userAuthentication: {
+      customHandler: ({ socketId }: { socketId: string }, done: Done) => {
+        signIn(socketId).then(
+          (answer) => done(null, answer),
+          (error: Error) => done(error, null),
+        );
+      },
+    } as never,
   });
+  pusher.signin();
 
   const held = new Set<string>();
   const tell = () => listeners.onSubscribed(channels.every((name) => held.has(name)));

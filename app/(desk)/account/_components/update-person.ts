@@ -1,5 +1,4 @@
-import { authClient } from '../../../_components/auth-client';
-import { askAuth } from '../../../_components/explain-auth';
+import { api, explainError } from '../../../_components/api-client';
 
 export interface PersonChange {
   name?: string;
@@ -10,7 +9,10 @@ export interface PersonChange {
 
 /** Changes the signed-in person; returns what went wrong, in words, or null. */
 export async function updatePerson(change: PersonChange): Promise<string | null> {
-  // The client's types do not know our own fields of a person; the service checks them.
-  const body = change as { name?: string };
-  return (await askAuth(() => authClient.updateUser(body))).problem;
+  try {
+    await api<unknown>('/api/v1/me', { method: 'PATCH', body: change });
+    return null;
+  } catch (error) {
+    return explainError(error).detail;
+  }
 }

@@ -1,0 +1,35 @@
+import { withTenant } from '@/db/tenant';
+import type { PersonContext } from '@/lib/auth/context';
+import { enterWorkspace } from '@/lib/auth/enter';
+import { AppError, forbidden } from '@/lib/errors/app-error';
+import { signChannel, signPerson, socketIdPattern } from '@/realtime/authorize';
+import { parseChannel, type Channel } from '@/realtime/channels';
+import { revisionExists } from './channel-data';
+
+const refused = () => forbidden('You may not listen to this channel.', 'channel-refused');
+
+/** Signs a subscription for a person who may listen now. Every refusal is the same, whatever its cause. */
+export async function authorizeChannel(ctx: PersonContext, socketId: string, channelName: string) {
+  const channel = parseChannel(channelName);
+  if (!channel || !socketIdPattern.test(socketId) || socketId.length > 40) throw refused();
+  if (!(await mayListen(ctx, channel))) throw refused();
+  return signChannel(socketId, channelName, channel, ctx.person);
+}
+
+/** Says who a socket belongs to, so that it can be ended when a membership ends. */
+export function authorizeSocket(ctx: PersonContext, socketId: string) {
+  if (!socketIdPattern.test(socketId) || socketId.length > 40) throw refused();
+  return signPerson(socketId, ctx.person);
+}
+
+async function mayListen({ person }: PersonContext, channel: Channel): Promise<boolean> {
+  if (channel.kind === 'person') return channel.personId === person.id;
+  try {
+    const ctx = await enterWorkspace(person, channel.workspaceId);
+    if (channel.kind === 'workspace') return true;
+    return await withTenant(ctx, (tx) => revisionExists(tx, ctx.workspace.id, channel.revisionId));
+  } catch (error) {
+    if (error instanceof AppError && error.code === 'not_found') return false;
+    throw error;
+  }
+}
