@@ -1,4 +1,4 @@
-import type { Docket } from './load-docket';
+import type { Docket, DocketThread } from './load-docket';
 import type { DocketView, FindingView, ThreadView } from './schemas';
 
 /** The docket as pages, packs and locks have it: plain JSON. */
@@ -24,7 +24,13 @@ export function viewDocketRows(revisionId: string, docket: Docket): DocketView {
       threadId: threadOf.get(finding.id) ?? null,
     };
   });
-  const threads: ThreadView[] = docket.threads.map(({ thread, placement, openedOn, findingId, notes }) => ({
+  const threads = docket.threads.map(viewThreadRow);
+  return { revisionId, findings, threads, counts: countItems(findings, threads) };
+}
+
+/** One thread on one revision, as plain JSON. */
+export function viewThreadRow({ thread, placement, openedOn, findingId, notes }: DocketThread): ThreadView {
+  return {
     id: thread.id,
     openedOn,
     findingId,
@@ -47,8 +53,7 @@ export function viewDocketRows(revisionId: string, docket: Docket): DocketView {
       createdAt: note.createdAt.toISOString(),
     })),
     version: thread.version,
-  }));
-  return { revisionId, findings, threads, counts: countItems(findings, threads) };
+  };
 }
 
 /** What must be settled, what is to be looked at, what is settled; a thread about a finding counts with it. */

@@ -1,6 +1,9 @@
 import type { TenantTx } from '@/db/tenant';
+import { findRevision } from './revision-data';
 import { checksOfFindings, findingsOf, type FindingRow } from './check-data';
 import {
+  findThread,
+  newestPlacement,
   notesOf,
   threadsOn,
   waiversOf,
@@ -41,4 +44,13 @@ export async function loadDocket(tx: TenantTx, workspaceId: string, revisionId: 
     return { thread, placement, openedOn, findingId, notes: chains[i].flatMap((id) => notes.get(id) ?? []) };
   });
   return { findings, waivers, threads };
+}
+
+/** One thread where it is being talked about: on the newest revision that it stands on. */
+export async function loadThread(tx: TenantTx, workspaceId: string, threadId: string): Promise<DocketThread> {
+  const thread = await findThread(tx, workspaceId, threadId);
+  const placement = await newestPlacement(tx, workspaceId, threadId);
+  const { letter } = await findRevision(tx, workspaceId, thread.revisionId);
+  const said = await notesOf(tx, workspaceId, [...thread.continues, thread.id]);
+  return { thread, placement, openedOn: letter, findingId: thread.findingId, notes: said };
 }
