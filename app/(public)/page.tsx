@@ -26,7 +26,7 @@ export default async function HomePage({ searchParams }: { searchParams: Promise
   return (
     <div className="flex flex-col gap-10">
       <div className="flex flex-col gap-5">
-        <h1 className="max-w-[22ch] text-2xl font-semibold sm:text-3xl">
+        <h1 className="max-w-[26ch] text-2xl text-balance font-semibold sm:text-3xl">
           Agree the template before it is printed, and get the first pull right.
         </h1>
         <p className="max-w-prose text-md text-slate">

@@ -27,7 +27,7 @@ export function inputClass(roomy?: boolean, extra?: string): string {
   return clsx(
     'w-full min-w-0 border border-edge bg-sheet px-2.5 text-md text-ink sm:text-base',
     'placeholder:text-slate hover:border-ink data-invalid:border-madder data-invalid:border-l-4',
-    'data-disabled:border-rule data-disabled:bg-sunk data-disabled:text-slate data-readonly:bg-sunk',
+    'data-disabled:border-rule data-disabled:bg-sunk data-disabled:text-slate',
     roomy ? 'min-h-12' : 'min-h-9 pointer-coarse:min-h-11',
     extra,
   );

@@ -72,7 +72,10 @@ export function TextField(props: TextFieldProps) {
         <Input
           ref={ref}
           placeholder={placeholder}
-          className={inputClass(roomy, clsx(mono && 'font-mono tabular', unit != null && 'pr-12'))}
+          className={inputClass(
+            roomy,
+            clsx('read-only:bg-sunk', mono && 'font-mono tabular', unit != null && 'pr-12'),
+          )}
         />
         {unit != null ? (
           <span

@@ -24,7 +24,8 @@ function subscribe(listener: () => void): () => void {
 }
 
 function read(): number {
-  if (now === 0 || timer === undefined) now = Math.floor(Date.now() / tick) * tick;
+  // Without a timer the last reading serves until it is old, so that one render sees one time.
+  if (timer === undefined && Date.now() - now > tick) now = Date.now();
   return now;
 }
 

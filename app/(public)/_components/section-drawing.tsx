@@ -21,13 +21,13 @@ export function SectionDrawing() {
           </pattern>
         </defs>
         <path
-          d="M52 236 74 202h34l21-114q2-8 10-8h128q8 0 10 8l18 98h42l14-50q2-7 9-7h168q7 0 9 7l14 50h48l16-70q2-7 9-7h92q7 0 9 7l24 86 14 34Z"
+          d="M52 236 74 202h34l21-114q2-8 10-8h128q8 0 10 8l18 98h42l14-50q2-7 9-7h168q7 0 9 7l14 50h48l16-70q2-7 9-7h92q7 0 9 7l20 86h34l22 34Z"
           fill="url(#section-hatch)"
           className="stroke-ink"
           strokeWidth="1.3"
         />
         <path
-          d="M0 233.500h48.500l23-35.500h33l21.500-115q3-8 12-8h131q9 0 12 8l17.500 98h34.500l14-50q3-7 12-7h170q9 0 12 7l14 50h38l16-70q3-7 12-7h94q9 0 12 7l23.500 86 14 33.500H900"
+          d="M0 233h49l23-34.5h32.5l21-112q2.5-10 13.5-10h128q11 0 13.5 10l17.5 96h36l13.5-48.5q3-8.5 12.5-8.5h168q9.5 0 12.5 8.5l13.5 48.5h42l15.5-68.5q3-8.5 12.5-8.5h92q9.5 0 12.5 8.5l19.5 84.5h33l22.5 34.5H900"
           className="stroke-verdigris"
           strokeWidth="4.5"
           strokeLinejoin="round"
@@ -35,12 +35,12 @@ export function SectionDrawing() {
         <path d="M0 236.500h900" className="stroke-ink" strokeWidth="1" />
         <path d="M314 186v50M318 186v50" className="stroke-ink" strokeWidth="0.8" />
         <g className="stroke-ink" strokeWidth="0.9">
-          <path d="M122 118 150 40h74" />
-          <path d="M316 214v36h20" />
+          <path d="M121 116 150 40h74" />
+          <path d="M316 237v13h20" />
           <path d="M129 248v24M277 248v24M129 262h148" />
         </g>
         <g className="stroke-madder" strokeWidth="0.9">
-          <path d="M108 198 62 120H20" />
+          <path d="M106 199 62 120H20" />
         </g>
         <g className="fill-ink font-mono" fontSize="12">
           <text x="154" y="34">

@@ -28,7 +28,7 @@ export function ForgotForm() {
 
   return (
     <>
-      <div role="status">
+      <div role="status" className="empty:hidden">
         {sentTo ? (
           <p>
             If <strong>{sentTo}</strong> belongs to somebody here, a link is on its way to it. Look in the

@@ -34,7 +34,7 @@ export function VerifyForm() {
         )}
       </Controlled>
       <FormProblem>{problem}</FormProblem>
-      <div role="status">
+      <div role="status" className="empty:hidden">
         {sentTo ? (
           <p>
             If <strong>{sentTo}</strong> waits to be confirmed, a new link is on its way to it.

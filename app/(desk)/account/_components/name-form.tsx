@@ -44,12 +44,7 @@ export function NameForm({ name, email }: { name: string; email: string }) {
         help="Signatures and invitations hang on this address, so it stays. For another one, ask a lead to invite it."
       />
       <FormProblem>{problem}</FormProblem>
-      <Button
-        type="submit"
-        className="self-start"
-        isPending={formState.isSubmitting}
-        isDisabled={!formState.isDirty}
-      >
+      <Button type="submit" className="self-start" isPending={formState.isSubmitting}>
         Save the name
       </Button>
     </form>
