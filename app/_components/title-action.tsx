@@ -10,6 +10,8 @@ export interface TitleActionProps {
   detail?: ReactNode;
   /** Goes somewhere … */
   href?: string;
+  /** … where `href` is a file and not a page, so that nothing fetches it ahead, … */
+  isFile?: boolean;
   /** … or does something here. Also works as the trigger inside `<DialogTrigger>`. */
   onPress?: () => void;
   isDisabled?: boolean;
@@ -19,13 +21,20 @@ const actionClass =
   'flex min-h-14 w-full flex-col items-start justify-center bg-verdigris px-4 py-2 text-left text-on-verdigris no-underline outline-offset-[-4px] outline-on-verdigris! hover:bg-verdigris-deep data-disabled:bg-sunk data-disabled:text-slate';
 
 /** The verdigris end of a title block. */
-export function TitleAction({ label, detail, href, onPress, isDisabled }: TitleActionProps) {
+export function TitleAction({ label, detail, href, isFile, onPress, isDisabled }: TitleActionProps) {
   const content = (
     <>
       <span className="text-md font-semibold">{label}</span>
       {detail ? <span className="text-xs">{detail}</span> : null}
     </>
   );
+  if (href && isFile) {
+    return (
+      <a href={href} className={actionClass}>
+        {content}
+      </a>
+    );
+  }
   if (href) {
     return (
       <NextLink href={href} className={actionClass}>

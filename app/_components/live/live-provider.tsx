@@ -88,8 +88,10 @@ export function LiveProvider({ config, personId, workspaceId, children }: LivePr
     tell({ name: 'anything' });
   }, [queries, tell, workspaceId]);
 
+  // The server makes a new object whenever it renders the layout; the address in it stays the same.
+  const address = config ? JSON.stringify(config) : null;
   useEffect(() => {
-    if (!config) return;
+    if (!address) return;
     let opened: LiveConnection | null = null;
     let over = false;
     const channels = [personChannel(personId), ...(workspaceId ? [workspaceChannel(workspaceId)] : [])];
@@ -101,7 +103,10 @@ export function LiveProvider({ config, personId, workspaceId, children }: LivePr
       for (const queryKey of staleAfter(workspaceId, event)) void queries.invalidateQueries({ queryKey });
       tell(event);
     };
-    openLiveConnection(config, channels, { onSubscribed: setSubscribed, onEvent }).then(
+    openLiveConnection(JSON.parse(address) as LiveConfig, channels, {
+      onSubscribed: setSubscribed,
+      onEvent,
+    }).then(
       (made) => {
         if (over) return made.close();
         opened = made;
@@ -116,7 +121,7 @@ export function LiveProvider({ config, personId, workspaceId, children }: LivePr
       setConnection(null);
       setSubscribed(false);
     };
-  }, [config, personId, workspaceId, queries, tell]);
+  }, [address, personId, workspaceId, queries, tell]);
 
   useEffect(() => {
     if (subscribed) {

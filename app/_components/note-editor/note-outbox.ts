@@ -33,7 +33,9 @@ export interface OutboxParts {
 /** Worth sending again as it is: nothing answered, the server is unwell or busy, or still works on it. */
 export function isPassing(error: unknown): boolean {
   if (!(error instanceof ApiError)) return true;
-  return error.status === 0 || error.status === 429 || error.status >= 500 || error.reason === 'still-running';
+  return (
+    error.status === 0 || error.status === 429 || error.status >= 500 || error.reason === 'still-running'
+  );
 }
 
 /** Sends notes in the order they were written, each once: the server knows a repeated `clientKey`. */

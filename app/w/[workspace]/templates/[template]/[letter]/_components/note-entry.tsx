@@ -1,0 +1,52 @@
+'use client';
+
+import { NoteBody } from '@/app/_components/note-editor/note-body';
+import type { OutgoingEntry } from '@/app/_components/note-editor/note-outbox';
+import { StateShape } from '@/app/_components/state-shape';
+import { Time } from '@/app/_components/time';
+import { Link } from '@/app/_components/link';
+import type { NoteView } from '@/lib/review/schemas';
+
+/** One note of a thread, as it was said. */
+export function NoteEntry({ note }: { note: NoteView }) {
+  return (
+    <div className="break-inside-avoid">
+      <p className="text-sm">
+        <span className="font-semibold">{note.authorName}</span>{' '}
+        <span className="text-slate">
+          <Time at={note.createdAt} show="relative" className="print:hidden" />
+          <span className="hidden print:inline">
+            <Time at={note.createdAt} show="moment" />
+          </span>
+        </span>
+      </p>
+      <NoteBody body={note.body} />
+    </div>
+  );
+}
+
+const words = {
+  sending: 'being sent',
+  waiting: 'waits for the connection; it is kept on this device and sent when it is back',
+  'signed-out': 'not sent: the session has ended',
+};
+
+/** A note of the reader's own that the server has not answered for yet. */
+export function OutgoingNoteEntry({ entry }: { entry: OutgoingEntry }) {
+  return (
+    <div className="border-l-2 border-dashed border-edge pl-3">
+      <p role="status" className="flex items-center gap-1.5 text-sm text-slate">
+        <StateShape shape="ring" className="size-3.5 text-ochre" />
+        <span>
+          Your note {words[entry.state]}.{' '}
+          {entry.state === 'signed-out' ? (
+            <Link href={`/sign-in?next=${encodeURIComponent(globalThis.location?.pathname ?? '/today')}`}>
+              Sign in again
+            </Link>
+          ) : null}
+        </span>
+      </p>
+      <NoteBody body={entry.body} />
+    </div>
+  );
+}

@@ -1,0 +1,169 @@
+'use client';
+
+import { useEffect, useRef, useState } from 'react';
+import { usePeople, useDocket, useRevision } from '../_hooks/use-room-data';
+import { useDocketAddress } from '../_hooks/use-docket-filter';
+import { useKeysOn, useRoomKeys } from '../_hooks/use-room-keys';
+import { useStageFocus } from '../_hooks/use-stage-focus';
+import { usePresence } from '@/app/_components/live/use-presence';
+import { usePreferences } from '@/app/_components/preferences-context';
+import type { Point, StageCamera } from '@/app/_components/stage/stage-props';
+import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
+import type { DocketView, RevisionView } from '@/lib/review/schemas';
+import { CheckPanel } from './check-panel';
+import { Docket } from './docket';
+import { byGroup, docketItems, filterItems, groupOrder } from './docket-items';
+import { gateSteps } from './gate-steps';
+import { primaryStep } from './primary-step';
+import { PrintedRecord } from './printed-record';
+import { PrimaryAction, RoomActions, RoomDialogs, type RoomDialog } from './room-actions';
+import { RoomProvider, type RoomReader, type RoomValue } from './room-context';
+import { RoomTitle } from './room-title';
+import { StagePanel } from './stage-panel';
+import { itemOfPin, placeOf, stagePins } from './stage-pins';
+import { StateBanner } from './state-banner';
+import { revisionApi } from '../_hooks/use-room-data';
+
+export interface RoomProps {
+  workspace: RoomValue['workspace'];
+  reader: RoomReader;
+  revision: RevisionView;
+  docket: DocketView;
+  /** When the server read them, in ms. */
+  loadedAt: number;
+}
+
+/** One revision: identity, gates, model, section and docket, and everything that can be done with it. */
+export function Room({ workspace, reader, revision: first, docket: firstDocket, loadedAt }: RoomProps) {
+  const { data: revision } = useRevision(workspace.id, first, loadedAt);
+  const { data: docket } = useDocket(workspace.id, firstDocket, loadedAt);
+  const people = usePeople(workspace.id);
+  usePresence(workspace.id, revision.id);
+  const { units } = usePreferences();
+  const { filter, item: active, setFilter, setItem } = useDocketAddress();
+  const [adding, setAdding] = useState(false);
+  const [dialog, setDialog] = useState<RoomDialog | null>(null);
+  const filterInput = useRef<HTMLInputElement>(null);
+
+  const meta = revision.model ? (revision.model.meta as unknown as StageModelMeta) : null;
+  const bounds = meta?.boundsMm ?? null;
+  const focus = useStageFocus(bounds);
+  const items = docketItems(docket);
+  const groups = byGroup(items);
+  const pins = bounds ? stagePins(items, bounds, units) : [];
+  const failing = groups.settle.filter(
+    (item) => item.finding?.status === 'fail' && !item.finding.waiver,
+  ).length;
+  const waived = docket.findings.filter((finding) => finding.waiver).length;
+  const step = primaryStep(revision, {
+    pack: `${revisionApi(workspace.id, revision.id)}/pack`,
+    post: `/w/${workspace.slug}/templates/${revision.template.id}/post`,
+  });
+
+  const activate = (key: string) => {
+    setItem(key);
+    const item = items.find((each) => each.key === key);
+    const at = item ? placeOf(item) : null;
+    if (at) focus.look(at, `${key}#0`, (item?.thread?.pin?.view as StageCamera | undefined) ?? null);
+    else focus.clear();
+  };
+  /** Goes to an item from the keyboard or from the model: marks it and brings it into sight. */
+  const visit = (key: string) => {
+    activate(key);
+    requestAnimationFrame(() => {
+      const element = document.getElementById(key);
+      element?.focus({ preventScroll: true });
+      element?.scrollIntoView({ block: 'nearest' });
+    });
+  };
+  const walk = (by: 1 | -1) => {
+    const shown = byGroup(filterItems(items, filter, reader.id));
+    const order = groupOrder.flatMap((group) => shown[group]);
+    if (order.length === 0) return;
+    const at = order.findIndex((item) => item.key === active);
+    visit(order[at < 0 ? (by === 1 ? 0 : order.length - 1) : (at + by + order.length) % order.length].key);
+  };
+  const [keysOn] = useKeysOn();
+  useRoomKeys(keysOn, {
+    next: () => walk(1),
+    previous: () => walk(-1),
+    filter: () => filterInput.current?.focus(),
+    comment: () => {
+      if (revision.can.note) setAdding(true);
+    },
+  });
+
+  // An address that names an item (from a mail or Today) opens the page at it.
+  const arrived = useRef(false);
+  useEffect(() => {
+    if (arrived.current || !active) return;
+    arrived.current = true;
+    document.getElementById(active)?.scrollIntoView({ block: 'center' });
+  }, [active]);
+
+  const room: RoomValue = {
+    workspace,
+    reader,
+    revision,
+    people,
+    active,
+    activate,
+    showPlace: (key, at) => {
+      setItem(key);
+      focus.look(at as Point, `${key}#0`);
+      document.getElementById('stage')?.scrollIntoView({ block: 'nearest' });
+    },
+    askForPin: revision.model
+      ? (take) => {
+          focus.ask(take);
+          document.getElementById('stage')?.scrollIntoView({ block: 'nearest' });
+        }
+      : null,
+    placing: focus.placing,
+  };
+
+  return (
+    <RoomProvider value={room}>
+      <h1 className="sr-only">
+        {revision.template.number} revision {revision.letter}, {revision.template.title}
+      </h1>
+      <div className="flex flex-col gap-4">
+        <RoomTitle
+          revision={revision}
+          gates={gateSteps(revision, { failing, waived }, groups.settle.length)}
+          action={<PrimaryAction step={step} onOpen={setDialog} />}
+        />
+        <RoomActions step={step} onOpen={setDialog} />
+        <StateBanner revision={revision} />
+        <CheckPanel revision={revision} />
+        <div className="grid items-start gap-6 lg:grid-cols-[minmax(0,1fr)_minmax(20rem,27rem)]">
+          <div id="stage" className="min-w-0 scroll-mt-4 lg:sticky lg:top-3">
+            <StagePanel
+              revision={revision}
+              pins={pins}
+              activePin={focus.activePin}
+              onPinSelect={(id) => visit(itemOfPin(id))}
+              placing={focus.placing}
+              onPlace={focus.place}
+              onPlaceCancel={focus.cancel}
+              view={focus.view}
+              highlight={focus.highlight}
+              line={focus.line}
+              onLineChange={focus.setLine}
+            />
+          </div>
+          <Docket
+            items={items}
+            filter={filter}
+            onFilter={setFilter}
+            filterRef={filterInput}
+            adding={adding}
+            onAdding={setAdding}
+          />
+        </div>
+        <PrintedRecord revision={revision} />
+      </div>
+      <RoomDialogs open={dialog} onClose={() => setDialog(null)} />
+    </RoomProvider>
+  );
+}

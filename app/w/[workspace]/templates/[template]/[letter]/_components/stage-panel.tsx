@@ -1,0 +1,89 @@
+'use client';
+
+import { useState, useSyncExternalStore } from 'react';
+import { SkeletonBlock } from '@/app/_components/skeleton';
+import { Stage } from '@/app/_components/stage/stage';
+import type { Point, StageCamera, StageMap, StagePin } from '@/app/_components/stage/stage-props';
+import { usePreferences } from '@/app/_components/preferences-context';
+import type { SectionLine } from '@/lib/stage-model/section';
+import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
+import type { RevisionView } from '@/lib/review/schemas';
+import { limitOf } from './describe-recipe';
+
+export interface StagePanelProps {
+  revision: RevisionView;
+  pins: readonly StagePin[];
+  activePin: string | null;
+  onPinSelect: (id: string) => void;
+  placing: boolean;
+  onPlace: (at: Point, normal: Point, view: StageCamera) => void;
+  onPlaceCancel: () => void;
+  view: StageCamera | null;
+  highlight: Point | null;
+  line: SectionLine | null;
+  onLineChange: (line: SectionLine) => void;
+}
+
+const darkQuery = '(prefers-color-scheme: dark)';
+const subscribeDark = (listener: () => void) => {
+  const query = window.matchMedia(darkQuery);
+  query.addEventListener('change', listener);
+  return () => query.removeEventListener('change', listener);
+};
+
+/** The theme that is on the screen, with `system` resolved. */
+function useShownTheme(): 'light' | 'dark' {
+  const { theme } = usePreferences();
+  const systemDark = useSyncExternalStore(
+    subscribeDark,
+    () => window.matchMedia(darkQuery).matches,
+    () => false,
+  );
+  if (theme === 'system') return systemDark ? 'dark' : 'light';
+  return theme;
+}
+
+/** The model with its maps and pins, and the section under it. */
+export function StagePanel(props: StagePanelProps) {
+  const { revision } = props;
+  const theme = useShownTheme();
+  const [map, setMap] = useState<StageMap>('plain');
+  const title = `${revision.template.title}, revision ${revision.letter}`;
+  if (!revision.model) {
+    const waiting = revision.check.state === 'queued' || revision.check.state === 'running';
+    return (
+      <div className="border border-rule bg-sheet">
+        {waiting ? (
+          <SkeletonBlock className="h-80 lg:h-[30rem]" label="The model is being made for this page" />
+        ) : (
+          <p className="px-4 py-16 text-center text-base text-slate">
+            There is no model to show of this revision. Its findings and its file are below and beside.
+          </p>
+        )}
+      </div>
+    );
+  }
+  const meta = revision.model.meta as unknown as StageModelMeta;
+  return (
+    <Stage
+      title={title}
+      modelUrl={revision.model.url}
+      pictureUrl={revision.model.pictureUrl}
+      meta={meta}
+      map={map}
+      onMapChange={setMap}
+      limitDeg={limitOf(revision.recipe, 'draftMinDeg', 5)}
+      pins={props.pins}
+      activePin={props.activePin}
+      onPinSelect={props.onPinSelect}
+      placing={props.placing}
+      onPlace={props.onPlace}
+      onPlaceCancel={props.onPlaceCancel}
+      sectionLine={props.line}
+      onSectionLineChange={props.onLineChange}
+      view={props.view}
+      highlight={props.highlight}
+      theme={theme}
+    />
+  );
+}

@@ -1,0 +1,95 @@
+import type { Point, StageCamera, StagePin } from '@/app/_components/stage/stage-props';
+import type { Units } from '@/app/_components/preferences';
+import { formatNumber } from '@/app/_components/format-figure';
+import { checkName } from './check-names';
+import type { DocketGroup, DocketItem } from './docket-items';
+import { figureOf } from './measure-of';
+
+export interface Bounds {
+  min: Point;
+  max: Point;
+}
+
+/** Places of one finding that get a mark; the list names the rest. */
+const marksPerFinding = 3;
+
+const states: Record<DocketGroup, StagePin['state']> = {
+  settle: 'must-settle',
+  look: 'look',
+  after: 'look',
+  settled: 'settled',
+  fine: 'settled',
+  unchecked: 'settled',
+};
+
+/** Key of the docket item that a pin belongs to. */
+export function itemOfPin(pinId: string): string {
+  return pinId.replace(/#\d+$/, '');
+}
+
+/** Marks on the model: pinned threads, and the worst places of findings that are not simply fine. */
+export function stagePins(items: readonly DocketItem[], bounds: Bounds, units: Units): StagePin[] {
+  return items.flatMap((item): StagePin[] => {
+    const { finding, thread, key, group } = item;
+    if (thread?.pin) {
+      const { at, normal, view } = thread.pin;
+      return [
+        {
+          id: `${key}#0`,
+          at,
+          normal,
+          state: states[group],
+          label: labelOf(item, units),
+          view: view as StageCamera | null,
+        },
+      ];
+    }
+    if (!finding || group === 'fine' || group === 'unchecked') return [];
+    return finding.places.slice(0, marksPerFinding).map((place, index) => ({
+      id: `${key}#${index}`,
+      at: place.at,
+      normal: outwardAt(place.at, bounds),
+      state: states[group],
+      label: labelOf(item, units),
+    }));
+  });
+}
+
+/** The place that an item is about: its pin, else its first place. */
+export function placeOf({ finding, thread }: DocketItem): Point | null {
+  return thread?.pin?.at ?? finding?.places[0]?.at ?? null;
+}
+
+function labelOf({ finding, thread }: DocketItem, units: Units): string {
+  if (finding) {
+    if (finding.measured === null) return checkName(finding.checkId);
+    const { value, unit, digits } = figureOf(finding.measured, finding.unit, units);
+    const figure = `${formatNumber(value, digits)}${unit === '°' ? '' : '\u202f'}${unit}`;
+    return `${checkName(finding.checkId)} ${figure}`;
+  }
+  const text = thread?.notes[0]?.text ?? 'Note';
+  return text.length > 28 ? `${text.slice(0, 26)}…` : text;
+}
+
+/** Away from the middle of the part and up: a finding names a place, not a surface. */
+export function outwardAt(at: Point, { min, max }: Bounds): Point {
+  const x = at[0] - (min[0] + max[0]) / 2;
+  const y = at[1] - (min[1] + max[1]) / 2;
+  const flat = Math.hypot(x, y);
+  if (flat < 1e-6) return [0, 0, 1];
+  const up = 0.7;
+  const length = Math.hypot(1, up);
+  return [x / flat / length, y / flat / length, up / length];
+}
+
+/** An eye that looks at a place from outside and above, near enough to see its surroundings. */
+export function viewOf(at: Point, bounds: Bounds): StageCamera {
+  const size = Math.hypot(...[0, 1, 2].map((axis) => bounds.max[axis] - bounds.min[axis]));
+  const towards = outwardAt(at, bounds);
+  const away = Math.max(size * 0.7, 20);
+  return {
+    target: at,
+    position: [0, 1, 2].map((axis) => at[axis] + towards[axis] * away) as Point,
+    up: Math.abs(towards[2]) > 0.999 ? [0, 1, 0] : [0, 0, 1],
+  };
+}

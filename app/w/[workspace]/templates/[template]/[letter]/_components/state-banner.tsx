@@ -1,0 +1,92 @@
+'use client';
+
+import type { ReactNode } from 'react';
+import { formatBytes } from '@/app/_components/format-figure';
+import { Digest } from '@/app/_components/digest';
+import { Link } from '@/app/_components/link';
+import { StatusWord } from '@/app/_components/status-word';
+import { Time } from '@/app/_components/time';
+import type { RevisionView } from '@/lib/review/schemas';
+import { newerSibling } from './primary-step';
+import { letterHref, stateKey } from './revision-switcher';
+import { useRoom } from './room-context';
+
+/** Where the revision stands, when that is not simply "in review": what is agreed, or why it is closed. */
+export function StateBanner({ revision }: { revision: RevisionView }) {
+  const { workspace } = useRoom();
+  const newer = newerSibling(revision);
+  const newerLine = newer ? (
+    <p>
+      Revision {newer.letter} has been posted since.{' '}
+      <Link href={letterHref(workspace.slug, revision.template.id, newer.letter)}>
+        Go to revision {newer.letter}
+      </Link>
+    </p>
+  ) : null;
+  if (revision.state === 'in_review') {
+    return newer ? <Banner tone="ochre">{newerLine}</Banner> : null;
+  }
+  const reason = revision.stateReason ? <p>“{revision.stateReason}”</p> : null;
+  const bad = revision.state === 'returned' || revision.state === 'recalled';
+  return (
+    <Banner tone={bad ? 'madder' : revision.lockedAt ? 'ink' : 'slate'}>
+      <p className="font-semibold">
+        <StatusWord state={stateKey(revision.state)} />
+      </p>
+      {reason}
+      {revision.lockedAt ? <Agreed revision={revision} lockedAt={revision.lockedAt} /> : null}
+      {newerLine}
+    </Banner>
+  );
+}
+
+function Agreed({ revision, lockedAt }: { revision: RevisionView; lockedAt: string }) {
+  const signers = revision.gates.flatMap((gate) =>
+    gate.signatures.filter((s) => s.decision === 'sign').map((s) => s.printedName),
+  );
+  return (
+    <div className="flex flex-col gap-1">
+      <p>
+        Agreed by {signers.length > 0 ? listNames(signers) : 'the gate plan'} on{' '}
+        <Time at={lockedAt} show="moment" />: the mesh {revision.mesh.fileName} (
+        {formatBytes(revision.mesh.bytes)}), its recipe, the report, the docket and the signatures, as they
+        were then. Nothing of it changes any more.
+      </p>
+      {revision.contentDigest ? (
+        <p className="text-sm text-slate">
+          Content <Digest value={revision.contentDigest} characters="all" />
+        </p>
+      ) : null}
+      <p className="text-sm text-slate">
+        Mesh SHA-256 <Digest value={revision.mesh.sha256} characters="all" />
+      </p>
+      {revision.release && !revision.release.pack ? (
+        <p role="status" className="text-sm">
+          The release pack is being built.
+        </p>
+      ) : null}
+    </div>
+  );
+}
+
+function listNames(names: readonly string[]): string {
+  if (names.length < 2) return names[0] ?? '';
+  return `${names.slice(0, -1).join(', ')} and ${names[names.length - 1]}`;
+}
+
+const tones = {
+  ochre: 'border-l-ochre',
+  madder: 'border-l-madder',
+  ink: 'border-l-ink',
+  slate: 'border-l-edge',
+};
+
+function Banner({ tone, children }: { tone: keyof typeof tones; children: ReactNode }) {
+  return (
+    <div
+      className={`flex flex-col gap-1 border border-l-4 border-rule bg-sheet px-4 py-3 text-base ${tones[tone]}`}
+    >
+      {children}
+    </div>
+  );
+}
