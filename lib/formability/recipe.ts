@@ -85,7 +85,7 @@ export interface RecipeInput {
 
 /**
  * The recipe that stands where nothing is said. Layer 0.15 mm, shell 4 mm, infill 35 % and the 0.4 mm
- * nozzle are common practice, no source; cost rates are examples (handbook of the project, §13), to be
+ * nozzle are common practice, no source; cost rates are examples, to be
  * replaced by the studio's own. `formingC` and `lineMm` follow from material and nozzle when left null.
  */
 export function defaultRecipe(): EffectiveRecipe {

@@ -27,21 +27,23 @@ export function gapFloor(columns: Columns, c: number, s: number): number {
 /**
  * Joins gaps of neighbouring columns (4 sides) that overlap in height; a gap that reaches above a neighbour's
  * highest solid opens to the air above the part. The bed is closed.
+ * @param rim what lies beyond the grid: open air (the whole part is inside), or unknown (a window on a part)
  */
-export function connectAir(columns: Columns): Air {
+export function connectAir(columns: Columns, rim: 'open' | 'unknown' = 'open'): Air {
   const { grid, start, count, z } = columns;
   const slots = z.length;
   const joined = new UnionFind(slots);
   const mouth = new Uint8Array(slots);
+  const beyond = rim === 'open' ? -1 : -2;
   const isGap = (c: number, s: number) => z[s] - gapFloor(columns, c, s) > GAP_MM;
   const { nx, ny } = grid;
   for (let c = 0; c < nx * ny; c++) {
     const i = c % nx;
     const j = (c - i) / nx;
-    markMouths(columns, c, i > 0 ? c - 1 : -1, mouth);
-    markMouths(columns, c, i + 1 < nx ? c + 1 : -1, mouth);
-    markMouths(columns, c, j > 0 ? c - nx : -1, mouth);
-    markMouths(columns, c, j + 1 < ny ? c + nx : -1, mouth);
+    markMouths(columns, c, i > 0 ? c - 1 : beyond, mouth);
+    markMouths(columns, c, i + 1 < nx ? c + 1 : beyond, mouth);
+    markMouths(columns, c, j > 0 ? c - nx : beyond, mouth);
+    markMouths(columns, c, j + 1 < ny ? c + nx : beyond, mouth);
     if (i + 1 < nx) joinGaps(columns, c, c + 1, joined);
     if (j + 1 < ny) joinGaps(columns, c, c + nx, joined);
   }
@@ -78,6 +80,7 @@ export function connectAir(columns: Columns): Air {
 
 function markMouths(columns: Columns, c: number, beside: number, mouth: Uint8Array): void {
   const { start, count, z, height } = columns;
+  if (beside === -2) return;
   const over = beside < 0 ? 0 : height[beside];
   for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
     if (z[s] - gapFloor(columns, c, s) > GAP_MM && z[s] > over + GAP_MM) mouth[s] = 1;

@@ -9,6 +9,8 @@ export interface Edges {
   /** First two facets; −1 where there is none. */
   facetA: Int32Array;
   facetB: Int32Array;
+  /** Edge from each facet corner to the next; −1 for facets with a repeated vertex. */
+  ofCorner: Int32Array;
   boundary: number;
   nonManifold: number;
   inconsistent: number;
@@ -28,6 +30,7 @@ export function buildEdges(index: Uint32Array, vertices: number): Edges {
   const backward = new Uint8Array(corners);
   const facetA = new Int32Array(corners);
   const facetB = new Int32Array(corners);
+  const ofCorner = new Int32Array(corners).fill(-1);
   let count = 0;
   for (let c = 0, facet = 0; c < corners; c += 3, facet++) {
     const a = index[c];
@@ -52,6 +55,7 @@ export function buildEdges(index: Uint32Array, vertices: number): Edges {
       } else if (facetB[e] < 0) {
         facetB[e] = facet;
       }
+      ofCorner[c + side] = e;
       const uses = from < to ? forward : backward;
       if (uses[e] < 255) uses[e]++;
     }
@@ -65,7 +69,26 @@ export function buildEdges(index: Uint32Array, vertices: number): Edges {
     else if (uses > 2) nonManifold++;
     else if (forward[e] !== 1) inconsistent++;
   }
-  return { count, low, high, forward, backward, facetA, facetB, boundary, nonManifold, inconsistent };
+  return {
+    count,
+    low,
+    high,
+    forward,
+    backward,
+    facetA,
+    facetB,
+    ofCorner,
+    boundary,
+    nonManifold,
+    inconsistent,
+  };
+}
+
+/** The facet over side `side` of a facet, or −1 (open, or used by more than two). */
+export function neighbourOver(edges: Edges, facet: number, side: number): number {
+  const e = edges.ofCorner[3 * facet + side];
+  if (e < 0 || edges.forward[e] + edges.backward[e] !== 2) return -1;
+  return edges.facetA[e] === facet ? edges.facetB[e] : edges.facetA[e];
 }
 
 /** True where every edge has exactly two facets, in opposite directions. */

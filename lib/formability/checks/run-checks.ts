@@ -1,0 +1,43 @@
+import { CHECK_IDS, type Check, type CheckId } from '../report';
+import { checkDraft } from './check-draft';
+import { checkDraw } from './check-draw';
+import { checkEdges } from './check-edges';
+import { checkFit } from './check-fit';
+import { checkLayers } from './check-layers';
+import { checkMesh } from './check-mesh';
+import { checkNozzle } from './check-nozzle';
+import { checkOverhang } from './check-overhang';
+import { checkPrint } from './check-print';
+import { checkRelease } from './check-release';
+import { checkShell } from './check-shell';
+import { checkSpacing } from './check-spacing';
+import { checkUndercut } from './check-undercut';
+import { checkVents } from './check-vents';
+import type { CheckInput } from './check-input';
+import { notRun } from './not-run';
+
+const CHECKS: Partial<Record<CheckId, (input: CheckInput) => Check>> = {
+  mesh: checkMesh,
+  fit: checkFit,
+  draft: checkDraft,
+  undercut: checkUndercut,
+  layers: checkLayers,
+  edges: checkEdges,
+  spacing: checkSpacing,
+  draw: checkDraw,
+  vents: checkVents,
+  shell: checkShell,
+  nozzle: checkNozzle,
+  overhang: checkOverhang,
+  release: checkRelease,
+  print: checkPrint,
+};
+
+/** Every check of the contract, in its order. */
+export function runChecks(input: CheckInput): Check[] {
+  return CHECK_IDS.map((id) => {
+    const check = CHECKS[id]?.(input) ?? notRun(id);
+    if (!check) throw new Error(`check ${id} has neither a function nor a reason`);
+    return check;
+  });
+}

@@ -1,0 +1,51 @@
+import type { Mesh } from '../mesh/mesh';
+import type { Place } from '../report';
+
+/**
+ * Connected groups of the chosen facets (over shared vertices), the largest first: the place is the middle of the
+ * group's largest facet, so it lies on the surface.
+ */
+export function groupFacets(
+  mesh: Mesh,
+  area: Float64Array,
+  chosen: readonly number[],
+  most: number,
+): Place[] {
+  const { index, position: p, centre } = mesh;
+  const parent = new Map<number, number>();
+  const find = (v: number): number => {
+    let root = v;
+    for (let up = parent.get(root); up !== undefined && up !== root; up = parent.get(root)) root = up;
+    for (let at = v; at !== root;) {
+      const up = parent.get(at) as number;
+      parent.set(at, root);
+      at = up;
+    }
+    return root;
+  };
+  for (const t of chosen) {
+    for (let k = 0; k < 3; k++)
+      if (!parent.has(index[3 * t + k])) parent.set(index[3 * t + k], index[3 * t + k]);
+    const roots = [0, 1, 2].map((k) => find(index[3 * t + k]));
+    const root = Math.min(...roots);
+    for (const other of roots) parent.set(other, root);
+  }
+  const groups = new Map<number, { area: number; largest: number }>();
+  for (const t of chosen) {
+    const root = find(index[3 * t]);
+    const group = groups.get(root);
+    if (!group) groups.set(root, { area: area[t], largest: t });
+    else {
+      group.area += area[t];
+      if (area[t] > area[group.largest]) group.largest = t;
+    }
+  }
+  return Array.from(groups.values())
+    .sort((a, b) => b.area - a.area || a.largest - b.largest)
+    .slice(0, most)
+    .map(({ area: sum, largest }) => {
+      const corners = [0, 1, 2].map((k) => index[3 * largest + k] * 3);
+      const at = [0, 1, 2].map((k) => corners.reduce((total, v) => total + p[v + k], 0) / 3);
+      return { at: [at[0] + centre[0], at[1] + centre[1], at[2]], areaMm2: sum };
+    });
+}

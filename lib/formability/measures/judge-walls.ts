@@ -1,0 +1,82 @@
+import type { Facets } from '../mesh/measure-facets';
+import type { Mesh } from '../mesh/mesh';
+import type { Place } from '../report';
+import { groupFacets } from './group-facets';
+import { VERTICAL_DEG } from './thresholds';
+import type { Visibility } from './visibility';
+
+/** Share of the walls' area that may lie below a limit unnoticed: slivers of a tessellation. */
+const SLIVER_SHARE = 0.001;
+const LEAST_AREA_MM2 = 0.5;
+/** Facets lower than this may be layer steps; the wall is then judged at a larger scale. */
+const STEP_MM = 1;
+const WALL_DEG = 60;
+const MOST_PLACES = 12;
+
+/** The walls that the sheet touches, judged for draft. */
+export interface WallJudgement {
+  /** Draft that more than slivers lie below; null where there are no walls. */
+  facetDeg: number | null;
+  /** True where nearly all that is steep is lower than 1 mm: steps or noise, not walls. */
+  stepped: boolean;
+  areaBelowMm2: number;
+  wallAreaMm2: number;
+  places: Place[];
+  /** Height of the facets below the limit, for the width that more draft takes. */
+  heightMm: number;
+}
+
+/** Facets that the sheet touches, bores and cavities aside, with −0.25° ≤ draft < limit. */
+export function judgeWalls(
+  mesh: Mesh,
+  facets: Facets,
+  draft: Float32Array,
+  visibility: Visibility,
+  bore: Uint8Array,
+  limitDeg: number,
+): WallJudgement {
+  const steep: number[] = [];
+  let wallArea = 0;
+  let below = 0;
+  let stepArea = 0;
+  let low = Infinity;
+  let high = -Infinity;
+  for (let t = 0; t < mesh.triangles; t++) {
+    const deg = draft[t];
+    if (facets.bed[t] || bore[t] || facets.area[t] === 0 || deg < -VERTICAL_DEG || deg > WALL_DEG) continue;
+    if (visibility.visible[t] + visibility.shadowed[t] < 0.5) continue;
+    wallArea += facets.area[t];
+    if (deg >= limitDeg) continue;
+    steep.push(t);
+    below += facets.area[t];
+    const z = [0, 1, 2].map((k) => mesh.position[mesh.index[3 * t + k] * 3 + 2]);
+    if (Math.max(...z) - Math.min(...z) < STEP_MM) stepArea += facets.area[t];
+    low = Math.min(low, ...z);
+    high = Math.max(high, ...z);
+  }
+  const sliver = Math.max(LEAST_AREA_MM2, SLIVER_SHARE * wallArea);
+  return {
+    facetDeg: wallArea > 0 ? leastDraft(facets, draft, steep, Math.min(sliver, below), limitDeg) : null,
+    stepped: stepArea > 0.8 * below,
+    areaBelowMm2: below > sliver ? below : 0,
+    wallAreaMm2: wallArea,
+    places: below > sliver ? groupFacets(mesh, facets.area, steep, MOST_PLACES) : [],
+    heightMm: below > sliver ? high - low : 0,
+  };
+}
+
+function leastDraft(
+  facets: Facets,
+  draft: Float32Array,
+  steep: number[],
+  sliver: number,
+  limit: number,
+): number {
+  const order = Uint32Array.from(steep).sort((a, b) => draft[a] - draft[b] || a - b);
+  let sum = 0;
+  for (const t of order) {
+    sum += facets.area[t];
+    if (sum >= sliver && sum > LEAST_AREA_MM2) return Math.max(0, draft[t]);
+  }
+  return limit;
+}

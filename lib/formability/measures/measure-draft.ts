@@ -1,0 +1,43 @@
+import type { Facets } from '../mesh/measure-facets';
+import type { DraftReport } from '../report';
+import { draftDeg, TOP_DEG, VERTICAL_DEG } from './thresholds';
+
+export const DRAFT_BIN_EDGES = [-90, -60, -30, -10, -2, -0.25, 0.25, 1, 2, 4, 6, 10, 15, 30, 60, 85, 90];
+
+/**
+ * Draft of every non-bed facet: asin(n_z), geometry. Bins hold lower ≤ draft < upper, the last one 90 too.
+ * @returns the report section without `wallMinMacroDeg`, and the draft of each facet
+ */
+export function measureDraft(facets: Facets): {
+  draft: Omit<DraftReport, 'wallMinMacroDeg'>;
+  ofFacet: Float32Array;
+} {
+  const { area, nz, bed } = facets;
+  const ofFacet = new Float32Array(area.length);
+  const areas = new Float64Array(DRAFT_BIN_EDGES.length - 1);
+  const edges = Float64Array.from(DRAFT_BIN_EDGES);
+  let minUp = Infinity;
+  let min = Infinity;
+  let vertical = 0;
+  for (let t = 0; t < area.length; t++) {
+    const draft = draftDeg(nz[t]);
+    ofFacet[t] = draft;
+    if (bed[t] || area[t] === 0) continue;
+    if (draft < min) min = draft;
+    if (draft > VERTICAL_DEG && draft < TOP_DEG && draft < minUp) minUp = draft;
+    if (draft >= -VERTICAL_DEG && draft <= VERTICAL_DEG) vertical += area[t];
+    let bin = 0;
+    while (bin < areas.length - 1 && draft >= edges[bin + 1]) bin++;
+    areas[bin] += area[t];
+  }
+  return {
+    draft: {
+      minUpFacingDeg: minUp === Infinity ? null : minUp,
+      minDeg: min === Infinity ? null : min,
+      verticalAreaMm2: vertical,
+      binEdgesDeg: DRAFT_BIN_EDGES,
+      areaByBinMm2: Array.from(areas),
+    },
+    ofFacet,
+  };
+}

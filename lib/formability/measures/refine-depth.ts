@@ -1,0 +1,70 @@
+import { CONNECTED, connectAir, gapFloor } from '../dexel/air';
+import { buildColumns, type Columns } from '../dexel/columns';
+import type { Grid } from '../dexel/grid';
+import { rasterise } from '../dexel/raster';
+import type { Mesh } from '../mesh/mesh';
+import type { UndercutRegion } from '../report';
+import { spreadDepth } from './find-undercuts';
+
+/** A depth of fewer cells than this is measured again on a finer grid. */
+const FEW_CELLS = 3;
+const FINER = 16;
+const MOST_REFINED = 16;
+
+/** Facets whose plan box meets a square window. */
+export function facetsInWindow(mesh: Mesh, x: number, y: number, reach: number): Uint32Array {
+  const { index, position: p } = mesh;
+  const found: number[] = [];
+  for (let t = 0, c = 0; c < index.length; t++, c += 3) {
+    const a = index[c] * 3;
+    const b = index[c + 1] * 3;
+    const d = index[c + 2] * 3;
+    if (Math.max(p[a], p[b], p[d]) < x - reach || Math.min(p[a], p[b], p[d]) > x + reach) continue;
+    if (
+      Math.max(p[a + 1], p[b + 1], p[d + 1]) < y - reach ||
+      Math.min(p[a + 1], p[b + 1], p[d + 1]) > y + reach
+    ) {
+      continue;
+    }
+    found.push(t);
+  }
+  return Uint32Array.from(found);
+}
+
+/** The columns of a small square window, `cells` to a side. */
+export function windowColumns(
+  mesh: Mesh,
+  x: number,
+  y: number,
+  reach: number,
+  cells: number,
+  ofShell: Uint32Array,
+): Columns {
+  const grid: Grid = { cell: (2 * reach) / cells, nx: cells, ny: cells, x0: x - reach, y0: y - reach };
+  return buildColumns(rasterise(mesh, grid, 2, facetsInWindow(mesh, x, y, reach)), grid, ofShell);
+}
+
+/**
+ * Measures shallow undercuts again where they are deepest: the whole-part grid rounds a depth up to a cell, which on
+ * a large part is more than the 0.2 mm that tells texture from an undercut. Changes the regions in place.
+ */
+export function refineDepth(mesh: Mesh, regions: UndercutRegion[], cell: number, ofShell: Uint32Array): void {
+  const shallow = regions.filter((region) => region.maxDepthMm <= FEW_CELLS * cell).slice(0, MOST_REFINED);
+  for (const region of shallow) {
+    const reach = region.maxDepthMm + 2 * cell;
+    const cells = Math.ceil((2 * reach * FINER) / cell);
+    const columns = windowColumns(mesh, region.at[0], region.at[1], reach, cells, ofShell);
+    const air = connectAir(columns, 'unknown');
+    const depth = spreadDepth(columns, air, 'unknown');
+    let deepest = 0;
+    for (let c = 0; c < columns.count.length; c++) {
+      for (let k = 0, s = columns.start[c]; k < columns.count[c]; k++, s += 2) {
+        const overlaps = columns.z[s] > region.zMm[0] && gapFloor(columns, c, s) < region.zMm[1];
+        if (overlaps && air.state[s] === CONNECTED && depth[s] < Infinity)
+          deepest = Math.max(deepest, depth[s]);
+      }
+    }
+    if (deepest > 0) region.maxDepthMm = Math.min(deepest, region.maxDepthMm);
+  }
+  regions.sort((a, b) => b.maxDepthMm - a.maxDepthMm);
+}
