@@ -1,6 +1,7 @@
 import { and, eq } from 'drizzle-orm';
 import { derivatives } from '@/db/schema/checks';
 import { packs, releases } from '@/db/schema/gates';
+import { studios, workspaces } from '@/db/schema/workspaces';
 import type { TenantTx } from '@/db/tenant';
 
 export type ReleaseRow = typeof releases.$inferSelect;
@@ -74,4 +75,18 @@ export async function pictureOf(
       ),
     );
   return row ?? null;
+}
+
+/** Names and zone that a pack is written with. */
+export async function workspaceOf(
+  tx: TenantTx,
+  workspaceId: string,
+): Promise<{ name: string; timeZone: string; studioName: string }> {
+  const [row] = await tx
+    .select({ name: workspaces.name, timeZone: workspaces.timeZone, studioName: studios.name })
+    .from(workspaces)
+    .innerJoin(studios, eq(studios.id, workspaces.studioId))
+    .where(eq(workspaces.id, workspaceId));
+  if (!row) throw new Error('the workspace is not visible to this transaction');
+  return row;
 }
