@@ -10,6 +10,20 @@ function postgresErrorOf(error: unknown): PostgresError | null {
   return null;
 }
 
+/** The database or another service did not answer in time, or nobody listens there. */
+function isUnreachable(error: unknown): boolean {
+  for (let e: unknown = error, depth = 0; e && depth < 5; e = (e as { cause?: unknown }).cause, depth++) {
+    const { code, message } = e as { code?: unknown; message?: unknown };
+    if (typeof code === 'string' && /^(ECONNREFUSED|ECONNRESET|ETIMEDOUT|EPIPE)$/.test(code)) return true;
+    if (
+      typeof message === 'string' &&
+      /timeout exceeded when trying to connect|Connection terminated/.test(message)
+    )
+      return true;
+  }
+  return false;
+}
+
 /** The database's refusals in words; the database is the last guard, the verbs say it better and first. */
 export function fromUnknown(error: unknown): AppError {
   if (error instanceof AppError) return error;
@@ -43,6 +57,15 @@ export function fromUnknown(error: unknown): AppError {
       reason: 'last-lead',
       cause: error,
     });
+  if (pg?.code === '23505' && reason === 'members_one')
+    return new AppError(
+      'conflict',
+      'This person already belongs to a workspace of the studio in another role.',
+      {
+        reason: 'already-member',
+        cause: error,
+      },
+    );
   if (pg?.code === '23505')
     return new AppError(
       'conflict',
@@ -58,6 +81,7 @@ export function fromUnknown(error: unknown): AppError {
       cause: error,
     });
   if (
+    isUnreachable(error) ||
     pg?.code === '57014' ||
     pg?.code?.startsWith('08') ||
     pg?.code?.startsWith('57P') ||
