@@ -1,13 +1,12 @@
-import { and, desc, eq, inArray, lt, notInArray } from 'drizzle-orm';
+import { and, desc, eq, inArray, lt } from 'drizzle-orm';
+import { templates } from '@/db/schema/templates';
 import { auditEntries } from '@/db/schema/trail';
 import type { TenantTx } from '@/db/tenant';
 import type { DocketSummary } from './content';
 
 export type EntryRow = typeof auditEntries.$inferSelect;
 
-/** Every keystroke of a draft is on the chain; a reader of the activity is told when it is opened and posted. */
-const quiet = ['draft.saved'];
-
+/** Entries of the workspace's chain, newest first, older than `before`. */
 export async function entriesBefore(
   tx: TenantTx,
   workspaceId: string,
@@ -21,7 +20,6 @@ export async function entriesBefore(
       and(
         eq(auditEntries.workspaceId, workspaceId),
         before === null ? undefined : lt(auditEntries.seq, before),
-        notInArray(auditEntries.action, quiet),
       ),
     )
     .orderBy(desc(auditEntries.seq))
@@ -43,4 +41,14 @@ export async function signedDockets(tx: TenantTx, workspaceId: string, revisionI
   return new Map(
     rows.map(({ detail }) => [detail.signatureId as string, detail.docket as DocketSummary | undefined]),
   );
+}
+
+/** Numbers of these templates, to name them in a sentence. */
+export async function templateNumbers(tx: TenantTx, workspaceId: string, ids: string[]) {
+  if (!ids.length) return new Map<string, string>();
+  const rows = await tx
+    .select({ id: templates.id, number: templates.number })
+    .from(templates)
+    .where(and(eq(templates.workspaceId, workspaceId), inArray(templates.id, ids)));
+  return new Map(rows.map((row) => [row.id, row.number]));
 }

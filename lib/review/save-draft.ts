@@ -1,5 +1,4 @@
 import { withTenant } from '@/db/tenant';
-import { appendEntry } from '@/lib/audit/append-entry';
 import { canonical, digestOf } from '@/lib/audit/canonical';
 import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
 import { conflict, invalid } from '@/lib/errors/app-error';
@@ -16,7 +15,8 @@ import { findUpload } from './upload-data';
 const maxRecipeChars = 20_000;
 
 /**
- * Saves a draft that is still at the version that the caller saw. The recipe may be half done: it is judged
+ * Saves a draft that is still at the version that the caller saw. It saves itself as one types, so this is the one
+ * change without an audit entry: a draft is a working paper until posting puts its digests on the chain. The recipe may be half done: it is judged
  * when it is posted. Limits are the studio's and not part of it.
  */
 export async function saveDraft(
@@ -45,12 +45,6 @@ export async function saveDraft(
     const before = { uploadId: draft.uploadId, recipe: draft.recipe, note: draft.note };
     if (digestOf(before) === digestOf({ uploadId, recipe, note })) return draftView(tx, draft);
     const saved = await changeDraft(tx, draft, { uploadId, recipe, note });
-    await appendEntry(tx, ctx, {
-      action: 'draft.saved',
-      subjectKind: 'draft',
-      subjectId: draft.id,
-      detail: { templateId: id, version: saved.version, uploadId, recipeDigest: digestOf(recipe) },
-    });
     await queueLive(tx, ctx, { name: 'draft.changed', data: { id: draft.id, templateId: id } });
     return draftView(tx, saved);
   });

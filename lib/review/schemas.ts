@@ -310,7 +310,7 @@ export const RevisionView = z.object({
         gateName: z.string(),
         meaning: z.string(),
         /** Why signing would be refused at this moment, as a sentence; null when it would not. Returning is open. */
-        blocked: z.string().nullable(),
+        blocked: z.string().nullable().optional(),
       })
       .nullable(),
     withdraw: z.boolean(),
@@ -400,6 +400,11 @@ export type TodayView = z.infer<typeof TodayView>;
 
 // Activity
 
+export const ListActivityInput = z.object({
+  cursor: z.string().max(400).optional(),
+  limit: z.coerce.number().int().min(1).max(100).default(50),
+});
+
 export const ActivityPage = z.object({
   items: z.array(
     z.object({
@@ -411,6 +416,8 @@ export const ActivityPage = z.object({
       text: z.string(),
       /** Page of what it is about, where there is one. */
       path: z.string().nullable(),
+      /** Hash of the entry in the workspace's chain, lower-case hex. */
+      hash: z.string(),
     }),
   ),
   nextCursor: z.string().nullable(),

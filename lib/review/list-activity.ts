@@ -1,0 +1,37 @@
+import { z } from 'zod';
+import { withTenant } from '@/db/tenant';
+import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
+import { parseInput } from '@/lib/http/read-input';
+import { entriesBefore, templateNumbers } from './activity-data';
+import { tell, templateOf } from './activity-words';
+import { decodeCursor, encodeCursor } from './cursor';
+import { ListActivityInput, type ActivityPage } from './schemas';
+
+/** The workspace's audit chain in plain words, newest first. */
+export async function listActivity(ctx: WorkspaceContext, input: unknown): Promise<ActivityPage> {
+  requirePermission(ctx, 'activity.read');
+  const { cursor, limit } = parseInput(ListActivityInput, input);
+  const before = cursor ? decodeCursor(z.object({ seq: z.number().int() }), cursor).seq : null;
+  const workspaceId = ctx.workspace.id;
+  return withTenant(ctx, async (tx) => {
+    const rows = await entriesBefore(tx, workspaceId, before, limit + 1);
+    const shown = rows.slice(0, limit);
+    const ids = [...new Set(shown.flatMap((entry) => templateOf(entry) ?? []))];
+    const numbers = await templateNumbers(tx, workspaceId, ids);
+    const items = shown.map((entry) => {
+      const number = numbers.get(templateOf(entry) ?? '') ?? 'a template';
+      const told = tell(entry, { slug: ctx.workspace.slug, number });
+      return {
+        seq: entry.seq,
+        at: entry.at.toISOString(),
+        actorName: entry.actorName,
+        action: entry.action,
+        text: told.text,
+        path: told.path,
+        hash: entry.hash,
+      };
+    });
+    const last = shown.at(-1);
+    return { items, nextCursor: rows.length > limit && last ? encodeCursor({ seq: last.seq }) : null };
+  });
+}

@@ -1,0 +1,33 @@
+import { withTenant } from '@/db/tenant';
+import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
+import { notFound } from '@/lib/errors/app-error';
+import { store } from '@/lib/storage/store';
+import { asId } from './as-id';
+import { derivativesOf } from './check-data';
+import { findRevision, loadRevisionParts } from './revision-data';
+
+export type RevisionFile = 'model' | 'picture' | 'thumbnail' | 'mesh';
+const types = { model: 'model/gltf-binary', picture: 'image/png', thumbnail: 'image/png' } as const;
+const endings = { model: 'glb', picture: 'png', thumbnail: 'png' } as const;
+
+/** A short-lived address in the store for one file of a revision. The mesh is the exact bytes that were posted. */
+export async function locateFile(
+  ctx: WorkspaceContext,
+  revisionId: string,
+  file: RevisionFile,
+): Promise<string> {
+  requirePermission(ctx, 'workspace.read');
+  const id = asId(revisionId, 'revision');
+  const found = await withTenant(ctx, async (tx) => {
+    const revision = await findRevision(tx, ctx.workspace.id, id);
+    const { template, mesh } = await loadRevisionParts(tx, revision);
+    if (file === 'mesh')
+      return { key: mesh.storeKey, fileName: mesh.fileName, contentType: 'model/stl', inline: false };
+    const made = (await derivativesOf(tx, ctx.workspace.id, mesh.id)).find((row) => row.kind === file);
+    if (!made) throw notFound(file);
+    const fileName = `${template.number}-${revision.letter}-${file}.${endings[file]}`;
+    return { key: made.storeKey, fileName, contentType: types[file], inline: true };
+  });
+  const { key, ...name } = found;
+  return store().presignGet(key, name);
+}

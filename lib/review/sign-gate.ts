@@ -1,0 +1,98 @@
+import { withTenant } from '@/db/tenant';
+import { appendEntry } from '@/lib/audit/append-entry';
+import { confirmPassword } from '@/lib/auth/confirm-password';
+import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
+import { parseInput } from '@/lib/http/read-input';
+import { queueLive } from '@/lib/jobs/queue-live';
+import { advanceGates } from './advance-gates';
+import { asId } from './as-id';
+import { findGate, findLockDigest, insertSignature } from './gate-data';
+import { signatureView } from './gate-view';
+import { holdGate, requireSettled } from './hold-gate';
+import { workspacePeople } from './people-data';
+import { mailAbout, tellToday } from './revision-mails';
+import { SignInput, type SignatureView } from './schemas';
+
+export type SignResult = { signature: SignatureView; gatePassed: boolean; locked: boolean };
+
+/**
+ * Puts the reader's name to exactly the content that they were shown, after asking for the password again. The
+ * signature that completes the last gate locks the revision. Refusals change nothing and say what stands in the way.
+ */
+export async function signGate(ctx: WorkspaceContext, gateId: string, input: unknown): Promise<SignResult> {
+  requirePermission(ctx, 'gate.sign');
+  const { digest, password } = parseInput(SignInput, input);
+  const id = asId(gateId, 'gate');
+  const workspaceId = ctx.workspace.id;
+  await withTenant(ctx, (tx) => findGate(tx, workspaceId, id));
+  const method = await confirmPassword(ctx.person, password);
+  return withTenant(ctx, async (tx) => {
+    const held = await holdGate(tx, ctx, id, digest);
+    await requireSettled(tx, held);
+    const { template, revision, gate } = held;
+    const signature = await insertSignature(tx, {
+      workspaceId,
+      revisionId: revision.id,
+      gateId: id,
+      decision: 'sign',
+      signerId: ctx.person.id,
+      printedName: ctx.person.name,
+      role: held.role,
+      meaning: gate.rule.meaning,
+      contentDigest: held.digest,
+      method,
+      timeZone: ctx.person.timeZone,
+    });
+    await appendEntry(tx, ctx, {
+      action: 'gate.signed',
+      subjectKind: 'revision',
+      subjectId: revision.id,
+      detail: {
+        templateId: template.id,
+        number: template.number,
+        letter: revision.letter,
+        gateId: id,
+        gate: gate.rule.name,
+        signatureId: signature.id,
+        printedName: signature.printedName,
+        role: signature.role,
+        meaning: signature.meaning,
+        method,
+        signedAt: signature.signedAt.toISOString(),
+        contentDigest: held.digest,
+        // Notes may still join before the last gate: the docket of this digest is kept here.
+        docket: held.content.docket,
+      },
+    });
+    const passed = await advanceGates(tx, ctx, template, revision);
+    const locked = (await findLockDigest(tx, workspaceId, revision.id)) !== null;
+    const people = await workspacePeople(tx, workspaceId);
+    const concerned = people.filter(
+      (person) => locked || person.id === ctx.person.id || person.id === revision.authorId,
+    );
+    const about = { template, revision, occasion: `revision-signed:${signature.id}` };
+    await mailAbout(tx, ctx, concerned, about, (base) => ({
+      template: 'revision-signed',
+      ...base,
+      printedName: signature.printedName,
+      role: signature.role,
+      meaning: signature.meaning,
+      signedAt: signature.signedAt.toISOString(),
+      timeZone: signature.timeZone,
+      digest: held.digest,
+      locked,
+    }));
+    await tellToday(tx, ctx, people, revision.id);
+    await queueLive(
+      tx,
+      ctx,
+      { name: 'revision.changed', data: { id: revision.id, templateId: template.id } },
+      { name: 'template.changed', data: { id: template.id } },
+    );
+    return {
+      signature: signatureView(signature),
+      gatePassed: passed.some((row) => row.id === id),
+      locked,
+    };
+  });
+}

@@ -1,0 +1,246 @@
+import { and, asc, count, desc, eq, inArray, min, ne, sql } from 'drizzle-orm';
+import { checkRuns, findings, waivers } from '@/db/schema/checks';
+import { notes, placements, threads } from '@/db/schema/docket';
+import { gates, signatures } from '@/db/schema/gates';
+import { drafts, revisions, templates } from '@/db/schema/templates';
+import { auditEntries } from '@/db/schema/trail';
+import { members, workspaces } from '@/db/schema/workspaces';
+import type { TenantTx } from '@/db/tenant';
+
+/** What every row of a desk says about where it is. */
+const place = {
+  workspaceId: workspaces.id,
+  workspaceName: workspaces.name,
+  workspaceSlug: workspaces.slug,
+  templateId: templates.id,
+  number: templates.number,
+  title: templates.title,
+  dueOn: templates.dueOn,
+  letter: revisions.letter,
+};
+
+const ofTemplate = and(
+  eq(templates.workspaceId, revisions.workspaceId),
+  eq(templates.id, revisions.templateId),
+);
+const ofWorkspace = eq(workspaces.id, revisions.workspaceId);
+const membership = (personId: string) =>
+  and(eq(members.workspaceId, revisions.workspaceId), eq(members.userId, personId));
+const most = 200;
+
+/** An open item of a docket that must be settled on the revision in `placements`. */
+const mustSettle = and(
+  eq(threads.state, 'open'),
+  eq(threads.mustSettle, true),
+  eq(threads.afterApproval, false),
+);
+
+/** Open people's gates that this person may sign now; those kept shut by items to settle wait on others first. */
+export async function gatesToSign(tx: TenantTx, personId: string) {
+  return tx
+    .select({ ...place, gateName: sql<string>`${gates.rule}->>'name'`, since: gates.openedAt })
+    .from(gates)
+    .innerJoin(
+      revisions,
+      and(eq(revisions.workspaceId, gates.workspaceId), eq(revisions.id, gates.revisionId)),
+    )
+    .innerJoin(templates, ofTemplate)
+    .innerJoin(workspaces, ofWorkspace)
+    .innerJoin(members, membership(personId))
+    .where(
+      and(
+        eq(gates.state, 'open'),
+        eq(revisions.state, 'in_review'),
+        sql`${gates.rule}->>'kind' = 'people'`,
+        sql`${gates.rule}->'roles' ? ${members.role}`,
+        sql`not ((${gates.rule}->>'fourEyes')::boolean and ${revisions.authorId} = ${personId})`,
+        sql`not exists (select 1 from ${signatures} where ${signatures.workspaceId} = ${gates.workspaceId}
+          and ${signatures.gateId} = ${gates.id} and ${signatures.signerId} = ${personId})`,
+        sql`not exists (select 1 from ${placements} join ${threads} on ${threads.workspaceId} = ${placements.workspaceId}
+          and ${threads.id} = ${placements.threadId} where ${placements.workspaceId} = ${revisions.workspaceId}
+          and ${placements.revisionId} = ${revisions.id} and ${mustSettle})`,
+      ),
+    )
+    .orderBy(asc(gates.openedAt))
+    .limit(most);
+}
+
+/** Items that must be settled on revisions in review that this person posted or where they opened the item. */
+export async function itemsToSettle(tx: TenantTx, personId: string) {
+  return tx
+    .select({ ...place, n: count(), since: min(threads.createdAt) })
+    .from(placements)
+    .innerJoin(
+      threads,
+      and(eq(threads.workspaceId, placements.workspaceId), eq(threads.id, placements.threadId)),
+    )
+    .innerJoin(
+      revisions,
+      and(eq(revisions.workspaceId, placements.workspaceId), eq(revisions.id, placements.revisionId)),
+    )
+    .innerJoin(templates, ofTemplate)
+    .innerJoin(workspaces, ofWorkspace)
+    .innerJoin(members, membership(personId))
+    .where(
+      and(
+        eq(revisions.state, 'in_review'),
+        mustSettle,
+        sql`${personId} in (${revisions.authorId}, ${threads.openedBy})`,
+      ),
+    )
+    .groupBy(workspaces.id, templates.workspaceId, templates.id, revisions.letter)
+    .limit(most);
+}
+
+/** Failing findings, not waived, on revisions in review that this person posted. */
+export async function findingsToMend(tx: TenantTx, personId: string) {
+  return tx
+    .select({ ...place, n: count(), since: min(checkRuns.finishedAt) })
+    .from(findings)
+    .innerJoin(
+      revisions,
+      and(eq(revisions.workspaceId, findings.workspaceId), eq(revisions.id, findings.revisionId)),
+    )
+    .innerJoin(
+      checkRuns,
+      and(eq(checkRuns.workspaceId, revisions.workspaceId), eq(checkRuns.revisionId, revisions.id)),
+    )
+    .innerJoin(templates, ofTemplate)
+    .innerJoin(workspaces, ofWorkspace)
+    .innerJoin(members, membership(personId))
+    .leftJoin(waivers, and(eq(waivers.workspaceId, findings.workspaceId), eq(waivers.findingId, findings.id)))
+    .where(
+      and(
+        eq(findings.status, 'fail'),
+        sql`${waivers.id} is null`,
+        eq(revisions.state, 'in_review'),
+        eq(revisions.authorId, personId),
+      ),
+    )
+    .groupBy(workspaces.id, templates.workspaceId, templates.id, revisions.letter)
+    .limit(most);
+}
+
+/** Approved revisions, where this person is one who releases. */
+export async function revisionsToRelease(tx: TenantTx, personId: string) {
+  return tx
+    .select({ ...place, since: revisions.stateAt })
+    .from(revisions)
+    .innerJoin(templates, ofTemplate)
+    .innerJoin(workspaces, ofWorkspace)
+    .innerJoin(members, membership(personId))
+    .where(and(eq(revisions.state, 'approved'), inArray(members.role, ['producer', 'lead'])))
+    .orderBy(asc(revisions.stateAt))
+    .limit(most);
+}
+
+/** Revisions that were returned to this person and that nothing has followed yet. */
+export async function returnedRevisions(tx: TenantTx, personId: string) {
+  return tx
+    .select({ ...place, reason: revisions.stateReason, since: revisions.stateAt })
+    .from(revisions)
+    .innerJoin(templates, and(ofTemplate, eq(templates.latestRevisionId, revisions.id)))
+    .innerJoin(workspaces, ofWorkspace)
+    .innerJoin(members, membership(personId))
+    .where(and(eq(revisions.state, 'returned'), eq(revisions.authorId, personId)))
+    .orderBy(asc(revisions.stateAt))
+    .limit(most);
+}
+
+export async function openDrafts(tx: TenantTx, personId: string) {
+  const { letter: _letter, ...draftPlace } = place;
+  return tx
+    .select({ ...draftPlace, since: drafts.changedAt })
+    .from(drafts)
+    .innerJoin(
+      templates,
+      and(eq(templates.workspaceId, drafts.workspaceId), eq(templates.id, drafts.templateId)),
+    )
+    .innerJoin(workspaces, eq(workspaces.id, drafts.workspaceId))
+    .innerJoin(members, and(eq(members.workspaceId, drafts.workspaceId), eq(members.userId, personId)))
+    .where(eq(drafts.authorId, personId))
+    .orderBy(asc(drafts.changedAt))
+    .limit(most);
+}
+
+/** The last note of each open thread, where somebody else wrote it and it names this person or answers them. */
+export async function notesToAnswer(tx: TenantTx, personId: string) {
+  const last = tx
+    .selectDistinctOn([notes.workspaceId, notes.threadId], {
+      workspaceId: notes.workspaceId,
+      threadId: notes.threadId,
+      revisionId: notes.revisionId,
+      authorId: notes.authorId,
+      authorName: notes.authorName,
+      text: notes.text,
+      mentions: notes.mentions,
+      createdAt: notes.createdAt,
+    })
+    .from(notes)
+    .innerJoin(
+      threads,
+      and(
+        eq(threads.workspaceId, notes.workspaceId),
+        eq(threads.id, notes.threadId),
+        eq(threads.state, 'open'),
+      ),
+    )
+    .orderBy(notes.workspaceId, notes.threadId, desc(notes.createdAt), desc(notes.id))
+    .as('last');
+  const named = sql<boolean>`${last.mentions} ? ${personId}`;
+  return tx
+    .select({ ...place, authorName: last.authorName, text: last.text, named, since: last.createdAt })
+    .from(last)
+    .innerJoin(threads, and(eq(threads.workspaceId, last.workspaceId), eq(threads.id, last.threadId)))
+    .innerJoin(revisions, and(eq(revisions.workspaceId, last.workspaceId), eq(revisions.id, last.revisionId)))
+    .innerJoin(templates, ofTemplate)
+    .innerJoin(workspaces, ofWorkspace)
+    .innerJoin(members, membership(personId))
+    .where(
+      and(
+        ne(last.authorId, personId),
+        inArray(revisions.state, ['in_review', 'approved', 'released']),
+        sql`(${named} or (${revisions.state} = 'in_review' and ${threads.mustSettle} = false
+          and ${personId} in (${threads.openedBy}, ${revisions.authorId})))`,
+      ),
+    )
+    .orderBy(asc(last.createdAt))
+    .limit(most);
+}
+
+const telling = [
+  'revision.posted',
+  'revision.withdrawn',
+  'revision.locked',
+  'revision.released',
+  'revision.recalled',
+  'revision.retired',
+  'gate.signed',
+  'gate.returned',
+  'check.finished',
+  'finding.waived',
+  'thread.opened',
+  'note.posted',
+];
+
+/** What happened lately, everywhere that this person may look. */
+export async function recentEntries(tx: TenantTx, personId: string, limit: number) {
+  return tx
+    .select({ entry: auditEntries, workspaceName: workspaces.name, workspaceSlug: workspaces.slug })
+    .from(auditEntries)
+    .innerJoin(workspaces, eq(workspaces.id, auditEntries.workspaceId))
+    .innerJoin(members, and(eq(members.workspaceId, workspaces.id), eq(members.userId, personId)))
+    .where(inArray(auditEntries.action, telling))
+    .orderBy(desc(auditEntries.at), desc(auditEntries.seq))
+    .limit(limit);
+}
+
+export async function numbersAcross(tx: TenantTx, personId: string, templateIds: string[]) {
+  if (!templateIds.length) return new Map<string, string>();
+  const rows = await tx
+    .select({ id: templates.id, number: templates.number })
+    .from(templates)
+    .innerJoin(members, and(eq(members.workspaceId, templates.workspaceId), eq(members.userId, personId)))
+    .where(inArray(templates.id, templateIds));
+  return new Map(rows.map((row) => [row.id, row.number]));
+}

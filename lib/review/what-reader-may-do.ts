@@ -1,0 +1,55 @@
+import type { WorkspaceContext } from '@/lib/auth/context';
+import { permits } from '@/lib/workspaces/roles';
+import type { GateRow, SignatureRow } from './gate-data';
+import type { WorkspacePerson } from './people-data';
+import type { RevisionRow } from './revision-data';
+import type { RevisionView } from './schemas';
+import { whoMaySign } from './who-signs';
+
+type Standing = {
+  revision: RevisionRow;
+  gates: GateRow[];
+  signatures: SignatureRow[];
+  people: WorkspacePerson[];
+  mustSettle: number;
+  checkFinished: boolean;
+  hasPack: boolean;
+};
+
+/** What the page offers; every verb decides again for itself. */
+export function whatReaderMayDo(ctx: WorkspaceContext, at: Standing): RevisionView['can'] {
+  const { revision } = at;
+  const may = (permission: Parameters<typeof permits>[1]) => permits(ctx.role, permission);
+  const reviewed = revision.state === 'in_review';
+  const unlocked = reviewed || revision.state === 'returned' || revision.state === 'withdrawn';
+  return {
+    note: may('docket.note'),
+    settle: may('docket.settle') && unlocked,
+    waive: may('finding.waive') && reviewed,
+    sign: may('gate.sign') && reviewed ? gateToSign(ctx, at) : null,
+    withdraw:
+      may('revision.withdraw') &&
+      reviewed &&
+      revision.authorId === ctx.person.id &&
+      at.signatures.length === 0,
+    release: may('revision.release') && revision.state === 'approved',
+    recall: may('revision.recall') && revision.state === 'released',
+    retire: may('revision.retire') && revision.state === 'released',
+    download: may('pack.download') && at.hasPack,
+    post: may('revision.post'),
+  };
+}
+
+function gateToSign(ctx: WorkspaceContext, at: Standing): RevisionView['can']['sign'] {
+  const gate = at.gates.find((row) => row.state === 'open' && row.rule.kind === 'people');
+  if (!gate) return null;
+  const mine = whoMaySign(gate, at.revision.authorId, at.people, at.signatures);
+  if (!mine.some((person) => person.id === ctx.person.id)) return null;
+  const items = at.mustSettle === 1 ? 'One item' : `${at.mustSettle} items`;
+  const blocked = !at.checkFinished
+    ? 'The check has not finished yet.'
+    : at.mustSettle
+      ? `${items} must be settled first.`
+      : null;
+  return { gateId: gate.id, gateName: gate.rule.name, meaning: gate.rule.meaning, blocked };
+}
