@@ -137,7 +137,7 @@ function SpaceNav({ items, frame }: { items: readonly NavItem[]; frame: string }
                 '-mb-px inline-flex items-center gap-1.5 border-b-2 py-1.5 no-underline pointer-coarse:py-2.5',
                 item.current
                   ? 'border-ink font-semibold text-ink'
-                  : 'border-transparent text-slate hover:text-ink',
+                  : 'border-transparent text-slate hover:text-ink forced-colors:border-[Canvas]',
               )}
             >
               {item.label}

@@ -88,7 +88,7 @@ export function Switch(props: ToggleProps) {
           aria-hidden
           className="mt-0.5 flex h-5 w-9 shrink-0 items-center border border-edge bg-sheet p-[3px] group-hover:border-ink group-data-disabled:border-rule group-data-disabled:bg-sunk group-data-selected:border-verdigris group-data-selected:bg-verdigris"
         >
-          <span className="size-3 bg-edge transition-transform duration-100 group-data-selected:translate-x-4 group-data-selected:bg-on-verdigris" />
+          <span className="size-3 bg-edge transition-transform duration-100 group-data-selected:translate-x-4 group-data-selected:bg-on-verdigris forced-colors:bg-[ButtonText]" />
         </span>
         <span>{props.label}</span>
       </SwitchButton>

@@ -57,7 +57,7 @@ export function Dialog(props: DialogProps) {
         <AriaDialog role={role} className="flex flex-col outline-none">
           {({ close }) => (
             <>
-              <header className="flex items-start justify-between gap-4 border-b border-rule px-5 py-3">
+              <header className="flex items-center justify-between gap-4 border-b border-rule px-5 py-3">
                 <Heading slot="title" className="text-lg font-semibold">
                   {title}
                 </Heading>

@@ -12,7 +12,7 @@ export function Digest(props: { value: string; characters?: number | 'all'; clas
   return (
     <code
       title={value}
-      className={clsx('font-mono text-[0.94em]', shown <= 16 && 'whitespace-nowrap', className)}
+      className={clsx('font-mono', shown <= 16 && 'whitespace-nowrap', className)}
     >
       {groupHex(value, shown)}
       {shown < value.length ? '\u00a0…' : ''}

@@ -12,7 +12,7 @@ export interface FigureProps {
 /** One number in the figure face. For lengths that follow the reader's units use `Length`. */
 export function Figure({ value, unit, digits = 2, className }: FigureProps) {
   return (
-    <span className={clsx('font-mono text-[0.94em] whitespace-nowrap tabular-nums', className)}>
+    <span className={clsx('font-mono whitespace-nowrap tabular-nums', className)}>
       {formatNumber(value, digits)}
       {unit && value != null ? (unit === '°' ? unit : `\u202f${unit}`) : null}
     </span>

@@ -25,9 +25,9 @@ export function MeasureBar({ value, limit, unit, sense, digits = 2, max }: Measu
       aria-label={`Measured ${formatNumber(value, digits)} ${unit}, ${wanted} ${unit}`}
       className="relative pt-4"
     >
-      <span className="block h-1.5 bg-rule">
+      <span className="block h-1.5 bg-rule forced-colors:h-2 forced-colors:border">
         <span
-          className={clsx('block h-full', broken ? 'bg-madder' : 'bg-verdigris')}
+          className={clsx('block h-full forced-colors:bg-[Highlight]', broken ? 'bg-madder' : 'bg-verdigris')}
           style={{ width: `${share(value)}%` }}
         />
       </span>

@@ -29,11 +29,14 @@ export function ProgressBar({ label, value, detail, className }: ProgressBarProp
         <Label className="font-semibold">{label}</Label>
         <span className="font-mono text-xs text-slate tabular-nums">{text}</span>
       </span>
-      <span className="block h-1.5 overflow-hidden bg-rule">
+      <span className="block h-1.5 overflow-hidden bg-rule forced-colors:h-2 forced-colors:border">
         {value === null ? (
           <span className="skeleton block h-full" />
         ) : (
-          <span className="block h-full origin-left bg-verdigris" style={{ width: `${share * 100}%` }} />
+          <span
+            className="block h-full bg-verdigris forced-colors:bg-[Highlight]"
+            style={{ width: `${share * 100}%` }}
+          />
         )}
       </span>
     </AriaProgressBar>

@@ -64,7 +64,7 @@ export function RadioGroup(props: RadioGroupProps) {
                 aria-hidden
                 className="mt-[3px] flex size-[1.0625rem] shrink-0 items-center justify-center rounded-full border border-edge bg-sheet group-hover:border-ink group-data-disabled:border-rule group-data-disabled:bg-sunk group-data-invalid:border-madder group-data-selected:border-verdigris"
               >
-                <span className="size-2 rounded-full group-data-selected:bg-verdigris" />
+                <span className="size-2 rounded-full group-data-selected:bg-verdigris forced-colors:group-data-selected:bg-[Highlight]" />
               </span>
               <span>{option.label}</span>
             </RadioButton>

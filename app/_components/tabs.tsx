@@ -46,7 +46,7 @@ export function Tabs({
             key={tab.id}
             id={tab.id}
             className={clsx(
-              'flex cursor-pointer items-center gap-1.5 border-b-2 border-transparent py-1 text-base text-slate pointer-coarse:py-2.5',
+              'flex cursor-pointer items-center gap-1.5 border-b-2 border-transparent py-1 forced-colors:not-data-selected:border-[Canvas] text-base text-slate pointer-coarse:py-2.5',
               'data-hovered:text-ink data-selected:border-ink data-selected:font-semibold data-selected:text-ink data-disabled:opacity-60',
             )}
           >

@@ -10,10 +10,13 @@ const listeners = new Set<() => void>();
 
 function subscribe(listener: () => void): () => void {
   listeners.add(listener);
-  timer ??= setInterval(() => {
+  if (timer === undefined) {
     now = Date.now();
-    listeners.forEach((each) => each());
-  }, tick);
+    timer = setInterval(() => {
+      now = Date.now();
+      listeners.forEach((each) => each());
+    }, tick);
+  }
   return () => {
     listeners.delete(listener);
     if (listeners.size === 0) {

@@ -46,6 +46,6 @@ export const figureFace = localFont({
   display: 'swap',
   declarations: [
     { prop: 'font-stretch', value: '75% 112.5%' },
-    { prop: 'size-adjust', value: '92%' },
+    { prop: 'size-adjust', value: '88%' },
   ],
 });

@@ -16,7 +16,7 @@ export function NameForm({ name, email }: { name: string; email: string }) {
   const { control, handleSubmit, formState, reset } = useForm({ defaultValues: { name } });
 
   async function save(values: { name: string }) {
-    const next = values.name.trim();
+    const next = values.name.trim().replace(/\s+/g, ' ');
     const failed = await updatePerson({ name: next });
     setProblem(failed);
     if (failed) return;

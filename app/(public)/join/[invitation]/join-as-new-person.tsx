@@ -33,7 +33,10 @@ export function JoinAsNewPerson({ id, email }: { id: string; email: string }) {
   async function join(values: Values) {
     setProblem(null);
     try {
-      const path = await acceptInvitation(id, key, { ...values, name: values.name.trim() });
+      const path = await acceptInvitation(id, key, {
+        ...values,
+        name: values.name.trim().replace(/\s+/g, ' '),
+      });
       const { data } = await authClient.getSession();
       if (!data) {
         const answer = await askAuth(() => authClient.signIn.email({ email, password: values.password }));

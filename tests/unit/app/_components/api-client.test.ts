@@ -41,6 +41,7 @@ afterEach(() => {
 
 afterAll(async () => {
   globalThis.fetch = realFetch;
+  server.closeAllConnections();
   await new Promise((resolve) => server.close(resolve));
 });
 
