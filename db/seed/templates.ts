@@ -40,16 +40,16 @@ export type TartTray = { draftDeg: number; ventMm: number };
 /** Six fluted cups on a drafted flange; a shallow dish in each cup is vented to the bed. */
 export async function tartTray({ draftDeg, ventMm }: TartTray): Promise<Uint8Array> {
   const base = 8;
-  const height = 40;
+  const height = 27;
   const cups: Manifold[] = [];
   const tools: Manifold[] = [];
-  for (const x of [-62, 0, 62])
-    for (const y of [-31, 31]) {
-      const cup = await loft(flutedCircle(26, 14, 0.03), draftedLevels(height, draftDeg, 2.5));
+  for (const x of [-74, 0, 74])
+    for (const y of [-37, 37]) {
+      const cup = await loft(flutedCircle(25, 14, 0.03), draftedLevels(height, draftDeg, 2.5));
       cups.push(cup.translate(x, y, 0));
       tools.push((await pocket(13, 3, 20, height)).translate(x, y, 0), await bore(ventMm, height, x, y));
     }
-  const body = await join([await flange(206, 134, base), ...cups]);
+  const body = await join([await flange(232, 158, base), ...cups]);
   return stlBytes(await cut(body, tools), 'tart tray, six cup');
 }
 
