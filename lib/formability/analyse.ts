@@ -71,9 +71,9 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
   effective.grid.cellMm = grid.cell;
 
   const air = stages.run('air', () => connectAir(columns));
-  const regions = stages.run('facets', () => {
-    const found = findUndercuts(columns, air);
-    refineDepth(mesh, found, grid.cell, shells.ofFacet);
+  const { regions, ceiling } = stages.run('undercut', () => {
+    const found = findUndercuts(columns, air, effective.limits.undercutDepthMm, mesh.triangles);
+    refineDepth(mesh, found.regions, grid.cell, shells.ofFacet);
     return found;
   });
   const holes = stages.run('vents', () =>
@@ -86,7 +86,7 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
 
   const skip = facets.bed.slice();
   for (let t = 0; t < skip.length; t++) {
-    if (holes.bore[t] || visibility.visible[t] + visibility.shadowed[t] < 0.5) skip[t] = 1;
+    if (holes.bore[t] || ceiling[t] || visibility.visible[t] + visibility.shadowed[t] < 0.5) skip[t] = 1;
   }
   const { machine, print, limits } = effective;
   const frameMm = machine.frameMm ?? [

@@ -6,7 +6,7 @@ import type { UndercutRegion } from '../report';
 /** Regions are listed from the deepest down, at most this many. */
 const MOST_REGIONS = 50;
 
-interface Draftee {
+interface Pocket {
   cells: number;
   sum: number;
   depth: number;
@@ -16,16 +16,22 @@ interface Draftee {
   high: number;
 }
 
+export interface Undercuts {
+  regions: UndercutRegion[];
+  /** 1 for facets that face down into a pocket deeper than `textureMm`: ceilings, not walls. */
+  ceiling: Uint8Array;
+}
+
 /**
  * Pockets of connected air under the part, each with its greatest horizontal depth: how far the farthest covered
  * point lies from the lip, in plan. The nearest lip point travels inwards from gap to gap, so it follows
  * the pocket round corners.
  */
-export function findUndercuts(columns: Columns, air: Air): UndercutRegion[] {
+export function findUndercuts(columns: Columns, air: Air, textureMm: number, triangles: number): Undercuts {
   const { grid, start, count, z } = columns;
   const { nx, ny, cell } = grid;
   const depth = spreadDepth(columns, air);
-  const regions = new Map<number, Draftee>();
+  const regions = new Map<number, Pocket>();
   for (let c = 0; c < nx * ny; c++) {
     for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
       if (air.state[s] !== CONNECTED) continue;
@@ -57,58 +63,80 @@ export function findUndercuts(columns: Columns, air: Air): UndercutRegion[] {
     (a, b) =>
       b.maxDepthMm - a.maxDepthMm || b.volumeMm3 - a.volumeMm3 || a.at[0] - b.at[0] || a.at[1] - b.at[1],
   );
-  return list.slice(0, MOST_REGIONS);
+  const ceiling = new Uint8Array(triangles);
+  for (let c = 0; c < nx * ny; c++) {
+    for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
+      const deep = air.state[s] === CONNECTED && (regions.get(air.pocket[s])?.depth ?? 0) > textureMm;
+      if (deep && columns.facet[s] >= 0) ceiling[columns.facet[s]] = 1;
+    }
+  }
+  return { regions: list.slice(0, MOST_REGIONS), ceiling };
 }
 
-/** Horizontal distance of every connected gap from its nearest lip, mm. */
+/**
+ * Horizontal distance of every connected gap from its nearest lip, mm. Gaps are settled from the lip inwards, in
+ * buckets of half a cell, each taking over the lip point of the neighbour that reaches it first.
+ */
 export function spreadDepth(columns: Columns, air: Air, rim: 'open' | 'unknown' = 'open'): Float32Array {
   const { grid, start, count, z, height } = columns;
   const { nx, ny, cell } = grid;
   const slots = z.length;
   const depth = new Float32Array(slots).fill(Infinity);
-  const lipX = new Float32Array(slots);
-  const lipY = new Float32Array(slots);
-  const columnOf = new Int32Array(slots);
-  let queue: number[] = [];
-  const offer = (c: number, s: number, x: number, y: number) => {
-    // Half a cell: the solid's face lies, on average, that far behind the last covered centre.
-    const far = Math.hypot(centreX(grid, c) - x, centreY(grid, c) - y) + cell / 2;
-    if (far >= depth[s] - 1e-6) return;
+  // In cells, from the middle of cell 0,0; twice the value, so lips between cells are whole numbers.
+  const lipX = new Int16Array(slots);
+  const lipY = new Int16Array(slots);
+  const settled = new Uint8Array(slots);
+  const buckets: number[][] = [];
+  const offer = (i: number, j: number, s: number, x: number, y: number) => {
+    const dx = 2 * i - x;
+    const dy = 2 * j - y;
+    // Half a cell more: the solid's face lies, on average, that far behind the last covered centre.
+    const far = ((Math.sqrt(dx * dx + dy * dy) + 1) * cell) / 2;
+    if (far >= depth[s]) return;
     depth[s] = far;
     lipX[s] = x;
     lipY[s] = y;
-    queue.push(s);
+    const bucket = Math.floor((2 * far) / cell);
+    while (buckets.length <= bucket) buckets.push([]);
+    buckets[bucket].push(j * nx + i, s);
   };
-  const sides = [1, -1, nx, -nx];
-  const inside = (c: number, side: number) =>
-    side === 1 ? c % nx < nx - 1 : side === -1 ? c % nx > 0 : side > 0 ? c < nx * (ny - 1) : c >= nx;
   for (let c = 0; c < nx * ny; c++) {
+    if (count[c] === 0) continue;
+    const i = c % nx;
+    const j = (c - i) / nx;
     for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
-      columnOf[s] = c;
       if (!air.mouth[s] || air.state[s] !== CONNECTED) continue;
-      for (const side of sides) {
-        if (!inside(c, side) ? rim === 'unknown' : height[c + side] >= z[s] - GAP_MM) continue;
-        const dx = side === 1 ? cell / 2 : side === -1 ? -cell / 2 : 0;
-        const dy = side === nx ? cell / 2 : side === -nx ? -cell / 2 : 0;
-        offer(c, s, centreX(grid, c) + dx, centreY(grid, c) + dy);
-      }
+      const opens = (inside: boolean, n: number) => (inside ? height[n] < z[s] - GAP_MM : rim === 'open');
+      if (opens(i + 1 < nx, c + 1)) offer(i, j, s, 2 * i + 1, 2 * j);
+      if (opens(i > 0, c - 1)) offer(i, j, s, 2 * i - 1, 2 * j);
+      if (opens(j + 1 < ny, c + nx)) offer(i, j, s, 2 * i, 2 * j + 1);
+      if (opens(j > 0, c - nx)) offer(i, j, s, 2 * i, 2 * j - 1);
     }
   }
-  while (queue.length > 0) {
-    const wave = queue;
-    queue = [];
-    for (const s of wave) {
-      const c = columnOf[s];
-      const floor = gapFloor(columns, c, s);
-      for (const side of sides) {
-        if (!inside(c, side)) continue;
-        const n = c + side;
+  for (let b = 0; b < buckets.length; b++) {
+    const bucket = buckets[b];
+    for (let at = 0; at < bucket.length; at += 2) {
+      const c = bucket[at];
+      const s = bucket[at + 1];
+      if (settled[s]) continue;
+      settled[s] = 1;
+      const i = c % nx;
+      const j = (c - i) / nx;
+      const floor = s === start[c] ? 0 : z[s - 1];
+      for (let side = 0; side < 4; side++) {
+        const ni = side === 0 ? i + 1 : side === 1 ? i - 1 : i;
+        const nj = side === 2 ? j + 1 : side === 3 ? j - 1 : j;
+        if (ni < 0 || nj < 0 || ni >= nx || nj >= ny) continue;
+        const n = nj * nx + ni;
         for (let k = 0, r = start[n]; k < count[n]; k++, r += 2) {
-          const low = Math.max(floor, gapFloor(columns, n, r));
-          if (Math.min(z[s], z[r]) - low > GAP_MM) offer(n, r, lipX[s], lipY[s]);
+          if (settled[r]) continue;
+          const below = k === 0 ? 0 : z[r - 1];
+          const low = floor > below ? floor : below;
+          if ((z[s] < z[r] ? z[s] : z[r]) - low > GAP_MM) offer(ni, nj, r, lipX[s], lipY[s]);
         }
       }
     }
+    buckets[b] = [];
   }
   return depth;
 }

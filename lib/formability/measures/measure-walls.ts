@@ -6,9 +6,9 @@ import type { Mesh } from '../mesh/mesh';
 import type { WallsReport } from '../report';
 import type { Visibility } from './visibility';
 
-const MOST_SAMPLES = 4000;
+const MOST_SAMPLES = 2000;
 /** Solid deeper than this is not a wall. */
-const DEEPEST_MM = 60;
+const DEEPEST_MM = 20;
 /** A cavity smaller than this share of the part leaves it solid. */
 const HOLLOW_SHARE = 0.005;
 /** Share of the thinnest samples left out: rays that graze a convex edge leave at once. */
@@ -27,7 +27,8 @@ export function measureWalls(
   bore: Uint8Array,
 ): WallsReport {
   const hollow = air.enclosedVolume > HOLLOW_SHARE * (columns.solidVolume + air.enclosedVolume);
-  const step = Math.max(1, Math.floor(mesh.triangles / MOST_SAMPLES));
+  // Odd, so that it does not keep step with the two halves of quadrilaterals.
+  const step = Math.max(1, Math.floor(mesh.triangles / MOST_SAMPLES)) | 1;
   const walls: number[] = [];
   const tops: number[] = [];
   for (let t = 0; t < mesh.triangles; t += step) {
@@ -50,18 +51,23 @@ function thinnest(values: number[]): number | null {
 function solidBehind(mesh: Mesh, t: number, columns: Columns, air: Air): number | null {
   const { index, position: p } = mesh;
   const [a, b, d] = [index[3 * t] * 3, index[3 * t + 1] * 3, index[3 * t + 2] * 3];
-  const u = [p[b] - p[a], p[b + 1] - p[a + 1], p[b + 2] - p[a + 2]];
-  const v = [p[d] - p[a], p[d + 1] - p[a + 1], p[d + 2] - p[a + 2]];
-  const n = [u[1] * v[2] - u[2] * v[1], u[2] * v[0] - u[0] * v[2], u[0] * v[1] - u[1] * v[0]];
-  const length = Math.hypot(n[0], n[1], n[2]);
+  const [ux, uy, uz] = [p[b] - p[a], p[b + 1] - p[a + 1], p[b + 2] - p[a + 2]];
+  const [vx, vy, vz] = [p[d] - p[a], p[d + 1] - p[a + 1], p[d + 2] - p[a + 2]];
+  const [nx, ny, nz] = [uy * vz - uz * vy, uz * vx - ux * vz, ux * vy - uy * vx];
   const step = columns.grid.cell / 2;
-  const mid = [0, 1, 2].map((k) => (p[a + k] + p[b + k] + p[d + k]) / 3);
-  for (let far = 2 * step; far < DEEPEST_MM; far += step) {
-    const [x, y, z] = mid.map((m, k) => m - (n[k] / length) * far);
-    if (z < 0) return null;
-    const state = stateAt(columns, air, x, y, z);
-    if (state === ENCLOSED || state === CONNECTED) return far - step / 2;
-    if (state < 0) return far > 3 * step ? far - step / 2 : null;
+  const scale = step / Math.hypot(nx, ny, nz);
+  const [sx, sy, sz] = [nx * scale, ny * scale, nz * scale];
+  const [x, y, z] = [
+    (p[a] + p[b] + p[d]) / 3,
+    (p[a + 1] + p[b + 1] + p[d + 1]) / 3,
+    (p[a + 2] + p[b + 2] + p[d + 2]) / 3,
+  ];
+  const steps = Math.ceil(DEEPEST_MM / step);
+  for (let k = 2; k < steps; k++) {
+    if (z - k * sz < 0) return null;
+    const state = stateAt(columns, air, x - k * sx, y - k * sy, z - k * sz);
+    if (state === ENCLOSED || state === CONNECTED) return (k - 0.5) * step;
+    if (state < 0) return k > 3 ? (k - 0.5) * step : null;
   }
   return null;
 }

@@ -1,0 +1,102 @@
+import { readFileSync, statSync } from 'node:fs';
+import { analyse } from './analyse';
+import { MAX_FILE_BYTES } from './parse/read-mesh';
+import type { RecipeInput } from './recipe';
+import type { Report } from './report';
+import { summarise } from './summarise';
+import { UnusableInput } from './unusable-input';
+
+const USAGE =
+  'npm run --silent formability -- <mesh.stl> [--recipe recipe.json] [--sheet] [--json] [--geometry-only]';
+const FLAGS = ['--json', '--sheet', '--geometry-only'];
+
+interface Arguments {
+  mesh: string;
+  recipe: string | null;
+  json: boolean;
+  geometryOnly: boolean;
+}
+
+/** A wrong command line: told like unusable input, with the right one. */
+class WrongUse extends Error {}
+
+function readArguments(argv: string[]): Arguments {
+  const files: string[] = [];
+  const flags = new Set<string>();
+  let recipe: string | null = null;
+  for (let i = 0; i < argv.length; i++) {
+    if (argv[i] === '--recipe') {
+      recipe = argv[++i] ?? null;
+      if (recipe === null) throw new WrongUse('--recipe needs a file');
+    } else if (FLAGS.includes(argv[i])) flags.add(argv[i]);
+    else if (argv[i].startsWith('--')) throw new WrongUse(`there is no option ${argv[i]}`);
+    else files.push(argv[i]);
+  }
+  if (files.length !== 1)
+    throw new WrongUse(files.length === 0 ? 'no mesh was named' : 'more than one mesh was named');
+  return { mesh: files[0], recipe, json: flags.has('--json'), geometryOnly: flags.has('--geometry-only') };
+}
+
+function readBytes(path: string): Uint8Array {
+  const size = statSync(path).size;
+  if (size > MAX_FILE_BYTES) {
+    throw new UnusableInput('too_large_file', `${path} has ${size} bytes, more than the ${MAX_FILE_BYTES} that are read; export it with a coarser tolerance`); // prettier-ignore
+  }
+  return readFileSync(path);
+}
+
+function readRecipe(path: string | null): RecipeInput {
+  if (path === null) return {};
+  try {
+    return JSON.parse(readFileSync(path, 'utf8')) as RecipeInput;
+  } catch (error) {
+    const why = error instanceof Error ? error.message : String(error);
+    throw new UnusableInput('invalid_recipe', `${path} cannot be read as JSON (${why}); correct the file`);
+  }
+}
+
+/** Without the physics that only a full run has: the contract's --geometry-only. */
+function geometryOnly(report: Report): Partial<Report> {
+  const { schema, engine, input, recipe, mesh, draft, plan, undercut, airTraps, vents, spacing, walls, edges, layers, timings } = report; // prettier-ignore
+  return { schema, engine, input, recipe, mesh, draft, plan, undercut, airTraps, vents, spacing, walls, edges, layers, timings }; // prettier-ignore
+}
+
+function showProgress(stage: string, fraction: number): void {
+  const percent = String(Math.round(fraction * 100)).padStart(3);
+  process.stderr.write(`\r\u001b[K${stage === 'done' ? '' : `${percent} % ${stage}`}`);
+}
+
+function fail(code: string, message: string, reasons: string[], json: boolean): void {
+  const line = message.replace(/\s+/g, ' ');
+  if (process.stderr.isTTY) process.stderr.write('\r\u001b[K');
+  process.stderr.write(`error: ${code}: ${line}\n`);
+  if (json) process.stdout.write(`${JSON.stringify({ error: { code, message: line, reasons } })}\n`);
+  process.exitCode = 2;
+}
+
+/** The command line: exit 0 when a report was made, whatever it says; 2 when the input cannot be used. */
+export function main(argv: string[]): void {
+  const json = argv.includes('--json');
+  try {
+    const args = readArguments(argv);
+    const bytes = readBytes(args.mesh);
+    const { report } = analyse(bytes, readRecipe(args.recipe), {
+      now: () => performance.now(),
+      onProgress: process.stderr.isTTY ? showProgress : undefined,
+    });
+    const shown = args.geometryOnly ? geometryOnly(report) : report;
+    process.stdout.write(
+      args.json ? `${JSON.stringify(shown)}\n` : summarise(report, args.mesh, args.geometryOnly),
+    );
+  } catch (error) {
+    if (error instanceof UnusableInput) fail(error.code, error.message, error.reasons, json);
+    else if (error instanceof WrongUse) fail('usage', `${error.message}; use: ${USAGE}`, [], json);
+    else if (error instanceof Error && 'code' in error)
+      fail('unreadable', `${error.message}; check the path`, [], json); // prettier-ignore
+    else if (error instanceof RangeError)
+      fail('too_large_file', `the mesh needs more memory than there is (${error.message}); export it with a coarser tolerance`, [], json); // prettier-ignore
+    else throw error;
+  }
+}
+
+main(process.argv.slice(2));
