@@ -17,7 +17,6 @@ export async function runLocal(args: string[], printer: StepPrinter): Promise<nu
     args,
     options: { dev: { type: 'boolean' }, reset: { type: 'boolean' }, yes: { type: 'boolean' } },
   });
-  const from = performance.now();
   const started: Service[] = [];
   let lock: DataLock | undefined;
   let starting: Promise<Product> | undefined;
@@ -51,7 +50,7 @@ export async function runLocal(args: string[], printer: StepPrinter): Promise<nu
     const asked = ending.requested.then((code) => Promise.reject(new Ended(code)));
     const product = await Promise.race([starting, asked]);
     lock.noteAddress(product.baseUrl);
-    const seconds = Math.round((performance.now() - from) / 1000);
+    const seconds = Math.round(process.uptime());
     printer.note(`Up after ${seconds} s; Ctrl-C stops everything. Logs are in ${dataFolder}/logs.`);
     printer.note(signInLine(product));
     return await ending.requested;

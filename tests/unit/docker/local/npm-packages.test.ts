@@ -1,4 +1,5 @@
-import { mkdirSync, writeFileSync } from 'node:fs';
+import { createHash } from 'node:crypto';
+import { mkdirSync, readFileSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
 import { describe, expect, it } from 'vitest';
 import { packagesAreCurrent } from '@/docker/local/setup/npm-packages.mjs';
@@ -31,6 +32,16 @@ describe('packagesAreCurrent', () => {
   it('does not wait for optional packages of other systems', () => {
     const wanted = { ...zod('4.0.0'), 'node_modules/only-elsewhere': { version: '1.0.0', optional: true } };
     expect(packagesAreCurrent(checkout(wanted, zod('4.0.0')))).toBe(true);
+  });
+
+  it('holds after an install from exactly this lock file, whatever npm left out, and not for another', () => {
+    const folder = checkout(zod('4.0.0'), {});
+    const lock = readFileSync(path.join(folder, 'package-lock.json'));
+    const stamp = path.join(folder, 'node_modules/.installed-from');
+    writeFileSync(stamp, createHash('sha256').update(lock).digest('hex'));
+    expect(packagesAreCurrent(folder)).toBe(true);
+    writeFileSync(path.join(folder, 'package-lock.json'), JSON.stringify({ packages: zod('4.0.1') }));
+    expect(packagesAreCurrent(folder)).toBe(false);
   });
 
   it('holds for this checkout, in which the tests run', () => {
