@@ -32,7 +32,8 @@ export async function buildStageModel(
   await MeshoptEncoder.ready;
   const area = measureDraftArea(geometry);
   const mesh = splitVertices(geometry);
-  if (mesh.vertices === 0) throw new RangeError('The mesh has no facet with an area; there is nothing to show.');
+  if (mesh.vertices === 0)
+    throw new RangeError('The mesh has no facet with an area; there is nothing to show.');
   const { index, boundMm, errorMm } = await simplifyStageMesh(mesh, triangleTarget);
   const lines = findCreaseEdges(mesh, index);
   const [remap, vertices] = MeshoptEncoder.reorderMesh(index, true, true);
@@ -79,7 +80,10 @@ async function writeGlb(
   for (const [name, value] of Object.entries(attributes)) surface.setAttribute(name, value);
   const shape = doc.createMesh('template').addPrimitive(surface);
   if (lineIndex.length > 0) {
-    const ink = doc.createPrimitive().setMode(1).setIndices(accessor('SCALAR', narrow(lineIndex, vertices)));
+    const ink = doc
+      .createPrimitive()
+      .setMode(1)
+      .setIndices(accessor('SCALAR', narrow(lineIndex, vertices)));
     shape.addPrimitive(ink.setAttribute('POSITION', attributes.POSITION));
   }
   shape.setExtras({
@@ -145,7 +149,9 @@ function assertUsable({ positions, facetDraftDeg, facetFlags }: StageGeometry): 
   }
   for (let i = 0; i < positions.length; i++) {
     if (!Number.isFinite(positions[i])) {
-      throw new RangeError(`Triangle ${Math.floor(i / 9)} has a coordinate that is not a number; parse the mesh again.`);
+      throw new RangeError(
+        `Triangle ${Math.floor(i / 9)} has a coordinate that is not a number; parse the mesh again.`,
+      );
     }
   }
 }

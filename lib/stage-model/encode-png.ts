@@ -5,14 +5,21 @@ const SIGNATURE = [0x89, 0x50, 0x4e, 0x47, 0x0d, 0x0a, 0x1a, 0x0a];
 /** 8-bit RGB (three bytes a pixel, rows from the top) as PNG; source: W3C PNG specification, third edition. */
 export function encodePng(rgb: Uint8Array, width: number, height: number): Uint8Array {
   if (rgb.length !== width * height * 3) {
-    throw new RangeError(`A ${width} x ${height} picture needs ${width * height * 3} bytes, ${rgb.length} were given.`);
+    throw new RangeError(
+      `A ${width} x ${height} picture needs ${width * height * 3} bytes, ${rgb.length} were given.`,
+    );
   }
   const header = Buffer.alloc(13);
   header.writeUInt32BE(width, 0);
   header.writeUInt32BE(height, 4);
   header.set([8, 2, 0, 0, 0], 8);
   const data = deflateSync(filterRows(rgb, width, height), { level: 9 });
-  return Buffer.concat([Buffer.from(SIGNATURE), chunk('IHDR', header), chunk('IDAT', data), chunk('IEND', Buffer.alloc(0))]);
+  return Buffer.concat([
+    Buffer.from(SIGNATURE),
+    chunk('IHDR', header),
+    chunk('IDAT', data),
+    chunk('IEND', Buffer.alloc(0)),
+  ]);
 }
 
 function chunk(type: string, data: Buffer): Buffer {

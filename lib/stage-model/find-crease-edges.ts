@@ -1,8 +1,8 @@
 import { CREASE_DEG, type SplitMesh } from './split-vertices';
 
 const CREASE_COS = Math.cos((CREASE_DEG * Math.PI) / 180);
-/** A mesh that is rough all over would be inked black; beyond this share of its edges none is drawn. */
-const MOST_SHARE = 0.25;
+/** More lines than this are a texture, not a drawing: printed-like steps and scan noise would be inked black. */
+const MOST_LINES = 60_000;
 
 /** Pairs of vertices: the edges between facets that meet sharply, and open ones; drawn as ink lines. */
 export function findCreaseEdges(mesh: SplitMesh, index: Uint32Array): Uint32Array {
@@ -45,8 +45,8 @@ export function findCreaseEdges(mesh: SplitMesh, index: Uint32Array): Uint32Arra
     const c = firstCorner[e];
     pairs.push(index[c], index[c % 3 === 2 ? c - 2 : c + 1]);
   }
-  const few = pairs.length / 2 <= Math.max(2000, found * MOST_SHARE);
-  return few ? Uint32Array.from(pairs) : new Uint32Array(0);
+  const isDrawing = mesh.draftSplitDeg < 180 && pairs.length / 2 <= MOST_LINES;
+  return isDrawing ? Uint32Array.from(pairs) : new Uint32Array(0);
 }
 
 function endPlaces(mesh: SplitMesh, index: Uint32Array, c: number): [number, number] {
@@ -56,7 +56,9 @@ function endPlaces(mesh: SplitMesh, index: Uint32Array, c: number): [number, num
 function smooth(normals: Float32Array, corner: number, other: number): boolean {
   const a = ((corner / 3) | 0) * 3;
   const b = ((other / 3) | 0) * 3;
-  return normals[a] * normals[b] + normals[a + 1] * normals[b + 1] + normals[a + 2] * normals[b + 2] >= CREASE_COS;
+  return (
+    normals[a] * normals[b] + normals[a + 1] * normals[b + 1] + normals[a + 2] * normals[b + 2] >= CREASE_COS
+  );
 }
 
 function unitNormals({ grid, place }: SplitMesh, index: Uint32Array): Float32Array {

@@ -1,3 +1,4 @@
+import { FLAT_FROM_DEG } from './draft-scale';
 import type { Section, SectionPoint, SectionSegment } from './section';
 
 /** A straight run of the outline. */
@@ -12,8 +13,6 @@ export interface SectionWall {
 
 const SAME_DIRECTION_DEG = 1;
 const SAME_DRAFT_DEG = 1;
-/** Drafts from here up are floors and tops, not walls. */
-const FLAT_FROM_DEG = 60;
 const BED_MM = 1e-3;
 
 /** The outlines as straight runs: neighbouring segments in one direction and of one draft are one wall. */
@@ -34,7 +33,9 @@ export function findSectionWalls(section: Section): SectionWall[] {
 function continues(run: SectionSegment[], next: SectionSegment): boolean {
   const a = direction(run[0].from, run[run.length - 1].to);
   const turn = Math.abs(((direction(next.from, next.to) - a + 540) % 360) - 180);
-  return turn <= SAME_DIRECTION_DEG && Math.abs(run[run.length - 1].draftDeg - next.draftDeg) <= SAME_DRAFT_DEG;
+  return (
+    turn <= SAME_DIRECTION_DEG && Math.abs(run[run.length - 1].draftDeg - next.draftDeg) <= SAME_DRAFT_DEG
+  );
 }
 
 function direction(from: SectionPoint, to: SectionPoint): number {
@@ -52,7 +53,13 @@ function toWall(run: SectionSegment[]): SectionWall {
     draft += draftDeg * l;
   }
   const draftDeg = length > 0 ? draft / length : run[0].draftDeg;
-  return { from, to, lengthMm: Math.hypot(to[0] - from[0], to[1] - from[1]), draftDeg, kind: kindOf(from, to, draftDeg) };
+  return {
+    from,
+    to,
+    lengthMm: Math.hypot(to[0] - from[0], to[1] - from[1]),
+    draftDeg,
+    kind: kindOf(from, to, draftDeg),
+  };
 }
 
 function kindOf(from: SectionPoint, to: SectionPoint, draftDeg: number): SectionWall['kind'] {

@@ -92,9 +92,15 @@ class TriangleGrid {
     const [a, b, c] = [this.corner[t] * 3, this.corner[t + 1] * 3, this.corner[t + 2] * 3];
     return Math.sqrt(
       pointTriangle2(
-        x - p[a], y - p[a + 1], z - p[a + 2],
-        p[b] - p[a], p[b + 1] - p[a + 1], p[b + 2] - p[a + 2],
-        p[c] - p[a], p[c + 1] - p[a + 1], p[c + 2] - p[a + 2],
+        x - p[a],
+        y - p[a + 1],
+        z - p[a + 2],
+        p[b] - p[a],
+        p[b + 1] - p[a + 1],
+        p[b + 2] - p[a + 2],
+        p[c] - p[a],
+        p[c + 1] - p[a + 1],
+        p[c + 2] - p[a + 2],
       ),
     );
   }
@@ -102,9 +108,15 @@ class TriangleGrid {
 
 /** Squared distance of a point to a triangle, all relative to its first corner: inside by barycentrics, else the edges. */
 function pointTriangle2(
-  px: number, py: number, pz: number,
-  ux: number, uy: number, uz: number,
-  vx: number, vy: number, vz: number,
+  px: number,
+  py: number,
+  pz: number,
+  ux: number,
+  uy: number,
+  uz: number,
+  vx: number,
+  vy: number,
+  vz: number,
 ): number {
   const uu = ux * ux + uy * uy + uz * uz;
   const vv = vx * vx + vy * vy + vz * vz;
@@ -115,7 +127,8 @@ function pointTriangle2(
   if (det > 0) {
     const s = (vv * pu - uv * pv) / det;
     const t = (uu * pv - uv * pu) / det;
-    if (s >= 0 && t >= 0 && s + t <= 1) return length2(px - s * ux - t * vx, py - s * uy - t * vy, pz - s * uz - t * vz);
+    if (s >= 0 && t >= 0 && s + t <= 1)
+      return length2(px - s * ux - t * vx, py - s * uy - t * vy, pz - s * uz - t * vz);
   }
   return Math.min(
     pointEdge2(px, py, pz, ux, uy, uz),

@@ -38,7 +38,13 @@ export function viewAxes({ azimuthDeg, elevationDeg }: ParallelView): ViewAxes {
 }
 
 /** Depth-buffered facets of a triangle soup (nine numbers each, mm), fitted into the raster with a margin in pixels. */
-export function rasterise(positions: Float32Array, view: ParallelView, width: number, height: number, margin: number): Raster {
+export function rasterise(
+  positions: Float32Array,
+  view: ParallelView,
+  width: number,
+  height: number,
+  margin: number,
+): Raster {
   const { right, up, toEye } = viewAxes(view);
   const count = positions.length / 3;
   const sx = new Float32Array(count);

@@ -1,14 +1,14 @@
 import { cividis, type Rgb } from './cividis';
-import { draftScaleAt, draftScaleMaxDeg } from './draft-scale';
+import { draftScaleAt, draftScaleMaxDeg, FLAT_FROM_DEG } from './draft-scale';
 import { encodePng } from './encode-png';
 import { CLAY_DARK, CLAY_LIGHT, INK, MADDER, mix, PAPER } from './picture-palette';
 import { ISOMETRIC, rasterise, viewAxes, type ParallelView, type Raster } from './rasterise';
-import { FLAG_UNDERCUT, type StageGeometry } from './stage-model-meta';
+import { FLAG_BED, FLAG_UNDERCUT, type StageGeometry } from './stage-model-meta';
 
 export interface PictureOptions {
   widthPx?: number;
   heightPx?: number;
-  /** plain clay, or the colours of the draft map */
+  /** plain clay, or walls in the colours of the draft map */
   map?: 'plain' | 'draft';
   /** drafts below this are hatched on the draft map */
   limitDeg?: number;
@@ -34,7 +34,8 @@ export function renderPicture(geometry: StageGeometry, options: PictureOptions =
     view: ISOMETRIC,
     ...options,
   };
-  if (geometry.positions.length === 0) throw new RangeError('The mesh has no triangle; there is nothing to picture.');
+  if (geometry.positions.length === 0)
+    throw new RangeError('The mesh has no triangle; there is nothing to picture.');
   const margin = Math.round(Math.min(widthPx, heightPx) * 0.05) * SAMPLES;
   const raster = rasterise(geometry.positions, view, widthPx * SAMPLES, heightPx * SAMPLES, margin);
   const normals = seenNormals(geometry.positions, raster);
@@ -45,8 +46,9 @@ export function renderPicture(geometry: StageGeometry, options: PictureOptions =
     const y = Math.floor(at / raster.width);
     const stripe = hatched(x, y, heightPx);
     if (undercut && stripe) return MADDER;
-    if (map === 'plain') return clay(normal, view);
     const draft = geometry.facetDraftDeg[facet];
+    const isWall = draft < FLAT_FROM_DEG && (geometry.facetFlags[facet] & FLAG_BED) === 0;
+    if (map === 'plain' || !isWall) return clay(normal, view);
     const colour = cividis(draftScaleAt(draft, draftScaleMaxDeg(limitDeg)));
     return draft < limitDeg && stripe ? mix(colour, PAPER, 0.75) : colour;
   };
@@ -102,7 +104,8 @@ function inkLines(raster: Raster, normals: Float32Array): Uint8Array {
     ink[on] = Math.max(ink[on], strength);
     // Two samples, one pixel, wide: creases lie on both faces, outlines wholly on the body.
     const second = strength === CREASE ? a + b - on : on === a ? a - (b - a) : b + (b - a);
-    if (second >= 0 && second < ink.length && facet[second] >= 0) ink[second] = Math.max(ink[second], strength);
+    if (second >= 0 && second < ink.length && facet[second] >= 0)
+      ink[second] = Math.max(ink[second], strength);
   };
   for (let y = 0; y < height; y++) {
     for (let x = 0; x < width; x++) {

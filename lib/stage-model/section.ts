@@ -49,7 +49,10 @@ export function cutSection(mesh: SectionMesh, line: SectionLine): Section {
   return { line, loops, boundsMm };
 }
 
-function cutTriangles({ positions: p, index, draftDeg }: SectionMesh, { axis, atMm }: SectionLine): SectionSegment[] {
+function cutTriangles(
+  { positions: p, index, draftDeg }: SectionMesh,
+  { axis, atMm }: SectionLine,
+): SectionSegment[] {
   const across = axis === 'y' ? 1 : 0;
   const along = axis === 'y' ? 0 : 1;
   // Seen from the right, the plane's far side is -x; mirrored so that "beyond" is on the same hand for both axes.
@@ -78,7 +81,14 @@ function cutTriangles({ positions: p, index, draftDeg }: SectionMesh, { axis, at
 }
 
 /** The same two places give the same bits, whichever triangle asks: the ends are taken in a fixed order. */
-function crossing(p: Float32Array, i: number, j: number, across: number, along: number, at: number): SectionPoint {
+function crossing(
+  p: Float32Array,
+  i: number,
+  j: number,
+  across: number,
+  along: number,
+  at: number,
+): SectionPoint {
   let a = i * 3;
   let b = j * 3;
   const order = p[a] - p[b] || p[a + 1] - p[b + 1] || p[a + 2] - p[b + 2];

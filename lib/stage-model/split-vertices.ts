@@ -210,7 +210,8 @@ function clusterCorners(
       const g = groupOf[k - from];
       let v = first;
       for (; v < vertices; v++) {
-        const alike = rough || (flags[v] === kept.flags[f] && Math.abs(draft[v] - kept.draft[f]) <= tolerance);
+        const alike =
+          rough || (flags[v] === kept.flags[f] && Math.abs(draft[v] - kept.draft[f]) <= tolerance);
         if (place[v] === g && alike) break;
       }
       if (v === vertices) {

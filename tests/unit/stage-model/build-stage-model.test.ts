@@ -20,9 +20,14 @@ async function read(glb: Uint8Array) {
   const [scale, origin] = [node.getScale(), node.getTranslation()];
   const grid = surface.getAttribute('POSITION')!.getArray()!;
   return {
-    extensions: root.listExtensionsUsed().map((e) => e.extensionName).sort(),
-    extras: root.listMeshes()[0].getExtras() as { draft: { step: number; range: [number, number]; unit: string } },
-    positions: Float32Array.from(grid, (v, i) => v * scale[i % 3] + origin[i % 3]),
+    extensions: root
+      .listExtensionsUsed()
+      .map((e) => e.extensionName)
+      .sort(),
+    extras: root.listMeshes()[0].getExtras() as {
+      draft: { step: number; range: [number, number]; unit: string };
+    },
+    positions: Float32Array.from(grid as Uint16Array, (v, i) => v * scale[i % 3] + origin[i % 3]),
     normals: surface.getAttribute('NORMAL')!,
     draft: surface.getAttribute('_DRAFT')!.getArray()!,
     flags: surface.getAttribute('_FLAGS')!.getArray()!,
@@ -39,7 +44,9 @@ function facetByCentre({ positions }: StageGeometry, at: (corner: number) => Arr
   for (let f = 0; f < positions.length / 9; f++) {
     let d = 0;
     for (let a = 0; a < 3; a++) {
-      d += Math.abs((positions[f * 9 + a] + positions[f * 9 + 3 + a] + positions[f * 9 + 6 + a]) / 3 - centre[a]);
+      d += Math.abs(
+        (positions[f * 9 + a] + positions[f * 9 + 3 + a] + positions[f * 9 + 6 + a]) / 3 - centre[a],
+      );
     }
     if (d < least) [least, best] = [d, f];
   }
@@ -72,10 +79,14 @@ describe('buildStageModel', () => {
     expect(extras.draft).toMatchObject({ unit: 'deg', step: DRAFT_STEP_DEG, range: meta.draftRangeDeg });
     let undercut = 0;
     for (let t = 0; t < index.length; t += 3) {
-      const facet = facetByCentre(geometry, (k) => positions.subarray(index[t + k] * 3, index[t + k] * 3 + 3));
+      const facet = facetByCentre(geometry, (k) =>
+        positions.subarray(index[t + k] * 3, index[t + k] * 3 + 3),
+      );
       for (let k = 0; k < 3; k++) {
         const shown = draft[index[t + k]] * DRAFT_STEP_DEG;
-        expect(Math.abs(shown - geometry.facetDraftDeg[facet])).toBeLessThanOrEqual(meta.draftSplitDeg + DRAFT_STEP_DEG);
+        expect(Math.abs(shown - geometry.facetDraftDeg[facet])).toBeLessThanOrEqual(
+          meta.draftSplitDeg + DRAFT_STEP_DEG,
+        );
         expect(flags[index[t + k]]).toBe(geometry.facetFlags[facet]);
       }
       if (flags[index[t]] & 2) undercut++;
@@ -86,7 +97,9 @@ describe('buildStageModel', () => {
   it('keeps the draft of plane walls exact and never mixes it across an edge', async () => {
     const { glb } = await buildStageModel(geometryOf(frustum(60, 30, 5)));
     const { draft } = await read(glb);
-    expect([...new Set(Array.from(draft, (v) => v * DRAFT_STEP_DEG))].sort((a, b) => a - b)).toEqual([-90, 5, 90]);
+    expect(
+      [...new Set(Array.from(draft as Int16Array, (v) => v * DRAFT_STEP_DEG))].sort((a, b) => a - b),
+    ).toEqual([-90, 5, 90]);
   });
 
   it('draws the twelve edges of a frustum and no other in ink', async () => {
@@ -148,7 +161,7 @@ describe('buildStageModel', () => {
     // Two roundings of each of three axes.
     expect(meta.simplificationErrorMm).toBeLessThanOrEqual(2 * Math.sqrt(3) * meta.quantumMm);
     const { draft } = await read(glb);
-    const drafts = [...new Set(Array.from(draft, (v) => v * DRAFT_STEP_DEG))];
+    const drafts = [...new Set(Array.from(draft as Int16Array, (v) => v * DRAFT_STEP_DEG))];
     for (const shown of drafts) {
       expect(Math.min(...[-90, 5, 90].map((d) => Math.abs(d - shown)))).toBeLessThanOrEqual(DRAFT_STEP_DEG);
     }
@@ -184,10 +197,19 @@ describe('buildStageModel', () => {
   it.each([
     ['no triangle', new Float32Array(0), 0, /no triangle/],
     ['only a point', new Float32Array(9).fill(3), 1, /no facet with an area/],
-    ['a coordinate that is not a number', Float32Array.of(0, 0, 0, 1, 0, 0, NaN, 1, 0), 1, /Triangle 0 .* not a number/],
+    [
+      'a coordinate that is not a number',
+      Float32Array.of(0, 0, 0, 1, 0, 0, NaN, 1, 0),
+      1,
+      /Triangle 0 .* not a number/,
+    ],
     ['arrays that disagree', new Float32Array(18), 1, /does not agree/],
   ])('refuses %s', async (_, positions, facets, message) => {
-    const geometry = { positions, facetDraftDeg: new Float32Array(facets), facetFlags: new Uint8Array(facets) };
+    const geometry = {
+      positions,
+      facetDraftDeg: new Float32Array(facets),
+      facetFlags: new Uint8Array(facets),
+    };
     await expect(buildStageModel(geometry)).rejects.toThrow(message);
   });
 });

@@ -31,7 +31,15 @@ const VISION: Record<string, number[][]> = {
 /** CIELAB (D65) of an sRGB colour as the given vision sees it; IEC 61966-2-1 and CIE 15. */
 function lab(rgb: Rgb, vision: number[][]): [number, number, number] {
   const linear = rgb.map((v) => (v / 255 <= 0.04045 ? v / 255 / 12.92 : ((v / 255 + 0.055) / 1.055) ** 2.4));
-  const [r, g, b] = vision.map((row) => Math.min(1, Math.max(0, row.reduce((s, m, i) => s + m * linear[i], 0))));
+  const [r, g, b] = vision.map((row) =>
+    Math.min(
+      1,
+      Math.max(
+        0,
+        row.reduce((s, m, i) => s + m * linear[i], 0),
+      ),
+    ),
+  );
   const xyz = [
     (0.4124 * r + 0.3576 * g + 0.1805 * b) / 0.95047,
     0.2126 * r + 0.7152 * g + 0.0722 * b,

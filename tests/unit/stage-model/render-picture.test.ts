@@ -13,9 +13,10 @@ function decode(png: Uint8Array) {
   expect(bytes.subarray(1, 4).toString('latin1')).toBe('PNG');
   const [width, height] = [bytes.readUInt32BE(16), bytes.readUInt32BE(20)];
   const data: Buffer[] = [];
-  for (let at = 8; at < bytes.length; ) {
+  for (let at = 8; at < bytes.length;) {
     const length = bytes.readUInt32BE(at);
-    if (bytes.toString('latin1', at + 4, at + 8) === 'IDAT') data.push(bytes.subarray(at + 8, at + 8 + length));
+    if (bytes.toString('latin1', at + 4, at + 8) === 'IDAT')
+      data.push(bytes.subarray(at + 8, at + 8 + length));
     at += length + 12;
   }
   const raw = inflateSync(Buffer.concat(data));
@@ -24,7 +25,8 @@ function decode(png: Uint8Array) {
   for (let y = 0; y < height; y++) {
     const filter = raw[y * (stride + 1)];
     for (let x = 0; x < stride; x++) {
-      const before = filter === 1 ? (x >= 3 ? rgb[y * stride + x - 3] : 0) : y > 0 ? rgb[(y - 1) * stride + x] : 0;
+      const before =
+        filter === 1 ? (x >= 3 ? rgb[y * stride + x - 3] : 0) : y > 0 ? rgb[(y - 1) * stride + x] : 0;
       rgb[y * stride + x] = raw[y * (stride + 1) + 1 + x] + before;
     }
   }
@@ -40,15 +42,22 @@ describe('renderPicture', () => {
   it('stands the template in the middle of the paper', () => {
     const picture = decode(renderPicture(good));
     expect([picture.width, picture.height]).toEqual([1200, 800]);
-    for (const [x, y] of [[0, 0], [1199, 0], [0, 799], [1199, 799], [600, 10], [30, 400]] as const) {
+    for (const [x, y] of [
+      [0, 0],
+      [1199, 0],
+      [0, 799],
+      [1199, 799],
+      [600, 10],
+      [30, 400],
+    ] as const) {
       expect(picture.at(x, y)).toEqual(PAPER);
     }
     expect(picture.at(600, 400)).not.toEqual(PAPER);
   });
 
-  it('colours each face by its draft: the top at the end of the scale, a wall at its own place', () => {
+  it('colours each wall by its draft and leaves the top plain', () => {
     const picture = decode(renderPicture(good, { map: 'draft', limitDeg: 5 }));
-    expect(picture.at(600, 250)).toEqual(round(cividis(1)));
+    expect(picture.at(600, 250)).toEqual(decode(renderPicture(good)).at(600, 250));
     const wall = round(cividis(8 / 15));
     expect(picture.at(450, 550)).toEqual(wall);
     expect(picture.at(750, 550)).toEqual(wall);
@@ -56,10 +65,13 @@ describe('renderPicture', () => {
 
   it('hatches walls below the limit and only those', () => {
     const shares = [4.9, 5.1].map((draft) => {
-      const picture = decode(renderPicture(geometryOf(frustum(60, 30, draft)), { map: 'draft', limitDeg: 5 }));
+      const picture = decode(
+        renderPicture(geometryOf(frustum(60, 30, draft)), { map: 'draft', limitDeg: 5 }),
+      );
       const wall = round(cividis(draft / 15)).join();
       let plain = 0;
-      for (let x = 430; x < 470; x++) for (let y = 530; y < 570; y++) if (picture.at(x, y).join() === wall) plain++;
+      for (let x = 430; x < 470; x++)
+        for (let y = 530; y < 570; y++) if (picture.at(x, y).join() === wall) plain++;
       return plain / 1600;
     });
     expect(shares[0]).toBeGreaterThan(0.3);
@@ -68,11 +80,14 @@ describe('renderPicture', () => {
   });
 
   it('strikes undercut faces through in madder, on the plain map too', () => {
-    const picture = decode(renderPicture(geometryOf(frustum(50, 30, -10)), { view: { azimuthDeg: 45, elevationDeg: 5 } }));
+    const picture = decode(
+      renderPicture(geometryOf(frustum(50, 30, -10)), { view: { azimuthDeg: 45, elevationDeg: 5 } }),
+    );
     const sound = decode(renderPicture(good, { view: { azimuthDeg: 45, elevationDeg: 5 } }));
     const count = ({ width, height, at }: typeof picture) => {
       let n = 0;
-      for (let y = 0; y < height; y += 2) for (let x = 0; x < width; x += 2) if (at(x, y).join() === MADDER.join()) n++;
+      for (let y = 0; y < height; y += 2)
+        for (let x = 0; x < width; x += 2) if (at(x, y).join() === MADDER.join()) n++;
       return n;
     };
     expect(count(picture)).toBeGreaterThan(1000);
@@ -95,10 +110,18 @@ describe('renderPicture', () => {
   });
 
   it('sees the bed side from below', () => {
-    const above = decode(renderPicture(good, { map: 'draft' }));
-    const below = decode(renderPicture(good, { map: 'draft', view: ISOMETRIC_UNDER }));
-    expect(below.at(600, 500)).not.toEqual(above.at(600, 500));
-    expect(below.at(600, 500)).not.toEqual(round(cividis(1)));
+    // From below the wide bed face fills the lower part; from above the smaller top fills the upper.
+    const [above, below] = [{}, { view: ISOMETRIC_UNDER }].map((o) => decode(renderPicture(good, o)));
+    const broad = ({ at }: typeof above, y: number) => {
+      const tone = at(600, y).join();
+      let n = 0;
+      for (let i = 0; i < 1200; i += 2) for (let j = 0; j < 800; j += 2) if (at(i, j).join() === tone) n++;
+      return n;
+    };
+    const ratio = broad(below, 550) / broad(above, 250);
+    const [top, bed] = [(60 - 60 * Math.tan((8 * Math.PI) / 180)) ** 2, 60 ** 2];
+    expect(ratio).toBeGreaterThan((bed / top) * 0.8);
+    expect(ratio).toBeLessThan((bed / top) * 1.25);
   });
 
   it('refuses an empty mesh in words', () => {

@@ -82,7 +82,9 @@ describe('cutSection of a box with a bore', () => {
 
   it('says where an open mesh does not close', () => {
     const holed = positions.slice(9);
-    const sections = [-10, -5, 0.5, 5, 10].map((atMm) => cutSection({ positions: holed }, { axis: 'y', atMm }));
+    const sections = [-10, -5, 0.5, 5, 10].map((atMm) =>
+      cutSection({ positions: holed }, { axis: 'y', atMm }),
+    );
     expect(sections.some((s) => s.loops.some((l) => !l.closed))).toBe(true);
   });
 });
@@ -94,7 +96,9 @@ describe('cutSection of many meshes', () => {
     const slices = 400;
     let sum = 0;
     for (let i = 0; i < slices; i++) {
-      sum += sectionArea(cutSection({ positions }, { axis: 'x', atMm: -25 + ((i + 0.5) * 50) / slices })) * (50 / slices);
+      sum +=
+        sectionArea(cutSection({ positions }, { axis: 'x', atMm: -25 + ((i + 0.5) * 50) / slices })) *
+        (50 / slices);
     }
     expect(sum / volume(positions)).toBeCloseTo(1, 4);
   });
@@ -102,12 +106,16 @@ describe('cutSection of many meshes', () => {
   it('is closed at every place of a tray with vented cups, seed 7', () => {
     const positions = tray({ segments: 24 });
     fc.assert(
-      fc.property(fc.constantFrom('x' as const, 'y' as const), fc.double({ min: -61, max: 61, noNaN: true }), (axis, atMm) => {
-        const section = cutSection({ positions }, { axis, atMm });
-        expect(section.loops.length).toBeGreaterThan(0);
-        expect(section.loops.every((l) => l.closed)).toBe(true);
-        expect(sectionArea(section)).toBeGreaterThan(0);
-      }),
+      fc.property(
+        fc.constantFrom('x' as const, 'y' as const),
+        fc.double({ min: -61, max: 61, noNaN: true }),
+        (axis, atMm) => {
+          const section = cutSection({ positions }, { axis, atMm });
+          expect(section.loops.length).toBeGreaterThan(0);
+          expect(section.loops.every((l) => l.closed)).toBe(true);
+          expect(sectionArea(section)).toBeGreaterThan(0);
+        },
+      ),
       { seed: 7, numRuns: 200 },
     );
   });

@@ -107,7 +107,10 @@ export function hemisphere(r: number, rings: number): Float32Array {
   };
   const soup = new Soup();
   for (let k = 0; k + 1 < rings; k++) soup.band(ring(k), ring(k + 1));
-  return soup.cap(ring(rings - 1), [0, 0, r], true).cap(ring(0), [0, 0, 0], false).done();
+  return soup
+    .cap(ring(rings - 1), [0, 0, r], true)
+    .cap(ring(0), [0, 0, 0], false)
+    .done();
 }
 
 export interface TrayOptions {
@@ -125,7 +128,15 @@ export interface TrayOptions {
  * The top of the plinth is one square cell a cup, joined corner by corner to the cup's foot ring.
  */
 export function tray(options: Partial<TrayOptions> = {}): Float32Array {
-  const o = { columns: 3, rows: 2, segments: 96, drafts: [9, 9, 4, 9, 9, 6], flute: 0.8, ventMm: 1.2, ...options };
+  const o = {
+    columns: 3,
+    rows: 2,
+    segments: 96,
+    drafts: [9, 9, 4, 9, 9, 6],
+    flute: 0.8,
+    ventMm: 1.2,
+    ...options,
+  };
   const pitch = 60;
   const [plinth, height, foot] = [14, 26, 23];
   const soup = new Soup();
@@ -138,7 +149,10 @@ export function tray(options: Partial<TrayOptions> = {}): Float32Array {
       const draft = (o.drafts[(r * o.columns + c) % o.drafts.length] * Math.PI) / 180;
       const top = foot - height * Math.tan(draft);
       const bore = o.ventMm / 2;
-      const [footRing, topRing] = [circle(foot, plinth, n, x, y, o.flute), circle(top, plinth + height, n, x, y, o.flute)];
+      const [footRing, topRing] = [
+        circle(foot, plinth, n, x, y, o.flute),
+        circle(top, plinth + height, n, x, y, o.flute),
+      ];
       soup.band(footRing, topRing);
       const [boreTop, boreLow] = [circle(bore, plinth + height, n, x, y), circle(bore, 0, n, x, y)];
       soup.band(boreTop, boreLow);
@@ -190,7 +204,8 @@ export function subdivide(positions: Float32Array, times: number): Float32Array 
     const mid = [0, 0, 0, 0, 0, 0, 0, 0, 0];
     for (let t = 0, o = 0; t < from.length; t += 9) {
       for (let e = 0; e < 3; e++) {
-        for (let a = 0; a < 3; a++) mid[e * 3 + a] = (from[t + e * 3 + a] + from[t + ((e + 1) % 3) * 3 + a]) / 2;
+        for (let a = 0; a < 3; a++)
+          mid[e * 3 + a] = (from[t + e * 3 + a] + from[t + ((e + 1) % 3) * 3 + a]) / 2;
       }
       const v = (e: number) => [from[t + e * 3], from[t + e * 3 + 1], from[t + e * 3 + 2]];
       const m = (e: number) => mid.slice(e * 3, e * 3 + 3);
@@ -210,7 +225,8 @@ export function roughen(positions: Float32Array, amplitude: number, seed: number
   for (let i = 0; i < out.length; i += 3) {
     if (out[i + 2] <= 1e-4) continue;
     let h = seed;
-    for (let a = 0; a < 3; a++) h = Math.imul(h ^ Math.round(positions[i + a] * 1e4), 0x9e3779b1) ^ (h >>> 13);
+    for (let a = 0; a < 3; a++)
+      h = Math.imul(h ^ Math.round(positions[i + a] * 1e4), 0x9e3779b1) ^ (h >>> 13);
     for (let a = 0; a < 3; a++) {
       h = Math.imul(h ^ (h >>> 15), 0x85ebca6b);
       if (a === 2 || out[i + 2] > 0.5) out[i + a] += ((h >>> 8) / 0xffffff - 0.5) * 2 * amplitude;

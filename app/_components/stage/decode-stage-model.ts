@@ -1,0 +1,104 @@
+import { MeshoptDecoder } from 'meshoptimizer/decoder';
+import {
+  BufferAttribute,
+  BufferGeometry,
+  type InterleavedBufferAttribute,
+  type Matrix4,
+  type Object3D,
+} from 'three';
+import { GLTFLoader } from 'three/addons/loaders/GLTFLoader.js';
+import { MeshBVH, type SerializedBVH } from 'three-mesh-bvh';
+import { DRAFT_ATTRIBUTE, DRAFT_STEP_DEG, FLAGS_ATTRIBUTE } from '@/lib/stage-model/stage-model-meta';
+
+/** A stage model ready to draw, cut and pick; plain arrays, so that a worker can hand it over. */
+export interface StageModelData {
+  /** mm, three numbers a vertex */
+  positions: Float32Array;
+  normals: Float32Array;
+  draftDeg: Float32Array;
+  flags: Float32Array;
+  /** corners, in the order that the search tree wants them */
+  index: Uint32Array;
+  /** pairs of vertices: the ink lines */
+  lines: Uint32Array;
+  tree: SerializedBVH;
+}
+
+export async function fetchStageModel(url: string): Promise<StageModelData> {
+  const answer = await fetch(url, { credentials: 'same-origin' }).catch(() => null);
+  if (!answer) throw new Error('The model could not be fetched: the network is away. Try again.');
+  if (!answer.ok)
+    throw new Error(`The model could not be fetched: the store answered ${answer.status}. Reload the page.`);
+  return decodeStageModel(await answer.arrayBuffer());
+}
+
+/** Throws when the bytes are not a stage model. */
+export async function decodeStageModel(glb: ArrayBuffer): Promise<StageModelData> {
+  await MeshoptDecoder.ready.catch(() => undefined);
+  if (!MeshoptDecoder.supported)
+    throw new Error('This browser does not allow WebAssembly, which the model needs.');
+  const loader = new GLTFLoader();
+  loader.setMeshoptDecoder(MeshoptDecoder);
+  const { scene } = await loader.parseAsync(glb, '');
+  scene.updateMatrixWorld(true);
+  const found: { surface?: Drawn; ink?: Drawn } = {};
+  scene.traverse((object) => {
+    if ((object as { isLineSegments?: boolean }).isLineSegments) found.ink = object as Drawn;
+    else if ((object as { isMesh?: boolean }).isMesh) found.surface = object as Drawn;
+  });
+  const geometry = found.surface?.geometry;
+  const draft = geometry?.getAttribute(DRAFT_ATTRIBUTE.toLowerCase());
+  const flags = geometry?.getAttribute(FLAGS_ATTRIBUTE.toLowerCase());
+  if (!geometry?.index || !draft || !flags)
+    throw new Error('The file is not a stage model; run the check again.');
+  return withTree({
+    positions: moved(plain(geometry.getAttribute('position'), 3), found.surface!.matrixWorld),
+    normals: plain(geometry.getAttribute('normal'), 3),
+    draftDeg: plain(draft, 1).map((v) => v * DRAFT_STEP_DEG),
+    flags: plain(flags, 1),
+    index: Uint32Array.from(geometry.index.array),
+    lines: Uint32Array.from(found.ink?.geometry.index?.array ?? []),
+  });
+}
+
+export function transferables({
+  positions,
+  normals,
+  draftDeg,
+  flags,
+  index,
+  lines,
+  tree,
+}: StageModelData): ArrayBuffer[] {
+  const buffers = [positions, normals, draftDeg, flags, index, lines].map((a) => a.buffer as ArrayBuffer);
+  return [...new Set([...buffers, ...tree.roots])];
+}
+
+type Drawn = Object3D & { geometry: BufferGeometry };
+
+/** The tree puts the triangles in its own order; the model takes that order over. */
+function withTree(model: Omit<StageModelData, 'tree'>): StageModelData {
+  const geometry = new BufferGeometry();
+  geometry.setAttribute('position', new BufferAttribute(model.positions, 3));
+  geometry.setIndex(new BufferAttribute(model.index, 1));
+  const tree = MeshBVH.serialize(new MeshBVH(geometry, { targetLeafSize: 8 }), { cloneBuffers: false });
+  return { ...model, index: geometry.index!.array as Uint32Array, tree: { ...tree, index: null as never } };
+}
+
+/** Tightly packed floats of an attribute that may be quantised and strided. */
+function plain(attribute: BufferAttribute | InterleavedBufferAttribute, size: 1 | 3): Float32Array {
+  const out = new Float32Array(attribute.count * size);
+  for (let i = 0; i < attribute.count; i++) {
+    for (let c = 0; c < size; c++) out[i * size + c] = attribute.getComponent(i, c);
+  }
+  return out;
+}
+
+/** The node's scale and place turn grid counts into mm. */
+function moved(points: Float32Array, { elements: m }: Matrix4): Float32Array {
+  for (let i = 0; i < points.length; i += 3) {
+    const [x, y, z] = [points[i], points[i + 1], points[i + 2]];
+    for (let a = 0; a < 3; a++) points[i + a] = m[a] * x + m[4 + a] * y + m[8 + a] * z + m[12 + a];
+  }
+  return points;
+}

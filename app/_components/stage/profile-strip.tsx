@@ -1,0 +1,198 @@
+'use client';
+
+import clsx from 'clsx';
+import { useCallback, useEffect, useMemo, useState } from 'react';
+import { ToggleButton, ToggleButtonGroup } from 'react-aria-components';
+import { findSectionWalls, type SectionWall } from '@/lib/stage-model/find-section-walls';
+import { cutSection, type SectionLine } from '@/lib/stage-model/section';
+import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
+import { formatLength } from '../format-figure';
+import { NumberField } from '../number-field';
+import { usePreferences } from '../preferences-context';
+import type { StageModelData } from './decode-stage-model';
+import { mainWalls, scaleProfile } from './layout-profile';
+import { loadStageModel } from './load-stage-model';
+import { ProfileDrawing, type StripVent } from './profile-drawing';
+import type { Point } from './stage-props';
+import { WallTable } from './wall-table';
+
+export interface ProfileStripProps {
+  /** what is cut, for the drawing's accessible name */
+  title: string;
+  modelUrl: string;
+  meta: StageModelMeta;
+  sectionLine: SectionLine;
+  onSectionLineChange: (line: SectionLine) => void;
+  limitDeg: number;
+  vents?: readonly StripVent[];
+  /** a wall was chosen: its middle, mm, and its draft */
+  onWallSelect?: (at: Point, draftDeg: number) => void;
+  className?: string;
+}
+
+/** The section through the template along the cutting line, cut from the very model that the stage shows. */
+export function ProfileStrip(props: ProfileStripProps) {
+  const {
+    title,
+    modelUrl,
+    meta,
+    sectionLine,
+    onSectionLineChange,
+    limitDeg,
+    vents = [],
+    onWallSelect,
+  } = props;
+  const { units } = usePreferences();
+  const { model, problem } = useStageModel(modelUrl);
+  const [frame, widthPx] = useWidth();
+  const { axis, atMm } = sectionLine;
+  const section = useMemo(() => (model ? cutSection(model, { axis, atMm }) : null), [model, axis, atMm]);
+  const { min, max } = meta.boundsMm;
+  const high = max[2];
+  const walls = useMemo(() => (section ? mainWalls(findSectionWalls(section), high) : []), [section, high]);
+  const [chosen, setChosen] = useState<SectionWall | null>(null);
+  const active = chosen && walls.includes(chosen) ? chosen : null;
+
+  const [across, along] = axis === 'y' ? [1, 0] : [0, 1];
+  const limits: [number, number] = [min[across], max[across]];
+  const scale = widthPx > 0 ? scaleProfile({ from: min[along], to: max[along], high, widthPx }) : null;
+  const move = (at: number | null) => {
+    if (at !== null) onSectionLineChange({ axis, atMm: Math.min(limits[1], Math.max(limits[0], at)) });
+  };
+  const turnTo = (next: 'x' | 'y') => {
+    const other = next === 'y' ? 1 : 0;
+    onSectionLineChange({ axis: next, atMm: Math.round(((min[other] + max[other]) / 2) * 10) / 10 });
+  };
+  const choose = (wall: SectionWall) => {
+    setChosen(wall);
+    const [u, z] = [(wall.from[0] + wall.to[0]) / 2, (wall.from[1] + wall.to[1]) / 2];
+    onWallSelect?.(axis === 'y' ? [u, atMm, z] : [atMm, u, z], wall.draftDeg);
+  };
+  const side = axis === 'y' ? 'front' : 'right';
+  const broken = walls.filter((wall) => wall.draftDeg < limitDeg).length;
+  const open = section?.loops.some((loop) => !loop.closed) ?? false;
+
+  return (
+    <section aria-label="Section A–A" className={clsx('border border-rule bg-sheet', props.className)}>
+      <div className="flex flex-wrap items-center gap-x-4 gap-y-1 px-3 pt-2 sm:px-4">
+        <h3 className="text-sm font-semibold">Section A–A</h3>
+        <p className="text-xs text-slate max-sm:hidden">seen from the {side}</p>
+        <div className="flex grow flex-wrap items-center gap-x-3 gap-y-1 sm:justify-end">
+          <ToggleButtonGroup
+            aria-label="Cut at a fixed"
+            selectionMode="single"
+            disallowEmptySelection
+            selectedKeys={[axis]}
+            onSelectionChange={([next]) => next && next !== axis && turnTo(next as 'x' | 'y')}
+            className="flex font-mono text-sm"
+          >
+            {(['y', 'x'] as const).map((id) => (
+              <ToggleButton
+                key={id}
+                id={id}
+                aria-label={id === 'y' ? 'y: cut from left to right' : 'x: cut from front to back'}
+                className="min-w-8 border-b-2 border-transparent px-2 py-1 text-slate data-hovered:text-ink data-selected:border-ink data-selected:text-ink pointer-coarse:py-2.5"
+              >
+                {id}
+              </ToggleButton>
+            ))}
+          </ToggleButtonGroup>
+          <input
+            type="range"
+            aria-label={`Cutting line, ${axis} in mm`}
+            aria-valuetext={`${axis} = ${formatLength(atMm, units, 1)}`}
+            min={Math.ceil(limits[0] * 2) / 2}
+            max={Math.floor(limits[1] * 2) / 2}
+            step={0.5}
+            value={atMm}
+            onChange={(event) => move(Number(event.target.value))}
+            className="h-6 min-w-24 flex-1 accent-verdigris sm:max-w-44 pointer-coarse:h-11"
+          />
+          <NumberField
+            label={`Cutting line, ${axis}`}
+            hideLabel
+            unit="mm"
+            value={atMm}
+            min={Math.round(limits[0] * 10) / 10}
+            max={Math.round(limits[1] * 10) / 10}
+            step={0.5}
+            onChange={move}
+            className="w-28"
+          />
+        </div>
+      </div>
+      <div ref={frame} className={clsx('overflow-hidden pb-2', !section && 'min-h-64')}>
+        {problem ? <p className="p-4 text-sm text-madder">{problem}</p> : null}
+        {!problem && !section ? <p className="p-4 text-sm text-slate">The model is on its way.</p> : null}
+        {section && scale ? (
+          <ProfileDrawing
+            section={section}
+            walls={walls}
+            scale={scale}
+            widthPx={widthPx}
+            limitDeg={limitDeg}
+            units={units}
+            vents={vents}
+            active={active}
+            onWall={choose}
+            label={
+              section.boundsMm
+                ? `Section of ${title} at ${axis} = ${formatLength(atMm, units, 1)}, seen from the ${side}: ` +
+                  `${formatLength(section.boundsMm.to - section.boundsMm.from, units, 1)} wide, ` +
+                  `${formatLength(section.boundsMm.high, units, 1)} high, ${walls.length} main walls, ` +
+                  `${broken} below ${limitDeg}° of draft.`
+                : `The cutting line at ${axis} = ${formatLength(atMm, units, 1)} misses the template.`
+            }
+          />
+        ) : null}
+        {section && !section.boundsMm ? (
+          <p className="px-4 text-sm text-slate">The line misses the template.</p>
+        ) : null}
+      </div>
+      {open ? (
+        <p className="px-4 pb-2 text-xs text-ochre-ink">
+          The mesh is open along this cut; the outline ends where the mesh does.
+        </p>
+      ) : null}
+      {walls.length > 0 ? (
+        <WallTable
+          walls={walls}
+          axis={axis}
+          limitDeg={limitDeg}
+          units={units}
+          active={active}
+          onWall={choose}
+        />
+      ) : null}
+    </section>
+  );
+}
+
+function useStageModel(url: string): { model: StageModelData | null; problem: string | null } {
+  const [loaded, setLoaded] = useState<{ url: string; model?: StageModelData; problem?: string } | null>(
+    null,
+  );
+  useEffect(() => {
+    let current = true;
+    loadStageModel(url).then(
+      (model) => current && setLoaded({ url, model }),
+      (error: Error) => current && setLoaded({ url, problem: error.message }),
+    );
+    return () => {
+      current = false;
+    };
+  }, [url]);
+  const now = loaded?.url === url ? loaded : null;
+  return { model: now?.model ?? null, problem: now?.problem ?? null };
+}
+
+function useWidth(): [(element: HTMLDivElement | null) => (() => void) | undefined, number] {
+  const [width, setWidth] = useState(0);
+  const ref = useCallback((element: HTMLDivElement | null) => {
+    if (!element) return undefined;
+    const observer = new ResizeObserver(([entry]) => setWidth(Math.round(entry.contentRect.width)));
+    observer.observe(element);
+    return () => observer.disconnect();
+  }, []);
+  return [ref, width];
+}
