@@ -12,6 +12,8 @@ export function proxy(request: NextRequest): NextResponse {
   const headers = pageHeaders(nonce);
   const forwarded = new Headers(request.headers);
   forwarded.set('x-nonce', nonce);
+  // The way back after signing in; what a caller sent under this name is overwritten.
+  forwarded.set('x-firstpull-path', request.nextUrl.pathname + request.nextUrl.search);
   // The renderer reads the nonce from the request's policy and puts it on its own scripts.
   forwarded.set('content-security-policy', headers['content-security-policy']);
   const answer = NextResponse.next({ request: { headers: forwarded } });

@@ -1,15 +1,10 @@
 import { createAccessControl } from 'better-auth/plugins/access';
 
-export const studioRoles = ['designer', 'lead', 'producer'] as const;
-export const clientRoles = ['reviewer', 'approver'] as const;
-export const roles = [...studioRoles, ...clientRoles] as const;
-export type Role = (typeof roles)[number];
-export type StudioRole = (typeof studioRoles)[number];
-export type ClientRole = (typeof clientRoles)[number];
+import { clientRoles, isStudioRole, roles, sideOf, studioRoles } from './role-names';
+import type { ClientRole, Role, StudioRole } from './role-names';
 
-export const isStudioRole = (role: Role): role is StudioRole =>
-  (studioRoles as readonly string[]).includes(role);
-export const sideOf = (role: Role): 'studio' | 'client' => (isStudioRole(role) ? 'studio' : 'client');
+export { clientRoles, isStudioRole, roles, sideOf, studioRoles };
+export type { ClientRole, Role, StudioRole };
 
 /** What can be done in a workspace. The organization plugin's own resources are named so that it may ask too. */
 const statements = {

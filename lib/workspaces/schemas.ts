@@ -1,6 +1,6 @@
 import { z } from 'zod';
 import { NewPassword } from '@/lib/auth/password-rules';
-import { clientRoles, roles, studioRoles } from './roles';
+import { clientRoles, roles, studioRoles } from './role-names';
 
 /** Inputs and outputs of people, invitations and workspaces. Browser-safe: one source for route, verb and form. */
 
@@ -122,6 +122,23 @@ export const WorkspaceView = z.object({
   openedAt: z.iso.datetime(),
 });
 export type WorkspaceView = z.infer<typeof WorkspaceView>;
+
+export const GatePlanView = z.object({
+  number: z.number().int(),
+  madeAt: z.iso.datetime(),
+  gates: z.array(
+    z.object({
+      key: z.string(),
+      name: z.string(),
+      kind: z.enum(['automatic', 'people']),
+      roles: z.array(z.enum(roles)),
+      quorum: z.number().int(),
+      fourEyes: z.boolean(),
+      meaning: z.string(),
+    }),
+  ),
+});
+export type GatePlanView = z.infer<typeof GatePlanView>;
 
 export const InvitationView = z.object({
   workspaceName: z.string().nullable(),
