@@ -1,8 +1,8 @@
 import type { ReactNode } from 'react';
 import { LiveProvider } from '@/app/_components/live/live-provider';
-import { readLiveConfig } from '@/app/_components/live/read-live-config';
 import { OutboxProvider } from '@/app/_components/note-editor/outbox-provider';
 import { enterWorkspacePage } from '@/app/_frames/enter-page';
+import { realtimeAddress } from '@/realtime/address';
 
 type Props = { params: Promise<{ workspace: string }>; children: ReactNode };
 
@@ -11,7 +11,7 @@ export default async function WorkspaceLayout({ params, children }: Props) {
   const { workspace } = await params;
   const ctx = await enterWorkspacePage(workspace);
   return (
-    <LiveProvider config={readLiveConfig()} personId={ctx.person.id} workspaceId={ctx.workspace.id}>
+    <LiveProvider config={realtimeAddress()} personId={ctx.person.id} workspaceId={ctx.workspace.id}>
       <OutboxProvider personId={ctx.person.id}>{children}</OutboxProvider>
     </LiveProvider>
   );

@@ -2,14 +2,15 @@
 
 import clsx from 'clsx';
 import { useState } from 'react';
-import { Button } from '@/app/_components/button';
 import { NoteComposer } from '@/app/_components/note-editor/note-composer';
 import { useOutgoing } from '@/app/_components/note-editor/outbox-provider';
 import { StateShape } from '@/app/_components/state-shape';
 import { states, type State } from '@/app/_components/status-word';
+import type { FindingView } from '@/lib/review/schemas';
 import { checkName } from './check-names';
 import type { DocketItem } from './docket-items';
-import { FindingBasis, FindingCard } from './finding-card';
+import { FindingCard } from './finding-card';
+import { MetaButton } from './meta-button';
 import { OutgoingNoteEntry } from './note-entry';
 import { useRoom } from './room-context';
 import { ThreadCard } from './thread-card';
@@ -33,15 +34,18 @@ function markOf({ finding, thread, group }: DocketItem): { state: State; tone: s
   return { state: 'note', tone: thread?.mustSettle ? 'madder' : 'ink' };
 }
 
-const notChecked = 'not checked';
+function wordOf({ finding, thread }: DocketItem, state: State): string {
+  if (finding?.status === 'not-run') return 'not checked';
+  if (!finding && thread?.mustSettle && thread.state === 'open') return 'note, must settle';
+  return states[state].word;
+}
 
 /** One item of the docket: a finding with its answers, or a thread of its own. */
 export function DocketEntry({ item, level = 3 }: { item: DocketItem; level?: 3 | 4 }) {
   const { finding, thread, key } = item;
-  const { active, activate, revision } = useRoom();
+  const { active, activate } = useRoom();
   const { state, tone } = markOf(item);
-  const word =
-    finding?.status === 'not-run' ? notChecked : thread && !finding && thread.mustSettle && thread.state === 'open' ? 'note, must settle' : states[state].word; // prettier-ignore
+  const word = wordOf(item, state);
   const Heading = `h${level}` as const;
   return (
     <li
@@ -64,16 +68,7 @@ export function DocketEntry({ item, level = 3 }: { item: DocketItem; level?: 3 |
             {finding ? finding.message : threadTitle(item)}
           </Heading>
           {finding ? (
-            <>
-              <FindingCard finding={finding} itemKey={key} />
-              {thread ? (
-                <div className="mt-1 border-l-2 border-rule pl-3">
-                  <ThreadCard thread={thread} itemKey={key} />
-                </div>
-              ) : null}
-              <FindingActions item={item} canNote={revision.can.note} />
-              <FindingBasis finding={finding} />
-            </>
+            <FindingItem item={item} finding={finding} />
           ) : thread ? (
             <ThreadCard thread={thread} itemKey={key} />
           ) : null}
@@ -90,45 +85,49 @@ function threadTitle({ thread }: DocketItem): string {
   return `${first.authorName}: ${words}`;
 }
 
-/** Answering a finding that nobody has answered, and waiving it. */
-function FindingActions({ item, canNote }: { item: DocketItem; canNote: boolean }) {
+/** A finding, its answers below it, and what can be done: answer it while nobody has, or waive it. */
+function FindingItem({ item, finding }: { item: DocketItem; finding: FindingView }) {
   const { workspace, revision, reader, people } = useRoom();
   const [answering, setAnswering] = useState(false);
-  const finding = item.finding!;
   const waiting = useOutgoing(revision.id).filter((e) => e.findingId === finding.id && !e.threadId);
-  const mayAnswer = canNote && !item.thread && !revision.lockedAt && waiting.length === 0;
+  const mayAnswer = revision.can.note && !item.thread && !revision.lockedAt && waiting.length === 0;
   const mayWaive = revision.can.waive && finding.status === 'fail' && !finding.waiver;
-  if (answering) {
-    return (
-      <NoteComposer
-        personId={reader.id}
-        workspaceId={workspace.id}
-        revisionId={revision.id}
-        findingId={finding.id}
-        people={people}
-        label={`Answer to the finding on ${checkName(finding.checkId).toLowerCase()}`}
-        placeholder="Answer this finding"
-        sendLabel="Post the answer"
-        autoFocus
-        onSent={() => setAnswering(false)}
-        onCancel={() => setAnswering(false)}
-      />
-    );
-  }
   return (
     <>
+      <FindingCard
+        finding={finding}
+        itemKey={item.key}
+        actions={
+          <>
+            {mayAnswer && !answering ? (
+              <MetaButton onPress={() => setAnswering(true)}>answer</MetaButton>
+            ) : null}
+            {mayWaive ? <WaiveDialog finding={finding} /> : null}
+          </>
+        }
+      />
+      {item.thread ? (
+        <div className="mt-1 border-l-2 border-rule pl-3">
+          <ThreadCard thread={item.thread} itemKey={item.key} />
+        </div>
+      ) : null}
       {waiting.map((entry) => (
         <OutgoingNoteEntry key={entry.clientKey} entry={entry} />
       ))}
-      {mayAnswer || mayWaive ? (
-        <div className="-ml-2.5 flex flex-wrap gap-1 print:hidden">
-          {mayAnswer ? (
-            <Button variant="plain" size="small" onPress={() => setAnswering(true)}>
-              Answer
-            </Button>
-          ) : null}
-          {mayWaive ? <WaiveDialog finding={finding} /> : null}
-        </div>
+      {answering ? (
+        <NoteComposer
+          personId={reader.id}
+          workspaceId={workspace.id}
+          revisionId={revision.id}
+          findingId={finding.id}
+          people={people}
+          label={`Answer to the finding on ${checkName(finding.checkId).toLowerCase()}`}
+          placeholder="Answer this finding"
+          sendLabel="Post the answer"
+          autoFocus
+          onSent={() => setAnswering(false)}
+          onCancel={() => setAnswering(false)}
+        />
       ) : null}
     </>
   );

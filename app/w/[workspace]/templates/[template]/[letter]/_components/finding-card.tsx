@@ -1,6 +1,6 @@
 'use client';
 
-import { Disclosure } from '@/app/_components/disclosure';
+import { useId, useState, type ReactNode } from 'react';
 import { Figure } from '@/app/_components/figure';
 import { MeasureBar } from '@/app/_components/measure-bar';
 import { usePreferences } from '@/app/_components/preferences-context';
@@ -8,26 +8,19 @@ import { Time } from '@/app/_components/time';
 import type { FindingView } from '@/lib/review/schemas';
 import { checkName } from './check-names';
 import { figureOf, measureOf } from './measure-of';
+import { MetaButton } from './meta-button';
 import { PlaceLinks } from './place-links';
 
-const kinds: Record<string, string> = {
-  'common practice': 'common practice',
-  handbook: 'a handbook',
-  standard: 'a standard',
-  computed: 'computed from the recipe',
-};
-
 /** What a check says: measured against limit, what to change, where, and what the limit rests on. */
-export function FindingCard({ finding, itemKey }: { finding: FindingView; itemKey: string }) {
+export function FindingCard(props: { finding: FindingView; itemKey: string; actions: ReactNode }) {
+  const { finding, itemKey, actions } = props;
   const { units } = usePreferences();
+  const [explained, setExplained] = useState(false);
+  const basisId = useId();
   const measure = measureOf(finding, units);
   return (
     <>
-      {measure && finding.status !== 'pass' ? (
-        <div className="pt-0.5 pb-1">
-          <MeasureBar {...measure} />
-        </div>
-      ) : null}
+      {measure && finding.status !== 'pass' ? <MeasureBar {...measure} /> : null}
       {finding.remedy ? <p>{finding.remedy}</p> : null}
       {finding.waiver ? (
         <p className="border-l-2 border-ochre pl-3 text-sm">
@@ -35,48 +28,51 @@ export function FindingCard({ finding, itemKey }: { finding: FindingView; itemKe
           <Time at={finding.waiver.at} show="moment" />: “{finding.waiver.reason}”
         </p>
       ) : null}
-      <PlaceLinks places={finding.places} itemKey={itemKey} />
+      <div className="flex flex-wrap items-baseline gap-x-3.5 text-sm text-slate">
+        <PlaceLinks places={finding.places} itemKey={itemKey} />
+        <MetaButton
+          aria-expanded={explained}
+          aria-controls={basisId}
+          onPress={() => setExplained(!explained)}
+        >
+          how it is computed
+        </MetaButton>
+        {actions}
+      </div>
+      <div id={basisId} hidden={!explained} className="print:block">
+        <FindingBasis finding={finding} />
+      </div>
     </>
   );
 }
 
-/** How a finding was computed and what its limit rests on. */
-export function FindingBasis({ finding }: { finding: FindingView }) {
+const kinds: Record<string, string> = {
+  'common practice': 'common practice',
+  handbook: 'a handbook',
+  standard: 'a standard',
+  computed: 'computed from mesh and recipe',
+};
+
+function FindingBasis({ finding }: { finding: FindingView }) {
   const { units } = usePreferences();
-  const shown = (value: number | null) =>
-    value === null ? null : <Figure {...figureOf(value, finding.unit, units)} />;
+  const { source, kind } = finding.basis;
+  const rows: [string, ReactNode][] = [['check', checkName(finding.checkId)]];
+  if (finding.measured !== null) {
+    rows.push(['measured', <Figure key="m" {...figureOf(finding.measured, finding.unit, units)} />]);
+  }
+  if (finding.limit !== null) {
+    rows.push(['limit', <Figure key="l" {...figureOf(finding.limit, finding.unit, units)} />]);
+  }
+  const named = kinds[kind] && !source.startsWith(kinds[kind]);
+  rows.push(['basis', named ? `${source} (${kinds[kind]})` : source]);
   return (
-    <Disclosure
-      title={
-        <span className="text-sm font-medium text-verdigris underline underline-offset-3">
-          how it is computed
-        </span>
-      }
-      level={4}
-    >
-      <dl className="grid grid-cols-[auto_1fr] gap-x-3 gap-y-0.5 text-sm">
-        <dt className="text-slate">check</dt>
-        <dd>{checkName(finding.checkId)}</dd>
-        {finding.measured !== null ? (
-          <>
-            <dt className="text-slate">measured</dt>
-            <dd>{shown(finding.measured)}</dd>
-          </>
-        ) : null}
-        {finding.limit !== null ? (
-          <>
-            <dt className="text-slate">limit</dt>
-            <dd>{shown(finding.limit)}</dd>
-          </>
-        ) : null}
-        <dt className="text-slate">basis</dt>
-        <dd>
-          {finding.basis.source}
-          {kinds[finding.basis.kind] && !finding.basis.source.startsWith(kinds[finding.basis.kind])
-            ? ` (${kinds[finding.basis.kind]})`
-            : ''}
-        </dd>
-      </dl>
-    </Disclosure>
+    <dl className="my-1 grid grid-cols-[auto_1fr] gap-x-4 gap-y-0.5 border-l-2 border-rule pl-3 text-sm">
+      {rows.map(([label, value]) => (
+        <div key={label} className="contents">
+          <dt className="text-slate">{label}</dt>
+          <dd>{value}</dd>
+        </div>
+      ))}
+    </dl>
   );
 }

@@ -3,6 +3,7 @@ import type { RevisionView } from '@/lib/review/schemas';
 /** The one main step of this reader on this page, if there is one. */
 export type PrimaryStep =
   | { kind: 'sign'; label: string; detail: string }
+  | { kind: 'settle'; label: string; detail: string }
   | { kind: 'release'; label: string; detail: string }
   | { kind: 'download'; label: string; detail: string; href: string }
   | { kind: 'post'; label: string; detail: string; href: string };
@@ -19,6 +20,9 @@ export function primaryStep(
   addresses: { pack: string; post: string },
 ): PrimaryStep | null {
   const { can, release } = revision;
+  if (can.sign?.blocked) {
+    return { kind: 'settle', label: 'Settle what is open', detail: `then sign. ${can.sign.blocked}` };
+  }
   if (can.sign) {
     return {
       kind: 'sign',

@@ -15,14 +15,17 @@ import { SignDialog } from './sign-dialog';
 export type RoomDialog = 'sign' | 'return' | 'release' | Step;
 
 /** The verdigris end of the title block. */
-export function PrimaryAction({
-  step,
-  onOpen,
-}: {
+export function PrimaryAction(props: {
   step: PrimaryStep | null;
   onOpen: (dialog: RoomDialog) => void;
+  /** Goes to the first item that keeps the gate shut. */
+  onSettle: () => void;
 }) {
+  const { step, onOpen, onSettle } = props;
   if (!step) return null;
+  if (step.kind === 'settle') {
+    return <TitleAction label={step.label} detail={step.detail} onPress={onSettle} />;
+  }
   if (step.kind === 'sign' || step.kind === 'release') {
     return <TitleAction label={step.label} detail={step.detail} onPress={() => onOpen(step.kind)} />;
   }
@@ -58,7 +61,7 @@ export function RoomActions({
           Download the pack
         </a>
       ) : null}
-      {can.download ? (
+      {revision.mesh ? (
         <a className="px-1 py-1 text-base text-verdigris underline underline-offset-3" href={`${api}/mesh`}>
           Download the mesh
         </a>

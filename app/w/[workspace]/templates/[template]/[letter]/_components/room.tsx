@@ -131,13 +131,26 @@ export function Room({ workspace, reader, revision: first, docket: firstDocket, 
         <RoomTitle
           revision={revision}
           gates={gateSteps(revision, { failing, waived }, groups.settle.length)}
-          action={<PrimaryAction step={step} onOpen={setDialog} />}
+          action={
+            <PrimaryAction
+              step={step}
+              onOpen={setDialog}
+              onSettle={() => {
+                setFilter({ search: '', kind: 'all' });
+                if (groups.settle[0]) visit(groups.settle[0].key);
+              }}
+            />
+          }
         />
         <RoomActions step={step} onOpen={setDialog} />
         <StateBanner revision={revision} />
         <CheckPanel revision={revision} />
         <div className="grid items-start gap-6 lg:grid-cols-[minmax(0,1fr)_minmax(20rem,27rem)]">
-          <div id="stage" className="min-w-0 scroll-mt-4 lg:sticky lg:top-3">
+          <div
+            id="stage"
+            className="min-w-0 scroll-mt-4 [@media(min-width:64rem)_and_(min-height:50rem)]:sticky [@media(min-width:64rem)_and_(min-height:50rem)]:top-3"
+          >
+            <h2 className="sr-only">Model and section</h2>
             <StagePanel
               revision={revision}
               pins={pins}
@@ -149,6 +162,7 @@ export function Room({ workspace, reader, revision: first, docket: firstDocket, 
               view={focus.view}
               highlight={focus.highlight}
               line={focus.line}
+              onWallSelect={focus.point}
               onLineChange={focus.setLine}
             />
           </div>

@@ -1,5 +1,6 @@
 'use client';
 
+import dynamic from 'next/dynamic';
 import { useState, useSyncExternalStore } from 'react';
 import { SkeletonBlock } from '@/app/_components/skeleton';
 import { Stage } from '@/app/_components/stage/stage';
@@ -8,7 +9,15 @@ import { usePreferences } from '@/app/_components/preferences-context';
 import type { SectionLine } from '@/lib/stage-model/section';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { RevisionView } from '@/lib/review/schemas';
+import { useVents } from '../_hooks/use-room-data';
 import { limitOf } from './describe-recipe';
+import { useRoom } from './room-context';
+
+// Cuts the model that the stage has fetched; nothing of it is needed before the model is there.
+const ProfileStrip = dynamic(
+  () => import('@/app/_components/stage/profile-strip').then((module) => module.ProfileStrip),
+  { ssr: false, loading: () => <SkeletonBlock className="h-80" label="The section is on its way" /> },
+);
 
 export interface StagePanelProps {
   revision: RevisionView;
@@ -21,6 +30,8 @@ export interface StagePanelProps {
   view: StageCamera | null;
   highlight: Point | null;
   line: SectionLine | null;
+  /** A wall of the section was chosen. */
+  onWallSelect: (at: Point) => void;
   onLineChange: (line: SectionLine) => void;
 }
 
@@ -48,6 +59,8 @@ export function StagePanel(props: StagePanelProps) {
   const { revision } = props;
   const theme = useShownTheme();
   const [map, setMap] = useState<StageMap>('plain');
+  const { workspace } = useRoom();
+  const vents = useVents(workspace.id, revision);
   const title = `${revision.template.title}, revision ${revision.letter}`;
   if (!revision.model) {
     const waiting = revision.check.state === 'queued' || revision.check.state === 'running';
@@ -64,26 +77,42 @@ export function StagePanel(props: StagePanelProps) {
     );
   }
   const meta = revision.model.meta as unknown as StageModelMeta;
+  const limitDeg = limitOf(revision.recipe, 'draftMinDeg', 5);
   return (
-    <Stage
-      title={title}
-      modelUrl={revision.model.url}
-      pictureUrl={revision.model.pictureUrl}
-      meta={meta}
-      map={map}
-      onMapChange={setMap}
-      limitDeg={limitOf(revision.recipe, 'draftMinDeg', 5)}
-      pins={props.pins}
-      activePin={props.activePin}
-      onPinSelect={props.onPinSelect}
-      placing={props.placing}
-      onPlace={props.onPlace}
-      onPlaceCancel={props.onPlaceCancel}
-      sectionLine={props.line}
-      onSectionLineChange={props.onLineChange}
-      view={props.view}
-      highlight={props.highlight}
-      theme={theme}
-    />
+    <>
+      <Stage
+        title={title}
+        modelUrl={revision.model.url}
+        pictureUrl={revision.model.pictureUrl}
+        meta={meta}
+        map={map}
+        onMapChange={setMap}
+        limitDeg={limitDeg}
+        pins={props.pins}
+        activePin={props.activePin}
+        onPinSelect={props.onPinSelect}
+        placing={props.placing}
+        onPlace={props.onPlace}
+        onPlaceCancel={props.onPlaceCancel}
+        sectionLine={props.line}
+        onSectionLineChange={props.onLineChange}
+        view={props.view}
+        highlight={props.highlight}
+        theme={theme}
+      />
+      {props.line ? (
+        <ProfileStrip
+          title={title}
+          modelUrl={revision.model.url}
+          meta={meta}
+          sectionLine={props.line}
+          onSectionLineChange={props.onLineChange}
+          limitDeg={limitDeg}
+          vents={vents}
+          onWallSelect={(at) => props.onWallSelect(at)}
+          className="border-t-0 print:hidden"
+        />
+      ) : null}
+    </>
   );
 }

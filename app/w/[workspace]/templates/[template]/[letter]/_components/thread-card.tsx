@@ -1,7 +1,6 @@
 'use client';
 
 import { useState } from 'react';
-import { Button } from '@/app/_components/button';
 import { Figure } from '@/app/_components/figure';
 import { convertLength } from '@/app/_components/format-figure';
 import { NoteComposer } from '@/app/_components/note-editor/note-composer';
@@ -10,6 +9,7 @@ import { usePreferences } from '@/app/_components/preferences-context';
 import { Time } from '@/app/_components/time';
 import type { ThreadView } from '@/lib/review/schemas';
 import { useSettle } from '../_hooks/use-room-commands';
+import { MetaButton } from './meta-button';
 import { NoteEntry, OutgoingNoteEntry } from './note-entry';
 import { PlaceLinks } from './place-links';
 import { useRoom } from './room-context';
@@ -31,7 +31,6 @@ export function ThreadCard({ thread, itemKey }: { thread: ThreadView; itemKey: s
         <OutgoingNoteEntry key={entry.clientKey} entry={entry} />
       ))}
       <ThreadFacts thread={thread} letter={revision.letter} />
-      {thread.pin ? <PlaceLinks places={[{ at: thread.pin.at }]} itemKey={itemKey} /> : null}
       {replying ? (
         <NoteComposer
           personId={reader.id}
@@ -47,30 +46,20 @@ export function ThreadCard({ thread, itemKey }: { thread: ThreadView; itemKey: s
           onCancel={() => setReplying(false)}
         />
       ) : (
-        <div className="-ml-2.5 flex flex-wrap gap-1 print:hidden">
-          {mayReply ? (
-            <Button variant="plain" size="small" onPress={() => setReplying(true)}>
-              Reply
-            </Button>
-          ) : null}
+        <div className="flex flex-wrap items-baseline gap-x-3.5 text-sm text-slate">
+          {thread.pin ? <PlaceLinks places={[{ at: thread.pin.at }]} itemKey={itemKey} /> : null}
+          {mayReply ? <MetaButton onPress={() => setReplying(true)}>reply</MetaButton> : null}
           {revision.can.settle || thread.afterApproval ? (
-            <SettleButton
-              thread={thread}
+            <MetaButton
               isPending={settle.isPending}
               onPress={() => settle.mutate({ thread, settled: thread.state === 'open' })}
-            />
+            >
+              {thread.state === 'open' ? 'settle' : 'open again'}
+            </MetaButton>
           ) : null}
         </div>
       )}
     </div>
-  );
-}
-
-function SettleButton(props: { thread: ThreadView; isPending: boolean; onPress: () => void }) {
-  return (
-    <Button variant="plain" size="small" isPending={props.isPending} onPress={props.onPress}>
-      {props.thread.state === 'open' ? 'Settle' : 'Open again'}
-    </Button>
   );
 }
 

@@ -8,6 +8,7 @@ import { notify } from '@/app/_components/notices';
 import { TextArea } from '@/app/_components/text-field';
 import { WaiveInput, type FindingView } from '@/lib/review/schemas';
 import { useWaive } from '../_hooks/use-room-commands';
+import { MetaButton } from './meta-button';
 import { useRoom } from './room-context';
 
 /** A lead lets a failing finding stand; the reason is shown with it for ever after. */
@@ -36,9 +37,7 @@ export function WaiveDialog({ finding }: { finding: FindingView }) {
   };
   return (
     <DialogTrigger>
-      <Button variant="plain" size="small">
-        Waive with a reason
-      </Button>
+      <MetaButton>waive with a reason</MetaButton>
       <Dialog
         title="Let this finding stand"
         isBusy={waive.isPending}

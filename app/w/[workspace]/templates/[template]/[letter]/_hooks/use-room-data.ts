@@ -44,6 +44,22 @@ export function usePeople(workspaceId: string): readonly Mentionable[] {
   });
   return data?.people ?? nobody;
 }
+/** Vents as the check measured them, for the section; none until the report is there. */
+const Vents = z.object({
+  vents: z.array(z.object({ at: z.tuple([z.number(), z.number(), z.number()]), diameterMm: z.number() })),
+});
+
+export function useVents(workspaceId: string, revision: RevisionView) {
+  const { data } = useQuery({
+    queryKey: queryKeys.report(workspaceId, revision.id),
+    queryFn: ({ signal }) =>
+      api(`${revisionApi(workspaceId, revision.id)}/report`, { schema: Vents, signal }),
+    enabled: revision.check.state === 'finished' && revision.model !== null,
+    staleTime: Infinity,
+  });
+  return data?.vents ?? noVents;
+}
+const noVents: z.infer<typeof Vents>['vents'] = [];
 const nobody: readonly Mentionable[] = [];
 
 /** Exactly what a signer would put their name to now; always asked afresh when the dialog opens. */

@@ -39,6 +39,11 @@ export function useStageFocus(bounds: Bounds | null) {
       const axis = shownLine?.axis ?? 'y';
       setLine({ axis, atMm: round(at[axis === 'y' ? 1 : 0]) });
     },
+    /** Shows a place without moving the eye. */
+    point(at: Point) {
+      setHighlight(at);
+      setActivePin(null);
+    },
     clear() {
       setHighlight(null);
       setActivePin(null);
