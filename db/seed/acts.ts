@@ -1,7 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { setTimeout as pause } from 'node:timers/promises';
 import type { WorkspaceContext } from '@/lib/auth/context';
-import { addNote } from '@/lib/review/add-note';
+import { replyToThread } from '@/lib/review/reply-to-thread';
 import { completeUpload } from '@/lib/review/complete-upload';
 import { createTemplate } from '@/lib/review/create-template';
 import { markPartDone } from '@/lib/review/mark-part-done';
@@ -121,7 +121,7 @@ export async function reply(
   threadId: string,
   body: Record<string, unknown>,
 ): Promise<void> {
-  await addNote(ctx, threadId, { clientKey: randomUUID(), body });
+  await replyToThread(ctx, threadId, { clientKey: randomUUID(), body });
 }
 
 /** Signs the open gate of a revision, after reading what is signed. */

@@ -1,0 +1,117 @@
+import type { Metadata } from 'next';
+import NextLink from 'next/link';
+import { EmptyState } from '@/app/_components/empty-state';
+import { RefreshOnLive } from '@/app/_components/live/refresh-on-live';
+import { PageHeader } from '@/app/_components/page-header';
+import { SectionHead } from '@/app/_components/section-head';
+import { StatusWord, type State } from '@/app/_components/status-word';
+import { Time } from '@/app/_components/time';
+import { enterDesk } from '@/app/_frames/enter-page';
+import { DeskFrame } from '@/app/_frames/desk-frame';
+import { personContext } from '@/lib/auth/context';
+import type { TodayItem, TodayView } from '@/lib/review/schemas';
+import { viewToday } from '@/lib/review/view-today';
+
+export const metadata: Metadata = { title: 'Today' };
+
+const kinds: Record<TodayItem['kind'], { state: State; word: string }> = {
+  sign: { state: 'open', word: 'sign' },
+  settle: { state: 'must-settle', word: 'settle' },
+  answer: { state: 'note', word: 'answer' },
+  fix: { state: 'must-settle', word: 'mend' },
+  release: { state: 'approved', word: 'release' },
+  draft: { state: 'draft', word: 'post' },
+  mention: { state: 'note', word: 'you were named' },
+};
+
+/** What waits on the reader, and since when, across every workspace. */
+export default async function TodayPage() {
+  const person = await enterDesk();
+  const today = await viewToday(personContext(person));
+  const waits = today.items.length;
+  return (
+    <DeskFrame person={person} crumbs={[{ label: 'Today' }]}>
+      <RefreshOnLive events={['today.changed']} />
+      <PageHeader
+        title="Today"
+        lead={
+          waits === 0
+            ? 'Nothing waits on you.'
+            : `${waits === 1 ? 'One thing waits' : `${waits} things wait`} on you, the longest first.`
+        }
+      />
+      <div className="grid grid-cols-1 gap-x-10 gap-y-8 lg:grid-cols-[2fr_1fr]">
+        <section aria-labelledby="waits">
+          <SectionHead title="Waits on you" id="waits" count={waits} tone={waits ? 'madder' : 'ink'} />
+          {waits ? (
+            <ol className="mt-1">
+              {today.items.map((item) => (
+                <Waiting key={`${item.kind}-${item.path}-${item.since}`} item={item} />
+              ))}
+            </ol>
+          ) : (
+            <div className="mt-3">
+              <EmptyState title="All clear" level={3}>
+                You will get a mail when a gate waits for your name, a note names you, or a check fails on what you posted.
+              </EmptyState>
+            </div>
+          )}
+        </section>
+        <section aria-labelledby="recent">
+          <SectionHead title="Lately" id="recent" />
+          <Recent recent={today.recent} />
+        </section>
+      </div>
+    </DeskFrame>
+  );
+}
+
+function Waiting({ item }: { item: TodayItem }) {
+  const { state, word } = kinds[item.kind];
+  return (
+    <li className="relative grid grid-cols-[7.5rem_1fr] gap-x-4 gap-y-1 border-b border-rule py-3.5 hover:bg-sheet max-sm:grid-cols-1">
+      <StatusWord state={state} word={word} className="text-sm" />
+      <div className="min-w-0">
+        <NextLink
+          href={item.path}
+          className="text-md font-semibold text-ink no-underline after:absolute after:inset-0 hover:underline"
+        >
+          {item.text}
+        </NextLink>
+        <p className="mt-0.5 flex flex-wrap gap-x-3 text-sm text-slate">
+          <span>
+            <span className="font-mono">{item.templateNumber}</span> {item.templateTitle}
+            {item.letter ? `, revision ${item.letter}` : ''}
+          </span>
+          <span>{item.workspace.name}</span>
+          <span>
+            for <Time at={item.since} show="span" />
+          </span>
+          {item.dueOn ? (
+            <span>
+              due <Time at={`${item.dueOn}T12:00:00Z`} show="day" />
+            </span>
+          ) : null}
+        </p>
+      </div>
+    </li>
+  );
+}
+
+function Recent({ recent }: { recent: TodayView['recent'] }) {
+  if (recent.length === 0) return <p className="mt-3 text-sm text-slate">Nothing has happened yet.</p>;
+  return (
+    <ol className="mt-1">
+      {recent.map((entry) => (
+        <li key={`${entry.path}-${entry.at}-${entry.text}`} className="border-b border-rule py-2.5 text-sm">
+          <NextLink href={entry.path} className="text-ink no-underline hover:underline">
+            {entry.text}
+          </NextLink>
+          <p className="text-slate">
+            {entry.workspace}, <Time at={entry.at} show="relative" />
+          </p>
+        </li>
+      ))}
+    </ol>
+  );
+}
