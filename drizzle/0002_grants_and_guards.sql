@@ -156,16 +156,19 @@ create function guard_docket() returns trigger
   language plpgsql set search_path = public, pg_catalog, pg_temp
   as $$
 declare
-  thread uuid := case tg_table_name when 'threads' then new.id else new.thread_id end;
+  thread uuid;
   after_lock boolean;
 begin
+  -- One statement a table: an expression that names a column of the other table fails before it is evaluated.
   if tg_table_name = 'threads' then
+    thread := new.id;
     after_lock := new.after_approval;
     if tg_op = 'UPDATE' and (new.after_approval, new.template_id, new.revision_id, new.finding_id, new.continues, new.opened_by)
        is distinct from (old.after_approval, old.template_id, old.revision_id, old.finding_id, old.continues, old.opened_by) then
       raise exception 'what a thread is about is frozen' using errcode = '23001', constraint = 'frozen';
     end if;
   else
+    thread := new.thread_id;
     select t.after_approval into after_lock from threads t where t.workspace_id = new.workspace_id and t.id = thread;
   end if;
   if coalesce(after_lock, false) then return new; end if;
