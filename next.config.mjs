@@ -1,6 +1,9 @@
 /** @type {import('next').NextConfig} */
 const config = {
   output: 'standalone',
+  // This checkout, whatever lock files lie in folders above it.
+  outputFileTracingRoot: import.meta.dirname,
+  turbopack: { root: import.meta.dirname },
   distDir: process.env.FIRSTPULL_DIST_DIR || '.next',
   poweredByHeader: false,
   reactStrictMode: true,
