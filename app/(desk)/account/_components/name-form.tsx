@@ -32,7 +32,7 @@ export function NameForm({ name, email }: { name: string; email: string }) {
         name="name"
         rules={{
           validate: (value) => value.trim().length > 0 || 'Write your name.',
-          maxLength: { value: 120, message: 'Use 120 characters or fewer.' },
+          maxLength: { value: 80, message: 'Use 80 characters or fewer.' },
         }}
       >
         {(field) => <TextField label="Name" autoComplete="name" {...field} />}

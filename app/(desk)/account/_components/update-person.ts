@@ -1,14 +1,8 @@
 import { api, explainError } from '../../../_components/api-client';
-
-export interface PersonChange {
-  name?: string;
-  units?: 'mm' | 'in';
-  /** IANA zone for times in mails. */
-  timeZone?: string;
-}
+import type { UpdateMeInput } from '@/lib/workspaces/schemas';
 
 /** Changes the signed-in person; returns what went wrong, in words, or null. */
-export async function updatePerson(change: PersonChange): Promise<string | null> {
+export async function updatePerson(change: UpdateMeInput): Promise<string | null> {
   try {
     await api<unknown>('/api/v1/me', { method: 'PATCH', body: change });
     return null;

@@ -4,11 +4,11 @@ import { acceptedSchema } from './invitation';
 
 /** Takes up an invitation; returns the path to go to. Throws `ApiError`. */
 export async function acceptInvitation(
-  id: string,
+  token: string,
   idempotencyKey: string,
   person: { name: string; password: string } | null,
 ): Promise<string> {
-  const answer = await api<unknown>(`/api/v1/invitations/${encodeURIComponent(id)}/accept`, {
+  const answer = await api<unknown>(`/api/v1/invitations/${encodeURIComponent(token)}/accept`, {
     method: 'POST',
     body: person ?? {},
     idempotencyKey,

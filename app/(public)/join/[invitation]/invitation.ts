@@ -1,20 +1,23 @@
 import { z } from 'zod/mini';
+import type { InvitationView } from '@/lib/workspaces/schemas';
 
-/** Answer of `GET /api/v1/invitations/{id}`. */
-export const invitationSchema = z.object({
+export type Invitation = InvitationView;
+
+/** Answer of `GET /api/v1/invitations/{token}`; the small build of zod, since this page is often the first one seen. */
+export const invitationSchema: z.ZodMiniType<Invitation> = z.object({
   workspaceName: z.nullable(z.string()),
   studioName: z.string(),
-  role: z.string(),
+  role: z.enum(['designer', 'lead', 'producer', 'reviewer', 'approver']),
   email: z.string(),
   expiresAt: z.string(),
-  state: z.string(),
+  state: z.enum(['pending', 'accepted', 'expired', 'cancelled']),
+  hasAccount: z.boolean(),
 });
-export type Invitation = z.infer<typeof invitationSchema>;
 
-/** Answer of `POST /api/v1/invitations/{id}/accept`. */
+/** Answer of `POST /api/v1/invitations/{token}/accept`. */
 export const acceptedSchema = z.object({ redirectTo: z.string() });
 
-const what: Record<string, string> = {
+const what: Record<Invitation['role'], string> = {
   designer: 'post revisions, read the findings and answer notes',
   lead: 'open workspaces, invite people, set the gate plan and sign for the studio',
   producer: 'release what is approved, and record prints and pulls',
@@ -23,16 +26,14 @@ const what: Record<string, string> = {
 };
 
 /** What a role lets a person do, as the rest of `you may …`. */
-export function roleInWords(role: string): string {
-  return what[role] ?? 'take part';
+export function roleInWords(role: Invitation['role']): string {
+  return what[role];
 }
 
 /** Why an invitation cannot be taken up, or null while it is open. */
 export function closedBecause(invitation: Invitation, now: number): string | null {
-  if (invitation.state === 'accepted') return 'It has been taken up already. Sign in to go on.';
-  if (invitation.state === 'canceled' || invitation.state === 'cancelled')
-    return 'The studio has taken it back.';
-  if (invitation.state === 'rejected') return 'It was declined.';
+  if (invitation.state === 'accepted') return 'It has been taken up already.';
+  if (invitation.state === 'cancelled') return 'The studio has taken it back.';
   if (invitation.state === 'expired' || Date.parse(invitation.expiresAt) <= now) return 'It has run out.';
   return null;
 }

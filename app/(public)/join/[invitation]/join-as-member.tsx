@@ -8,7 +8,7 @@ import { FormProblem } from '../../../_components/form-problem';
 import { acceptInvitation } from './accept-invitation';
 
 /** For a person who is signed in with the invited address. */
-export function JoinAsMember({ id, name, place }: { id: string; name: string; place: string }) {
+export function JoinAsMember({ token, name, place }: { token: string; name: string; place: string }) {
   const router = useRouter();
   const [key] = useState(newIdempotencyKey);
   const [isPending, setPending] = useState(false);
@@ -18,7 +18,7 @@ export function JoinAsMember({ id, name, place }: { id: string; name: string; pl
     setPending(true);
     setProblem(null);
     try {
-      router.replace(await acceptInvitation(id, key, null));
+      router.replace(await acceptInvitation(token, key, null));
       router.refresh();
     } catch (error) {
       setProblem(explainError(error).detail);

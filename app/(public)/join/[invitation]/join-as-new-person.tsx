@@ -4,12 +4,9 @@ import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { useForm } from 'react-hook-form';
 import { ApiError, explainError, fieldName, newIdempotencyKey } from '../../../_components/api-client';
-import { authClient } from '../../../_components/auth-client';
 import { Button } from '../../../_components/button';
 import { Controlled } from '../../../_components/controlled';
-import { askAuth } from '../../../_components/explain-auth';
 import { FormProblem } from '../../../_components/form-problem';
-import { Link } from '../../../_components/link';
 import { PasswordField } from '../../../_components/password-field';
 import { TextField } from '../../../_components/text-field';
 import { newPasswordHelp, newPasswordRules } from '../../../_components/new-password-rules';
@@ -21,30 +18,21 @@ interface Values {
 }
 
 /** For the invited address when nobody is signed in: a new person sets a name and a password. */
-export function JoinAsNewPerson({ id, email }: { id: string; email: string }) {
+export function JoinAsNewPerson({ token, email }: { token: string; email: string }) {
   const router = useRouter();
   const [key] = useState(newIdempotencyKey);
   const [problem, setProblem] = useState<string | null>(null);
   const { control, handleSubmit, formState, setError } = useForm<Values>({
     defaultValues: { name: '', password: '' },
   });
-  const signInHref = `/sign-in?email=${encodeURIComponent(email)}&next=${encodeURIComponent(`/join/${id}`)}`;
 
   async function join(values: Values) {
     setProblem(null);
     try {
-      const path = await acceptInvitation(id, key, {
+      const path = await acceptInvitation(token, key, {
         ...values,
         name: values.name.trim().replace(/\s+/g, ' '),
       });
-      const { data } = await authClient.getSession();
-      if (!data) {
-        const answer = await askAuth(() => authClient.signIn.email({ email, password: values.password }));
-        if (answer.problem)
-          return router.replace(
-            `/sign-in?email=${encodeURIComponent(email)}&next=${encodeURIComponent(path)}`,
-          );
-      }
       router.replace(path);
       router.refresh();
     } catch (error) {
@@ -59,17 +47,13 @@ export function JoinAsNewPerson({ id, email }: { id: string; email: string }) {
 
   return (
     <form method="post" noValidate onSubmit={handleSubmit(join)} className="flex flex-col gap-4">
-      <p>
-        Have you been here before? <Link href={signInHref}>Sign in as {email}</Link>, and this invitation is
-        added to what you have.
-      </p>
       <input type="email" name="email" value={email} autoComplete="username" readOnly hidden />
       <Controlled
         control={control}
         name="name"
         rules={{
           validate: (value) => value.trim().length > 0 || 'Write your name.',
-          maxLength: { value: 120, message: 'Use 120 characters or fewer.' },
+          maxLength: { value: 80, message: 'Use 80 characters or fewer.' },
         }}
       >
         {(field) => (

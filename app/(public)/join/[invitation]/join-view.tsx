@@ -20,12 +20,14 @@ interface Reader {
   email: string;
 }
 
-export function JoinView({ id, person }: { id: string; person: Reader | null }) {
+export function JoinView({ token, person }: { token: string; person: Reader | null }) {
   const now = useNow();
   const { data, error } = useQuery({
-    queryKey: ['invitation', id],
+    queryKey: ['invitation', token],
     queryFn: async ({ signal }) =>
-      invitationSchema.parse(await api<unknown>(`/api/v1/invitations/${encodeURIComponent(id)}`, { signal })),
+      invitationSchema.parse(
+        await api<unknown>(`/api/v1/invitations/${encodeURIComponent(token)}`, { signal }),
+      ),
   });
 
   if (error) {
@@ -67,9 +69,10 @@ export function JoinView({ id, person }: { id: string; person: Reader | null }) 
   );
   return (
     <NarrowPage title={`Join ${place}`} lead={lead}>
-      {person === null ? <JoinAsNewPerson id={id} email={data.email} /> : null}
+      {person === null && data.hasAccount ? <SignInToJoin token={token} email={data.email} /> : null}
+      {person === null && !data.hasAccount ? <JoinAsNewPerson token={token} email={data.email} /> : null}
       {person && sameAddress(person.email, data.email) ? (
-        <JoinAsMember id={id} name={person.name} place={place} />
+        <JoinAsMember token={token} name={person.name} place={place} />
       ) : null}
       {person && !sameAddress(person.email, data.email) ? (
         <OtherPerson signedInAs={person.email} invited={data.email} />
@@ -80,6 +83,24 @@ export function JoinView({ id, person }: { id: string; person: Reader | null }) 
 
 function sameAddress(a: string, b: string): boolean {
   return a.trim().toLowerCase() === b.trim().toLowerCase();
+}
+
+function SignInToJoin({ token, email }: { token: string; email: string }) {
+  const here = `/join/${encodeURIComponent(token)}`;
+  return (
+    <div className="flex flex-col items-start gap-4">
+      <p>
+        <strong>{email}</strong> has been here before. Sign in, and the invitation is added to what you have.
+      </p>
+      <ButtonLink
+        href={`/sign-in?email=${encodeURIComponent(email)}&next=${encodeURIComponent(here)}`}
+        variant="primary"
+        size="roomy"
+      >
+        Sign in and join
+      </ButtonLink>
+    </div>
+  );
 }
 
 function OtherPerson({ signedInAs, invited }: { signedInAs: string; invited: string }) {

@@ -6,5 +6,5 @@ export const metadata: Metadata = { title: 'Invitation', referrer: 'no-referrer'
 
 export default async function JoinPage({ params }: { params: Promise<{ invitation: string }> }) {
   const [{ invitation }, person] = await Promise.all([params, currentPerson()]);
-  return <JoinView id={invitation} person={person ? { name: person.name, email: person.email } : null} />;
+  return <JoinView token={invitation} person={person ? { name: person.name, email: person.email } : null} />;
 }
