@@ -1,5 +1,6 @@
 import PgBoss from 'pg-boss';
 import { databaseEnv } from '@/lib/env/env';
+import { log } from '@/lib/log/log';
 
 let starting: Promise<PgBoss> | undefined;
 
@@ -21,7 +22,7 @@ export function boss({ supervise = false } = {}): Promise<PgBoss> {
       max: 3,
       application_name: 'firstpull-queue',
     });
-    made.on('error', () => undefined);
+    made.on('error', (error) => log().warn({ err: error }, 'queue'));
     await made.start();
     return made;
   })();

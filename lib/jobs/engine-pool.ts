@@ -1,6 +1,7 @@
 import path from 'node:path';
 import { MessageChannel } from 'node:worker_threads';
 import { Piscina } from 'piscina';
+import { log } from '@/lib/log/log';
 import type { Analysed, AnalyseTask, Inspected, InspectTask } from './engine-thread';
 
 export type OnProgress = (stage: string, fraction: number) => void;
@@ -19,15 +20,16 @@ export interface EnginePool {
 
 export function openEnginePool(threads: number): EnginePool {
   const pool = new Piscina({
-    filename: path.join(import.meta.dirname, 'engine-thread.ts'),
-    // The loader that runs TypeScript in this process runs it in the threads as well.
-    execArgv: process.execArgv,
+    filename: path.join(import.meta.dirname, 'engine-thread-entry.mjs'),
+    execArgv: [],
     minThreads: 1,
     maxThreads: threads,
     idleTimeout: 60_000,
     concurrentTasksPerWorker: 1,
     resourceLimits: { maxOldGenerationSizeMb: 3_072 },
   });
+  // A thread that dies takes its own run with it, and the run's promise says so; the process lives on.
+  pool.on('error', (error) => log().error({ err: error }, 'engine thread died'));
   return {
     inspect: (task, signal) =>
       pool.run(task, { name: 'inspectMesh', signal, transferList: [task.bytes.buffer as ArrayBuffer] }),
