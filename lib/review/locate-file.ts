@@ -16,7 +16,8 @@ export async function locateFile(
   revisionId: string,
   file: RevisionFile,
 ): Promise<string> {
-  requirePermission(ctx, 'workspace.read');
+  // The model on the page is for everyone; the exact bytes are what is made from.
+  requirePermission(ctx, file === 'mesh' ? 'pack.download' : 'workspace.read');
   const id = asId(revisionId, 'revision');
   const found = await withTenant(ctx, async (tx) => {
     const revision = await findRevision(tx, ctx.workspace.id, id);
