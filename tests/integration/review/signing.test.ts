@@ -1,0 +1,414 @@
+import { sql } from 'drizzle-orm';
+import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import { withTenant } from '@/db/tenant';
+import { digestOf } from '@/lib/audit/canonical';
+import type { WorkspaceContext } from '@/lib/auth/context';
+import { loadAgreed } from '@/lib/review/load-agreed';
+import { replyToThread } from '@/lib/review/reply-to-thread';
+import { returnGate } from '@/lib/review/return-gate';
+import { signGate } from '@/lib/review/sign-gate';
+import { viewContent } from '@/lib/review/view-content';
+import { viewDocket } from '@/lib/review/view-docket';
+import { viewRevision } from '@/lib/review/view-revision';
+import { waiveFinding } from '@/lib/review/waive-finding';
+import { withdrawRevision } from '@/lib/review/withdraw-revision';
+import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
+import {
+  approved,
+  entries,
+  fingerprint,
+  gateOf,
+  mailsOf,
+  note,
+  post,
+  postChecked,
+  raise,
+  runCheck,
+  shown,
+  sign,
+} from '@/tests/support/factory';
+import { makeHouse, testPassword, type House } from '@/tests/support/make-house';
+
+let database: FreshDatabase;
+let house: House;
+let designer: WorkspaceContext;
+let lead: WorkspaceContext;
+let approver: WorkspaceContext;
+
+beforeAll(async () => {
+  database = await freshDatabase();
+  house = await makeHouse(database);
+});
+beforeEach(async () => {
+  [designer, lead, approver] = await Promise.all([
+    house.enter('designer'),
+    house.enter('lead'),
+    house.enter('approver'),
+  ]);
+});
+
+async function refused(run: () => Promise<unknown>, expected: Record<string, unknown>): Promise<void> {
+  const before = await fingerprint(database, house.workspace.id);
+  await expect(run()).rejects.toMatchObject(expected);
+  expect(await fingerprint(database, house.workspace.id)).toBe(before);
+}
+
+describe('signing', () => {
+  it('records name, role, meaning, time, zone and digest, and tells who is next', async () => {
+    const { revisionId } = await postChecked(house);
+    const studio = await gateOf(lead, revisionId, 'studio');
+    expect(studio.awaited).toEqual([lead.person.name]);
+    const { digest, password } = await shown(lead, revisionId);
+    const { rows: before } = await database.query<{ now: Date }>('select clock_timestamp() as now');
+    const result = await signGate(lead, studio.id, { digest, password });
+    const { rows: after } = await database.query<{ now: Date }>('select clock_timestamp() as now');
+    expect(result).toMatchObject({
+      gatePassed: true,
+      locked: false,
+      signature: {
+        decision: 'sign',
+        printedName: lead.person.name,
+        role: 'lead',
+        meaning: studio.meaning,
+        contentDigest: digest,
+        timeZone: lead.person.timeZone,
+      },
+    });
+    const at = new Date(result.signature.signedAt).getTime();
+    expect(at).toBeGreaterThanOrEqual(before[0].now.getTime() - 1);
+    expect(at).toBeLessThanOrEqual(after[0].now.getTime() + 1);
+
+    const [entry] = await entries(database, house.workspace.id, 1);
+    expect(entry).toMatchObject({ action: 'gate.signed', subject_id: revisionId });
+    expect(entry.detail).toMatchObject({
+      gate: 'Studio',
+      contentDigest: digest,
+      signatureId: result.signature.id,
+    });
+    expect(JSON.stringify(entry)).not.toContain(testPassword);
+
+    const waits = (await mailsOf(database, house.workspace.id, 'gate-waits')).filter(
+      (mail) => mail.payload.gateName === 'Client' && String(mail.payload.path).length > 0,
+    );
+    expect(waits.at(-1)?.person).toBe(approver.person.id);
+    expect((await gateOf(lead, revisionId, 'client')).awaited).toEqual([approver.person.name]);
+  });
+
+  it('stores the very digest that was shown, over the content that can be recomputed', async () => {
+    const { revisionId } = await postChecked(house);
+    const { digest, content, summary } = await viewContent(lead, revisionId);
+    expect(digestOf(content)).toBe(digest);
+    expect(summary).toMatchObject({ verdict: 'pass', gatePlan: 'Plan 1: Forming, Studio, Client' });
+    expect(summary.recipe.length).toBeGreaterThan(8);
+    expect((await viewRevision(lead, revisionId)).contentDigest).toBe(digest);
+  });
+
+  it('is refused for another digest, and says what to do', async () => {
+    const { revisionId } = await postChecked(house);
+    const { id } = await gateOf(lead, revisionId, 'studio');
+    const seen = await shown(lead, revisionId);
+    await raise(approver, revisionId, 'One more thing.');
+    await refused(() => signGate(lead, id, seen), {
+      code: 'conflict',
+      reason: 'content-changed',
+      message: expect.stringContaining('Nothing was signed'),
+    });
+    expect((await sign(lead, revisionId)).gatePassed).toBe(true);
+  });
+
+  it('is refused with a wrong password, which is never written down', async () => {
+    const { revisionId } = await postChecked(house);
+    const { id } = await gateOf(lead, revisionId, 'studio');
+    const { digest } = await shown(lead, revisionId);
+    await refused(() => signGate(lead, id, { digest, password: 'not the right one' }), {
+      code: 'forbidden',
+      reason: 'wrong-password',
+    });
+    await refused(() => signGate(lead, id, { digest: 'short', password: '' }), { code: 'invalid' });
+  });
+
+  it('keeps four eyes: the author never signs, not even as designer among designers', async () => {
+    const posted = await post(lead);
+    await runCheck(house.workspace.id, posted.revisionId);
+    const { id, awaited } = await gateOf(lead, posted.revisionId, 'studio');
+    expect(awaited).toEqual([designer.person.name]);
+    const seen = await shown(lead, posted.revisionId);
+    await refused(() => signGate(lead, id, seen), { code: 'forbidden', reason: 'four-eyes' });
+    await sign(designer, posted.revisionId);
+  });
+
+  it('asks each gate for its own roles, in order', async () => {
+    const { revisionId } = await postChecked(house);
+    const studio = await gateOf(lead, revisionId, 'studio');
+    const client = await gateOf(lead, revisionId, 'client');
+    const seen = await shown(lead, revisionId);
+    await refused(() => signGate(approver, studio.id, seen), { code: 'forbidden', reason: 'role' });
+    await refused(() => signGate(approver, client.id, seen), { code: 'conflict', reason: 'gate-not-open' });
+    const forming = await gateOf(lead, revisionId, 'forming');
+    await refused(() => signGate(lead, forming.id, seen), { code: 'conflict', reason: 'automatic-gate' });
+    await signGate(lead, studio.id, seen);
+    await refused(() => signGate(lead, studio.id, seen), { code: 'conflict', reason: 'already-signed' });
+    await refused(() => signGate(lead, client.id, seen), { code: 'forbidden', reason: 'role' });
+  });
+
+  it('is refused before the check has finished and while a failing finding is open', async () => {
+    const { revisionId } = await post(designer);
+    await expect(viewContent(lead, revisionId)).rejects.toMatchObject({ reason: 'check-not-finished' });
+    const failing = await postChecked(house, { statuses: { draft: 'fail', undercut: 'fail' } });
+    const { id } = await gateOf(lead, failing.revisionId, 'studio');
+    const seen = await shown(lead, failing.revisionId);
+    await refused(() => signGate(lead, id, seen), { code: 'conflict', reason: 'gate-not-open' });
+  });
+
+  it('shuts the gate while an item must be settled, and names the item', async () => {
+    const { revisionId } = await postChecked(house);
+    const thread = await raise(approver, revisionId, 'The rim is too thin.', { mustSettle: true });
+    const { id } = await gateOf(lead, revisionId, 'studio');
+    const seen = await shown(lead, revisionId);
+    await refused(() => signGate(lead, id, seen), {
+      code: 'conflict',
+      reason: 'must-settle',
+      message: 'Studio stays shut: one item must be settled first.',
+      errors: [{ pointer: `/threads/${thread.id}`, detail: `${approver.person.name}: The rim is too thin.` }],
+    });
+  });
+
+  it('counts a role as it is at that moment, not as the page had it', async () => {
+    const { revisionId } = await postChecked(house);
+    const { id } = await gateOf(lead, revisionId, 'studio');
+    const seen = await shown(lead, revisionId);
+    await database.query("update members set role = 'producer' where user_id = $1 and workspace_id = $2", [
+      lead.person.id,
+      house.workspace.id,
+    ]);
+    try {
+      await expect(signGate(lead, id, seen)).rejects.toMatchObject({ code: 'forbidden', reason: 'role' });
+    } finally {
+      await database.query("update members set role = 'lead' where user_id = $1 and workspace_id = $2", [
+        lead.person.id,
+        house.workspace.id,
+      ]);
+    }
+  });
+});
+
+describe('the last signature', () => {
+  it('locks content and docket, approves, supersedes the older approved one and mails everybody', async () => {
+    const first = await approved(house);
+    const second = await approved(house, first.templateId);
+    expect(await viewRevision(lead, first.revisionId)).toMatchObject({
+      state: 'superseded',
+      stateReason: 'Superseded by B.',
+    });
+    const view = await viewRevision(lead, second.revisionId);
+    expect(view.gates.every((gate) => gate.state === 'passed')).toBe(true);
+    const agreed = await loadAgreed(lead, second.revisionId);
+    expect(view.contentDigest).toBe(agreed.lock.contentDigest);
+    expect(digestOf(agreed.lock.content)).toBe(agreed.lock.contentDigest);
+    expect(digestOf(agreed.report.body)).toBe(agreed.report.sha256);
+    expect(digestOf(agreed.recipe.body)).toBe(agreed.recipe.digest);
+    expect(agreed.lock.docket.findings.length).toBe(agreed.lock.content.docket.findings.length);
+    const mails = (await mailsOf(database, house.workspace.id, 'revision-signed')).filter(
+      ({ payload }) => payload.locked && payload.digest === agreed.lock.contentDigest,
+    );
+    expect(new Set(mails.map((mail) => mail.person))).toEqual(
+      new Set(Object.values(house.people).map(({ person }) => person.id)),
+    );
+  });
+
+  it('keeps what is said afterwards apart, and outside the digest', async () => {
+    const { revisionId } = await postChecked(house);
+    const open = await raise(approver, revisionId, 'Nice.');
+    await sign(lead, revisionId);
+    await sign(approver, revisionId);
+    const { contentDigest } = await viewRevision(lead, revisionId);
+    await refused(() => replyToThread(lead, open.id, note('Too late.')), { reason: 'revision-locked' });
+    const later = await raise(lead, revisionId, 'For the next time.', { mustSettle: true });
+    expect(later).toMatchObject({ afterApproval: true, mustSettle: false });
+    await replyToThread(approver, later.id, note('Noted.'));
+    expect((await viewContent(lead, revisionId)).digest).toBe(contentDigest);
+    const agreed = await loadAgreed(lead, revisionId);
+    expect(agreed.lock.docket.threads.map((thread) => thread.id)).toEqual([open.id]);
+  });
+
+  it('lets open items of a locked docket go on with the next revision', async () => {
+    const a = await postChecked(house);
+    const open = await raise(approver, a.revisionId, 'A softer edge, one day.', {
+      pin: { at: [0, 0, 20], normal: [0, 0, 1], view: null },
+    });
+    await sign(lead, a.revisionId);
+    await sign(approver, a.revisionId);
+    const later = await raise(approver, a.revisionId, 'And a chamfer.');
+    const b = await postChecked(house, { templateId: a.templateId });
+    const { threads } = await viewDocket(lead, b.revisionId);
+    expect(
+      threads.map(({ standing, afterApproval, notes }) => [standing, afterApproval, notes[0].text]),
+    ).toEqual([
+      ['carried', false, 'A softer edge, one day.'],
+      ['free', false, 'And a chamfer.'],
+    ]);
+    expect(threads.map((thread) => thread.id)).not.toContain(open.id);
+    const answered = await replyToThread(designer, threads[0].id, note('It is in B.'));
+    expect(answered.notes.map((one) => one.text)).toEqual(['A softer edge, one day.', 'It is in B.']);
+    expect((await viewDocket(lead, a.revisionId)).threads.map((thread) => thread.id)).toEqual([
+      open.id,
+      later.id,
+    ]);
+    await sign(lead, b.revisionId);
+    await sign(approver, b.revisionId);
+    const c = await postChecked(house, { templateId: a.templateId });
+    const again = (await viewDocket(lead, c.revisionId)).threads;
+    expect(again[0].notes.map((one) => one.text)).toEqual(['A softer edge, one day.', 'It is in B.']);
+  });
+});
+
+describe('returning and withdrawing', () => {
+  it('returns with a reason: gates close, everybody is told, the name stays', async () => {
+    const { revisionId, templateId } = await postChecked(house);
+    await sign(lead, revisionId);
+    const { id } = await gateOf(approver, revisionId, 'client');
+    const seen = await shown(approver, revisionId);
+    await returnGate(approver, id, { ...seen, reason: 'The logo is mirrored.' });
+    const view = await viewRevision(lead, revisionId);
+    expect(view).toMatchObject({ state: 'returned', stateReason: 'The logo is mirrored.', lockedAt: null });
+    expect(view.gates.map((gate) => gate.state)).toEqual(['passed', 'passed', 'returned']);
+    expect(view.gates[2].signatures[0]).toMatchObject({
+      decision: 'return',
+      reason: 'The logo is mirrored.',
+    });
+    expect(await mailsOf(database, house.workspace.id, 'revision-returned')).toHaveLength(5);
+    await refused(() => signGate(approver, id, seen), { code: 'conflict' });
+    const next = await postChecked(house, { templateId });
+    expect(next.letter).toBe('B');
+    expect((await viewRevision(lead, revisionId)).state).toBe('returned');
+  });
+
+  it('withdraws by the author before the first signature only', async () => {
+    const { revisionId } = await postChecked(house);
+    await refused(() => withdrawRevision(lead, revisionId, { reason: 'Not mine.' }), {
+      code: 'forbidden',
+      reason: 'not-the-author',
+    });
+    expect((await viewRevision(designer, revisionId)).can.withdraw).toBe(true);
+    await sign(lead, revisionId);
+    expect((await viewRevision(designer, revisionId)).can.withdraw).toBe(false);
+    await refused(() => withdrawRevision(designer, revisionId, { reason: 'Too late.' }), {
+      code: 'conflict',
+      reason: 'already-signed',
+    });
+    const other = await postChecked(house);
+    await withdrawRevision(designer, other.revisionId, { reason: 'Wrong file.' });
+    const view = await viewRevision(lead, other.revisionId);
+    expect(view).toMatchObject({ state: 'withdrawn', stateReason: 'Wrong file.' });
+    expect(view.gates.map((gate) => gate.state)).toEqual(['passed', 'closed', 'closed']);
+    await refused(() => withdrawRevision(designer, other.revisionId, { reason: 'Again.' }), {
+      reason: 'not-in-review',
+    });
+  });
+
+  it('closes a signed revision when the next one is posted, with its names still to be seen', async () => {
+    const a = await postChecked(house);
+    await sign(lead, a.revisionId);
+    await postChecked(house, { templateId: a.templateId });
+    const view = await viewRevision(lead, a.revisionId);
+    expect(view).toMatchObject({ state: 'withdrawn', stateReason: 'Replaced by B.' });
+    expect(view.gates[1].signatures).toHaveLength(1);
+  });
+});
+
+describe('waiving', () => {
+  it('opens the way when every failing finding is waived, with reasons that stay', async () => {
+    const { revisionId } = await postChecked(house, { statuses: { draft: 'fail', undercut: 'fail' } });
+    const failing = (await viewDocket(lead, revisionId)).findings.filter(({ status }) => status === 'fail');
+    expect(failing).toHaveLength(2);
+    const reason = 'The part is pulled off by hand; it has worked.';
+    const one = await waiveFinding(lead, failing[0].id, { reason });
+    expect(one.counts.mustSettle).toBe(1);
+    expect((await gateOf(lead, revisionId, 'forming')).state).toBe('open');
+    await refused(() => waiveFinding(lead, failing[0].id, { reason }), { reason: 'already-waived' });
+    await waiveFinding(lead, failing[1].id, { reason });
+    const view = await viewRevision(lead, revisionId);
+    expect(view.gates.map((gate) => gate.state)).toEqual(['passed', 'open', 'waiting']);
+    expect(view.check.verdict).toBe('fail');
+    const [entry] = await entries(database, house.workspace.id, 1);
+    expect(entry).toMatchObject({ action: 'finding.waived', detail: { reason, gatesPassed: ['Forming'] } });
+    const { summary } = await viewContent(lead, revisionId);
+    expect(summary.findings.find(({ checkId }) => checkId === 'draft')?.waived).toBe(
+      `${lead.person.name}: ${reason}`,
+    );
+  });
+
+  it('is only for a failing finding of a revision in review, with a reason', async () => {
+    const { revisionId } = await postChecked(house, { statuses: { draft: 'caution' } });
+    const { findings } = await viewDocket(lead, revisionId);
+    const caution = findings.find(({ status }) => status === 'caution')!;
+    await refused(() => waiveFinding(lead, caution.id, { reason: 'It is fine by me.' }), {
+      reason: 'not-failing',
+    });
+    await refused(() => waiveFinding(lead, caution.id, { reason: 'ok' }), { code: 'invalid' });
+    await withdrawRevision(designer, revisionId, { reason: 'Wrong file.' });
+    await refused(() => waiveFinding(lead, caution.id, { reason: 'It is fine by me.' }), {
+      reason: 'not-in-review',
+    });
+  });
+});
+
+describe('what was agreed', () => {
+  it('is refused to change by the database itself, for the application’s own role', async () => {
+    const { revisionId, templateId } = await postChecked(house);
+    const thread = await raise(approver, revisionId, 'Agreed so.');
+    await sign(lead, revisionId);
+    await sign(approver, revisionId);
+    const attempts: [string, ReturnType<typeof sql>][] = [
+      [
+        'mesh of the revision',
+        sql`update revisions set mesh_id = gen_random_uuid() where id = ${revisionId}`,
+      ],
+      [
+        'recipe of the revision',
+        sql`update revisions set recipe_id = gen_random_uuid() where id = ${revisionId}`,
+      ],
+      ['letter', sql`update revisions set letter = 'Z' where id = ${revisionId}`],
+      ['note', sql`update revisions set note = 'x' where id = ${revisionId}`],
+      ['author', sql`update revisions set author_name = 'x' where id = ${revisionId}`],
+      ['back to review', sql`update revisions set state = 'in_review' where id = ${revisionId}`],
+      ['delete', sql`delete from revisions where id = ${revisionId}`],
+      ['mesh bytes', sql`update meshes set sha256 = 'x' where template_id = ${templateId}`],
+      ['mesh key', sql`update meshes set store_key = 'x' where template_id = ${templateId}`],
+      ['recipe', sql`update recipes set body = '{}'`],
+      ['report', sql`update reports set body = '{}'`],
+      ['finding', sql`update findings set status = 'pass' where revision_id = ${revisionId}`],
+      ['signature', sql`update signatures set printed_name = 'x' where revision_id = ${revisionId}`],
+      ['signature away', sql`delete from signatures where revision_id = ${revisionId}`],
+      ['lock', sql`update locks set content_digest = 'x' where revision_id = ${revisionId}`],
+      ['lock away', sql`delete from locks where revision_id = ${revisionId}`],
+      ['gate', sql`update gates set state = 'open' where revision_id = ${revisionId}`],
+      ['check run', sql`update check_runs set verdict = 'fail' where revision_id = ${revisionId}`],
+      ['thread', sql`update threads set state = 'settled' where id = ${thread.id}`],
+      ['pin', sql`update placements set pin = null where thread_id = ${thread.id}`],
+      ['note text', sql`update notes set text = 'x' where thread_id = ${thread.id}`],
+      [
+        'a note more',
+        sql`insert into notes (id, workspace_id, thread_id, revision_id, body, text, author_id, author_name, client_key)
+        values (gen_random_uuid(), ${house.workspace.id}, ${thread.id}, ${revisionId}, '{}', 'x', ${lead.person.id}, 'x', gen_random_uuid())`,
+      ],
+      [
+        'a waiver more',
+        sql`insert into waivers (id, workspace_id, revision_id, finding_id, reason, waived_by, waived_by_name)
+        select gen_random_uuid(), workspace_id, revision_id, id, 'x', ${lead.person.id}, 'x' from findings where revision_id = ${revisionId} limit 1`,
+      ],
+      ['all locks', sql`truncate locks`],
+      ['all signatures', sql`truncate signatures cascade`],
+      ['the trigger', sql`alter table locks disable trigger frozen_row`],
+      ['replication', sql`set session_replication_role = replica`],
+    ];
+    const before = await fingerprint(database, house.workspace.id);
+    for (const [what, attempt] of attempts) {
+      const run = withTenant(lead, (tx) => tx.execute(attempt));
+      await expect(run, what).rejects.toMatchObject({
+        cause: { code: expect.stringMatching(/^(42501|23001|23514)$/) },
+      });
+    }
+    expect(await fingerprint(database, house.workspace.id)).toBe(before);
+  });
+});
