@@ -18,6 +18,17 @@ export type BootstrapInput = {
   template?: string;
 };
 
+/** Removes a database with all that is in it, ending the connections to it. */
+export async function dropDatabase(adminUrl: string, database: string): Promise<void> {
+  const admin = new Client({ connectionString: adminUrl });
+  await admin.connect();
+  try {
+    await admin.query(`drop database if exists ${escapeIdentifier(database)} with (force)`);
+  } finally {
+    await admin.end();
+  }
+}
+
 /**
  * Makes the roles and the database, once; running it again only sets the passwords anew.
  * The owner migrates; the other three own nothing and cannot bypass row policies.

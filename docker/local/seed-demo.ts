@@ -12,6 +12,13 @@ export interface DemoSignIn {
   role: string;
 }
 
+const begunFile = (dataFolder: string) => path.join(dataFolder, 'demo-begun.json');
+
+/** True when a seed was begun and never came to its end: nobody has worked in that database yet. */
+export function seedBrokeOff(dataFolder: string): boolean {
+  return existsSync(begunFile(dataFolder)) && !existsSync(path.join(dataFolder, 'demo.json'));
+}
+
 /**
  * Seeds the demo studio, once per data folder, in a process of its own.
  * @returns the people who can sign in
@@ -22,7 +29,10 @@ export async function seedDemoOnce(
   logFile: string,
 ): Promise<DemoSignIn[]> {
   const file = path.join(dataFolder, 'demo.json');
-  if (!existsSync(file)) writeOwnerOnly(file, await runSeed(env, logFile));
+  if (!existsSync(file)) {
+    writeOwnerOnly(begunFile(dataFolder), new Date().toISOString());
+    writeOwnerOnly(file, await runSeed(env, logFile));
+  }
   return JSON.parse(readFileSync(file, 'utf8')) as DemoSignIn[];
 }
 

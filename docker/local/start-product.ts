@@ -1,5 +1,5 @@
 import path from 'node:path';
-import { bootstrapDatabase } from '@/db/bootstrap';
+import { bootstrapDatabase, dropDatabase } from '@/db/bootstrap';
 import { migrate } from '@/db/migrate';
 import { defineApp } from './app';
 import { buildApp } from './build-app';
@@ -9,7 +9,7 @@ import { definePostgres, type Postgres } from './postgres';
 import { databaseName, productEnvironment, type ProductEnvironment } from './product-environment';
 import { defineRealtime } from './realtime';
 import { openSecrets } from './secrets';
-import { seedDemoOnce, type DemoSignIn } from './seed-demo';
+import { seedBrokeOff, seedDemoOnce, type DemoSignIn } from './seed-demo';
 import type { Service, ServiceEvents } from './service';
 import type { StepPrinter } from './setup/step-line.mjs';
 import { defineStore } from './store';
@@ -91,6 +91,7 @@ export async function startProduct(options: ProductOptions, started: Service[]):
     'schema',
     async () => {
       const passwords = secrets.databaseRoles;
+      if (demo && seedBrokeOff(dataFolder)) await dropDatabase(database.adminUrl, databaseName);
       await bootstrapDatabase({ adminUrl: database.adminUrl, database: databaseName, passwords });
       await migrate(env.ownerUrl);
     },
@@ -126,6 +127,12 @@ export async function startProduct(options: ProductOptions, started: Service[]):
     () => defineRealtime({ port: ports.realtime, ...secrets.realtime, logFile: logOf('realtime'), events }),
     () => `on port ${ports.realtime}`,
   );
+  const worker = await up(
+    'worker',
+    () => defineWorker({ env: env.worker, dev, logFile: logOf('worker'), echo: echo('worker'), events }),
+    () => 'running',
+  );
+  // The seed posts real files, which the running worker reads and checks.
   const people = demo
     ? await printer.step(
         'demo studio',
@@ -133,11 +140,6 @@ export async function startProduct(options: ProductOptions, started: Service[]):
         (all) => `${all.length} people`,
       )
     : [];
-  const worker = await up(
-    'worker',
-    () => defineWorker({ env: env.worker, dev, logFile: logOf('worker'), echo: echo('worker'), events }),
-    () => 'running',
-  );
   const app = await up(
     'application',
     () =>
