@@ -17,6 +17,7 @@ export function AddNote({ isOpen, onOpen }: { isOpen: boolean; onOpen: (isOpen: 
   if (!revision.can.note) {
     return waiting.map((entry) => <OutgoingNoteEntry key={entry.clientKey} entry={entry} />);
   }
+  if (!isOpen && waiting.length === 0) return null;
   return (
     <div className="flex flex-col gap-3 print:hidden">
       {isOpen ? (
@@ -45,11 +46,7 @@ export function AddNote({ isOpen, onOpen }: { isOpen: boolean; onOpen: (isOpen: 
             )}
           </NoteComposer>
         </section>
-      ) : (
-        <Button onPress={() => onOpen(true)} className="self-start">
-          Add a note
-        </Button>
-      )}
+      ) : null}
       {waiting.map((entry) => (
         <OutgoingNoteEntry key={entry.clientKey} entry={entry} />
       ))}

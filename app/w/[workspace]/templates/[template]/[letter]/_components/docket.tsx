@@ -47,13 +47,20 @@ export function Docket({ items, filter, onFilter, filterRef, adding, onAdding }:
   const nothing = isFiltered && groupOrder.every((group) => shown[group].length === 0);
   return (
     <section aria-labelledby="docket-title" className="flex flex-col gap-3">
-      <div className="flex flex-wrap items-baseline gap-x-2.5">
-        <h2 id="docket-title" className="text-lg font-semibold">
-          Docket
-        </h2>
-        <p className="text-base text-slate" role="status">
-          {docketSentence(all, revision.gates)}
-        </p>
+      <div className="flex items-start justify-between gap-x-4">
+        <div className="flex flex-wrap items-baseline gap-x-2.5">
+          <h2 id="docket-title" className="text-lg font-semibold">
+            Docket
+          </h2>
+          <p className="text-base text-slate" role="status">
+            {docketSentence(all, revision.gates)}
+          </p>
+        </div>
+        {revision.can.note && !adding ? (
+          <Button onPress={() => onAdding(true)} className="shrink-0 print:hidden">
+            Add a note
+          </Button>
+        ) : null}
       </div>
       <DocketFilterBar filter={filter} onFilter={onFilter} inputRef={filterRef} />
       <AddNote isOpen={adding} onOpen={onAdding} />

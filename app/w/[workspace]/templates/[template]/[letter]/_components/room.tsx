@@ -34,9 +34,15 @@ export interface RoomProps {
 }
 
 /** One revision: identity, gates, model, section and docket, and everything that can be done with it. */
-export function Room({ workspace, reader, revision: first, docket: firstDocket, loadedAt }: RoomProps) {
-  const { data: revision } = useRevision(workspace.id, first, loadedAt);
-  const { data: docket } = useDocket(workspace.id, firstDocket, loadedAt);
+export function Room({
+  workspace,
+  reader,
+  revision: givenRevision,
+  docket: givenDocket,
+  loadedAt,
+}: RoomProps) {
+  const { data: revision } = useRevision(workspace.id, givenRevision, loadedAt);
+  const { data: docket } = useDocket(workspace.id, givenDocket, loadedAt);
   const people = usePeople(workspace.id);
   usePresence(workspace.id, revision.id);
   const { units } = usePreferences();
@@ -47,9 +53,10 @@ export function Room({ workspace, reader, revision: first, docket: firstDocket, 
 
   const meta = revision.model ? (revision.model.meta as unknown as StageModelMeta) : null;
   const bounds = meta?.boundsMm ?? null;
-  const focus = useStageFocus(bounds);
   const items = docketItems(docket);
   const groups = byGroup(items);
+  const first = [...groups.settle, ...groups.look, ...groups.settled].map(placeOf).find(Boolean) ?? null;
+  const focus = useStageFocus(bounds, first);
   const pins = bounds ? stagePins(items, bounds, units) : [];
   const failing = groups.settle.filter(
     (item) => item.finding?.status === 'fail' && !item.finding.waiver,

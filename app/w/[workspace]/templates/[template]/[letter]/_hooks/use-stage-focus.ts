@@ -6,8 +6,11 @@ import type { Point, StageCamera } from '@/app/_components/stage/stage-props';
 import type { SectionLine } from '@/lib/stage-model/section';
 import { viewOf, type Bounds } from '../_components/stage-pins';
 
-/** What the stage looks at, where it is cut, and whether it waits for somebody to name a place. */
-export function useStageFocus(bounds: Bounds | null) {
+/**
+ * What the stage looks at, where it is cut, and whether it waits for somebody to name a place. Until somebody
+ * moves it, the cut goes through `start`, the first place that the docket names.
+ */
+export function useStageFocus(bounds: Bounds | null, start: Point | null) {
   const [view, setView] = useState<StageCamera | null>(null);
   const [highlight, setHighlight] = useState<Point | null>(null);
   const [activePin, setActivePin] = useState<string | null>(null);
@@ -15,7 +18,7 @@ export function useStageFocus(bounds: Bounds | null) {
   const [placing, setPlacing] = useState(false);
   const taker = useRef<((pin: NotePin | null) => void) | null>(null);
   const shownLine: SectionLine | null =
-    line ?? (bounds ? { axis: 'y', atMm: round((bounds.min[1] + bounds.max[1]) / 2) } : null);
+    line ?? (bounds ? { axis: 'y', atMm: round(start?.[1] ?? (bounds.min[1] + bounds.max[1]) / 2) } : null);
 
   const settle = (pin: NotePin | null) => {
     setPlacing(false);
