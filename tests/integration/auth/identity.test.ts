@@ -1,0 +1,238 @@
+import { beforeAll, describe, expect, it } from 'vitest';
+import { GET, POST } from '@/app/api/auth/[...all]/route';
+import { GET as getMe } from '@/app/api/v1/me/route';
+import { signInAttempts } from '@/lib/auth/auth-hooks';
+import { callRoute, cookieOf } from '@/tests/support/call-route';
+import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
+import { makePerson, testPassword } from '@/tests/support/make-house';
+
+let database: FreshDatabase;
+beforeAll(async () => {
+  database = await freshDatabase();
+});
+
+const post = (path: string, body: unknown, cookie?: string) =>
+  callRoute(POST, { path: `/api/auth${path}`, body, cookie });
+const get = (path: string, cookie?: string) => callRoute(GET, { path: `/api/auth${path}`, cookie });
+const me = (cookie: string) => callRoute(getMe, { cookie });
+
+/** Mails to an address, oldest first, as they wait in the outbox. */
+async function mailsTo(email: string) {
+  const { rows } = await database.query<{ payload: { template: string; url: string } }>(
+    `select payload from outbox where payload->'to'->>'email' = $1 order by created_at`,
+    [email],
+  );
+  return rows.map((row) => row.payload);
+}
+const pathOf = (url: string) => url.slice(url.indexOf('/api/auth') + '/api/auth'.length);
+
+async function signUp(email: string) {
+  await post('/sign-up/email', { email, name: 'Una Novak', password: testPassword });
+  const [mail] = await mailsTo(email);
+  return mail;
+}
+
+describe('signing up', () => {
+  it('proves the address by the mailed link before anything opens', async () => {
+    const mail = await signUp('una@example.test');
+    expect(mail.template).toBe('verify-address');
+    const early = await post('/sign-in/email', { email: 'una@example.test', password: testPassword });
+    expect(early.status).toBe(403);
+    const verified = await get(pathOf(mail.url));
+    expect(verified.status).toBe(302);
+    expect(await (await me(cookieOf(verified))).json()).toMatchObject({
+      person: { email: 'una@example.test', name: 'Una Novak', units: 'mm' },
+      studios: [],
+      workspaces: [],
+    });
+  });
+
+  it('answers alike for a known and an unknown address', async () => {
+    const known = await makePerson('Known');
+    const body = { name: 'Somebody', password: testPassword };
+    const answers = [
+      await post('/sign-up/email', { ...body, email: known.person.email }),
+      await post('/sign-up/email', { ...body, email: 'unknown@example.test' }),
+    ];
+    expect(answers.map((answer) => answer.status)).toEqual([200, 200]);
+    const [a, b] = (await Promise.all(answers.map((answer) => answer.json()))) as { user: object }[];
+    expect(Object.keys(a.user).sort()).toEqual(Object.keys(b.user).sort());
+    expect(await mailsTo(known.person.email)).toEqual([]);
+  });
+
+  it.each([
+    ['a password of eleven characters', { password: 'x'.repeat(11) }],
+    ['a password of 129 characters', { password: 'x'.repeat(129) }],
+    ['an empty name', { name: ' ' }],
+    ['a name of two lines', { name: 'a\nb' }],
+    ['a field that is not asked for', { emailVerified: true }],
+    ['a picture', { image: 'https://example.test/x.png' }],
+    ['a role', { role: 'lead' }],
+  ])('refuses %s', async (_what, change) => {
+    const email = 'refused@example.test';
+    const answer = await post('/sign-up/email', { email, name: 'Una', password: testPassword, ...change });
+    expect(answer.status).toBe(400);
+    const { rows } = await database.query('select 1 from users where email = $1', [email]);
+    expect(rows).toEqual([]);
+  });
+
+  it('keeps spaces and letters of every script in a password', async () => {
+    const password = '  Überraschung 日本 ' + 'x'.repeat(60);
+    const email = 'wide@example.test';
+    await post('/sign-up/email', { email, name: 'Wide', password });
+    await get(pathOf((await mailsTo(email))[0].url));
+    expect((await post('/sign-in/email', { email, password })).status).toBe(200);
+    const cut = await post('/sign-in/email', { email, password: password.trim() });
+    expect(cut.status).toBe(401);
+    const differentEnd = await post('/sign-in/email', { email, password: password.slice(0, -1) + 'y' });
+    expect(differentEnd.status).toBe(401);
+  });
+});
+
+describe('signing in', () => {
+  it('answers alike for a wrong password and an unknown address', async () => {
+    const { person } = await makePerson('Wrong');
+    const wrong = await post('/sign-in/email', { email: person.email, password: 'not the password at all' });
+    const nobody = await post('/sign-in/email', {
+      email: 'nobody@example.test',
+      password: 'not the password at all',
+    });
+    expect([wrong.status, nobody.status]).toEqual([401, 401]);
+    expect(await wrong.json()).toEqual(await nobody.json());
+  });
+
+  it('sets one cookie that scripts cannot read', async () => {
+    const { person } = await makePerson('Cookie');
+    const answer = await post('/sign-in/email', { email: person.email, password: testPassword });
+    const [cookie, ...others] = answer.headers.getSetCookie();
+    expect(others).toEqual([]);
+    expect(cookie).toMatch(/^firstpull\.session_token=/);
+    expect(cookie).toMatch(/HttpOnly/);
+    expect(cookie).toMatch(/SameSite=Lax/i);
+    expect(cookie).toMatch(/Path=\//);
+    expect(cookie).not.toMatch(/Domain=/i);
+  });
+
+  it('stores no address of the caller from a header that nobody vouches for', async () => {
+    const { person } = await makePerson('Header');
+    await callRoute(POST, {
+      path: '/api/auth/sign-in/email',
+      body: { email: person.email, password: testPassword },
+      headers: { 'x-forwarded-for': '203.0.113.9' },
+    });
+    const { rows } = await database.query<{ n: number }>(
+      `select count(*)::int as n from sessions where ip_address like '203.0.113%'`,
+    );
+    expect(rows[0].n).toBe(0);
+  });
+
+  it('closes for an address after too many wrong passwords, whatever the caller says it is', async () => {
+    const { person } = await makePerson('Target');
+    const statuses: number[] = [];
+    for (let i = 0; i <= signInAttempts; i++) {
+      const answer = await callRoute(POST, {
+        path: '/api/auth/sign-in/email',
+        body: { email: i % 2 ? person.email : person.email.toUpperCase(), password: 'wrong wrong wrong' },
+        headers: { 'x-forwarded-for': `203.0.113.${i}` },
+      });
+      statuses.push(answer.status);
+      if (answer.status === 429) expect(Number(answer.headers.get('retry-after'))).toBeGreaterThan(0);
+    }
+    expect(statuses.slice(0, signInAttempts).every((status) => status === 401)).toBe(true);
+    expect(statuses.at(-1)).toBe(429);
+    const right = await post('/sign-in/email', { email: person.email, password: testPassword });
+    expect(right.status).toBe(429);
+    // The count stands in PostgreSQL: another process or a restart meets the same one.
+    const { rows } = await database.query<{ count: number }>(
+      `select count from rate_limits where key like 'sign-in:%' order by count desc limit 1`,
+    );
+    expect(rows[0].count).toBeGreaterThan(signInAttempts);
+  });
+});
+
+describe('a new password', () => {
+  it('comes by mail, works once, and ends every session', async () => {
+    const { person, cookie } = await makePerson('Reset');
+    const asked = await post('/request-password-reset', { email: person.email, redirectTo: '/reset' });
+    const unknown = await post('/request-password-reset', {
+      email: 'no.one@example.test',
+      redirectTo: '/reset',
+    });
+    expect(await asked.json()).toEqual(await unknown.json());
+    expect(await mailsTo('no.one@example.test')).toEqual([]);
+    const [mail] = await mailsTo(person.email);
+    const back = await get(pathOf(mail.url));
+    const token = new URL(back.headers.get('location')!, process.env.APP_URL).searchParams.get('token');
+    const newPassword = 'twelve grey gulls over a pier';
+    expect((await post('/reset-password', { newPassword, token })).status).toBe(200);
+    expect((await post('/reset-password', { newPassword, token })).status).toBe(400);
+    expect((await me(cookie)).status).toBe(401);
+    expect((await post('/sign-in/email', { email: person.email, password: testPassword })).status).toBe(401);
+    expect((await post('/sign-in/email', { email: person.email, password: newPassword })).status).toBe(200);
+  });
+
+  it('is asked for with an address of ours to come back to, or not at all', async () => {
+    const { person } = await makePerson('Redirect');
+    for (const redirectTo of [
+      'https://evil.example',
+      '//evil.example',
+      '/\\evil.example',
+      'javascript:alert(1)',
+    ]) {
+      const answer = await post('/request-password-reset', { email: person.email, redirectTo });
+      expect({ redirectTo, status: answer.status }).toEqual({ redirectTo, status: 403 });
+    }
+    expect(await mailsTo(person.email)).toEqual([]);
+  });
+
+  it('can be set by who knows the old one, and ends the other sessions when asked to', async () => {
+    const { person, cookie } = await makePerson('Change');
+    const other = cookieOf(await post('/sign-in/email', { email: person.email, password: testPassword }));
+    const body = { newPassword: 'thirteen grey gulls on a pier', revokeOtherSessions: true };
+    const wrong = await post('/change-password', { ...body, currentPassword: 'not my password' }, cookie);
+    expect(wrong.status).toBe(400);
+    const right = await post('/change-password', { ...body, currentPassword: testPassword }, cookie);
+    expect(right.status).toBe(200);
+    expect((await me(other)).status).toBe(401);
+    expect((await me(cookieOf(right))).status).toBe(200);
+  });
+});
+
+describe('sessions', () => {
+  it('are listed for their owner and end one by one', async () => {
+    const { person, cookie } = await makePerson('Sessions');
+    const second = cookieOf(await post('/sign-in/email', { email: person.email, password: testPassword }));
+    const list = (await (await get('/list-sessions', cookie)).json()) as { token: string; userId: string }[];
+    expect(list).toHaveLength(2);
+    expect(list.every((session) => session.userId === person.id)).toBe(true);
+    const token = list.find((session) => second.includes(session.token))!.token;
+    expect((await post('/revoke-session', { token }, cookie)).status).toBe(200);
+    expect((await me(second)).status).toBe(401);
+    expect((await me(cookie)).status).toBe(200);
+  });
+
+  it('of somebody else do not end', async () => {
+    const one = await makePerson('One');
+    const two = await makePerson('Two');
+    const [session] = (await (await get('/list-sessions', two.cookie)).json()) as { token: string }[];
+    await post('/revoke-session', { token: session.token }, one.cookie);
+    expect((await me(two.cookie)).status).toBe(200);
+  });
+
+  it('are dead after signing out, for who kept the cookie too', async () => {
+    const { cookie } = await makePerson('Out');
+    expect((await post('/sign-out', {}, cookie)).status).toBe(200);
+    expect((await me(cookie)).status).toBe(401);
+  });
+
+  it('end when they run out, and when their owner is no longer proven', async () => {
+    const { person, cookie } = await makePerson('Late');
+    await database.query(`update sessions set expires_at = now() - interval '1 second' where user_id = $1`, [
+      person.id,
+    ]);
+    expect((await me(cookie)).status).toBe(401);
+    const again = cookieOf(await post('/sign-in/email', { email: person.email, password: testPassword }));
+    await database.query('update users set email_verified = false where id = $1', [person.id]);
+    expect((await me(again)).status).toBe(401);
+  });
+});
