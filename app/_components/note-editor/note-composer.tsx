@@ -6,7 +6,8 @@ import { Button } from '../button';
 import { Checkbox } from '../checkbox';
 import { SkeletonBlock } from '../skeleton';
 import type { Mentionable } from './filter-people';
-import { draftKey, type NoteDocument } from './note-draft';
+import { isBlank } from './is-blank';
+import { draftKey } from './note-draft';
 import { useOutbox } from './outbox-provider';
 import { useNoteDraft, type NoteDraftHandle } from './use-note-draft';
 
@@ -126,11 +127,4 @@ export function NoteComposer(props: NoteComposerProps) {
       </div>
     </div>
   );
-}
-
-/** True when a document holds neither words nor a mention. */
-export function isBlank(node: NoteDocument): boolean {
-  if (node.type === 'mention') return false;
-  if (typeof node.text === 'string') return node.text.trim() === '';
-  return !Array.isArray(node.content) || node.content.every((child) => isBlank(child as NoteDocument));
 }

@@ -43,6 +43,7 @@ export class NoteOutbox {
   private entries: readonly OutgoingEntry[] = [];
   private readonly listeners = new Set<() => void>();
   private running: Promise<void> | null = null;
+  private again = false;
 
   constructor(
     private readonly parts: OutboxParts,
@@ -76,15 +77,18 @@ export class NoteOutbox {
     await this.flush();
   }
 
-  /** Sends what waits; calls that come while it runs share the run, and one more follows for late comers. */
+  /** Sends what waits; who asks while that runs shares the run, and one more follows for late comers. */
   flush(): Promise<void> {
+    this.again = true;
     this.running ??= this.run().finally(() => {
       this.running = null;
+      return this.again ? this.flush() : undefined;
     });
     return this.running;
   }
 
   private async run(): Promise<void> {
+    this.again = false;
     let next: OutgoingEntry | undefined;
     const tried = new Set<string>();
     while ((next = this.entries.find((entry) => !tried.has(entry.clientKey)))) {
