@@ -26,7 +26,16 @@ export class LocalError extends Error {}
 export const isRoot = () => process.getuid?.() === 0;
 
 /** What a local run keeps in its data folder; nothing else in there is ever touched. */
-export const ownEntries = ['secrets.json', 'demo.json', 'running.json', 'logs', 'store', 'mail', 'postgres'];
+export const ownEntries = [
+  'secrets.json',
+  'demo-begun.json',
+  'demo.json',
+  'running.json',
+  'logs',
+  'store',
+  'mail',
+  'postgres',
+];
 
 /**
  * The folder that holds everything of a local run: `.data` in the checkout unless FIRSTPULL_DATA_DIR says otherwise.

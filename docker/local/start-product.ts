@@ -69,64 +69,77 @@ export async function startProduct(options: ProductOptions, started: Service[]):
 
   const release = dev
     ? null
-    : await printer.step(
+    : await printer.longStep(
         'application build',
         () => buildApp(logOf('build')),
         ({ built }) => (built ? 'built' : 'nothing changed'),
       );
-  const database = await up(
-    'database',
-    () =>
-      definePostgres({
-        dataFolder,
-        port: ports.database,
-        adminPassword: secrets.databaseAdmin,
-        logFile: logOf('database'),
-        throwaway,
-        events,
-      }),
-    (service) => `PostgreSQL ${service.version} on port ${ports.database}, files in ${service.folder}`,
-  );
-  await printer.step(
-    'schema',
-    async () => {
-      const passwords = secrets.databaseRoles;
-      if (demo && seedBrokeOff(dataFolder)) await dropDatabase(database.adminUrl, databaseName);
-      await bootstrapDatabase({ adminUrl: database.adminUrl, database: databaseName, passwords });
-      await migrate(env.ownerUrl);
-    },
-    () => 'up to date',
-  );
-  const store = await up(
-    'object store',
-    () =>
-      defineStore({
-        folder: path.join(dataFolder, 'store'),
-        port: ports.store,
-        credentials: secrets.store,
-        origins: [`http://127.0.0.1:${ports.app}`, `http://localhost:${ports.app}`],
-        logFile: logOf('store'),
-        events,
-      }),
-    () => `on port ${ports.store}`,
-  );
-  const mail = await up(
-    'mail catcher',
-    () =>
-      defineMail({
-        folder: path.join(dataFolder, 'mail'),
-        smtpPort: ports.smtp,
-        pagePort: ports.mail,
-        logFile: logOf('mail'),
-        events,
-      }),
-    (service) => `on port ${ports.smtp}, page ${service.url}`,
-  );
-  const realtime = await up(
-    'realtime server',
-    () => defineRealtime({ port: ports.realtime, ...secrets.realtime, logFile: logOf('realtime'), events }),
-    () => `on port ${ports.realtime}`,
-  );
+  const openDatabase = async () => {
+    const database = await up(
+      'database',
+      () =>
+        definePostgres({
+          dataFolder,
+          port: ports.database,
+          adminPassword: secrets.databaseAdmin,
+          logFile: logOf('database'),
+          throwaway,
+          events,
+        }),
+      (service) => `PostgreSQL ${service.version} on port ${ports.database}, files in ${service.folder}`,
+    );
+    await printer.step(
+      'schema',
+      async () => {
+        const passwords = secrets.databaseRoles;
+        if (demo && seedBrokeOff(dataFolder)) await dropDatabase(database.adminUrl, databaseName);
+        await bootstrapDatabase({ adminUrl: database.adminUrl, database: databaseName, passwords });
+        await migrate(env.ownerUrl);
+      },
+      () => 'up to date',
+    );
+    return database;
+  };
+  const openStore = () =>
+    up(
+      'object store',
+      () =>
+        defineStore({
+          folder: path.join(dataFolder, 'store'),
+          port: ports.store,
+          credentials: secrets.store,
+          origins: [`http://127.0.0.1:${ports.app}`, `http://localhost:${ports.app}`],
+          logFile: logOf('store'),
+          events,
+        }),
+      () => `on port ${ports.store}`,
+    );
+  const openMail = () =>
+    up(
+      'mail catcher',
+      () =>
+        defineMail({
+          folder: path.join(dataFolder, 'mail'),
+          smtpPort: ports.smtp,
+          pagePort: ports.mail,
+          logFile: logOf('mail'),
+          events,
+        }),
+      (service) => `on port ${ports.smtp}, page ${service.url}`,
+    );
+  const openRealtime = () =>
+    up(
+      'realtime server',
+      () => defineRealtime({ port: ports.realtime, ...secrets.realtime, logFile: logOf('realtime'), events }),
+      () => `on port ${ports.realtime}`,
+    );
+  // None of these needs another one.
+  const [database, store, mail, realtime] = await Promise.all([
+    openDatabase(),
+    openStore(),
+    openMail(),
+    openRealtime(),
+  ]);
   const worker = await up(
     'worker',
     () => defineWorker({ env: env.worker, dev, logFile: logOf('worker'), echo: echo('worker'), events }),
@@ -134,7 +147,7 @@ export async function startProduct(options: ProductOptions, started: Service[]):
   );
   // The seed posts real files, which the running worker reads and checks.
   const people = demo
-    ? await printer.step(
+    ? await printer.longStep(
         'demo studio',
         () => seedDemoOnce(dataFolder, env.seed, logOf('seed')),
         (all) => `${all.length} people`,

@@ -21,12 +21,12 @@ const { stepPrinter } = await import('./setup/step-line.mjs');
 const printer = stepPrinter();
 try {
   const realtime = path.join(root, 'realtime');
-  await printer.step('Debian packages', () => ensureDebianPackage('postgresql'), installedOrThere);
+  await printer.longStep('Debian packages', () => ensureDebianPackage('postgresql'), installedOrThere);
   const fresh = !existsSync(path.join(root, 'node_modules'));
   if (fresh) printer.note('First start: this downloads about 1,100 npm packages and builds the application.');
   if (!packagesAreCurrent(root) || !packagesAreCurrent(realtime)) {
-    await printer.step('npm packages', () => ensurePackages(root), installedOrThere);
-    await printer.step('realtime package', () => ensurePackages(realtime), installedOrThere);
+    await printer.longStep('npm packages', () => ensurePackages(root), installedOrThere);
+    await printer.longStep('realtime package', () => ensurePackages(realtime), installedOrThere);
   }
 } catch (error) {
   console.error(error instanceof MissingPackageError ? `\n${error.message}` : `\n${error.message ?? error}`);

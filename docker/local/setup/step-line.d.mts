@@ -1,5 +1,8 @@
+type Step = <T>(name: string, work: () => Promise<T>, describe: (result: T) => string) => Promise<T>;
+
 export interface StepPrinter {
-  step<T>(name: string, work: () => Promise<T>, describe?: (result: T) => string): Promise<T>;
+  step: Step;
+  longStep: Step;
   note(text: string): void;
 }
 export function stepPrinter(out?: { write(text: string): unknown }): StepPrinter;
