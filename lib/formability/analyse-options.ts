@@ -4,6 +4,8 @@ export interface AnalyseOptions {
   onProgress?(stage: string, fraction: number): void;
   /** Asked between stages; true ends the run with UnusableInput code `stopped`. */
   shouldStop?(): boolean;
+  /** Leave out everything but geometry: the checks that rest on physics say so. */
+  geometryOnly?: boolean;
   /** Milliseconds; lent only to fill `timings`. */
   now?(): number;
 }

@@ -160,6 +160,7 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
       walls: judgeWalls(mesh, facets, draftOfFacet, visibility, holes.bore, wanted),
       wantedDraftDeg: wanted,
       overhangs: findOverhangs(mesh, facets, holes.bore, limits.overhangDeg),
+      geometryOnly: options.geometryOnly ?? false,
       sizeMm: size,
     });
     const report: Report = { ...sections, advice: [], checks, timings: stages.timings };

@@ -2,7 +2,6 @@ import { readFileSync, statSync } from 'node:fs';
 import { analyse } from './analyse';
 import { MAX_FILE_BYTES } from './parse/read-mesh';
 import type { RecipeInput } from './recipe';
-import type { Report } from './report';
 import { summarise } from './summarise';
 import { UnusableInput } from './unusable-input';
 
@@ -55,12 +54,6 @@ function readRecipe(path: string | null): RecipeInput {
   }
 }
 
-/** Without the physics that only a full run has: the contract's --geometry-only. */
-function geometryOnly(report: Report): Partial<Report> {
-  const { schema, engine, input, recipe, mesh, draft, plan, undercut, airTraps, vents, spacing, walls, edges, layers, timings } = report; // prettier-ignore
-  return { schema, engine, input, recipe, mesh, draft, plan, undercut, airTraps, vents, spacing, walls, edges, layers, timings }; // prettier-ignore
-}
-
 function showProgress(stage: string, fraction: number): void {
   const percent = String(Math.round(fraction * 100)).padStart(3);
   process.stderr.write(`\r\u001b[K${stage === 'done' ? '' : `${percent} % ${stage}`}`);
@@ -81,13 +74,11 @@ export function main(argv: string[]): void {
     const args = readArguments(argv);
     const bytes = readBytes(args.mesh);
     const { report } = analyse(bytes, readRecipe(args.recipe), {
+      geometryOnly: args.geometryOnly,
       now: () => performance.now(),
       onProgress: process.stderr.isTTY ? showProgress : undefined,
     });
-    const shown = args.geometryOnly ? geometryOnly(report) : report;
-    process.stdout.write(
-      args.json ? `${JSON.stringify(shown)}\n` : summarise(report, args.mesh, args.geometryOnly),
-    );
+    process.stdout.write(args.json ? `${JSON.stringify(report)}\n` : summarise(report, args.mesh));
   } catch (error) {
     if (error instanceof UnusableInput) fail(error.code, error.message, error.reasons, json);
     else if (error instanceof WrongUse) fail('usage', `${error.message}; use: ${USAGE}`, [], json);
@@ -95,7 +86,7 @@ export function main(argv: string[]): void {
       fail('unreadable', `${error.message}; check the path`, [], json); // prettier-ignore
     else if (error instanceof RangeError)
       fail('too_large_file', `the mesh needs more memory than there is (${error.message}); export it with a coarser tolerance`, [], json); // prettier-ignore
-    else throw error;
+    else fail('internal', `${String(error)}; this is a fault of the engine: please report it with the file`, [], json); // prettier-ignore
   }
 }
 

@@ -6,17 +6,13 @@ const WIDTH = 100;
 const MARK: Record<CheckStatus, string> = { pass: 'ok  ', caution: 'LOOK', fail: 'FAIL', 'not-run': '--  ' };
 
 /** The report as a page that a designer reads: title, figures, then what must be settled, then the rest. */
-export function summarise(report: Report, name: string, geometryOnly: boolean): string {
+export function summarise(report: Report, name: string): string {
   const lines = [title(report, name), '', ...figures(report), ''];
-  if (!geometryOnly) {
-    const order: CheckStatus[] = ['fail', 'caution', 'pass', 'not-run'];
-    for (const status of order)
-      lines.push(...report.checks.filter((c) => c.status === status).flatMap(checkLines));
-    lines.push('', verdict(report.checks));
-    lines.push(
-      'Every figure is an estimate, to be proven by a test pull. Mind hot sheet, pressure and fumes.',
-    );
-  }
+  const order: CheckStatus[] = ['fail', 'caution', 'pass', 'not-run'];
+  for (const status of order)
+    lines.push(...report.checks.filter((c) => c.status === status).flatMap(checkLines));
+  lines.push('', verdict(report.checks));
+  lines.push('Every figure is an estimate, to be proven by a test pull. Mind hot sheet, pressure and fumes.');
   return `${lines.join('\n')}\n`;
 }
 

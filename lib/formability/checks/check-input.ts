@@ -11,5 +11,6 @@ export interface CheckInput {
   wantedDraftDeg: number;
   /** Faces steeper from vertical than the printer bridges, cavities included. */
   overhangs: { areaMm2: number; worstDeg: number; places: Place[] };
+  geometryOnly: boolean;
   sizeMm: [number, number, number];
 }

@@ -33,7 +33,7 @@ export function checkVents({ recipe, report }: CheckInput): Check {
       findings.length > 0
         ? `${findings.join('; ').replace(/^./, (first) => first.toUpperCase())}.`
         : report.vents.length > 0
-          ? `All ${report.vents.length} vents print open, the narrowest at ${say(least ?? 0, 2)} mm; marks in the part are not computed by this engine version.`
+          ? `${report.vents.length === 1 ? 'The vent prints' : `All ${report.vents.length} vents print`} open, ${report.vents.length === 1 ? '' : 'the narrowest '}at ${say(least ?? 0, 2)} mm; marks in the part are not computed by this engine version.`
           : 'There is no pocket that would need a vent.',
     remedy:
       remedies.length > 0 ? `${remedies.join(', and ').replace(/^./, (first) => first.toUpperCase())}.` : '',

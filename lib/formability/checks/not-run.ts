@@ -10,7 +10,7 @@ const MISSING: Partial<Record<CheckId, { unit: string; needs: string }>> = {
 };
 
 /** A check that is honest about not having been made; undefined for those that are. */
-export function notRun(id: CheckId): Check | undefined {
+export function notRun(id: CheckId, geometryOnly: boolean): Check | undefined {
   const missing = MISSING[id];
   if (!missing) return undefined;
   return {
@@ -20,7 +20,9 @@ export function notRun(id: CheckId): Check | undefined {
     limit: null,
     unit: missing.unit,
     basis: { source: 'none: nothing was judged', kind: 'computed' },
-    message: `Not computed by this engine version: it does not yet find ${missing.needs}. Prove it with a test pull.`,
+    message: geometryOnly
+      ? `Left out: only geometry was asked for, not ${missing.needs}.`
+      : `Not computed by this engine version: it does not yet find ${missing.needs}. Prove it with a test pull.`,
     remedy: '',
     places: [],
   };

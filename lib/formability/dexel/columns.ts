@@ -93,6 +93,10 @@ function buildColumn(out: Columns, c: number, hits: number, ofShell: Uint32Array
       open = false;
       pushInterval(out, c, from, here, fromFacet, code >> 1, ofShell);
     }
+    // One body standing on another: the upper is entered, in the order of ties, before the lower is left.
+    if (winding > 1 && i + 1 < end && code & 1 && !(facet[i + 1] & 1) && z[i + 1] - here <= GAP_MM) {
+      if (ofShell[code >> 1] !== ofShell[facet[i + 1] >> 1]) out.touchingColumns++;
+    }
     const extra = winding > 0 ? winding - 1 : winding;
     if (extra !== 0 && i + 1 < end) {
       out.excessVolume += extra * (z[i + 1] - here);

@@ -4,6 +4,9 @@ import { draftDeg, TOP_DEG, VERTICAL_DEG } from './thresholds';
 
 export const DRAFT_BIN_EDGES = [-90, -60, -30, -10, -2, -0.25, 0.25, 1, 2, 4, 6, 10, 15, 30, 60, 85, 90];
 
+/** Rounding of a wall that was drawn with exactly the draft of a bin's edge: it belongs above that edge. */
+const EDGE_DEG = 1e-4;
+
 /**
  * Draft of every non-bed facet: asin(n_z), geometry. Bins hold lower ≤ draft < upper, the last one 90 too.
  * @returns the report section without `wallMinMacroDeg`, and the draft of each facet
@@ -27,7 +30,7 @@ export function measureDraft(facets: Facets): {
     if (draft > VERTICAL_DEG && draft < TOP_DEG && draft < minUp) minUp = draft;
     if (draft >= -VERTICAL_DEG && draft <= VERTICAL_DEG) vertical += area[t];
     let bin = 0;
-    while (bin < areas.length - 1 && draft >= edges[bin + 1]) bin++;
+    while (bin < areas.length - 1 && draft >= edges[bin + 1] - EDGE_DEG) bin++;
     areas[bin] += area[t];
   }
   return {

@@ -58,25 +58,43 @@ function keyOf(i: number, j: number, k: number): number {
   return ((i + 4096) * 8192 + (j + 4096)) * 8192 + (k + 4096);
 }
 
-/** Area vectors per cell; a facet longer than a cell is spread over points on it. */
+/**
+ * Area vectors per cell; a facet longer than a cell is spread over points on it. In height each point is shared between
+ * the two nearest cells by distance, so a step that falls on a cell's rim does not tip the balance.
+ */
 function sumCells(mesh: Mesh, facets: Facets, skip: Uint8Array, cell: number): Map<number, Cell> {
   const { index, position: p, triangles } = mesh;
   const cells = new Map<number, Cell>();
-  let last: Cell | undefined;
-  let lastKey = -1;
+  const recent: (Cell | undefined)[] = [undefined, undefined];
+  const cellAt = (i: number, j: number, k: number): Cell => {
+    const last = recent[k & 1];
+    if (last && last.i === i && last.j === j && last.k === k) return last;
+    const key = keyOf(i, j, k);
+    let found = cells.get(key);
+    if (!found) cells.set(key, (found = { i, j, k, x: 0, y: 0, z: 0 }));
+    recent[k & 1] = found;
+    return found;
+  };
   for (let t = 0; t < triangles; t++) {
     if (skip[t] || facets.area[t] === 0) continue;
     const a = index[3 * t] * 3;
     const b = index[3 * t + 1] * 3;
     const d = index[3 * t + 2] * 3;
-    const [ux, uy, uz] = [p[b] - p[a], p[b + 1] - p[a + 1], p[b + 2] - p[a + 2]];
-    const [vx, vy, vz] = [p[d] - p[a], p[d + 1] - p[a + 1], p[d + 2] - p[a + 2]];
-    const longest = Math.max(
-      Math.hypot(ux, uy, uz),
-      Math.hypot(vx, vy, vz),
-      Math.hypot(ux - vx, uy - vy, uz - vz),
+    const ux = p[b] - p[a];
+    const uy = p[b + 1] - p[a + 1];
+    const uz = p[b + 2] - p[a + 2];
+    const vx = p[d] - p[a];
+    const vy = p[d + 1] - p[a + 1];
+    const vz = p[d + 2] - p[a + 2];
+    const reach = Math.max(
+      Math.abs(ux),
+      Math.abs(uy),
+      Math.abs(uz),
+      Math.abs(vx),
+      Math.abs(vy),
+      Math.abs(vz),
     );
-    const m = Math.min(256, Math.max(1, Math.ceil((2 * longest) / cell)));
+    const m = Math.min(256, Math.max(1, Math.ceil((3 * reach) / cell)));
     const share = 1 / (2 * m * m);
     const x = (uy * vz - uz * vy) * share;
     const y = (uz * vx - ux * vz) * share;
@@ -86,18 +104,19 @@ function sumCells(mesh: Mesh, facets: Facets, skip: Uint8Array, cell: number): M
         for (let half = 0; half < (j < m - i - 1 ? 2 : 1); half++) {
           const s = (i + (1 + half) / 3) / m;
           const r = (j + (1 + half) / 3) / m;
+          const height = (p[a + 2] + s * uz + r * vz) / cell - 0.5;
           const ci = Math.floor((p[a] + s * ux + r * vx) / cell);
           const cj = Math.floor((p[a + 1] + s * uy + r * vy) / cell);
-          const ck = Math.floor((p[a + 2] + s * uz + r * vz) / cell);
-          const key = keyOf(ci, cj, ck);
-          if (key !== lastKey || !last) {
-            last = cells.get(key);
-            if (!last) cells.set(key, (last = { i: ci, j: cj, k: ck, x: 0, y: 0, z: 0 }));
-            lastKey = key;
-          }
-          last.x += x;
-          last.y += y;
-          last.z += z;
+          const ck = Math.floor(height);
+          const upper = height - ck;
+          const low = cellAt(ci, cj, ck);
+          low.x += x * (1 - upper);
+          low.y += y * (1 - upper);
+          low.z += z * (1 - upper);
+          const high = cellAt(ci, cj, ck + 1);
+          high.x += x * upper;
+          high.y += y * upper;
+          high.z += z * upper;
         }
       }
     }

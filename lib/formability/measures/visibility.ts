@@ -101,13 +101,26 @@ function sampleFacet(
         const x = p[a] + s * ux + r * vx;
         const y = p[a + 1] + s * uy + r * vy;
         const z = p[a + 2] + s * uz + r * vz;
-        let seen = classify(columns, air, x + ox, y + oy, z + oz);
-        if (seen === BURIED) seen = classify(columns, air, x + 0.4 * ox, y + 0.4 * oy, z + 0.4 * oz);
-        shares[seen]++;
+        const seen = classify(columns, air, x + ox, y + oy, z + oz);
+        shares[seen === BURIED ? lookAround(columns, air, x, y, z + oz / 4) : seen]++;
       }
     }
   }
   for (let k = 0; k < 4; k++) shares[k] /= m * m;
+}
+
+/** A ledge or bore narrower than a cell: its own column is solid, so the most open one beside it speaks for it. */
+function lookAround(columns: Columns, air: Air, x: number, y: number, z: number): number {
+  const far = OUTSIDE * columns.grid.cell;
+  let best = BURIED;
+  for (let dx = -far; dx <= far; dx += far) {
+    for (let dy = -far; dy <= far; dy += far) {
+      const seen = classify(columns, air, x + dx, y + dy, z);
+      if (seen === VISIBLE) return VISIBLE;
+      if (best === BURIED || seen === CONNECTED) best = seen === BURIED ? best : seen;
+    }
+  }
+  return best;
 }
 
 function classify(columns: Columns, air: Air, x: number, y: number, z: number): number {
