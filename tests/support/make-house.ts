@@ -1,5 +1,6 @@
-import { POST as accept } from '@/app/api/v1/invitations/[invitation]/accept/route';
-import { claimAddress } from '@/lib/auth/claim-address';
+import { createHmac, randomBytes } from 'node:crypto';
+import { hashPassword } from 'better-auth/crypto';
+import { uuidv7 } from 'uuidv7';
 import {
   personContext,
   type Person,
@@ -11,10 +12,10 @@ import { enterStudio, enterWorkspace } from '@/lib/auth/enter';
 import { signInCookies } from '@/lib/auth/sign-in-cookies';
 import { inviteToStudio } from '@/lib/studio/invite-to-studio';
 import { openStudio } from '@/lib/studio/open-studio';
+import { acceptInvitation } from '@/lib/workspaces/accept-invitation';
 import { createWorkspace } from '@/lib/workspaces/create-workspace';
 import { inviteToWorkspace } from '@/lib/workspaces/invite-to-workspace';
 import type { ClientRole, Role, StudioRole } from '@/lib/workspaces/roles';
-import { callRoute, cookieOf } from './call-route';
 import type { FreshDatabase } from './database';
 
 export const testPassword = 'eleven grey gulls over a harbour';
@@ -27,14 +28,34 @@ export interface SignedIn {
 
 let made = 0;
 const nextNumber = () => ++made;
+let hashed: Promise<string> | undefined;
 
-/** A person with a proven address and a session, who belongs nowhere yet. */
-export async function makePerson(name: string): Promise<SignedIn> {
+/**
+ * A person with a proven address, the password of all test people and a session, who belongs nowhere yet.
+ * Hashing a password is slow by design, so all of them share one hash.
+ */
+export async function makePerson(database: FreshDatabase, name: string): Promise<SignedIn> {
   const email = `${name.toLowerCase().replaceAll(/[^a-z]/g, '')}.${nextNumber()}@example.test`;
-  const person = await claimAddress({ email, name, password: testPassword });
-  return { person, cookie: await signIn(email) };
+  const [id, token] = [uuidv7(), randomBytes(24).toString('base64url')];
+  const password = await (hashed ??= hashPassword(testPassword));
+  await database.query(
+    `with person as (insert into users (id, name, email, email_verified) values ($1, $2, $3, true)),
+       account as (insert into accounts (id, account_id, provider_id, user_id, password)
+         values (gen_random_uuid(), $1::text, 'credential', $1, $4))
+     insert into sessions (id, user_id, token, expires_at) values (gen_random_uuid(), $1, $5, now() + interval '1 day')`,
+    [id, name, email, password, token],
+  );
+  const person: Person = { id, name, email, units: 'mm', timeZone: 'Europe/Lisbon' };
+  return { person, cookie: sessionCookie(token) };
 }
 
+/** The cookie as the identity service signs it: token and HMAC-SHA-256 of it under the secret. */
+function sessionCookie(token: string): string {
+  const signature = createHmac('sha256', process.env.BETTER_AUTH_SECRET!).update(token).digest('base64');
+  return `firstpull.session_token=${encodeURIComponent(`${token}.${signature}`)}`;
+}
+
+/** Signs in with a password, for tests of just that. */
 export async function signIn(email: string, password = testPassword): Promise<string> {
   const cookies = await signInCookies({ email, password }, new Headers());
   return cookies.map((cookie) => cookie.split(';')[0]).join('; ');
@@ -49,36 +70,28 @@ export async function tokenOf(database: FreshDatabase, invitationId: string): Pr
   return rows[0].path.replace('/join/', '');
 }
 
-async function acceptAs(database: FreshDatabase, invitationId: string, name: string): Promise<SignedIn> {
-  const invitation = await tokenOf(database, invitationId);
-  const answer = await callRoute(accept, { params: { invitation }, body: { name, password: testPassword } });
-  if (answer.status !== 200) throw new Error(`an invitation was not accepted: ${await answer.text()}`);
-  const { rows } = await database.query<Person>(
-    `select u.id, u.name, u.email, u.units, u.time_zone as "timeZone" from users u where u.name = $1
-     order by u.created_at desc limit 1`,
-    [name],
-  );
-  return { person: rows[0], cookie: cookieOf(answer) };
-}
-
+/** Somebody new who joined the studio by invitation. */
 export async function joinStudio(
   database: FreshDatabase,
   lead: StudioContext,
   role: StudioRole,
 ): Promise<SignedIn> {
-  const n = nextNumber();
-  const { id } = await inviteToStudio(lead, { email: `${role}.${n}@example.test`, role });
-  return acceptAs(database, id, `Staff ${role} ${n}`);
+  const joined = await makePerson(database, `Staff ${role}`);
+  const { id } = await inviteToStudio(lead, { email: joined.person.email, role });
+  await acceptInvitation(joined.person, await tokenOf(database, id), {});
+  return joined;
 }
 
+/** Somebody new who joined the workspace by invitation. */
 export async function joinWorkspace(
   database: FreshDatabase,
   lead: WorkspaceContext,
   role: ClientRole,
 ): Promise<SignedIn> {
-  const n = nextNumber();
-  const { id } = await inviteToWorkspace(lead, { email: `${role}.${n}@example.test`, role });
-  return acceptAs(database, id, `Client ${role} ${n}`);
+  const joined = await makePerson(database, `Client ${role}`);
+  const { id } = await inviteToWorkspace(lead, { email: joined.person.email, role });
+  await acceptInvitation(joined.person, await tokenOf(database, id), {});
+  return joined;
 }
 
 export interface House {
@@ -94,7 +107,7 @@ export interface House {
 /** A studio with one workspace and a person in each of the five roles, all made by the product's own verbs. */
 export async function makeHouse(database: FreshDatabase): Promise<House> {
   const n = nextNumber();
-  const lead = await makePerson(`Lead ${n}`);
+  const lead = await makePerson(database, `Lead ${n}`);
   const studio = await openStudio(personContext(lead.person), { name: `Studio ${n}` });
   const atStudio = await enterStudio(lead.person, studio.id);
   const workspace = await createWorkspace(atStudio, { name: `Client firm ${n}`, code: codeOf(n) });

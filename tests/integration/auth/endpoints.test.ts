@@ -11,8 +11,7 @@ let person: SignedIn;
 let endpoints: { path: string; methods: string[] }[];
 
 beforeAll(async () => {
-  await freshDatabase();
-  person = await makePerson('Pia');
+  person = await makePerson(await freshDatabase(), 'Pia');
   endpoints = Object.values(auth().api as unknown as Record<string, Endpoint>)
     .filter((endpoint) => endpoint.path)
     .map(({ path, options }) => ({ path: path!, methods: [options?.method ?? 'GET'].flat() }));

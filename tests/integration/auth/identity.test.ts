@@ -48,7 +48,7 @@ describe('signing up', () => {
   });
 
   it('answers alike for a known and an unknown address', async () => {
-    const known = await makePerson('Known');
+    const known = await makePerson(database, 'Known');
     const body = { name: 'Somebody', password: testPassword };
     const answers = [
       await post('/sign-up/email', { ...body, email: known.person.email }),
@@ -91,7 +91,7 @@ describe('signing up', () => {
 
 describe('signing in', () => {
   it('answers alike for a wrong password and an unknown address', async () => {
-    const { person } = await makePerson('Wrong');
+    const { person } = await makePerson(database, 'Wrong');
     const wrong = await post('/sign-in/email', { email: person.email, password: 'not the password at all' });
     const nobody = await post('/sign-in/email', {
       email: 'nobody@example.test',
@@ -102,7 +102,7 @@ describe('signing in', () => {
   });
 
   it('sets one cookie that scripts cannot read', async () => {
-    const { person } = await makePerson('Cookie');
+    const { person } = await makePerson(database, 'Cookie');
     const answer = await post('/sign-in/email', { email: person.email, password: testPassword });
     const [cookie, ...others] = answer.headers.getSetCookie();
     expect(others).toEqual([]);
@@ -114,7 +114,7 @@ describe('signing in', () => {
   });
 
   it('stores no address of the caller from a header that nobody vouches for', async () => {
-    const { person } = await makePerson('Header');
+    const { person } = await makePerson(database, 'Header');
     await callRoute(POST, {
       path: '/api/auth/sign-in/email',
       body: { email: person.email, password: testPassword },
@@ -127,7 +127,7 @@ describe('signing in', () => {
   });
 
   it('closes for an address after too many wrong passwords, whatever the caller says it is', async () => {
-    const { person } = await makePerson('Target');
+    const { person } = await makePerson(database, 'Target');
     const statuses: number[] = [];
     for (let i = 0; i <= signInAttempts; i++) {
       const answer = await callRoute(POST, {
@@ -152,7 +152,7 @@ describe('signing in', () => {
 
 describe('a new password', () => {
   it('comes by mail, works once, and ends every session', async () => {
-    const { person, cookie } = await makePerson('Reset');
+    const { person, cookie } = await makePerson(database, 'Reset');
     const asked = await post('/request-password-reset', { email: person.email, redirectTo: '/reset' });
     const unknown = await post('/request-password-reset', {
       email: 'no.one@example.test',
@@ -172,7 +172,7 @@ describe('a new password', () => {
   });
 
   it('is asked for with an address of ours to come back to, or not at all', async () => {
-    const { person } = await makePerson('Redirect');
+    const { person } = await makePerson(database, 'Redirect');
     for (const redirectTo of [
       'https://evil.example',
       '//evil.example',
@@ -186,7 +186,7 @@ describe('a new password', () => {
   });
 
   it('can be set by who knows the old one, and ends the other sessions when asked to', async () => {
-    const { person, cookie } = await makePerson('Change');
+    const { person, cookie } = await makePerson(database, 'Change');
     const other = cookieOf(await post('/sign-in/email', { email: person.email, password: testPassword }));
     const body = { newPassword: 'thirteen grey gulls on a pier', revokeOtherSessions: true };
     const wrong = await post('/change-password', { ...body, currentPassword: 'not my password' }, cookie);
@@ -200,7 +200,7 @@ describe('a new password', () => {
 
 describe('sessions', () => {
   it('are listed for their owner and end one by one', async () => {
-    const { person, cookie } = await makePerson('Sessions');
+    const { person, cookie } = await makePerson(database, 'Sessions');
     const second = cookieOf(await post('/sign-in/email', { email: person.email, password: testPassword }));
     const list = (await (await get('/list-sessions', cookie)).json()) as { token: string; userId: string }[];
     expect(list).toHaveLength(2);
@@ -212,21 +212,21 @@ describe('sessions', () => {
   });
 
   it('of somebody else do not end', async () => {
-    const one = await makePerson('One');
-    const two = await makePerson('Two');
+    const one = await makePerson(database, 'One');
+    const two = await makePerson(database, 'Two');
     const [session] = (await (await get('/list-sessions', two.cookie)).json()) as { token: string }[];
     await post('/revoke-session', { token: session.token }, one.cookie);
     expect((await me(two.cookie)).status).toBe(200);
   });
 
   it('are dead after signing out, for who kept the cookie too', async () => {
-    const { cookie } = await makePerson('Out');
+    const { cookie } = await makePerson(database, 'Out');
     expect((await post('/sign-out', {}, cookie)).status).toBe(200);
     expect((await me(cookie)).status).toBe(401);
   });
 
   it('end when they run out, and when their owner is no longer proven', async () => {
-    const { person, cookie } = await makePerson('Late');
+    const { person, cookie } = await makePerson(database, 'Late');
     await database.query(`update sessions set expires_at = now() - interval '1 second' where user_id = $1`, [
       person.id,
     ]);

@@ -1,0 +1,118 @@
+import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
+import {
+  DELETE as removeRoute,
+  PATCH as changeRoute,
+} from '@/app/api/v1/studios/[studio]/people/[person]/route';
+import type { StudioContext } from '@/lib/auth/context';
+import { enterStudio } from '@/lib/auth/enter';
+import { changeStaffRole } from '@/lib/studio/change-staff-role';
+import { listStaff } from '@/lib/studio/list-staff';
+import { removeStaff } from '@/lib/studio/remove-staff';
+import { callRoute } from '@/tests/support/call-route';
+import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
+import { joinStudio, makeHouse, type House } from '@/tests/support/make-house';
+
+let database: FreshDatabase;
+let house: House;
+let lead: StudioContext;
+beforeAll(async () => {
+  database = await freshDatabase();
+});
+beforeEach(async () => {
+  house = await makeHouse(database);
+  lead = await house.enterStudio('lead');
+});
+
+const leads = async () =>
+  (
+    await database.query<{ n: number }>(
+      `select count(*)::int as n from studio_members where studio_id = $1 and role = 'lead'`,
+      [house.studio.id],
+    )
+  ).rows[0].n;
+
+describe('staff of a studio', () => {
+  it('change their role in every workspace at once', async () => {
+    const { id } = house.people.designer.person;
+    await changeStaffRole(lead, id, { role: 'producer' });
+    expect((await house.enter('designer')).role).toBe('producer');
+    expect((await house.enterStudio('designer')).role).toBe('producer');
+    const { rows } = await database.query(
+      `select detail->>'from' as was, detail->>'to' as is from studio_entries where action = 'person.role-changed' and studio_id = $1`,
+      [house.studio.id],
+    );
+    expect(rows).toEqual([{ was: 'designer', is: 'producer' }]);
+  });
+
+  it('lose every workspace when they are removed', async () => {
+    const { id } = house.people.producer.person;
+    await removeStaff(lead, id);
+    await expect(house.enter('producer')).rejects.toMatchObject({ code: 'not_found' });
+    await expect(house.enterStudio('producer')).rejects.toMatchObject({ code: 'not_found' });
+    const { people } = await listStaff(lead);
+    expect(people.map((person) => person.id)).not.toContain(id);
+  });
+
+  it('may leave by themselves', async () => {
+    const designer = await house.enterStudio('designer');
+    await removeStaff(designer, designer.person.id);
+    await expect(house.enter('designer')).rejects.toMatchObject({ code: 'not_found' });
+  });
+
+  it.each(['designer', 'producer'] as const)('are not changed or removed by a %s', async (role) => {
+    const ctx = await house.enterStudio(role);
+    await expect(changeStaffRole(ctx, ctx.person.id, { role: 'lead' })).rejects.toMatchObject({
+      code: 'forbidden',
+    });
+    await expect(removeStaff(ctx, lead.person.id)).rejects.toMatchObject({ code: 'forbidden' });
+    expect((await house.enterStudio(role)).role).toBe(role);
+  });
+});
+
+describe('the last lead', () => {
+  const call = (
+    handler: typeof removeRoute,
+    method: string,
+    person: string,
+    cookie: string,
+    body?: unknown,
+  ) => callRoute(handler, { method, params: { studio: house.studio.slug, person }, cookie, body });
+
+  it('neither leaves nor steps down', async () => {
+    const { cookie, person } = house.people.lead;
+    const left = await call(removeRoute, 'DELETE', person.id, cookie);
+    const stepped = await call(changeRoute, 'PATCH', person.id, cookie, { role: 'designer' });
+    for (const answer of [left, stepped]) {
+      expect(answer.status).toBe(409);
+      expect(await answer.json()).toMatchObject({ type: '/problems/last-lead' });
+    }
+    expect(await leads()).toBe(1);
+    const { rows } = await database.query(
+      `select 1 from studio_entries where studio_id = $1 and action in ('person.removed', 'person.role-changed')`,
+      [house.studio.id],
+    );
+    expect(rows).toEqual([]);
+  });
+
+  it.each(Array.from({ length: 8 }, (_, round) => round + 1))(
+    'stays when two leads leave, step down or remove each other at once (round %i)',
+    async (round) => {
+      const other = await joinStudio(database, lead, 'lead');
+      const second = await enterStudio(other.person, house.studio.id);
+      const acts = [
+        [() => removeStaff(lead, lead.person.id), () => removeStaff(second, second.person.id)],
+        [
+          () => changeStaffRole(lead, lead.person.id, { role: 'designer' }),
+          () => changeStaffRole(second, second.person.id, { role: 'designer' }),
+        ],
+        [() => removeStaff(lead, second.person.id), () => removeStaff(second, lead.person.id)],
+        [
+          () => removeStaff(lead, second.person.id),
+          () => changeStaffRole(second, lead.person.id, { role: 'producer' }),
+        ],
+      ][round % 4];
+      await Promise.allSettled(acts.map((act) => act()));
+      expect(await leads()).toBe(1);
+    },
+  );
+});
