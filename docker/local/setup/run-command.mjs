@@ -15,6 +15,8 @@ export function runCommand([program, ...args], { cwd, env, what }) {
     child.stderr.on('data', keep);
     const onSignal = (signal) => {
       child.kill(signal);
+      // npm does not always listen.
+      setTimeout(() => child.kill('SIGKILL'), 2000);
       child.once('close', () => process.exit(signal === 'SIGINT' ? 130 : 143));
     };
     const forget = () => ['SIGINT', 'SIGTERM'].forEach((signal) => process.off(signal, onSignal));
