@@ -32,13 +32,13 @@ async function script(file: string, env: Record<string, string>) {
 
 async function connected<T>(
   url: string,
-  use: (client: Client) => Promise<T>,
+  work: (client: Client) => Promise<T>,
   application_name?: string,
 ): Promise<T> {
   const client = new Client({ connectionString: url, application_name });
   await client.connect();
   try {
-    return await use(client);
+    return await work(client);
   } finally {
     await client.end();
   }
