@@ -1,5 +1,6 @@
 import { Document, Image, Page, Text, View } from '@react-pdf/renderer';
 import { zonedTime } from '@/lib/time/zoned-time';
+import { recipeLines } from '@/lib/review/recipe-lines';
 import { formingCautions } from '../cautions';
 import { reportOf, verdictSentence, type CertificateModel } from './certificate-model';
 import { FindingsTable } from './findings-table';
@@ -8,7 +9,7 @@ import { Mark } from './shapes';
 import { SignaturesTable } from './signatures-table';
 import { hairline, ink, ochre, paper, slate, styles } from './styles';
 import { TitleBlock } from './title-block';
-import { figure, grouped, recipeRows } from './words';
+import { figure, grouped } from './words';
 
 /** The readable form of what was agreed and released. Everything in it stands in the pack's JSON files too. */
 export function Certificate({ model }: { model: CertificateModel }) {
@@ -26,22 +27,20 @@ export function Certificate({ model }: { model: CertificateModel }) {
       modificationDate={issued}
     >
       <Page size="A4" style={styles.page}>
-        <Head model={model} />
-        <View style={[styles.row, { marginTop: 12 }]}>
-          <Picture picture={model.picture} />
-          <Facts model={model} />
+        <View>
+          <Head model={model} />
+          <View style={[styles.row, { marginTop: 12 }]}>
+            <Picture picture={model.picture} />
+            <Facts model={model} />
+          </View>
+          <SignaturesTable model={model} />
+          <DigestLine model={model} />
         </View>
-        <SignaturesTable model={model} />
-        <DigestLine model={model} />
         <TitleBlock model={model} />
         <Foot model={model} />
       </Page>
       <Page size="A4" style={styles.page}>
-        <Text style={[styles.h2, { marginTop: 0 }]}>Checks for forming</Text>
-        <Text style={[styles.muted, { marginBottom: 6 }]}>
-          {verdictSentence(model)} Engine {agreed.report.engineVersion}, on exactly the mesh and recipe of
-          this certificate.
-        </Text>
+        <Verdict model={model} />
         <FindingsTable findings={agreed.lock.docket.findings} timeZone={model.timeZone} />
         <RecipeTable model={model} />
         <Notes model={model} />
@@ -50,6 +49,18 @@ export function Certificate({ model }: { model: CertificateModel }) {
         <Foot model={model} />
       </Page>
     </Document>
+  );
+}
+
+function Verdict({ model }: { model: CertificateModel }) {
+  return (
+    <View>
+      <Text style={[styles.h2, { marginTop: 0 }]}>Checks for forming</Text>
+      <Text style={[styles.muted, { marginBottom: 6 }]}>
+        {verdictSentence(model)} Engine {model.agreed.report.engineVersion}, on exactly the mesh and recipe of
+        this certificate.
+      </Text>
+    </View>
   );
 }
 
@@ -99,13 +110,13 @@ function Facts({ model }: { model: CertificateModel }) {
   const report = reportOf(model);
   const { min, max } = report.mesh.boundsMm;
   const size = [0, 1, 2].map((axis) => (max[axis] - min[axis]).toFixed(1)).join(' × ');
-  const recipe = new Map(recipeRows(agreed.recipe.body).map(({ label, value }) => [label, value]));
+  const recipe = new Map(recipeLines(agreed.recipe.body).map(({ label, value }) => [label, value]));
   const rows: [string, string][] = [
     ['Mesh', model.meshFileInPack],
     ['Bytes', grouped(agreed.mesh.bytes)],
     ['Triangles', grouped(agreed.mesh.triangles)],
     ['Size', `${size}\u00a0mm`],
-    ['Sheet', `${recipe.get('Sheet')} ${recipe.get('Gauge') ?? ''}`],
+    ['Sheet', recipe.get('Sheet') ?? ''],
     ['Template', `${recipe.get('Filament')}, ${recipe.get('Layer height') ?? ''} layers`],
     ['Least draft', figure(report.draft.minUpFacingDeg, 'deg')],
     ['Draw ratio, areal', figure(report.plan.arealDrawRatio, '')],
@@ -144,7 +155,7 @@ function DigestLine({ model }: { model: CertificateModel }) {
 }
 
 function RecipeTable({ model }: { model: CertificateModel }) {
-  const rows = recipeRows(model.agreed.recipe.body);
+  const rows = recipeLines(model.agreed.recipe.body);
   const half = Math.ceil(rows.length / 2);
   return (
     <View wrap={false}>
@@ -154,7 +165,7 @@ function RecipeTable({ model }: { model: CertificateModel }) {
           <View key={at} style={{ flex: 1, marginLeft: at ? 22 : 0 }}>
             {column.map(({ label, value }) => (
               <View key={label} style={[styles.row, styles.line, { paddingVertical: 2.5 }]}>
-                <Text style={[styles.muted, { width: 122 }]}>{label}</Text>
+                <Text style={[styles.muted, { width: 100 }]}>{label}</Text>
                 <Text style={{ flex: 1 }}>{drawable(value)}</Text>
               </View>
             ))}
@@ -221,21 +232,12 @@ function Cautions() {
 
 function Foot({ model }: { model: CertificateModel }) {
   const { template, revision, lock } = model.agreed;
+  const name = drawable(`${template.number} ${revision.letter}, content ${lock.contentDigest.slice(0, 16)}…`);
   return (
-    <View
+    <Text
       fixed
-      style={[
-        styles.row,
-        { position: 'absolute', left: 42, right: 42, bottom: 20, fontSize: 7, color: slate },
-      ]}
-    >
-      <Text>
-        {drawable(`${template.number} ${revision.letter}, content ${lock.contentDigest.slice(0, 16)}…`)}
-      </Text>
-      <Text
-        style={{ marginLeft: 'auto' }}
-        render={({ pageNumber, totalPages }) => `Sheet ${pageNumber} of ${totalPages}`}
-      />
-    </View>
+      style={{ position: 'absolute', left: 42, right: 42, bottom: 22, fontSize: 7.5, color: slate }}
+      render={({ pageNumber, totalPages }) => `Sheet ${pageNumber} of ${totalPages}, ${name}`}
+    />
   );
 }

@@ -7,22 +7,40 @@ import { madder, statusColour, styles } from './styles';
 import { checkName, figure, statusWord } from './words';
 
 type Finding = DocketView['findings'][number];
-const columns = { name: 104, status: 66, measured: 62, limit: 62 };
+const columns = { name: 92, status: 64, measured: 54, limit: 54 };
 
 /** Every check with what was measured, its limit and the basis of the limit; waivers where they belong. */
 export function FindingsTable({ findings, timeZone }: { findings: Finding[]; timeZone: string }) {
+  const run = findings.filter(({ status }) => status !== 'not-run');
   return (
-    <View>
-      <View style={[styles.row, styles.headLine]} fixed>
-        <Text style={[styles.label, { width: columns.name }]}>Check</Text>
-        <Text style={[styles.label, { width: columns.status }]}>Result</Text>
-        <Text style={[styles.label, { width: columns.measured }]}>Measured</Text>
-        <Text style={[styles.label, { width: columns.limit }]}>Limit</Text>
-        <Text style={[styles.label, { flex: 1 }]}>Finding and basis of the limit</Text>
+    <>
+      <View>
+        <View style={[styles.row, styles.headLine]} fixed>
+          <Text style={[styles.label, { width: columns.name }]}>Check</Text>
+          <Text style={[styles.label, { width: columns.status }]}>Result</Text>
+          <Text style={[styles.label, { width: columns.measured }]}>Measured</Text>
+          <Text style={[styles.label, { width: columns.limit }]}>Limit</Text>
+          <Text style={[styles.label, { flex: 1 }]}>Finding and basis of the limit</Text>
+        </View>
+        {run.map((finding) => (
+          <FindingRow key={finding.id} finding={finding} timeZone={timeZone} />
+        ))}
       </View>
-      {findings.map((finding) => (
-        <FindingRow key={finding.id} finding={finding} timeZone={timeZone} />
-      ))}
+      <NotRun findings={findings.filter(({ status }) => status === 'not-run')} />
+    </>
+  );
+}
+
+function NotRun({ findings }: { findings: Finding[] }) {
+  if (findings.length === 0) return null;
+  return (
+    <View style={[styles.row, styles.line]} wrap={false}>
+      <StatusShape status="not-run" />
+      <Text style={{ flex: 1 }}>
+        <Text style={styles.strong}>Not run by this engine version: </Text>
+        {findings.map(({ checkId }) => checkName(checkId)).join(', ')}. Nothing is said about them here; the
+        test pull must show them.
+      </Text>
     </View>
   );
 }
@@ -41,7 +59,7 @@ function FindingRow({ finding, timeZone }: { finding: Finding; timeZone: string 
       <Text style={[numbers, { width: columns.limit }]}>{drawable(figure(limit, unit))}</Text>
       <View style={{ flex: 1 }}>
         <Text>{drawable(message)}</Text>
-        {status !== 'pass' && status !== 'not-run' && remedy !== '' && <Text>{drawable(remedy)}</Text>}
+        {status !== 'pass' && remedy !== '' && <Text>{drawable(remedy)}</Text>}
         <Text style={[styles.muted, { fontSize: 7.5 }]}>Basis: {drawable(basis.source)}</Text>
         {waiver && (
           <Text style={{ color: madder }}>

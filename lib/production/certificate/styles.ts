@@ -21,6 +21,7 @@ export const statusColour: Record<string, string> = {
 const text = sans as never;
 const figures = mono as never;
 
+// No line height anywhere: the renderer multiplies it anew in every pass that page numbers cause.
 export const styles = StyleSheet.create({
   page: {
     paddingTop: 40,
@@ -28,14 +29,13 @@ export const styles = StyleSheet.create({
     paddingHorizontal: 42,
     fontFamily: text,
     fontSize: 9,
-    lineHeight: 1.4,
     color: ink,
   },
   figures: { fontFamily: figures, fontSize: 7 },
   kicker: { fontSize: 8, color: slate },
-  h1: { fontSize: 21, fontWeight: 600, lineHeight: 1.15 },
+  h1: { fontSize: 21, fontWeight: 600 },
   h2: { fontSize: 10.5, fontWeight: 600, marginTop: 16, marginBottom: 5 },
-  lead: { fontSize: 9.5, lineHeight: 1.45 },
+  lead: { fontSize: 9.5 },
   row: { flexDirection: 'row' },
   line: { borderTopWidth: 0.6, borderTopColor: hairline, paddingVertical: 4 },
   headLine: { borderTopWidth: 0.9, borderTopColor: ink, paddingVertical: 3 },
