@@ -1,12 +1,13 @@
 'use client';
 
 import { EditorContent, useEditor } from '@tiptap/react';
-import { useEffect, useId, useRef } from 'react';
+import { useEffect, useId, useRef, useState } from 'react';
 import type { Mentionable } from './filter-people';
 import type { NoteDocument } from './note-draft';
+import { MentionList } from './mention-list';
+import { MentionMenu } from './mention-menu';
 import { noteExtensions } from './note-extensions';
 import { NoteToolbar } from './note-toolbar';
-import { useMentionList } from './use-mention-list';
 
 export interface NoteEditorProps {
   /** Name of the text for screen readers, such as `Reply to A. Brandt`. */
@@ -39,12 +40,13 @@ export function NoteEditor(props: NoteEditorProps) {
   const { label, placeholder, people, body, generation, autoFocus } = props;
   const handlers = useRef(props);
   const hintId = useId();
-  const { suggestion, list } = useMentionList(people);
+  const listId = useId();
+  const [menu] = useState(() => new MentionMenu(listId));
   const editor = useEditor({
     immediatelyRender: false,
     shouldRerenderOnTransaction: false,
     autofocus: autoFocus ? 'end' : false,
-    extensions: noteExtensions({ placeholder, suggestion }),
+    extensions: noteExtensions({ placeholder, suggestion: menu.suggestion }),
     content: body ?? undefined,
     editorProps: {
       attributes: {
@@ -72,6 +74,7 @@ export function NoteEditor(props: NoteEditorProps) {
   useEffect(() => {
     handlers.current = props;
   });
+  useEffect(() => menu.know(people), [menu, people]);
   const taken = useRef(generation);
   useEffect(() => {
     if (!editor || taken.current === generation) return;
@@ -86,7 +89,7 @@ export function NoteEditor(props: NoteEditorProps) {
       <p id={hintId} className="sr-only">
         Control and Enter posts the note. An @ lists the people of this workspace.
       </p>
-      {list}
+      <MentionList menu={menu} id={listId} />
     </div>
   );
 }
