@@ -26,7 +26,7 @@ export function defineApp({ port, env, release, logFile, echo, events }: AppOpti
     cwd: release ?? root,
     env: { ...env, PORT: String(port), HOSTNAME: '127.0.0.1' },
     logFile,
-    answers: () => webAnswers(`${url}/api/live`),
+    answers: () => webAnswers(`${url}/api/ready`, (status) => status === 200),
     answersWithin: release ? 30_000 : 120_000,
     echo,
     events,
