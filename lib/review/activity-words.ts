@@ -3,6 +3,7 @@ import type { EntryRow } from './activity-data';
 export type Told = { text: string; path: string | null };
 type Detail = Record<string, unknown>;
 type Place = { slug: string; number: string };
+type Subject = Pick<EntryRow, 'detail' | 'subjectKind' | 'subjectId'>;
 
 const word = (value: unknown, fallback = '') => (typeof value === 'string' ? value : fallback);
 const quoted = (value: unknown) => `"${word(value).slice(0, 140)}"`;
@@ -65,18 +66,16 @@ const sentences: Record<string, (d: Detail, at: Place) => string> = {
 export const knownActions = Object.keys(sentences);
 
 /** One entry in plain words, with the page that it leads to. */
-export function tell(entry: Pick<EntryRow, 'action' | 'detail' | 'subjectKind'>, at: Place): Told {
+export function tell(entry: Subject & Pick<EntryRow, 'action'>, at: Place): Told {
   const { detail } = entry;
   const say = sentences[entry.action];
   const text = say ? say(detail, at) : entry.action.replaceAll(/[.-]/g, ' ');
   return { text, path: pathOf(entry, at.slug) };
 }
 
-function pathOf(
-  { detail, subjectKind }: Pick<EntryRow, 'detail' | 'subjectKind'>,
-  slug: string,
-): string | null {
-  const templateId = word(detail.templateId);
+function pathOf(entry: Subject, slug: string): string | null {
+  const { detail, subjectKind } = entry;
+  const templateId = templateOf(entry);
   const letter = word(detail.letter);
   if (templateId) return `/w/${slug}/templates/${templateId}${letter ? `/${letter}` : ''}`;
   if (subjectKind === 'person' || subjectKind === 'invitation') return `/w/${slug}/people`;
@@ -85,5 +84,5 @@ function pathOf(
 }
 
 /** Which template an entry speaks of: by its detail, or because it is the subject. */
-export const templateOf = (entry: Pick<EntryRow, 'detail' | 'subjectKind' | 'subjectId'>): string | null =>
+export const templateOf = (entry: Subject): string | null =>
   word(entry.detail.templateId) || (entry.subjectKind === 'template' ? entry.subjectId : null);

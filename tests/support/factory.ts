@@ -2,6 +2,7 @@ import { createHash, randomUUID } from 'node:crypto';
 import { withTenant } from '@/db/tenant';
 import { jobContext, type JobContext, type WorkspaceContext } from '@/lib/auth/context';
 import { analyse } from '@/lib/formability/analyse';
+import type { EffectiveRecipe } from '@/lib/formability/recipe';
 import type { CheckId, CheckStatus, Report } from '@/lib/formability/report';
 import type { Fence } from '@/lib/jobs/fence';
 import { claimJob, latestJobOf, markDone, type JobKind } from '@/lib/jobs/jobs-data';
@@ -125,22 +126,21 @@ export async function sendMesh(ctx: WorkspaceContext, templateId: string): Promi
 
 export type Statuses = Partial<Record<CheckId, CheckStatus>>;
 
-const reports = new Map<string, Report>();
+let blockReport: Report | undefined;
 
-/** The engine's report on the block, with these statuses for its checks and `pass` for the others. */
+/** The engine's report on the block (on a coarse grid), with these statuses for its checks and `pass` for the others. */
 export function reportOn(
   input: { sha256: string; recipe: Record<string, unknown> },
   statuses: Statuses,
 ): Report {
-  const key = JSON.stringify(input.recipe);
-  const report = reports.get(key) ?? analyse(blockStl(), input.recipe).report;
-  reports.set(key, report);
-  const checks = report.checks.map((check) => ({
+  blockReport ??= analyse(blockStl(), { grid: { cellMm: 1.5, sheetNodes: 16 } }).report;
+  const checks = blockReport.checks.map((check) => ({
     ...check,
     status: statuses[check.id] ?? 'pass',
     remedy: statuses[check.id] === 'fail' ? check.remedy || 'Change it.' : '',
   }));
-  return { ...report, input: { ...report.input, sha256: input.sha256 }, checks };
+  const recipe = input.recipe as unknown as EffectiveRecipe;
+  return { ...blockReport, recipe, input: { ...blockReport.input, sha256: input.sha256 }, checks };
 }
 
 /** Does what the worker does with a posted revision, without its pictures. */
