@@ -3,9 +3,10 @@ import { EXTMeshoptCompression, KHRMeshQuantization } from '@gltf-transform/exte
 import { MeshoptEncoder } from 'meshoptimizer/encoder';
 import { measureDraftArea } from './draft-histogram';
 import { findCreaseEdges } from './find-crease-edges';
-import { simplifyStageMesh, TRIANGLE_TARGET } from './simplify-stage-mesh';
+import { coarsenStageMesh, simplifyStageMesh, TRIANGLE_TARGET } from './simplify-stage-mesh';
 import { splitVertices, type SplitMesh } from './split-vertices';
 import {
+  COARSE_ROLE,
   DRAFT_ATTRIBUTE,
   DRAFT_STEP_DEG,
   FLAGS_ATTRIBUTE,
@@ -22,7 +23,8 @@ export interface StageModel {
 /**
  * The compact model that the browser draws, from the engine's geometry: welded, split where colours or shading may
  * not mix, simplified above `triangleTarget`, positions on a 16-bit grid (mm by the node's scale), `_DRAFT` in counts
- * of 0.01°, `_FLAGS` (1 bed, 2 undercut), a second primitive of ink lines. Throws RangeError on unusable geometry.
+ * of 0.01°, `_FLAGS` (1 bed, 2 undercut), a second primitive of ink lines, and for
+ * heavy models a third, coarser one on the same vertices for frames in motion. Throws RangeError on unusable geometry.
  */
 export async function buildStageModel(
   geometry: StageGeometry,
@@ -35,9 +37,10 @@ export async function buildStageModel(
   if (mesh.vertices === 0)
     throw new RangeError('The mesh has no facet with an area; there is nothing to show.');
   const { index, boundMm, errorMm } = await simplifyStageMesh(mesh, triangleTarget);
+  const coarse = await coarsenStageMesh(mesh, index);
   const lines = findCreaseEdges(mesh, index);
   const [remap, vertices] = MeshoptEncoder.reorderMesh(index, true, true);
-  const lineIndex = lines.map((v) => remap[v]);
+  const renamed = { index, coarse: coarse.map((v) => remap[v]), lines: lines.map((v) => remap[v]) };
   const meta: StageModelMeta = {
     schema: 1,
     triangles: index.length / 3,
@@ -53,7 +56,7 @@ export async function buildStageModel(
     areaMm2: area.areaMm2,
     histogram: area.histogram,
   };
-  const glb = await writeGlb(mesh, remap, vertices, index, lineIndex, meta);
+  const glb = await writeGlb(mesh, remap, vertices, renamed, meta);
   return { glb, meta: { ...meta, bytes: glb.byteLength } };
 }
 
@@ -61,8 +64,7 @@ async function writeGlb(
   mesh: SplitMesh,
   remap: Uint32Array,
   vertices: number,
-  index: Uint32Array,
-  lineIndex: Uint32Array,
+  { index, coarse, lines }: Record<'index' | 'coarse' | 'lines', Uint32Array>,
   meta: StageModelMeta,
 ): Promise<Uint8Array> {
   const { position, normal, draft, flags } = vertexArrays(mesh, remap, vertices);
@@ -76,16 +78,20 @@ async function writeGlb(
     [DRAFT_ATTRIBUTE]: accessor('SCALAR', draft),
     [FLAGS_ATTRIBUTE]: accessor('SCALAR', flags),
   };
-  const surface = doc.createPrimitive().setIndices(accessor('SCALAR', narrow(index, vertices)));
-  for (const [name, value] of Object.entries(attributes)) surface.setAttribute(name, value);
-  const shape = doc.createMesh('template').addPrimitive(surface);
-  if (lineIndex.length > 0) {
+  const triangles = (corners: Uint32Array) => {
+    const primitive = doc.createPrimitive().setIndices(accessor('SCALAR', narrow(corners, vertices)));
+    for (const [name, value] of Object.entries(attributes)) primitive.setAttribute(name, value);
+    return primitive;
+  };
+  const shape = doc.createMesh('template').addPrimitive(triangles(index));
+  if (lines.length > 0) {
     const ink = doc
       .createPrimitive()
       .setMode(1)
-      .setIndices(accessor('SCALAR', narrow(lineIndex, vertices)));
+      .setIndices(accessor('SCALAR', narrow(lines, vertices)));
     shape.addPrimitive(ink.setAttribute('POSITION', attributes.POSITION));
   }
+  if (coarse.length > 0) shape.addPrimitive(triangles(coarse).setExtras({ role: COARSE_ROLE }));
   shape.setExtras({
     unit: 'mm',
     up: 'z',

@@ -2,7 +2,7 @@ import { cividis, type Rgb } from './cividis';
 import { draftScaleAt, draftScaleMaxDeg, FLAT_FROM_DEG } from './draft-scale';
 import { encodePng } from './encode-png';
 import { CLAY_DARK, CLAY_LIGHT, INK, MADDER, mix, PAPER } from './picture-palette';
-import { ISOMETRIC, rasterise, viewAxes, type ParallelView, type Raster } from './rasterise';
+import { ISOMETRIC, rasterise, viewAxes, type ParallelView, type Raster, type ViewAxes } from './rasterise';
 import { FLAG_BED, FLAG_UNDERCUT, type StageGeometry } from './stage-model-meta';
 
 export interface PictureOptions {
@@ -38,6 +38,7 @@ export function renderPicture(geometry: StageGeometry, options: PictureOptions =
     throw new RangeError('The mesh has no triangle; there is nothing to picture.');
   const margin = Math.round(Math.min(widthPx, heightPx) * 0.05) * SAMPLES;
   const raster = rasterise(geometry.positions, view, widthPx * SAMPLES, heightPx * SAMPLES, margin);
+  const axes = viewAxes(view);
   const normals = seenNormals(geometry.positions, raster);
   const paint = (at: number, facet: number): Rgb => {
     const normal = normals.subarray(facet * 3, facet * 3 + 3);
@@ -48,7 +49,7 @@ export function renderPicture(geometry: StageGeometry, options: PictureOptions =
     if (undercut && stripe) return MADDER;
     const draft = geometry.facetDraftDeg[facet];
     const isWall = draft < FLAT_FROM_DEG && (geometry.facetFlags[facet] & FLAG_BED) === 0;
-    if (map === 'plain' || !isWall) return clay(normal, view);
+    if (map === 'plain' || !isWall) return clay(normal, axes);
     const colour = cividis(draftScaleAt(draft, draftScaleMaxDeg(limitDeg)));
     return draft < limitDeg && stripe ? mix(colour, PAPER, 0.75) : colour;
   };
@@ -65,9 +66,10 @@ function resolve(
 ): Uint8Array {
   const ink = inkLines(raster, normals);
   const rgb = new Uint8Array(widthPx * heightPx * 3);
+  const sum = [0, 0, 0];
   for (let y = 0; y < heightPx; y++) {
     for (let x = 0; x < widthPx; x++) {
-      const sum = [0, 0, 0];
+      sum.fill(0);
       for (let s = 0; s < SAMPLES * SAMPLES; s++) {
         const at = (y * SAMPLES + Math.floor(s / SAMPLES)) * raster.width + x * SAMPLES + (s % SAMPLES);
         const facet = raster.facet[at];
@@ -133,8 +135,7 @@ function seenNormals(p: Float32Array, raster: Raster): Float32Array {
 }
 
 /** Soft light from above and the left of the eye: tops lightest, walls by how far they turn away. */
-function clay(normal: Float32Array, view: ParallelView): Rgb {
-  const { right, toEye } = viewAxes(view);
+function clay(normal: Float32Array, { right, toEye }: ViewAxes): Rgb {
   const side = normal[0] * right[0] + normal[1] * right[1] + normal[2] * right[2];
   const facing = Math.abs(normal[0] * toEye[0] + normal[1] * toEye[1] + normal[2] * toEye[2]);
   const light = 0.3 + 0.4 * Math.max(0, normal[2]) + 0.22 * facing - 0.24 * side;

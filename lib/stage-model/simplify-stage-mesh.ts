@@ -9,6 +9,9 @@ export const TRIANGLE_TARGET = 200_000;
 /** The simplifier works from the smallest error upwards and stops at the target; this part of the longest side caps it. */
 const CAP = 1 / 150;
 
+/** While the eye moves on a slow machine this many are drawn; worth having only where it spares half of them. */
+const COARSE_TARGET = 30_000;
+
 export interface Simplified {
   index: Uint32Array;
   boundMm: number;
@@ -21,14 +24,25 @@ export interface Simplified {
  */
 export async function simplifyStageMesh(mesh: SplitMesh, target = TRIANGLE_TARGET): Promise<Simplified> {
   if (mesh.index.length / 3 <= target) return { index: mesh.index, boundMm: 0, errorMm: 0 };
+  const { index, boundMm } = await collapse(mesh, mesh.index, target);
+  return { index, boundMm, errorMm: measureDeviation(placePoints(mesh), index, mesh.place) };
+}
+
+/** A still coarser index for frames in motion, or an empty one where the model is light anyway. */
+export async function coarsenStageMesh(mesh: SplitMesh, index: Uint32Array): Promise<Uint32Array> {
+  if (index.length / 3 < 2 * COARSE_TARGET) return new Uint32Array(0);
+  const coarse = await collapse(mesh, index, COARSE_TARGET);
+  return coarse.index.length < index.length / 2 ? coarse.index : new Uint32Array(0);
+}
+
+async function collapse(mesh: SplitMesh, from: Uint32Array, target: number) {
   await MeshoptSimplifier.ready;
-  const points = placePoints(mesh);
-  const positions = vertexPositions(mesh, points);
+  const positions = vertexPositions(mesh, placePoints(mesh));
   const attributes = vertexAttributes(mesh);
   const boundMm = 65535 * mesh.stepMm * CAP;
-  const collapse = (from: Uint32Array, flags: ('ErrorAbsolute' | 'Permissive')[]) =>
+  const run = (index: Uint32Array, flags: ('ErrorAbsolute' | 'Permissive')[]) =>
     MeshoptSimplifier.simplifyWithAttributes(
-      from,
+      index,
       positions,
       3,
       attributes,
@@ -39,9 +53,9 @@ export async function simplifyStageMesh(mesh: SplitMesh, target = TRIANGLE_TARGE
       boundMm,
       flags,
     )[0];
-  let index = collapse(mesh.index, ['ErrorAbsolute']);
-  if (index.length > target * 3 * 1.2) index = collapse(index, ['ErrorAbsolute', 'Permissive']);
-  return { index, boundMm, errorMm: measureDeviation(points, index, mesh.place) };
+  let index = run(from, ['ErrorAbsolute']);
+  if (index.length > target * 3 * 1.2) index = run(index, ['ErrorAbsolute', 'Permissive']);
+  return { index, boundMm };
 }
 
 /** Place coordinates in mm, three numbers each, corner of the bounds at 0. */

@@ -1,6 +1,8 @@
 /** Attribute names and steps of the stage model, shared by the worker that writes it and the browser that reads it. */
 export const DRAFT_ATTRIBUTE = '_DRAFT';
 export const FLAGS_ATTRIBUTE = '_FLAGS';
+/** `extras.role` of the primitive that is drawn while the eye moves on a slow machine. */
+export const COARSE_ROLE = 'coarse';
 /** One count of `_DRAFT` in degrees; the engine's own tolerance on draft is 0.02°. */
 export const DRAFT_STEP_DEG = 0.01;
 export const FLAG_BED = 1;

@@ -8,7 +8,12 @@ import {
 } from 'three';
 import { GLTFLoader } from 'three/addons/loaders/GLTFLoader.js';
 import { MeshBVH, type SerializedBVH } from 'three-mesh-bvh';
-import { DRAFT_ATTRIBUTE, DRAFT_STEP_DEG, FLAGS_ATTRIBUTE } from '@/lib/stage-model/stage-model-meta';
+import {
+  COARSE_ROLE,
+  DRAFT_ATTRIBUTE,
+  DRAFT_STEP_DEG,
+  FLAGS_ATTRIBUTE,
+} from '@/lib/stage-model/stage-model-meta';
 
 /** A stage model ready to draw, cut and pick; plain arrays, so that a worker can hand it over. */
 export interface StageModelData {
@@ -19,6 +24,8 @@ export interface StageModelData {
   flags: Float32Array;
   /** corners, in the order that the search tree wants them */
   index: Uint32Array;
+  /** fewer triangles on the same vertices for frames in motion; empty where the model is light */
+  coarse: Uint32Array;
   /** pairs of vertices: the ink lines */
   lines: Uint32Array;
   tree: SerializedBVH;
@@ -41,10 +48,12 @@ export async function decodeStageModel(glb: ArrayBuffer): Promise<StageModelData
   loader.setMeshoptDecoder(MeshoptDecoder);
   const { scene } = await loader.parseAsync(glb, '');
   scene.updateMatrixWorld(true);
-  const found: { surface?: Drawn; ink?: Drawn } = {};
+  const found: { surface?: Drawn; coarse?: Drawn; ink?: Drawn } = {};
   scene.traverse((object) => {
     if ((object as { isLineSegments?: boolean }).isLineSegments) found.ink = object as Drawn;
-    else if ((object as { isMesh?: boolean }).isMesh) found.surface = object as Drawn;
+    else if (!(object as { isMesh?: boolean }).isMesh) return;
+    else if ((object as Drawn).geometry.userData.role === COARSE_ROLE) found.coarse = object as Drawn;
+    else found.surface = object as Drawn;
   });
   const geometry = found.surface?.geometry;
   const draft = geometry?.getAttribute(DRAFT_ATTRIBUTE.toLowerCase());
@@ -57,20 +66,13 @@ export async function decodeStageModel(glb: ArrayBuffer): Promise<StageModelData
     draftDeg: plain(draft, 1).map((v) => v * DRAFT_STEP_DEG),
     flags: plain(flags, 1),
     index: Uint32Array.from(geometry.index.array),
+    coarse: Uint32Array.from(found.coarse?.geometry.index?.array ?? []),
     lines: Uint32Array.from(found.ink?.geometry.index?.array ?? []),
   });
 }
 
-export function transferables({
-  positions,
-  normals,
-  draftDeg,
-  flags,
-  index,
-  lines,
-  tree,
-}: StageModelData): ArrayBuffer[] {
-  const buffers = [positions, normals, draftDeg, flags, index, lines].map((a) => a.buffer as ArrayBuffer);
+export function transferables({ tree, ...arrays }: StageModelData): ArrayBuffer[] {
+  const buffers = Object.values(arrays).map((a) => a.buffer as ArrayBuffer);
   return [...new Set([...buffers, ...tree.roots])];
 }
 

@@ -1,5 +1,13 @@
 import type { StageModelData } from './decode-stage-model';
 
+/**
+ * What makes an address another model. A store's signed address changes its signature at every answer while its path
+ * names the same bytes, so the query of such an address does not count.
+ */
+export function stageModelKey(url: string): string {
+  return /[?&]x-amz-signature=/i.test(url) ? url.slice(0, url.indexOf('?')) : url;
+}
+
 const models = new Map<string, Promise<StageModelData>>();
 
 /**
@@ -7,12 +15,13 @@ const models = new Map<string, Promise<StageModelData>>();
  * The stage and the profile strip share it. Rejects with a sentence that can be shown.
  */
 export function loadStageModel(url: string): Promise<StageModelData> {
-  const known = models.get(url);
+  const key = stageModelKey(url);
+  const known = models.get(key);
   if (known) return known;
   const absolute = new URL(url, document.baseURI).href;
   const model = loadInWorker(absolute).catch(() => loadHere(absolute));
-  models.set(url, model);
-  model.catch(() => models.delete(url));
+  models.set(key, model);
+  model.catch(() => models.delete(key));
   // Two revisions side by side are the most that a page compares; older ones are fetched again.
   if (models.size > 3) models.delete(models.keys().next().value!);
   return model;

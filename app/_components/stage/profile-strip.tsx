@@ -1,7 +1,7 @@
 'use client';
 
 import clsx from 'clsx';
-import { useCallback, useEffect, useMemo, useState } from 'react';
+import { useCallback, useMemo, useState } from 'react';
 import { ToggleButton, ToggleButtonGroup } from 'react-aria-components';
 import { findSectionWalls, type SectionWall } from '@/lib/stage-model/find-section-walls';
 import { cutSection, type SectionLine } from '@/lib/stage-model/section';
@@ -9,11 +9,10 @@ import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { formatLength } from '../format-figure';
 import { NumberField } from '../number-field';
 import { usePreferences } from '../preferences-context';
-import type { StageModelData } from './decode-stage-model';
 import { mainWalls, scaleProfile } from './layout-profile';
-import { loadStageModel } from './load-stage-model';
 import { ProfileDrawing, type StripVent } from './profile-drawing';
 import type { Point } from './stage-props';
+import { useStageModel } from './use-stage-model';
 import { WallTable } from './wall-table';
 
 export interface ProfileStripProps {
@@ -166,24 +165,6 @@ export function ProfileStrip(props: ProfileStripProps) {
       ) : null}
     </section>
   );
-}
-
-function useStageModel(url: string): { model: StageModelData | null; problem: string | null } {
-  const [loaded, setLoaded] = useState<{ url: string; model?: StageModelData; problem?: string } | null>(
-    null,
-  );
-  useEffect(() => {
-    let current = true;
-    loadStageModel(url).then(
-      (model) => current && setLoaded({ url, model }),
-      (error: Error) => current && setLoaded({ url, problem: error.message }),
-    );
-    return () => {
-      current = false;
-    };
-  }, [url]);
-  const now = loaded?.url === url ? loaded : null;
-  return { model: now?.model ?? null, problem: now?.problem ?? null };
 }
 
 function useWidth(): [(element: HTMLDivElement | null) => (() => void) | undefined, number] {

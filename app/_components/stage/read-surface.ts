@@ -1,7 +1,7 @@
 import { FLAT_FROM_DEG } from '@/lib/stage-model/draft-scale';
 import { formatLength, formatNumber } from '../format-figure';
 import type { Units } from '../preferences';
-import type { SurfaceHit } from './stage-scene';
+import type { SurfaceHit } from './surface-picker';
 
 /** A place on the surface in words: its draft against the limit, and where it is. */
 export function readSurface(hit: SurfaceHit, limitDeg: number, units: Units): string {

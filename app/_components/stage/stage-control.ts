@@ -13,7 +13,8 @@ import {
   type StandardViewId,
 } from './camera-rig';
 import type { StageCamera, Point } from './stage-props';
-import type { StageScene, SurfaceHit } from './stage-scene';
+import type { StageScene } from './stage-scene';
+import type { SurfaceHit, SurfacePicker } from './surface-picker';
 
 /** What the stage looked like when it was last drawn; marks over the model are laid out from it. */
 export interface StageFrame {
@@ -45,6 +46,7 @@ export class StageControl {
 
   constructor(
     private readonly scene: StageScene,
+    private readonly picker: SurfacePicker,
     private readonly bounds: Bounds,
     private readonly onRest: (view: StageCamera) => void,
   ) {}
@@ -180,7 +182,7 @@ export class StageControl {
   }
 
   pick(x: number, y: number): SurfaceHit | null {
-    return this.scene.pick(x, y, this.rig);
+    return this.picker.pick(x, y, this.rig, { width: this.width, height: this.height });
   }
 
   pickMiddle(): SurfaceHit | null {

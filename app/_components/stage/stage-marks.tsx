@@ -7,6 +7,7 @@ import type { Kept } from './layout-pin-labels';
 import { PinLayer } from './pin-layer';
 import { SectionMarks } from './section-marks';
 import type { Point, StagePin } from './stage-props';
+import { toScreen } from './surface-picker';
 import type { StageEngine } from './use-stage-engine';
 
 /** What lies over the model and follows it: pins, the cutting line, the place about to be pinned, the cross-hair. */
@@ -25,12 +26,12 @@ export function StageMarks(props: {
   kept: Kept | null;
 }) {
   const { engine, pins, sectionLine, ghost, highlight } = props;
-  const { control, scene } = engine;
+  const { control, picker } = engine;
   const frame = useSyncExternalStore(control.subscribe, control.lastFrame, () => null);
   if (!frame) return null;
-  const toScreen = (at: Point) => scene.toScreen(at, frame.rig);
-  const spot = highlight && toScreen(highlight);
-  const shadow = ghost && toScreen(ghost);
+  const onScreen = (at: Point) => toScreen(at, frame.rig, frame);
+  const spot = highlight && onScreen(highlight);
+  const shadow = ghost && onScreen(ghost);
   return (
     <div className="pointer-events-none absolute inset-0 overflow-hidden *:pointer-events-auto [&>svg]:pointer-events-none">
       {sectionLine ? (
@@ -38,14 +39,14 @@ export function StageMarks(props: {
           line={sectionLine}
           bounds={props.bounds}
           frame={frame}
-          toScreen={toScreen}
+          toScreen={onScreen}
           onChange={props.onSectionLineChange}
         />
       ) : null}
       <PinLayer
         pins={pins.map((pin) => {
-          const [x, y] = toScreen(pin.at);
-          return { pin, x, y, hidden: scene.isHidden(pin.at, frame.rig) };
+          const [x, y] = onScreen(pin.at);
+          return { pin, x, y, hidden: picker.isHidden(pin.at, frame.rig) };
         })}
         active={props.activePin}
         width={frame.width}

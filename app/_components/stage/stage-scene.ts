@@ -6,30 +6,20 @@ import {
   LineSegments,
   Mesh,
   OrthographicCamera,
-  Ray,
   Scene,
   Vector3,
   WebGLRenderer,
 } from 'three';
-import { MeshBVH } from 'three-mesh-bvh';
 import { rigAxes, type RigState } from './camera-rig';
 import type { StageModelData } from './decode-stage-model';
-import type { Point, StageMap } from './stage-props';
+import { probeWebgl } from './probe-webgl';
+import type { StageMap } from './stage-props';
 import { createTemplateMaterial, type StageColours } from './template-material';
-
-/** What the stage knows of a place on the surface. */
-export interface SurfaceHit {
-  at: Point;
-  normal: Point;
-  draftDeg: number;
-  undercut: boolean;
-  bed: boolean;
-}
 
 const HATCH_CSS_PX = 7;
 const MOST_PIXEL_RATIO = 2;
-/** A frame that takes longer than this while the eye moves is drawn coarser until it rests. */
-const SLOW_FRAME_MS = 32;
+/** Where frames in motion take longer than this, the next ones are drawn coarser. */
+const SLOW_FRAME_MS = 40;
 
 /**
  * Draws one stage model; knows nothing of React. Draws only when told to: there is no loop that runs at rest.
@@ -43,12 +33,16 @@ export class StageScene {
   private readonly inkMaterial = new LineBasicMaterial({ transparent: true, opacity: 0.55 });
   private readonly cutMaterial = new LineBasicMaterial();
   private readonly surface = new BufferGeometry();
+  private readonly coarse = new BufferGeometry();
   private readonly ink = new BufferGeometry();
   private readonly cut = new BufferGeometry();
+  private readonly whole: Mesh;
+  private readonly light: Mesh;
+  private readonly inkLines: LineSegments;
   private readonly cutLines: LineSegments;
-  private readonly tree: MeshBVH;
   private readonly reach: number;
-  private coarse = 1;
+  private readonly software: boolean;
+  private slow: boolean;
   private probe = 0;
   private size = { width: 1, height: 1 };
 
@@ -56,7 +50,10 @@ export class StageScene {
     readonly canvas: HTMLCanvasElement,
     private readonly model: StageModelData,
   ) {
-    this.renderer = new WebGLRenderer({ canvas, antialias: true, alpha: true });
+    // Software smooths edges by drawing a larger picture once at rest; that is cheaper than every frame.
+    this.software = probeWebgl().software;
+    this.slow = this.software;
+    this.renderer = new WebGLRenderer({ canvas, antialias: !this.software, alpha: true });
     this.renderer.setClearAlpha(0);
     const position = new BufferAttribute(model.positions, 3);
     this.surface.setAttribute('position', position);
@@ -64,15 +61,19 @@ export class StageScene {
     this.surface.setAttribute('draft', new BufferAttribute(model.draftDeg, 1));
     this.surface.setAttribute('flags', new BufferAttribute(model.flags, 1));
     this.surface.setIndex(new BufferAttribute(model.index, 1));
-    this.tree = MeshBVH.deserialize({ ...model.tree, index: model.index }, this.surface, { setIndex: false });
     this.surface.computeBoundingSphere();
     this.reach = (this.surface.boundingSphere?.radius ?? 100) * 4;
     this.ink.setAttribute('position', position);
     this.ink.setIndex(new BufferAttribute(model.lines, 1));
     this.cutLines = new LineSegments(this.cut, this.cutMaterial);
     this.cutLines.frustumCulled = false;
-    const inkLines = new LineSegments(this.ink, this.inkMaterial);
-    this.scene.add(new Mesh(this.surface, this.template.material), inkLines, this.cutLines);
+    this.inkLines = new LineSegments(this.ink, this.inkMaterial);
+    for (const [name, attribute] of Object.entries(this.surface.attributes))
+      this.coarse.setAttribute(name, attribute);
+    this.coarse.setIndex(new BufferAttribute(model.coarse, 1));
+    this.whole = new Mesh(this.surface, this.template.material);
+    this.light = new Mesh(this.coarse, this.template.material);
+    this.scene.add(this.whole, this.light, this.inkLines, this.cutLines);
   }
 
   resize(width: number, height: number): void {
@@ -102,24 +103,28 @@ export class StageScene {
 
   /** Draws one frame; `moving` allows a coarser one on a slow machine. */
   draw(rig: RigState, moving: boolean): void {
-    const ratio = Math.min(MOST_PIXEL_RATIO, window.devicePixelRatio || 1) * (moving ? this.coarse : 1);
+    const screen = Math.min(MOST_PIXEL_RATIO, window.devicePixelRatio || 1);
+    const plain = moving && this.slow;
+    const ratio = plain ? Math.min(1, screen) * 0.75 : this.software ? Math.max(1.5, screen) : screen;
     if (this.renderer.getPixelRatio() !== ratio) this.renderer.setPixelRatio(ratio);
+    const hasCoarse = this.model.coarse.length > 0;
+    this.whole.visible = !(plain && hasCoarse);
+    this.light.visible = plain && hasCoarse;
+    this.inkLines.visible = !plain || this.model.lines.length < 20_000;
     this.template.setPitch(HATCH_CSS_PX * ratio);
     this.inkMaterial.opacity = ratio > 1.5 ? 0.8 : 0.5;
     this.aim(rig);
     this.renderer.render(this.scene, this.camera);
   }
 
-  /** Call after a frame drawn in motion: where the next chance to draw comes late, later frames are drawn coarser. */
+  /** Call after a frame drawn in motion: where the next chance to draw comes late, frames in motion are drawn coarser. */
   timeFrame(): void {
     if (this.probe !== 0) return;
     const start = performance.now();
     this.probe = requestAnimationFrame(() => {
       this.probe = requestAnimationFrame(() => {
         this.probe = 0;
-        const spent = (performance.now() - start) / 2;
-        if (spent > SLOW_FRAME_MS) this.coarse = Math.max(0.4, this.coarse * 0.8);
-        else if (spent < SLOW_FRAME_MS * 0.6) this.coarse = Math.min(1, this.coarse * 1.1);
+        if ((performance.now() - start) / 2 > SLOW_FRAME_MS) this.slow = true;
       });
     });
   }
@@ -142,64 +147,9 @@ export class StageScene {
     this.template.setEye(right, toEye);
   }
 
-  /** Where a point appears, CSS pixels from the top left of the canvas. */
-  toScreen(at: Point, rig: RigState): [number, number] {
-    const { right, up } = rigAxes(rig);
-    const pxPerMm = this.size.height / rig.span;
-    const d = at.map((v, a) => v - rig.target[a]);
-    const along = (axis: Point) => d[0] * axis[0] + d[1] * axis[1] + d[2] * axis[2];
-    return [this.size.width / 2 + along(right) * pxPerMm, this.size.height / 2 - along(up) * pxPerMm];
-  }
-
-  /** The surface under a place of the canvas, or null where there is only paper. */
-  pick(x: number, y: number, rig: RigState): SurfaceHit | null {
-    const { right, up, toEye } = rigAxes(rig);
-    const mmPerPx = rig.span / this.size.height;
-    const [u, v] = [(x - this.size.width / 2) * mmPerPx, (this.size.height / 2 - y) * mmPerPx];
-    const origin = rig.target.map((t, a) => t + right[a] * u + up[a] * v + toEye[a] * this.reach) as Point;
-    return this.cast(origin, toEye.map((c) => -c) as Point);
-  }
-
-  /** True when something of the template stands between the eye and a point on its surface. */
-  isHidden(at: Point, rig: RigState): boolean {
-    const { toEye } = rigAxes(rig);
-    const clear = this.reach / 4000;
-    const hit = this.cast(at.map((v, a) => v + toEye[a] * clear) as Point, toEye);
-    return hit !== null;
-  }
-
-  private cast(origin: Point, direction: Point): SurfaceHit | null {
-    const hit = this.tree.raycastFirst(
-      new Ray(new Vector3(...origin), new Vector3(...direction)),
-      this.template.material.side,
-    );
-    if (!hit || hit.faceIndex == null || !hit.face) return null;
-    const corners = [0, 1, 2].map((k) => this.model.index[hit.faceIndex! * 3 + k]);
-    const weights = this.weights(hit.point, corners);
-    const draftDeg = corners.reduce((sum, v, k) => sum + this.model.draftDeg[v] * weights[k], 0);
-    const flags = this.model.flags[corners[0]];
-    const normal = hit.face.normal;
-    return {
-      at: hit.point.toArray() as Point,
-      normal: normal.toArray() as Point,
-      draftDeg,
-      undercut: flags > 1.5,
-      bed: flags % 2 === 1,
-    };
-  }
-
-  private weights(point: Vector3, corners: number[]): number[] {
-    const [a, b, c] = corners.map((v) => new Vector3().fromArray(this.model.positions, v * 3));
-    const whole = b.clone().sub(a).cross(c.clone().sub(a)).length() || 1;
-    const part = (p: Vector3, q: Vector3) =>
-      p.clone().sub(point).cross(q.clone().sub(point)).length() / whole;
-    const [wa, wb] = [part(b, c), part(c, a)];
-    return [wa, wb, Math.max(0, 1 - wa - wb)];
-  }
-
   dispose(): void {
     cancelAnimationFrame(this.probe);
-    for (const geometry of [this.surface, this.ink, this.cut]) geometry.dispose();
+    for (const geometry of [this.surface, this.coarse, this.ink, this.cut]) geometry.dispose();
     this.template.dispose();
     this.inkMaterial.dispose();
     this.cutMaterial.dispose();

@@ -14,7 +14,7 @@ import { StageFoot } from './stage-foot';
 import { StageMarks } from './stage-marks';
 import { Picture, STAGE_FRAME, STAGE_HEIGHT } from './stage-picture';
 import type { StageProps } from './stage-props';
-import type { SurfaceHit } from './stage-scene';
+import type { SurfaceHit } from './surface-picker';
 import { MapChoice, ViewChoice } from './stage-toolbar';
 import { traceOfCut } from './trace-of-cut';
 import { useStageEngine, type EngineHandlers } from './use-stage-engine';
@@ -129,7 +129,9 @@ export default function StageView(props: StageProps) {
       ];
       const over = legend !== undefined && legend.top < stage.bottom - 4;
       setKept(over ? { left: legend.left - stage.left, top: legend.top - stage.top } : null);
-      engine.control.setFoot(over ? (stage.bottom - legend.top) * 0.7 : 0);
+      // Seen at a slant the template leaves the corners free; only a legend that reaches the middle takes all its height.
+      const reachesMiddle = over && legend.left - stage.left < stage.width * 0.6;
+      engine.control.setFoot(over ? (stage.bottom - legend.top) * (reachesMiddle ? 1 : 0.6) : 0);
     });
     measure.observe(row);
     measure.observe(host);
@@ -164,7 +166,7 @@ export default function StageView(props: StageProps) {
         Try again
       </Button>
     );
-    return <StageFallback {...props} reason={problem.text} action={again} />;
+    return <StageFallback {...props} reason={problem} action={again} />;
   }
 
   const counts = pins.length === 1 ? '1 pin' : `${pins.length} pins`;

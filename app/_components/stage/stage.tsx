@@ -1,6 +1,7 @@
 'use client';
 
 import { lazy, Suspense, useSyncExternalStore } from 'react';
+import { probeWebgl } from './probe-webgl';
 import { StageFallback } from './stage-fallback';
 import { StagePicture } from './stage-picture';
 import type { StageProps } from './stage-props';
@@ -8,23 +9,8 @@ import type { StageProps } from './stage-props';
 // Never rendered on the server: what the browser can do is not known there.
 const StageView = lazy(() => import('./stage-view'));
 
-let webgl: boolean | undefined;
-
-/** Asked once a page: whether the browser gives a WebGL context at all. */
-function hasWebgl(): boolean {
-  if (webgl === undefined) {
-    try {
-      const context = document.createElement('canvas').getContext('webgl2');
-      webgl = context !== null;
-      context?.getExtension('WEBGL_lose_context')?.loseContext();
-    } catch {
-      webgl = false;
-    }
-  }
-  return webgl;
-}
-
 const never = () => () => {};
+const hasWebgl = () => probeWebgl().able;
 
 /**
  * The template on its stage. The 3D code is fetched only where a stage is shown and the browser can draw it; until then

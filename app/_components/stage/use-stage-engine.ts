@@ -1,17 +1,19 @@
 'use client';
 
-import { useCallback, useEffect, useState, type RefObject } from 'react';
+import { useCallback, useState, type RefObject } from 'react';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { StageModelData } from './decode-stage-model';
-import { loadStageModel } from './load-stage-model';
 import { attachPointers, type PointerEvents } from './pointer-control';
 import { StageControl } from './stage-control';
 import { StageScene } from './stage-scene';
+import { SurfacePicker } from './surface-picker';
 import type { StageCamera } from './stage-props';
+import { useStageModel } from './use-stage-model';
 
 export interface StageEngine {
   scene: StageScene;
   control: StageControl;
+  picker: SurfacePicker;
   model: StageModelData;
 }
 
@@ -19,37 +21,17 @@ export interface EngineHandlers extends PointerEvents {
   onRest(view: StageCamera): void;
 }
 
-export type StageProblem = { kind: 'model' | 'webgl'; text: string };
-
 /**
  * Model, scene and camera of one stage. `host` is a ref for the element that the canvas goes into; `redraw` starts the
  * scene anew after its context was lost. Everything is disposed when the model changes or the stage goes.
  */
 export function useStageEngine(modelUrl: string, meta: StageModelMeta, handlers: RefObject<EngineHandlers>) {
-  const [loaded, setLoaded] = useState<{
-    url: string;
-    model?: StageModelData;
-    problem?: StageProblem;
-  } | null>(null);
   const [engine, setEngine] = useState<StageEngine | null>(null);
-  const [drawProblem, setDrawProblem] = useState<StageProblem | null>(null);
+  const [drawProblem, setDrawProblem] = useState<string | null>(null);
   const [lost, setLost] = useState(false);
   const [turn, setTurn] = useState(0);
 
-  useEffect(() => {
-    let current = true;
-    loadStageModel(modelUrl).then(
-      (model) => current && setLoaded({ url: modelUrl, model }),
-      (error: Error) =>
-        current && setLoaded({ url: modelUrl, problem: { kind: 'model', text: error.message } }),
-    );
-    return () => {
-      current = false;
-    };
-  }, [modelUrl, turn]);
-
-  const now = loaded?.url === modelUrl ? loaded : null;
-  const model = now?.model;
+  const { model, problem } = useStageModel(modelUrl, turn);
   const { min, max } = meta.boundsMm;
   const boundsKey = [...min, ...max].join();
 
@@ -67,7 +49,7 @@ export function useStageEngine(modelUrl: string, meta: StageModelMeta, handlers:
         canvas.remove();
         const text =
           'This browser gave no WebGL for the model. The picture and the figures come from the same check.';
-        setDrawProblem({ kind: 'webgl', text });
+        setDrawProblem(text);
         return undefined;
       }
       const numbers = boundsKey.split(',').map(Number) as number[];
@@ -75,8 +57,11 @@ export function useStageEngine(modelUrl: string, meta: StageModelMeta, handlers:
         min: numbers.slice(0, 3) as [number, number, number],
         max: numbers.slice(3) as [number, number, number],
       };
-      const control = new StageControl(scene, bounds, (view) => handlers.current?.onRest(view));
-      const detach = attachPointers(element, control, {
+      const picker = new SurfacePicker(model);
+      const control = new StageControl(scene, picker, bounds, (view) => handlers.current?.onRest(view));
+      // The focus lies on the element around the canvas; wheel and touch depend on who has it.
+      const holder = element.closest<HTMLElement>('[tabindex]') ?? element;
+      const detach = attachPointers(holder, control, {
         onHover: (place) => handlers.current?.onHover(place),
         onPress: (place) => handlers.current?.onPress(place),
       });
@@ -96,7 +81,7 @@ export function useStageEngine(modelUrl: string, meta: StageModelMeta, handlers:
       });
       size.observe(element);
       setLost(false);
-      setEngine({ scene, control, model });
+      setEngine({ scene, control, picker, model });
       return () => {
         size.disconnect();
         detach();
@@ -115,9 +100,8 @@ export function useStageEngine(modelUrl: string, meta: StageModelMeta, handlers:
 
   const redraw = useCallback(() => {
     setDrawProblem(null);
-    setLoaded((was) => (was?.problem ? null : was));
     setTurn((n) => n + 1);
   }, []);
 
-  return { host, engine, problem: now?.problem ?? drawProblem, lost, redraw };
+  return { host, engine, problem: problem ?? drawProblem, lost, redraw };
 }
