@@ -25,7 +25,7 @@ export function effectiveRecipe(
     throw invalid('The recipe and the file do not agree on the unit of length.', [
       {
         pointer: '/recipe/mesh/unit',
-        detail: `The file was read in ${meshUnit}, the recipe says ${mesh.unit}. Set it to ${meshUnit}, or send the file again in ${mesh.unit}.`,
+        detail: `The file was read in ${meshUnit}, the recipe says ${mesh.unit}. Set it to ${meshUnit}, or send the file again and say that it is in ${mesh.unit}.`,
       },
     ]);
   const known = new Set<string>(LIMIT_KEYS);

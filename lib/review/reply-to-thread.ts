@@ -13,7 +13,11 @@ import { NoteInput, type ThreadView } from './schemas';
 import { writeNote } from './write-note';
 
 /** Replies in a thread, on the newest revision that it stands on. A repeated client key writes nothing twice. */
-export async function replyToThread(ctx: WorkspaceContext, threadId: string, input: unknown): Promise<ThreadView> {
+export async function replyToThread(
+  ctx: WorkspaceContext,
+  threadId: string,
+  input: unknown,
+): Promise<ThreadView> {
   requirePermission(ctx, 'docket.note');
   const said = parseInput(NoteInput, input);
   const id = asId(threadId, 'thread');

@@ -163,7 +163,41 @@ export async function openDrafts(tx: TenantTx, personId: string) {
     .limit(most);
 }
 
-/** The last note of each open thread, where somebody else wrote it and it names this person or answers them. */
+/** Notes that name this person in open threads where they have not spoken since. */
+export async function mentionsToAnswer(tx: TenantTx, personId: string) {
+  return tx
+    .select({
+      ...place,
+      threadId: threads.id,
+      authorName: notes.authorName,
+      text: notes.text,
+      since: notes.createdAt,
+    })
+    .from(notes)
+    .innerJoin(threads, and(eq(threads.workspaceId, notes.workspaceId), eq(threads.id, notes.threadId)))
+    .innerJoin(
+      revisions,
+      and(eq(revisions.workspaceId, notes.workspaceId), eq(revisions.id, notes.revisionId)),
+    )
+    .innerJoin(templates, ofTemplate)
+    .innerJoin(workspaces, ofWorkspace)
+    .innerJoin(members, membership(personId))
+    .where(
+      and(
+        sql`${notes.mentions} ? ${personId}`,
+        ne(notes.authorId, personId),
+        eq(threads.state, 'open'),
+        inArray(revisions.state, ['in_review', 'approved', 'released']),
+        sql`not exists (select 1 from ${notes} later where later.workspace_id = ${notes.workspaceId}
+          and later.thread_id = ${notes.threadId} and later.author_id = ${personId}
+          and later.created_at > ${notes.createdAt})`,
+      ),
+    )
+    .orderBy(asc(notes.createdAt))
+    .limit(most);
+}
+
+/** The last note of each open thread in review that answers this person: on what they posted or opened. */
 export async function notesToAnswer(tx: TenantTx, personId: string) {
   const last = tx
     .selectDistinctOn([notes.workspaceId, notes.threadId], {
@@ -173,7 +207,6 @@ export async function notesToAnswer(tx: TenantTx, personId: string) {
       authorId: notes.authorId,
       authorName: notes.authorName,
       text: notes.text,
-      mentions: notes.mentions,
       createdAt: notes.createdAt,
     })
     .from(notes)
@@ -183,13 +216,20 @@ export async function notesToAnswer(tx: TenantTx, personId: string) {
         eq(threads.workspaceId, notes.workspaceId),
         eq(threads.id, notes.threadId),
         eq(threads.state, 'open'),
+        // What must be settled is said once, as such.
+        eq(threads.mustSettle, false),
       ),
     )
     .orderBy(notes.workspaceId, notes.threadId, desc(notes.createdAt), desc(notes.id))
     .as('last');
-  const named = sql<boolean>`${last.mentions} ? ${personId}`;
   return tx
-    .select({ ...place, authorName: last.authorName, text: last.text, named, since: last.createdAt })
+    .select({
+      ...place,
+      threadId: last.threadId,
+      authorName: last.authorName,
+      text: last.text,
+      since: last.createdAt,
+    })
     .from(last)
     .innerJoin(threads, and(eq(threads.workspaceId, last.workspaceId), eq(threads.id, last.threadId)))
     .innerJoin(revisions, and(eq(revisions.workspaceId, last.workspaceId), eq(revisions.id, last.revisionId)))
@@ -199,9 +239,8 @@ export async function notesToAnswer(tx: TenantTx, personId: string) {
     .where(
       and(
         ne(last.authorId, personId),
-        inArray(revisions.state, ['in_review', 'approved', 'released']),
-        sql`(${named} or (${revisions.state} = 'in_review' and ${threads.mustSettle} = false
-          and ${personId} in (${threads.openedBy}, ${revisions.authorId})))`,
+        eq(revisions.state, 'in_review'),
+        sql`${personId} in (${threads.openedBy}, ${revisions.authorId})`,
       ),
     )
     .orderBy(asc(last.createdAt))

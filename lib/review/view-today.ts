@@ -6,6 +6,7 @@ import {
   findingsToMend,
   gatesToSign,
   itemsToSettle,
+  mentionsToAnswer,
   notesToAnswer,
   numbersAcross,
   openDrafts,
@@ -27,6 +28,8 @@ type Row = {
 
 const recentShown = 20;
 const counted = (n: number, one: string, many: string) => (n === 1 ? `One ${one}` : `${n} ${many}`);
+
+const said = (row: { authorName: string; text: string }) => `${row.authorName}: ${row.text.slice(0, 140)}`;
 
 function item(kind: TodayItem['kind'], row: Row, text: string, page?: string): TodayItem {
   return {
@@ -67,8 +70,14 @@ export async function viewToday(ctx: PersonContext): Promise<TodayView> {
       );
     for (const row of await revisionsToRelease(tx, me))
       items.push(item('release', row, `Revision ${row.letter} is approved and can be released`));
+    const named = new Set<string>();
+    for (const row of await mentionsToAnswer(tx, me)) {
+      if (named.has(row.threadId)) continue;
+      named.add(row.threadId);
+      items.push(item('mention', row, said(row)));
+    }
     for (const row of await notesToAnswer(tx, me))
-      items.push(item(row.named ? 'mention' : 'answer', row, `${row.authorName}: ${row.text.slice(0, 140)}`));
+      if (!named.has(row.threadId)) items.push(item('answer', row, said(row)));
     for (const row of await openDrafts(tx, me))
       items.push(item('draft', row, 'Your draft is not posted yet', 'post'));
     items.sort((a, b) => (a.since < b.since ? -1 : a.since > b.since ? 1 : 0));

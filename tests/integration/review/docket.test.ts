@@ -221,6 +221,8 @@ describe('Today', () => {
     expect(await about(reviewer, templateId)).toEqual([['settle', 'One item must be settled on revision B']]);
     await replyToThread(designer, thread.id, note('What do you say, ', lead.person));
     expect((await about(lead, templateId)).map(([kind]) => kind)).toEqual(['mention']);
+    await replyToThread(reviewer, thread.id, note('I wait too.'));
+    expect((await about(lead, templateId)).map(([kind]) => kind)).toEqual(['mention']);
     await replyToThread(lead, thread.id, note('Fine by me.'));
     expect(await about(lead, templateId)).toEqual([]);
     await settleThread(reviewer, thread.id, { settled: true, version: thread.version });
