@@ -14,6 +14,7 @@ import { viewContent } from '@/lib/review/view-content';
 import { withdrawRevision } from '@/lib/review/withdraw-revision';
 import { digestOf } from '@/lib/audit/canonical';
 import { loadAgreed } from '@/lib/review/load-agreed';
+import { removeMember } from '@/lib/workspaces/remove-member';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import {
   gateOf,
@@ -208,6 +209,23 @@ describe('signing against', () => {
       expect(agreed.lock.content.docket.threads).toEqual([]);
       expect((await viewContent(lead, revisionId)).digest).toBe(digestOf(agreed.lock.content));
     }
+  });
+
+  it.each(rounds)('the removal of the signer: signed while a member, or not at all (round %i)', async () => {
+    const { revisionId, gateId } = await beforeClient(1);
+    const lead = await house.enter('lead');
+    const joined = await joinWorkspace(database, lead, 'approver');
+    const leaving = await enterWorkspace(joined.person, house.workspace.id);
+    const seen = await shown(approvers[0], revisionId);
+    const { codes } = await together(signGate(leaving, gateId, seen), removeMember(lead, joined.person.id));
+    expect(['', 'forbidden', 'not_found']).toContain(codes.join());
+    const { rows } = await database.query<{ n: number }>(
+      'select count(*)::int as n from signatures where signer_id = $1',
+      [joined.person.id],
+    );
+    expect(rows[0].n).toBe(codes.length ? 0 : 1);
+    expect(await countOf('locks', revisionId)).toBe(rows[0].n);
+    await requireWholeChain();
   });
 
   it('withdrawing, before the studio has signed', async () => {
