@@ -23,12 +23,14 @@ export interface SplitMesh {
 /** Facets meeting at more than this angle keep a sharp edge between them. */
 export const CREASE_DEG = 32;
 const CREASE_COS = Math.cos((CREASE_DEG * Math.PI) / 180);
+/** So many vertices are sent without a thought: about 4 MB at the worst. */
+const MOST_VERTICES = 600_000;
 /** At 180 nothing is split: the mesh is rough all over (a noisy scan) and its mean is what can be shown. */
 const DRAFT_SPLITS_DEG = [1, 3, 10, 180];
 
 /**
  * Rounds positions to a 16-bit grid over the bounds, welds equal ones, and splits vertices by crease, draft and flag.
- * The draft step is widened from 1° upwards only when a rough mesh would give more than 1.5 vertices a triangle.
+ * The draft step is widened from 1° upwards only where a heavy, rough mesh would otherwise be split nearly everywhere.
  */
 export function splitVertices(geometry: StageGeometry): SplitMesh {
   const welded = weldCorners(geometry.positions);
@@ -36,13 +38,15 @@ export function splitVertices(geometry: StageGeometry): SplitMesh {
   const normals = facetNormals(kept.corner, welded.grid);
   const incident = cornersByPlace(kept.corner, welded.places);
   // A look at some of the places tells which tolerance will do, before all are gone through.
-  const most = Math.max(1, (kept.draft.length * 1.5) / welded.places);
+  const most = Math.max(MOST_VERTICES, kept.draft.length * 1.2);
   const stride = Math.max(1, Math.floor(welded.places / 10_000));
   const splitDeg =
-    DRAFT_SPLITS_DEG.find((deg) => {
-      const sample = clusterCorners(kept, normals, incident, welded.places, deg, stride);
-      return sample.vertices <= most * Math.ceil(welded.places / stride) || sample.vertices < 3000;
-    }) ?? 180;
+    kept.corner.length <= MOST_VERTICES
+      ? DRAFT_SPLITS_DEG[0]
+      : (DRAFT_SPLITS_DEG.find(
+          (deg) =>
+            clusterCorners(kept, normals, incident, welded.places, deg, stride).vertices * stride <= most,
+        ) ?? 180);
   const split = clusterCorners(kept, normals, incident, welded.places, splitDeg, 1);
   return { ...split, grid: welded.grid, places: welded.places, origin: welded.origin, stepMm: welded.stepMm };
 }
@@ -167,8 +171,10 @@ function clusterCorners(
   for (let f = 0; f < lengths.length; f++) {
     lengths[f] = Math.hypot(normals[f * 3], normals[f * 3 + 1], normals[f * 3 + 2]);
   }
-  const corners = kept.corner.length;
-  const index = new Uint32Array(corners);
+  let corners = 0;
+  for (let p = 0; p < places; p += stride) corners += start[p + 1] - start[p];
+  // A sample counts vertices only; its index stays empty.
+  const index = new Uint32Array(stride === 1 ? corners : 0);
   const place = new Uint32Array(corners);
   const outNormals = new Float32Array(corners * 3);
   const draft = new Int16Array(corners);

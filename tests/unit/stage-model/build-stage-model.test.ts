@@ -168,10 +168,12 @@ describe('buildStageModel', () => {
   });
 
   it('widens the split on a mesh that is rough all over and says so, seed 11', async () => {
-    const geometry = geometryOf(roughen(subdivide(tray({ segments: 24 }), 2), 0.2, 11));
-    const { meta } = await buildStageModel(geometry);
-    expect(meta.draftSplitDeg).toBeGreaterThan(1);
-    expect(meta.vertices).toBeLessThanOrEqual(meta.triangles * 1.6);
+    const rough = (segments: number) => geometryOf(roughen(subdivide(tray({ segments }), 3), 0.2, 11));
+    const [light, heavy] = [await buildStageModel(rough(12)), await buildStageModel(rough(100))];
+    expect(light.meta.draftSplitDeg).toBe(1);
+    expect(heavy.meta.draftSplitDeg).toBeGreaterThan(1);
+    expect(heavy.meta.triangles).toBeLessThanOrEqual(240_000);
+    expect(heavy.meta.bytes).toBeLessThan(6_000_000);
   });
 
   it('counts areas by draft with the bed left out of the bins', async () => {

@@ -1,0 +1,55 @@
+import { gzipSync } from 'node:zlib';
+import { buildStageModel } from '@/lib/stage-model/build-stage-model';
+import { renderPicture, THUMBNAIL_SIZE } from '@/lib/stage-model/render-picture';
+import { cutSection } from '@/lib/stage-model/section';
+import { geometryOf, hemisphere, roughen, subdivide, tray } from '../../unit/stage-model/shapes';
+
+export interface BenchRow {
+  what: string;
+  measured: number;
+  unit: string;
+  /** the most that is allowed, where the budget is not the machine's */
+  budget?: number;
+  ok?: boolean;
+}
+
+/** Stage model of meshes from 5 k to 1.5 M triangles: size against the budget of 6 MB, times as measured. */
+export async function run(): Promise<{ name: string; rows: BenchRow[] }> {
+  const shapes: [string, Float32Array][] = [
+    ['tray', tray()],
+    ['dome of 980 k', hemisphere(60, 350)],
+    ['tray with scan noise, 1.5 M', roughen(subdivide(tray({ segments: 120 }), 4), 0.02, 3)],
+  ];
+  const rows: BenchRow[] = [];
+  const row = (what: string, measured: number, unit: string, budget?: number) =>
+    rows.push({ what, measured, unit, budget, ok: budget === undefined ? undefined : measured <= budget });
+  for (const [name, positions] of shapes) {
+    const geometry = geometryOf(positions);
+    const [{ glb, meta }, build] = await timed(() => buildStageModel(geometry));
+    row(`${name}: build`, build.wallMs, 'ms');
+    row(`${name}: build, processor time`, build.cpuMs, 'ms');
+    row(`${name}: size`, glb.byteLength / 1e6, 'MB', 6);
+    row(`${name}: size as gzip`, gzipSync(glb).byteLength / 1e6, 'MB');
+    row(`${name}: triangles shown`, meta.triangles, '', 300_000);
+    row(`${name}: surface moved at most`, meta.simplificationErrorMm, 'mm');
+    row(`${name}: picture`, (await timed(() => renderPicture(geometry)))[1].cpuMs, 'ms of processor');
+    row(
+      `${name}: picture for lists`,
+      (await timed(() => renderPicture(geometry, THUMBNAIL_SIZE)))[1].cpuMs,
+      'ms of processor',
+    );
+    row(
+      `${name}: one cut`,
+      (await timed(() => cutSection(geometry, { axis: 'y', atMm: -29.3 })))[1].cpuMs,
+      'ms of processor',
+    );
+  }
+  return { name: 'stage model', rows };
+}
+
+async function timed<T>(work: () => T | Promise<T>): Promise<[T, { wallMs: number; cpuMs: number }]> {
+  const [start, cpu] = [performance.now(), process.cpuUsage()];
+  const result = await work();
+  const { user, system } = process.cpuUsage(cpu);
+  return [result, { wallMs: performance.now() - start, cpuMs: (user + system) / 1000 }];
+}
