@@ -17,18 +17,19 @@ describe('stagePins', () => {
   const pins = stagePins(items, bounds, 'mm');
 
   it('marks pinned threads and the places of findings that are not fine', () => {
-    expect(pins.filter((pin) => pin.state === 'must-settle')).toHaveLength(3);
+    expect(pins.filter((pin) => pin.state === 'must-settle')).toHaveLength(2);
     expect(pins.some((pin) => pin.label === 'Draft 2.4°')).toBe(true);
     expect(pins.every((pin) => items.some((item) => item.key === itemOfPin(pin.id)))).toBe(true);
   });
 
-  it('marks at most three places of a finding', () => {
+  it('marks the worst place of a finding, and up to eight of the one that is looked at', () => {
     const places = Array.from({ length: 9 }, (_, i) => ({
       at: [i, i, 5] as [number, number, number],
       areaMm2: 1,
     }));
     const many = docketItems(docket({ findings: [finding({ places })], threads: [] }));
-    expect(stagePins(many, bounds, 'mm')).toHaveLength(3);
+    expect(stagePins(many, bounds, 'mm').map((pin) => pin.at)).toEqual([[0, 0, 5]]);
+    expect(stagePins(many, bounds, 'mm', many[0].key)).toHaveLength(8);
   });
 
   it('leaves findings that are fine unmarked', () => {

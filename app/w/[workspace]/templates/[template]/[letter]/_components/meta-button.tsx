@@ -8,7 +8,7 @@ export function MetaButton({ className, ...rest }: ComponentProps<typeof Button>
   return (
     <Button
       {...rest}
-      className={`py-0.5 text-left text-sm text-verdigris underline decoration-verdigris/50 underline-offset-3 hover:decoration-current data-disabled:text-slate data-pending:cursor-progress pointer-coarse:py-2.5 print:hidden ${className ?? ''}`}
+      className={`min-h-6 py-0.5 text-left text-sm text-verdigris underline decoration-verdigris/50 underline-offset-3 hover:decoration-current data-disabled:text-slate data-pending:cursor-progress pointer-coarse:py-2.5 print:hidden ${className ?? ''}`}
     />
   );
 }

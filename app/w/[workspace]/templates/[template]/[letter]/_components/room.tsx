@@ -15,6 +15,7 @@ import { Docket } from './docket';
 import { byGroup, docketItems, filterItems, groupOrder } from './docket-items';
 import { gateSteps } from './gate-steps';
 import { primaryStep } from './primary-step';
+import { PostedWith } from './posted-with';
 import { PrintedRecord } from './printed-record';
 import { PrimaryAction, RoomActions, RoomDialogs, type RoomDialog } from './room-actions';
 import { RoomProvider, type RoomReader, type RoomValue } from './room-context';
@@ -57,7 +58,7 @@ export function Room({
   const groups = byGroup(items);
   const first = [...groups.settle, ...groups.look, ...groups.settled].map(placeOf).find(Boolean) ?? null;
   const focus = useStageFocus(bounds, first);
-  const pins = bounds ? stagePins(items, bounds, units) : [];
+  const pins = bounds ? stagePins(items, bounds, units, active) : [];
   const failing = groups.settle.filter(
     (item) => item.finding?.status === 'fail' && !item.finding.waiver,
   ).length;
@@ -150,6 +151,7 @@ export function Room({
           }
         />
         <RoomActions step={step} onOpen={setDialog} />
+        <PostedWith revision={revision} />
         <StateBanner revision={revision} />
         <CheckPanel revision={revision} />
         <div className="grid items-start gap-6 lg:grid-cols-[minmax(0,1fr)_minmax(20rem,27rem)]">

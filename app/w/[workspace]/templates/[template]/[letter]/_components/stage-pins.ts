@@ -10,8 +10,8 @@ export interface Bounds {
   max: Point;
 }
 
-/** Places of one finding that get a mark; the list names the rest. */
-const marksPerFinding = 3;
+/** Places of the finding that is looked at which get a mark; of the others only the worst one does. */
+const marksWhenActive = 8;
 
 const states: Record<DocketGroup, StagePin['state']> = {
   settle: 'must-settle',
@@ -27,8 +27,13 @@ export function itemOfPin(pinId: string): string {
   return pinId.replace(/#\d+$/, '');
 }
 
-/** Marks on the model: pinned threads, and the worst places of findings that are not simply fine. */
-export function stagePins(items: readonly DocketItem[], bounds: Bounds, units: Units): StagePin[] {
+/** Marks on the model: pinned threads, and the places of findings that are not simply fine. */
+export function stagePins(
+  items: readonly DocketItem[],
+  bounds: Bounds,
+  units: Units,
+  active: string | null = null,
+): StagePin[] {
   return items.flatMap((item): StagePin[] => {
     const { finding, thread, key, group } = item;
     if (thread?.pin) {
@@ -45,12 +50,12 @@ export function stagePins(items: readonly DocketItem[], bounds: Bounds, units: U
       ];
     }
     if (!finding || group === 'fine' || group === 'unchecked') return [];
-    return finding.places.slice(0, marksPerFinding).map((place, index) => ({
+    return finding.places.slice(0, key === active ? marksWhenActive : 1).map((place, index) => ({
       id: `${key}#${index}`,
       at: place.at,
       normal: outwardAt(place.at, bounds),
       state: states[group],
-      label: labelOf(item, units),
+      label: index === 0 ? labelOf(item, units) : checkName(finding.checkId),
     }));
   });
 }
@@ -62,7 +67,7 @@ export function placeOf({ finding, thread }: DocketItem): Point | null {
 
 function labelOf({ finding, thread }: DocketItem, units: Units): string {
   if (finding) {
-    if (finding.measured === null) return checkName(finding.checkId);
+    if (!finding.measured) return checkName(finding.checkId);
     const { value, unit, digits } = figureOf(finding.measured, finding.unit, units);
     const figure = `${formatNumber(value, digits)}${unit === '°' ? '' : '\u202f'}${unit}`;
     return `${checkName(finding.checkId)} ${figure}`;

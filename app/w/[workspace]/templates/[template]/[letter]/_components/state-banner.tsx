@@ -4,7 +4,7 @@ import type { ReactNode } from 'react';
 import { formatBytes } from '@/app/_components/format-figure';
 import { Digest } from '@/app/_components/digest';
 import { Link } from '@/app/_components/link';
-import { StatusWord } from '@/app/_components/status-word';
+import { states, StatusWord } from '@/app/_components/status-word';
 import { Time } from '@/app/_components/time';
 import type { RevisionView } from '@/lib/review/schemas';
 import { newerSibling } from './primary-step';
@@ -31,13 +31,18 @@ export function StateBanner({ revision }: { revision: RevisionView }) {
   return (
     <Banner tone={bad ? 'madder' : revision.lockedAt ? 'ink' : 'slate'}>
       <p className="font-semibold">
-        <StatusWord state={stateKey(revision.state)} />
+        <StatusWord state={stateKey(revision.state)} word={stateWord(revision)} />
       </p>
       {reason}
       {revision.lockedAt ? <Agreed revision={revision} lockedAt={revision.lockedAt} /> : null}
       {newerLine}
     </Banner>
   );
+}
+
+function stateWord({ state }: RevisionView): string {
+  const { word } = states[stateKey(state)];
+  return word.charAt(0).toUpperCase() + word.slice(1);
 }
 
 function Agreed({ revision, lockedAt }: { revision: RevisionView; lockedAt: string }) {
