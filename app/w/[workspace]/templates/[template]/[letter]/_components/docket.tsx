@@ -47,20 +47,18 @@ export function Docket({ items, filter, onFilter, filterRef, adding, onAdding }:
   const nothing = isFiltered && groupOrder.every((group) => shown[group].length === 0);
   return (
     <section aria-labelledby="docket-title" className="flex flex-col gap-3">
-      <div className="flex items-start justify-between gap-x-4">
-        <div className="flex flex-wrap items-baseline gap-x-2.5">
-          <h2 id="docket-title" className="text-lg font-semibold">
-            Docket
-          </h2>
-          <p className="text-base text-slate" role="status">
-            {docketSentence(all, revision.gates)}
-          </p>
-        </div>
+      <div className="grid grid-cols-[1fr_auto] items-center gap-x-4">
+        <h2 id="docket-title" className="text-lg font-semibold">
+          Docket
+        </h2>
         {revision.can.note && !adding ? (
-          <Button onPress={() => onAdding(true)} className="shrink-0 print:hidden">
+          <Button size="small" onPress={() => onAdding(true)} className="print:hidden">
             Add a note
           </Button>
         ) : null}
+        <p className="col-span-2 text-base text-slate" role="status">
+          {docketSentence(all, revision.gates)}
+        </p>
       </div>
       <DocketFilterBar filter={filter} onFilter={onFilter} inputRef={filterRef} />
       <AddNote isOpen={adding} onOpen={onAdding} />
@@ -120,7 +118,7 @@ function GroupSection(props: { group: DocketGroup; items: readonly DocketItem[];
 
 function FoldedGroup(props: { title: string; items: readonly DocketItem[]; isOpen: boolean }) {
   return (
-    <div className="print:[&_[hidden]]:block">
+    <div className="print:[&_[hidden]]:block print:[&_[hidden]]:[content-visibility:visible]">
       <Disclosure
         defaultExpanded={props.isOpen}
         title={

@@ -16,13 +16,12 @@ export type RoomDialog = 'sign' | 'return' | 'release' | Step;
 
 /** The verdigris end of the title block. */
 export function PrimaryAction(props: {
-  step: PrimaryStep | null;
+  step: PrimaryStep;
   onOpen: (dialog: RoomDialog) => void;
   /** Goes to the first item that keeps the gate shut. */
   onSettle: () => void;
 }) {
   const { step, onOpen, onSettle } = props;
-  if (!step) return null;
   if (step.kind === 'settle') {
     return <TitleAction label={step.label} detail={step.detail} onPress={onSettle} />;
   }

@@ -140,14 +140,16 @@ export function Room({
           revision={revision}
           gates={gateSteps(revision, { failing, waived }, groups.settle.length)}
           action={
-            <PrimaryAction
-              step={step}
-              onOpen={setDialog}
-              onSettle={() => {
-                setFilter({ search: '', kind: 'all' });
-                if (groups.settle[0]) visit(groups.settle[0].key);
-              }}
-            />
+            step ? (
+              <PrimaryAction
+                step={step}
+                onOpen={setDialog}
+                onSettle={() => {
+                  setFilter({ search: '', kind: 'all' });
+                  if (groups.settle[0]) visit(groups.settle[0].key);
+                }}
+              />
+            ) : null
           }
         />
         <RoomActions step={step} onOpen={setDialog} />
