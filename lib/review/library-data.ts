@@ -2,8 +2,15 @@ import { asc, desc, eq } from 'drizzle-orm';
 import { filaments, machines, printers, sheets, studioLimits } from '@/db/schema/studio-library';
 import type { TenantTx } from '@/db/tenant';
 
+export type LibraryDefaults = {
+  machine: typeof machines.$inferSelect | null;
+  printer: typeof printers.$inferSelect | null;
+  sheet: typeof sheets.$inferSelect | null;
+  filament: typeof filaments.$inferSelect | null;
+};
+
 /** What the studio usually forms and prints with: the item marked as default, else the first by name. */
-export async function libraryDefaults(tx: TenantTx, studioId: string) {
+export async function libraryDefaults(tx: TenantTx, studioId: string): Promise<LibraryDefaults> {
   const [machine] = await tx
     .select()
     .from(machines)
@@ -35,7 +42,6 @@ export async function libraryDefaults(tx: TenantTx, studioId: string) {
     filament: filament ?? null,
   };
 }
-export type LibraryDefaults = Awaited<ReturnType<typeof libraryDefaults>>;
 
 /** Limits that the studio has moved; empty where it never did. */
 export async function movedLimits(tx: TenantTx, studioId: string): Promise<Record<string, number>> {

@@ -3,6 +3,7 @@ import { appendEntry } from '@/lib/audit/append-entry';
 import { conflict } from '@/lib/errors/app-error';
 import { workspaceIdOf, type JobContext, type WorkspaceContext } from '@/lib/auth/context';
 import { composeContent } from './content';
+import { frozenRecord } from './frozen-record';
 import { insertLock } from './gate-data';
 import { moveRevision, type RevisionRow, type TemplateRow } from './revision-data';
 import { viewDocketRows } from './docket-view';
@@ -32,6 +33,11 @@ export async function lockContent(
     action: 'revision.locked',
     subjectKind: 'revision',
     subjectId: revision.id,
-    detail: { templateId: revision.templateId, letter: moved.letter, contentDigest: composed.digest },
+    detail: {
+      templateId: revision.templateId,
+      letter: moved.letter,
+      contentDigest: composed.digest,
+      record: await frozenRecord(tx, moved),
+    },
   });
 }

@@ -5,16 +5,9 @@ import type { WorkspaceContext } from '@/lib/auth/context';
 import { enterWorkspace } from '@/lib/auth/enter';
 import { fillRecipe } from '@/lib/formability/fill-recipe';
 import { claimJob } from '@/lib/jobs/jobs-data';
-import { cancelUpload } from '@/lib/review/cancel-upload';
-import { changeTemplate } from '@/lib/review/change-template';
-import { completeUpload } from '@/lib/review/complete-upload';
-import { createTemplate } from '@/lib/review/create-template';
-import { discardDraft } from '@/lib/review/discard-draft';
 import { listRevisions } from '@/lib/review/list-revisions';
-import { markPartDone } from '@/lib/review/mark-part-done';
 import { openDraft } from '@/lib/review/open-draft';
 import { postRevision } from '@/lib/review/post-revision';
-import { presignParts } from '@/lib/review/presign-parts';
 import {
   failCheck,
   finishCheck,
@@ -22,16 +15,13 @@ import {
   recordDerivative,
   startCheck,
 } from '@/lib/review/record-check';
-import { acceptUpload, refuseUpload } from '@/lib/review/record-upload';
+import { acceptUpload } from '@/lib/review/record-upload';
 import { saveDraft } from '@/lib/review/save-draft';
-import { startUpload } from '@/lib/review/start-upload';
 import { viewDocket } from '@/lib/review/view-docket';
 import { viewRevision } from '@/lib/review/view-revision';
 import { viewTemplate } from '@/lib/review/view-template';
-import { viewUpload } from '@/lib/review/view-upload';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import {
-  blockStl,
   entries,
   fingerprint,
   mailsOf,
@@ -64,229 +54,6 @@ async function refused(run: () => Promise<unknown>, expected: Record<string, unk
   await expect(run()).rejects.toMatchObject(expected);
   expect(await fingerprint(database, house.workspace.id)).toBe(before);
 }
-
-describe('templates', () => {
-  it('carry the workspace’s code and the next serial, and are on the chain', async () => {
-    const made = await createTemplate(lead, { title: '  Lid for cups ', dueOn: '2027-03-01' });
-    expect(made).toMatchObject({
-      number: `${house.workspace.code}-001`,
-      title: 'Lid for cups',
-      dueOn: '2027-03-01',
-      standing: 'draft',
-      latestLetter: null,
-      verdict: null,
-      openMustSettle: 0,
-      version: 1,
-    });
-    const [entry] = await entries(database, house.workspace.id, 1);
-    expect(entry).toMatchObject({ action: 'template.created', subject_id: made.id });
-    expect((await createTemplate(lead, { title: 'Next' })).number).toBe(`${house.workspace.code}-002`);
-  });
-
-  it.each([
-    [{ title: '' }, '/title'],
-    [{ title: 'A title of more than 25 signs' }, '/title'],
-    [{ title: 'x', dueOn: '2027-02-30' }, '/dueOn'],
-    [{ title: 7 }, '/title'],
-  ])('refuse %j', async (input, pointer) => {
-    await refused(() => createTemplate(lead, input), { code: 'invalid', errors: [{ pointer }] });
-  });
-
-  it('change at the version that was seen, else not at all', async () => {
-    const { id, version } = await createTemplate(lead, { title: 'Before' });
-    const changed = await changeTemplate(designer, id, { title: 'After', dueOn: '2027-05-05', version });
-    expect(changed).toMatchObject({ title: 'After', dueOn: '2027-05-05', version: version + 1 });
-    await refused(() => changeTemplate(lead, id, { title: 'Other', version }), {
-      code: 'precondition_failed',
-      reason: 'changed-meanwhile',
-    });
-    expect((await viewTemplate(lead, id)).title).toBe('After');
-  });
-});
-
-describe('drafts', () => {
-  it('begin with the studio’s library and its defaults', async () => {
-    const studio = lead.studio.id;
-    await database.query('update machines set is_default = false where studio_id = $1', [studio]);
-    await database.query(
-      `insert into machines (id, studio_id, name, forming_x_mm, forming_y_mm, max_height_mm, frame_margin_mm, pressure_bar, is_default)
-       values (gen_random_uuid(), $1, 'Small frame', 210, 160, 70, 12, 3.5, true)`,
-      [studio],
-    );
-    await database.query('update sheets set is_default = false where studio_id = $1', [studio]);
-    await database.query(
-      `insert into sheets (id, studio_id, name, material, gauge_mm, min_formed_mm, is_default)
-       values (gen_random_uuid(), $1, 'Clear 0.5', 'apet', 0.5, 0.2, true)`,
-      [studio],
-    );
-    const templateId = await newTemplate(designer);
-    const draft = await openDraft(designer, templateId);
-    expect(draft).toMatchObject({ nextLetter: 'A', upload: null, note: '', version: 1 });
-    expect(draft.recipe).toMatchObject({
-      machine: { formingAreaMm: [210, 160], maxHeightMm: 70, frameMarginMm: 12, pressureBar: 3.5 },
-      sheet: { material: 'apet', gaugeMm: 0.5, minFormedMm: 0.2 },
-    });
-    expect(draft.recipe).not.toHaveProperty('limits');
-    expect(draft.recipe).not.toHaveProperty('sheet.formingC');
-    expect(fillRecipe(draft.recipe).sheet.gaugeMm).toBe(0.5);
-    expect((await openDraft(lead, templateId)).id).toBe(draft.id);
-  });
-
-  it('save what is half done, once for each version', async () => {
-    const templateId = await newTemplate(designer);
-    const draft = await openDraft(designer, templateId);
-    const recipe = { ...draft.recipe, print: { nozzleMm: null } };
-    const saved = await saveDraft(designer, templateId, { uploadId: null, recipe, note: 'Hm.', version: 1 });
-    expect(saved).toMatchObject({ note: 'Hm.', version: 2 });
-    await refused(
-      () => saveDraft(lead, templateId, { uploadId: null, recipe: {}, note: 'Mine.', version: 1 }),
-      { code: 'precondition_failed' },
-    );
-    const same = await saveDraft(designer, templateId, { uploadId: null, recipe, note: 'Hm.', version: 2 });
-    expect(same.version).toBe(2);
-    await refused(
-      () => saveDraft(designer, templateId, { uploadId: null, recipe: { limits: {} }, note: '', version: 2 }),
-      { code: 'invalid', errors: [{ pointer: '/recipe/limits' }] },
-    );
-    const large = { print: { material: 'x'.repeat(30_000) } };
-    await refused(
-      () => saveDraft(designer, templateId, { uploadId: null, recipe: large, note: '', version: 2 }),
-      { code: 'invalid', errors: [{ pointer: '/recipe' }] },
-    );
-    expect(await discardDraft(designer, templateId)).toEqual({ discarded: true });
-    expect(await discardDraft(designer, templateId)).toEqual({ discarded: false });
-    await refused(
-      () => saveDraft(designer, templateId, { uploadId: null, recipe: {}, note: '', version: 2 }),
-      {
-        reason: 'no-draft',
-      },
-    );
-  });
-
-  it('take a file of the same template only', async () => {
-    const one = await newTemplate(designer);
-    const two = await newTemplate(designer);
-    const uploadId = await sendMesh(designer, one);
-    const { version } = await openDraft(designer, two);
-    await refused(() => saveDraft(designer, two, { uploadId, recipe: {}, note: '', version }), {
-      code: 'invalid',
-      errors: [{ pointer: '/uploadId' }],
-    });
-  });
-});
-
-describe('uploads', () => {
-  it('fix size and parts at the start, and remember the parts that the store has', async () => {
-    const templateId = await newTemplate(designer);
-    const bytes = 20_000_000;
-    const upload = await startUpload(designer, templateId, { fileName: 'big.stl', bytes });
-    expect(upload).toMatchObject({ state: 'sending', partBytes: 8_388_608, partCount: 3, partsDone: [] });
-    const { parts } = await presignParts(designer, upload.id, { parts: [3, 1, 1] });
-    expect(parts.map(({ number, bytes: length }) => [number, length])).toEqual([
-      [3, bytes - 2 * 8_388_608],
-      [1, 8_388_608],
-    ]);
-    await refused(() => presignParts(designer, upload.id, { parts: [1, 4] }), {
-      code: 'invalid',
-      errors: [{ pointer: '/parts/1' }],
-    });
-    await markPartDone(designer, upload.id, { number: 3, etag: 'c' });
-    await markPartDone(designer, upload.id, { number: 1, etag: 'a' });
-    await markPartDone(designer, upload.id, { number: 1, etag: 'b' });
-    expect((await viewUpload(designer, upload.id)).partsDone).toEqual([1, 3]);
-    await refused(() => completeUpload(designer, upload.id), {
-      reason: 'parts-missing',
-      message: expect.stringContaining('1 of 3 parts are missing'),
-    });
-    await refused(() => markPartDone(designer, upload.id, { number: 4, etag: 'x' }), { code: 'invalid' });
-  });
-
-  it('belong to whoever began them', async () => {
-    const templateId = await newTemplate(designer);
-    const upload = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: 100 });
-    for (const run of [
-      () => presignParts(lead, upload.id, { parts: [1] }),
-      () => markPartDone(lead, upload.id, { number: 1, etag: 'x' }),
-      () => completeUpload(lead, upload.id),
-      () => cancelUpload(lead, upload.id),
-    ])
-      await refused(run, { code: 'forbidden', reason: 'not-your-upload' });
-  });
-
-  it('are read by one job, however often they are completed', async () => {
-    const templateId = await newTemplate(designer);
-    const bytes = blockStl(7);
-    const upload = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: bytes.length });
-    const { parts } = await presignParts(designer, upload.id, { parts: [1] });
-    const sent = await fetch(parts[0].url, { method: 'PUT', body: Buffer.from(bytes) });
-    await markPartDone(designer, upload.id, { number: 1, etag: sent.headers.get('etag') });
-    const answers = await Promise.all([1, 2, 3].map(() => completeUpload(designer, upload.id)));
-    expect(answers.map(({ state }) => state)).toEqual(['reading', 'reading', 'reading']);
-    const { rows } = await database.query('select kind from jobs where subject_id = $1', [upload.id]);
-    expect(rows).toEqual([{ kind: 'read-upload' }]);
-    const { rows: queued } = await database.query(
-      "select 1 from pgboss.job where name = 'read-upload' and data->>'workspaceId' = $1",
-      [house.workspace.id],
-    );
-    expect(queued.length).toBeGreaterThan(0);
-    await refused(() => presignParts(designer, upload.id, { parts: [1] }), { reason: 'upload-not-sending' });
-  });
-
-  it('are refused when the store has another length than was announced', async () => {
-    const templateId = await newTemplate(designer);
-    const upload = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: 684 });
-    const { parts } = await presignParts(designer, upload.id, { parts: [1] });
-    const sent = await fetch(parts[0].url, { method: 'PUT', body: Buffer.from(blockStl()) });
-    await markPartDone(designer, upload.id, { number: 1, etag: sent.headers.get('etag') });
-    await database.query('update uploads set bytes = 700 where id = $1', [upload.id]);
-    const answer = await completeUpload(designer, upload.id);
-    expect(answer).toMatchObject({ state: 'refused', refusal: { code: 'length' } });
-    expect(answer.refusal?.message).toBe(
-      'The store received 684 bytes, but the file was announced with 700. Send it again.',
-    );
-  });
-
-  it('can be given up', async () => {
-    const templateId = await newTemplate(designer);
-    const upload = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: 100 });
-    expect((await cancelUpload(designer, upload.id)).state).toBe('cancelled');
-    expect((await cancelUpload(designer, upload.id)).state).toBe('cancelled');
-    await refused(() => completeUpload(designer, upload.id), { reason: 'upload-not-sending' });
-    const ready = await sendMesh(designer, templateId);
-    expect((await cancelUpload(designer, ready)).state).toBe('ready');
-  });
-
-  it.each([
-    [{ fileName: 'a.stl', bytes: 0 }, '/bytes'],
-    [{ fileName: 'a.stl', bytes: 500_000_001 }, '/bytes'],
-    [{ fileName: '', bytes: 10 }, '/fileName'],
-    [{ fileName: 'a.stl', bytes: 10, unit: 'parsec' }, '/unit'],
-  ])('refuse %j', async (input, pointer) => {
-    const templateId = await newTemplate(designer);
-    await refused(() => startUpload(designer, templateId, input), { code: 'invalid', errors: [{ pointer }] });
-  });
-
-  it('say why a file cannot be used, and the draft stays', async () => {
-    const templateId = await newTemplate(designer);
-    const uploadId = await sendMesh(designer, templateId);
-    await database.query("update uploads set state = 'reading', mesh_id = null where id = $1", [uploadId]);
-    await database.query("update jobs set state = 'queued' where subject_id = $1", [uploadId]);
-    const { version } = await openDraft(designer, templateId);
-    const saved = await saveDraft(designer, templateId, { uploadId, recipe: {}, note: 'x', version });
-    const job = await takeJob(house.workspace.id, 'read-upload', uploadId);
-    await refuseUpload(job.ctx, job.fence, uploadId, {
-      code: 'truncated',
-      message: 'The file ends in the middle.',
-      reasons: ['12 triangles announced, 3 there'],
-    });
-    const draft = await openDraft(designer, templateId);
-    expect(draft.upload).toMatchObject({ state: 'refused', refusal: { code: 'truncated' }, mesh: null });
-    await refused(() => postRevision(designer, templateId, { version: saved.version }), {
-      reason: 'file-not-ready',
-      message: 'The file was refused. Send another one.',
-    });
-  });
-});
 
 describe('posting', () => {
   it('freezes mesh and recipe, lays out the gates, queues the check and tells everybody else', async () => {
