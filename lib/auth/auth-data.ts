@@ -119,3 +119,11 @@ export async function queueIdentityMail(request: MailRequest): Promise<void> {
     .insert(outbox)
     .values({ kind: 'mail', payload: request as never, dedupeKey: uuidv7() });
 }
+
+/** Every workspace of every studio, for work that goes through all of them (the audit's verifier). */
+export async function listAllWorkspaces(): Promise<{ id: string; name: string; slug: string }[]> {
+  return authDatabase()
+    .select({ id: workspaces.id, name: workspaces.name, slug: workspaces.slug })
+    .from(workspaces)
+    .orderBy(asc(workspaces.slug));
+}

@@ -13,6 +13,7 @@ import { store } from '@/lib/storage/store';
 import type { CertificateModel } from './certificate/certificate-model';
 import { meshNameOf, packFiles, type PackFile } from './pack/pack-files';
 import { zipPack } from './pack/zip-pack';
+import { packRecord } from './pack-record';
 import { findRelease, keepPack, packOfRelease, pictureOf, workspaceOf } from './production-data';
 
 /** What the pack would be made of is not what was agreed; trying again cannot help. */
@@ -63,7 +64,8 @@ export async function buildPack(
   await withTenant(ctx, async (tx) => {
     if (!(await holdsJob(tx, ctx, fence))) return;
     const fileName = packName(agreed);
-    if (!(await keepPack(tx, { workspaceId, releaseId, fileName, files: all, ...kept }))) return;
+    const pack = await keepPack(tx, { workspaceId, releaseId, fileName, files: all, ...kept });
+    if (!pack) return;
     await appendEntry(tx, ctx, {
       action: 'pack.built',
       subjectKind: 'pack',
@@ -72,9 +74,7 @@ export async function buildPack(
         templateId: agreed.template.id,
         revisionId: agreed.revision.id,
         letter: agreed.revision.letter,
-        fileName,
-        bytes: kept.bytes,
-        sha256: kept.sha256,
+        pack: packRecord(pack),
       },
     });
     await queueLive(tx, ctx, {

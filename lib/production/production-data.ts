@@ -52,10 +52,10 @@ export async function packOfRelease(
   return row ?? null;
 }
 
-/** Keeps a pack; false when the release has one already, which then stands. */
-export async function keepPack(tx: TenantTx, row: typeof packs.$inferInsert): Promise<boolean> {
-  const made = await tx.insert(packs).values(row).onConflictDoNothing().returning({ id: packs.id });
-  return made.length > 0;
+/** Keeps a pack; null when the release has one already, which then stands. */
+export async function keepPack(tx: TenantTx, row: typeof packs.$inferInsert): Promise<PackRow | null> {
+  const [made] = await tx.insert(packs).values(row).onConflictDoNothing().returning();
+  return made ?? null;
 }
 
 /** Where the drawn picture of a mesh lies in the store; null where there is none. */

@@ -73,6 +73,8 @@ export async function releaseRevision(
         templateId: template.id,
         letter: revision.letter,
         releaseId,
+        releasedAt: release.createdAt.toISOString(),
+        jobId,
         role: ctx.role,
         contentDigest: lock.contentDigest,
         note,

@@ -10,6 +10,8 @@ import { presignParts } from '@/lib/review/presign-parts';
 import { saveDraft } from '@/lib/review/save-draft';
 import { signGate } from '@/lib/review/sign-gate';
 import { startUpload } from '@/lib/review/start-upload';
+import { viewDocket } from '@/lib/review/view-docket';
+import { waiveFinding } from '@/lib/review/waive-finding';
 import { viewContent } from '@/lib/review/view-content';
 import { viewRevision } from '@/lib/review/view-revision';
 import { viewUpload } from '@/lib/review/view-upload';
@@ -107,4 +109,11 @@ export async function approvedTemplate(
   await sign(await house.enter('lead'), posted.revisionId);
   await sign(await house.enter('approver'), posted.revisionId);
   return posted;
+}
+
+/** A lead lets every failing finding stand. */
+export async function waiveFailing(lead: WorkspaceContext, revisionId: string): Promise<void> {
+  const { findings } = await viewDocket(lead, revisionId);
+  for (const { id, status } of findings)
+    if (status === 'fail') await waiveFinding(lead, id, { reason: 'The client wants it so; polished by hand.' });
 }
