@@ -318,6 +318,8 @@ export const RevisionView = z.object({
     recall: z.boolean(),
     retire: z.boolean(),
     download: z.boolean(),
+    /** The exact bytes of the mesh; looking at the model is for everyone. */
+    mesh: z.boolean().optional(),
     post: z.boolean(),
   }),
   version: z.number(),

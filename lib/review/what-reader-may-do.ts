@@ -36,6 +36,7 @@ export function whatReaderMayDo(ctx: WorkspaceContext, at: Standing): RevisionVi
     recall: may('revision.recall') && revision.state === 'released',
     retire: may('revision.retire') && revision.state === 'released',
     download: may('pack.download') && at.hasPack,
+    mesh: may('pack.download'),
     post: may('revision.post'),
   };
 }

@@ -60,7 +60,7 @@ export function RoomActions({
           Download the pack
         </a>
       ) : null}
-      {revision.mesh ? (
+      {can.mesh !== false ? (
         <a className="px-1 py-1 text-base text-verdigris underline underline-offset-3" href={`${api}/mesh`}>
           Download the mesh
         </a>
