@@ -1,6 +1,15 @@
 import { spawn } from 'node:child_process';
 import { createHash } from 'node:crypto';
-import { existsSync, openSync, readdirSync, readFileSync, rmSync, statSync, writeFileSync } from 'node:fs';
+import {
+  closeSync,
+  existsSync,
+  openSync,
+  readdirSync,
+  readFileSync,
+  rmSync,
+  statSync,
+  writeFileSync,
+} from 'node:fs';
 import { cp, mkdir, rename } from 'node:fs/promises';
 import path from 'node:path';
 import { setTimeout as pause } from 'node:timers/promises';
@@ -27,7 +36,10 @@ const keep = 3;
  * A release is a folder of its own, so a new build never disturbs a product that runs.
  * @returns the release's folder, with server.js in it, and whether it was built now
  */
-export async function buildApp(logFile: string): Promise<{ folder: string; built: boolean }> {
+export async function buildApp(
+  logFile: string,
+  signal?: AbortSignal,
+): Promise<{ folder: string; built: boolean }> {
   const digest = sourceDigest();
   const folder = path.join(releases, digest.slice(0, 16));
   const isThere = () => existsSync(path.join(folder, 'server.js'));
@@ -36,7 +48,7 @@ export async function buildApp(logFile: string): Promise<{ folder: string; built
   const free = await waitForBuilder();
   try {
     if (isThere()) return { folder, built: false };
-    await runBuild(logFile);
+    await runBuild(logFile, signal);
     await gather(folder);
     dropOldReleases(folder);
     return { folder, built: true };
@@ -91,19 +103,18 @@ function readJson(file: string): ProcessIdentity | null {
   }
 }
 
-function runBuild(logFile: string): Promise<void> {
+function runBuild(logFile: string, signal: AbortSignal | undefined): Promise<void> {
   const log = openSync(logFile, 'w', 0o600);
   const child = spawn(process.execPath, [path.join(root, 'node_modules/next/dist/bin/next'), 'build'], {
     cwd: root,
     env: { ...plainEnvironment(), NODE_ENV: 'production', NEXT_TELEMETRY_DISABLED: '1' },
     stdio: ['ignore', log, log],
+    signal,
   });
-  const onSignal = () => child.kill('SIGTERM');
-  ['SIGINT', 'SIGTERM'].forEach((signal) => process.once(signal, onSignal));
   return new Promise((resolve, reject) => {
     child.once('error', reject);
     child.once('close', (code) => {
-      ['SIGINT', 'SIGTERM'].forEach((signal) => process.off(signal, onSignal));
+      closeSync(log);
       if (code === 0) return resolve();
       const words = readFileSync(logFile, 'utf8').trimEnd().split('\n').slice(-30).join('\n');
       reject(new LocalError(`The application could not be built. ${logFile} says:\n${words}`));

@@ -1,5 +1,5 @@
 import { spawn } from 'node:child_process';
-import { existsSync, openSync, readFileSync } from 'node:fs';
+import { closeSync, existsSync, openSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { LocalError, root } from './folders';
 import { typescriptCommand } from './node-command';
@@ -27,16 +27,17 @@ export async function seedDemoOnce(
   dataFolder: string,
   env: Record<string, string>,
   logFile: string,
+  signal?: AbortSignal,
 ): Promise<DemoSignIn[]> {
   const file = path.join(dataFolder, 'demo.json');
   if (!existsSync(file)) {
     writeOwnerOnly(begunFile(dataFolder), new Date().toISOString());
-    writeOwnerOnly(file, await runSeed(env, logFile));
+    writeOwnerOnly(file, await runSeed(env, logFile, signal));
   }
   return JSON.parse(readFileSync(file, 'utf8')) as DemoSignIn[];
 }
 
-function runSeed(env: Record<string, string>, logFile: string): Promise<DemoSignIn[]> {
+function runSeed(env: Record<string, string>, logFile: string, signal?: AbortSignal): Promise<DemoSignIn[]> {
   const [program, ...args] = typescriptCommand(path.join(root, 'docker/local/run-seed.ts'));
   const log = openSync(logFile, 'w', 0o600);
   return new Promise((resolve, reject) => {
@@ -44,14 +45,13 @@ function runSeed(env: Record<string, string>, logFile: string): Promise<DemoSign
       cwd: root,
       env: env as NodeJS.ProcessEnv,
       stdio: ['ignore', log, log, 'ipc'],
+      signal,
     });
-    const onSignal = () => child.kill('SIGTERM');
-    ['SIGINT', 'SIGTERM'].forEach((signal) => process.once(signal, onSignal));
     let people: DemoSignIn[] | undefined;
     child.once('message', (message) => (people = message as DemoSignIn[]));
     child.once('error', reject);
     child.once('close', (code) => {
-      ['SIGINT', 'SIGTERM'].forEach((signal) => process.off(signal, onSignal));
+      closeSync(log);
       if (code === 0 && people) return resolve(people);
       const words = readFileSync(logFile, 'utf8').trimEnd().split('\n').slice(-30).join('\n');
       reject(new LocalError(`The demo studio could not be made. ${logFile} says:\n${words}`));

@@ -1,19 +1,15 @@
 import path from 'node:path';
 import { bootstrapDatabase, dropDatabase } from '@/db/bootstrap';
 import { migrate } from '@/db/migrate';
-import { defineApp } from './app';
 import { buildApp } from './build-app';
-import { defineMail } from './mail';
+import { defineServices } from './define-services';
 import type { Ports } from './ports';
-import { definePostgres, type Postgres } from './postgres';
+import type { Postgres } from './postgres';
 import { databaseName, productEnvironment, type ProductEnvironment } from './product-environment';
-import { defineRealtime } from './realtime';
 import { openSecrets } from './secrets';
 import { seedBrokeOff, seedDemoOnce, type DemoSignIn } from './seed-demo';
 import type { Service, ServiceEvents } from './service';
 import type { StepPrinter } from './setup/step-line.mjs';
-import { defineStore } from './store';
-import { defineWorker } from './worker';
 
 export interface ProductOptions {
   dataFolder: string;
@@ -24,7 +20,7 @@ export interface ProductOptions {
   /** A database that may be lost with the power: for tests. */
   throwaway?: boolean;
   events?: ServiceEvents;
-  /** Once aborted, no further part is started. */
+  /** Once aborted, no further part is started, and a build or seed in hand ends. */
   signal?: AbortSignal;
 }
 
@@ -45,134 +41,109 @@ export interface Product {
 }
 
 /**
- * Brings up the whole product, each part when the parts it needs answer.
+ * Brings up the whole product, each part as soon as the parts it needs answer.
  * @param started receives every service before it starts, so that the caller can stop what is up if a later one fails
  */
 export async function startProduct(options: ProductOptions, started: Service[]): Promise<Product> {
-  const { dataFolder, ports, printer, dev = false, demo = true, throwaway, events, signal } = options;
+  const { dataFolder, ports, printer, dev = false, demo = true, throwaway, events } = options;
   const secrets = openSecrets(dataFolder);
+  const env = productEnvironment(ports, secrets, { dev, demo });
+  const echo = dev ? (name: string) => (line: string) => printer.note(`[${name}] ${line}`) : undefined;
+  const define = defineServices({ dataFolder, ports, secrets, env, dev, throwaway, events, echo });
   const logOf = (name: string) => path.join(dataFolder, 'logs', `${name}.log`);
-  const up = <S extends Service>(label: string, define: () => S, describe: (service: S) => string) =>
+  const failed = new AbortController();
+  const signal = options.signal ? AbortSignal.any([options.signal, failed.signal]) : failed.signal;
+
+  const up = <S extends Service>(label: string, make: () => S, describe: (service: S) => string) =>
     printer.step(
       label,
       async () => {
-        signal?.throwIfAborted();
-        const service = define();
+        signal.throwIfAborted();
+        const service = make();
         started.push(service);
         await service.start();
         return service;
       },
       describe,
     );
-  const env = productEnvironment(ports, secrets, { dev, demo });
-  const echo = (name: string) => (dev ? (line: string) => printer.note(`[${name}] ${line}`) : undefined);
 
-  const release = dev
-    ? null
-    : await printer.longStep(
-        'application build',
-        () => buildApp(logOf('build')),
-        ({ built }) => (built ? 'built' : 'nothing changed'),
-      );
-  const openDatabase = async () => {
+  async function openDatabase(): Promise<Postgres> {
     const database = await up(
       'database',
-      () =>
-        definePostgres({
-          dataFolder,
-          port: ports.database,
-          adminPassword: secrets.databaseAdmin,
-          logFile: logOf('database'),
-          throwaway,
-          events,
-        }),
+      define.database,
       (service) => `PostgreSQL ${service.version} on port ${ports.database}, files in ${service.folder}`,
     );
-    await printer.step(
-      'schema',
-      async () => {
-        const passwords = secrets.databaseRoles;
-        if (demo && seedBrokeOff(dataFolder)) await dropDatabase(database.adminUrl, databaseName);
-        await bootstrapDatabase({ adminUrl: database.adminUrl, database: databaseName, passwords });
-        await migrate(env.ownerUrl);
-      },
-      () => 'up to date',
-    );
+    const prepare = async () => {
+      if (demo && seedBrokeOff(dataFolder)) await dropDatabase(database.adminUrl, databaseName);
+      const passwords = secrets.databaseRoles;
+      await bootstrapDatabase({ adminUrl: database.adminUrl, database: databaseName, passwords });
+      await migrate(env.ownerUrl);
+    };
+    await printer.step('schema', prepare, () => 'up to date');
     return database;
+  }
+
+  /** The seed posts real files, which the running worker reads and checks. */
+  function seed(): Promise<DemoSignIn[]> {
+    const work = () => seedDemoOnce(dataFolder, env.seed, logOf('seed'), signal);
+    return printer.longStep(
+      'demo studio',
+      'posting its templates, checking them',
+      work,
+      (all) => `${all.length} people`,
+    );
+  }
+
+  async function build(): Promise<string | null> {
+    if (dev) return null;
+    const work = () => buildApp(logOf('build'), signal);
+    const describe = ({ built }: { built: boolean }) => (built ? 'built' : 'nothing changed');
+    const { folder } = await printer.longStep('application build', 'building', work, describe);
+    return folder;
+  }
+
+  // The first failure keeps further parts from starting; what is under way comes to its end before it is told.
+  let cause: { error: unknown } | undefined;
+  const part = <T>(work: Promise<T>): Promise<T> => {
+    work.catch((error: unknown) => {
+      cause ??= { error };
+      failed.abort(error);
+    });
+    return work;
   };
-  const openStore = () =>
-    up(
-      'object store',
-      () =>
-        defineStore({
-          folder: path.join(dataFolder, 'store'),
-          port: ports.store,
-          credentials: secrets.store,
-          origins: [`http://127.0.0.1:${ports.app}`, `http://localhost:${ports.app}`],
-          logFile: logOf('store'),
-          events,
-        }),
-      () => `on port ${ports.store}`,
-    );
-  const openMail = () =>
-    up(
-      'mail catcher',
-      () =>
-        defineMail({
-          folder: path.join(dataFolder, 'mail'),
-          smtpPort: ports.smtp,
-          pagePort: ports.mail,
-          logFile: logOf('mail'),
-          events,
-        }),
-      (service) => `on port ${ports.smtp}, page ${service.url}`,
-    );
-  const openRealtime = () =>
-    up(
-      'realtime server',
-      () => defineRealtime({ port: ports.realtime, ...secrets.realtime, logFile: logOf('realtime'), events }),
-      () => `on port ${ports.realtime}`,
-    );
-  // None of these needs another one.
-  const [database, store, mail, realtime] = await Promise.all([
-    openDatabase(),
-    openStore(),
-    openMail(),
-    openRealtime(),
-  ]);
-  const worker = await up(
-    'worker',
-    () => defineWorker({ env: env.worker, dev, logFile: logOf('worker'), echo: echo('worker'), events }),
-    () => 'running',
+  const database = part(openDatabase());
+  const store = part(up('object store', define.store, () => `on port ${ports.store}`));
+  const mail = part(up('mail catcher', define.mail, ({ url }) => `on port ${ports.smtp}, page ${url}`));
+  const realtime = part(up('realtime server', define.realtime, () => `on port ${ports.realtime}`));
+  const release = part(build());
+  const worker = part(database.then(() => up('worker', define.worker, () => 'running')));
+  const people = part(Promise.all([worker, store, mail, realtime]).then(() => (demo ? seed() : [])));
+  const app = part(
+    Promise.all([release, database]).then(([folder]) =>
+      up(
+        'application',
+        () => define.app(folder),
+        ({ url }) => `listens on ${url}`,
+      ),
+    ),
   );
-  // The seed posts real files, which the running worker reads and checks.
-  const people = demo
-    ? await printer.longStep(
-        'demo studio',
-        () => seedDemoOnce(dataFolder, env.seed, logOf('seed')),
-        (all) => `${all.length} people`,
-      )
-    : [];
-  const app = await up(
-    'application',
-    () =>
-      defineApp({
-        port: ports.app,
-        env: env.app,
-        release: release?.folder ?? null,
-        logFile: logOf('app'),
-        echo: echo('app'),
-        events,
-      }),
-    (service) => service.url,
-  );
+  await Promise.allSettled([database, store, mail, realtime, release, worker, people, app]);
+  if (cause) throw (cause as { error: unknown }).error;
+  const services = {
+    database: await database,
+    store: await store,
+    mail: await mail,
+    realtime: await realtime,
+    worker: await worker,
+    app: await app,
+  };
   return {
-    baseUrl: app.url,
-    mailUrl: mail.url,
-    adminUrl: database.adminUrl,
+    baseUrl: services.app.url,
+    mailUrl: services.mail.url,
+    adminUrl: services.database.adminUrl,
     env,
-    people,
-    services: { database, store, mail, realtime, worker, app },
+    people: await people,
+    services,
   };
 }
 

@@ -1,5 +1,4 @@
 // What `npm start` runs: plain JavaScript, since nothing is installed yet on a fresh machine.
-import { existsSync } from 'node:fs';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
 
@@ -15,21 +14,39 @@ const root = path.resolve(path.dirname(fileURLToPath(import.meta.url)), '../..')
 process.chdir(root);
 
 const { ensurePackages, packagesAreCurrent } = await import('./setup/npm-packages.mjs');
-const { ensureDebianPackage, MissingPackageError } = await import('./setup/debian-packages.mjs');
+const { debianPackageIsThere, ensureDebianPackage } = await import('./setup/debian-packages.mjs');
 const { stepPrinter } = await import('./setup/step-line.mjs');
 
 const printer = stepPrinter();
-try {
-  const realtime = path.join(root, 'realtime');
-  await printer.longStep('Debian packages', () => ensureDebianPackage('postgresql'), installedOrThere);
-  const fresh = !existsSync(path.join(root, 'node_modules'));
-  if (fresh) printer.note('First start: this downloads about 1,100 npm packages and builds the application.');
-  if (!packagesAreCurrent(root) || !packagesAreCurrent(realtime)) {
-    await printer.longStep('npm packages', () => ensurePackages(root), installedOrThere);
-    await printer.longStep('realtime package', () => ensurePackages(realtime), installedOrThere);
-  }
-} catch (error) {
-  console.error(error instanceof MissingPackageError ? `\n${error.message}` : `\n${error.message ?? error}`);
+const realtime = path.join(root, 'realtime');
+const missing = [
+  {
+    name: 'Debian packages',
+    there: debianPackageIsThere('postgresql'),
+    doing: 'installing postgresql',
+    install: () => ensureDebianPackage('postgresql'),
+  },
+  {
+    name: 'npm packages',
+    there: packagesAreCurrent(root),
+    doing: 'installing about 1,100 of them',
+    install: () => ensurePackages(root),
+  },
+  {
+    name: 'realtime package',
+    there: packagesAreCurrent(realtime),
+    doing: 'installing',
+    install: () => ensurePackages(realtime),
+  },
+].filter(({ there }) => !there);
+
+// Side by side; whatever can be installed is, before the first failure is told.
+const results = await Promise.allSettled(
+  missing.map(({ name, doing, install }) => printer.longStep(name, doing, install, () => 'installed')),
+);
+const failure = results.find(({ status }) => status === 'rejected');
+if (failure) {
+  console.error(`\n${failure.reason.message}`);
   process.exit(1);
 }
 
@@ -37,7 +54,3 @@ const { register } = await import('tsx/esm/api');
 register();
 const { runLocal } = await import('./run-local.ts');
 process.exit(await runLocal(process.argv.slice(2), printer));
-
-function installedOrThere(installed) {
-  return installed ? 'installed' : 'there';
-}

@@ -22,6 +22,10 @@ export function postgresFolders() {
     .map((version) => `${base}/${version}/bin`);
 }
 
+export function debianPackageIsThere(name) {
+  return known[name].isThere();
+}
+
 /** Thrown when a package is missing and may not be installed from here; the message is the whole advice. */
 export class MissingPackageError extends Error {}
 

@@ -1,21 +1,10 @@
 /** Prints one line per step with the time it took: "  database ............. ready on port 5499 (1.2 s)". */
 export function stepPrinter(out = process.stdout) {
-  let open = '';
-  const label = (name) => `  ${`${name} `.padEnd(22, '.')} `;
+  const line = (name, words) => out.write(`  ${`${name} `.padEnd(22, '.')} ${words}\n`);
 
-  /** Says something between steps without breaking a line in progress. */
+  /** Says something between steps. */
   function note(text) {
-    out.write(`${open ? '\n' : ''}  ${text.replaceAll('\n', '\n  ')}\n`);
-    open = '';
-  }
-
-  function finish(name, words) {
-    if (open === name) {
-      out.write(`${words}\n`);
-      open = '';
-    } else {
-      note(`${label(name)}${words}`.trimStart());
-    }
+    out.write(`  ${text.replaceAll('\n', '\n  ')}\n`);
   }
 
   /**
@@ -30,19 +19,18 @@ export function stepPrinter(out = process.stdout) {
     const from = performance.now();
     try {
       const result = await work();
-      finish(name, `${describe(result)} (${((performance.now() - from) / 1000).toFixed(1)} s)`);
+      line(name, `${describe(result)} (${((performance.now() - from) / 1000).toFixed(1)} s)`);
       return result;
     } catch (error) {
-      finish(name, 'failed');
+      line(name, 'not done');
       throw error;
     }
   }
 
-  /** The same for a step that may take long: its name is shown while it runs. */
-  function longStep(name, work, describe) {
-    out.write(`${open ? '\n' : ''}${label(name)}`);
-    open = name;
-    return step(name, work, describe);
+  /** The same for a step that may take long: says what it does when it is not done in a second. */
+  async function longStep(name, doing, work, describe) {
+    const timer = setTimeout(() => line(name, `${doing} …`), 1000);
+    return step(name, () => work().finally(() => clearTimeout(timer)), describe);
   }
   return { step, longStep, note };
 }
