@@ -2,7 +2,19 @@ import type { AnalyseOptions } from './analyse-options';
 import { UnusableInput } from './unusable-input';
 
 /** Share of the work, in the order of the stages; measured on a mesh of a million facets. */
-const WEIGHT = { parse: 10, mesh: 40, columns: 15, air: 5, vents: 5, pits: 10, undercut: 10, checks: 5 };
+const WEIGHT = {
+  parse: 10,
+  mesh: 40,
+  columns: 15,
+  air: 5,
+  vents: 5,
+  pits: 10,
+  undercut: 10,
+  facets: 10,
+  sections: 20,
+  checks: 5,
+  geometry: 2,
+};
 export type Stage = keyof typeof WEIGHT;
 
 /** Runs stages one after another: progress, stop and, with a lent clock, timings. */

@@ -2,6 +2,8 @@ import type { Check } from '../report';
 import { basisOf, roundUp, say } from './basis';
 import type { CheckInput } from './check-input';
 
+/** Rounding of a wall that was drawn with exactly the limit. */
+const ROUNDING_DEG = 0.01;
 const PER_DEG = Math.PI / 180;
 
 /**
@@ -31,12 +33,12 @@ export function checkDraft({ recipe, report, walls, wantedDraftDeg }: CheckInput
   if (measured === null) {
     return { ...base, status: 'pass', measured: null, message: 'The template has no walls to draw the sheet from.', remedy: '', places: [] }; // prettier-ignore
   }
-  const good = stepped ? measured >= wantedDraftDeg : walls.areaBelowMm2 === 0;
-  const status = good ? 'pass' : measured < limits.draftFailDeg ? 'fail' : 'caution';
+  const good = stepped ? measured >= wantedDraftDeg - ROUNDING_DEG : walls.areaBelowMm2 === 0;
+  const status = good ? 'pass' : measured < limits.draftFailDeg - ROUNDING_DEG ? 'fail' : 'caution';
   const missing = roundUp(wantedDraftDeg - measured, 0.1);
   const height = walls.heightMm;
   const wider = height * (Math.tan(wantedDraftDeg * PER_DEG) - Math.tan(Math.max(measured, 0) * PER_DEG));
-  const sandingHelps = !print.sanded && measured >= limits.draftMinDeg;
+  const sandingHelps = !print.sanded && measured >= limits.draftMinDeg - ROUNDING_DEG;
   return {
     ...base,
     status,

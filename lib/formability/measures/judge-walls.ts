@@ -11,6 +11,9 @@ const LEAST_AREA_MM2 = 0.5;
 /** Facets lower than this may be layer steps; the wall is then judged at a larger scale. */
 const STEP_MM = 1;
 const WALL_DEG = 60;
+/** Rounding of a wall that was drawn with exactly the limit. */
+const ROUNDING_DEG = 0.01;
+const BINS_A_DEG = 100;
 const MOST_PLACES = 12;
 
 /** The walls that the sheet touches, judged for draft. */
@@ -36,6 +39,9 @@ export function judgeWalls(
   limitDeg: number,
 ): WallJudgement {
   const steep: number[] = [];
+  const bins = Math.ceil((WALL_DEG + VERTICAL_DEG) * BINS_A_DEG) + 1;
+  const areaIn = new Float64Array(bins);
+  const leastIn = new Float64Array(bins).fill(Infinity);
   let wallArea = 0;
   let below = 0;
   let stepArea = 0;
@@ -46,7 +52,10 @@ export function judgeWalls(
     if (facets.bed[t] || bore[t] || facets.area[t] === 0 || deg < -VERTICAL_DEG || deg > WALL_DEG) continue;
     if (visibility.visible[t] + visibility.shadowed[t] < 0.5) continue;
     wallArea += facets.area[t];
-    if (deg >= limitDeg) continue;
+    const bin = Math.floor((deg + VERTICAL_DEG) * BINS_A_DEG);
+    areaIn[bin] += facets.area[t];
+    if (deg < leastIn[bin]) leastIn[bin] = deg;
+    if (deg >= limitDeg - ROUNDING_DEG) continue;
     steep.push(t);
     below += facets.area[t];
     const z = [0, 1, 2].map((k) => mesh.position[mesh.index[3 * t + k] * 3 + 2]);
@@ -55,28 +64,14 @@ export function judgeWalls(
     high = Math.max(high, ...z);
   }
   const sliver = Math.max(LEAST_AREA_MM2, SLIVER_SHARE * wallArea);
+  let bin = 0;
+  for (let sum = areaIn[0]; sum < sliver && bin + 1 < bins;) sum += areaIn[++bin];
   return {
-    facetDeg: wallArea > 0 ? leastDraft(facets, draft, steep, Math.min(sliver, below), limitDeg) : null,
+    facetDeg: wallArea > sliver ? Math.max(0, leastIn[bin]) : null,
     stepped: stepArea > 0.8 * below,
     areaBelowMm2: below > sliver ? below : 0,
     wallAreaMm2: wallArea,
     places: below > sliver ? groupFacets(mesh, facets.area, steep, MOST_PLACES) : [],
     heightMm: below > sliver ? high - low : 0,
   };
-}
-
-function leastDraft(
-  facets: Facets,
-  draft: Float32Array,
-  steep: number[],
-  sliver: number,
-  limit: number,
-): number {
-  const order = Uint32Array.from(steep).sort((a, b) => draft[a] - draft[b] || a - b);
-  let sum = 0;
-  for (const t of order) {
-    sum += facets.area[t];
-    if (sum >= sliver && sum > LEAST_AREA_MM2) return Math.max(0, draft[t]);
-  }
-  return limit;
 }

@@ -1,0 +1,77 @@
+import { connectAir, type Air } from './dexel/air';
+import { affordGrid } from './dexel/afford-grid';
+import { buildColumns, type Columns } from './dexel/columns';
+import { makeGrid } from './dexel/grid';
+import { rasterise } from './dexel/raster';
+import { findAirTraps } from './measures/find-air-traps';
+import { findSpacing } from './measures/find-spacing';
+import { findUndercuts, type Undercuts } from './measures/find-undercuts';
+import { findVents, type Vents } from './measures/find-vents';
+import { measureDraft } from './measures/measure-draft';
+import { refineDepth } from './measures/refine-depth';
+import { findVisibility, type Visibility } from './measures/visibility';
+import { measureFacets, type Facets } from './mesh/measure-facets';
+import { prepareMesh, type Prepared } from './mesh/prepare-mesh';
+import type { RawMesh } from './parse/raw-mesh';
+import { MM_PER_UNIT, type EffectiveRecipe } from './recipe';
+import type { AirTrap, Point, Spacing } from './report';
+import type { Stages } from './stages';
+
+/** Everything that the report is written from, in the mesh's own frame. */
+export interface Part {
+  prepared: Prepared;
+  facets: Facets;
+  columns: Columns;
+  air: Air;
+  undercuts: Undercuts;
+  holes: Vents;
+  traps: AirTrap[];
+  spacing: Spacing[];
+  visibility: Visibility;
+  draft: ReturnType<typeof measureDraft>;
+  /** Width, depth, height above the bed. */
+  size: Point;
+}
+
+/**
+ * Mesh, columns, air, pits and facets, stage by stage.
+ * @throws UnusableInput no_triangles, stopped
+ */
+export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages): Part {
+  const { print, limits } = recipe;
+  const mmPerUnit = MM_PER_UNIT[recipe.mesh.unit];
+  const { prepared, facets } = stages.run('mesh', () => {
+    const ready = prepareMesh(raw, { mmPerUnit, ...recipe.mesh });
+    return { prepared: ready, facets: measureFacets(ready.mesh) };
+  });
+  const { mesh, shells, edges, min, max } = prepared;
+  const size: Point = [max[0] - min[0], max[1] - min[1], Math.max(0, max[2])];
+
+  const { columns, perFacet } = stages.run('columns', () => {
+    const low = [min[0] - mesh.centre[0], min[1] - mesh.centre[1]];
+    const high = [max[0] - mesh.centre[0], max[1] - mesh.centre[1]];
+    const grid = affordGrid(mesh, makeGrid(low, high, recipe.grid.cellMm));
+    // Only a closed surface is sure to leave each column as often as it enters it.
+    const hits = rasterise(mesh, grid, edges.boundary + edges.nonManifold > 0 ? 2 : 0);
+    return { columns: buildColumns(hits, grid, shells.ofFacet), perFacet: hits.perFacet };
+  });
+  const { grid } = columns;
+  const air = stages.run('air', () => connectAir(columns));
+  const undercuts = stages.run('undercut', () => {
+    const found = findUndercuts(columns, air, limits.undercutDepthMm, mesh.triangles);
+    refineDepth(mesh, found.regions, grid.cell, shells.ofFacet);
+    return found;
+  });
+  const holes = stages.run('vents', () =>
+    findVents(mesh, facets, edges, columns, shells.ofFacet, print.holeModel),
+  );
+  const { traps, spacing } = stages.run('pits', () => ({
+    traps: findAirTraps(holes.surface, grid, holes.vents),
+    spacing: findSpacing(holes.surface, grid, size[2]),
+  }));
+  const { visibility, draft } = stages.run('facets', () => ({
+    visibility: findVisibility(mesh, facets, columns, air, perFacet),
+    draft: measureDraft(facets),
+  }));
+  return { prepared, facets, columns, air, undercuts, holes, traps, spacing, visibility, draft, size };
+}

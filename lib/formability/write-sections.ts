@@ -1,0 +1,102 @@
+import type { CheckInput } from './checks/check-input';
+import { describeMesh } from './describe-mesh';
+import { undercutAreas } from './facet-output';
+import { estimatePrint } from './measures/estimate-print';
+import { measureEdges } from './measures/measure-edges';
+import { measureLayers } from './measures/measure-layers';
+import { measureMacroDraft } from './measures/measure-macro-draft';
+import { measurePlan } from './measures/measure-plan';
+import { measureWalls } from './measures/measure-walls';
+import type { Facets } from './mesh/measure-facets';
+import type { EffectiveRecipe } from './recipe';
+import type { Point, Report } from './report';
+import type { Part } from './survey-part';
+
+type Sections = Omit<CheckInput['report'], 'schema' | 'engine' | 'input' | 'recipe'>;
+
+/** The report's sections, with places in the file's own frame in x and y. */
+export function writeSections(part: Part, recipe: EffectiveRecipe): Sections {
+  const { prepared, facets, columns, air, undercuts, holes, visibility, draft, size } = part;
+  const { mesh, edges } = prepared;
+  const { machine, print, limits } = recipe;
+  const here = (at: Point): Point => [at[0] + mesh.centre[0], at[1] + mesh.centre[1], at[2]];
+  const meshReport = describeMesh(prepared, facets, columns);
+  const regions = undercuts.regions.map((region) => ({ ...region, at: here(region.at) }));
+  const found = measureEdges(mesh, facets, edges, visibility, holes.bore);
+  const margin = 2 * machine.frameMarginMm;
+  return {
+    mesh: meshReport,
+    draft: {
+      ...draft.draft,
+      wallMinMacroDeg: measureMacroDraft(mesh, facets, notWalls(part), Math.max(...size)),
+    },
+    plan: measurePlan({
+      mesh,
+      facets,
+      edges,
+      columns,
+      visibility,
+      bore: holes.bore,
+      boreAreaMm2: holes.boreAreaMm2,
+      surface: holes.surface,
+      frameMm: machine.frameMm ?? [size[0] + margin, size[1] + margin],
+      heightMm: size[2],
+      watertight: meshReport.watertight,
+    }),
+    undercut: {
+      ...undercutAreas(facets, visibility, holes.bore),
+      undercutVolumeMm3: air.undercutVolume,
+      enclosedVolumeMm3: air.enclosedVolume,
+      shadowVolumeMm3: air.undercutVolume + air.enclosedVolume,
+      maxDepthMm: regions.length > 0 ? regions[0].maxDepthMm : 0,
+      regions,
+    },
+    airTraps: part.traps.map((trap) => ({ ...trap, floor: here(trap.floor) })),
+    vents: holes.vents.map((vent) => ({ ...vent, at: here(vent.at) })),
+    spacing: part.spacing.map((pair) => ({
+      ...pair,
+      between: [here(pair.between[0]), here(pair.between[1])],
+    })),
+    walls: measureWalls(mesh, facets, columns, air, visibility, holes.bore),
+    edges: { ...found, places: found.places.map((place) => ({ ...place, at: here(place.at) })) },
+    layers: measureLayers(facets, print.layerMm, limits.layerGrooveMm),
+    print: estimatePrint(
+      { volumeMm3: meshReport.unionVolumeMm3, heightMm: size[2], ...facingAreas(facets) },
+      recipe,
+    ),
+    ...NOT_COMPUTED,
+  };
+}
+
+/** Sections whose physics this version has not: the checks say why. */
+const NOT_COMPUTED: Pick<Report, 'sheet' | 'air' | 'ventMarks' | 'heat' | 'skin' | 'wallsUnderPressure'> = {
+  sheet: null,
+  air: [],
+  ventMarks: [],
+  heat: null,
+  skin: null,
+  wallsUnderPressure: null,
+};
+
+/** Facets that are no wall to the sheet: bed, bores, ceilings of undercuts, cavities. */
+function notWalls({ facets, holes, undercuts, visibility }: Part): Uint8Array {
+  const skip = facets.bed.slice();
+  for (let t = 0; t < skip.length; t++) {
+    if (holes.bore[t] || undercuts.ceiling[t] || visibility.visible[t] + visibility.shadowed[t] < 0.5)
+      skip[t] = 1;
+  }
+  return skip;
+}
+
+/** Areas of walls, and of tops and undersides, for the print estimate. */
+function facingAreas({ area, nz }: Facets) {
+  let wallAreaMm2 = 0;
+  let topAreaMm2 = 0;
+  let bottomAreaMm2 = 0;
+  for (let t = 0; t < area.length; t++) {
+    wallAreaMm2 += area[t] * Math.sqrt(Math.max(0, 1 - nz[t] * nz[t]));
+    if (nz[t] > 0) topAreaMm2 += area[t] * nz[t];
+    else bottomAreaMm2 -= area[t] * nz[t];
+  }
+  return { wallAreaMm2, topAreaMm2, bottomAreaMm2 };
+}

@@ -1,0 +1,84 @@
+import { spawnSync } from 'node:child_process';
+import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
+import { afterAll, describe, expect, it } from 'vitest';
+import type { Report } from '@/lib/formability/report';
+import { frustum } from '../../fixtures/meshes/solids';
+import { binaryStl } from '../../fixtures/meshes/write-stl';
+
+const root = path.resolve(import.meta.dirname, '../../..');
+const folder = mkdtempSync(path.join(tmpdir(), 'formability-'));
+afterAll(() => rmSync(folder, { recursive: true, force: true }));
+
+function file(name: string, content: Uint8Array | string): string {
+  const at = path.join(folder, name);
+  writeFileSync(at, content);
+  return at;
+}
+
+function run(...args: string[]): { status: number | null; out: string; err: string } {
+  const done = spawnSync(process.execPath, ['--import', 'tsx', 'lib/formability/cli.ts', ...args], {
+    cwd: root,
+    encoding: 'utf8',
+  });
+  return { status: done.status, out: done.stdout, err: done.stderr };
+}
+
+const good = file('good.stl', binaryStl(frustum(60, 40, 20, 4)));
+
+describe('npm run formability', () => {
+  it('prints the report, and nothing else, with --json; a failing template is still exit 0', () => {
+    const { status, out, err } = run(good, '--json');
+    const report = JSON.parse(out) as Report;
+    expect([status, err]).toEqual([0, '']);
+    expect(report.input.triangles).toBe(12);
+    expect(report.timings.parseMs).toBeGreaterThanOrEqual(0);
+  });
+
+  it('prints a page to read without it', () => {
+    const { status, out, err } = run(good, '--geometry-only');
+    expect([status, err]).toEqual([0, '']);
+    expect(out).toContain('60.0 × 40.0 × 20.0 mm');
+    expect(out).toMatch(/LOOK draft/);
+    expect(out).toContain('only geometry was asked for');
+    expect(
+      Math.max(
+        ...out
+          .split('\n')
+          .slice(3)
+          .map((line) => line.length),
+      ),
+    ).toBeLessThanOrEqual(100);
+  });
+
+  it('takes a recipe', () => {
+    const recipe = file(
+      'recipe.json',
+      JSON.stringify({ sheet: { gaugeMm: 1.5 }, limits: { draftMinDeg: 3 } }),
+    );
+    const report = JSON.parse(run(good, '--recipe', recipe, '--json').out) as Report;
+    expect(report.recipe.sheet.gaugeMm).toBe(1.5);
+    expect(report.recipe.limits.draftMinDeg).toBe(3);
+  });
+
+  it.each([
+    ['a broken mesh', [file('bad.stl', binaryStl(frustum(60, 40, 20, 4)).slice(0, 300))], 'truncated'],
+    ['a missing file', [path.join(folder, 'none.stl')], 'unreadable'],
+    ['a folder', [folder], 'unreadable'],
+    [
+      'an unknown material',
+      [good, '--recipe', file('steel.json', '{"sheet":{"material":"steel"}}')],
+      'invalid_recipe',
+    ],
+    ['a recipe that is no JSON', [good, '--recipe', file('no.json', '{')], 'invalid_recipe'],
+    ['an unknown option', [good, '--fast'], 'usage'],
+    ['no mesh', [], 'usage'],
+  ])('refuses %s with exit 2 and one line', (_, args, code) => {
+    const { status, out, err } = run(...args, '--json');
+    expect(status).toBe(2);
+    expect(err).toMatch(new RegExp(`^error: ${code}: .+\n$`));
+    expect(err.trim().split('\n')).toHaveLength(1);
+    expect(JSON.parse(out)).toMatchObject({ error: { code, reasons: expect.any(Array) } });
+  });
+});
