@@ -44,6 +44,8 @@ export class MentionMenu {
   };
 
   readonly suggestion: MentionSuggestion = {
+    // Inside the page's landmark, so that screen readers find it where the text is.
+    container: '#main',
     items: ({ query }) => filterPeople(this.people, query),
     command: ({ editor, range, props }) => {
       editor

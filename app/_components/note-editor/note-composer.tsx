@@ -113,16 +113,16 @@ export function NoteComposer(props: NoteComposerProps) {
         </Button>
         {props.onCancel ? (
           <Button variant="plain" size="small" onPress={props.onCancel}>
-            {isEmpty ? 'Close' : 'Close, keep the draft'}
+            Close
           </Button>
         ) : null}
         {!isEmpty ? (
           <Button variant="plain" size="small" onPress={() => void clear()}>
-            Throw the draft away
+            Discard
           </Button>
         ) : null}
         <span role="status" className="text-sm text-slate">
-          {hint ?? (isEmpty ? '' : 'Kept on this device.')}
+          {hint ?? (isEmpty ? '' : 'Draft kept on this device.')}
         </span>
       </div>
     </div>

@@ -83,12 +83,12 @@ function PinPicker({ pin, onChange }: { pin: NotePin | null; onChange: (pin: Not
             })
           }
         >
-          {pin ? 'Pin it elsewhere' : 'Pin it to the model'}
+          {pin ? 'Move the pin' : 'Pin it to the model'}
         </Button>
       ) : null}
       {pin ? (
         <Button size="small" variant="plain" onPress={() => onChange(null)}>
-          Take the pin off
+          Unpin
         </Button>
       ) : null}
     </div>

@@ -5,6 +5,7 @@ import type { OutgoingEntry } from '@/app/_components/note-editor/note-outbox';
 import { StateShape } from '@/app/_components/state-shape';
 import { Time } from '@/app/_components/time';
 import { Link } from '@/app/_components/link';
+import { useNow } from '@/app/_components/use-now';
 import type { NoteView } from '@/lib/review/schemas';
 
 /** One note of a thread, as it was said. */
@@ -14,7 +15,7 @@ export function NoteEntry({ note }: { note: NoteView }) {
       <p className="text-sm">
         <span className="font-semibold">{note.authorName}</span>{' '}
         <span className="text-slate">
-          <Time at={note.createdAt} show="relative" className="print:hidden" />
+          <SaidWhen at={note.createdAt} />
           <span className="hidden print:inline">
             <Time at={note.createdAt} show="moment" />
           </span>
@@ -22,6 +23,17 @@ export function NoteEntry({ note }: { note: NoteView }) {
       </p>
       <NoteBody body={note.body} />
     </div>
+  );
+}
+
+/** The page's clock goes in half minutes: a note that was said since its last tick is not in the future. */
+function SaidWhen({ at }: { at: string }) {
+  const now = useNow();
+  if (Date.parse(at) <= now) return <Time at={at} show="relative" className="print:hidden" />;
+  return (
+    <time dateTime={at} className="print:hidden">
+      just now
+    </time>
   );
 }
 

@@ -4,7 +4,7 @@ import type { RevisionView } from '@/lib/review/schemas';
 export function PostedWith({ revision }: { revision: RevisionView }) {
   if (!revision.note) return null;
   return (
-    <p className="max-w-prose text-base whitespace-pre-line">
+    <p className="max-w-prose py-1 text-base whitespace-pre-line">
       <span className="text-slate">{revision.author.name} writes: </span>
       {revision.note}
     </p>

@@ -45,7 +45,7 @@ export function RoomActions({
   const { can } = revision;
   const api = revisionApi(workspace.id, revision.id);
   return (
-    <div className="flex flex-wrap items-center gap-2 print:hidden">
+    <div className="flex flex-wrap items-center gap-2 print:hidden sm:ml-auto">
       {can.sign ? <Button onPress={() => onOpen('return')}>Return with a reason</Button> : null}
       {can.withdraw ? <Button onPress={() => onOpen('withdraw')}>Withdraw</Button> : null}
       {can.recall ? <Button onPress={() => onOpen('recall')}>Recall</Button> : null}

@@ -27,7 +27,7 @@ export function RoomTitle(props: { revision: RevisionView; gates: readonly GateS
           label: 'Posted',
           value: (
             <>
-              {revision.author.name}, <Time at={revision.postedAt} show="moment" />
+              {revision.author.name}, <Time at={revision.postedAt} show="day" />
             </>
           ),
         },

@@ -152,8 +152,10 @@ export function Room({
             ) : null
           }
         />
-        <RoomActions step={step} onOpen={setDialog} />
-        <PostedWith revision={revision} />
+        <div className="flex flex-wrap items-start justify-between gap-x-6 gap-y-2">
+          <PostedWith revision={revision} />
+          <RoomActions step={step} onOpen={setDialog} />
+        </div>
         <StateBanner revision={revision} />
         <CheckPanel revision={revision} />
         <div className="grid items-start gap-6 lg:grid-cols-[minmax(0,1fr)_minmax(20rem,27rem)]">
