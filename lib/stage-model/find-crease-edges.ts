@@ -1,8 +1,13 @@
 import { CREASE_DEG, type SplitMesh } from './split-vertices';
 
 const CREASE_COS = Math.cos((CREASE_DEG * Math.PI) / 180);
+/** Vertex normals nearer than 20° shade as one surface. */
+const SHADE_COS = Math.cos((20 * Math.PI) / 180);
 /** More lines than this are a texture, not a drawing: printed-like steps and scan noise would be inked black. */
 const MOST_LINES = 60_000;
+
+/** A triangle narrower than this many counts of the 16-bit grid (1/6500 of the longest side) is a sliver. */
+const SLIVER_COUNTS = 10;
 
 /** Pairs of vertices: the edges between facets that meet sharply, and open ones; drawn as ink lines. */
 export function findCreaseEdges(mesh: SplitMesh, index: Uint32Array): Uint32Array {
@@ -17,7 +22,7 @@ export function findCreaseEdges(mesh: SplitMesh, index: Uint32Array): Uint32Arra
   const normals = unitNormals(mesh, index);
   let found = 0;
   for (let c = 0; c < index.length; c++) {
-    const next = c % 3 === 2 ? c - 2 : c + 1;
+    const next = nextCorner(c);
     const p = mesh.place[index[c]];
     const q = mesh.place[index[next]];
     const low = Math.min(p, q);
@@ -33,7 +38,7 @@ export function findCreaseEdges(mesh: SplitMesh, index: Uint32Array): Uint32Arra
       }
       const [a, b] = endPlaces(mesh, index, firstCorner[e]);
       if (Math.min(a, b) === low && Math.max(a, b) === high) {
-        state[e] = state[e] === 0 && smooth(normals, firstCorner[e], c) ? 1 : 2;
+        state[e] = state[e] === 0 && smooth(mesh, index, normals, firstCorner[e], c) ? 1 : 2;
         break;
       }
       h = (h + 1) & mask;
@@ -43,24 +48,46 @@ export function findCreaseEdges(mesh: SplitMesh, index: Uint32Array): Uint32Arra
   for (let e = 0; e < found; e++) {
     if (state[e] === 1) continue;
     const c = firstCorner[e];
-    pairs.push(index[c], index[c % 3 === 2 ? c - 2 : c + 1]);
+    pairs.push(index[c], index[nextCorner(c)]);
   }
   const isDrawing = mesh.draftSplitDeg < 180 && pairs.length / 2 <= MOST_LINES;
   return isDrawing ? Uint32Array.from(pairs) : new Uint32Array(0);
 }
 
 function endPlaces(mesh: SplitMesh, index: Uint32Array, c: number): [number, number] {
-  return [mesh.place[index[c]], mesh.place[index[c % 3 === 2 ? c - 2 : c + 1]]];
+  return [mesh.place[index[c]], mesh.place[index[nextCorner(c)]]];
 }
 
-function smooth(normals: Float32Array, corner: number, other: number): boolean {
+/**
+ * A pair that is no edge to draw: it meets flatly, one of the two is a sliver whose normal says nothing, or the shading
+ * runs on over it at one of its ends (a chance fold of the simplifier).
+ */
+function smooth(
+  mesh: SplitMesh,
+  index: Uint32Array,
+  facets: Float32Array,
+  corner: number,
+  other: number,
+): boolean {
   const a = ((corner / 3) | 0) * 3;
   const b = ((other / 3) | 0) * 3;
-  return (
-    normals[a] * normals[b] + normals[a + 1] * normals[b + 1] + normals[a + 2] * normals[b + 2] >= CREASE_COS
-  );
+  const sliver = (t: number) => facets[t] === 0 && facets[t + 1] === 0 && facets[t + 2] === 0;
+  if (sliver(a) || sliver(b) || dot(facets, a, b) >= CREASE_COS) return true;
+  const [p, q] = [index[corner], index[nextCorner(corner)]];
+  const [r, s] = [index[other], index[nextCorner(other)]];
+  const [atP, atQ] = mesh.place[r] === mesh.place[p] ? [r, s] : [s, r];
+  return dot(mesh.normals, p * 3, atP * 3) >= SHADE_COS || dot(mesh.normals, q * 3, atQ * 3) >= SHADE_COS;
 }
 
+function nextCorner(corner: number): number {
+  return corner % 3 === 2 ? corner - 2 : corner + 1;
+}
+
+function dot(v: Float32Array, i: number, j: number): number {
+  return v[i] * v[j] + v[i + 1] * v[j + 1] + v[i + 2] * v[j + 2];
+}
+
+/** Unit normals, three numbers a triangle; 0 for slivers. */
 function unitNormals({ grid, place }: SplitMesh, index: Uint32Array): Float32Array {
   const normals = new Float32Array(index.length);
   for (let i = 0; i < index.length; i += 3) {
@@ -68,10 +95,18 @@ function unitNormals({ grid, place }: SplitMesh, index: Uint32Array): Float32Arr
     const [ux, uy, uz] = [grid[b] - grid[a], grid[b + 1] - grid[a + 1], grid[b + 2] - grid[a + 2]];
     const [vx, vy, vz] = [grid[c] - grid[a], grid[c + 1] - grid[a + 1], grid[c + 2] - grid[a + 2]];
     const [x, y, z] = [uy * vz - uz * vy, uz * vx - ux * vz, ux * vy - uy * vx];
-    const length = Math.hypot(x, y, z) || 1;
+    const length = Math.hypot(x, y, z);
+    const longest = Math.sqrt(
+      Math.max(length2(ux, uy, uz), length2(vx, vy, vz), length2(ux - vx, uy - vy, uz - vz)),
+    );
+    if (length < longest * SLIVER_COUNTS) continue;
     normals[i] = x / length;
     normals[i + 1] = y / length;
     normals[i + 2] = z / length;
   }
   return normals;
+}
+
+function length2(x: number, y: number, z: number): number {
+  return x * x + y * y + z * z;
 }

@@ -69,7 +69,7 @@ const GAP = 10;
 
 /** A bore to the bed up to this wide is a vent (the engine's definition); its walls are upright by nature. */
 const VENT_MM = 3;
-const UPRIGHT_DEG = 0.25;
+const UPRIGHT_DEG = 1;
 
 /**
  * Walls worth a figure: those that stand at least a tenth of the template's height, tallest first. The two sides of a

@@ -26,8 +26,9 @@ export function attachPointers(host: HTMLElement, control: StageControl, events:
     const box = host.getBoundingClientRect();
     return [event.clientX - box.left, event.clientY - box.top];
   };
+  const hasFocus = () => host.contains(document.activeElement);
   const touchAction = () => {
-    host.style.touchAction = document.activeElement === host ? 'none' : 'pan-y';
+    host.style.touchAction = hasFocus() ? 'none' : 'pan-y';
   };
 
   const onDown = (event: PointerEvent) => {
@@ -91,7 +92,7 @@ export function attachPointers(host: HTMLElement, control: StageControl, events:
   };
 
   const onWheel = (event: WheelEvent) => {
-    if (document.activeElement !== host && !event.ctrlKey) return;
+    if (!hasFocus() && !event.ctrlKey) return;
     event.preventDefault();
     const lines = event.deltaMode === 1 ? 16 : 1;
     control.zoomBy(Math.exp((-event.deltaY * lines) / 480), ...place(event));

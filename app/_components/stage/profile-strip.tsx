@@ -74,7 +74,7 @@ export function ProfileStrip(props: ProfileStripProps) {
   return (
     <section aria-label="Section A–A" className={clsx('border border-rule bg-sheet', props.className)}>
       <div className="flex flex-wrap items-center gap-x-4 gap-y-1 px-3 pt-2 sm:px-4">
-        <h3 className="text-sm font-semibold">Section A–A</h3>
+        <p className="text-sm font-semibold">Section A–A</p>
         <p className="text-xs text-slate max-sm:hidden">seen from the {side}</p>
         <div className="flex grow flex-wrap items-center gap-x-3 gap-y-1 sm:justify-end">
           <ToggleButtonGroup

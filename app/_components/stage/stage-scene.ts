@@ -112,7 +112,7 @@ export class StageScene {
     this.light.visible = plain && hasCoarse;
     this.inkLines.visible = !plain || this.model.lines.length < 20_000;
     this.template.setPitch(HATCH_CSS_PX * ratio);
-    this.inkMaterial.opacity = ratio > 1.5 ? 0.8 : 0.5;
+    this.inkMaterial.opacity = ratio >= 1.5 ? 0.8 : 0.5;
     this.aim(rig);
     this.renderer.render(this.scene, this.camera);
   }

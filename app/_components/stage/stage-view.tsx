@@ -131,7 +131,7 @@ export default function StageView(props: StageProps) {
       setKept(over ? { left: legend.left - stage.left, top: legend.top - stage.top } : null);
       // Seen at a slant the template leaves the corners free; only a legend that reaches the middle takes all its height.
       const reachesMiddle = over && legend.left - stage.left < stage.width * 0.6;
-      engine.control.setFoot(over ? (stage.bottom - legend.top) * (reachesMiddle ? 1 : 0.6) : 0);
+      engine.control.setFoot(over ? (stage.bottom - legend.top) * (reachesMiddle ? 1 : 0.85) : 0);
     });
     measure.observe(row);
     measure.observe(host);
@@ -200,26 +200,26 @@ export default function StageView(props: StageProps) {
           }}
         >
           <div ref={host} className="absolute inset-0" />
+          {engine ? (
+            <StageMarks
+              engine={engine}
+              bounds={bounds}
+              pins={pins}
+              activePin={activePin}
+              onPinSelect={props.onPinSelect}
+              sectionLine={sectionLine}
+              onSectionLineChange={props.onSectionLineChange}
+              ghost={placing ? (hit?.at ?? null) : null}
+              highlight={props.highlight ?? null}
+              crossHair={crossHair}
+              kept={kept}
+            />
+          ) : (
+            <div className="absolute inset-0">
+              <Picture {...props} />
+            </div>
+          )}
         </div>
-        {engine ? (
-          <StageMarks
-            engine={engine}
-            bounds={bounds}
-            pins={pins}
-            activePin={activePin}
-            onPinSelect={props.onPinSelect}
-            sectionLine={sectionLine}
-            onSectionLineChange={props.onSectionLineChange}
-            ghost={placing ? (hit?.at ?? null) : null}
-            highlight={props.highlight ?? null}
-            crossHair={crossHair}
-            kept={kept}
-          />
-        ) : (
-          <div className="absolute inset-0">
-            <Picture {...props} />
-          </div>
-        )}
         {lost ? (
           <div className="absolute inset-0 flex flex-col items-start gap-2 bg-sheet p-6">
             <p>The graphics driver has dropped the model. It comes back by itself, or draw it again.</p>

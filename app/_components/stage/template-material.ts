@@ -55,9 +55,10 @@ const fragmentShader = /* glsl */ `
     return smoothstep(0.0, soft, at) * (1.0 - smoothstep(0.3, 0.3 + soft, at));
   }
 
+  // Where the value jumps from pixel to pixel (scan noise) a line would be a speck.
   float isoLine(float at, float width) {
     float slope = fwidth(at);
-    return slope < 1e-4 ? 0.0 : 1.0 - smoothstep(width - 0.5, width + 0.5, abs(fract(at - 0.5) - 0.5) / slope);
+    return slope < 1e-4 || slope > 0.4 ? 0.0 : 1.0 - smoothstep(width - 0.5, width + 0.5, abs(fract(at - 0.5) - 0.5) / slope);
   }
 
   void main() {
@@ -73,7 +74,7 @@ const fragmentShader = /* glsl */ `
       if (vDraft < limit) colour = mix(colour, hatch, 0.75 * stripe());
       colour = mix(colour, ink, 0.35 * isoLine(vDraft / 5.0, 0.6));
       float toLimit = abs(vDraft - limit) / max(fwidth(vDraft), 1e-4);
-      if (fwidth(vDraft) > 1e-4) colour = mix(colour, ink, 0.9 * (1.0 - smoothstep(0.8, 1.6, toLimit)));
+      if (fwidth(vDraft) > 1e-4 && fwidth(vDraft) < 2.0) colour = mix(colour, ink, 0.9 * (1.0 - smoothstep(0.8, 1.6, toLimit)));
     }
     if (undercut) {
       if (map == 2) colour = mix(colour, madder, 0.28);
@@ -81,7 +82,7 @@ const fragmentShader = /* glsl */ `
     }
     // A round wall's outline: facing runs to nothing within a pixel or so; plane faces never meet this.
     float bend = fwidth(facing);
-    if (bend > 1e-3) colour = mix(colour, ink, 0.8 * (1.0 - smoothstep(0.6, 1.6, abs(facing) / bend)));
+    if (bend > 1e-3 && abs(facing) < 0.25) colour = mix(colour, ink, 0.8 * (1.0 - smoothstep(0.6, 1.6, abs(facing) / bend)));
     if (!gl_FrontFacing) colour = mix(colour, clayDark, 0.55);
     gl_FragColor = vec4(colour, 1.0);
   }
