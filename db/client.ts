@@ -20,6 +20,8 @@ function connect(name: string, url: () => string, max: number): Database {
     });
     // A server restart breaks idle connections; the pool replaces them, the process lives on.
     pool.on('error', () => undefined);
+    // One that breaks in the middle of a transaction fails that transaction's next query, not the process.
+    pool.on('connect', (client) => client.on('error', () => undefined));
     database = drizzle(pool);
     open.set(name, database);
   }
