@@ -4,7 +4,7 @@ import { renderPicture, THUMBNAIL_SIZE } from '@/lib/stage-model/render-picture'
 import { cutSection } from '@/lib/stage-model/section';
 import { geometryOf, hemisphere, roughen, subdivide, tray } from '../../unit/stage-model/shapes';
 
-export interface BenchRow {
+interface BenchRow {
   what: string;
   measured: number;
   unit: string;
@@ -13,8 +13,8 @@ export interface BenchRow {
   ok?: boolean;
 }
 
-/** Stage model of meshes from 5 k to 1.5 M triangles: size against the budget of 6 MB, times as measured. */
-export async function run(): Promise<{ name: string; rows: BenchRow[] }> {
+/** Stage model of meshes from 5 k to 1.5 M triangles: size against the budget of 6 MB, times as measured; prints a table. */
+export async function run(): Promise<void> {
   const shapes: [string, Float32Array][] = [
     ['tray', tray()],
     ['dome of 980 k', hemisphere(60, 350)],
@@ -44,7 +44,12 @@ export async function run(): Promise<{ name: string; rows: BenchRow[] }> {
       'ms of processor',
     );
   }
-  return { name: 'stage model', rows };
+  console.log('stage model');
+  for (const { what, measured, unit, budget, ok } of rows) {
+    const verdict = budget === undefined ? '' : `at most ${budget}: ${ok ? 'kept' : 'BROKEN'}`;
+    console.log(`  ${what.padEnd(48)}${measured.toFixed(3).padStart(12)} ${unit.padEnd(16)} ${verdict}`);
+  }
+  if (rows.some((r) => r.ok === false)) process.exitCode = 1;
 }
 
 async function timed<T>(work: () => T | Promise<T>): Promise<[T, { wallMs: number; cpuMs: number }]> {
