@@ -16,7 +16,7 @@ const name = shortText('a name', 60);
 const isDefault = z.boolean().default(false);
 const number = (what: string, unit: string, min: number, max: number) =>
   z
-    .number(`Give ${what} as a number of ${unit}.`)
+    .number(`Give ${what[0].toLowerCase()}${what.slice(1)} as a number of ${unit}.`)
     .min(min, `${what} is at least ${min} ${unit}.`)
     .max(max, `${what} is at most ${max} ${unit}.`);
 

@@ -51,7 +51,7 @@ export default async function GatePlanPage({ params }: Props) {
 
 function whoSigns(gate: GatePlanView['gates'][number]): string {
   if (gate.kind === 'automatic')
-    return 'Opens by itself when the check run has finished and no failing finding is open. A lead may waive one with a reason.';
+    return 'Passes by itself when the check run has finished and no failing finding is open. A lead may waive one with a reason.';
   const roles = gate.roles.map((role) => roleWords[role].label.toLowerCase()).join(' or ');
   const many = gate.quorum === 1 ? `One ${roles} signs` : `${gate.quorum} people who are ${roles} sign`;
   return gate.fourEyes ? `${many}; never the author of the revision.` : `${many}.`;

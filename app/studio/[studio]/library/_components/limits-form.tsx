@@ -69,7 +69,7 @@ export function LimitsForm({ apiPath, limits, maySet }: Props) {
         {LIMIT_KEYS.map((key) => (
           <li
             key={key}
-            className="grid items-center gap-x-6 gap-y-2 border-b border-rule px-4 py-3 last:border-b-0 md:grid-cols-[1fr_16rem]"
+            className="grid items-center gap-x-6 gap-y-2 border-b border-rule px-4 py-3 last:border-b-0 md:grid-cols-[1fr_18rem]"
           >
             <div className="min-w-0">
               <p>{sentence(LIMIT_RULES[key].label)}</p>
@@ -85,21 +85,24 @@ export function LimitsForm({ apiPath, limits, maySet }: Props) {
                 <NumberField
                   label={sentence(LIMIT_RULES[key].label)}
                   hideLabel
+                  className="flex-1"
                   unit={unitOf(key)}
                   step={stepOf(key)}
                   value={values[key]}
                   onChange={(value) => setValues((now) => ({ ...now, [key]: value }))}
                   error={errors[key]}
                 />
-                <Button
-                  size="small"
-                  variant="plain"
-                  isDisabled={values[key] === LIMIT_RULES[key].value}
-                  aria-label={`Put back: ${LIMIT_RULES[key].label}`}
-                  onPress={() => setValues((now) => ({ ...now, [key]: LIMIT_RULES[key].value }))}
-                >
-                  Put back
-                </Button>
+                {values[key] === LIMIT_RULES[key].value ? null : (
+                  <Button
+                    size="small"
+                    variant="plain"
+                    className="whitespace-nowrap"
+                    aria-label={`Put back: ${LIMIT_RULES[key].label}`}
+                    onPress={() => setValues((now) => ({ ...now, [key]: LIMIT_RULES[key].value }))}
+                  >
+                    Put back
+                  </Button>
+                )}
               </div>
             ) : (
               <span className="font-mono tabular-nums md:text-right">
@@ -113,7 +116,11 @@ export function LimitsForm({ apiPath, limits, maySet }: Props) {
         <div className="mt-4 flex flex-col items-start gap-3">
           <FormProblem>{problem}</FormProblem>
           <Button type="submit" variant="primary" isPending={busy} isDisabled={changed.length === 0}>
-            {changed.length === 1 ? 'Set 1 limit' : `Set ${changed.length} limits`}
+            {changed.length === 0
+              ? 'Set limits'
+              : changed.length === 1
+                ? 'Set 1 limit'
+                : `Set ${changed.length} limits`}
           </Button>
         </div>
       ) : null}

@@ -10,6 +10,8 @@ export type ShelfField = {
   help?: string;
   unit?: string;
   step?: number;
+  /** Decimals of the figure in the table. */
+  digits?: number;
   options?: { value: string; label: string; detail?: string }[];
 };
 
@@ -26,14 +28,16 @@ export const shelfFields: Record<LibraryKind, ShelfField[]> = {
       label: 'Forming area, width',
       short: 'Width',
       unit: 'mm',
+      digits: 0,
       help: 'Sheet that can move, inside the clamp frame.',
     },
-    { name: 'formingYMm', label: 'Forming area, depth', short: 'Depth', unit: 'mm' },
+    { name: 'formingYMm', label: 'Forming area, depth', short: 'Depth', unit: 'mm', digits: 0 },
     {
       name: 'maxHeightMm',
       label: 'Greatest template height',
       short: 'Height',
       unit: 'mm',
+      digits: 0,
       help: 'Daylight above the bed, less what the sheet needs.',
     },
     {
@@ -41,6 +45,7 @@ export const shelfFields: Record<LibraryKind, ShelfField[]> = {
       label: 'Margin to the frame',
       short: 'Margin',
       unit: 'mm',
+      digits: 0,
       help: 'Free sheet that is kept between template and frame on every side.',
     },
     {
@@ -48,15 +53,16 @@ export const shelfFields: Record<LibraryKind, ShelfField[]> = {
       label: 'Forming pressure',
       short: 'Pressure',
       unit: 'bar',
+      digits: 1,
       step: 0.1,
       help: 'What the machine’s own papers allow is the most. The vessel is rated, not guessed.',
     },
   ],
   printers: [
     name,
-    { name: 'buildXMm', label: 'Build width', short: 'Width', unit: 'mm' },
-    { name: 'buildYMm', label: 'Build depth', short: 'Depth', unit: 'mm' },
-    { name: 'buildZMm', label: 'Build height', short: 'Height', unit: 'mm' },
+    { name: 'buildXMm', label: 'Build width', short: 'Width', unit: 'mm', digits: 0 },
+    { name: 'buildYMm', label: 'Build depth', short: 'Depth', unit: 'mm', digits: 0 },
+    { name: 'buildZMm', label: 'Build height', short: 'Height', unit: 'mm', digits: 0 },
     { name: 'nozzleMm', label: 'Nozzle', unit: 'mm', step: 0.1, help: 'The one that is usually fitted.' },
     {
       name: 'layerMm',
@@ -82,9 +88,9 @@ export const shelfFields: Record<LibraryKind, ShelfField[]> = {
   filaments: [
     name,
     { name: 'material', label: 'Material', options: materials(FILAMENT_IDS, FILAMENTS) },
-    { name: 'shellMm', label: 'Shell', unit: 'mm', step: 0.1, help: 'Printed walls.' },
-    { name: 'topMm', label: 'Top', unit: 'mm', step: 0.1, help: 'Printed roof over the infill.' },
-    { name: 'infillPercent', label: 'Infill', unit: '%', step: 5 },
+    { name: 'shellMm', label: 'Shell', unit: 'mm', digits: 1, step: 0.1, help: 'Printed walls.' },
+    { name: 'topMm', label: 'Top', unit: 'mm', digits: 1, step: 0.1, help: 'Printed roof over the infill.' },
+    { name: 'infillPercent', label: 'Infill', unit: '%', digits: 0, step: 5 },
   ],
 };
 

@@ -65,8 +65,8 @@ function columnsOf(kind: LibraryKind, shelfPath: string, mayChange: boolean): Co
 function Value({ item, field }: { item: LibraryItem; field: ShelfField }) {
   const value = (item as unknown as Record<string, string | number>)[field.name];
   if (field.options) return field.options.find((option) => option.value === value)?.label ?? value;
-  if (field.unit === 'mm') return <Length mm={Number(value)} />;
-  if (field.unit) return <Figure value={Number(value)} unit={field.unit} />;
+  if (field.unit === 'mm') return <Length mm={Number(value)} digits={field.digits} />;
+  if (field.unit) return <Figure value={Number(value)} unit={field.unit} digits={field.digits} />;
   return (
     <>
       <span className="font-semibold">{value}</span>
