@@ -66,7 +66,7 @@ export async function openLiveConnection(
     wsPort: config.port,
     wssPort: config.port,
     forceTLS: config.tls,
-    enabledTransports: ['ws', 'wss'],
+    enabledTransports: [config.tls ? 'wss' : 'ws'],
     disableStats: true,
     activityTimeout: 20_000,
     pongTimeout: 6_000,

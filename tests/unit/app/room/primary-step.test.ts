@@ -3,7 +3,7 @@ import {
   newerSibling,
   primaryStep,
 } from '@/app/w/[workspace]/templates/[template]/[letter]/_components/primary-step';
-import { digest, ids, revision } from './fixtures/revision';
+import { digest, gate, ids, revision } from './fixtures/revision';
 
 const addresses = { pack: '/pack', post: '/post' };
 const nothing = { ...revision().can, sign: null, release: false, post: false, download: false };
@@ -39,8 +39,10 @@ describe('primaryStep', () => {
   it('offers the studio the next revision once this one is closed or fails, unless it is there already', () => {
     const can = { ...nothing, post: true };
     expect(primaryStep(revision({ state: 'returned', can }), addresses)?.kind).toBe('post');
-    const failing = { ...revision().check, verdict: 'fail' as const };
-    expect(primaryStep(revision({ check: failing, can }), addresses)?.kind).toBe('post');
+    const check = { ...revision().check, verdict: 'fail' as const };
+    const forming = gate({ id: ids.forming, name: 'Forming', kind: 'automatic', state: 'open' });
+    expect(primaryStep(revision({ check, gates: [forming], can }), addresses)?.kind).toBe('post');
+    expect(primaryStep(revision({ check, can }), addresses)).toBeNull();
     const siblings = [...revision().siblings, { id: ids.okafor, letter: 'D', state: 'in_review' as const }];
     expect(primaryStep(revision({ state: 'returned', can, siblings }), addresses)).toBeNull();
   });

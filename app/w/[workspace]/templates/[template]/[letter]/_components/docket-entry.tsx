@@ -102,7 +102,7 @@ function FindingItem({ item, finding }: { item: DocketItem; finding: FindingView
             {mayAnswer && !answering ? (
               <MetaButton onPress={() => setAnswering(true)}>answer</MetaButton>
             ) : null}
-            {mayWaive ? <WaiveDialog finding={finding} /> : null}
+            {mayWaive ? <WaiveDialog finding={finding} itemKey={item.key} /> : null}
           </>
         }
       />

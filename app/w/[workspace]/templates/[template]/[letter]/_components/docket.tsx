@@ -48,7 +48,7 @@ export function Docket({ items, filter, onFilter, filterRef, adding, onAdding }:
   return (
     <section aria-labelledby="docket-title" className="flex flex-col gap-3">
       <div className="grid grid-cols-[1fr_auto] items-center gap-x-4">
-        <h2 id="docket-title" className="text-lg font-semibold">
+        <h2 id="docket-title" tabIndex={-1} className="text-lg font-semibold">
           Docket
         </h2>
         {revision.can.note && !adding ? (

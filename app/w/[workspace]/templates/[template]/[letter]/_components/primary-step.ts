@@ -42,7 +42,8 @@ export function primaryStep(
     };
   }
   const closed = revision.state === 'returned' || revision.state === 'withdrawn';
-  const failing = revision.state === 'in_review' && revision.check.verdict === 'fail';
+  const shut = revision.gates.some((gate) => gate.kind === 'automatic' && gate.state === 'open');
+  const failing = revision.state === 'in_review' && revision.check.verdict === 'fail' && shut;
   if (can.post && (closed || failing) && !newerSibling(revision)) {
     return {
       kind: 'post',

@@ -9,6 +9,7 @@ import { usePreferences } from '@/app/_components/preferences-context';
 import { Time } from '@/app/_components/time';
 import type { ThreadView } from '@/lib/review/schemas';
 import { useSettle } from '../_hooks/use-room-commands';
+import { keepFocus } from './keep-focus';
 import { MetaButton } from './meta-button';
 import { NoteEntry, OutgoingNoteEntry } from './note-entry';
 import { PlaceLinks } from './place-links';
@@ -52,7 +53,9 @@ export function ThreadCard({ thread, itemKey }: { thread: ThreadView; itemKey: s
           {revision.can.settle || thread.afterApproval ? (
             <MetaButton
               isPending={settle.isPending}
-              onPress={() => settle.mutate({ thread, settled: thread.state === 'open' })}
+              onPress={() =>
+                settle.mutate({ thread, settled: thread.state === 'open', onShown: keepFocus(itemKey) })
+              }
             >
               {thread.state === 'open' ? 'settle' : 'open again'}
             </MetaButton>

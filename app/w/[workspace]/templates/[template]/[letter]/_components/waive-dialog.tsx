@@ -8,11 +8,12 @@ import { notify } from '@/app/_components/notices';
 import { TextArea } from '@/app/_components/text-field';
 import { WaiveInput, type FindingView } from '@/lib/review/schemas';
 import { useWaive } from '../_hooks/use-room-commands';
+import { keepFocus } from './keep-focus';
 import { MetaButton } from './meta-button';
 import { useRoom } from './room-context';
 
 /** A lead lets a failing finding stand; the reason is shown with it for ever after. */
-export function WaiveDialog({ finding }: { finding: FindingView }) {
+export function WaiveDialog({ finding, itemKey }: { finding: FindingView; itemKey: string }) {
   const { workspace, revision } = useRoom();
   const [reason, setReason] = useState('');
   const [error, setError] = useState<string>();
@@ -22,7 +23,7 @@ export function WaiveDialog({ finding }: { finding: FindingView }) {
     if (!parsed.success) return setError(parsed.error.issues[0].message);
     setError(undefined);
     waive.mutate(
-      { findingId: finding.id, reason: parsed.data.reason },
+      { findingId: finding.id, reason: parsed.data.reason, onShown: keepFocus(itemKey) },
       {
         onSuccess: () => {
           notify('The finding is waived. Your reason stands beside it.');

@@ -22,11 +22,18 @@ export function useRefetchRoom(workspaceId: string, revisionId: string): () => P
   };
 }
 
+interface Settling {
+  thread: ThreadView;
+  settled: boolean;
+  /** Called when the docket shows the change; the item has moved to another group by then. */
+  onShown: () => void;
+}
+
 /** Settles a thread or opens it again; a change made meanwhile by somebody else is shown, not overwritten. */
 export function useSettle(workspaceId: string, revisionId: string) {
   const refetch = useRefetchRoom(workspaceId, revisionId);
   return useMutation({
-    mutationFn: ({ thread, settled }: { thread: ThreadView; settled: boolean }) =>
+    mutationFn: ({ thread, settled }: Settling) =>
       api(`${workspaceApi(workspaceId)}/threads/${thread.id}`, {
         method: 'PATCH',
         body: { settled, version: thread.version },
@@ -39,7 +46,10 @@ export function useSettle(workspaceId: string, revisionId: string) {
         kind: 'trouble',
       });
     },
-    onSettled: refetch,
+    onSettled: async (_answer, _error, { onShown }) => {
+      await refetch();
+      onShown();
+    },
   });
 }
 
@@ -47,9 +57,12 @@ export function useSettle(workspaceId: string, revisionId: string) {
 export function useWaive(workspaceId: string, revisionId: string) {
   const refetch = useRefetchRoom(workspaceId, revisionId);
   return useMutation({
-    mutationFn: ({ findingId, reason }: { findingId: string; reason: string }) =>
+    mutationFn: ({ findingId, reason }: { findingId: string; reason: string; onShown: () => void }) =>
       api(`${workspaceApi(workspaceId)}/findings/${findingId}/waiver`, { body: { reason } }),
-    onSettled: refetch,
+    onSettled: async (_answer, _error, { onShown }) => {
+      await refetch();
+      onShown();
+    },
   });
 }
 
