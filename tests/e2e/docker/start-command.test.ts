@@ -90,12 +90,16 @@ describe('npm start', () => {
     expect(await second.ended).toBe(130);
   });
 
-  it('starts afresh after a reset', async () => {
+  it('starts afresh after a reset, and can be stopped while it is still starting', async () => {
     const before = secrets();
     const run = start('--reset', '--yes');
-    await run.says('Up after');
+    await run.says('schema ');
     expect(secrets()).not.toBe(before);
+    const started = children();
+    expect(started.some(isRunning)).toBe(true);
     run.child.kill('SIGTERM');
     expect(await run.ended).toBe(0);
+    expect(run.output()).not.toContain('Up after');
+    expect(started.filter(isRunning)).toEqual([]);
   });
 });
