@@ -58,10 +58,10 @@ export async function runJob(message: JobMessage, runner: JobRunner): Promise<vo
   const limit = setTimeout(halt('time-limit'), handler.timeLimitS * 1000);
   const endHeartbeat = startHeartbeat(work, halt('lease-lost'));
   try {
-    await handler.run(work);
-    stop.signal.throwIfAborted();
+    await untilStopped(handler.run(work), stop.signal);
     const held = { workspaceId: job.workspaceId, ...fence };
-    await withTenant(ctx, (tx) => markDone(tx, held));
+    const done = await withTenant(ctx, (tx) => markDone(tx, held));
+    if (!done) throw new JobStopped('lease-lost');
     log().info({ job: job.id, kind: job.kind, attempt: job.attempt }, 'job done');
   } catch (error) {
     await settleFailure(work, handler, stop.signal.aborted ? stop.signal.reason : error);
@@ -69,6 +69,26 @@ export async function runJob(message: JobMessage, runner: JobRunner): Promise<vo
     clearTimeout(limit);
     endHeartbeat();
     runner.stopping.removeEventListener('abort', onStopping);
+  }
+}
+
+/**
+ * The work's end, or the signal's reason as soon as it fires: a handler that hangs does not hold up the hand-over.
+ * What it may still do afterwards is fenced out.
+ */
+async function untilStopped(work: Promise<void>, signal: AbortSignal): Promise<void> {
+  let onAbort: () => void = () => undefined;
+  const stopped = new Promise<never>((_, reject) => {
+    onAbort = () => reject(signal.reason);
+    signal.addEventListener('abort', onAbort, { once: true });
+  });
+  try {
+    signal.throwIfAborted();
+    await Promise.race([work, stopped]);
+  } finally {
+    signal.removeEventListener('abort', onAbort);
+    work.catch(() => undefined);
+    stopped.catch(() => undefined);
   }
 }
 

@@ -122,7 +122,7 @@ async function writePack(
   signal: AbortSignal,
 ): Promise<{ storeKey: string; bytes: number; sha256: string }> {
   const storeKey = packKey(ctx.workspaceId);
-  const source = await store().getStream(agreed.mesh.storeKey);
+  const source = await store().getStream(agreed.mesh.storeKey, signal);
   const checked = source.pipe(onlyExactly(agreed.mesh.sha256, agreed.mesh.bytes));
   source.on('error', (error) => checked.destroy(error));
   const archive = zipPack(files, { name: model.meshFileInPack, stream: checked }, new Date(model.release.at));

@@ -24,7 +24,7 @@ export async function readObject(
   expectedBytes: number,
   signal?: AbortSignal,
 ): Promise<{ bytes: Uint8Array<ArrayBuffer>; sha256: string }> {
-  const stream = await store.getStream(key);
+  const stream = await store.getStream(key, signal);
   const bytes = new Uint8Array(expectedBytes);
   const hash = createHash('sha256');
   let at = 0;

@@ -38,7 +38,7 @@ export interface Store {
   /** Writes a new object; keys are never reused, so an object of that name is never replaced. */
   put(key: string, bytes: Uint8Array, contentType: string): Promise<void>;
   getBytes(key: string): Promise<Uint8Array>;
-  getStream(key: string): Promise<Readable>;
+  getStream(key: string, signal?: AbortSignal): Promise<Readable>;
   /** Null where there is no such object. */
   head(key: string): Promise<ObjectHead | null>;
 }
@@ -58,8 +58,10 @@ export function store(): Store {
     }
   };
 
-  const getStream: Store['getStream'] = async (Key) => {
-    const found = await guardStore(Key, () => client.send(new GetObjectCommand({ Bucket, Key })));
+  const getStream: Store['getStream'] = async (Key, abortSignal) => {
+    const found = await guardStore(Key, () =>
+      client.send(new GetObjectCommand({ Bucket, Key }), { abortSignal }),
+    );
     return found.Body as Readable;
   };
 

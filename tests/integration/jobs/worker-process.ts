@@ -71,6 +71,8 @@ export async function startWorkerProcess(env: Record<string, string> = {}): Prom
   };
 }
 
-afterAll(() => {
+/** Ends every worker that this file started. */
+export function killWorkers(): void {
   for (const child of running) child.kill('SIGKILL');
-});
+}
+afterAll(killWorkers);

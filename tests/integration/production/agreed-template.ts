@@ -73,8 +73,13 @@ export async function readyUpload(database: FreshDatabase, house: House, file: F
   return { templateId, uploadId, upload: await viewUpload(designer, uploadId) };
 }
 
-/** Posts a read file; the check run is queued, and not waited for. */
-export async function postFile(database: FreshDatabase, house: House, file: File): Promise<Posted> {
+/** Posts a read file; the check run is queued, and not waited for. `beforePost` runs once the file is read. */
+export async function postFile(
+  database: FreshDatabase,
+  house: House,
+  file: File,
+  beforePost: () => void = () => undefined,
+): Promise<Posted> {
   const { templateId, uploadId, upload } = await readyUpload(database, house, file);
   if (upload.state !== 'ready') throw new Error(`the file was refused: ${upload.refusal?.message}`);
   const designer = await house.enter('designer');
@@ -85,6 +90,7 @@ export async function postFile(database: FreshDatabase, house: House, file: File
     note: 'Ready to agree.',
     version: draft.version,
   });
+  beforePost();
   const { revisionId } = await postRevision(designer, templateId, { version });
   return { ...file, templateId, uploadId, revisionId };
 }
@@ -115,5 +121,6 @@ export async function approvedTemplate(
 export async function waiveFailing(lead: WorkspaceContext, revisionId: string): Promise<void> {
   const { findings } = await viewDocket(lead, revisionId);
   for (const { id, status } of findings)
-    if (status === 'fail') await waiveFinding(lead, id, { reason: 'The client wants it so; polished by hand.' });
+    if (status === 'fail')
+      await waiveFinding(lead, id, { reason: 'The client wants it so; polished by hand.' });
 }
