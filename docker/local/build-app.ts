@@ -127,7 +127,8 @@ async function gather(folder: string): Promise<void> {
   const draft = `${folder}.new`;
   rmSync(draft, { recursive: true, force: true });
   const output = path.join(root, '.next');
-  await cp(path.join(output, 'standalone'), draft, { recursive: true });
+  // Links between its packages are relative; kept as they are they lead inside the copy, not into this build.
+  await cp(path.join(output, 'standalone'), draft, { recursive: true, verbatimSymlinks: true });
   if (!existsSync(path.join(draft, 'server.js'))) {
     throw new LocalError(
       `The build left no server.js in ${output}/standalone; is "output: 'standalone'" still set?`,
