@@ -1,4 +1,5 @@
 import type { Metadata, Viewport } from 'next';
+import { headers } from 'next/headers';
 import { connection } from 'next/server';
 import type { ReactNode } from 'react';
 import { colours } from '@/tailwind.config';
@@ -40,8 +41,13 @@ async function requestTime(): Promise<number> {
 
 export default async function RootLayout({ children }: { children: ReactNode }) {
   const [preferences, renderedAt] = await Promise.all([readPreferences(), requestTime()]);
+  // Parts that add a style element of their own put this page's nonce on it (see page-nonce.ts).
+  const nonce = (await headers()).get('x-nonce') ?? undefined;
   return (
     <html lang="en" data-theme={preferences.theme} className={faces}>
+      <head>
+        <meta property="csp-nonce" nonce={nonce} />
+      </head>
       <body>
         <Providers preferences={preferences} renderedAt={renderedAt}>
           {children}

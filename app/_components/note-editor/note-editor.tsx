@@ -6,6 +6,7 @@ import type { Mentionable } from './filter-people';
 import type { NoteDocument } from './note-draft';
 import { MentionList } from './mention-list';
 import { MentionMenu } from './mention-menu';
+import { pageNonce } from '../page-nonce';
 import { noteExtensions } from './note-extensions';
 import { NoteToolbar } from './note-toolbar';
 
@@ -44,6 +45,7 @@ export function NoteEditor(props: NoteEditorProps) {
   const [menu] = useState(() => new MentionMenu(listId));
   const editor = useEditor({
     immediatelyRender: false,
+    injectNonce: pageNonce(),
     shouldRerenderOnTransaction: false,
     autofocus: autoFocus ? 'end' : false,
     extensions: noteExtensions({ placeholder, suggestion: menu.suggestion }),
