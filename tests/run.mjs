@@ -67,7 +67,7 @@ async function setUp() {
   try {
     if (await ensurePackages(root)) console.log('Installed the npm packages.');
     if (verifyOnly) return;
-    if (await ensurePackages(path.join(root, 'realtime')))
+    if (await ensurePackages(path.join(root, 'realtime/server')))
       console.log('Installed the realtime server’s packages.');
     for (const name of ['postgresql', 'chromium']) {
       if (await ensureDebianPackage(name)) console.log(`Installed Debian’s ${name}.`);

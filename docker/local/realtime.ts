@@ -15,7 +15,7 @@ export interface RealtimeOptions {
 
 /** The Pusher-protocol server. Its port must be free: two of them share one silently. */
 export function defineRealtime({ port, key, secret, logFile, events }: RealtimeOptions): Service {
-  const folder = path.join(root, 'realtime');
+  const folder = path.join(root, 'realtime/server');
   const url = `http://127.0.0.1:${port}`;
   return defineService({
     name: 'realtime server',

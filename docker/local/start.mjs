@@ -18,7 +18,7 @@ const { debianPackageIsThere, ensureDebianPackage } = await import('./setup/debi
 const { stepPrinter } = await import('./setup/step-line.mjs');
 
 const printer = stepPrinter();
-const realtime = path.join(root, 'realtime');
+const realtime = path.join(root, 'realtime/server');
 const missing = [
   {
     name: 'Debian packages',
