@@ -43,7 +43,9 @@ export function TitleBlock({ fields, action, children }: TitleBlockProps) {
           ))}
         </dl>
         {action ? (
-          <div className="flex border-t border-ink lg:min-w-48 lg:border-t-0 lg:border-l">{action}</div>
+          <div className="flex border-t border-ink print:hidden lg:min-w-48 lg:border-t-0 lg:border-l">
+            {action}
+          </div>
         ) : null}
       </div>
       {children ? <div className="border-t border-ink">{children}</div> : null}

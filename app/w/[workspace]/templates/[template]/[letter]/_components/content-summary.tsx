@@ -9,11 +9,17 @@ import { checkName } from './check-names';
 
 type Summary = ContentView['summary'];
 
-const verdictWords = {
-  pass: 'Every check that was run is within its limits.',
-  caution: 'It forms; some findings want a look.',
-  fail: 'Some findings fail.',
-} as const;
+function verdictWords({ verdict, findings }: Summary): string {
+  if (verdict === null) return 'The check has not finished.';
+  if (verdict === 'pass') return 'Every check that was run is within its limits.';
+  if (verdict === 'caution') return 'It forms; some findings want a look.';
+  const failing = findings.filter((finding) => finding.status === 'fail');
+  const standing = failing.filter((finding) => !finding.waived).length;
+  if (standing > 0) return `${standing} of its findings fail.`;
+  return failing.length === 1
+    ? 'One finding fails and is waived.'
+    : `${failing.length} findings fail; all are waived.`;
+}
 
 const findingState: Record<string, State> = {
   fail: 'must-settle',
@@ -30,7 +36,7 @@ export function ContentSummary({ content }: { content: ContentView }) {
       <Row label="Mesh">
         <span className="wrap-anywhere">{summary.meshFile}</span>, {formatBytes(summary.meshBytes)}
         <span className="block text-sm text-slate">
-          SHA-256 <Digest value={summary.meshSha256} characters="all" />
+          SHA-256 <Digest value={summary.meshSha256} characters="all" className="ml-1" />
         </span>
       </Row>
       <Row label="Recipe">
@@ -43,9 +49,7 @@ export function ContentSummary({ content }: { content: ContentView }) {
           ))}
         </ul>
       </Row>
-      <Row label="Verdict">
-        {summary.verdict ? verdictWords[summary.verdict] : 'The check has not finished.'}
-      </Row>
+      <Row label="Verdict">{verdictWords(summary)}</Row>
       <Row label="Findings">
         <Findings findings={summary.findings} />
       </Row>

@@ -158,10 +158,10 @@ export function Room({
         </div>
         <StateBanner revision={revision} />
         <CheckPanel revision={revision} />
-        <div className="grid items-start gap-6 lg:grid-cols-[minmax(0,1fr)_minmax(20rem,27rem)]">
+        <div className="grid items-start gap-6 print:block lg:grid-cols-[minmax(0,1fr)_minmax(20rem,27rem)]">
           <div
             id="stage"
-            className="min-w-0 scroll-mt-4 [@media(min-width:64rem)_and_(min-height:50rem)]:sticky [@media(min-width:64rem)_and_(min-height:50rem)]:top-3"
+            className="min-w-0 scroll-mt-4 break-inside-avoid print:mb-6 print:[&_[role=radiogroup]]:hidden print:[&_[role=toolbar]]:hidden [@media(min-width:64rem)_and_(min-height:50rem)]:sticky [@media(min-width:64rem)_and_(min-height:50rem)]:top-3"
           >
             <h2 className="sr-only">Model and section</h2>
             <StagePanel

@@ -59,11 +59,11 @@ function Agreed({ revision, lockedAt }: { revision: RevisionView; lockedAt: stri
       </p>
       {revision.contentDigest ? (
         <p className="text-sm text-slate">
-          Content <Digest value={revision.contentDigest} characters="all" />
+          Content <Digest value={revision.contentDigest} characters="all" className="ml-1" />
         </p>
       ) : null}
       <p className="text-sm text-slate">
-        Mesh SHA-256 <Digest value={revision.mesh.sha256} characters="all" />
+        Mesh SHA-256 <Digest value={revision.mesh.sha256} characters="all" className="ml-1" />
       </p>
       {revision.release && !revision.release.pack ? (
         <p role="status" className="text-sm">
