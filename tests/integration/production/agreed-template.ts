@@ -44,7 +44,7 @@ export async function sendFile(
 }
 
 /** Waits until the newest job about a subject is settled; a worker must be running somewhere. */
-export async function settledJob(database: FreshDatabase, subjectId: string) {
+export async function settledJob(database: FreshDatabase, subjectId: string, timeout = 60_000) {
   return vi.waitFor(
     async () => {
       const { rows } = await database.query<{
@@ -60,7 +60,7 @@ export async function settledJob(database: FreshDatabase, subjectId: string) {
         throw new Error(`the job stands at ${JSON.stringify(rows[0])}`);
       return rows[0];
     },
-    { timeout: 60_000, interval: 50 },
+    { timeout, interval: 50 },
   );
 }
 

@@ -1,0 +1,155 @@
+import { beforeAll, describe, expect, it } from 'vitest';
+import { tartTray } from '@/db/seed/templates';
+import { createTemplate } from '@/lib/review/create-template';
+import { viewRevision } from '@/lib/review/view-revision';
+import { viewUpload } from '@/lib/review/view-upload';
+import {
+  freshDatabase,
+  freshObjectStore,
+  freshSmtpCatcher,
+  type FreshDatabase,
+} from '@/tests/support/database';
+import { makeHouse, type House } from '@/tests/support/make-house';
+import type { ObjectStore } from '@/tests/support/object-store/start-object-store';
+import { postFile, readyUpload, sendFile, settledJob } from '../production/agreed-template';
+import { startWorkerProcess } from './worker-process';
+
+let database: FreshDatabase;
+let objects: ObjectStore;
+let house: House;
+let tray: Uint8Array;
+
+beforeAll(async () => {
+  database = await freshDatabase();
+  objects = await freshObjectStore();
+  await freshSmtpCatcher();
+  house = await makeHouse(database);
+  tray = await tartTray({ draftDeg: 8, ventMm: 1 });
+  await Promise.all([startWorkerProcess(), startWorkerProcess()]);
+});
+
+/** Other bytes, the same shape: the header of a binary STL says nothing. */
+const variant = (n: number) => tray.with(0, 97 + n);
+
+describe('a file that cannot be used', { timeout: 120_000 }, () => {
+  const png = Buffer.concat([
+    Buffer.from([0x89, 0x50, 0x4e, 0x47, 0x0d, 0x0a, 0x1a, 0x0a]),
+    Buffer.alloc(200),
+  ]);
+  const hugeCount = () => {
+    const bytes = Uint8Array.from(tray);
+    new DataView(bytes.buffer).setUint32(80, 0xffffffff, true);
+    return bytes;
+  };
+  const notANumber = () => {
+    const bytes = Uint8Array.from(tray);
+    new DataView(bytes.buffer).setFloat32(96, Number.NaN, true);
+    return bytes;
+  };
+  const cases: [string, () => Uint8Array][] = [
+    ['truncated.stl', () => tray.slice(0, 5_000)],
+    ['huge-count.stl', hugeCount],
+    ['nan.stl', notANumber],
+    ['picture-renamed.stl', () => png],
+  ];
+
+  it.each(cases)('%s is refused with what, where and what to do', async (fileName, bytes) => {
+    const { upload, uploadId } = await readyUpload(database, house, { fileName, bytes: bytes() });
+    expect(upload.state).toBe('refused');
+    expect(upload.mesh).toBeNull();
+    expect(upload.refusal!.code).toMatch(/^[a-z_]+$/);
+    expect(upload.refusal!.message.length).toBeGreaterThan(30);
+    const { rows } = await database.query(
+      "select actor_name from audit_entries where action = 'upload.refused' and subject_id = $1",
+      [uploadId],
+    );
+    expect(rows).toEqual([{ actor_name: 'Firstpull worker' }]);
+  });
+
+  it('that the store lost is refused, and can be sent again', async () => {
+    const designer = await house.enter('designer');
+    const { id: templateId } = await createTemplate(designer, { title: 'Lost on its way', dueOn: null });
+    // Held until the object is gone from under the row.
+    const held = objects.faults.plant({ kind: 'hold', method: 'GET', url: /uploads\// });
+    const uploadId = await sendFile(designer, templateId, { fileName: 'lost.stl', bytes: tray });
+    const { rows } = await database.query<{ store_key: string }>(
+      'select store_key from uploads where id = $1',
+      [uploadId],
+    );
+    await removeObject(rows[0].store_key);
+    held.release();
+    await settledJob(database, uploadId);
+    expect(await viewUpload(designer, uploadId)).toMatchObject({
+      state: 'refused',
+      refusal: { code: 'missing' },
+    });
+  });
+});
+
+async function removeObject(key: string): Promise<void> {
+  const { DeleteObjectCommand } = await import('@aws-sdk/client-s3');
+  const { innerClient } = await import('@/lib/storage/client');
+  await innerClient().send(new DeleteObjectCommand({ Bucket: objects.bucket, Key: key }));
+}
+
+describe('two workers side by side', { timeout: 240_000 }, () => {
+  it('do every job once', async () => {
+    const posted = [];
+    for (let n = 0; n < 6; n++)
+      posted.push(await postFile(database, house, { fileName: `tray-${n}.stl`, bytes: variant(n) }));
+    for (const { revisionId } of posted)
+      expect(await settledJob(database, revisionId)).toMatchObject({ state: 'done', attempt: 1 });
+    const { rows } = await database.query<{ n: number }>(
+      "select count(*)::int as n from audit_entries where action = 'check.finished' group by subject_id",
+    );
+    expect(rows).toEqual(posted.map(() => ({ n: 1 })));
+    const { rows: workers } = await database.query(
+      "select distinct worker from jobs where kind = 'check-revision'",
+    );
+    expect(workers.length).toBeGreaterThanOrEqual(1);
+  });
+
+  it('answer the same bytes under the same recipe with the report that is there', async () => {
+    const again = await postFile(database, house, { fileName: 'tray-0.stl', bytes: variant(0) });
+    await settledJob(database, again.revisionId);
+    const { rows } = await database.query<{ report_id: string }>(
+      `select distinct c.report_id from check_runs c join revisions r on r.id = c.revision_id
+       join meshes m on m.id = r.mesh_id where m.file_name = 'tray-0.stl'`,
+    );
+    expect(rows).toHaveLength(1);
+  });
+});
+
+describe('a job that fails each time', { timeout: 180_000 }, () => {
+  it('is given up after three tries, and the page says why', async () => {
+    const posted = await postFile(
+      database,
+      house,
+      { fileName: 'unlucky.stl', bytes: variant(20) },
+      () => void objects.faults.plant({ kind: 'unavailable', method: 'GET', url: /uploads\//, times: 1000 }),
+    );
+    const job = await settledJob(database, posted.revisionId, 120_000);
+    objects.faults.clear();
+    expect(job).toMatchObject({ state: 'failed', attempt: 3 });
+    expect(job.error).toMatch(/store does not answer/);
+    const { check } = await viewRevision(await house.enter('designer'), posted.revisionId);
+    expect(check).toMatchObject({ state: 'failed', error: job.error });
+  });
+
+  it('is given up at once where trying again cannot help: other bytes than were posted', async () => {
+    const posted = await postFile(database, house, { fileName: 'swapped.stl', bytes: variant(21) }, () => {
+      void objects.faults.plant({ kind: 'hold', method: 'GET', url: /uploads\// });
+    });
+    const { rows } = await database.query<{ store_key: string }>(
+      'select m.store_key from meshes m join revisions r on r.mesh_id = m.id where r.id = $1',
+      [posted.revisionId],
+    );
+    await removeObject(rows[0].store_key);
+    const { store } = await import('@/lib/storage/store');
+    await store().put(rows[0].store_key, variant(22), 'model/stl');
+    objects.faults.clear();
+    const job = await settledJob(database, posted.revisionId);
+    expect(job).toMatchObject({ state: 'failed', attempt: 1 });
+    expect(job.error).toMatch(/not the one that was posted/);
+  });
+});
