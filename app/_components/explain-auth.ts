@@ -15,6 +15,8 @@ const sentences: Record<string, string> = {
   TOKEN_EXPIRED: 'This link has run out. Ask for a new one.',
   PASSWORD_TOO_SHORT: 'The password is too short. Use 12 characters or more.',
   PASSWORD_TOO_LONG: 'The password is too long. Use 128 characters or fewer.',
+  TOO_MANY_ATTEMPTS:
+    'Too many tries for this address. Wait a quarter of an hour, or set a new password from the sign-in page.',
   SESSION_NOT_FRESH: 'You signed in more than a day ago. Sign out and in again to do this.',
   SESSION_EXPIRED: 'Your session has ended. Sign in again.',
 };

@@ -59,6 +59,10 @@ export function SignInForm({ next, email }: { next: string; email: string }) {
           Sign in
         </Button>
       </div>
+      <p className="border-t border-rule pt-4 text-sm text-slate">
+        To open a studio of your own, <Link href="/sign-up">make an account</Link>. Invited? The link in the
+        mail makes yours.
+      </p>
     </form>
   );
 }

@@ -1,11 +1,15 @@
 import type { Space } from '../../../_components/app-shell';
 import { EmptyState } from '../../../_components/empty-state';
-import { Link } from '../../../_components/link';
+import { ButtonLink, Link } from '../../../_components/link';
 
 export function Memberships({ spaces }: { spaces: readonly Space[] }) {
   if (spaces.length === 0) {
     return (
-      <EmptyState level={3} title="You do not belong to a studio or workspace yet">
+      <EmptyState
+        level={3}
+        title="You do not belong to a studio or workspace yet"
+        actions={<ButtonLink href="/studio/new">Open a studio</ButtonLink>}
+      >
         Open the link in an invitation that was mailed to you, or ask a studio to invite your address.
       </EmptyState>
     );
