@@ -1,43 +1,56 @@
 'use client';
 
-import { usePathname, useSearchParams } from 'next/navigation';
-import { useCallback } from 'react';
+import { useSearchParams } from 'next/navigation';
+import { useEffect, useState } from 'react';
 import type { DocketFilter, ItemKind } from '../_components/docket-items';
 
 const kinds: readonly ItemKind[] = ['all', 'findings', 'notes', 'mine'];
 
-/** What the address says of the docket: `?q=` words, `?kind=`, and `?item=` the one that is looked at. */
+export interface DocketAddress {
+  filter: DocketFilter;
+  /** Key of the item that is looked at. */
+  item: string | null;
+}
+
+/** What an address says of the docket: `?q=` words, `?kind=`, `?item=`. Anything else in it is left alone. */
+export function readAddress(params: URLSearchParams): DocketAddress {
+  const kind = params.get('kind') as ItemKind | null;
+  return {
+    filter: { search: params.get('q') ?? '', kind: kind && kinds.includes(kind) ? kind : 'all' },
+    item: params.get('item'),
+  };
+}
+
+/** The query string that says it again; empty values leave no trace. */
+export function writeAddress(current: string, { filter, item }: DocketAddress): string {
+  const params = new URLSearchParams(current);
+  const set = (name: string, value: string | null) => (value ? params.set(name, value) : params.delete(name));
+  set('q', filter.search);
+  set('kind', filter.kind === 'all' ? null : filter.kind);
+  set('item', item);
+  const query = params.toString();
+  return query ? `?${query}` : '';
+}
+
+/** The docket's filter and the item looked at, kept in the address so that it can be sent and comes back. */
 export function useDocketAddress() {
   const params = useSearchParams();
-  const path = usePathname();
-  const kind = params.get('kind') as ItemKind | null;
-  const filter: DocketFilter = {
-    search: params.get('q') ?? '',
-    kind: kind && kinds.includes(kind) ? kind : 'all',
-  };
-
-  // Next keeps useSearchParams in step with history.replaceState; nothing is fetched for it.
-  const replace = useCallback(
-    (change: Record<string, string | null>) => {
-      const next = new URLSearchParams(window.location.search);
-      for (const [name, value] of Object.entries(change)) {
-        if (value) next.set(name, value);
-        else next.delete(name);
-      }
-      const query = next.toString();
-      window.history.replaceState(null, '', query ? `${path}?${query}` : path);
-    },
-    [path],
-  );
-
+  const [address, setAddress] = useState(() => readAddress(params));
+  useEffect(() => {
+    const onBack = () => setAddress(readAddress(new URLSearchParams(window.location.search)));
+    window.addEventListener('popstate', onBack);
+    return () => window.removeEventListener('popstate', onBack);
+  }, []);
+  // The address follows what is on the page, never the other way: it is a moment late while somebody types.
+  useEffect(() => {
+    const query = writeAddress(window.location.search, address);
+    if (query === window.location.search) return;
+    window.history.replaceState(null, '', window.location.pathname + query);
+  }, [address]);
   return {
-    filter,
-    item: params.get('item'),
-    setFilter: (next: Partial<DocketFilter>) =>
-      replace({
-        ...(next.search === undefined ? {} : { q: next.search }),
-        ...(next.kind === undefined ? {} : { kind: next.kind === 'all' ? null : next.kind }),
-      }),
-    setItem: (key: string | null) => replace({ item: key }),
+    ...address,
+    setFilter: (change: Partial<DocketFilter>) =>
+      setAddress((old) => ({ ...old, filter: { ...old.filter, ...change } })),
+    setItem: (item: string | null) => setAddress((old) => ({ ...old, item })),
   };
 }
