@@ -8,7 +8,16 @@ const config = {
   poweredByHeader: false,
   reactStrictMode: true,
   typedRoutes: false,
-  serverExternalPackages: ['pg', 'pg-boss', 'nodemailer', 'piscina', '@react-pdf/renderer', 'archiver', 'pino', 'pusher'],
+  serverExternalPackages: [
+    'pg',
+    'pg-boss',
+    'nodemailer',
+    'piscina',
+    '@react-pdf/renderer',
+    'archiver',
+    'pino',
+    'pusher',
+  ],
   typescript: { ignoreBuildErrors: true },
   // Static files are served past proxy.ts, which sets the headers of everything else.
   async headers() {

@@ -10,10 +10,7 @@ export function Digest(props: { value: string; characters?: number | 'all'; clas
   const { value, characters = 12, className } = props;
   const shown = characters === 'all' ? value.length : characters;
   return (
-    <code
-      title={value}
-      className={clsx('font-mono', shown <= 16 && 'whitespace-nowrap', className)}
-    >
+    <code title={value} className={clsx('font-mono', shown <= 16 && 'whitespace-nowrap', className)}>
       {groupHex(value, shown)}
       {shown < value.length ? '\u00a0…' : ''}
     </code>

@@ -3,7 +3,6 @@
  * in UTF-8 (RFC 8187). Path separators and control characters never reach either.
  */
 export function contentDisposition(fileName: string, inline = false): string {
-  // eslint-disable-next-line no-control-regex
   const name = fileName.replace(/[\u0000-\u001f\u007f/\\]/g, '_').slice(0, 200) || 'file';
   const plain = name.replace(/[^\x20-\x7e]|["%]/g, '_');
   const exact = encodeURIComponent(name).replace(

@@ -52,7 +52,8 @@ export default async function TodayPage() {
           ) : (
             <div className="mt-3">
               <EmptyState title="All clear" level={3}>
-                You will get a mail when a gate waits for your name, a note names you, or a check fails on what you posted.
+                You will get a mail when a gate waits for your name, a note names you, or a check fails on
+                what you posted.
               </EmptyState>
             </div>
           )}

@@ -17,7 +17,6 @@ const device = /^(con|prn|aux|nul|com\d|lpt\d)(\.|$)/i;
  */
 export function safeName(fileName: string, fallback = 'mesh.stl'): string {
   const last = fileName.normalize('NFC').split(/[/\\]/).at(-1) ?? '';
-  // eslint-disable-next-line no-control-regex
   const plain = last.replace(
     /[\u0000-\u001f\u007f-\u009f\u200b-\u200f\u202a-\u202e\u2066-\u2069<>:"|?*]/g,
     '_',

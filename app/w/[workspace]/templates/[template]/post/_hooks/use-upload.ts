@@ -45,6 +45,11 @@ export function useUpload(
   const [trouble, setTrouble] = useState<string | null>(null);
   const [sentBytes, setSentBytes] = useState(0);
   const file = useRef<File | null>(null);
+  const [holdsFile, setHoldsFile] = useState(false);
+  const hold = useCallback((next: File | null) => {
+    file.current = next;
+    setHoldsFile(next !== null);
+  }, []);
   const stop = useRef<AbortController | null>(null);
 
   const take = useCallback(
@@ -116,7 +121,7 @@ export function useUpload(
 
   const begin = useCallback(
     async (picked: File, unit: string) => {
-      file.current = picked;
+      hold(picked);
       setStarting(true);
       setTrouble(null);
       try {
@@ -131,7 +136,7 @@ export function useUpload(
         setStarting(false);
       }
     },
-    [run, take, templateId, workspacePath],
+    [hold, run, take, templateId, workspacePath],
   );
 
   /** Goes on with an upload that a reload or a lost connection broke off; the same file must be picked. */
@@ -144,10 +149,10 @@ export function useUpload(
         setTrouble(`That is another file. Pick ${upload.fileName} to go on, or cancel and start anew.`);
         return;
       }
-      file.current = source;
+      hold(source);
       void run(upload);
     },
-    [run, upload],
+    [hold, run, upload],
   );
 
   const pause = useCallback(() => stop.current?.abort(), []);
@@ -162,11 +167,11 @@ export function useUpload(
         return;
       }
     }
-    file.current = null;
+    hold(null);
     setSentBytes(0);
     setTrouble(null);
     take(null);
-  }, [take, upload, workspacePath]);
+  }, [hold, take, upload, workspacePath]);
 
   useReading(workspacePath, upload, take);
   useEffect(() => () => stop.current?.abort(), []);
@@ -178,7 +183,7 @@ export function useUpload(
     progress: upload ? Math.min(1, Math.max(sentBytes, storedBytes) / upload.bytes) : 0,
     phase,
     trouble,
-    needsFile: phase === 'paused' && file.current === null,
+    needsFile: phase === 'paused' && !holdsFile,
   };
   return { sending, begin, resume, pause, cancel };
 }
