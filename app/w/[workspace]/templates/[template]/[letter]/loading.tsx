@@ -1,9 +1,15 @@
 import { RoomSkeleton } from './_components/room-skeleton';
 
+/** The room's shape until it is there. Without JavaScript nothing swaps the two, so the style sheet shows the room. */
 export default function Loading() {
   return (
-    <main id="main" className="mx-auto w-full max-w-page px-4 pt-16 pb-16 sm:px-6 lg:px-7">
-      <RoomSkeleton />
-    </main>
+    <>
+      <noscript>
+        <link rel="stylesheet" href="/no-script.css" />
+      </noscript>
+      <div data-until-script className="mx-auto w-full max-w-page px-4 pt-22 pb-16 sm:px-6 lg:px-7">
+        <RoomSkeleton />
+      </div>
+    </>
   );
 }

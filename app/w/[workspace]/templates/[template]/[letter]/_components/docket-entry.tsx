@@ -56,7 +56,7 @@ export function DocketEntry({ item, level = 3 }: { item: DocketItem; level?: 3 |
         if (active !== key) activate(key);
       }}
       className={clsx(
-        'scroll-mt-4 border-b border-rule py-3 outline-offset-4 break-inside-avoid',
+        'scroll-mt-4 border-b border-rule py-3 outline-offset-0 break-inside-avoid',
         active === key && '-mx-3 border-l-2 border-l-verdigris bg-sheet pr-3 pl-2.5',
       )}
     >

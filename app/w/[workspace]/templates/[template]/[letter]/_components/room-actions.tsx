@@ -6,6 +6,7 @@ import { ButtonLink } from '@/app/_components/link';
 import { TitleAction } from '@/app/_components/title-action';
 import { revisionApi } from '../_hooks/use-room-data';
 import type { Step } from '../_hooks/use-room-commands';
+import { MetaButton } from './meta-button';
 import type { PrimaryStep } from './primary-step';
 import { ReasonDialog } from './reason-dialog';
 import { ReleaseDialog } from './release-dialog';
@@ -33,6 +34,9 @@ export function PrimaryAction(props: {
   );
 }
 
+const fileLink =
+  'px-1 py-0.5 text-base text-verdigris underline decoration-verdigris/50 underline-offset-3 hover:decoration-current pointer-coarse:py-2.5';
+
 /** What else can be done with the revision, in one quiet line below the title block. */
 export function RoomActions({
   step,
@@ -56,18 +60,18 @@ export function RoomActions({
         </ButtonLink>
       ) : null}
       {revision.release?.pack && can.download && step?.kind !== 'download' ? (
-        <a className="px-1 text-base text-verdigris underline underline-offset-3" href={`${api}/pack`}>
+        <a className={fileLink} href={`${api}/pack`}>
           Download the pack
         </a>
       ) : null}
       {can.mesh !== false ? (
-        <a className="px-1 py-1 text-base text-verdigris underline underline-offset-3" href={`${api}/mesh`}>
+        <a className={fileLink} href={`${api}/mesh`}>
           Download the mesh
         </a>
       ) : null}
-      <Button variant="plain" onPress={() => window.print()}>
+      <MetaButton onPress={() => window.print()} className="px-1 text-base!">
         Print this page
-      </Button>
+      </MetaButton>
     </div>
   );
 }

@@ -91,7 +91,7 @@ export function outwardAt(at: Point, { min, max }: Bounds): Point {
 export function viewOf(at: Point, bounds: Bounds): StageCamera {
   const size = Math.hypot(...[0, 1, 2].map((axis) => bounds.max[axis] - bounds.min[axis]));
   const towards = outwardAt(at, bounds);
-  const away = Math.max(size * 0.7, 20);
+  const away = Math.max(size, 30);
   return {
     target: at,
     position: [0, 1, 2].map((axis) => at[axis] + towards[axis] * away) as Point,
