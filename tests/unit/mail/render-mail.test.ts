@@ -1,0 +1,178 @@
+import { describe, expect, it } from 'vitest';
+import { mailRequest, type MailRequest } from '@/lib/mail/messages';
+import { renderMail } from '@/lib/mail/render/render-mail';
+
+const origin = 'https://proofs.example';
+const hostile = '<script>alert(1)</script> & "quoted" \u2028\r\nBcc: everybody@example.test';
+const member = {
+  personId: '01890000-0000-7000-8000-000000000001',
+  email: 'ada@example.test',
+  name: 'Ada Lindqvist',
+};
+const revision = {
+  workspaceId: '01890000-0000-7000-8000-000000000002',
+  workspaceName: `Quillon ${hostile}`,
+  number: 'QLN-007',
+  title: `Tart tray ${hostile}`,
+  letter: 'B',
+  path: '/w/quillon/templates/01890000-0000-7000-8000-000000000003/B',
+};
+
+/** One of each, with as hostile words as people may type. */
+const all: { [T in MailRequest['template']]: Extract<MailRequest, { template: T }> } = {
+  'verify-address': {
+    template: 'verify-address',
+    to: member,
+    url: `${origin}/api/auth/verify-email?token=a.b`,
+  },
+  'reset-password': {
+    template: 'reset-password',
+    to: member,
+    url: `${origin}/api/auth/reset-password/token`,
+  },
+  invitation: {
+    template: 'invitation',
+    to: member,
+    inviterName: hostile,
+    studioName: hostile,
+    workspaceName: hostile,
+    role: 'approver',
+    path: '/join/01890000-0000-7000-8000-000000000004.token',
+    expiresAt: '2026-12-08T10:00:00.000Z',
+  },
+  'revision-posted': {
+    template: 'revision-posted',
+    to: member,
+    ...revision,
+    authorName: hostile,
+    note: hostile,
+  },
+  'gate-waits': { template: 'gate-waits', to: member, ...revision, gateName: hostile, openItems: 2 },
+  'note-posted': {
+    template: 'note-posted',
+    to: member,
+    ...revision,
+    authorName: hostile,
+    text: hostile,
+    mentioned: true,
+  },
+  'revision-signed': {
+    template: 'revision-signed',
+    to: member,
+    ...revision,
+    printedName: hostile,
+    role: 'approver',
+    meaning: hostile,
+    signedAt: '2026-10-25T00:30:10.000Z',
+    timeZone: 'Europe/Berlin',
+    digest: 'ab'.repeat(32),
+    locked: true,
+  },
+  'revision-returned': {
+    template: 'revision-returned',
+    to: member,
+    ...revision,
+    printedName: hostile,
+    role: 'approver',
+    reason: hostile,
+  },
+  'revision-released': {
+    template: 'revision-released',
+    to: member,
+    ...revision,
+    printedName: hostile,
+    note: hostile,
+    digest: 'cd'.repeat(32),
+  },
+  'revision-recalled': {
+    template: 'revision-recalled',
+    to: member,
+    ...revision,
+    printedName: hostile,
+    reason: hostile,
+  },
+  'revision-retired': {
+    template: 'revision-retired',
+    to: member,
+    ...revision,
+    printedName: hostile,
+    reason: hostile,
+  },
+};
+
+/** What a reader of the HTML part sees. */
+const visible = (html: string) =>
+  html
+    .replace(/<head>.*<\/head>/s, '')
+    .replace(/<br>/g, ' ')
+    .replace(/<[^>]+>/g, ' ')
+    .replace(/&#(\d+);/g, (_, code) => String.fromCharCode(Number(code)))
+    .replace(/\s+/g, ' ');
+
+describe.each(Object.values(all))('$template', (request) => {
+  const { subject, text, html } = renderMail(mailRequest.parse(request), origin);
+
+  it('has a subject of one line that fits', () => {
+    expect(subject).not.toMatch(/[\r\n\u2028]/);
+    expect(subject.length).toBeGreaterThan(10);
+    expect(subject.length).toBeLessThanOrEqual(120);
+    if ('letter' in request) expect(subject.startsWith('QLN-007 B ')).toBe(true);
+  });
+
+  it('says the same as text and as HTML', () => {
+    const flat = text.replace(/\s+/g, ' ');
+    const seen = visible(html);
+    const words = text
+      .replace(/-{10,}/g, ' ')
+      .split(/\s+/)
+      .map((word) => word.replace(/:$/, ''));
+    for (const word of words.filter((part) => /^[\w.,:/-]{3,}$/.test(part))) expect(seen).toContain(word);
+    expect(flat).toContain('Firstpull');
+  });
+
+  it('shows hostile words as words', () => {
+    expect(html).not.toContain('<script');
+    expect(html).not.toMatch(/<img|<link|url\(|@import|src=/);
+    if ('printedName' in request || 'authorName' in request || 'inviterName' in request)
+      expect(visible(html)).toContain('<script>alert(1)</script>');
+  });
+
+  it('links to our own host only, absolutely, and by one action', () => {
+    const links = [...html.matchAll(/href="([^"]*)"/g)].map(([, href]) =>
+      href.replace(/&#(\d+);/g, (_, code) => String.fromCharCode(Number(code))),
+    );
+    expect(new Set(links).size).toBe(1);
+    for (const link of links) expect(new URL(link).origin).toBe(origin);
+    expect(text).toContain(links[0]);
+  });
+
+  it('is small, and names its language', () => {
+    expect(Buffer.byteLength(html)).toBeLessThan(100_000);
+    expect(html).toContain('<html lang="en">');
+    expect(Math.max(...text.split('\n').map((line) => line.length))).toBeLessThan(200);
+  });
+});
+
+it('every template of the union is rendered here', () => {
+  expect(Object.keys(all).sort()).toEqual(
+    mailRequest.options.map((option) => option.shape.template.value).sort(),
+  );
+});
+
+it('a signature shows its local time with offset and zone', () => {
+  const { text, html } = renderMail(all['revision-signed'], origin);
+  expect(text).toContain('2026-10-25 02:30:10 +02:00 Europe/Berlin');
+  expect(visible(html)).toContain('2026-10-25 02:30:10 +02:00 Europe/Berlin');
+  expect(text).toContain('ab'.repeat(32));
+});
+
+it.each(['revision-released', 'revision-recalled'] as const)('%s names the cautions', (template) => {
+  const { text } = renderMail(all[template], origin);
+  expect(text).toMatch(/Hot sheet/);
+  expect(text).toMatch(/Compressed air/);
+});
+
+it('a path that leads elsewhere is refused', () => {
+  const away = { ...all['gate-waits'], path: '//elsewhere.example/x' };
+  expect(() => renderMail(away, origin)).toThrow(/our own host/);
+});
