@@ -10,7 +10,7 @@ import { findVents, type Vents } from './measures/find-vents';
 import { measureDraft } from './measures/measure-draft';
 import { refineDepth } from './measures/refine-depth';
 import { findVisibility, type Visibility } from './measures/visibility';
-import { measureFacets, type Facets } from './mesh/measure-facets';
+import type { Facets } from './mesh/measure-facets';
 import { prepareMesh, type Prepared } from './mesh/prepare-mesh';
 import type { RawMesh } from './parse/raw-mesh';
 import { MM_PER_UNIT, type EffectiveRecipe } from './recipe';
@@ -40,10 +40,8 @@ export interface Part {
 export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages): Part {
   const { print, limits } = recipe;
   const mmPerUnit = MM_PER_UNIT[recipe.mesh.unit];
-  const { prepared, facets } = stages.run('mesh', () => {
-    const ready = prepareMesh(raw, { mmPerUnit, ...recipe.mesh });
-    return { prepared: ready, facets: measureFacets(ready.mesh) };
-  });
+  const prepared = stages.run('mesh', () => prepareMesh(raw, { mmPerUnit, ...recipe.mesh }));
+  const { facets } = prepared;
   const { mesh, shells, edges, min, max } = prepared;
   const size: Point = [max[0] - min[0], max[1] - min[1], Math.max(0, max[2])];
 

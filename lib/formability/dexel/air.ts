@@ -51,16 +51,16 @@ export function connectAir(columns: Columns, rim: 'open' | 'unknown' = 'open'): 
   for (let s = 0; s < slots; s++) if (mouth[s]) open[joined.find(s)] = 1;
   const state = new Uint8Array(slots);
   const pocket = new Int32Array(slots).fill(-1);
-  const number = new Map<number, number>();
+  const number = new Int32Array(slots).fill(-1);
+  let pockets = 0;
   let undercut = 0;
   let enclosed = 0;
   for (let c = 0; c < nx * ny; c++) {
     for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
       if (!isGap(c, s)) continue;
       const root = joined.find(s);
-      let id = number.get(root);
-      if (id === undefined) number.set(root, (id = number.size));
-      pocket[s] = id;
+      if (number[root] < 0) number[root] = pockets++;
+      pocket[s] = number[root];
       const length = z[s] - gapFloor(columns, c, s);
       state[s] = open[root] ? CONNECTED : ENCLOSED;
       if (open[root]) undercut += length;
@@ -71,7 +71,7 @@ export function connectAir(columns: Columns, rim: 'open' | 'unknown' = 'open'): 
   return {
     state,
     pocket,
-    pockets: number.size,
+    pockets,
     mouth,
     undercutVolume: undercut * cellArea,
     enclosedVolume: enclosed * cellArea,

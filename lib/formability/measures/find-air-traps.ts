@@ -20,7 +20,7 @@ export function findAirTraps(surface: Float64Array, grid: Grid, vents: Vent[]): 
     for (const c of pit.members) if (wanted.has(c)) pitOf.set(c, id);
   });
   const kept = pits.length <= MOST_TRAPS ? pits : largest(pits);
-  return kept.map((pit, id): AirTrap => {
+  return kept.map((pit): AirTrap => {
     const own = pit.children.length > 0 ? [] : vents.map((_, v) => v).filter((v) => pitOf.get(ventCells.get(v) ?? -1) === pits.indexOf(pit)); // prettier-ignore
     return {
       floor: [centreX(grid, pit.floor), centreY(grid, pit.floor), surface[pit.floor]],

@@ -9,7 +9,7 @@ const MOST_LEVELS = 4;
 const COARSE = 400;
 
 interface Island {
-  cells: number[];
+  cells: Int32Array;
   top: number;
 }
 
@@ -62,13 +62,16 @@ function floorLevels(surface: Float64Array, heightMm: number): number[] {
 function findIslands(surface: Float64Array, grid: Grid, above: number, label: Int32Array): Island[] {
   const { nx, ny } = grid;
   const islands: Island[] = [];
+  const queue = new Int32Array(surface.length);
+  let end = 0;
   for (let first = 0; first < surface.length; first++) {
     if (label[first] >= 0 || surface[first] <= above) continue;
-    const cells = [first];
+    const begin = end;
+    queue[end++] = first;
     let top = 0;
     label[first] = islands.length;
-    for (let at = 0; at < cells.length; at++) {
-      const c = cells[at];
+    for (let at = begin; at < end; at++) {
+      const c = queue[at];
       const i = c % nx;
       if (surface[c] > top) top = surface[c];
       for (let dy = c >= nx ? -nx : 0; dy <= (c < nx * (ny - 1) ? nx : 0); dy += nx) {
@@ -76,11 +79,11 @@ function findIslands(surface: Float64Array, grid: Grid, above: number, label: In
           const n = c + dy + dx;
           if (label[n] >= 0 || surface[n] <= above) continue;
           label[n] = islands.length;
-          cells.push(n);
+          queue[end++] = n;
         }
       }
     }
-    islands.push({ cells, top });
+    islands.push({ cells: queue.subarray(begin, end), top });
   }
   return islands;
 }
@@ -143,7 +146,9 @@ function nearestAt(
   const { nx, cell } = grid;
   const high = (island: Island) => {
     const cells = island.cells.filter((c) => surface[c] >= z - 0.01 * z);
-    return cells.filter((c) => [1, -1, nx, -nx].some((side) => !(surface[c + side] >= z - 0.01 * z)));
+    return Array.from(cells).filter((c) =>
+      [1, -1, nx, -nx].some((side) => !(surface[c + side] >= z - 0.01 * z)),
+    );
   };
   const [as, bs] = [high(a), high(b)];
   const far = (p: number, q: number) =>

@@ -31,20 +31,20 @@ export function findUndercuts(columns: Columns, air: Air, textureMm: number, tri
   const { grid, start, count, z } = columns;
   const { nx, ny, cell } = grid;
   const depth = spreadDepth(columns, air);
-  const regions = new Map<number, Pocket>();
+  const regions: (Pocket | undefined)[] = Array.from({ length: air.pockets }, () => undefined);
   for (let c = 0; c < nx * ny; c++) {
     for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
       if (air.state[s] !== CONNECTED) continue;
       const floor = gapFloor(columns, c, s);
-      let region = regions.get(air.pocket[s]);
+      let region = regions[air.pocket[s]];
       if (!region) {
         region = { cells: 0, sum: 0, depth: -1, deepest: c, slot: s, low: Infinity, high: -Infinity };
-        regions.set(air.pocket[s], region);
+        regions[air.pocket[s]] = region;
       }
       region.cells++;
       region.sum += z[s] - floor;
-      region.low = Math.min(region.low, floor);
-      region.high = Math.max(region.high, z[s]);
+      if (floor < region.low) region.low = floor;
+      if (z[s] > region.high) region.high = z[s];
       if (depth[s] > region.depth) {
         region.depth = depth[s];
         region.deepest = c;
@@ -52,13 +52,15 @@ export function findUndercuts(columns: Columns, air: Air, textureMm: number, tri
       }
     }
   }
-  const list = Array.from(regions.values()).map((region): UndercutRegion => ({
-    at: [centreX(grid, region.deepest), centreY(grid, region.deepest), z[region.slot]],
-    planAreaMm2: region.cells * cell * cell,
-    volumeMm3: region.sum * cell * cell,
-    maxDepthMm: Math.max(region.depth, 0),
-    zMm: [region.low, region.high],
-  }));
+  const list = regions
+    .filter((region) => region !== undefined)
+    .map((region): UndercutRegion => ({
+      at: [centreX(grid, region.deepest), centreY(grid, region.deepest), z[region.slot]],
+      planAreaMm2: region.cells * cell * cell,
+      volumeMm3: region.sum * cell * cell,
+      maxDepthMm: Math.max(region.depth, 0),
+      zMm: [region.low, region.high],
+    }));
   list.sort(
     (a, b) =>
       b.maxDepthMm - a.maxDepthMm || b.volumeMm3 - a.volumeMm3 || a.at[0] - b.at[0] || a.at[1] - b.at[1],
@@ -66,7 +68,7 @@ export function findUndercuts(columns: Columns, air: Air, textureMm: number, tri
   const ceiling = new Uint8Array(triangles);
   for (let c = 0; c < nx * ny; c++) {
     for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
-      const deep = air.state[s] === CONNECTED && (regions.get(air.pocket[s])?.depth ?? 0) > textureMm;
+      const deep = air.state[s] === CONNECTED && (regions[air.pocket[s]]?.depth ?? 0) > textureMm;
       if (deep && columns.facet[s] >= 0) ceiling[columns.facet[s]] = 1;
     }
   }

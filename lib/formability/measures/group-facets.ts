@@ -1,4 +1,5 @@
 import type { Mesh } from '../mesh/mesh';
+import { UnionFind } from '../mesh/union-find';
 import type { Place } from '../report';
 
 /**
@@ -12,27 +13,14 @@ export function groupFacets(
   most: number,
 ): Place[] {
   const { index, position: p, centre } = mesh;
-  const parent = new Map<number, number>();
-  const find = (v: number): number => {
-    let root = v;
-    for (let up = parent.get(root); up !== undefined && up !== root; up = parent.get(root)) root = up;
-    for (let at = v; at !== root;) {
-      const up = parent.get(at) as number;
-      parent.set(at, root);
-      at = up;
-    }
-    return root;
-  };
+  const joined = new UnionFind(mesh.vertices);
   for (const t of chosen) {
-    for (let k = 0; k < 3; k++)
-      if (!parent.has(index[3 * t + k])) parent.set(index[3 * t + k], index[3 * t + k]);
-    const roots = [0, 1, 2].map((k) => find(index[3 * t + k]));
-    const root = Math.min(...roots);
-    for (const other of roots) parent.set(other, root);
+    joined.join(index[3 * t], index[3 * t + 1]);
+    joined.join(index[3 * t], index[3 * t + 2]);
   }
   const groups = new Map<number, { area: number; largest: number }>();
   for (const t of chosen) {
-    const root = find(index[3 * t]);
+    const root = joined.find(index[3 * t]);
     const group = groups.get(root);
     if (!group) groups.set(root, { area: area[t], largest: t });
     else {

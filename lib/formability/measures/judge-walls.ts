@@ -58,10 +58,14 @@ export function judgeWalls(
     if (deg >= limitDeg - ROUNDING_DEG) continue;
     steep.push(t);
     below += facets.area[t];
-    const z = [0, 1, 2].map((k) => mesh.position[mesh.index[3 * t + k] * 3 + 2]);
-    if (Math.max(...z) - Math.min(...z) < STEP_MM) stepArea += facets.area[t];
-    low = Math.min(low, ...z);
-    high = Math.max(high, ...z);
+    const za = mesh.position[mesh.index[3 * t] * 3 + 2];
+    const zb = mesh.position[mesh.index[3 * t + 1] * 3 + 2];
+    const zc = mesh.position[mesh.index[3 * t + 2] * 3 + 2];
+    const foot = Math.min(za, zb, zc);
+    const head = Math.max(za, zb, zc);
+    if (head - foot < STEP_MM) stepArea += facets.area[t];
+    low = Math.min(low, foot);
+    high = Math.max(high, head);
   }
   const sliver = Math.max(LEAST_AREA_MM2, SLIVER_SHARE * wallArea);
   let bin = 0;

@@ -4,6 +4,8 @@ import { DEG } from './thresholds';
 
 /** Steepest macroscopic slope that still counts as a wall. */
 const WALL_DEG = 45;
+/** A cell that alone leans by more than 70° is no part of a wall of 45°. */
+const STEEPEST = Math.tan((70 * Math.PI) / 180);
 /** Share of the walls' area that may lie below the figure: one patch cut in mid-step is not the wall. */
 const SHARE = 0.02;
 
@@ -19,6 +21,8 @@ export function measureMacroDraft(mesh: Mesh, facets: Facets, skip: Uint8Array, 
   const cells = sumCells(mesh, facets, skip, cell);
   const walls: { draft: number; area: number }[] = [];
   for (const own of cells.values()) {
+    // A cell of little but tops cannot come out as a wall.
+    if (Math.abs(own.z) > STEEPEST * Math.hypot(own.x, own.y)) continue;
     const sum = [0, 0, 0];
     for (let n = 0; n < 27; n++) {
       const near = cells.get(

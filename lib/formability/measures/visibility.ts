@@ -15,6 +15,8 @@ export interface Visibility {
 
 /** A facet with this many grid hits is judged by them; one with fewer by points on it. */
 const ENOUGH_HITS = 4;
+/** A facet of fewer cells than this is one place: a single hit speaks for it. */
+const SMALL_CELLS = 8;
 /** How far outside the surface a point is looked at, in cells: the cell's centre is then outside too. */
 const OUTSIDE = 0.75;
 const MOST_SAMPLES_A_SIDE = 128;
@@ -51,9 +53,10 @@ export function findVisibility(
     }
   }
   const shares = new Float64Array(4);
+  const small = SMALL_CELLS * columns.grid.cell ** 2;
   for (let t = 0; t < n; t++) {
     const hits = perFacet[t];
-    if (hits >= ENOUGH_HITS) {
+    if (hits >= ENOUGH_HITS || (hits > 0 && facets.area[t] < small)) {
       visible[t] /= hits;
       shadowed[t] /= hits;
       enclosed[t] /= hits;

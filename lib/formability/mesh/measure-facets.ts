@@ -4,7 +4,9 @@ import type { Mesh } from './mesh';
 export interface Facets {
   /** mm². */
   area: Float64Array;
-  /** z of the unit outward normal; 0 where the facet has no area. */
+  /** Unit outward normal; 0 where the facet has no area. The pull lies along z, so z has the digits. */
+  nx: Float32Array;
+  ny: Float32Array;
   nz: Float64Array;
   /** 1 where all three vertices lie on the bed (z ≤ 1e-4) and the normal faces down. */
   bed: Uint8Array;
@@ -21,6 +23,8 @@ const NEEDLE = 1e-7;
 export function measureFacets(mesh: Mesh): Facets {
   const { triangles, index, position } = mesh;
   const area = new Float64Array(triangles);
+  const nx = new Float32Array(triangles);
+  const ny = new Float32Array(triangles);
   const nz = new Float64Array(triangles);
   const bed = new Uint8Array(triangles);
   let totalArea = 0;
@@ -51,6 +55,8 @@ export function measureFacets(mesh: Mesh): Facets {
       continue;
     }
     area[t] = twice / 2;
+    nx[t] = x / twice;
+    ny[t] = y / twice;
     nz[t] = z / twice;
     totalArea += twice / 2;
     if (
@@ -63,5 +69,5 @@ export function measureFacets(mesh: Mesh): Facets {
       bedArea += twice / 2;
     }
   }
-  return { area, nz, bed, totalArea, bedArea, degenerate };
+  return { area, nx, ny, nz, bed, totalArea, bedArea, degenerate };
 }

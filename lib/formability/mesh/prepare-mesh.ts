@@ -4,7 +4,7 @@ import { UnusableInput } from '../unusable-input';
 import { buildEdges, isClosed, type Edges } from './build-edges';
 import { dropFacets, markCollapsed, markDuplicates } from './drop-facets';
 import { findShells, type Shells } from './find-shells';
-import { measureFacets } from './measure-facets';
+import { measureFacets, type Facets } from './measure-facets';
 import { orientShells } from './orient-shells';
 import { placeMesh, type Placed, type Placing } from './place-mesh';
 import { rewindFacets } from './rewind-facets';
@@ -22,6 +22,8 @@ const COARSE_STEP_MM = 2e-3;
 
 /** A mesh ready to measure, the facts about the file as stored, and what was mended on the way. */
 export interface Prepared extends Placed {
+  /** Of the mesh after repair. */
+  facets: Facets;
   edges: Edges;
   shells: Shells;
   /** As stored. */
@@ -46,7 +48,8 @@ export function prepareMesh(raw: RawMesh, placing: Placing): Prepared {
   const { weld, edges: stored } = weldFully(raw, placing, warnings, repairs);
   const placed = placeMesh(weld, placing);
   const { mesh } = placed;
-  const { degenerate, totalArea } = measureFacets(mesh);
+  const asStored = measureFacets(mesh);
+  const { degenerate, totalArea } = asStored;
   if (totalArea === 0) {
     throw new UnusableInput('no_triangles', 'no facet of the file has an area; export the body again');
   }
@@ -90,7 +93,8 @@ export function prepareMesh(raw: RawMesh, placing: Placing): Prepared {
     if (!warnings.has('inconsistent_winding')) warnings.add('inverted');
     repairs.add('flipped_inside_out');
   }
-  return { ...placed, edges, shells, facts, warnings, repairs };
+  const facets = repairs.size === 0 ? asStored : measureFacets(mesh);
+  return { ...placed, facets, edges, shells, facts, warnings, repairs };
 }
 
 function weldFully(

@@ -52,6 +52,7 @@ function anyShellFloats({ mesh, shells }: Prepared): boolean {
 
 /** The axis direction that would stand the part on its largest flat side, or null where the present one serves. */
 function betterUp(mesh: Mesh, facets: Facets, min: Point, max: Point): Point | null {
+  if (facets.bedArea > POOR_BASE * (max[0] - min[0]) * (max[1] - min[1])) return null;
   const { index, position: p, centre } = mesh;
   const offset = [centre[0], centre[1], 0];
   const size = [0, 1, 2].map((k) => max[k] - min[k]);
@@ -73,8 +74,7 @@ function betterUp(mesh: Mesh, facets: Facets, min: Point, max: Point): Point | n
   }
   const base = areas[4];
   const best = areas.indexOf(Math.max(...areas));
-  if (base > POOR_BASE * size[0] * size[1] || areas[best] < BETTER_BASE * base + 0.1 * size[0] * size[1])
-    return null;
+  if (areas[best] < BETTER_BASE * base + 0.1 * size[0] * size[1]) return null;
   const up: Point = [0, 0, 0];
   up[best >> 1] = best & 1 ? -1 : 1;
   return up;

@@ -29,7 +29,22 @@ export function weldVertices(coords: Float32Array): Weld {
   let mask = slots.length - 1;
   let vertices = 0;
   for (let corner = 0, o = 0; corner < corners; corner++, o += 3) {
-    const [x, y, z] = [words[o], words[o + 1], words[o + 2]];
+    const x = words[o];
+    const y = words[o + 1];
+    const z = words[o + 2];
+    // Files in any sensible order repeat corners of the facet before: three looks spare most of the probing.
+    const before = corner - (corner % 3) - 3;
+    if (before >= 0) {
+      let same = -1;
+      for (let c = before; c < before + 3 && same < 0; c++) {
+        const at = 3 * c;
+        if (words[at] === x && words[at + 1] === y && words[at + 2] === z) same = c;
+      }
+      if (same >= 0) {
+        index[corner] = index[same];
+        continue;
+      }
+    }
     let slot = mix(x, y, z) & mask;
     let found = slots[slot];
     while (found >= 0) {
