@@ -1,6 +1,10 @@
+import { existsSync, readdirSync, readlinkSync } from 'node:fs';
+import path from 'node:path';
 import { createTransport } from 'nodemailer';
 import { Client } from 'pg';
 import { describe, expect, it } from 'vitest';
+import { sourceDigest } from '@/docker/local/build-app';
+import { root } from '@/docker/local/folders';
 import { crashService, mailTo, product, startService, stopService } from '../../support/product';
 import { visitor } from '../../support/browser';
 
@@ -36,6 +40,18 @@ describe('the product as npm start brings it up', () => {
     const [from, to] = ['no-reply@firstpull.example', 'trial@nowhere.example'];
     await transport.sendMail({ from, to, subject: 'Trial', text: 'It came.' });
     expect((await mailTo(to, ({ subject }) => subject === 'Trial')).text).toContain('It came.');
+  });
+
+  it('runs from a release that stands alone: no link in it leads out of it', () => {
+    const release = path.join(root, '.next-release', sourceDigest().slice(0, 16));
+    const links = readdirSync(release, { recursive: true, withFileTypes: true }).filter((one) =>
+      one.isSymbolicLink(),
+    );
+    const targets = links.map((one) =>
+      path.resolve(one.parentPath, readlinkSync(path.join(one.parentPath, one.name))),
+    );
+    expect(targets.length).toBeGreaterThan(0);
+    expect(targets.filter((target) => !target.startsWith(`${release}/`) || !existsSync(target))).toEqual([]);
   });
 
   it('lets nobody read the store unsigned', async () => {
