@@ -47,6 +47,22 @@ describe('signing up', () => {
     });
   });
 
+  it('leads on to opening a studio once the address is proven', async () => {
+    const email = 'on@example.test';
+    const callbackURL = '/verify?next=/studio/new';
+    const answer = await post('/sign-up/email', { email, name: 'On', password: testPassword, callbackURL });
+    expect(answer.status).toBe(200);
+    const verified = await get(pathOf((await mailsTo(email))[0].url));
+    expect(verified.headers.get('location')).toBe(callbackURL);
+    const foreign = await post('/sign-up/email', {
+      email: 'off@example.test',
+      name: 'Off',
+      password: testPassword,
+      callbackURL: 'https://evil.example',
+    });
+    expect(foreign.status).toBe(403);
+  });
+
   it('answers alike for a known and an unknown address', async () => {
     const known = await makePerson(database, 'Known');
     const body = { name: 'Somebody', password: testPassword };
