@@ -27,7 +27,9 @@ export interface NoteEditorProps {
 }
 
 const textClass = [
-  'min-h-20 px-2.5 py-2 text-md outline-none sm:text-base wrap-anywhere',
+  // The editor's own style sheet is not injected: the page's policy lets no script add one.
+  'relative min-h-20 px-2.5 py-2 text-md outline-none sm:text-base wrap-anywhere whitespace-break-spaces',
+  '[font-variant-ligatures:none] [&_.ProseMirror-separator]:inline! [&_.ProseMirror-trailingBreak]:inline',
   '[&_p]:min-h-[1lh] [&>*+*]:mt-1.5 [&_ul]:list-disc [&_ul]:pl-5 [&_ol]:list-decimal [&_ol]:pl-5',
   '[&_blockquote]:border-l-2 [&_blockquote]:border-edge [&_blockquote]:pl-3 [&_blockquote]:text-slate',
   '[&_strong]:font-semibold [&_a]:text-verdigris [&_a]:underline [&_a]:underline-offset-3',
@@ -47,6 +49,7 @@ export function NoteEditor(props: NoteEditorProps) {
     immediatelyRender: false,
     injectNonce: pageNonce(),
     shouldRerenderOnTransaction: false,
+    injectCSS: false,
     autofocus: autoFocus ? 'end' : false,
     extensions: noteExtensions({ placeholder, suggestion: menu.suggestion }),
     content: body ?? undefined,

@@ -6,7 +6,7 @@ import { useLive } from '../live/live-provider';
 import { queryKeys } from '../live/query-keys';
 import { notify } from '../notices';
 import { deviceStore } from './key-value-store';
-import { keepDraft } from './note-draft';
+import { returnDraft } from './note-draft';
 import { NoteOutbox, type OutgoingEntry, type OutgoingNote } from './note-outbox';
 import { sendNote } from './send-note';
 
@@ -29,8 +29,7 @@ export function OutboxProvider({ personId, children }: { personId: string; child
           onSent: (note) =>
             queries.invalidateQueries({ queryKey: queryKeys.docket(note.workspaceId, note.revisionId) }),
           onRefused: async (note, error) => {
-            await keepDraft(note.draftKey, draftOf(note, error.detail));
-            window.dispatchEvent(new CustomEvent(draftReturned, { detail: note.draftKey }));
+            await returnDraft(note.draftKey, draftOf(note, error.detail));
             notify(`The note was not posted. ${error.detail} Your text is kept where you wrote it.`, {
               kind: 'trouble',
             });
@@ -58,9 +57,6 @@ export function OutboxProvider({ personId, children }: { personId: string; child
 
   return <OutboxContext value={outbox}>{children}</OutboxContext>;
 }
-
-/** Fired on `window` with the draft's key when a refused note went back to its draft. */
-export const draftReturned = 'firstpull:draft-returned';
 
 function draftOf(note: OutgoingNote, refusal: string) {
   const { body, clientKey, mustSettle, pin } = note;

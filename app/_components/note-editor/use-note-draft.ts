@@ -1,8 +1,7 @@
 'use client';
 
 import { useCallback, useEffect, useRef, useState } from 'react';
-import { forgetDraft, keepDraft, readDraft, type NoteDraft } from './note-draft';
-import { draftReturned } from './outbox-provider';
+import { draftReturned, forgetDraft, keepDraft, readDraft, type NoteDraft } from './note-draft';
 
 /** Written text reaches the device this long after the last key (at most a second may be lost). */
 const settleMs = 250;

@@ -87,7 +87,7 @@ function threadTitle({ thread }: DocketItem): string {
 
 /** A finding, its answers below it, and what can be done: answer it while nobody has, or waive it. */
 function FindingItem({ item, finding }: { item: DocketItem; finding: FindingView }) {
-  const { workspace, revision, reader, people } = useRoom();
+  const { workspace, revision, reader, people, hasDraft } = useRoom();
   const [answering, setAnswering] = useState(false);
   const waiting = useOutgoing(revision.id).filter((e) => e.findingId === finding.id && !e.threadId);
   const mayAnswer = revision.can.note && !item.thread && !revision.lockedAt && waiting.length === 0;
@@ -100,7 +100,9 @@ function FindingItem({ item, finding }: { item: DocketItem; finding: FindingView
         actions={
           <>
             {mayAnswer && !answering ? (
-              <MetaButton onPress={() => setAnswering(true)}>answer</MetaButton>
+              <MetaButton onPress={() => setAnswering(true)}>
+                {hasDraft(`finding-${finding.id}`) ? 'go on with your answer' : 'answer'}
+              </MetaButton>
             ) : null}
             {mayWaive ? <WaiveDialog finding={finding} itemKey={item.key} /> : null}
           </>

@@ -40,7 +40,7 @@ export interface DocketProps {
 
 /** The one list of findings and notes. */
 export function Docket({ items, filter, onFilter, filterRef, adding, onAdding }: DocketProps) {
-  const { revision, reader } = useRoom();
+  const { revision, reader, hasDraft } = useRoom();
   const all = byGroup(items);
   const shown = byGroup(filterItems(items, filter, reader.id));
   const isFiltered = filter.kind !== 'all' || filter.search !== '';
@@ -53,7 +53,7 @@ export function Docket({ items, filter, onFilter, filterRef, adding, onAdding }:
         </h2>
         {revision.can.note && !adding ? (
           <Button size="small" onPress={() => onAdding(true)} className="print:hidden">
-            Add a note
+            {hasDraft('new') ? 'Go on with your note' : 'Add a note'}
           </Button>
         ) : null}
         <p className="col-span-2 text-base text-slate" role="status">

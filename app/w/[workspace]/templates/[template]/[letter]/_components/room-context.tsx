@@ -26,6 +26,8 @@ export interface RoomValue {
   /** Asks the stage for a place; null when there is no stage to ask (no WebGL, no model yet). */
   askForPin: ((take: (pin: NotePin | null) => void) => void) | null;
   placing: boolean;
+  /** Whether the reader has begun to write about a thread's id, `finding-<id>`, or `new`. */
+  hasDraft: (subject: string) => boolean;
 }
 
 const RoomContext = createContext<RoomValue | null>(null);

@@ -6,6 +6,8 @@ import { useDocketAddress } from '../_hooks/use-docket-filter';
 import { useKeysOn, useRoomKeys } from '../_hooks/use-room-keys';
 import { useStageFocus } from '../_hooks/use-stage-focus';
 import { usePresence } from '@/app/_components/live/use-presence';
+import { draftKey } from '@/app/_components/note-editor/note-draft';
+import { useDraftKeys } from '@/app/_components/note-editor/use-draft-keys';
 import { usePreferences } from '@/app/_components/preferences-context';
 import type { Point, StageCamera } from '@/app/_components/stage/stage-props';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
@@ -46,6 +48,7 @@ export function Room({
   const { data: docket } = useDocket(workspace.id, givenDocket, loadedAt);
   const people = usePeople(workspace.id);
   usePresence(workspace.id, revision.id);
+  const draftKeys = useDraftKeys(reader.id, revision.id);
   const { units } = usePreferences();
   const { filter, item: active, setFilter, setItem } = useDocketAddress();
   const [adding, setAdding] = useState(false);
@@ -128,6 +131,7 @@ export function Room({
         }
       : null,
     placing: focus.placing,
+    hasDraft: (subject) => draftKeys.has(draftKey(reader.id, revision.id, subject)),
   };
 
   return (

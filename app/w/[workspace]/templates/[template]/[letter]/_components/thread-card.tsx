@@ -17,7 +17,7 @@ import { useRoom } from './room-context';
 
 /** Notes in the order they were said, where they are pinned, and what can be done: reply, settle, open again. */
 export function ThreadCard({ thread, itemKey }: { thread: ThreadView; itemKey: string }) {
-  const { workspace, revision, reader, people } = useRoom();
+  const { workspace, revision, reader, people, hasDraft } = useRoom();
   const [replying, setReplying] = useState(false);
   const settle = useSettle(workspace.id, revision.id);
   const outgoing = useOutgoing(revision.id).filter((entry) => entry.threadId === thread.id);
@@ -49,7 +49,11 @@ export function ThreadCard({ thread, itemKey }: { thread: ThreadView; itemKey: s
       ) : (
         <div className="flex flex-wrap items-baseline gap-x-3.5 text-sm text-slate">
           {thread.pin ? <PlaceLinks places={[{ at: thread.pin.at }]} itemKey={itemKey} /> : null}
-          {mayReply ? <MetaButton onPress={() => setReplying(true)}>reply</MetaButton> : null}
+          {mayReply ? (
+            <MetaButton onPress={() => setReplying(true)}>
+              {hasDraft(thread.id) ? 'go on with your reply' : 'reply'}
+            </MetaButton>
+          ) : null}
           {revision.can.settle || thread.afterApproval ? (
             <MetaButton
               isPending={settle.isPending}
