@@ -32,9 +32,13 @@ describe('stagePins', () => {
     expect(stagePins(many, bounds, 'mm', many[0].key)).toHaveLength(8);
   });
 
-  it('leaves findings that are fine unmarked', () => {
+  it('marks what is settled or fine only while it is looked at', () => {
     const fine = docketItems(docket({ findings: [finding({ status: 'pass' })], threads: [] }));
     expect(stagePins(fine, bounds, 'mm')).toEqual([]);
+    expect(stagePins(fine, bounds, 'mm', fine[0].key).map((pin) => pin.state)).toEqual([
+      'settled',
+      'settled',
+    ]);
   });
 });
 

@@ -27,7 +27,10 @@ export function itemOfPin(pinId: string): string {
   return pinId.replace(/#\d+$/, '');
 }
 
-/** Marks on the model: pinned threads, and the places of findings that are not simply fine. */
+/**
+ * Marks on the model: pinned threads, and the places of findings that are not simply fine. What is settled is marked
+ * only while it is looked at, so that the marks say what is still to do.
+ */
 export function stagePins(
   items: readonly DocketItem[],
   bounds: Bounds,
@@ -36,6 +39,7 @@ export function stagePins(
 ): StagePin[] {
   return items.flatMap((item): StagePin[] => {
     const { finding, thread, key, group } = item;
+    if (states[group] === 'settled' && key !== active) return [];
     if (thread?.pin) {
       const { at, normal, view } = thread.pin;
       return [
@@ -49,7 +53,7 @@ export function stagePins(
         },
       ];
     }
-    if (!finding || group === 'fine' || group === 'unchecked') return [];
+    if (!finding) return [];
     return finding.places.slice(0, key === active ? marksWhenActive : 1).map((place, index) => ({
       id: `${key}#${index}`,
       at: place.at,
