@@ -1,4 +1,4 @@
-import type { GateView } from '@/lib/review/schemas';
+import type { RevisionView } from '@/lib/review/schemas';
 import type { DocketGroup, DocketItem } from './docket-items';
 
 /** `2 to settle before the client gate, 3 to look at, 11 settled`. */
@@ -11,7 +11,8 @@ export function docketSentence(
   const settle = groups.settle.length;
   if (settle > 0)
     parts.push(`${settle} to settle${next ? ` before the ${next.name.toLowerCase()} gate` : ''}`);
-  else parts.push('nothing to settle');
+  else if (check.state === 'finished') parts.push('nothing to settle');
+  else parts.push('the findings come with the check');
   if (groups.look.length > 0) parts.push(`${groups.look.length} to look at`);
   if (groups.settled.length > 0) parts.push(`${groups.settled.length} settled`);
   if (groups.after.length > 0) parts.push(`${groups.after.length} after approval`);

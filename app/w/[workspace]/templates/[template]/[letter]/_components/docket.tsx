@@ -57,7 +57,7 @@ export function Docket({ items, filter, onFilter, filterRef, adding, onAdding }:
           </Button>
         ) : null}
         <p className="col-span-2 text-base text-slate" role="status">
-          {docketSentence(all, revision.gates)}
+          {docketSentence(all, revision)}
         </p>
       </div>
       <DocketFilterBar filter={filter} onFilter={onFilter} inputRef={filterRef} />

@@ -70,7 +70,7 @@ export function StagePanel(props: StagePanelProps) {
           <SkeletonBlock className="h-80 lg:h-[30rem]" label="The model is being made for this page" />
         ) : (
           <p className="px-4 py-16 text-center text-base text-slate">
-            There is no model to show of this revision. Its findings and its file are below and beside.
+            There is no model of this revision to show.
           </p>
         )}
       </div>
