@@ -10,6 +10,7 @@ import { findVents, type Vents } from './measures/find-vents';
 import { measureDraft } from './measures/measure-draft';
 import { refineDepth } from './measures/refine-depth';
 import { findVisibility, type Visibility } from './measures/visibility';
+import { isClosed } from './mesh/build-edges';
 import type { Facets } from './mesh/measure-facets';
 import { prepareMesh, type Prepared } from './mesh/prepare-mesh';
 import type { RawMesh } from './parse/raw-mesh';
@@ -50,7 +51,7 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     const high = [max[0] - mesh.centre[0], max[1] - mesh.centre[1]];
     const grid = affordGrid(mesh, makeGrid(low, high, recipe.grid.cellMm));
     // Only a closed surface is sure to leave each column as often as it enters it.
-    const hits = rasterise(mesh, grid, edges.boundary + edges.nonManifold > 0 ? 2 : 0);
+    const hits = rasterise(mesh, grid, isClosed(edges) ? 0 : 2);
     return { columns: buildColumns(hits, grid, shells.ofFacet), perFacet: hits.perFacet };
   });
   const { grid } = columns;

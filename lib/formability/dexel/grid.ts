@@ -11,7 +11,7 @@ export interface Grid {
 /** Most cells along one side (engine contract: at most 1024² cells). */
 export const MOST_CELLS = 1024;
 /** Cells along the longer side where the recipe gives no size. */
-const USUAL_CELLS = 1000;
+const USUAL_CELLS = 800;
 /** The origin sits off the box by an irrational-looking share of a cell, so walls miss cell centres. */
 const SHIFT: [number, number] = [0.137, 0.071];
 

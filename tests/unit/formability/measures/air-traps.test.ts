@@ -99,11 +99,11 @@ describe('vents, found as bores on the mesh', () => {
     near(report.airTraps[0].volumeMm3, 20 * polygonArea(15, 48) + 10 * polygonArea(1.6, 48), 0.01);
   });
 
-  it('a 0.4 mm bore in a 300 mm template, far narrower than a cell of 0.3 mm is sure to see', () => {
+  it('a 0.4 mm bore in a 300 mm template, far narrower than a cell of 0.375 mm is sure to see', () => {
     const outline: P[] = [[-150, -100], [150, -100], [150, 100], [-150, 100]]; // prettier-ignore
     const bores = [[-100.03, 20.07], [0.11, -60.2], [77.7, 33.3]].map(([x, y]) => ring(0.2, 12, x, y)); // prettier-ignore
     const { vents, recipe } = reportOn(plate(outline, bores, 0, 20));
-    expect(recipe.grid.cellMm).toBeCloseTo(0.3, 6);
+    expect(recipe.grid.cellMm).toBeCloseTo(0.375, 6);
     expect(vents.map((vent) => vent.diameterMm.toFixed(2))).toEqual(['0.40', '0.40', '0.40']);
     expect(vents[2].at[0]).toBeCloseTo(77.7, 3);
   });

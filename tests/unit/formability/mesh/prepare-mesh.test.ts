@@ -94,6 +94,23 @@ describe('wrong but usable meshes: warning, and repair where one is safe', () =>
     expect(found.repairs).toEqual(['rewound_facets']);
   });
 
+  it('a surface that cannot be wound one way (two sheets on one edge) still gives finite figures', () => {
+    const strip: Triangles = [];
+    const at = (i: number, side: number): [number, number, number] => {
+      const [a, half] = [(i * Math.PI) / 12, (i * Math.PI) / 24];
+      const r = 30 + side * 8 * Math.cos(half);
+      return [r * Math.cos(a), r * Math.sin(a), 20 + side * 8 * Math.sin(half)];
+    };
+    for (let i = 0; i < 24; i++) {
+      strip.push(...at(i, -1), ...at(i + 1, -1), ...at(i + 1, 1), ...at(i, -1), ...at(i + 1, 1), ...at(i, 1));
+    }
+    const report = reportOn(together(strip, box(20, 20, 10)), coarse);
+    expect(report.mesh).toMatchObject({ shells: 2, watertight: false });
+    expect(report.mesh.openColumns).toBeGreaterThan(0);
+    expect(report.plan.planAreaMm2).toBeGreaterThanOrEqual(400);
+    expect(Number.isFinite(report.mesh.unionVolumeMm3)).toBe(true);
+  });
+
   it('a missing base is open, and taken to stand on the bed', () => {
     const open = withoutFacet(withoutFacet(box(60, 40, 20), 0), 0);
     const found = meshOf(open);
