@@ -4,7 +4,7 @@ import type { DocketGroup, DocketItem } from './docket-items';
 /** `2 to settle before the client gate, 3 to look at, 11 settled`. */
 export function docketSentence(
   groups: Record<DocketGroup, DocketItem[]>,
-  gates: readonly GateView[],
+  { gates, check }: Pick<RevisionView, 'gates' | 'check'>,
 ): string {
   const next = gates.find((gate) => gate.state === 'open' || gate.state === 'waiting');
   const parts: string[] = [];
