@@ -2,10 +2,12 @@ import { uuidv7 } from 'uuidv7';
 import { withTenant } from '@/db/tenant';
 import { appendEntry } from '@/lib/audit/append-entry';
 import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
-import { conflict } from '@/lib/errors/app-error';
+import { conflict, forbidden } from '@/lib/errors/app-error';
 import { parseInput } from '@/lib/http/read-input';
 import { enqueueJob } from '@/lib/jobs/enqueue-job';
 import { lockRevision, moveRevision } from '@/lib/review/revision-data';
+import { holdRole } from '@/lib/review/people-data';
+import { permits } from '@/lib/workspaces/roles';
 import { asId } from '@/lib/review/as-id';
 import { ReleaseInput } from '@/lib/review/schemas';
 import { insertRelease } from './production-data';
@@ -40,6 +42,10 @@ export async function releaseRevision(
         'not-approved',
         `Revision ${revision.letter} is ${revision.state.replace('_', ' ')}; only an approved one can be released.`,
       );
+    // The role as it is at this moment, held until commit: it goes on record with the release.
+    const role = await holdRole(tx, workspaceId, ctx.person.id);
+    if (!role || !permits(role, 'revision.release'))
+      throw forbidden('You may no longer release in this workspace.');
     const lock = await requireAgreed(tx, revision);
     const releaseId = uuidv7();
     const jobId = await enqueueJob(tx, ctx, {
@@ -75,7 +81,7 @@ export async function releaseRevision(
         releaseId,
         releasedAt: release.createdAt.toISOString(),
         jobId,
-        role: ctx.role,
+        role,
         contentDigest: lock.contentDigest,
         note,
       },

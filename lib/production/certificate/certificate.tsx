@@ -1,4 +1,4 @@
-import { Document, Image, Page, Text, View } from '@react-pdf/renderer';
+import { Document, Image as PdfImage, Page, Text, View } from '@react-pdf/renderer';
 import { zonedTime } from '@/lib/time/zoned-time';
 import { recipeLines } from '@/lib/review/recipe-lines';
 import { formingCautions } from '../cautions';
@@ -94,7 +94,7 @@ function Picture({ picture }: { picture: Uint8Array | null }) {
   return (
     <View style={{ width: 290, height: 194, borderWidth: 0.6, borderColor: ink, backgroundColor: paper }}>
       {picture ? (
-        <Image
+        <PdfImage
           src={{ data: Buffer.from(picture), format: 'png' }}
           style={{ width: 288.8, height: 192.8, objectFit: 'contain' }}
         />

@@ -1,4 +1,4 @@
-import { beforeAll, describe, expect, it } from 'vitest';
+import { beforeAll, describe, expect, it, vi } from 'vitest';
 import { tartTray } from '@/db/seed/templates';
 import { createTemplate } from '@/lib/review/create-template';
 import { viewRevision } from '@/lib/review/view-revision';
@@ -12,6 +12,7 @@ import {
 import { makeHouse, type House } from '@/tests/support/make-house';
 import type { ObjectStore } from '@/tests/support/object-store/start-object-store';
 import { postFile, readyUpload, sendFile, settledJob } from '../production/agreed-template';
+import { openPage } from './open-page';
 import { startWorkerProcess } from './worker-process';
 
 let database: FreshDatabase;
@@ -117,6 +118,44 @@ describe('two workers side by side', { timeout: 240_000 }, () => {
        join meshes m on m.id = r.mesh_id where m.file_name = 'tray-0.stl'`,
     );
     expect(rows).toHaveLength(1);
+  });
+});
+
+describe('a check run', { timeout: 120_000 }, () => {
+  it('shows its progress to open pages while it runs', async () => {
+    const heard = await openPage(house.workspace.id, 'job.progressed');
+    const { revisionId } = await postFile(database, house, { fileName: 'progress.stl', bytes: variant(10) });
+    await settledJob(database, revisionId);
+    const about = heard.map(({ data }) => data as { subjectId: string; stage: string; progress: number });
+    const mine = about.filter(({ subjectId }) => subjectId === revisionId);
+    expect(mine.length).toBeGreaterThan(0);
+    const shares = mine.map(({ progress }) => progress);
+    expect(shares).toEqual(shares.toSorted((a, b) => a - b));
+    for (const { stage } of mine) expect(stage).not.toBe('');
+  });
+
+  it('is done although every connection to the database was cut', async () => {
+    const { revisionId } = await postFile(
+      database,
+      house,
+      { fileName: 'cut.stl', bytes: variant(11) },
+      () => {
+        void objects.faults.plant({ kind: 'hold', method: 'GET', url: /uploads\// });
+      },
+    );
+    await vi.waitFor(async () => {
+      const { rows } = await database.query(
+        "select 1 from jobs where subject_id = $1 and state = 'running'",
+        [revisionId],
+      );
+      expect(rows).toHaveLength(1);
+    }, 30_000);
+    const { rowCount } = await database.query(
+      "select pg_terminate_backend(pid) from pg_stat_activity where datname = current_database() and application_name like 'firstpull%'",
+    );
+    expect(rowCount).toBeGreaterThan(5);
+    objects.faults.clear();
+    expect(await settledJob(database, revisionId)).toMatchObject({ state: 'done' });
   });
 });
 
