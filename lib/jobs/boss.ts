@@ -22,7 +22,8 @@ export function boss({ supervise = false } = {}): Promise<PgBoss> {
       max: 3,
       application_name: 'firstpull-queue',
     });
-    made.on('error', (error) => log().warn({ err: error }, 'queue'));
+    // The driver's errors carry their whole client along; the message is enough.
+    made.on('error', (error) => log().warn({ reason: error.message }, 'queue'));
     await made.start();
     return made;
   })();
