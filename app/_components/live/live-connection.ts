@@ -68,8 +68,9 @@ export async function openLiveConnection(
     forceTLS: config.tls,
     enabledTransports: [config.tls ? 'wss' : 'ws'],
     disableStats: true,
-    activityTimeout: 20_000,
-    pongTimeout: 6_000,
+    // A socket that says nothing is asked after 8 s and given up 4 s later.
+    activityTimeout: 8_000,
+    pongTimeout: 4_000,
     unavailableTimeout: 6_000,
     channelAuthorization: {
       customHandler: ({ socketId, channelName }: { socketId: string; channelName: string }, done: Done) => {

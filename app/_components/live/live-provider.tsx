@@ -15,7 +15,14 @@ import {
 import { personChannel, workspaceChannel } from '@/realtime/channels';
 import type { LiveEvent } from '@/realtime/events';
 import { openLiveConnection, type LiveConfig, type LiveConnection, type LivePerson } from './live-connection';
-import { jitterMs, liveStatusOf, patienceMs, pollMs, type LiveStatus } from './live-status';
+import {
+  jitterMs,
+  liveStatusOf,
+  patienceAfterLossMs,
+  patienceMs,
+  pollMs,
+  type LiveStatus,
+} from './live-status';
 import { queryKeys, staleAfter } from './query-keys';
 
 /** What a listener is told: one event, or that anything may have changed (reconnected, or asked on time). */
@@ -71,6 +78,7 @@ export function LiveProvider({ config, personId, workspaceId, children }: LivePr
   const [waitedEnough, setWaitedEnough] = useState(false);
   const [connection, setConnection] = useState<LiveConnection | null>(null);
   const [people, showPeople] = useState<readonly LivePerson[]>([]);
+  const wasLive = useRef(false);
   const listeners = useRef(new Set<(news: LiveNews) => void>());
   const status = liveStatusOf({ online, subscribed, waitedEnough });
 
@@ -125,11 +133,13 @@ export function LiveProvider({ config, personId, workspaceId, children }: LivePr
 
   useEffect(() => {
     if (subscribed) {
+      wasLive.current = true;
       // Whatever changed between the page's first bytes, or the loss of the socket, and now.
       const timer = window.setTimeout(askForAll, Math.random() * jitterMs);
       return () => window.clearTimeout(timer);
     }
-    const timer = window.setTimeout(() => setWaitedEnough(true), patienceMs);
+    const patience = wasLive.current ? patienceAfterLossMs : patienceMs;
+    const timer = window.setTimeout(() => setWaitedEnough(true), patience);
     return () => {
       window.clearTimeout(timer);
       setWaitedEnough(false);

@@ -3,6 +3,8 @@ export type LiveStatus = 'connecting' | 'live' | 'polling' | 'offline';
 
 /** A page that is not live after this long starts to ask. */
 export const patienceMs = 8_000;
+/** The same for a page that was live and lost it; the socket's own silence has been waited for by then. */
+export const patienceAfterLossMs = 3_000;
 /** How often a page that is not live asks. */
 export const pollMs = 15_000;
 /** After a reconnect every open page fetches again; spreading them keeps a server restart from becoming a rush. */
@@ -13,7 +15,7 @@ export interface Signals {
   online: boolean;
   /** The realtime server holds our subscription. */
   subscribed: boolean;
-  /** `patienceMs` have passed without a subscription. */
+  /** the patience above has passed without a subscription. */
   waitedEnough: boolean;
 }
 
