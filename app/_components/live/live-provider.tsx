@@ -24,6 +24,7 @@ import {
   type LiveStatus,
 } from './live-status';
 import { queryKeys, staleAfter } from './query-keys';
+import { StaleKeys } from './stale-keys';
 
 /** What a listener is told: one event, or that anything may have changed (reconnected, or asked on time). */
 export type LiveNews = LiveEvent | { name: 'anything' };
@@ -79,6 +80,14 @@ export function LiveProvider({ config, personId, workspaceId, children }: LivePr
   const [connection, setConnection] = useState<LiveConnection | null>(null);
   const [people, showPeople] = useState<readonly LivePerson[]>([]);
   const wasLive = useRef(false);
+  const [stale] = useState(
+    () =>
+      new StaleKeys({
+        isFetching: (queryKey) => queries.isFetching({ queryKey }) > 0,
+        invalidate: (queryKey) => void queries.invalidateQueries({ queryKey }),
+        later: (run, ms) => void window.setTimeout(run, ms),
+      }),
+  );
   const listeners = useRef(new Set<(news: LiveNews) => void>());
   const status = liveStatusOf({ online, subscribed, waitedEnough });
 
@@ -108,7 +117,7 @@ export function LiveProvider({ config, personId, workspaceId, children }: LivePr
         const { subjectId, stage, progress } = event.data;
         queries.setQueryData(queryKeys.progress(subjectId), { stage, progress });
       }
-      for (const queryKey of staleAfter(workspaceId, event)) void queries.invalidateQueries({ queryKey });
+      stale.add(staleAfter(workspaceId, event));
       tell(event);
     };
     openLiveConnection(JSON.parse(address) as LiveConfig, channels, {
@@ -129,7 +138,7 @@ export function LiveProvider({ config, personId, workspaceId, children }: LivePr
       setConnection(null);
       setSubscribed(false);
     };
-  }, [address, personId, workspaceId, queries, tell]);
+  }, [address, personId, workspaceId, queries, stale, tell]);
 
   useEffect(() => {
     if (subscribed) {
