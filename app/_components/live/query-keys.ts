@@ -14,6 +14,7 @@ export const queryKeys = {
     ['workspace', workspaceId, 'revision', revisionId] as const,
   docket: (workspaceId: string, revisionId: string) =>
     ['workspace', workspaceId, 'docket', revisionId] as const,
+  /** Frozen once it is there: no event makes it stale. */
   report: (workspaceId: string, revisionId: string) =>
     ['workspace', workspaceId, 'report', revisionId] as const,
   content: (workspaceId: string, revisionId: string) =>
@@ -42,7 +43,6 @@ export function staleAfter(workspaceId: string | null, event: LiveEvent): readon
         queryKeys.revision(workspaceId, event.data.id),
         queryKeys.docket(workspaceId, event.data.id),
         queryKeys.content(workspaceId, event.data.id),
-        queryKeys.report(workspaceId, event.data.id),
         queryKeys.templates(workspaceId),
         queryKeys.template(workspaceId, event.data.templateId),
       ];
