@@ -5,6 +5,7 @@ import JSZip from 'jszip';
 import { Client } from 'pg';
 import { describe, expect, inject, it } from 'vitest';
 import { tartTray } from '@/db/seed/templates';
+import { axeFindings } from '../support/axe';
 import { screenshot } from '../support/browser';
 import { outFolder } from '../support/out-folder';
 import { signedIn, workspaceOf } from '../support/people';
@@ -29,6 +30,12 @@ describe('the whole job', () => {
     const api = `/api/v1/workspaces/${slug}`;
     const failing = await tartTray({ draftDeg: 1.5, ventMm: 1 });
     const sound = await tartTray({ draftDeg: 9, ventMm: 1 });
+
+    // What the designer's browser is told over the socket, so that a note shown by mere polling does not count as live.
+    const told: string[] = [];
+    designer.page.on('websocket', (socket) =>
+      socket.on('framereceived', ({ payload }) => told.push(String(payload))),
+    );
 
     // The designer opens a template and posts a revision that will lock on the template.
     await designer.page.goto(`/w/${slug}`);
@@ -67,10 +74,15 @@ describe('the whole job', () => {
       .getByRole('textbox', { name: 'New note' })
       .fill('Could the foot be rounder without losing the crisp rim?');
     await approver.page.getByRole('checkbox', { name: /settled/i }).check({ force: true });
+    await designer.page.getByText('Live', { exact: true }).waitFor();
+    const toldBefore = told.length;
     const noteSent = performance.now();
     await approver.page.getByRole('button', { name: 'Post the note' }).click();
     await designer.page.getByText('Could the foot be rounder').first().waitFor();
     const liveMs = performance.now() - noteSent;
+    expect(told.slice(toldBefore).some((frame) => frame.includes('docket.changed'))).toBe(true);
+    // Events carry ids only: never a word of what was written.
+    expect(told.some((frame) => frame.includes('crisp rim'))).toBe(false);
     const noteOnDesigners = designer.page.locator('li', { hasText: 'Could the foot be rounder' }).first();
     await noteOnDesigners.getByRole('button', { name: 'reply' }).click();
     await designer.page
@@ -113,6 +125,7 @@ describe('the whole job', () => {
     await signClient.waitFor();
     await signClient.click();
     await approver.page.getByText(sha256(sound).slice(0, 4)).first().waitFor();
+    expect(await axeFindings(approver.page)).toEqual([]);
     await screenshot(approver.page, 'sign');
     await approver.page.getByLabel('Your password').fill(approver.password);
     await approver.page.getByRole('button', { name: /^Sign as/ }).click();
@@ -157,6 +170,7 @@ describe('the whole job', () => {
     // The producer releases; the pack holds the very bytes and verifies.
     await producer.page.goto(`${templatePath}/B`);
     await producer.page.getByRole('button', { name: /^Release to production/ }).click();
+    expect(await axeFindings(producer.page)).toEqual([]);
     await producer.page.getByLabel('Note to production').fill('One copy, sanded.');
     await producer.page
       .getByRole('dialog')
