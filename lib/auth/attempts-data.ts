@@ -8,16 +8,15 @@ const windowMs = 15 * 60_000;
 const keyOf = (email: string) =>
   `sign-in:${createHash('sha256').update(email.trim().toLowerCase()).digest('hex')}`;
 
-/**
- * Counts one sign-in attempt for an address, in one statement, for every web process alike. Returns how many
- * were made since the window opened and how long it stays open.
- */
-export async function countSignInAttempt(email: string): Promise<{ count: number; retryAfterS: number }> {
+type Counted = { count: number; retryAfterS: number };
+
+/** One statement, so that requests made at once are each counted before any of them is answered. */
+async function countAttempt(key: string): Promise<Counted> {
   const now = Date.now();
   const expired = sql`${rateLimits.lastRequest} < ${now - windowMs}`;
   const [row] = await authDatabase()
     .insert(rateLimits)
-    .values({ id: uuidv7(), key: keyOf(email), count: 1, lastRequest: now })
+    .values({ id: uuidv7(), key, count: 1, lastRequest: now })
     .onConflictDoUpdate({
       target: rateLimits.key,
       set: {
@@ -29,9 +28,25 @@ export async function countSignInAttempt(email: string): Promise<{ count: number
   return { count: row.count, retryAfterS: Math.max(1, Math.ceil((row.lastRequest + windowMs - now) / 1000)) };
 }
 
-/** A right password starts the count anew. */
-export async function forgetSignInAttempts(email: string): Promise<void> {
-  await authDatabase()
-    .delete(rateLimits)
-    .where(eq(rateLimits.key, keyOf(email)));
+async function forgetAttempts(key: string): Promise<void> {
+  await authDatabase().delete(rateLimits).where(eq(rateLimits.key, key));
 }
+
+/**
+ * Counts one sign-in attempt for an address, for every web process alike. Returns how many were made since
+ * the window opened and how long it stays open.
+ */
+export const countSignInAttempt = (email: string): Promise<Counted> => countAttempt(keyOf(email));
+
+/** A right password starts the count anew. */
+export const forgetSignInAttempts = (email: string): Promise<void> => forgetAttempts(keyOf(email));
+
+/** Wrong passwords that a signed-in person may give in a quarter of an hour, wherever they are asked for it. */
+export const confirmAttempts = 5;
+
+/** Counts one attempt of a signed-in person to prove their password: to sign, or to change it. */
+export const countConfirmAttempt = (personId: string): Promise<Counted> =>
+  countAttempt(`confirm:${personId}`);
+
+export const forgetConfirmAttempts = (personId: string): Promise<void> =>
+  forgetAttempts(`confirm:${personId}`);

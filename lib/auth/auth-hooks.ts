@@ -1,7 +1,13 @@
-import { APIError, createAuthMiddleware } from 'better-auth/api';
+import { APIError, createAuthMiddleware, getSessionFromCtx, isAPIError } from 'better-auth/api';
 import { z } from 'zod';
 import { shortText } from '@/lib/workspaces/schemas';
-import { countSignInAttempt, forgetSignInAttempts } from './attempts-data';
+import {
+  confirmAttempts,
+  countConfirmAttempt,
+  countSignInAttempt,
+  forgetConfirmAttempts,
+  forgetSignInAttempts,
+} from './attempts-data';
 
 /** Wrong passwords that an address may take in a quarter of an hour. */
 export const signInAttempts = 20;
@@ -15,6 +21,14 @@ const SignUp = z.strictObject({
   rememberMe: z.boolean().optional(),
 });
 const Address = z.object({ email: z.string().max(254) });
+const Changed = z.object({ user: z.object({ id: z.string() }) });
+
+const tooMany = (message: string, retryAfterS: number) =>
+  new APIError(
+    'TOO_MANY_REQUESTS',
+    { code: 'TOO_MANY_ATTEMPTS', message },
+    { 'retry-after': String(retryAfterS) },
+  );
 
 /** Before the service answers: names as ours are, and a limit for each address besides those for each caller. */
 export const before = createAuthMiddleware(async (ctx) => {
@@ -29,18 +43,26 @@ export const before = createAuthMiddleware(async (ctx) => {
     if (!given.success) return;
     const { count, retryAfterS } = await countSignInAttempt(given.data.email);
     if (count > signInAttempts)
-      throw new APIError(
-        'TOO_MANY_REQUESTS',
-        {
-          code: 'TOO_MANY_ATTEMPTS',
-          message: 'Too many attempts for this address. Wait a quarter of an hour, or reset the password.',
-        },
-        { 'retry-after': String(retryAfterS) },
+      throw tooMany(
+        'Too many attempts for this address. Wait a quarter of an hour, or reset the password.',
+        retryAfterS,
       );
+  }
+  if (ctx.path === '/change-password') {
+    // It asks for the same password as signing does, so it shares that count.
+    const session = await getSessionFromCtx(ctx);
+    if (!session) return;
+    const { count, retryAfterS } = await countConfirmAttempt(session.user.id);
+    if (count > confirmAttempts)
+      throw tooMany('Too many wrong passwords. Wait a quarter of an hour and try again.', retryAfterS);
   }
 });
 
 export const after = createAuthMiddleware(async (ctx) => {
   const signedIn = ctx.context.newSession;
   if (ctx.path === '/sign-in/email' && signedIn) await forgetSignInAttempts(signedIn.user.email);
+  if (ctx.path === '/change-password' && !isAPIError(ctx.context.returned)) {
+    const changed = Changed.safeParse(ctx.context.returned);
+    if (changed.success) await forgetConfirmAttempts(changed.data.user.id);
+  }
 });

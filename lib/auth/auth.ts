@@ -8,6 +8,7 @@ import { authDatabase } from '@/db/client';
 import { accounts, rateLimits, sessions, users, verifications } from '@/db/schema/identity';
 import { invitations, members, workspaces } from '@/db/schema/workspaces';
 import { authEnv } from '@/lib/env/env';
+import { endPersonSockets } from '@/lib/workspaces/end-person-sockets';
 import { accessControl, accessRoles } from '@/lib/workspaces/roles';
 import { log } from '@/lib/log/log';
 import { queueIdentityMail } from './auth-data';
@@ -41,6 +42,11 @@ function build() {
       log: (level, message) => log()[level === 'error' ? 'error' : 'warn']({ service: 'identity' }, message),
     },
     hooks: { before, after },
+    // Sockets outlive a request: whichever way a session ends, they end with it. Nobody waits for it, and the
+    // person's other sessions ask again for their channels.
+    databaseHooks: {
+      session: { delete: { after: async ({ userId }) => void endPersonSockets(userId) } },
+    },
     database: drizzleAdapter(authDatabase(), {
       provider: 'pg',
       transaction: true,

@@ -1,50 +1,30 @@
 import { verifyPassword } from 'better-auth/crypto';
-import { and, eq, sql } from 'drizzle-orm';
-import { uuidv7 } from 'uuidv7';
+import { and, eq } from 'drizzle-orm';
 import { authDatabase } from '@/db/client';
-import { accounts, rateLimits } from '@/db/schema/identity';
+import { accounts } from '@/db/schema/identity';
 import { AppError, forbidden } from '@/lib/errors/app-error';
+import { confirmAttempts, countConfirmAttempt, forgetConfirmAttempts } from './attempts-data';
 import type { Person } from './context';
 
-const attempts = 5;
-const windowMs = 15 * 60_000;
-
 /**
- * Asks a signed-in person for their password again, as signing does. Five wrong ones in fifteen minutes
- * close it for the rest of that time; the count stands in PostgreSQL, for every process alike.
+ * Asks a signed-in person for their password again, as signing does. Each attempt is counted before it is
+ * looked at; after five in fifteen minutes the rest of that time is closed (`limit_exceeded`, with
+ * retryAfterS), changing the password included. A right one starts anew; a wrong one is `wrong-password`.
  */
 export async function confirmPassword(person: Person, password: string): Promise<'password'> {
-  const key = `confirm:${person.id}`;
-  const database = authDatabase();
-  const now = Date.now();
-  const [limit] = await database.select().from(rateLimits).where(eq(rateLimits.key, key));
-  const fresh = limit && now - limit.lastRequest < windowMs;
-  if (fresh && limit.count >= attempts) {
-    const retryAfterS = Math.ceil((limit.lastRequest + windowMs - now) / 1000);
+  const { count, retryAfterS } = await countConfirmAttempt(person.id);
+  if (count > confirmAttempts)
     throw new AppError(
       'limit_exceeded',
       'Too many wrong passwords. Wait a quarter of an hour and try again.',
       { retryAfterS },
     );
-  }
-  const [account] = await database
+  const [account] = await authDatabase()
     .select({ password: accounts.password })
     .from(accounts)
     .where(and(eq(accounts.userId, person.id), eq(accounts.providerId, 'credential')));
   const right = account?.password ? await verifyPassword({ hash: account.password, password }) : false;
-  if (right) {
-    await database.delete(rateLimits).where(eq(rateLimits.key, key));
-    return 'password';
-  }
-  await database
-    .insert(rateLimits)
-    .values({ id: uuidv7(), key, count: 1, lastRequest: now })
-    .onConflictDoUpdate({
-      target: rateLimits.key,
-      set: {
-        count: sql`case when ${rateLimits.lastRequest} < ${now - windowMs} then 1 else ${rateLimits.count} + 1 end`,
-        lastRequest: now,
-      },
-    });
-  throw forbidden('That is not your password. Nothing was signed.', 'wrong-password');
+  if (!right) throw forbidden('That is not your password. Nothing was signed.', 'wrong-password');
+  await forgetConfirmAttempts(person.id);
+  return 'password';
 }

@@ -1,7 +1,13 @@
+import { createServer } from 'node:http';
+import type { AddressInfo } from 'node:net';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { GET, POST } from '@/app/api/auth/[...all]/route';
 import { GET as getMe } from '@/app/api/v1/me/route';
 import { signInAttempts } from '@/lib/auth/auth-hooks';
+import { confirmAttempts } from '@/lib/auth/attempts-data';
+import { confirmPassword } from '@/lib/auth/confirm-password';
+import type { AppError } from '@/lib/errors/app-error';
+import { pusher } from '@/realtime/publish';
 import { callRoute, cookieOf } from '@/tests/support/call-route';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import { makePerson, testPassword } from '@/tests/support/make-house';
@@ -211,6 +217,90 @@ describe('a new password', () => {
     expect(right.status).toBe(200);
     expect((await me(other)).status).toBe(401);
     expect((await me(cookieOf(right))).status).toBe(200);
+  });
+});
+
+describe('the password of who is signed in', () => {
+  const guess = (cookie: string, currentPassword: string) =>
+    post('/change-password', { currentPassword, newPassword: 'fourteen grey gulls at sea' }, cookie);
+
+  it('is looked at five times at most, however many ask at once', async () => {
+    const { person } = await makePerson(database, 'Parallel');
+    const tries = await Promise.allSettled(
+      Array.from({ length: 40 }, () => confirmPassword(person, 'not my password')),
+    );
+    const reasons = tries.map((one) => (one.status === 'rejected' ? (one.reason as AppError) : null));
+    expect(reasons.filter((error) => error?.reason === 'wrong-password')).toHaveLength(confirmAttempts);
+    const closed = reasons.filter((error) => error?.code === 'limit_exceeded');
+    expect(closed).toHaveLength(40 - confirmAttempts);
+    expect(closed.every((error) => error!.retryAfterS! > 0)).toBe(true);
+    await expect(confirmPassword(person, testPassword)).rejects.toMatchObject({ code: 'limit_exceeded' });
+  });
+
+  it('has one count for signing and for changing it', async () => {
+    const { person, cookie } = await makePerson(database, 'Oracle');
+    const answers = await Promise.all(Array.from({ length: 12 }, () => guess(cookie, 'not my password')));
+    const statuses = answers.map((answer) => answer.status).sort();
+    expect(statuses).toEqual([...Array<number>(5).fill(400), ...Array<number>(7).fill(429)]);
+    const closed = await guess(cookie, testPassword);
+    expect(closed.status).toBe(429);
+    expect(Number(closed.headers.get('retry-after'))).toBeGreaterThan(0);
+    await expect(confirmPassword(person, testPassword)).rejects.toMatchObject({ code: 'limit_exceeded' });
+  });
+
+  it('starts the count anew when it was right', async () => {
+    const { person, cookie } = await makePerson(database, 'Anew');
+    const wrong = () => expect(confirmPassword(person, 'wrong')).rejects.toMatchObject({ code: 'forbidden' });
+    for (let i = 1; i < confirmAttempts; i++) await wrong();
+    expect(await confirmPassword(person, testPassword)).toBe('password');
+    for (let i = 1; i < confirmAttempts; i++) await wrong();
+    expect((await guess(cookie, testPassword)).status).toBe(200);
+    await wrong();
+  });
+});
+
+describe('open sockets', () => {
+  /** Stands where the realtime server is, and says which person's sockets it was told to end. */
+  async function realtime() {
+    const told: string[] = [];
+    let heard = () => {};
+    const server = createServer((request, response) => {
+      told.push(/users\/([^/]+)\/terminate_connections/.exec(request.url ?? '')?.[1] ?? request.url!);
+      response.setHeader('content-type', 'application/json').end('{}');
+      heard();
+    });
+    await new Promise<void>((listening) => server.listen(0, '127.0.0.1', listening));
+    const client = pusher() as unknown as { config: { host: string; port: string } };
+    const before = { ...client.config };
+    Object.assign(client.config, { host: '127.0.0.1', port: String((server.address() as AddressInfo).port) });
+    return {
+      told,
+      next: () => new Promise<void>((resolve) => void (heard = resolve)),
+      close: () => {
+        Object.assign(client.config, { host: before.host, port: before.port });
+        server.close();
+      },
+    };
+  }
+
+  it.each([
+    ['/sign-out', () => ({})],
+    ['/revoke-session', (token: string) => ({ token })],
+    ['/revoke-sessions', () => ({})],
+    ['/revoke-other-sessions', () => ({})],
+  ])('end with the session: %s', async (path, body) => {
+    const { person, cookie } = await makePerson(database, 'Socket');
+    await post('/sign-in/email', { email: person.email, password: testPassword });
+    const [{ token }] = (await (await get('/list-sessions', cookie)).json()) as { token: string }[];
+    const server = await realtime();
+    try {
+      const ended = server.next();
+      expect((await post(path, body(token), cookie)).status).toBe(200);
+      await ended;
+      expect(new Set(server.told)).toEqual(new Set([person.id]));
+    } finally {
+      server.close();
+    }
   });
 });
 
