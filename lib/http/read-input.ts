@@ -2,6 +2,8 @@ import type { z } from 'zod';
 import { AppError, invalid } from '@/lib/errors/app-error';
 
 const maxBodyBytes = 1_000_000;
+/** With the u flag this matches only a half that stands alone. */
+const loneSurrogate = /\p{Surrogate}/u;
 
 /** Parses with a zod schema; what does not fit is named by JSON pointer. */
 export function parseInput<S extends z.ZodType>(schema: S, value: unknown): z.output<S> {
@@ -14,15 +16,18 @@ export function parseInput<S extends z.ZodType>(schema: S, value: unknown): z.ou
   throw invalid('Some of the input is not right. Each field says what it needs.', errors);
 }
 
-function refuseNul(value: unknown, depth = 0): void {
+/** Text that PostgreSQL or UTF-8 cannot hold: NUL, and halves of a surrogate pair. */
+function refuseUnstorable(value: unknown, depth = 0): void {
   if (depth > 200) throw invalid('The input is nested too deeply.');
   if (typeof value === 'string' && value.includes('\u0000'))
     throw invalid('The text holds a NUL character. Remove it.');
+  if (typeof value === 'string' && loneSurrogate.test(value))
+    throw invalid('The text holds half of a character (a lone surrogate). Remove it and type it again.');
   if (value && typeof value === 'object')
     for (const [key, inner] of Object.entries(value)) {
-      if (key === '__proto__' || key.includes('\u0000'))
+      if (key === '__proto__' || key.includes('\u0000') || loneSurrogate.test(key))
         throw invalid('The input holds a name that is not allowed.');
-      refuseNul(inner, depth + 1);
+      refuseUnstorable(inner, depth + 1);
     }
 }
 
@@ -41,6 +46,6 @@ export async function readJson(request: Request): Promise<unknown> {
   } catch {
     throw invalid('The body is not valid JSON.');
   }
-  refuseNul(value);
+  refuseUnstorable(value);
   return value;
 }

@@ -31,6 +31,8 @@ describe('readJson', () => {
     ['broken JSON', request('{"a":')],
     ['a NUL in a text', request('{"a":"x\\u0000"}')],
     ['a NUL in a name', request('{"x\\u0000":1}')],
+    ['half of a character in a text', request('{"a":["x\\ud83d"]}')],
+    ['half of a character in a name', request('{"\\udc00x":1}')],
     ['a prototype', request('{"__proto__":{"admin":true}}')],
     ['nesting without end', request('['.repeat(300) + ']'.repeat(300))],
   ])('refuses %s', async (_what, given) => {
