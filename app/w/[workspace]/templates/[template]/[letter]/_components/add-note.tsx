@@ -1,5 +1,6 @@
 'use client';
 
+import { useEffect, useRef } from 'react';
 import { Button } from '@/app/_components/button';
 import type { NotePin } from '@/app/_components/note-editor/note-draft';
 import { NoteComposer } from '@/app/_components/note-editor/note-composer';
@@ -57,6 +58,13 @@ export function AddNote({ isOpen, onOpen }: { isOpen: boolean; onOpen: (isOpen: 
 function PinPicker({ pin, onChange }: { pin: NotePin | null; onChange: (pin: NotePin | null) => void }) {
   const { units } = usePreferences();
   const { askForPin, placing } = useRoom();
+  const button = useRef<HTMLButtonElement>(null);
+  const asked = useRef(false);
+  useEffect(() => {
+    if (placing || !asked.current) return;
+    asked.current = false;
+    button.current?.focus();
+  }, [placing]);
   if (placing) {
     return (
       <p role="status" className="border border-verdigris bg-verdigris-wash px-3 py-2 text-sm">
@@ -76,12 +84,14 @@ function PinPicker({ pin, onChange }: { pin: NotePin | null; onChange: (pin: Not
       )}
       {askForPin ? (
         <Button
+          ref={button}
           size="small"
-          onPress={() =>
+          onPress={() => {
+            asked.current = true;
             askForPin((placed) => {
               if (placed) onChange(placed);
-            })
-          }
+            });
+          }}
         >
           {pin ? 'Move the pin' : 'Pin it to the model'}
         </Button>

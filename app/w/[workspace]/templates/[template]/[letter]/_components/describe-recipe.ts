@@ -13,7 +13,8 @@ const nameIn = (table: object, id: unknown): string => {
 function short(value: unknown, units: Units): string {
   if (typeof value !== 'number') return '';
   const digits = [0, 1, 2].find((n) => Math.abs(value - Number(value.toFixed(n))) < 1e-9) ?? 2;
-  return formatLength(value, units, Math.max(1, digits));
+  // Half a thousandth of an inch is as fine as gauges and nozzles are told apart.
+  return formatLength(value, units, units === 'in' ? 2 : Math.max(1, digits));
 }
 
 /** The two fields of the title block that the recipe fills: the sheet, and how the template is printed. */

@@ -127,7 +127,10 @@ export function Room({
     askForPin: revision.model
       ? (take) => {
           focus.ask(take);
-          document.getElementById('stage')?.scrollIntoView({ block: 'nearest' });
+          const stage = document.getElementById('stage');
+          stage?.scrollIntoView({ block: 'nearest' });
+          // The keys that bring a place to the cross-hair and take it are the stage's.
+          stage?.querySelector<HTMLElement>('[role="application"]')?.focus({ preventScroll: true });
         }
       : null,
     placing: focus.placing,
