@@ -466,6 +466,7 @@ CREATE TABLE "uploads" (
 	"template_id" uuid NOT NULL,
 	"file_name" text NOT NULL,
 	"bytes" bigint NOT NULL,
+	"last_modified" bigint,
 	"unit" text DEFAULT 'mm' NOT NULL,
 	"store_key" text NOT NULL,
 	"multipart_id" text NOT NULL,

@@ -70,6 +70,8 @@ export const uploads = pgTable(
     templateId: uuid('template_id').notNull(),
     fileName: text('file_name').notNull(),
     bytes: bigint('bytes', { mode: 'number' }).notNull(),
+    /** When the file was last written, ms since 1970 in UTC; tells a newer export of the same name and size. */
+    lastModified: bigint('last_modified', { mode: 'number' }),
     unit: text('unit').notNull().default('mm'),
     storeKey: text('store_key').notNull(),
     multipartId: text('multipart_id').notNull(),

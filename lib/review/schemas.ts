@@ -95,6 +95,8 @@ export type RevisionSummary = z.infer<typeof RevisionSummary>;
 export const StartUploadInput = z.object({
   fileName: z.string().trim().min(1).max(200),
   bytes: z.number().int().min(1, 'The file is empty.').max(500_000_000, 'At most 500 MB.'),
+  /** When the file was last written, ms since 1970 in UTC, as the browser tells it. */
+  lastModified: z.number().int().nullable().default(null),
   unit: lengthUnit.default('mm'),
 });
 export type StartUploadInput = z.infer<typeof StartUploadInput>;
@@ -103,6 +105,8 @@ export const UploadView = z.object({
   id,
   fileName: z.string(),
   bytes: z.number(),
+  /** Sending goes on only with a file of this very time, where it is known. */
+  lastModified: z.number().nullable(),
   unit: lengthUnit,
   partBytes: z.number(),
   partCount: z.number(),

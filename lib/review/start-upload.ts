@@ -21,7 +21,7 @@ export async function startUpload(
   input: unknown,
 ): Promise<UploadView> {
   requirePermission(ctx, 'revision.post');
-  const { fileName, bytes, unit } = parseInput(StartUploadInput, input);
+  const { fileName, bytes, unit, lastModified } = parseInput(StartUploadInput, input);
   const id = asId(templateId, 'template');
   const workspaceId = ctx.workspace.id;
   await withTenant(ctx, async (tx) => {
@@ -29,7 +29,7 @@ export async function startUpload(
     if ((await countUnfinished(tx, workspaceId, ctx.person.id)) >= mostUnfinished)
       throw new AppError(
         'limit_exceeded',
-        `You have ${mostUnfinished} files that were not sent to their end. Finish or cancel some of them first.`,
+        `You began ${mostUnfinished} files within a day that were not sent to their end. Finish or cancel some of them, or come back tomorrow.`,
         { reason: 'too-many-uploads' },
       );
   });
@@ -41,6 +41,7 @@ export async function startUpload(
       templateId: id,
       fileName,
       bytes,
+      lastModified,
       unit,
       storeKey,
       multipartId,

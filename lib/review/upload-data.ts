@@ -1,4 +1,4 @@
-import { and, eq, inArray, sql } from 'drizzle-orm';
+import { and, eq, gt, sql } from 'drizzle-orm';
 import { meshes, uploads } from '@/db/schema/templates';
 import type { TenantTx } from '@/db/tenant';
 import { notFound } from '@/lib/errors/app-error';
@@ -39,7 +39,7 @@ export async function changeUpload(
   return row;
 }
 
-/** Uploads of a person that still hold room in the store: not finished, not refused, not cancelled. */
+/** Files that a person began within a day and has not sent to their end; older ones are taken for given up. */
 export async function countUnfinished(tx: TenantTx, workspaceId: string, personId: string): Promise<number> {
   const rows = await tx
     .select({ id: uploads.id })
@@ -48,7 +48,8 @@ export async function countUnfinished(tx: TenantTx, workspaceId: string, personI
       and(
         eq(uploads.workspaceId, workspaceId),
         eq(uploads.createdBy, personId),
-        inArray(uploads.state, ['sending', 'reading']),
+        eq(uploads.state, 'sending'),
+        gt(uploads.createdAt, sql`now() - interval '1 day'`),
       ),
     )
     .limit(51);

@@ -18,6 +18,7 @@ export async function uploadView(tx: TenantTx, upload: UploadRow): Promise<Uploa
     id: upload.id,
     fileName: upload.fileName,
     bytes: upload.bytes,
+    lastModified: upload.lastModified,
     unit: upload.unit as UploadView['unit'],
     partBytes: upload.partBytes,
     partCount: partCountOf(upload),
