@@ -11,12 +11,14 @@ import { SectionHead } from '@/app/_components/section-head';
 import { TextArea } from '@/app/_components/text-field';
 import type { DraftView as DraftViewSchema } from '@/lib/review/schemas';
 import type { z } from 'zod';
-import { useDraft, type SaveState } from '../_hooks/use-draft';
+import { useDraft } from '../_hooks/use-draft';
 import { useUpload } from '../_hooks/use-upload';
+import { DiscardDraft } from './discard-draft';
 import { FilePanel } from './file-panel';
 import { libraryPresets, type Library } from './library-presets';
 import { RecipeForm } from './recipe-form';
 import { recipeResolver } from './recipe-resolver';
+import { SaveLine } from './save-line';
 
 type DraftView = z.infer<typeof DraftViewSchema>;
 type Props = { apiPath: string; roomPath: string; draft: DraftView; library: Library | null };
@@ -25,7 +27,7 @@ type Props = { apiPath: string; roomPath: string; draft: DraftView; library: Lib
 export function PostDesk({ apiPath, roomPath, draft, library }: Props) {
   const router = useRouter();
   const templatePath = `${apiPath}/templates/${draft.templateId}`;
-  const { state, change, save, version } = useDraft(`${templatePath}/draft`, {
+  const { state, change, save, keepMine, forget, version } = useDraft(`${templatePath}/draft`, {
     uploadId: draft.upload?.id ?? null,
     recipe: draft.recipe,
     note: draft.note,
@@ -126,7 +128,28 @@ export function PostDesk({ apiPath, roomPath, draft, library }: Props) {
               {trouble}
             </p>
           ) : null}
-          <SaveLine state={state} />
+          <SaveLine
+            state={state}
+            onTheirs={() => {
+              forget();
+              window.location.reload();
+            }}
+            onMine={() =>
+              void keepMine().then(
+                () => router.refresh(),
+                () => undefined,
+              )
+            }
+          />
+          <DiscardDraft
+            apiPath={`${templatePath}/draft`}
+            templatePath={roomPath}
+            letter={draft.nextLetter}
+            onDiscarded={() => {
+              forget();
+              upload.pause();
+            }}
+          />
         </section>
       </div>
       <div className="flex flex-col gap-8">
@@ -137,25 +160,5 @@ export function PostDesk({ apiPath, roomPath, draft, library }: Props) {
         </Caution>
       </div>
     </div>
-  );
-}
-
-function SaveLine({ state }: { state: SaveState }) {
-  if (state.kind === 'trouble')
-    return (
-      <p role="status" className="text-sm text-madder">
-        {state.stale
-          ? 'Somebody else changed this draft. Reload to see it; your text is still here.'
-          : state.detail}
-      </p>
-    );
-  return (
-    <p role="status" className="text-sm text-slate">
-      {state.kind === 'saving'
-        ? 'Saving the draft …'
-        : state.at
-          ? 'The draft is saved.'
-          : 'Changes are saved as you make them.'}
-    </p>
   );
 }

@@ -14,8 +14,8 @@ export type SaveState =
 const restMs = 800;
 
 /**
- * Keeps the draft on the server in step with the form: saves when typing rests, one save at a time, each
- * naming the version it read. A draft that somebody else changed is never overwritten.
+ * Keeps the draft on the server in step with the form: saves when typing rests and when the page is left, one
+ * save at a time, each naming the version it read. Only `keepMine` overwrites what somebody else changed.
  */
 export function useDraft(path: string, initial: DraftFields & { version: number }) {
   const [state, setState] = useState<SaveState>({ kind: 'saved', at: null });
@@ -62,6 +62,23 @@ export function useDraft(path: string, initial: DraftFields & { version: number 
     [save],
   );
 
+  /** Takes the version that the server has now and saves this form over it. */
+  const keepMine = useCallback(async (): Promise<void> => {
+    try {
+      version.current = (await api<Saved>(path)).version;
+    } catch (error) {
+      setState({ kind: 'trouble', detail: explainError(error).detail, stale: true });
+      throw error;
+    }
+    await save();
+  }, [path, save]);
+
+  /** Gives up what was not saved: nothing warns of it or saves it later. */
+  const forget = useCallback(() => {
+    if (timer.current) clearTimeout(timer.current);
+    dirty.current = false;
+  }, []);
+
   useEffect(() => {
     const warn = (event: BeforeUnloadEvent) => {
       if (dirty.current) event.preventDefault();
@@ -72,9 +89,9 @@ export function useDraft(path: string, initial: DraftFields & { version: number 
     return () => {
       window.removeEventListener('beforeunload', warn);
       window.removeEventListener('online', again);
-      if (timer.current) clearTimeout(timer.current);
+      void save().catch(() => undefined);
     };
   }, [save]);
 
-  return { state, change, save, version };
+  return { state, change, save, keepMine, forget, version };
 }

@@ -1,9 +1,10 @@
 'use client';
 
 import { useCallback, useEffect, useRef, useState } from 'react';
-import { api, explainError } from '@/app/_components/api-client';
+import { api, ApiError, explainError } from '@/app/_components/api-client';
 import type { PresignedParts, UploadView as UploadViewSchema } from '@/lib/review/schemas';
 import type { z } from 'zod';
+import { isSameFile } from './is-same-file';
 import { sendPart } from './send-part';
 
 type UploadView = z.infer<typeof UploadViewSchema>;
@@ -111,6 +112,9 @@ export function useUpload(
         take(await api<UploadView>(`${base}/complete`, { method: 'POST', body: {} }));
       } catch (error) {
         if (!controller.signal.aborted) setTrouble(explainError(error).detail);
+        // The server has forgotten the parts: Resume sends them all.
+        if (error instanceof ApiError && error.reason === 'parts-missing')
+          await api<UploadView>(base).then(take, () => undefined);
       } finally {
         if (stop.current === controller) stop.current = null;
         setRunning(false);
@@ -126,7 +130,7 @@ export function useUpload(
       setTrouble(null);
       try {
         const made = await api<UploadView>(`${workspacePath}/templates/${templateId}/uploads`, {
-          body: { fileName: picked.name, bytes: picked.size, unit },
+          body: { fileName: picked.name, bytes: picked.size, lastModified: picked.lastModified, unit },
         });
         take(made);
         void run(made);
@@ -145,8 +149,10 @@ export function useUpload(
       if (!upload) return;
       const source = picked ?? file.current;
       if (!source) return;
-      if (source.name !== upload.fileName || source.size !== upload.bytes) {
-        setTrouble(`That is another file. Pick ${upload.fileName} to go on, or cancel and start anew.`);
+      if (!isSameFile(source, upload)) {
+        setTrouble(
+          `That is another file, or it was changed since. Pick ${upload.fileName} as it was to go on, or cancel and start anew.`,
+        );
         return;
       }
       hold(source);
@@ -159,12 +165,15 @@ export function useUpload(
 
   const cancel = useCallback(async () => {
     stop.current?.abort();
-    if (upload) {
+    if (upload && (upload.state === 'sending' || upload.state === 'reading')) {
       try {
         await api(`${workspacePath}/uploads/${upload.id}/cancel`, { method: 'POST', body: {} });
       } catch (error) {
-        setTrouble(explainError(error).detail);
-        return;
+        // A colleague's file stays theirs; this draft just no longer names it.
+        if (!(error instanceof ApiError && error.reason === 'not-your-upload')) {
+          setTrouble(explainError(error).detail);
+          return;
+        }
       }
     }
     hold(null);
