@@ -9,17 +9,20 @@ import type { UploadView } from './schemas';
 import { changeUpload, lockUpload } from './upload-data';
 import { uploadView } from './upload-view';
 
-/** Gives up a file that has not become a mesh; one that has stays. Asked twice, it answers the same. */
+/**
+ * Gives up a file that is still on its way; only its sender may. One that has come to its end stays as it is,
+ * whoever asks. Asked twice, it answers the same.
+ */
 export async function cancelUpload(ctx: WorkspaceContext, uploadId: string): Promise<UploadView> {
   requirePermission(ctx, 'revision.post');
   const id = asId(uploadId, 'upload');
   const { view, abort } = await withTenant(ctx, async (tx) => {
     const upload = await lockUpload(tx, ctx.workspace.id, id);
+    // Nothing is on its way any more: a draft that no longer wants the file names another one or none.
+    if (upload.state !== 'sending' && upload.state !== 'reading')
+      return { view: await uploadView(tx, upload), abort: null };
     requireSender(ctx, upload);
     const { templateId } = upload;
-    // What was read is a mesh for good; a draft that no longer wants it names another file or none.
-    if (upload.state === 'cancelled' || upload.state === 'ready')
-      return { view: await uploadView(tx, upload), abort: null };
     const cancelled = await changeUpload(tx, upload, { state: 'cancelled' });
     await appendEntry(tx, ctx, {
       action: 'upload.cancelled',

@@ -5,6 +5,7 @@ import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
 import { conflict } from '@/lib/errors/app-error';
 import { enqueueJob } from '@/lib/jobs/enqueue-job';
 import { queueLive } from '@/lib/jobs/queue-live';
+import { isPartAmiss, MissingObject } from '@/lib/storage/guard-store';
 import { store } from '@/lib/storage/store';
 import { asId } from './as-id';
 import { requireSender, requireSending } from './require-sending';
@@ -29,13 +30,23 @@ export async function completeUpload(ctx: WorkspaceContext, uploadId: string): P
       `The store does not have the whole file yet: ${missing} of ${partCountOf(upload)} parts are missing. Send them first.`,
     );
   const files = store();
-  await files.completeMultipart(upload.storeKey, upload.multipartId, upload.parts);
+  try {
+    await files.completeMultipart(upload.storeKey, upload.multipartId, upload.parts);
+  } catch (error) {
+    if (isPartAmiss(error)) return forgetParts(ctx, id);
+    if (error instanceof MissingObject) return refuseLost(ctx, id);
+    throw error;
+  }
   const there = await files.head(upload.storeKey);
   return withTenant(ctx, async (tx) => {
     const now = await lockUpload(tx, workspaceId, id);
     if (now.state === 'reading' || now.state === 'ready') return uploadView(tx, now);
     requireSending(ctx, now);
-    if (there?.bytes !== upload.bytes) return refuseLength(tx, ctx, now, there?.bytes ?? 0);
+    if (there?.bytes !== upload.bytes)
+      return refuse(tx, ctx, now, {
+        code: 'length',
+        message: `The store received ${there?.bytes ?? 0} bytes, but the file was announced with ${upload.bytes}. Send it again.`,
+      });
     const reading = await changeUpload(tx, now, { state: 'reading' });
     await enqueueJob(tx, ctx, {
       kind: 'read-upload',
@@ -53,17 +64,42 @@ export async function completeUpload(ctx: WorkspaceContext, uploadId: string): P
   });
 }
 
-async function refuseLength(
+/** The store has other parts than we were told: all are sent again, under the same upload. */
+async function forgetParts(ctx: WorkspaceContext, id: string): Promise<UploadView> {
+  const joined = await withTenant(ctx, async (tx) => {
+    const now = await lockUpload(tx, ctx.workspace.id, id);
+    if (now.state === 'reading' || now.state === 'ready') return uploadView(tx, now);
+    requireSending(ctx, now);
+    await changeUpload(tx, now, { parts: [] });
+    return null;
+  });
+  if (joined) return joined;
+  throw conflict(
+    'parts-missing',
+    'The store does not have the parts of this file as they were sent. Send them again.',
+  );
+}
+
+/** The store knows nothing of this upload any more: it was cleared away there before it was complete. */
+async function refuseLost(ctx: WorkspaceContext, id: string): Promise<UploadView> {
+  return withTenant(ctx, async (tx) => {
+    const now = await lockUpload(tx, ctx.workspace.id, id);
+    if (now.state === 'reading' || now.state === 'ready') return uploadView(tx, now);
+    requireSending(ctx, now);
+    return refuse(tx, ctx, now, {
+      code: 'lost',
+      message: 'The store no longer has the parts of this file: sending took too long. Send it again.',
+    });
+  });
+}
+
+async function refuse(
   tx: TenantTx,
   ctx: WorkspaceContext,
   upload: UploadRow,
-  bytes: number,
+  why: { code: string; message: string },
 ): Promise<UploadView> {
-  const refusal = {
-    code: 'length',
-    message: `The store received ${bytes} bytes, but the file was announced with ${upload.bytes}. Send it again.`,
-    reasons: [],
-  };
+  const refusal = { ...why, reasons: [] };
   const refused = await changeUpload(tx, upload, { state: 'refused', refusal });
   await appendEntry(tx, ctx, {
     action: 'upload.refused',

@@ -1,8 +1,8 @@
-import { and, asc, count, desc, eq, inArray, min, ne, sql } from 'drizzle-orm';
+import { and, asc, count, desc, eq, inArray, isNotNull, min, ne, or, sql } from 'drizzle-orm';
 import { checkRuns, findings, waivers } from '@/db/schema/checks';
 import { notes, placements, threads } from '@/db/schema/docket';
 import { gates, signatures } from '@/db/schema/gates';
-import { drafts, revisions, templates } from '@/db/schema/templates';
+import { drafts, meshes, revisions, templates } from '@/db/schema/templates';
 import { auditEntries } from '@/db/schema/trail';
 import { members, workspaces } from '@/db/schema/workspaces';
 import type { TenantTx } from '@/db/tenant';
@@ -44,6 +44,7 @@ export async function gatesToSign(tx: TenantTx, personId: string) {
       revisions,
       and(eq(revisions.workspaceId, gates.workspaceId), eq(revisions.id, gates.revisionId)),
     )
+    .innerJoin(meshes, and(eq(meshes.workspaceId, revisions.workspaceId), eq(meshes.id, revisions.meshId)))
     .innerJoin(templates, ofTemplate)
     .innerJoin(workspaces, ofWorkspace)
     .innerJoin(members, membership(personId))
@@ -53,7 +54,7 @@ export async function gatesToSign(tx: TenantTx, personId: string) {
         eq(revisions.state, 'in_review'),
         sql`${gates.rule}->>'kind' = 'people'`,
         sql`${gates.rule}->'roles' ? ${members.role}`,
-        sql`not ((${gates.rule}->>'fourEyes')::boolean and ${revisions.authorId} = ${personId})`,
+        sql`not ((${gates.rule}->>'fourEyes')::boolean and ${personId} in (${revisions.authorId}, ${meshes.createdBy}))`,
         sql`not exists (select 1 from ${signatures} where ${signatures.workspaceId} = ${gates.workspaceId}
           and ${signatures.gateId} = ${gates.id} and ${signatures.signerId} = ${personId})`,
         sql`not exists (select 1 from ${placements} join ${threads} on ${threads.workspaceId} = ${placements.workspaceId}
@@ -147,6 +148,7 @@ export async function returnedRevisions(tx: TenantTx, personId: string) {
     .limit(most);
 }
 
+/** Drafts that this person began and that hold something: opening the page alone makes nothing to do. */
 export async function openDrafts(tx: TenantTx, personId: string) {
   const { letter: _letter, ...draftPlace } = place;
   return tx
@@ -158,7 +160,7 @@ export async function openDrafts(tx: TenantTx, personId: string) {
     )
     .innerJoin(workspaces, eq(workspaces.id, drafts.workspaceId))
     .innerJoin(members, and(eq(members.workspaceId, drafts.workspaceId), eq(members.userId, personId)))
-    .where(eq(drafts.authorId, personId))
+    .where(and(eq(drafts.authorId, personId), or(ne(drafts.version, 1), isNotNull(drafts.uploadId))))
     .orderBy(asc(drafts.changedAt))
     .limit(most);
 }

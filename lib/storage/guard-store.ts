@@ -21,6 +21,12 @@ export function isMissing(error: unknown): boolean {
   );
 }
 
+/** Whether the store does not have a part as it was told: lost, replaced, or of another ETag. */
+export function isPartAmiss(error: unknown): boolean {
+  const { name } = error as StoreFault;
+  return name === 'InvalidPart' || name === 'InvalidPartOrder';
+}
+
 /** Runs a call to the store; what fails for want of the store says so, and that nothing was lost. */
 export async function guardStore<T>(key: string, call: () => Promise<T>): Promise<T> {
   try {

@@ -1,5 +1,5 @@
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
-import type { WorkspaceContext } from '@/lib/auth/context';
+import { personContext, type WorkspaceContext } from '@/lib/auth/context';
 import { fillRecipe } from '@/lib/formability/fill-recipe';
 import { cancelUpload } from '@/lib/review/cancel-upload';
 import { changeTemplate } from '@/lib/review/change-template';
@@ -14,7 +14,9 @@ import { refuseUpload } from '@/lib/review/record-upload';
 import { saveDraft } from '@/lib/review/save-draft';
 import { startUpload } from '@/lib/review/start-upload';
 import { viewTemplate } from '@/lib/review/view-template';
+import { viewToday } from '@/lib/review/view-today';
 import { viewUpload } from '@/lib/review/view-upload';
+import { store } from '@/lib/storage/store';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import { blockStl, entries, fingerprint, newTemplate, sendMesh, takeJob } from '@/tests/support/factory';
 import { makeHouse, type House } from '@/tests/support/make-house';
@@ -136,6 +138,21 @@ describe('drafts', () => {
     );
   });
 
+  it('are on the desk of whoever began them once they hold something', async () => {
+    const templateId = await newTemplate(designer);
+    const { recipe, version } = await openDraft(designer, templateId);
+    const drafts = async (ctx: WorkspaceContext) =>
+      (await viewToday(personContext(ctx.person))).items.filter(
+        (item) => item.kind === 'draft' && item.path.includes(templateId),
+      );
+    expect(await drafts(designer)).toEqual([]);
+    await saveDraft(designer, templateId, { uploadId: null, recipe, note: 'Begun.', version });
+    expect(await drafts(designer)).toHaveLength(1);
+    expect(await drafts(lead)).toEqual([]);
+    await discardDraft(designer, templateId);
+    expect(await drafts(designer)).toEqual([]);
+  });
+
   it('take a file of the same template only', async () => {
     const one = await newTemplate(designer);
     const two = await newTemplate(designer);
@@ -227,6 +244,81 @@ describe('uploads', () => {
     await refused(() => completeUpload(designer, upload.id), { reason: 'upload-not-sending' });
     const ready = await sendMesh(designer, templateId);
     expect((await cancelUpload(designer, ready)).state).toBe('ready');
+  });
+
+  it('that came to their end are let be, whoever gives them up', async () => {
+    const templateId = await newTemplate(designer);
+    const ready = await sendMesh(designer, templateId);
+    const before = await fingerprint(database, house.workspace.id);
+    expect((await cancelUpload(lead, ready)).state).toBe('ready');
+    expect(await fingerprint(database, house.workspace.id)).toBe(before);
+    for (const state of ['refused', 'cancelled']) {
+      const upload = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: 100 });
+      await database.query('update uploads set state = $2 where id = $1', [upload.id, state]);
+      const then = await fingerprint(database, house.workspace.id);
+      expect((await cancelUpload(lead, upload.id)).state).toBe(state);
+      expect(await fingerprint(database, house.workspace.id)).toBe(then);
+    }
+  });
+
+  it('keep when the file was last written, where it is known', async () => {
+    const templateId = await newTemplate(designer);
+    const lastModified = 1_790_000_000_123;
+    const known = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: 100, lastModified });
+    expect((await viewUpload(designer, known.id)).lastModified).toBe(lastModified);
+    const unknown = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: 100 });
+    expect((await viewUpload(designer, unknown.id)).lastModified).toBeNull();
+  });
+
+  it('that were begun and left stop new ones for a day only', async () => {
+    const templateId = await newTemplate(lead);
+    const start = () => startUpload(lead, templateId, { fileName: 'a.stl', bytes: 100 });
+    const first = await start();
+    for (let begun = 1; begun < 20; begun++) await start();
+    await refused(start, { code: 'limit_exceeded', reason: 'too-many-uploads' });
+    await database.query("update uploads set created_at = now() - interval '25 hours' where id = $1", [
+      first.id,
+    ]);
+    const second = await start();
+    await refused(start, { reason: 'too-many-uploads' });
+    await database.query("update uploads set state = 'reading' where id = $1", [second.id]);
+    expect((await start()).state).toBe('sending');
+  });
+
+  it('forget their parts when the store has other ones, and can be sent again', async () => {
+    const templateId = await newTemplate(designer);
+    const bytes = blockStl(11);
+    const upload = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: bytes.length });
+    const send = async () => {
+      const { parts } = await presignParts(designer, upload.id, { parts: [1] });
+      const sent = await fetch(parts[0].url, { method: 'PUT', body: Buffer.from(bytes) });
+      return sent.headers.get('etag');
+    };
+    await send();
+    await markPartDone(designer, upload.id, { number: 1, etag: '"00000000000000000000000000000000"' });
+    await expect(completeUpload(designer, upload.id)).rejects.toMatchObject({
+      code: 'conflict',
+      reason: 'parts-missing',
+      message: expect.stringContaining('Send them again'),
+    });
+    expect(await viewUpload(designer, upload.id)).toMatchObject({ state: 'sending', partsDone: [] });
+    await markPartDone(designer, upload.id, { number: 1, etag: await send() });
+    expect((await completeUpload(designer, upload.id)).state).toBe('reading');
+  });
+
+  it('are refused in words when the store has cleared them away', async () => {
+    const templateId = await newTemplate(designer);
+    const upload = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: 684 });
+    await markPartDone(designer, upload.id, { number: 1, etag: '"00000000000000000000000000000000"' });
+    const { rows } = await database.query('select store_key, multipart_id from uploads where id = $1', [
+      upload.id,
+    ]);
+    await store().abortMultipart(rows[0].store_key, rows[0].multipart_id);
+    const answer = await completeUpload(designer, upload.id);
+    expect(answer).toMatchObject({ state: 'refused', refusal: { code: 'lost' } });
+    expect(answer.refusal?.message).toContain('Send it again.');
+    const [entry] = await entries(database, house.workspace.id, 1);
+    expect(entry).toMatchObject({ action: 'upload.refused', subject_id: upload.id });
   });
 
   it.each([
