@@ -8,7 +8,7 @@ type Named = { workspaceId: string; jobId: string };
 type Held = Named & { attempt: number };
 
 export const leaseS = 30;
-/** Tries before a job is given up; those that a stopping worker handed back do not count. */
+/** Tries before a job is given up; those that were handed back unspent do not count. */
 export const triesAllowed = 3;
 
 const named = ({ workspaceId, jobId }: Named) => and(eq(jobs.workspaceId, workspaceId), eq(jobs.id, jobId));
@@ -97,7 +97,7 @@ export async function markDone(tx: TenantTx, job: Held): Promise<boolean> {
   return rows.length > 0;
 }
 
-/** Back to the queue: after a failed try, or unspent from a worker that stops. */
+/** Back to the queue: after a failed try, or unspent, from a worker that stops or finds a service away. */
 export async function markQueued(
   tx: TenantTx,
   job: Held & { error: string | null; unspent: boolean },

@@ -1,5 +1,6 @@
 import { withTenant } from '@/db/tenant';
 import { jobContext } from '@/lib/auth/context';
+import { AppError } from '@/lib/errors/app-error';
 import { log } from '@/lib/log/log';
 import type { EnginePool } from './engine-pool';
 import { sendMessage, type JobMessage } from './enqueue-job';
@@ -18,6 +19,9 @@ import {
 import { progressReporter } from './report-progress';
 
 const heartbeatMs = 10_000;
+/** Age up to which a job waits for a service that is away without spending a try, and its longest pause. */
+const patienceMs = 60 * 60_000;
+const longestPauseS = 90;
 
 export type JobRunner = {
   worker: string;
@@ -114,6 +118,14 @@ async function settleFailure(work: JobAtWork, handler: JobHandler, error: unknow
 
   log().error({ job: job.id, kind: job.kind, attempt: job.attempt, err: error }, 'job failed');
   const tries = job.attempt - job.handedBack;
+  // A store that is away says nothing against the job: it waits, for as long as an outage may reasonably last.
+  const young = Date.now() - job.createdAt.getTime() < patienceMs;
+  if (error instanceof AppError && error.code === 'unavailable' && young)
+    return requeue(work, {
+      error: reasonOf(error),
+      unspent: true,
+      afterS: Math.min(2 ** job.attempt, longestPauseS),
+    });
   if (error instanceof PermanentFailure || tries >= triesAllowed)
     return giveUp(work, handler, reasonOf(error));
   await requeue(work, { error: reasonOf(error), unspent: false, afterS: 2 ** tries });
@@ -130,12 +142,20 @@ async function requeue(
   });
 }
 
-/** The people concerned are told first: were this process to die in between, the next try tells them again. */
+/** How often those concerned are tried to be told before the job is closed without them. */
+const farewells = 10;
+
+/**
+ * The people concerned are told first. Where that fails, or this process dies in between, the job stays held:
+ * its lease runs out, and the next try comes straight here.
+ */
 async function giveUp(work: JobAtWork, handler: JobHandler, reason: string): Promise<void> {
   const { ctx, job, fence } = work;
   try {
     await handler.giveUp(work, reason);
-  } finally {
-    await withTenant(ctx, (tx) => markFailed(tx, { workspaceId: job.workspaceId, ...fence, error: reason }));
+  } catch (error) {
+    if (job.attempt - job.handedBack < triesAllowed + farewells) throw error;
+    log().error({ err: error, job: job.id }, 'job closed without telling those concerned');
   }
+  await withTenant(ctx, (tx) => markFailed(tx, { workspaceId: job.workspaceId, ...fence, error: reason }));
 }
