@@ -24,19 +24,26 @@ export async function withTenant<T>(
   ctx: { readonly scope: Scope },
   fn: (tx: TenantTx) => Promise<T>,
 ): Promise<T> {
-  const { scope } = ctx;
+  return appDatabase().transaction(async (tx) => {
+    await enterScope(tx as unknown as TenantTx, ctx.scope);
+    return fn(tx as unknown as TenantTx);
+  });
+}
+
+/**
+ * Changes what the rest of a transaction sees. For a verb that goes through several workspaces, or whose own
+ * change gives or takes the sight of them; each scope comes from a context, as in `withTenant`.
+ */
+export async function enterScope(tx: TenantTx, scope: Scope): Promise<void> {
   const person = 'personId' in scope ? scope.personId : '';
   const workspace = scope.kind === 'workspace' ? scope.workspaceId : '';
   const studio = scope.kind === 'studio' ? scope.studioId : '';
   const jobWorkspace = scope.kind === 'job' ? scope.workspaceId : '';
   const jobStudio = scope.kind === 'studio-job' ? scope.studioId : '';
-  return appDatabase().transaction(async (tx) => {
-    await tx.execute(sql`select
-      set_config('app.person', ${person}, true),
-      set_config('app.workspace', ${workspace}, true),
-      set_config('app.studio', ${studio}, true),
-      set_config('app.job_workspace', ${jobWorkspace}, true),
-      set_config('app.job_studio', ${jobStudio}, true)`);
-    return fn(tx as unknown as TenantTx);
-  });
+  await tx.execute(sql`select
+    set_config('app.person', ${person}, true),
+    set_config('app.workspace', ${workspace}, true),
+    set_config('app.studio', ${studio}, true),
+    set_config('app.job_workspace', ${jobWorkspace}, true),
+    set_config('app.job_studio', ${jobStudio}, true)`);
 }

@@ -27,6 +27,17 @@ export async function findMembership(personId: string, workspace: string) {
   return row ?? null;
 }
 
+/** Every membership of a person with what a context needs, in the order of the workspaces' ids. */
+export async function findMemberships(personId: string) {
+  return authDatabase()
+    .select({ role: members.role, workspace: workspaces, studio: studios })
+    .from(members)
+    .innerJoin(workspaces, eq(workspaces.id, members.workspaceId))
+    .innerJoin(studios, eq(studios.id, workspaces.studioId))
+    .where(eq(members.userId, personId))
+    .orderBy(asc(workspaces.id));
+}
+
 export async function findStudioMembership(personId: string, studio: string) {
   const named = uuid.test(studio) ? eq(studios.id, studio) : eq(studios.slug, studio);
   const [row] = await authDatabase()

@@ -28,6 +28,7 @@ const sentences: Record<string, (d: Detail, at: Place) => string> = {
   'person.joined': (d) => `joined as ${word(d.role)}`,
   'person.removed': (d) => (d.left ? 'left the workspace' : `removed ${word(d.name)}`),
   'person.role-changed': (d) => `changed ${word(d.name)} from ${word(d.from)} to ${word(d.to)}`,
+  'person.renamed': (d) => `changed their name from ${word(d.from)} to ${word(d.to)}`,
   'invitation.cancelled': (d) => `cancelled the invitation of ${word(d.email)}`,
   'template.created': (d) => `opened template ${word(d.number)} ${quoted(d.title)}`,
   'template.changed': (d, at) => `changed ${at.number}: ${changed(d)}`,
@@ -52,6 +53,7 @@ const sentences: Record<string, (d: Detail, at: Place) => string> = {
   'check.finished': (d, at) =>
     `checked ${revision(d, at)}: ${word(d.verdict)}${list(d.failing) ? ` (${list(d.failing)})` : ''}${passed(d)}`,
   'check.failed': (d, at) => `could not check ${revision(d, at)}: ${word(d.reason)}`,
+  'check.ordered-again': (d, at) => `had ${revision(d, at)} checked again`,
   'finding.waived': (d, at) =>
     `waived the failing check "${word(d.checkId)}" on ${revision(d, at)}: ${word(d.reason)}${passed(d)}`,
   'thread.opened': (d, at) => `noted on ${revision(d, at)}: ${quoted(d.text)}`,

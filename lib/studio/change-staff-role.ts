@@ -4,7 +4,8 @@ import { notFound } from '@/lib/errors/app-error';
 import { parseInput } from '@/lib/http/read-input';
 import { findPersonName } from '@/lib/workspaces/people-data';
 import { StaffRoleInput } from '@/lib/workspaces/schemas';
-import { insertStudioEntry, lockStaff, updateStaffRole } from './studio-data';
+import { insertStudioEntry, lockStaff, updateStaffRole, workspacesOfStudio } from './studio-data';
+import { tellWorkspaces } from './tell-workspaces';
 
 /**
  * A lead gives staff another role, in every workspace at once. The database keeps the last lead: demoting
@@ -18,8 +19,10 @@ export async function changeStaffRole(ctx: StudioContext, personId: string, inpu
     if (!staff) throw notFound('person');
     if (staff.role === role) return;
     const person = await findPersonName(tx, personId);
-    const entry = { personId, name: person?.name ?? '', from: staff.role, to: role };
-    await insertStudioEntry(tx, ctx, 'person.role-changed', entry);
+    const detail = { name: person?.name ?? '', from: staff.role, to: role };
+    const workspaces = await workspacesOfStudio(tx, ctx.studio.id);
+    await insertStudioEntry(tx, ctx, 'person.role-changed', { personId, ...detail });
     await updateStaffRole(tx, ctx.studio.id, personId, role);
+    await tellWorkspaces(tx, ctx, workspaces, { action: 'person.role-changed', personId, detail });
   });
 }

@@ -1,5 +1,6 @@
 import { uuidv7 } from 'uuidv7';
-import { withTenant } from '@/db/tenant';
+import { enterScope, withTenant } from '@/db/tenant';
+import { studioContext } from '@/lib/auth/context';
 import type { HeldInvitation, InvitationContext } from '@/lib/auth/enter-by-invitation';
 import { conflict, notFound } from '@/lib/errors/app-error';
 import { refuseClosed } from '@/lib/workspaces/invitation-state';
@@ -9,7 +10,9 @@ import {
   lockStaff,
   lockStaffInvitation,
   settleStaffInvitation,
+  workspacesOfStudio,
 } from './studio-data';
+import { tellWorkspaces } from './tell-workspaces';
 
 /** Writes the staff row of an accepted invitation; the row lock lets one of two clicks through. */
 export async function joinStudio(
@@ -32,7 +35,13 @@ export async function joinStudio(
     const { role } = invitation;
     await insertStaff(tx, { id: uuidv7(), studioId: studio.id, userId: ctx.person.id, role });
     await settleStaffInvitation(tx, studio.id, invitation.id, 'accepted');
-    const entry = { personId: ctx.person.id, name: ctx.person.name, role, invitationId: invitation.id };
-    await insertStudioEntry(tx, { person: ctx.person, studio }, 'person.joined', entry);
+    const personId = ctx.person.id;
+    const detail = { name: ctx.person.name, role, invitationId: invitation.id };
+    await insertStudioEntry(tx, { person: ctx.person, studio }, 'person.joined', { personId, ...detail });
+    // From here on they are staff, and see the studio's workspaces as staff do.
+    const inside = studioContext({ person: ctx.person, studio, role });
+    await enterScope(tx, inside.scope);
+    const workspaces = await workspacesOfStudio(tx, studio.id);
+    await tellWorkspaces(tx, inside, workspaces, { action: 'person.joined', personId, detail });
   });
 }

@@ -3,7 +3,8 @@ import { requireStudioRole, type StudioContext } from '@/lib/auth/context';
 import { notFound } from '@/lib/errors/app-error';
 import { endPersonSockets } from '@/lib/workspaces/end-person-sockets';
 import { findPersonName } from '@/lib/workspaces/people-data';
-import { deleteStaff, insertStudioEntry, lockStaff } from './studio-data';
+import { deleteStaff, insertStudioEntry, lockStaff, workspacesOfStudio } from './studio-data';
+import { tellWorkspaces } from './tell-workspaces';
 
 /**
  * Ends a person's work at the studio, in every workspace at once: a lead for anyone, anyone for themselves.
@@ -16,10 +17,12 @@ export async function removeStaff(ctx: StudioContext, personId: string): Promise
     if (!staff) throw notFound('person');
     const person = await findPersonName(tx, personId);
     const left = personId === ctx.person.id;
-    const entry = { personId, name: person?.name ?? '', role: staff.role, left };
-    await insertStudioEntry(tx, ctx, 'person.removed', entry);
-    // Last: who leaves loses sight of the studio with this row.
+    const detail = { name: person?.name ?? '', role: staff.role, left };
+    // Before the row goes: who leaves loses sight of the studio with it.
+    const workspaces = await workspacesOfStudio(tx, ctx.studio.id);
+    await insertStudioEntry(tx, ctx, 'person.removed', { personId, ...detail });
     await deleteStaff(tx, ctx.studio.id, personId);
+    await tellWorkspaces(tx, ctx, workspaces, { action: 'person.removed', personId, detail });
   });
   await endPersonSockets(personId);
 }

@@ -1,7 +1,7 @@
 import { and, asc, eq, sql } from 'drizzle-orm';
 import { users } from '@/db/schema/identity';
 import { studioEntries } from '@/db/schema/trail';
-import { studioInvitations, studioMembers, studios } from '@/db/schema/workspaces';
+import { studioInvitations, studioMembers, studios, workspaces } from '@/db/schema/workspaces';
 import type { TenantTx } from '@/db/tenant';
 import type { Person, Studio } from '@/lib/auth/context';
 import type { StudioRole } from '@/lib/workspaces/roles';
@@ -26,6 +26,11 @@ export async function insertStudioEntry(
     action,
     detail,
   });
+}
+
+/** The studio's workspaces in the order of their ids, which is the order in which their chains are locked. */
+export async function workspacesOfStudio(tx: TenantTx, studioId: string) {
+  return tx.select().from(workspaces).where(eq(workspaces.studioId, studioId)).orderBy(asc(workspaces.id));
 }
 
 export async function insertStaff(

@@ -3,11 +3,14 @@ import {
   DELETE as removeRoute,
   PATCH as changeRoute,
 } from '@/app/api/v1/studios/[studio]/people/[person]/route';
-import type { StudioContext } from '@/lib/auth/context';
+import { personContext, type StudioContext } from '@/lib/auth/context';
 import { enterStudio } from '@/lib/auth/enter';
 import { changeStaffRole } from '@/lib/studio/change-staff-role';
 import { listStaff } from '@/lib/studio/list-staff';
 import { removeStaff } from '@/lib/studio/remove-staff';
+import { createWorkspace } from '@/lib/workspaces/create-workspace';
+import { updateMe } from '@/lib/workspaces/update-me';
+import { workspaceChannel } from '@/realtime/channels';
 import { callRoute } from '@/tests/support/call-route';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import { joinStudio, makeHouse, type House } from '@/tests/support/make-house';
@@ -66,6 +69,86 @@ describe('staff of a studio', () => {
     });
     await expect(removeStaff(ctx, lead.person.id)).rejects.toMatchObject({ code: 'forbidden' });
     expect((await house.enterStudio(role)).role).toBe(role);
+  });
+});
+
+describe('a change of staff', () => {
+  it('stands in the chain of every workspace of the studio, and is told there', async () => {
+    const second = await createWorkspace(lead, { name: 'Second firm', code: 'ZZZ' });
+    const joined = await joinStudio(database, lead, 'designer');
+    const { id, name } = joined.person;
+    await changeStaffRole(lead, id, { role: 'producer' });
+    await removeStaff(await enterStudio(joined.person, house.studio.id), id);
+    for (const workspaceId of [house.workspace.id, second.id]) {
+      const { rows } = await database.query(
+        `select action, actor_id as actor, detail - 'invitationId' as detail from audit_entries
+         where workspace_id = $1 and subject_id = $2 order by seq`,
+        [workspaceId, id],
+      );
+      expect(rows).toEqual([
+        { action: 'person.joined', actor: id, detail: { name, role: 'designer' } },
+        {
+          action: 'person.role-changed',
+          actor: lead.person.id,
+          detail: { name, from: 'designer', to: 'producer' },
+        },
+        { action: 'person.removed', actor: id, detail: { name, role: 'producer', left: true } },
+      ]);
+      const told = await database.query<{ n: number }>(
+        `select count(*)::int as n from outbox where workspace_id = $1 and payload->>'name' = 'people.changed'
+           and payload->>'channel' = $2`,
+        [workspaceId, workspaceChannel(workspaceId)],
+      );
+      expect(told.rows[0].n).toBeGreaterThanOrEqual(3);
+    }
+  });
+
+  it('of several people at once leaves no chain forked and nobody waiting for the other', async () => {
+    await createWorkspace(lead, { name: 'Second firm', code: 'ZZZ' });
+    const { designer, producer } = house.people;
+    await Promise.all([
+      changeStaffRole(lead, designer.person.id, { role: 'producer' }),
+      changeStaffRole(lead, producer.person.id, { role: 'designer' }),
+      updateMe(personContext(lead.person), { name: 'Lead Renamed' }),
+    ]);
+    const { rows } = await database.query(
+      `select e.workspace_id, count(*)::int as n, max(h.seq) as seq from audit_entries e
+         join audit_heads h using (workspace_id) join workspaces w on w.id = e.workspace_id
+       where w.studio_id = $1 group by e.workspace_id`,
+      [house.studio.id],
+    );
+    expect(rows).toHaveLength(2);
+    for (const row of rows as { n: number; seq: number }[]) expect(row.n).toBe(row.seq);
+  });
+});
+
+describe('a new name', () => {
+  const renames = async (personId: string) =>
+    (
+      await database.query(
+        `select workspace_id, detail from audit_entries where action = 'person.renamed' and subject_id = $1
+         order by workspace_id`,
+        [personId],
+      )
+    ).rows;
+
+  it('is written into every workspace of the person, once', async () => {
+    const second = await createWorkspace(lead, { name: 'Second firm', code: 'ZZZ' });
+    const { person } = house.people.designer;
+    await updateMe(personContext(person), { name: 'Somebody Else', units: 'in' });
+    const detail = { from: person.name, to: 'Somebody Else' };
+    expect(await renames(person.id)).toEqual(
+      [house.workspace.id, second.id].sort().map((workspace_id) => ({ workspace_id, detail })),
+    );
+    const { rows } = await database.query('select name, units from users where id = $1', [person.id]);
+    expect(rows).toEqual([{ name: 'Somebody Else', units: 'in' }]);
+  });
+
+  it('that is the old one, or none, is not', async () => {
+    const { person } = house.people.designer;
+    await updateMe(personContext(person), { name: person.name, units: 'in' });
+    await updateMe(personContext(person), { timeZone: 'Europe/Paris' });
+    expect(await renames(person.id)).toEqual([]);
   });
 });
 
