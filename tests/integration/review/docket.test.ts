@@ -7,6 +7,7 @@ import { knownActions } from '@/lib/review/activity-words';
 import { openDraft } from '@/lib/review/open-draft';
 import { openThread } from '@/lib/review/open-thread';
 import { replyToThread } from '@/lib/review/reply-to-thread';
+import { saveDraft } from '@/lib/review/save-draft';
 import { settleThread } from '@/lib/review/settle-thread';
 import { viewDocket } from '@/lib/review/view-docket';
 import { viewToday } from '@/lib/review/view-today';
@@ -201,7 +202,9 @@ describe('Today', () => {
 
   it('says what waits on each person, and no more once it is done', async () => {
     const templateId = await newTemplate(designer);
-    await openDraft(designer, templateId);
+    const { recipe, version } = await openDraft(designer, templateId);
+    expect(await about(designer, templateId)).toEqual([]);
+    await saveDraft(designer, templateId, { uploadId: null, recipe, note: 'Begun.', version });
     expect(await about(designer, templateId)).toEqual([['draft', 'Your draft is not posted yet']]);
     expect(await about(lead, templateId)).toEqual([]);
 
@@ -246,7 +249,8 @@ describe('Today', () => {
     });
     const there = await enterWorkspace(house.people.designer.person, second.id);
     const templateId = await newTemplate(there);
-    await openDraft(there, templateId);
+    const { recipe, version } = await openDraft(there, templateId);
+    await saveDraft(there, templateId, { uploadId: null, recipe, note: 'Begun.', version });
     const mine = (await today(designer)).items.map(({ workspace }) => workspace.name);
     expect(mine).toContain('Second client');
     const clients = await today(reviewer);
