@@ -19,7 +19,8 @@ export interface OutgoingNote {
   writtenAt: number;
 }
 
-export type OutgoingState = 'sending' | 'waiting' | 'signed-out';
+/** `stuck`: the server answered, and could not take it. It is tried again, after those that follow it. */
+export type OutgoingState = 'sending' | 'waiting' | 'stuck' | 'signed-out';
 export type OutgoingEntry = OutgoingNote & { state: OutgoingState };
 
 export interface OutboxParts {
@@ -28,6 +29,8 @@ export interface OutboxParts {
   onSent: (note: OutgoingNote) => void | Promise<void>;
   /** The server will never take it as it is: the text goes back to its writer with the reason. */
   onRefused: (note: OutgoingNote, error: ApiError) => void | Promise<void>;
+  /** Its writer no longer waits for it: the text goes back to where it was written. */
+  onTakenBack: (note: OutgoingNote) => void | Promise<void>;
 }
 
 /** Worth sending again as it is: nothing answered, the server is unwell or busy, or still works on it. */
@@ -38,12 +41,20 @@ export function isPassing(error: unknown): boolean {
   );
 }
 
+/** How often the server may fail on one note before its writer gets it back. */
+export const maxFailures = 5;
+
+/** The server failed on this very note and may well take the next. 502 to 504 speak of the whole server. */
+const isOwnFailure = (error: unknown): error is ApiError =>
+  error instanceof ApiError && error.status >= 500 && ![502, 503, 504].includes(error.status);
+
 /** Sends notes in the order they were written, each once: the server knows a repeated `clientKey`. */
 export class NoteOutbox {
   private entries: readonly OutgoingEntry[] = [];
   private readonly listeners = new Set<() => void>();
   private running: Promise<void> | null = null;
   private again = false;
+  private readonly failures = new Map<string, number>();
 
   constructor(
     private readonly parts: OutboxParts,
@@ -102,15 +113,37 @@ export class NoteOutbox {
           this.markAll('signed-out');
           return;
         }
-        if (isPassing(error)) {
+        if (isOwnFailure(error)) {
+          const failures = (this.failures.get(next.clientKey) ?? 0) + 1;
+          this.failures.set(next.clientKey, failures);
+          if (failures < maxFailures) {
+            this.mark(next.clientKey, 'stuck');
+            continue;
+          }
+        } else if (isPassing(error)) {
           this.markAll('waiting');
           return;
         }
         await this.parts.onRefused(next, error as ApiError);
       }
-      await this.parts.store.delete(next.clientKey);
-      this.set(this.entries.filter((entry) => entry.clientKey !== next?.clientKey));
+      await this.forget(next.clientKey);
     }
+  }
+
+  /** Gives a note that the server keeps failing on back to its writer, before the tries are used up. */
+  async takeBack(clientKey: string): Promise<void> {
+    const entry = this.entries.find((one) => one.clientKey === clientKey);
+    if (entry?.state !== 'stuck') return;
+    // Out of the line at once, so that no run picks it up; off the device only when its text is elsewhere.
+    this.set(this.entries.filter((one) => one.clientKey !== clientKey));
+    await this.parts.onTakenBack(entry);
+    await this.forget(clientKey);
+  }
+
+  private async forget(clientKey: string): Promise<void> {
+    this.failures.delete(clientKey);
+    await this.parts.store.delete(clientKey);
+    this.set(this.entries.filter((entry) => entry.clientKey !== clientKey));
   }
 
   private mark(clientKey: string, state: OutgoingState): void {

@@ -34,6 +34,10 @@ export function OutboxProvider({ personId, children }: { personId: string; child
               kind: 'trouble',
             });
           },
+          onTakenBack: async (note) => {
+            await returnDraft(note.draftKey, draftOf(note, 'The server could not take this note.'));
+            notify('The note was not posted. Your text is back where you wrote it.');
+          },
         },
         personId,
       ),

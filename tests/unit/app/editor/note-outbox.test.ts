@@ -1,7 +1,7 @@
 import { describe, expect, it } from 'vitest';
 import { ApiError } from '@/app/_components/api-client';
 import { memoryStore } from '@/app/_components/note-editor/key-value-store';
-import { NoteOutbox, type OutgoingNote } from '@/app/_components/note-editor/note-outbox';
+import { maxFailures, NoteOutbox, type OutgoingNote } from '@/app/_components/note-editor/note-outbox';
 
 const note = (clientKey: string, change: Partial<OutgoingNote> = {}): OutgoingNote => ({
   clientKey,
@@ -18,24 +18,32 @@ const note = (clientKey: string, change: Partial<OutgoingNote> = {}): OutgoingNo
   ...change,
 });
 
-/** An outbox whose server answers by `answers`, one a send; a missing one means accepted. */
-function desk(answers: (ApiError | undefined)[] = [], personId = 'brandt', store = memoryStore()) {
+type Answer = ApiError | undefined;
+
+/** An outbox whose server answers by `answers`, one a send or by the note; a missing one means accepted. */
+function desk(
+  answers: Answer[] | ((note: OutgoingNote) => Answer) = [],
+  personId = 'brandt',
+  store = memoryStore(),
+) {
   const sends: string[] = [];
   const refused: string[] = [];
+  const takenBack: string[] = [];
   const outbox = new NoteOutbox(
     {
       store,
-      send: async ({ clientKey }) => {
-        sends.push(clientKey);
-        const answer = answers.shift();
+      send: async (sent) => {
+        sends.push(sent.clientKey);
+        const answer = typeof answers === 'function' ? answers(sent) : answers.shift();
         if (answer) throw answer;
       },
       onSent: () => {},
+      onTakenBack: ({ clientKey }) => void takenBack.push(clientKey),
       onRefused: ({ clientKey }, error) => void refused.push(`${clientKey}: ${error.detail}`),
     },
     personId,
   );
-  return { outbox, sends, refused, store };
+  return { outbox, sends, refused, takenBack, store };
 }
 
 const noAnswer = () => new ApiError(0, 'No connection', 'nothing answered');
@@ -106,6 +114,38 @@ describe('NoteOutbox', () => {
     await outbox.add(note('k1'));
     expect(refused).toEqual([]);
     expect(outbox.snapshot()[0]?.state).toBe('waiting');
+  });
+
+  it('goes on past a note that the server fails on, and gives it back after some tries', async () => {
+    const failure = problem(500, 'internal', 'Something went wrong.');
+    const { outbox, sends, refused, store } = desk(({ clientKey }) =>
+      clientKey === 'k1' ? failure : undefined,
+    );
+    await outbox.add(note('k1'));
+    await outbox.add(note('k2'));
+    expect(outbox.snapshot()).toMatchObject([{ clientKey: 'k1', state: 'stuck' }]);
+    expect(sends).toContain('k2');
+    for (let tries = sends.filter((key) => key === 'k1').length; tries < maxFailures; tries++) {
+      expect(refused).toEqual([]);
+      await outbox.flush();
+    }
+    expect(refused).toEqual(['k1: Something went wrong.']);
+    expect(sends.filter((key) => key === 'k1')).toHaveLength(maxFailures);
+    expect(outbox.snapshot()).toEqual([]);
+    expect(await store.entries()).toEqual([]);
+  });
+
+  it('lets its writer take back a note that is stuck, and no other', async () => {
+    const { outbox, takenBack, store } = desk([problem(500, 'internal'), noAnswer()]);
+    await outbox.add(note('k1'));
+    await outbox.takeBack('k1');
+    expect(takenBack).toEqual(['k1']);
+    expect(outbox.snapshot()).toEqual([]);
+    expect(await store.entries()).toEqual([]);
+    await outbox.add(note('k2'));
+    await outbox.takeBack('k2');
+    expect(takenBack).toEqual(['k1']);
+    expect(outbox.snapshot()).toHaveLength(1);
   });
 
   it('holds notes while the session has ended', async () => {

@@ -1,7 +1,9 @@
 'use client';
 
+import { Button } from '@/app/_components/button';
 import { NoteBody } from '@/app/_components/note-editor/note-body';
 import type { OutgoingEntry } from '@/app/_components/note-editor/note-outbox';
+import { useOutbox } from '@/app/_components/note-editor/outbox-provider';
 import { StateShape } from '@/app/_components/state-shape';
 import { Time } from '@/app/_components/time';
 import { Link } from '@/app/_components/link';
@@ -40,11 +42,13 @@ function SaidWhen({ at }: { at: string }) {
 const words = {
   sending: 'being sent',
   waiting: 'waits for the connection; it is kept on this device and sent when it is back',
+  stuck: 'was not taken by the server; it is kept on this device and tried again',
   'signed-out': 'not sent: the session has ended',
 };
 
 /** A note of the reader's own that the server has not answered for yet. */
 export function OutgoingNoteEntry({ entry }: { entry: OutgoingEntry }) {
+  const outbox = useOutbox();
   return (
     <div className="border-l-2 border-dashed border-edge pl-3">
       <p role="status" className="flex items-center gap-1.5 text-sm text-slate">
@@ -58,6 +62,9 @@ export function OutgoingNoteEntry({ entry }: { entry: OutgoingEntry }) {
           ) : null}
         </span>
       </p>
+      {entry.state === 'stuck' ? (
+        <Button onPress={() => void outbox.takeBack(entry.clientKey)}>Take it back</Button>
+      ) : null}
       <NoteBody body={entry.body} />
     </div>
   );
