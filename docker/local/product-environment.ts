@@ -42,7 +42,6 @@ export function productEnvironment(
     S3_FORCE_PATH_STYLE: 'true',
     SMTP_URL: `smtp://127.0.0.1:${ports.smtp}`,
     MAIL_FROM: 'Firstpull <no-reply@firstpull.example>',
-    MAIL_INBOX_URL: `http://127.0.0.1:${ports.mail}`,
     PUSHER_APP_ID: realtimeAppId,
     PUSHER_KEY: secrets.realtime.key,
     PUSHER_SECRET: secrets.realtime.secret,
