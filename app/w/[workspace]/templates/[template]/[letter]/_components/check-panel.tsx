@@ -1,25 +1,19 @@
 'use client';
 
+import { Button } from '@/app/_components/button';
 import { ErrorState } from '@/app/_components/error-state';
 import { ProgressBar } from '@/app/_components/progress-bar';
 import type { RevisionView } from '@/lib/review/schemas';
+import { useOrderAgain } from '../_hooks/use-room-commands';
 import { useCheckProgress } from '../_hooks/use-room-data';
+import { useRoom } from './room-context';
 
 /** The check while it runs, and why it did not finish; nothing once its findings are in the docket. */
 export function CheckPanel({ revision }: { revision: RevisionView }) {
   const { check } = revision;
   const progress = useCheckProgress(revision);
   if (check.state === 'finished') return null;
-  if (check.state === 'failed') {
-    return (
-      <ErrorState title={`The check of revision ${revision.letter} did not finish`}>
-        {check.error ?? 'The worker gave no reason.'}{' '}
-        {revision.can.withdraw
-          ? 'Withdraw the revision and post it again, with a mended mesh if the reason names one.'
-          : 'The studio can withdraw the revision and post it again.'}
-      </ErrorState>
-    );
-  }
+  if (check.state === 'failed') return <FailedCheck revision={revision} />;
   const queued = check.state === 'queued' && progress.progress === 0;
   return (
     <section aria-label="Check run" className="border border-rule bg-sheet px-4 py-3 print:hidden">
@@ -33,6 +27,34 @@ export function CheckPanel({ revision }: { revision: RevisionView }) {
       </p>
     </section>
   );
+}
+
+function FailedCheck({ revision }: { revision: RevisionView }) {
+  const { workspace } = useRoom();
+  const again = useOrderAgain(workspace.id, revision.id, 'check');
+  const mayOrder = revision.can.post && revision.state === 'in_review';
+  return (
+    <ErrorState
+      title={`The check of revision ${revision.letter} did not finish`}
+      actions={
+        mayOrder ? (
+          <Button isPending={again.isPending} onPress={() => again.mutate()}>
+            Check again
+          </Button>
+        ) : null
+      }
+    >
+      {revision.check.error ?? 'The worker gave no reason.'} {wayOn(revision, mayOrder)}
+    </ErrorState>
+  );
+}
+
+function wayOn({ state, author, can }: RevisionView, mayOrder: boolean): string {
+  if (state !== 'in_review') return '';
+  if (!mayOrder) return 'A designer or lead can have it checked again, or post the next revision.';
+  return can.withdraw
+    ? 'Have it checked again; if the reason names the mesh, withdraw the revision and post a mended one.'
+    : `Have it checked again; if the reason names the mesh, post the next revision with a mended one, or ask ${author.name}, who posted this one.`;
 }
 
 const sentence = (words: string) => words.charAt(0).toUpperCase() + words.slice(1);

@@ -46,6 +46,7 @@ export function DocketEntry({ item, level = 3 }: { item: DocketItem; level?: 3 |
   const { active, activate } = useRoom();
   const { state, tone } = markOf(item);
   const word = wordOf(item, state);
+  const isQuiet = item.group === 'fine' || item.group === 'unchecked';
   const Heading = `h${level}` as const;
   return (
     <li
@@ -56,14 +57,17 @@ export function DocketEntry({ item, level = 3 }: { item: DocketItem; level?: 3 |
         if (active !== key) activate(key);
       }}
       className={clsx(
-        'scroll-mt-4 border-b border-rule py-3 outline-offset-0 break-inside-avoid',
+        'scroll-mt-4 border-b border-rule outline-offset-0 break-inside-avoid',
+        isQuiet ? 'py-1.5' : 'py-3',
         active === key && '-mx-3 border-l-2 border-l-verdigris bg-sheet pr-3 pl-2.5',
       )}
     >
       <div className="flex gap-2.5">
         <StateShape shape={states[state].shape} className={clsx('mt-1 size-4', tones[tone])} />
-        <div className="flex min-w-0 grow flex-col gap-1.5">
-          <Heading className={clsx('text-base font-semibold', !finding && 'sr-only')}>
+        <div className={clsx('flex min-w-0 grow flex-col', isQuiet ? 'gap-0.5' : 'gap-1.5')}>
+          <Heading
+            className={clsx('text-base', isQuiet ? 'font-normal' : 'font-semibold', !finding && 'sr-only')}
+          >
             <span className="sr-only">{word}: </span>
             {finding ? finding.message : threadTitle(item)}
           </Heading>

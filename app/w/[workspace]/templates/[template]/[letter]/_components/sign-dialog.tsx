@@ -1,6 +1,6 @@
 'use client';
 
-import { useState } from 'react';
+import { useEffect, useRef, useState } from 'react';
 import { ApiError, explainError, newIdempotencyKey } from '@/app/_components/api-client';
 import { Button } from '@/app/_components/button';
 import { Dialog } from '@/app/_components/dialog';
@@ -90,6 +90,7 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
           )}
         </section>
         <form
+          ref={form.element}
           className="flex flex-col gap-4"
           onSubmit={(event) => {
             event.preventDefault();
@@ -164,6 +165,13 @@ function useSignForm(given: {
   const [read, setRead] = useState<ContentView | null>(null);
   const [changes, setChanges] = useState<string[]>([]);
   const [wasOpen, setWasOpen] = useState(isOpen);
+  const element = useRef<HTMLFormElement>(null);
+
+  // Whoever is told what is wrong stands where it is wrong.
+  useEffect(() => {
+    if (!errors.password && !errors.reason) return;
+    element.current?.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus();
+  }, [errors]);
 
   if (wasOpen !== isOpen) {
     setWasOpen(isOpen);
@@ -231,6 +239,7 @@ function useSignForm(given: {
   };
 
   return {
+    element,
     content: read,
     changes,
     errors,

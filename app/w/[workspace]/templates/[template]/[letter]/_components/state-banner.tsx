@@ -1,12 +1,14 @@
 'use client';
 
 import type { ReactNode } from 'react';
+import { Button } from '@/app/_components/button';
 import { formatBytes } from '@/app/_components/format-figure';
 import { Digest } from '@/app/_components/digest';
 import { Link } from '@/app/_components/link';
 import { states, StatusWord } from '@/app/_components/status-word';
 import { Time } from '@/app/_components/time';
 import type { RevisionView } from '@/lib/review/schemas';
+import { useOrderAgain } from '../_hooks/use-room-commands';
 import { newerSibling } from './primary-step';
 import { letterHref, stateKey } from './revision-switcher';
 import { useRoom } from './room-context';
@@ -65,11 +67,31 @@ function Agreed({ revision, lockedAt }: { revision: RevisionView; lockedAt: stri
       <p className="text-sm text-slate">
         Mesh SHA-256 <Digest value={revision.mesh.sha256} characters="all" className="ml-1" />
       </p>
-      {revision.release && !revision.release.pack ? (
-        <p role="status" className="text-sm">
-          The release pack is being built.
-        </p>
-      ) : null}
+      {revision.release && !revision.release.pack ? <PackOnItsWay revision={revision} /> : null}
+    </div>
+  );
+}
+
+function PackOnItsWay({ revision }: { revision: RevisionView }) {
+  const { workspace } = useRoom();
+  const again = useOrderAgain(workspace.id, revision.id, 'pack');
+  const job = revision.release?.packJob;
+  if (job?.state !== 'failed')
+    return (
+      <p role="status" className="text-sm">
+        The release pack is being built.
+      </p>
+    );
+  return (
+    <div role="status" className="flex flex-wrap items-center gap-3">
+      <p>The release pack could not be built: {job.error ?? 'The worker gave no reason.'}</p>
+      {revision.can.rebuild ? (
+        <Button isPending={again.isPending} onPress={() => again.mutate()}>
+          Build it again
+        </Button>
+      ) : (
+        <p>A producer or lead can order it again.</p>
+      )}
     </div>
   );
 }

@@ -66,6 +66,16 @@ export function useWaive(workspaceId: string, revisionId: string) {
   });
 }
 
+/** Orders work again that the worker had given up: the check, or the release pack. */
+export function useOrderAgain(workspaceId: string, revisionId: string, what: 'check' | 'pack') {
+  const refetch = useRefetchRoom(workspaceId, revisionId);
+  return useMutation({
+    mutationFn: () => api(`${revisionApi(workspaceId, revisionId)}/${what}`, { method: 'POST' }),
+    onError: (error) => notify(explainError(error).detail, { kind: 'trouble' }),
+    onSettled: refetch,
+  });
+}
+
 export type Step = 'withdraw' | 'recall' | 'retire';
 
 /** Ends a revision's way with a reason: withdrawn by its author, recalled or retired by production. */
