@@ -124,7 +124,7 @@ describe('the whole job', () => {
     const signClient = approver.page.getByRole('button', { name: /^Sign for the client/ });
     await signClient.waitFor();
     await signClient.click();
-    await approver.page.getByText(sha256(sound).slice(0, 4)).first().waitFor();
+    await approver.page.getByRole('dialog').getByText(sha256(sound).slice(0, 4)).first().waitFor();
     expect(await axeFindings(approver.page)).toEqual([]);
     await screenshot(approver.page, 'sign');
     await approver.page.getByLabel('Your password').fill(approver.password);
