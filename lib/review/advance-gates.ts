@@ -50,7 +50,7 @@ export async function advanceGates(
     if (gate.state === 'waiting') await tellAwaited(tx, ctx, template, revision, opened);
     return passed;
   }
-  if (all.length) await lockContent(tx, ctx, template, revision);
+  if (all.length) await lockContent(tx, ctx, revision);
   return passed;
 }
 

@@ -5,7 +5,7 @@ import { workspaceIdOf, type JobContext, type WorkspaceContext } from '@/lib/aut
 import { composeContent } from './content';
 import { frozenRecord } from './frozen-record';
 import { insertLock } from './gate-data';
-import { moveRevision, type RevisionRow, type TemplateRow } from './revision-data';
+import { moveRevision, type RevisionRow } from './revision-data';
 import { viewDocketRows } from './docket-view';
 
 /**
@@ -15,7 +15,6 @@ import { viewDocketRows } from './docket-view';
 export async function lockContent(
   tx: TenantTx,
   ctx: WorkspaceContext | JobContext,
-  _template: TemplateRow,
   revision: RevisionRow,
 ): Promise<void> {
   const workspaceId = workspaceIdOf(ctx);
