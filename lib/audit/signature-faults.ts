@@ -1,3 +1,4 @@
+import { partsOf } from '@/lib/review/activity-data';
 import type { Content } from '@/lib/review/content';
 import type { SignatureRow } from '@/lib/review/gate-data';
 import { digestOf } from './canonical';
@@ -60,9 +61,7 @@ export function signatureFaults(
       signedAt: row.signedAt.toISOString(),
     };
     if (!sameJson(stored, told)) faults.push(`${name} is not as the audit chain has it`);
-    const docket = detail.docket as Content['docket'] | undefined;
-    const content = docket ? { ...locked, docket } : locked;
-    if (digestOf(content) !== row.contentDigest)
+    if (digestOf({ ...locked, ...partsOf(detail) }) !== row.contentDigest)
       faults.push(`${name} stands on other content than was locked`);
   }
   const last = signed.filter(({ decision }) => decision === 'sign').at(-1);

@@ -6,6 +6,7 @@ import { viewDocketRows } from '@/lib/review/docket-view';
 import { findLock, gatesOf, newestGatePlan, signaturesOf, type SignatureRow } from '@/lib/review/gate-data';
 import { loadDocket, type Docket } from '@/lib/review/load-docket';
 import { loadRevisionParts, type RevisionRow } from '@/lib/review/revision-data';
+import { makersOf } from '@/lib/review/who-signs';
 import type { Report } from '@/lib/formability/report';
 import { digestOf } from './canonical';
 import { releaseFaults, stateFaults } from './life-faults';
@@ -48,7 +49,7 @@ export async function verifyRevision(tx: TenantTx, revision: RevisionRow): Promi
   );
   must(digestOf(recipe.body) === recipe.digest, 'the recipe does not have its digest');
   must(!!report && digestOf(report.body) === report.sha256, 'the report does not have its digest');
-  const now = await composeContent(tx, revision);
+  const now = await composeContent(tx, revision, { locked: lock.content as Content });
   must(
     now?.digest === lock.contentDigest,
     `what is stored is not what was signed: ${now ? differences(lock.content as Content, now.content) : 'the check run is missing'}`,
@@ -71,7 +72,7 @@ export async function verifyRevision(tx: TenantTx, revision: RevisionRow): Promi
   }
   const signed = await signaturesOf(tx, workspaceId, id);
   faults.push(...signatureFaults(signed, entries, lock.content as Content, lock.contentDigest));
-  faults.push(...(await gateFaults(tx, revision, signed)));
+  faults.push(...(await gateFaults(tx, revision, makersOf(revision, mesh), signed)));
   faults.push(...stateFaults(revision, entries));
   faults.push(...releaseFaults(found, entries));
 
@@ -129,7 +130,12 @@ function worstOf({ checks }: Report): string {
 }
 
 /** Each gate passed, under its plan's own rule, with as many different signers as it asks for. */
-async function gateFaults(tx: TenantTx, revision: RevisionRow, signed: SignatureRow[]): Promise<string[]> {
+async function gateFaults(
+  tx: TenantTx,
+  revision: RevisionRow,
+  makers: string[],
+  signed: SignatureRow[],
+): Promise<string[]> {
   const gates = await gatesOf(tx, revision.workspaceId, revision.id);
   const faults: string[] = [];
   if (gates.length === 0 && (await newestGatePlan(tx, revision.workspaceId)))
@@ -138,7 +144,7 @@ async function gateFaults(tx: TenantTx, revision: RevisionRow, signed: Signature
     if (gate.state !== 'passed') faults.push(`the gate ${gate.rule.name} has not passed`);
     const signers = signed.filter(
       ({ gateId, decision, signerId }) =>
-        gateId === gate.id && decision === 'sign' && !(gate.rule.fourEyes && signerId === revision.authorId),
+        gateId === gate.id && decision === 'sign' && !(gate.rule.fourEyes && makers.includes(signerId)),
     );
     if (new Set(signers.map(({ signerId }) => signerId)).size < gate.rule.quorum)
       faults.push(`the gate ${gate.rule.name} has fewer signatures than it asks for`);

@@ -3,6 +3,7 @@ import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
 import { conflict, notFound } from '@/lib/errors/app-error';
 import { latestJobOf } from '@/lib/jobs/jobs-data';
 import { asId } from '@/lib/review/as-id';
+import { requireNotRecalled } from '@/lib/review/recalled';
 import { findRevision } from '@/lib/review/revision-data';
 import { store } from '@/lib/storage/store';
 import { packOfRelease, releaseOfRevision } from './production-data';
@@ -18,11 +19,7 @@ export async function openPack(ctx: WorkspaceContext, revisionId: string): Promi
     const revision = await findRevision(tx, workspaceId, asId(revisionId, 'revision'));
     const release = await releaseOfRevision(tx, workspaceId, revision.id);
     if (!release) throw notFound('release pack');
-    if (revision.state === 'recalled' && ctx.role !== 'lead')
-      throw conflict(
-        'recalled',
-        `Revision ${revision.letter} is recalled: ${revision.stateReason ?? ''} Nothing may be made from it.`,
-      );
+    requireNotRecalled(ctx, revision);
     const found = await packOfRelease(tx, workspaceId, release.id);
     if (found) return found;
     const job = await latestJobOf(tx, { workspaceId, kind: 'build-pack', subjectId: release.id });

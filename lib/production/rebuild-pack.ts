@@ -2,6 +2,7 @@ import { withTenant } from '@/db/tenant';
 import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
 import { conflict, notFound } from '@/lib/errors/app-error';
 import { enqueueJob } from '@/lib/jobs/enqueue-job';
+import { queueLive } from '@/lib/jobs/queue-live';
 import { latestJobOf } from '@/lib/jobs/jobs-data';
 import { asId } from '@/lib/review/as-id';
 import { lockRevision } from '@/lib/review/revision-data';
@@ -29,6 +30,10 @@ export async function rebuildPack(ctx: WorkspaceContext, revisionId: string): Pr
       kind: 'build-pack',
       subjectId: release.id,
       inputDigest: lock.contentDigest,
+    });
+    await queueLive(tx, ctx, {
+      name: 'revision.changed',
+      data: { id: revision.id, templateId: revision.templateId },
     });
     return { jobId };
   });

@@ -2,7 +2,7 @@ import type { TenantTx } from '@/db/tenant';
 import { digestOf } from '@/lib/audit/canonical';
 import { conflict } from '@/lib/errors/app-error';
 import { findCheckRun, findReportById } from '@/lib/review/check-data';
-import { composeContent } from '@/lib/review/content';
+import { composeContent, type Content } from '@/lib/review/content';
 import { findLock, signaturesOf, type LockRow } from '@/lib/review/gate-data';
 import { loadRevisionParts, type RevisionRow } from '@/lib/review/revision-data';
 
@@ -25,7 +25,7 @@ export async function requireAgreed(tx: TenantTx, revision: RevisionRow): Promis
   if (digestOf(lock.content) !== lock.contentDigest) throw changed('the locked content');
   if (digestOf(recipe.body) !== recipe.digest) throw changed('the recipe');
   if (!report || digestOf(report.body) !== report.sha256) throw changed('the report');
-  const now = await composeContent(tx, revision);
+  const now = await composeContent(tx, revision, { locked: lock.content as Content });
   if (now?.digest !== lock.contentDigest) throw changed('mesh, recipe, report, docket or gate plan');
   const signed = await signaturesOf(tx, workspaceId, revision.id);
   const last = signed.filter(({ decision }) => decision === 'sign').at(-1);

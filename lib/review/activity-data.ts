@@ -2,7 +2,7 @@ import { and, desc, eq, inArray, lt } from 'drizzle-orm';
 import { templates } from '@/db/schema/templates';
 import { auditEntries } from '@/db/schema/trail';
 import type { TenantTx } from '@/db/tenant';
-import type { DocketSummary } from './content';
+import type { Content } from './content';
 
 export type EntryRow = typeof auditEntries.$inferSelect;
 
@@ -26,8 +26,8 @@ export async function entriesBefore(
     .limit(limit);
 }
 
-/** The docket that each signature of a revision stood on, as the audit chain has it: signature id → summary. */
-export async function signedDockets(tx: TenantTx, workspaceId: string, revisionId: string) {
+/** What may still change between two signatures, as each of them stood on it: signature id → docket and template. */
+export async function signedParts(tx: TenantTx, workspaceId: string, revisionId: string) {
   const rows = await tx
     .select({ detail: auditEntries.detail })
     .from(auditEntries)
@@ -38,10 +38,14 @@ export async function signedDockets(tx: TenantTx, workspaceId: string, revisionI
         inArray(auditEntries.action, ['gate.signed', 'gate.returned']),
       ),
     );
-  return new Map(
-    rows.map(({ detail }) => [detail.signatureId as string, detail.docket as DocketSummary | undefined]),
-  );
+  return new Map(rows.map(({ detail }) => [detail.signatureId as string, partsOf(detail)]));
 }
+
+/** The parts of the content that an entry about a signature keeps. */
+export const partsOf = ({ docket, named }: Record<string, unknown>): Partial<Content> => ({
+  ...(docket ? { docket: docket as Content['docket'] } : {}),
+  ...(named ? { template: named as Content['template'] } : {}),
+});
 
 /** Numbers of these templates, to name them in a sentence. */
 export async function templateNumbers(tx: TenantTx, workspaceId: string, ids: string[]) {

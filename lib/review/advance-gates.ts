@@ -6,8 +6,8 @@ import { changeGate, gatesOf, signaturesOf, type GateRow } from './gate-data';
 import { lockContent } from './lock-content';
 import { workspacePeople } from './people-data';
 import { mailAbout, tellToday } from './revision-mails';
-import type { RevisionRow, TemplateRow } from './revision-data';
-import { whoMaySign } from './who-signs';
+import { loadRevisionParts, type RevisionRow, type TemplateRow } from './revision-data';
+import { makersOf, whoMaySign } from './who-signs';
 
 /** Whether the check has finished on this revision and every failing finding is waived. */
 async function formingHolds(tx: TenantTx, revision: RevisionRow): Promise<boolean> {
@@ -63,7 +63,8 @@ async function tellAwaited(
 ): Promise<void> {
   const people = await workspacePeople(tx, revision.workspaceId);
   const signed = await signaturesOf(tx, revision.workspaceId, revision.id);
-  const awaited = whoMaySign(gate, revision.authorId, people, signed);
+  const { mesh } = await loadRevisionParts(tx, revision);
+  const awaited = whoMaySign(gate, makersOf(revision, mesh), people, signed);
   const openItems = (await openMustSettle(tx, revision.workspaceId, revision.id)).length;
   const about = { template, revision, occasion: `gate-waits:${gate.id}` };
   await mailAbout(tx, ctx, awaited, about, (base) => ({

@@ -36,7 +36,9 @@ export async function findCheckRun(
 export async function changeCheckRun(
   tx: TenantTx,
   run: CheckRunRow,
-  change: Partial<Pick<CheckRunRow, 'state' | 'verdict' | 'reportId' | 'error'>> & { finished?: boolean },
+  change: Partial<Pick<CheckRunRow, 'state' | 'verdict' | 'reportId' | 'error' | 'jobId' | 'finishedAt'>> & {
+    finished?: boolean;
+  },
 ): Promise<void> {
   const { finished, ...fields } = change;
   await tx

@@ -15,7 +15,7 @@ export type DocketSummary = {
 export type Content = {
   schema: 1;
   workspace: string;
-  template: { id: string; number: string };
+  template: { id: string; number: string; title: string; dueOn: string | null };
   revision: { id: string; letter: string };
   mesh: { sha256: string; bytes: number; fileName: string };
   recipe: Record<string, unknown>;
@@ -46,11 +46,14 @@ export function summariseDocket(docket: Docket): DocketSummary {
   return { findings, threads, digest: digestOf({ findings, threads }) };
 }
 
-/** The content as it stands in this transaction; null until the check has finished. */
+/**
+ * The content as it stands in this transaction; null until the check has finished. `locked` is what was agreed
+ * already: a template may be renamed for its next revision, so title and due date are then those of the lock.
+ */
 export async function composeContent(
   tx: TenantTx,
   revision: RevisionRow,
-  given?: Docket,
+  { docket: given, locked }: { docket?: Docket; locked?: Content } = {},
 ): Promise<{ content: Content; digest: string; docket: Docket } | null> {
   const { workspaceId } = revision;
   const run = await findCheckRun(tx, workspaceId, revision.id);
@@ -62,7 +65,12 @@ export async function composeContent(
   const content: Content = {
     schema: 1,
     workspace: workspaceId,
-    template: { id: template.id, number: template.number },
+    template: {
+      id: template.id,
+      number: template.number,
+      title: (locked?.template ?? template).title,
+      dueOn: (locked?.template ?? template).dueOn,
+    },
     revision: { id: revision.id, letter: revision.letter },
     mesh: { sha256: mesh.sha256, bytes: mesh.bytes, fileName: mesh.fileName },
     recipe: recipe.body,

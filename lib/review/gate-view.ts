@@ -19,7 +19,7 @@ export const signatureView = (row: SignatureRow): SignatureView => ({
 export function gateViews(
   gates: GateRow[],
   signatures: SignatureRow[],
-  authorId: string,
+  makers: string[],
   people: WorkspacePerson[],
 ): GateView[] {
   return gates.map((gate) => ({
@@ -36,7 +36,7 @@ export function gateViews(
     signatures: signatures.filter((row) => row.gateId === gate.id).map(signatureView),
     awaited:
       gate.state === 'open' && gate.rule.kind === 'people'
-        ? whoMaySign(gate, authorId, people, signatures).map((person) => person.name)
+        ? whoMaySign(gate, makers, people, signatures).map((person) => person.name)
         : [],
   }));
 }

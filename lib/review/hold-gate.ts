@@ -5,7 +5,8 @@ import { composeContent, type Content } from './content';
 import { firstNotes, openMustSettle } from './docket-data';
 import { findGate, gatesOf, signaturesOf, type GateRow } from './gate-data';
 import { holdRole } from './people-data';
-import { lockRevision, type RevisionRow, type TemplateRow } from './revision-data';
+import { loadRevisionParts, lockRevision, type RevisionRow, type TemplateRow } from './revision-data';
+import { makersOf } from './who-signs';
 
 export type HeldGate = {
   template: TemplateRow;
@@ -48,9 +49,10 @@ export async function holdGate(
       `At ${rule.name} sign: ${rule.roles.join(', ')}. Your role here is ${role ?? 'none'}.`,
       'role',
     );
-  if (rule.fourEyes && revision.authorId === ctx.person.id)
+  const { mesh } = await loadRevisionParts(tx, revision);
+  if (rule.fourEyes && makersOf(revision, mesh).includes(ctx.person.id))
     throw forbidden(
-      `You posted revision ${revision.letter}; somebody else has to decide at ${rule.name}.`,
+      `You ${revision.authorId === ctx.person.id ? 'posted' : 'sent the mesh of'} revision ${revision.letter}; somebody else has to decide at ${rule.name}.`,
       'four-eyes',
     );
   const signed = await signaturesOf(tx, workspaceId, revisionId);

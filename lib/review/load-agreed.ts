@@ -3,9 +3,9 @@ import type { JobContext, WorkspaceContext } from '@/lib/auth/context';
 import { workspaceIdOf } from '@/lib/auth/context';
 import { digestOf } from '@/lib/audit/canonical';
 import { conflict } from '@/lib/errors/app-error';
-import { signedDockets } from './activity-data';
+import { signedParts } from './activity-data';
 import { findCheckRun, findReportById } from './check-data';
-import type { Content, DocketSummary } from './content';
+import type { Content } from './content';
 import { findLock, gatesOf, signaturesOf } from './gate-data';
 import { findRevision, loadRevisionParts } from './revision-data';
 import type { DocketView } from './schemas';
@@ -21,13 +21,13 @@ export async function loadAgreed(ctx: WorkspaceContext | JobContext, revisionId:
     const lock = await findLock(tx, workspaceId, revisionId);
     if (!lock)
       throw conflict('not-locked', `Revision ${revision.letter} is not approved, so nothing is agreed yet.`);
-    const { template, mesh, recipe } = await loadRevisionParts(tx, revision);
+    const { mesh, recipe } = await loadRevisionParts(tx, revision);
     const run = await findCheckRun(tx, workspaceId, revisionId);
     const report = run?.reportId ? await findReportById(tx, workspaceId, run.reportId) : null;
     if (!report) throw new Error('a locked revision has no report');
     const gates = await gatesOf(tx, workspaceId, revisionId);
     const names = new Map(gates.map((gate) => [gate.id, gate.rule.name]));
-    const signed = await signedDockets(tx, workspaceId, revisionId);
+    const signed = await signedParts(tx, workspaceId, revisionId);
     const signatures = (await signaturesOf(tx, workspaceId, revisionId)).map((row) => ({
       id: row.id,
       gateId: row.gateId,
@@ -45,7 +45,8 @@ export async function loadAgreed(ctx: WorkspaceContext | JobContext, revisionId:
       content: contentAsSigned(lock.content as Content, signed.get(row.id), row.contentDigest),
     }));
     return {
-      template: { id: template.id, number: template.number, title: template.title, dueOn: template.dueOn },
+      // As signed; the template itself may have been renamed since.
+      template: { ...(lock.content as Content).template },
       revision: {
         id: revision.id,
         letter: revision.letter,
@@ -80,10 +81,14 @@ export async function loadAgreed(ctx: WorkspaceContext | JobContext, revisionId:
 export type Agreed = Awaited<ReturnType<typeof loadAgreed>>;
 
 /**
- * The content behind one signature. Notes may join the docket between two gates, so an earlier signature stands
- * on an earlier docket, which the audit chain keeps; null where the digest does not come out (then it is not proven).
+ * The content behind one signature. Between two gates notes may join the docket and the template be renamed, so an
+ * earlier signature stands on earlier parts, which the audit chain keeps; null where the digest does not come out (then it is not proven).
  */
-function contentAsSigned(locked: Content, docket: DocketSummary | undefined, digest: string): Content | null {
-  const content = docket ? { ...locked, docket } : locked;
+function contentAsSigned(
+  locked: Content,
+  parts: Partial<Content> | undefined,
+  digest: string,
+): Content | null {
+  const content = { ...locked, ...parts };
   return digestOf(content) === digest ? content : null;
 }

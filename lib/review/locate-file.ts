@@ -4,13 +4,17 @@ import { notFound } from '@/lib/errors/app-error';
 import { store } from '@/lib/storage/store';
 import { asId } from './as-id';
 import { derivativesOf } from './check-data';
+import { requireNotRecalled } from './recalled';
 import { findRevision, loadRevisionParts } from './revision-data';
 
 export type RevisionFile = 'model' | 'picture' | 'thumbnail' | 'mesh';
 const types = { model: 'model/gltf-binary', picture: 'image/png', thumbnail: 'image/png' } as const;
 const endings = { model: 'glb', picture: 'png', thumbnail: 'png' } as const;
 
-/** A short-lived address in the store for one file of a revision. The mesh is the exact bytes that were posted. */
+/**
+ * A short-lived address in the store for one file of a revision. The mesh is the exact bytes that were
+ * posted. Throws conflict `recalled` for the mesh of a recalled revision, for anyone but a lead.
+ */
 export async function locateFile(
   ctx: WorkspaceContext,
   revisionId: string,
@@ -22,8 +26,10 @@ export async function locateFile(
   const found = await withTenant(ctx, async (tx) => {
     const revision = await findRevision(tx, ctx.workspace.id, id);
     const { template, mesh } = await loadRevisionParts(tx, revision);
-    if (file === 'mesh')
+    if (file === 'mesh') {
+      requireNotRecalled(ctx, revision);
       return { key: mesh.storeKey, fileName: mesh.fileName, contentType: 'model/stl', inline: false };
+    }
     const made = (await derivativesOf(tx, ctx.workspace.id, mesh.id)).find((row) => row.kind === file);
     if (!made) throw notFound(file);
     const fileName = `${template.number}-${revision.letter}-${file}.${endings[file]}`;

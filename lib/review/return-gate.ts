@@ -59,6 +59,7 @@ export async function returnGate(
         method,
         contentDigest: held.digest,
         docket: held.content.docket,
+        named: held.content.template,
       },
     });
     await closeRevision(tx, ctx, revision, 'returned', reason);

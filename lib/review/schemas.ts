@@ -300,6 +300,13 @@ export const RevisionView = z.object({
       at: instant,
       note: z.string(),
       pack: z.object({ fileName: z.string(), bytes: z.number(), sha256: z.string() }).nullable(),
+      /** The newest job that builds the pack, and why it was given up. */
+      packJob: z
+        .object({
+          state: z.enum(['queued', 'running', 'done', 'failed', 'cancelled']),
+          error: z.string().nullable(),
+        })
+        .nullable(),
     })
     .nullable(),
   siblings: z.array(z.object({ id, letter: z.string(), state: standing })),
@@ -319,6 +326,8 @@ export const RevisionView = z.object({
       .nullable(),
     withdraw: z.boolean(),
     release: z.boolean(),
+    /** Order the release pack again whose building failed. */
+    rebuild: z.boolean(),
     recall: z.boolean(),
     retire: z.boolean(),
     download: z.boolean(),

@@ -60,8 +60,9 @@ export async function signGate(ctx: WorkspaceContext, gateId: string, input: unk
         method,
         signedAt: signature.signedAt.toISOString(),
         contentDigest: held.digest,
-        // Notes may still join before the last gate: the docket of this digest is kept here.
+        // Notes may still join before the last gate: the docket of this digest is kept here, title and due date too.
         docket: held.content.docket,
+        named: held.content.template,
       },
     });
     const passed = await advanceGates(tx, ctx, template, revision);

@@ -1,5 +1,6 @@
 import { withTenant, type TenantTx } from '@/db/tenant';
 import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
+import { latestJobOf } from '@/lib/jobs/jobs-data';
 import { asId } from './as-id';
 import { derivativesOf, findCheckRun, findJob, findReportDigest } from './check-data';
 import { composeContent } from './content';
@@ -18,6 +19,7 @@ import {
 import type { RevisionView } from './schemas';
 import { fileUrl } from './template-summary';
 import { whatReaderMayDo } from './what-reader-may-do';
+import { makersOf } from './who-signs';
 
 /** A revision as its page shows it, with what the reader may do here and now. */
 export async function viewRevision(ctx: WorkspaceContext, revisionId: string): Promise<RevisionView> {
@@ -42,11 +44,15 @@ export async function viewRevisionByLetter(
 async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRow): Promise<RevisionView> {
   const workspaceId = ctx.workspace.id;
   const { template, mesh, recipe } = await loadRevisionParts(tx, revision);
+  const makers = makersOf(revision, mesh);
   const lock = await findLockDigest(tx, workspaceId, revision.id);
   const gates = await gatesOf(tx, workspaceId, revision.id);
   const signatures = await signaturesOf(tx, workspaceId, revision.id);
   const people = await workspacePeople(tx, workspaceId);
   const release = await releaseOf(tx, workspaceId, revision.id);
+  const packJob = release
+    ? await latestJobOf(tx, { workspaceId, kind: 'build-pack', subjectId: release.release.id })
+    : null;
   const check = await checkOf(tx, revision);
   const siblings = await revisionsOf(tx, workspaceId, template.id);
   const mustSettle = lock ? 0 : (await openMustSettle(tx, workspaceId, revision.id)).length;
@@ -70,7 +76,7 @@ async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRo
     recipe: recipe.body,
     check,
     model: await modelOf(tx, ctx, revision),
-    gates: gateViews(gates, signatures, revision.authorId, people),
+    gates: gateViews(gates, signatures, makers, people),
     contentDigest: lock?.contentDigest ?? (await composeContent(tx, revision))?.digest ?? null,
     lockedAt: lock?.lockedAt.toISOString() ?? null,
     release: release
@@ -82,6 +88,7 @@ async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRo
           pack: release.pack
             ? { fileName: release.pack.fileName, bytes: release.pack.bytes, sha256: release.pack.sha256 }
             : null,
+          packJob: packJob ? { state: packJob.state, error: packJob.error } : null,
         }
       : null,
     siblings: siblings.map((row) => ({
@@ -91,12 +98,14 @@ async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRo
     })),
     can: whatReaderMayDo(ctx, {
       revision,
+      makers,
       gates,
       signatures,
       people,
       mustSettle,
       checkFinished: check.state === 'finished',
       hasPack: Boolean(release?.pack),
+      packFailed: !release?.pack && packJob?.state === 'failed',
     }),
     version: revision.version,
   };

@@ -4,16 +4,20 @@ import type { GateRow, SignatureRow } from './gate-data';
 import type { WorkspacePerson } from './people-data';
 import type { RevisionRow } from './revision-data';
 import type { RevisionView } from './schemas';
+import { mayMakeFrom } from './recalled';
 import { whoMaySign } from './who-signs';
 
 type Standing = {
   revision: RevisionRow;
+  /** Whom four eyes keep away. */
+  makers: string[];
   gates: GateRow[];
   signatures: SignatureRow[];
   people: WorkspacePerson[];
   mustSettle: number;
   checkFinished: boolean;
   hasPack: boolean;
+  packFailed: boolean;
 };
 
 /** What the page offers; every verb decides again for itself. */
@@ -22,6 +26,8 @@ export function whatReaderMayDo(ctx: WorkspaceContext, at: Standing): RevisionVi
   const may = (permission: Parameters<typeof permits>[1]) => permits(ctx.role, permission);
   const reviewed = revision.state === 'in_review';
   const unlocked = reviewed || revision.state === 'returned' || revision.state === 'withdrawn';
+  // Nothing may be made from a recalled revision; a lead may still look into it.
+  const makes = may('pack.download') && mayMakeFrom(ctx, revision);
   return {
     note: may('docket.note'),
     settle: may('docket.settle') && unlocked,
@@ -33,10 +39,11 @@ export function whatReaderMayDo(ctx: WorkspaceContext, at: Standing): RevisionVi
       revision.authorId === ctx.person.id &&
       at.signatures.length === 0,
     release: may('revision.release') && revision.state === 'approved',
+    rebuild: may('revision.release') && at.packFailed && revision.state !== 'recalled',
     recall: may('revision.recall') && revision.state === 'released',
     retire: may('revision.retire') && revision.state === 'released',
-    download: may('pack.download') && at.hasPack,
-    mesh: may('pack.download'),
+    download: makes && at.hasPack,
+    mesh: makes,
     post: may('revision.post'),
   };
 }
@@ -44,7 +51,7 @@ export function whatReaderMayDo(ctx: WorkspaceContext, at: Standing): RevisionVi
 function gateToSign(ctx: WorkspaceContext, at: Standing): RevisionView['can']['sign'] {
   const gate = at.gates.find((row) => row.state === 'open' && row.rule.kind === 'people');
   if (!gate) return null;
-  const mine = whoMaySign(gate, at.revision.authorId, at.people, at.signatures);
+  const mine = whoMaySign(gate, at.makers, at.people, at.signatures);
   if (!mine.some((person) => person.id === ctx.person.id)) return null;
   const items = at.mustSettle === 1 ? 'One item' : `${at.mustSettle} items`;
   const blocked = !at.checkFinished

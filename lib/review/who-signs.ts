@@ -1,10 +1,16 @@
 import type { GateRow, SignatureRow } from './gate-data';
 import type { WorkspacePerson } from './people-data';
 
-/** Those who may still sign a gate: the right role, not the author under four eyes, not signed already. */
+/** Whom four eyes keep away: who posted the revision and who sent its mesh. */
+export const makersOf = (revision: { authorId: string }, mesh: { createdBy: string }): string[] => [
+  revision.authorId,
+  mesh.createdBy,
+];
+
+/** Those who may still sign a gate: the right role, none of the makers under four eyes, not signed already. */
 export function whoMaySign(
   gate: Pick<GateRow, 'id' | 'rule'>,
-  authorId: string,
+  makers: string[],
   people: WorkspacePerson[],
   signed: Pick<SignatureRow, 'gateId' | 'signerId'>[],
 ): WorkspacePerson[] {
@@ -12,7 +18,7 @@ export function whoMaySign(
   return people.filter(
     (person) =>
       gate.rule.roles.includes(person.role) &&
-      !(gate.rule.fourEyes && person.id === authorId) &&
+      !(gate.rule.fourEyes && makers.includes(person.id)) &&
       !done.has(person.id),
   );
 }

@@ -128,6 +128,10 @@ export const reviewOperations: Operation[] = [
   file('thumbnail', 'A small picture'),
   file('mesh', 'The mesh’s exact bytes'),
   file('pack', 'The release pack'),
+  post(`${revision}/check`, 'Order a check again that was given up', {
+    status: 202,
+    answer: z.object({ jobId: z.uuid() }),
+  }),
   post(`${revision}/pack`, 'Order a pack again whose building failed', {
     status: 202,
     answer: z.object({ jobId: z.uuid() }),

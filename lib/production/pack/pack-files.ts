@@ -60,7 +60,7 @@ function signaturesOf(
 ) {
   return {
     schema: 1,
-    template: { number: template.number, title: template.title },
+    template: { number: template.number, title: template.title, dueOn: template.dueOn },
     revision: {
       id: revision.id,
       letter: revision.letter,

@@ -1,6 +1,7 @@
 import { beforeAll, describe, expect, it, vi } from 'vitest';
 import { tartTray } from '@/db/seed/templates';
 import { createTemplate } from '@/lib/review/create-template';
+import { recheckRevision } from '@/lib/review/recheck-revision';
 import { viewRevision } from '@/lib/review/view-revision';
 import { viewUpload } from '@/lib/review/view-upload';
 import {
@@ -159,6 +160,9 @@ describe('a check run', { timeout: 120_000 }, () => {
   });
 });
 
+const spentTries = async (jobId: string) =>
+  (await database.query('select attempt - handed_back as spent from jobs where id = $1', [jobId])).rows[0];
+
 describe('a job that fails each time', { timeout: 180_000 }, () => {
   it('is given up after three tries, and the page says why', async () => {
     const posted = await postFile(
@@ -167,12 +171,63 @@ describe('a job that fails each time', { timeout: 180_000 }, () => {
       { fileName: 'unlucky.stl', bytes: variant(20) },
       () => void objects.faults.plant({ kind: 'unavailable', method: 'GET', url: /uploads\//, times: 1000 }),
     );
+    const designer = await house.enter('designer');
+    await expect(recheckRevision(designer, posted.revisionId)).rejects.toMatchObject({
+      reason: 'check-not-failed',
+    });
+    // As if the store had been away for longer than a job waits for it.
+    await database.query(
+      "update jobs set created_at = created_at - interval '2 hours' where subject_id = $1",
+      [posted.revisionId],
+    );
     const job = await settledJob(database, posted.revisionId, 120_000);
     objects.faults.clear();
-    expect(job).toMatchObject({ state: 'failed', attempt: 3 });
+    expect(job.state).toBe('failed');
+    expect(await spentTries(job.id)).toMatchObject({ spent: 3 });
     expect(job.error).toMatch(/store does not answer/);
-    const { check } = await viewRevision(await house.enter('designer'), posted.revisionId);
+    const { check } = await viewRevision(designer, posted.revisionId);
     expect(check).toMatchObject({ state: 'failed', error: job.error });
+
+    // Ordered again by those who may post, it is checked; then there is nothing to order.
+    await expect(recheckRevision(await house.enter('reviewer'), posted.revisionId)).rejects.toMatchObject({
+      code: 'forbidden',
+    });
+    const { jobId } = await recheckRevision(await house.enter('lead'), posted.revisionId);
+    expect(await settledJob(database, posted.revisionId)).toMatchObject({ id: jobId, state: 'done' });
+    expect((await viewRevision(designer, posted.revisionId)).check).toMatchObject({
+      state: 'finished',
+      error: null,
+    });
+    await expect(recheckRevision(designer, posted.revisionId)).rejects.toMatchObject({
+      reason: 'check-not-failed',
+    });
+    const { rows } = await database.query(
+      "select detail->>'jobId' as job from audit_entries where action = 'check.ordered-again'",
+    );
+    expect(rows).toEqual([{ job: jobId }]);
+  });
+
+  it('waits, without spending a try, while the store is away, and is done once it is back', async () => {
+    const posted = await postFile(
+      database,
+      house,
+      { fileName: 'patient.stl', bytes: variant(23) },
+      () => void objects.faults.plant({ kind: 'unavailable', method: 'GET', url: /uploads\//, times: 1000 }),
+    );
+    const id = await vi.waitFor(
+      async () => {
+        const { rows } = await database.query<{ id: string; n: number }>(
+          "select id, attempt as n from jobs where subject_id = $1 and state = 'queued'",
+          [posted.revisionId],
+        );
+        if (!(rows[0]?.n >= 4)) throw new Error(`the job stands at ${JSON.stringify(rows[0])}`);
+        return rows[0].id;
+      },
+      { timeout: 120_000, interval: 50 },
+    );
+    expect(await spentTries(id)).toMatchObject({ spent: 0 });
+    objects.faults.clear();
+    expect(await settledJob(database, posted.revisionId, 120_000)).toMatchObject({ state: 'done' });
   });
 
   it('is given up at once where trying again cannot help: other bytes than were posted', async () => {

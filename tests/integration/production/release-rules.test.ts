@@ -7,6 +7,8 @@ import {
 import { POST as recall } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/recall/route';
 import { POST as release } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/release/route';
 import { POST as retire } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/retire/route';
+import { GET as getMesh } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/mesh/route';
+import { viewRevision } from '@/lib/review/view-revision';
 import type { Role } from '@/lib/workspaces/roles';
 import { callRoute } from '@/tests/support/call-route';
 import {
@@ -148,10 +150,20 @@ describe('a released revision', { timeout: 240_000 }, () => {
       ...refusedAs('pack-not-built'),
     });
 
+    const seenBy = async (role: Role) => viewRevision(await house.enter(role), approved.revisionId);
+    const producers = await seenBy('producer');
+    expect(producers.release).toMatchObject({ pack: null, packJob: { state: 'failed', error: job.error } });
+    expect(producers.can.rebuild).toBe(true);
+    expect((await seenBy('approver')).can.rebuild).toBe(false);
+
     stored.body = honest;
     expect(await call(orderPack, 'reviewer', approved, {})).toMatchObject({ status: 403 });
     expect(await call(orderPack, 'producer', approved, {})).toMatchObject({ status: 202 });
     expect(await settledJob(database, await releaseIdOf(approved))).toMatchObject({ state: 'done' });
+    expect(await seenBy('producer')).toMatchObject({
+      release: { pack: { fileName: expect.any(String) }, packJob: { state: 'done', error: null } },
+      can: { rebuild: false },
+    });
     expect(await call(getPack, 'approver', approved)).toMatchObject({ status: 307 });
     expect(await call(getPack, 'reviewer', approved)).toMatchObject({ status: 403 });
     expect(await call(getPack, 'lead', approved, undefined, other)).toMatchObject({ status: 404 });
@@ -170,6 +182,19 @@ describe('a released revision', { timeout: 240_000 }, () => {
     expect(await call(recall, 'producer', approved, reason)).toMatchObject({ status: 200 });
     expect(await stateOf(approved)).toBe('recalled');
     expect(await call(recall, 'producer', approved, reason)).toMatchObject({ status: 409 });
+    expect(await call(getMesh, 'approver', approved)).toMatchObject({
+      status: 409,
+      ...refusedAs('recalled'),
+    });
+    expect(await call(getMesh, 'lead', approved)).toMatchObject({ status: 307 });
+    for (const [role, may] of [
+      ['producer', false],
+      ['lead', true],
+    ] as const)
+      expect((await viewRevision(await house.enter(role), approved.revisionId)).can).toMatchObject({
+        mesh: may,
+        download: may,
+      });
     expect(await call(getPack, 'producer', approved)).toMatchObject({
       status: 409,
       ...refusedAs('recalled'),

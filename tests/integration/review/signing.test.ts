@@ -2,7 +2,16 @@ import { sql } from 'drizzle-orm';
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { withTenant } from '@/db/tenant';
 import { digestOf } from '@/lib/audit/canonical';
-import type { WorkspaceContext } from '@/lib/auth/context';
+import { personContext, type WorkspaceContext } from '@/lib/auth/context';
+import { verifyRevision } from '@/lib/audit/verify-revision';
+import { releaseRevision } from '@/lib/production/release-revision';
+import { changeTemplate } from '@/lib/review/change-template';
+import { openDraft } from '@/lib/review/open-draft';
+import { postRevision } from '@/lib/review/post-revision';
+import { findRevision } from '@/lib/review/revision-data';
+import { saveDraft } from '@/lib/review/save-draft';
+import { viewTemplate } from '@/lib/review/view-template';
+import { viewToday } from '@/lib/review/view-today';
 import { loadAgreed } from '@/lib/review/load-agreed';
 import { replyToThread } from '@/lib/review/reply-to-thread';
 import { returnGate } from '@/lib/review/return-gate';
@@ -24,6 +33,7 @@ import {
   postChecked,
   raise,
   runCheck,
+  sendMesh,
   shown,
   sign,
 } from '@/tests/support/factory';
@@ -135,6 +145,64 @@ describe('signing', () => {
     const seen = await shown(lead, posted.revisionId);
     await refused(() => signGate(lead, id, seen), { code: 'forbidden', reason: 'four-eyes' });
     await sign(designer, posted.revisionId);
+  });
+
+  it('keeps four eyes also from who sent the mesh that somebody else posted', async () => {
+    const { templateId } = await postChecked(house);
+    const uploadId = await sendMesh(lead, templateId);
+    const draft = await openDraft(designer, templateId);
+    const { version } = await saveDraft(designer, templateId, {
+      uploadId,
+      recipe: draft.recipe,
+      note: '',
+      version: draft.version,
+    });
+    const { revisionId } = await postRevision(designer, templateId, { version });
+    await runCheck(house.workspace.id, revisionId);
+    const { id, awaited } = await gateOf(lead, revisionId, 'studio');
+    expect(awaited).toEqual([]);
+    expect((await viewRevision(lead, revisionId)).can.sign).toBeNull();
+    const waits = async ({ person }: WorkspaceContext) =>
+      (await viewToday(personContext(person))).items.filter(
+        ({ kind, letter }) => kind === 'sign' && letter === 'B',
+      );
+    expect(await waits(lead)).toEqual([]);
+    const seen = await shown(lead, revisionId);
+    await refused(() => signGate(lead, id, seen), {
+      code: 'forbidden',
+      reason: 'four-eyes',
+      message: expect.stringContaining('You sent the mesh of revision B'),
+    });
+  });
+
+  it('covers title and due date: a change of either has to be read first, and what was signed stands', async () => {
+    const { revisionId, templateId } = await postChecked(house);
+    const rename = async (change: object) => {
+      const { version } = await viewTemplate(lead, templateId);
+      await changeTemplate(lead, templateId, { ...change, version });
+    };
+    const { id } = await gateOf(lead, revisionId, 'studio');
+    const first = (await viewRevision(lead, revisionId)).template.title;
+    const seen = await shown(lead, revisionId);
+    await rename({ dueOn: '2027-02-03' });
+    await refused(() => signGate(lead, id, seen), { code: 'conflict', reason: 'content-changed' });
+    await sign(lead, revisionId);
+    await rename({ title: 'Between the gates' });
+    await sign(approver, revisionId);
+    await rename({ title: 'After the lock', dueOn: null });
+    const agreed = await loadAgreed(lead, revisionId);
+    const named = { title: 'Between the gates', dueOn: '2027-02-03' };
+    expect(agreed.template).toMatchObject(named);
+    expect(agreed.lock.content.template).toMatchObject(named);
+    expect(agreed.signatures.map(({ content }) => content?.template.title)).toEqual([
+      first,
+      'Between the gates',
+    ]);
+    await releaseRevision(lead, revisionId, {});
+    const verified = await withTenant(lead, async (tx) =>
+      verifyRevision(tx, await findRevision(tx, house.workspace.id, revisionId)),
+    );
+    expect(verified.faults).toEqual([]);
   });
 
   it('asks each gate for its own roles, in order', async () => {

@@ -37,19 +37,20 @@ const names = (...args: Parameters<typeof whoMaySign>) => whoMaySign(...args).ma
 
 describe('whoMaySign', () => {
   it('asks for the role', () => {
-    expect(names(gate({}), 'zoe', people, [])).toEqual(['ada', 'ben']);
-    expect(names(gate({ roles: ['approver'] }), 'zoe', people, [])).toEqual(['dee']);
-    expect(names(gate({ roles: [] }), 'zoe', people, [])).toEqual([]);
+    expect(names(gate({}), ['zoe'], people, [])).toEqual(['ada', 'ben']);
+    expect(names(gate({ roles: ['approver'] }), ['zoe'], people, [])).toEqual(['dee']);
+    expect(names(gate({ roles: [] }), ['zoe'], people, [])).toEqual([]);
   });
 
-  it('leaves the author out under four eyes only', () => {
-    expect(names(gate({}), 'ada', people, [])).toEqual(['ben']);
-    expect(names(gate({ fourEyes: false }), 'ada', people, [])).toEqual(['ada', 'ben']);
+  it('leaves out who posted it and who sent the mesh, under four eyes only', () => {
+    expect(names(gate({}), ['ada'], people, [])).toEqual(['ben']);
+    expect(names(gate({}), ['zoe', 'ada'], people, [])).toEqual(['ben']);
+    expect(names(gate({ fourEyes: false }), ['ada'], people, [])).toEqual(['ada', 'ben']);
   });
 
   it('counts a name once a gate', () => {
-    expect(names(gate({}), 'zoe', people, [{ gateId: 'g', signerId: 'ben' }])).toEqual(['ada']);
-    expect(names(gate({}), 'zoe', people, [{ gateId: 'other', signerId: 'ben' }])).toEqual(['ada', 'ben']);
+    expect(names(gate({}), ['zoe'], people, [{ gateId: 'g', signerId: 'ben' }])).toEqual(['ada']);
+    expect(names(gate({}), ['zoe'], people, [{ gateId: 'other', signerId: 'ben' }])).toEqual(['ada', 'ben']);
   });
 });
 

@@ -31,6 +31,7 @@ describe('primaryStep', () => {
       at: '2026-12-02T08:00:00.000Z',
       note: '',
       pack,
+      packJob: null,
     };
     const released = revision({ state: 'released', release, can: { ...nothing, download: true } });
     expect(primaryStep(released, addresses)).toMatchObject({ kind: 'download', href: '/pack' });
