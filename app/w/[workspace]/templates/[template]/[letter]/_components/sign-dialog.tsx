@@ -1,25 +1,20 @@
 'use client';
 
-import { useEffect, useRef, useState } from 'react';
-import { ApiError, explainError, newIdempotencyKey } from '@/app/_components/api-client';
+import { useEffect, useRef } from 'react';
+import { explainError } from '@/app/_components/api-client';
 import { Button } from '@/app/_components/button';
 import { Dialog } from '@/app/_components/dialog';
 import { ErrorState } from '@/app/_components/error-state';
-import { notify } from '@/app/_components/notices';
 import { PasswordField } from '@/app/_components/password-field';
 import { Skeleton } from '@/app/_components/skeleton';
 import { TextArea } from '@/app/_components/text-field';
-import { ReturnInput, SignInput, type ContentView, type RevisionView } from '@/lib/review/schemas';
 import { useSignOff } from '../_hooks/use-room-commands';
-import { useContent } from '../_hooks/use-room-data';
-import { contentChanges } from './content-changes';
+import { useSignForm, type SigningGate } from '../_hooks/use-sign-form';
 import { ContentSummary } from './content-summary';
 import { useRoom } from './room-context';
 
-type Gate = NonNullable<RevisionView['can']['sign']>;
-
 export interface SignDialogProps {
-  gate: Gate;
+  gate: SigningGate;
   /** `sign` puts the name to it, `return` sends it back with a reason. */
   decision: 'sign' | 'return';
   isOpen: boolean;
@@ -36,6 +31,12 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
       : `Return revision ${revision.letter} of ${revision.template.number}`;
   const form = useSignForm({ gate, decision, isOpen, signOff, onDone: () => onOpenChange(false) });
   const { content, problem, errors } = form;
+  const element = useRef<HTMLFormElement>(null);
+  // Whoever is told what is wrong stands where it is wrong.
+  useEffect(() => {
+    if (!errors.password && !errors.reason) return;
+    element.current?.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus();
+  }, [errors]);
   return (
     <Dialog
       title={title}
@@ -90,7 +91,7 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
           )}
         </section>
         <form
-          ref={form.element}
+          ref={element}
           className="flex flex-col gap-4"
           onSubmit={(event) => {
             event.preventDefault();
@@ -144,112 +145,4 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
       </div>
     </Dialog>
   );
-}
-
-function useSignForm(given: {
-  gate: Gate;
-  decision: 'sign' | 'return';
-  isOpen: boolean;
-  signOff: ReturnType<typeof useSignOff>;
-  onDone: () => void;
-}) {
-  const { gate, decision, isOpen, signOff, onDone } = given;
-  const { workspace, revision } = useRoom();
-  const query = useContent(workspace.id, revision.id, isOpen);
-  const [password, setPassword] = useState('');
-  const [reason, setReason] = useState('');
-  const [errors, setErrors] = useState<{ password?: string; reason?: string }>({});
-  const [problem, setProblem] = useState<string | null>(null);
-  const [key, setKey] = useState(newIdempotencyKey);
-  /** The content that the signer has read; a newer one is only shown together with what changed. */
-  const [read, setRead] = useState<ContentView | null>(null);
-  const [changes, setChanges] = useState<string[]>([]);
-  const [wasOpen, setWasOpen] = useState(isOpen);
-  const element = useRef<HTMLFormElement>(null);
-
-  // Whoever is told what is wrong stands where it is wrong.
-  useEffect(() => {
-    if (!errors.password && !errors.reason) return;
-    element.current?.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus();
-  }, [errors]);
-
-  if (wasOpen !== isOpen) {
-    setWasOpen(isOpen);
-    setPassword('');
-    setErrors({});
-    setProblem(null);
-    setRead(null);
-    setChanges([]);
-    setKey(newIdempotencyKey());
-  }
-  const latest = isOpen && !query.isFetching ? (query.data ?? null) : null;
-  if (latest && latest.digest !== read?.digest) {
-    if (read) {
-      setChanges(contentChanges(read, latest));
-      setPassword('');
-      setKey(newIdempotencyKey());
-    }
-    setRead(latest);
-  }
-
-  const refused = async (error: unknown) => {
-    const { detail } = explainError(error);
-    if (!(error instanceof ApiError)) return setProblem(detail);
-    if (error.reason === 'wrong-password') return setErrors({ password: detail });
-    if (error.reason === 'content-changed') {
-      setPassword('');
-      await query.refetch();
-      return;
-    }
-    // A refusal is an answer: the next press is another request. Without an answer it is the same one again.
-    if (error.status !== 0) setKey(newIdempotencyKey());
-    setProblem(detail);
-  };
-
-  const submit = () => {
-    if (!read || signOff.isPending) return;
-    const schema = decision === 'sign' ? SignInput : ReturnInput;
-    const parsed = schema.safeParse({ digest: read.digest, password, reason });
-    setProblem(null);
-    if (!parsed.success) {
-      const issues = Object.fromEntries(parsed.error.issues.map((i) => [i.path[0], i.message]));
-      return setErrors(issues);
-    }
-    setErrors({});
-    signOff.mutate(
-      {
-        gateId: gate.gateId,
-        digest: read.digest,
-        password,
-        reason: decision === 'return' ? reason.trim() : undefined,
-        key,
-      },
-      {
-        onSuccess: () => {
-          notify(
-            decision === 'sign'
-              ? `Signed for the ${gate.gateName.toLowerCase()}. Your signature is recorded.`
-              : 'Returned. The studio has been told why.',
-          );
-          onDone();
-        },
-        onError: (error) => void refused(error),
-      },
-    );
-  };
-
-  return {
-    element,
-    content: read,
-    changes,
-    errors,
-    problem,
-    password,
-    reason,
-    setPassword,
-    setReason,
-    submit,
-    loadError: query.isError && !read ? query.error : null,
-    reload: () => void query.refetch(),
-  };
 }
