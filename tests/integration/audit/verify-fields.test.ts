@@ -77,6 +77,14 @@ beforeAll(async () => {
   await settleThread(approver, thread.id, { settled: true, version: thread.version });
   await waiveFailing(await house.enter('lead'), revisionId);
   await sign(await house.enter('lead'), revisionId);
+  // Joins the docket between two signatures: the first one stands on an earlier content.
+  await openThread(approver, revisionId, {
+    clientKey: randomUUID(),
+    body: text('For the next batch we would like a lower cup.'),
+    findingId: null,
+    pin: null,
+    mustSettle: false,
+  });
   await sign(approver, revisionId);
   const { id } = await releaseRevision(await house.enter('producer'), revisionId, { note: 'Run of ten.' });
   await settledJob(database, id);
@@ -116,6 +124,20 @@ describe('a superuser’s change', () => {
     const verdict = await verify(true);
     expect(verdict.faults).toEqual([]);
     expect(verdict).toMatchObject({ revisions: 1, objects: 2 });
+  });
+
+  it('finds signatures on two contents, and the pack has both', async () => {
+    const { rows: signed } = await database.query<{ content_digest: string }>(
+      'select content_digest from signatures order by signed_at',
+    );
+    const [first, last] = signed.map(({ content_digest }) => content_digest);
+    expect(first).not.toBe(last);
+    const { rows } = await database.query<{ files: { name: string; sha256: string }[] }>(
+      'select files from packs',
+    );
+    const sums = new Map(rows[0].files.map(({ name, sha256 }) => [name, sha256]));
+    expect(sums.get('content.json')).toBe(last);
+    expect(sums.get(`content-as-signed-${first.slice(0, 12)}.json`)).toBe(first);
   });
 
   it('is noticed in every field of every frozen table', async () => {
