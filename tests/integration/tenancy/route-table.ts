@@ -171,7 +171,7 @@ export const routes: Record<string, Route> = {
     POST: { may: ['designer'], names: upload, body: { number: 1, etag: 'x' } },
   }),
   'workspaces/[workspace]/uploads/[upload]/complete': w({ POST: { may: ['designer'], names: upload } }),
-  'workspaces/[workspace]/uploads/[upload]/cancel': w({ POST: { may: ['designer'], names: upload } }),
+  'workspaces/[workspace]/uploads/[upload]/cancel': w({ POST: { may: ['designer', 'lead'], names: upload } }),
 
   'workspaces/[workspace]/revisions/[revision]': read(revision),
   'workspaces/[workspace]/revisions/[revision]/docket': read(revision),
