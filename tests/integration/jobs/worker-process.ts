@@ -76,3 +76,5 @@ export function killWorkers(): void {
   for (const child of running) child.kill('SIGKILL');
 }
 afterAll(killWorkers);
+// Should the run be broken off before that, none stays behind.
+process.once('exit', killWorkers);
