@@ -198,10 +198,10 @@ describe('the whole job', () => {
     // The people concerned read of it.
     const signed = await mailTo(
       'mara@larkfield.example',
-      (mail) =>
-        /signed|locked|agreed/i.test(mail.subject + mail.text) && /Petit four tray/.test(mail.subject),
+      (mail) => /Petit four tray/.test(mail.subject) && /is approved and locked/.test(mail.subject),
     );
-    expect(signed.text).toMatch(/Anselm Brandt/);
+    expect(signed.text).toMatch(/Anselm Brandt, approver/);
+    expect(signed.text.replace(/\s+/g, ' ')).toContain('I agree to this revision for the client');
     const released = await mailTo(
       'anselm@quillon.example',
       (mail) => /released/i.test(mail.subject) && /Petit four tray/.test(mail.subject),
