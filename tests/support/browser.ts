@@ -48,6 +48,8 @@ export async function visitor(
     baseURL: inject('product').baseUrl,
     viewport: { width: 1440, height: 900 },
     acceptDownloads: true,
+    // Contrast is judged on what stands, not on a colour on its way to another.
+    reducedMotion: 'reduce',
     ...options,
   });
   const problems: string[] = [];
