@@ -8,6 +8,7 @@ const { rows } = await client.query<{ listens: boolean }>(
   `select exists (
      select from pg_stat_activity
      where application_name = 'firstpull-listen' and usename = current_user
+       and datname = current_database()
        and client_addr is not distinct from inet_client_addr()
    ) as listens`,
 );

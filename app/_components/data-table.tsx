@@ -42,7 +42,7 @@ export function DataTable<Row>(props: DataTableProps<Row>) {
   const head = columns.find((column) => column.isHead) ?? columns[0];
   return (
     <div
-      className={clsx('border border-rule bg-sheet', !stack && 'overflow-x-auto')}
+      className={clsx('border border-rule bg-sheet', stack ? 'sm:overflow-x-auto' : 'overflow-x-auto')}
       {...(stack ? {} : { role: 'region', 'aria-label': caption, tabIndex: 0 })}
     >
       <table role="table" className={clsx('w-full border-collapse text-base', stack && 'max-sm:block')}>

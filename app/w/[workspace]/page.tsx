@@ -89,7 +89,7 @@ function columns(home: string, state: ListState): Column<TemplateSummary>[] {
       key: 'picture',
       label: 'Picture',
       wideOnly: true,
-      className: 'w-24',
+      className: 'w-24 max-lg:hidden',
       cell: (row) =>
         row.thumbnailUrl ? (
           // eslint-disable-next-line @next/next/no-img-element -- a signed address of the store, not for the optimiser
