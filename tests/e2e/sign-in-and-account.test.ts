@@ -1,18 +1,10 @@
-import AxeBuilder from '@axe-core/playwright';
 import type { Page } from 'playwright-core';
 import { describe, expect, inject, it } from 'vitest';
+import { axeFindings } from '../support/axe';
 import { visitor } from '../support/browser';
 
-const tags = ['wcag2a', 'wcag2aa', 'wcag21a', 'wcag21aa', 'wcag22aa', 'best-practice'];
 const { people } = inject('product');
 const someone = people[0];
-
-async function findings(page: Page): Promise<string[]> {
-  const { violations } = await new AxeBuilder({ page }).withTags(tags).analyze();
-  return violations.map(
-    ({ id, nodes }) => `${id}: ${nodes.map((node) => node.html.slice(0, 120)).join(' | ')}`,
-  );
-}
 
 async function signIn(page: Page, next: string, password = someone.password): Promise<void> {
   await page.goto(`/sign-in?next=${encodeURIComponent(next)}`, { waitUntil: 'networkidle' });
@@ -37,7 +29,7 @@ describe.each(['light', 'dark'] as const)('public pages in the %s theme at 360 p
     const { context, page } = await visitor({ viewport: { width: 360, height: 740 }, colorScheme });
     await page.goto(path, { waitUntil: 'networkidle' });
     await page.locator('h1').waitFor();
-    expect(await findings(page)).toEqual([]);
+    expect(await axeFindings(page)).toEqual([]);
     expect(await page.evaluate(() => document.documentElement.scrollWidth)).toBeLessThanOrEqual(360);
     expect(await page.locator('h1').count()).toBe(1);
     expect(await page.title()).toMatch(/Firstpull/);
@@ -53,7 +45,7 @@ describe('signing in', () => {
     await page.getByText('Write your e-mail address.').waitFor();
     expect(await page.evaluate(() => document.activeElement?.getAttribute('name'))).toBe('email');
     expect(await page.getByLabel('E-mail').getAttribute('aria-invalid')).toBe('true');
-    expect(await findings(page)).toEqual([]);
+    expect(await axeFindings(page)).toEqual([]);
 
     await page.getByLabel('E-mail').fill(someone.email);
     await page.getByRole('textbox', { name: 'Password' }).fill('certainly not this one');
@@ -89,7 +81,7 @@ describe('the account page', () => {
     expect((await saved).status()).toBe(200);
     await page.getByText('Dark', { exact: true }).click();
     await page.waitForFunction(() => document.documentElement.dataset.theme === 'dark');
-    expect(await findings(page)).toEqual([]);
+    expect(await axeFindings(page)).toEqual([]);
 
     const html = await (await context.request.get('/account')).text();
     expect(html).toMatch(/<html[^>]*data-theme="dark"/);
@@ -137,7 +129,7 @@ describe('the account page', () => {
     await you.focus();
     await page.keyboard.press('Enter');
     await page.getByRole('menuitem', { name: 'Sign out' }).waitFor();
-    expect(await findings(page)).toEqual([]);
+    expect(await axeFindings(page)).toEqual([]);
     await page.keyboard.press('Escape');
     await page.getByRole('menu').waitFor({ state: 'detached' });
     expect(await you.evaluate((element) => element === document.activeElement)).toBe(true);
