@@ -2,7 +2,7 @@ import { uuidv7 } from 'uuidv7';
 import type { TenantTx } from '@/db/tenant';
 import { workspaceIdOf, type JobContext, type WorkspaceContext } from '@/lib/auth/context';
 import { personChannel, workspaceChannel } from '@/realtime/channels';
-import { liveEvents, type LiveEvent } from '@/realtime/events';
+import { readLiveEvent, type LiveEvent } from '@/realtime/events';
 import { insertOutbox } from './outbox-data';
 
 /** Tells everybody in the workspace, after commit, that something changed. */
@@ -32,11 +32,12 @@ export async function queueLiveToPeople(
 }
 
 function row(workspaceId: string, channel: string, event: LiveEvent) {
-  const data = liveEvents[event.name].parse(event.data);
+  const checked = readLiveEvent(event.name, event.data);
+  if (!checked) throw new Error(`The live event "${event.name}" does not carry what it should.`);
   return {
     workspaceId,
     kind: 'live' as const,
-    payload: { channel, name: event.name, data },
+    payload: { channel, ...checked },
     dedupeKey: uuidv7(),
   };
 }

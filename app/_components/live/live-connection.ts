@@ -1,7 +1,6 @@
 import type PusherClient from 'pusher-js';
 import type { Channel, PresenceChannel } from 'pusher-js';
-import type { LiveEvent } from '@/realtime/events';
-import { readLiveEvent } from './read-live-event';
+import { readLiveEvent, type LiveEvent } from '@/realtime/events';
 
 /** What a browser needs to reach the realtime server; the key is public. */
 export interface LiveConfig {

@@ -1,8 +1,12 @@
-import { livePayload, type LivePayload } from '@/realtime/events';
+import { z } from 'zod';
+import { readLiveEvent, type LivePayload } from '@/realtime/events';
 import { publish } from '@/realtime/publish';
 import { log } from '@/lib/log/log';
 import { backoffS } from './backoff';
 import { markSent, markUnsendable, putOff, takeDue, type OutboxItem } from './outbox-relay-data';
+
+/** What `queueLive` stores in the outbox. */
+const stored = z.object({ channel: z.string(), name: z.string(), data: z.unknown() });
 
 const batch = 100;
 /** Pages fetch anew when they connect again; an event of before is of no use to them. */
@@ -13,11 +17,11 @@ export async function deliverLive(): Promise<boolean> {
   const items = await takeDue('live', batch, 30);
   const fresh: { item: OutboxItem; payload: LivePayload }[] = [];
   for (const item of items) {
-    const payload = livePayload.safeParse(item.payload);
-    if (!payload.success) await markUnsendable([item.id], 'not a live event');
+    const payload = readPayload(item.payload);
+    if (!payload) await markUnsendable([item.id], 'not a live event');
     else if (Date.now() - item.createdAt.getTime() > staleMs)
       await markUnsendable([item.id], 'stale: the realtime server was away');
-    else fresh.push({ item, payload: payload.data });
+    else fresh.push({ item, payload });
   }
   // The realtime server takes ten a call; a failure costs only those of its own call.
   for (let i = 0; i < fresh.length; i += 10) {
@@ -33,4 +37,10 @@ export async function deliverLive(): Promise<boolean> {
     }
   }
   return items.length === batch;
+}
+
+function readPayload(payload: unknown): LivePayload | null {
+  const outer = stored.safeParse(payload);
+  const event = outer.success ? readLiveEvent(outer.data.name, outer.data.data) : null;
+  return event && outer.success ? { ...event, channel: outer.data.channel } : null;
 }

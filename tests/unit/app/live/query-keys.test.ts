@@ -1,7 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { queryKeys, staleAfter } from '@/app/_components/live/query-keys';
-import { readLiveEvent } from '@/app/_components/live/read-live-event';
-import { liveEventNames } from '@/realtime/events';
+import { liveEventNames, readLiveEvent } from '@/realtime/events';
 
 const id = '0192f1c4-0000-7000-8000-000000000001';
 const other = '0192f1c4-0000-7000-8000-000000000002';
@@ -52,8 +51,18 @@ describe('readLiveEvent', () => {
     ['an event of the protocol', 'pusher:subscription_succeeded', {}],
     ['an id that is none', 'people.changed', { id: 'me' }],
     ['no data', 'docket.changed', undefined],
+    ['a property of every object', 'toString', { id }],
+    ['a word too long', 'job.progressed', { id, subjectId: id, stage: 'x'.repeat(61), progress: 0 }],
     ['progress beyond the end', 'job.progressed', { id, subjectId: id, stage: 'x', progress: 2 }],
   ])('drops %s', (_what, name, data) => {
     expect(readLiveEvent(name, data)).toBeNull();
+  });
+
+  it('leaves out what the event does not carry, and keeps what it may', () => {
+    const data = { id, templateId: other, version: 3, note: 'words' };
+    expect(readLiveEvent('revision.changed', data)).toEqual({
+      name: 'revision.changed',
+      data: { id, templateId: other, version: 3 },
+    });
   });
 });
