@@ -1,11 +1,9 @@
 'use client';
 
-import { zodResolver } from '@hookform/resolvers/zod';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { useForm } from 'react-hook-form';
 import type { Role } from '@/lib/workspaces/role-names';
-import { InviteClientInput, InviteStaffInput } from '@/lib/workspaces/schemas';
 import { api, explainError } from '../api-client';
 import { Button } from '../button';
 import { Controlled } from '../controlled';
@@ -13,6 +11,7 @@ import { Dialog, DialogTrigger } from '../dialog';
 import { FormProblem } from '../form-problem';
 import { notify } from '../notices';
 import { RadioGroup } from '../radio-group';
+import { schemaResolver } from '../schema-resolver';
 import { TextField } from '../text-field';
 import { roleWords } from './role-words';
 
@@ -24,6 +23,10 @@ type Props = {
   roles: readonly Role[];
   place: string;
 };
+
+const schemas = () => import('@/lib/workspaces/schemas');
+const inviteClient = schemaResolver(async () => (await schemas()).InviteClientInput);
+const inviteStaff = schemaResolver(async () => (await schemas()).InviteStaffInput);
 
 /** Invites somebody by mail, in one of the roles of a side. */
 export function InvitePerson({ apiPath, side, roles, place }: Props) {
@@ -41,7 +44,7 @@ function InviteDialog({ apiPath, side, roles, place, close }: Props & { close: (
   const [problem, setProblem] = useState<string | null>(null);
   const { control, handleSubmit, formState } = useForm<Values>({
     defaultValues: { email: '', role: roles.at(-1) },
-    resolver: zodResolver(side === 'client' ? InviteClientInput : InviteStaffInput) as never,
+    resolver: (side === 'client' ? inviteClient : inviteStaff) as never,
   });
 
   const send = handleSubmit(async (values) => {

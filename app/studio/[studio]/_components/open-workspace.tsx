@@ -1,6 +1,5 @@
 'use client';
 
-import { zodResolver } from '@hookform/resolvers/zod';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { useForm } from 'react-hook-form';
@@ -9,10 +8,14 @@ import { Button } from '@/app/_components/button';
 import { Controlled } from '@/app/_components/controlled';
 import { Dialog, DialogTrigger } from '@/app/_components/dialog';
 import { FormProblem } from '@/app/_components/form-problem';
+import { schemaResolver } from '@/app/_components/schema-resolver';
 import { TextField } from '@/app/_components/text-field';
-import { CreateWorkspaceInput } from '@/lib/workspaces/schemas';
 
 type Values = { name: string; code: string };
+
+const createWorkspace = schemaResolver(
+  async () => (await import('@/lib/workspaces/schemas')).CreateWorkspaceInput,
+);
 
 /** Opens a workspace for a client organisation, then leads to its people: somebody has to be invited next. */
 export function OpenWorkspace({ studio }: { studio: string }) {
@@ -30,7 +33,7 @@ function OpenWorkspaceDialog({ studio }: { studio: string }) {
   const [problem, setProblem] = useState<string | null>(null);
   const { control, handleSubmit, formState, setError } = useForm<Values>({
     defaultValues: { name: '', code: '' },
-    resolver: zodResolver(CreateWorkspaceInput) as never,
+    resolver: createWorkspace as never,
   });
 
   const open = handleSubmit(async (values) => {

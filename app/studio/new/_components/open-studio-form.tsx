@@ -1,6 +1,5 @@
 'use client';
 
-import { zodResolver } from '@hookform/resolvers/zod';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { useForm } from 'react-hook-form';
@@ -8,17 +7,19 @@ import { api, explainError } from '@/app/_components/api-client';
 import { Button } from '@/app/_components/button';
 import { Controlled } from '@/app/_components/controlled';
 import { FormProblem } from '@/app/_components/form-problem';
+import { schemaResolver } from '@/app/_components/schema-resolver';
 import { TextField } from '@/app/_components/text-field';
-import { OpenStudioInput } from '@/lib/studio/schemas';
 
 type Values = { name: string; timeZone: string };
+
+const openStudio = schemaResolver(async () => (await import('@/lib/studio/schemas')).OpenStudioInput);
 
 export function OpenStudioForm({ timeZone }: { timeZone: string }) {
   const router = useRouter();
   const [problem, setProblem] = useState<string | null>(null);
   const { control, handleSubmit, formState } = useForm<Values>({
     defaultValues: { name: '', timeZone },
-    resolver: zodResolver(OpenStudioInput) as never,
+    resolver: openStudio as never,
   });
 
   const open = handleSubmit(async (values) => {

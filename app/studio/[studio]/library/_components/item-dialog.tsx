@@ -1,6 +1,5 @@
 'use client';
 
-import { zodResolver } from '@hookform/resolvers/zod';
 import { useRouter } from 'next/navigation';
 import { useState } from 'react';
 import { useForm } from 'react-hook-form';
@@ -12,9 +11,10 @@ import { Dialog, DialogTrigger } from '@/app/_components/dialog';
 import { FormProblem } from '@/app/_components/form-problem';
 import { notify } from '@/app/_components/notices';
 import { NumberField } from '@/app/_components/number-field';
+import { schemaResolver } from '@/app/_components/schema-resolver';
 import { Select } from '@/app/_components/select';
 import { TextField } from '@/app/_components/text-field';
-import { libraryInputs, type LibraryItem, type LibraryKind } from '@/lib/studio/schemas';
+import type { LibraryItem, LibraryKind } from '@/lib/studio/schemas';
 import { shelfFields, shelfWords, type ShelfField } from './shelf-fields';
 
 type Values = Record<string, string | number | boolean | null>;
@@ -24,6 +24,15 @@ type Props = {
   kind: LibraryKind;
   /** Left out to add one. */
   item?: LibraryItem;
+};
+
+const shelf = (kind: LibraryKind) =>
+  schemaResolver(async () => (await import('@/lib/studio/schemas')).libraryInputs[kind]);
+const resolvers: Record<LibraryKind, ReturnType<typeof schemaResolver>> = {
+  machines: shelf('machines'),
+  printers: shelf('printers'),
+  sheets: shelf('sheets'),
+  filaments: shelf('filaments'),
 };
 
 /** Adds an item to a shelf, or changes one. */
@@ -58,7 +67,7 @@ function ItemForm({ apiPath, kind, item, close }: Props & { close: () => void })
   const [problem, setProblem] = useState<string | null>(null);
   const { control, handleSubmit, formState, setError } = useForm<Values>({
     defaultValues: valuesOf(kind, item),
-    resolver: zodResolver(libraryInputs[kind]) as never,
+    resolver: resolvers[kind] as never,
   });
 
   const save = handleSubmit(async (values) => {

@@ -1,6 +1,6 @@
-import { zodResolver } from '@hookform/resolvers/zod';
-import type { FieldValues, Resolver } from 'react-hook-form';
-import { recipeSchema } from '@/lib/formability/recipe-schema';
+import { schemaResolver } from '@/app/_components/schema-resolver';
 
 /** The engine's own schema judges the form, so that what the form takes the engine takes. */
-export const recipeResolver = zodResolver(recipeSchema) as unknown as Resolver<FieldValues>;
+export const recipeResolver = schemaResolver(
+  async () => (await import('@/lib/formability/recipe-schema')).recipeSchema,
+);
