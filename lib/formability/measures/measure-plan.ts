@@ -1,3 +1,4 @@
+import { gapFloor } from '../dexel/air';
 import type { Columns } from '../dexel/columns';
 import { cellAt, type Grid } from '../dexel/grid';
 import type { Edges } from '../mesh/build-edges';
@@ -6,6 +7,9 @@ import type { Mesh } from '../mesh/mesh';
 import type { PlanReport } from '../report';
 import { SIN_VERTICAL } from './thresholds';
 import type { Visibility } from './visibility';
+
+/** How far to either side of an edge the columns are looked up, in cells. */
+const BESIDE = 0.75;
 
 export interface PlanInput {
   mesh: Mesh;
@@ -70,7 +74,10 @@ function coveredArea(columns: Columns): number {
   return covered * columns.grid.cell ** 2;
 }
 
-/** Area of the sheet hanging from lips: along each edge between an upward and an overhanging facet. */
+/**
+ * Area of the sheet hanging from lips: along each edge between an overhanging facet and one that is not, down to what
+ * lies outside or, where a wall goes on below an opening, to the opening's floor.
+ */
 function lipArea({ mesh, facets, edges, columns, surface, bore }: PlanInput): number {
   const { position: p } = mesh;
   const { grid } = columns;
@@ -91,17 +98,35 @@ function lipArea({ mesh, facets, edges, columns, surface, bore }: PlanInput): nu
     if (length === 0) continue;
     const inner = thirdVertex(mesh, down, edges.low[e], edges.high[e]) * 3;
     const side = Math.sign(dx * (p[inner + 1] - p[i + 1]) - dy * (p[inner] - p[i]));
-    const outX = (side * dy * 0.75 * grid.cell) / length;
-    const outY = (-side * dx * 0.75 * grid.cell) / length;
+    const outX = (side * dy * BESIDE * grid.cell) / length;
+    const outY = (-side * dx * BESIDE * grid.cell) / length;
     const steps = Math.max(1, Math.ceil(length / grid.cell));
     for (let s = 0; s < steps; s++) {
       const share = (s + 0.5) / steps;
-      const c = cellAt(grid, p[i] + share * dx + outX, p[i + 1] + share * dy + outY);
-      const drop = p[i + 2] + share * (p[j + 2] - p[i + 2]) - (c < 0 ? 0 : surface[c]);
+      const x = p[i] + share * dx;
+      const y = p[i + 1] + share * dy;
+      const z = p[i + 2] + share * (p[j + 2] - p[i + 2]);
+      const c = cellAt(grid, x + outX, y + outY);
+      const outside = c < 0 ? 0 : surface[c];
+      const drop = z - Math.max(outside, floorUnder(columns, cellAt(grid, x - outX, y - outY), z));
       if (drop > 0) area += (drop * length) / steps;
     }
   }
   return area;
+}
+
+/** Floor of the gap of a column whose ceiling is nearest to z; 0 where none is within a cell of it. */
+function floorUnder(columns: Columns, c: number, z: number): number {
+  if (c < 0) return 0;
+  let nearest = columns.grid.cell;
+  let floor = 0;
+  for (let s = columns.start[c]; s < columns.start[c] + 2 * columns.count[c]; s += 2) {
+    const away = Math.abs(columns.z[s] - z);
+    if (away >= nearest) continue;
+    nearest = away;
+    floor = gapFloor(columns, c, s);
+  }
+  return floor;
 }
 
 function thirdVertex(mesh: Mesh, facet: number, a: number, b: number): number {
