@@ -6,6 +6,7 @@ import { measureEdges } from './measures/measure-edges';
 import { measureLayers } from './measures/measure-layers';
 import { measureMacroDraft } from './measures/measure-macro-draft';
 import { measurePlan } from './measures/measure-plan';
+import { measureShadow } from './measures/measure-shadow';
 import { measureWalls } from './measures/measure-walls';
 import type { Facets } from './mesh/measure-facets';
 import type { EffectiveRecipe } from './recipe';
@@ -21,6 +22,15 @@ export function writeSections(part: Part, recipe: EffectiveRecipe): Sections {
   const { machine, print, limits } = recipe;
   const here = (at: Point): Point => [at[0] + mesh.centre[0], at[1] + mesh.centre[1], at[2]];
   const meshReport = describeMesh(prepared, facets, columns);
+  const shadow = measureShadow({
+    mesh,
+    facets,
+    columns,
+    air,
+    visibility,
+    unionVolumeMm3: meshReport.unionVolumeMm3,
+    sound: columns.openColumns + columns.overlapColumns === 0 && prepared.min[2] >= 0,
+  });
   const regions = undercuts.regions.map((region) => ({ ...region, at: here(region.at) }));
   const found = measureEdges(mesh, facets, edges, visibility, holes.bore);
   const margin = 2 * machine.frameMarginMm;
@@ -45,9 +55,9 @@ export function writeSections(part: Part, recipe: EffectiveRecipe): Sections {
     }),
     undercut: {
       ...undercutAreas(facets, visibility, holes.bore),
-      undercutVolumeMm3: air.undercutVolume,
-      enclosedVolumeMm3: air.enclosedVolume,
-      shadowVolumeMm3: air.undercutVolume + air.enclosedVolume,
+      undercutVolumeMm3: shadow.undercut,
+      enclosedVolumeMm3: shadow.enclosed,
+      shadowVolumeMm3: shadow.undercut + shadow.enclosed,
       maxDepthMm: regions.length > 0 ? regions[0].maxDepthMm : 0,
       regions,
     },
