@@ -8,6 +8,7 @@ import { fillRecipe } from './fill-recipe';
 import { judgeWalls } from './measures/judge-walls';
 import { findOverhangs } from './measures/overhangs';
 import { checkCoordinates } from './parse/check-coordinates';
+import { describeSource } from './parse/describe-source';
 import { readMesh } from './parse/read-mesh';
 import { MM_PER_UNIT, type EffectiveRecipe, type RecipeInput } from './recipe';
 import type { Analysis, AnalysisGeometry, Check } from './report';
@@ -17,8 +18,9 @@ import { ENGINE_VERSION } from './version';
 import { writeSections } from './write-sections';
 
 /**
- * Bytes of an STL and a recipe in, report and geometry out. The same input gives the same bits: there is no clock,
- * randomness or environment in here; `timings` are filled only from the clock that a caller lends.
+ * Bytes of an STL or 3MF and a recipe in, report and geometry out (`analyseFile` takes STEP too). The same input gives
+ * the same bits: there is no clock, randomness or environment in here; `timings` are filled only from the clock that a
+ * caller lends.
  *
  * Speed: tests/bench/formability prints it. Tried and lost, by processor time on a million facets: rays through a
  * bounding-volume tree (25 to 60 times the columns' time), a heap in the flood (twice the lists by height), a wave for
@@ -31,7 +33,8 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
   const stages = new Stages(options);
   const effective = fillRecipe(recipe);
   const raw = stages.run('parse', () => {
-    const parsed = readMesh(bytes);
+    const parsed = options.mesh ?? readMesh(bytes);
+    if (parsed.unit) effective.mesh.unit = parsed.unit;
     checkCoordinates(parsed.coords, MM_PER_UNIT[effective.mesh.unit]);
     return { ...parsed, sha256: createHash('sha256').update(bytes).digest('hex') };
   });
@@ -46,6 +49,7 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
       format: raw.format,
       unit: effective.mesh.unit,
       triangles: raw.triangles,
+      ...describeSource(raw),
     },
     recipe: effective,
     ...writeSections(part, effective),

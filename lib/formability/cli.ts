@@ -1,12 +1,12 @@
 import { readFileSync, statSync } from 'node:fs';
-import { analyse } from './analyse';
-import { MAX_FILE_BYTES } from './parse/read-mesh';
+import { analyseFile } from './analyse-file';
+import { MAX_FILE_BYTES } from './parse/size-caps';
 import type { RecipeInput } from './recipe';
 import { summarise } from './summarise';
 import { UnusableInput } from './unusable-input';
 
 const USAGE =
-  'npm run --silent formability -- <mesh.stl> [--recipe recipe.json] [--sheet] [--json] [--geometry-only]';
+  'npm run --silent formability -- <mesh.stl|.3mf|.step> [--recipe recipe.json] [--sheet] [--json] [--geometry-only]';
 const FLAGS = ['--json', '--sheet', '--geometry-only'];
 
 interface Arguments {
@@ -68,12 +68,12 @@ function fail(code: string, message: string, reasons: string[], json: boolean): 
 }
 
 /** The command line: exit 0 when a report was made, whatever it says; 2 when the input cannot be used. */
-export function main(argv: string[]): void {
+export async function main(argv: string[]): Promise<void> {
   const json = argv.includes('--json');
   try {
     const args = readArguments(argv);
     const bytes = readBytes(args.mesh);
-    const { report } = analyse(bytes, readRecipe(args.recipe), {
+    const { report } = await analyseFile(bytes, readRecipe(args.recipe), {
       geometryOnly: args.geometryOnly,
       now: () => performance.now(),
       onProgress: process.stderr.isTTY ? showProgress : undefined,
@@ -90,4 +90,4 @@ export function main(argv: string[]): void {
   }
 }
 
-main(process.argv.slice(2));
+await main(process.argv.slice(2));

@@ -1,17 +1,32 @@
-import { checkCoordinates } from './parse/check-coordinates';
-import { readMesh } from './parse/read-mesh';
 import { suggestScale } from './mesh/suggest-scale';
+import { checkCoordinates } from './parse/check-coordinates';
+import { loadMesh, type LoadOptions } from './parse/load-mesh';
+import type { RawMesh } from './parse/raw-mesh';
+import { readMesh } from './parse/read-mesh';
 import { MM_PER_UNIT, type MeshUnit } from './recipe';
 import type { Inspection, Point } from './report';
 
 /**
- * Parses only: what an upload is told at once.
- * @param unit of the file's coordinates; bounds come in millimetres
+ * Parses only: what an upload is told at once. STL and 3MF; `inspectFile` also takes STEP.
+ * @param unit of the file's coordinates where the format has none of its own; bounds come in millimetres
  * @throws UnusableInput as `analyse` would for the same bytes
  */
 export function inspect(bytes: Uint8Array, unit: MeshUnit = 'mm'): Inspection {
+  return describe(readMesh(bytes), unit);
+}
+
+/** `inspect` for every format, a STEP file converted in a process of its own. */
+export async function inspectFile(
+  bytes: Uint8Array,
+  unit: MeshUnit = 'mm',
+  options: LoadOptions = {},
+): Promise<Inspection> {
+  return describe(await loadMesh(bytes, options), unit);
+}
+
+function describe(raw: RawMesh, given: MeshUnit): Inspection {
+  const unit = raw.unit ?? given;
   const mmPerUnit = MM_PER_UNIT[unit];
-  const raw = readMesh(bytes);
   checkCoordinates(raw.coords, mmPerUnit);
   const min: Point = [Infinity, Infinity, Infinity];
   const max: Point = [-Infinity, -Infinity, -Infinity];
@@ -25,6 +40,7 @@ export function inspect(bytes: Uint8Array, unit: MeshUnit = 'mm'): Inspection {
   const scale = suggestScale(min.map((low, k) => max[k] - low));
   return {
     format: raw.format,
+    unit,
     triangles: raw.triangles,
     boundsMm: { min, max },
     warnings: scale === null ? raw.warnings : [...raw.warnings, 'suspicious_scale'],

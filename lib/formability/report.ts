@@ -1,4 +1,4 @@
-import type { EffectiveRecipe, RecipeInput } from './recipe';
+import type { EffectiveRecipe, MeshUnit, RecipeInput } from './recipe';
 
 /** A place in millimetres: x, y in the file's own frame, z above the bed. */
 export type Point = [number, number, number];
@@ -35,7 +35,23 @@ export type MeshRepair =
   | 'closed_at_bed'
   | 'filled_columns';
 
-export type MeshFormat = 'stl-binary' | 'stl-ascii';
+export type MeshFormat = 'stl-binary' | 'stl-ascii' | '3mf' | 'step';
+
+/** What the figures were read from. */
+export interface InputReport {
+  sha256: string;
+  bytes: number;
+  format: MeshFormat;
+  /** Of the file's coordinates: its own where the format has one, the recipe's otherwise. */
+  unit: string;
+  triangles: number;
+  /** Built objects of a 3MF, solids and shells of a STEP file. */
+  bodies?: number;
+  /** Objects of the file that are no part of the template, one sentence each. */
+  leftOut?: string[];
+  /** STEP: greatest distance between surface and facets that the conversion was asked for. */
+  deflectionMm?: number;
+}
 
 export interface Bounds {
   min: Point;
@@ -289,7 +305,7 @@ export interface Check {
 export interface Report {
   schema: 1;
   engine: string;
-  input: { sha256: string; bytes: number; format: MeshFormat; unit: string; triangles: number };
+  input: InputReport;
   recipe: EffectiveRecipe;
   mesh: MeshReport;
   draft: DraftReport;
@@ -343,6 +359,8 @@ export interface Analysis {
 /** What an upload is told at once. */
 export interface Inspection {
   format: MeshFormat;
+  /** Of the file's coordinates: its own where the format has one, the one asked for otherwise. */
+  unit: MeshUnit;
   triangles: number;
   /** As in the file: neither turned nor moved, scaled by the unit asked for. */
   boundsMm: Bounds;

@@ -1,3 +1,4 @@
+import type { MeshUnit } from '../recipe';
 import type { MeshFormat, MeshWarning } from '../report';
 
 /** Triangles as the file stores them: 9 coordinates each, in the file's unit and frame. */
@@ -7,4 +8,12 @@ export interface RawMesh {
   /** 9 × triangles. */
   coords: Float32Array;
   warnings: MeshWarning[];
+  /** The file's own unit, which wins over the recipe's; missing where the format has none. */
+  unit?: MeshUnit;
+  /** Separate bodies of the file: built objects of a 3MF, solids and shells of a STEP file. */
+  bodies?: number;
+  /** What of the file was left out, one sentence each. */
+  leftOut?: string[];
+  /** Greatest distance between curved surface and facets that the conversion was asked for. */
+  deflectionMm?: number;
 }

@@ -30,7 +30,7 @@ function checkCount(view: DataView, count: number, length: number, warnings: Mes
   const rest = (length - HEADER) % FACET;
   if (count > whole) {
     if (whole > 0 && !facetsLookReal(view, 0, Math.min(whole, 64))) {
-      throw new UnusableInput('not_a_mesh', 'the file is neither a binary STL (its facets hold no coordinates) nor an ASCII one; choose the STL file of the template'); // prettier-ignore
+      throw new UnusableInput('not_a_mesh', 'the file is neither a binary STL (its facets hold no coordinates) nor an ASCII one; choose the STL, 3MF or STEP file of the template'); // prettier-ignore
     }
     const have = `the header says ${count} facets, the file has room for ${whole}`;
     if (rest === 0) {

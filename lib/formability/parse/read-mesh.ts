@@ -2,13 +2,13 @@ import { UnusableInput } from '../unusable-input';
 import type { RawMesh } from './raw-mesh';
 import { readAsciiStl } from './read-ascii-stl';
 import { readBinaryStl } from './read-binary-stl';
-import { looksLikeText, nameOtherFormat } from './sniff-format';
-
-/** Largest file that is read at all, in bytes: about 12 million facets of binary STL. */
-export const MAX_FILE_BYTES = 600_000_000;
+import { read3mf } from './3mf/read-3mf';
+import { MAX_FILE_BYTES } from './size-caps';
+import { isStep, isZip, looksLikeText, nameOtherFormat } from './sniff-format';
 
 /**
- * Reads a binary or ASCII STL; which one is told by size and content, never by the word "solid".
+ * Reads a binary or ASCII STL or a 3MF; which one is told by size and content, never by a name or the word "solid".
+ * A STEP file is turned into a mesh by `loadMesh`, which must wait for another process.
  * @throws UnusableInput with the code, the place and what to do.
  */
 export function readMesh(bytes: Uint8Array): RawMesh {
@@ -22,13 +22,17 @@ export function readMesh(bytes: Uint8Array): RawMesh {
     );
   }
   if (isExactBinary(bytes)) return readBinaryStl(bytes);
+  if (isZip(bytes)) return read3mf(bytes);
+  if (isStep(bytes)) {
+    throw new UnusableInput('unsupported', 'the file is a STEP model, which must be converted first; export it as STL or 3MF'); // prettier-ignore
+  }
   const other = nameOtherFormat(bytes);
   if (other) throw new UnusableInput(other.code, other.message);
   if (looksLikeText(bytes)) return readAsciiStl(bytes);
   if (bytes.length < 84 && bytes.every((byte) => byte > 8 && byte < 127)) {
     throw new UnusableInput(
       'not_a_mesh',
-      'the file is a short text, not a mesh; choose the STL file of the template',
+      'the file is a short text, not a mesh; choose the STL, 3MF or STEP file of the template',
     );
   }
   return readBinaryStl(bytes);

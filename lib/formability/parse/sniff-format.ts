@@ -13,12 +13,10 @@ const SIGNATURES: { at: number; bytes: number[]; name: string; mesh: boolean }[]
   { at: 0, bytes: [0x25, 0x50, 0x44, 0x46], name: 'a PDF document', mesh: false },
   { at: 0, bytes: [0x1f, 0x8b], name: 'a gzip archive', mesh: false },
   { at: 0, bytes: [0x7f, 0x45, 0x4c, 0x46], name: 'a program', mesh: false },
-  { at: 0, bytes: [0x50, 0x4b, 0x03, 0x04], name: 'a ZIP archive (3MF files are such)', mesh: true },
   { at: 0, bytes: [0x67, 0x6c, 0x54, 0x46], name: 'a glTF model', mesh: true },
 ];
 
 const TEXT_MARKS: { mark: RegExp; name: string; mesh: boolean }[] = [
-  { mark: /^\s*ISO-10303-21;/, name: 'a STEP model', mesh: true },
   { mark: /^ply\s/, name: 'a PLY model', mesh: true },
   { mark: /^OFF\s/, name: 'an OFF model', mesh: true },
   { mark: /^\s*(#[^\n]*\n\s*)*(mtllib|o|g|v|vn|vt)\s+\S/, name: 'an OBJ model', mesh: true },
@@ -26,7 +24,19 @@ const TEXT_MARKS: { mark: RegExp; name: string; mesh: boolean }[] = [
   { mark: /^\s*[{[]/, name: 'a JSON document', mesh: false },
 ];
 
-/** Names what the file is when it is plainly something else than an STL; null otherwise. */
+/** True for a ZIP archive, whole, empty or one of several volumes: a 3MF, if anything. */
+export function isZip(bytes: Uint8Array): boolean {
+  return (
+    bytes[0] === 0x50 && bytes[1] === 0x4b && [0x0304, 0x0506, 0x0708].includes(bytes[2] * 256 + bytes[3])
+  );
+}
+
+/** True for a STEP file (ISO 10303-21 clear text), told by its first word, comments before it passed. */
+export function isStep(bytes: Uint8Array): boolean {
+  return /^\s*(\/\*[\s\S]*?\*\/\s*)*ISO-10303-21\s*;/.test(asciiHead(bytes, 4096));
+}
+
+/** Names what the file is when it is plainly something that is not read; null otherwise. */
 export function nameOtherFormat(bytes: Uint8Array): OtherFormat | null {
   const signature = SIGNATURES.find((s) => s.bytes.every((byte, i) => bytes[s.at + i] === byte));
   if (signature) return describe(signature);
@@ -38,10 +48,13 @@ export function nameOtherFormat(bytes: Uint8Array): OtherFormat | null {
 
 function describe(found: { name: string; mesh: boolean }): OtherFormat {
   return found.mesh
-    ? { code: 'unsupported', message: `the file is ${found.name}; this engine reads STL: export binary STL` }
+    ? {
+        code: 'unsupported',
+        message: `the file is ${found.name}; this engine reads STL, 3MF and STEP: export one of them`,
+      }
     : {
         code: 'not_a_mesh',
-        message: `the file is ${found.name}, not a mesh; choose the STL file of the template`,
+        message: `the file is ${found.name}, not a mesh; choose the STL, 3MF or STEP file of the template`,
       };
 }
 

@@ -1,4 +1,4 @@
-const POWERS = Array.from({ length: 23 }, (_, i) => Number(`1e${i}`));
+import { parseNumber, readDecimal } from './decimal';
 
 /** White-space separated words and numbers straight from the bytes, without a string for each number. */
 export class TokenReader {
@@ -51,50 +51,15 @@ export class TokenReader {
     return lines;
   }
 
-  /**
-   * The next number; NaN where there is none. Up to 15 digits and powers within 1e±22 are exact in a double, so
-   * one division or product rounds correctly; anything longer goes through the language's own parser.
-   */
+  /** The next number; NaN where there is none, and `saidNaN` where it was spelt so. */
   number(): number {
     this.nextToken();
     this.saidNaN = false;
-    const { bytes } = this;
-    const end = this.at;
-    let i = this.tokenStart;
-    const negative = bytes[i] === 45;
-    if (negative || bytes[i] === 43) i++;
-    let mantissa = 0;
-    let digits = 0;
-    let exponent = 0;
-    for (; i < end && isDigit(bytes[i]); i++, digits++) mantissa = mantissa * 10 + bytes[i] - 48;
-    if (bytes[i] === 46 && i < end) {
-      for (i++; i < end && isDigit(bytes[i]); i++, digits++, exponent--)
-        mantissa = mantissa * 10 + bytes[i] - 48;
-    }
-    if (digits === 0) return this.slowNumber();
-    if (i < end && (bytes[i] | 32) === 101) {
-      i++;
-      const sign = bytes[i] === 45 ? -1 : 1;
-      if (bytes[i] === 45 || bytes[i] === 43) i++;
-      let power = 0;
-      const from = i;
-      for (; i < end && isDigit(bytes[i]) && power < 10_000; i++) power = power * 10 + bytes[i] - 48;
-      if (i === from) return NaN;
-      exponent += sign * power;
-    }
-    if (i !== end || digits > 15 || exponent > 22 || exponent < -22) return this.slowNumber();
-    const value = exponent < 0 ? mantissa / POWERS[-exponent] : mantissa * POWERS[exponent];
-    return negative ? -value : value;
-  }
-
-  private slowNumber(): number {
-    const text = this.lastText().toLowerCase();
-    if (/^[+-]?(nan|nan\(.*\)|1\.#(qnan|ind|snan).*)$/.test(text)) {
-      this.saidNaN = true;
-      return NaN;
-    }
-    if (/^[+-]?(inf|infinity|1\.#inf.*)$/.test(text)) return text.startsWith('-') ? -Infinity : Infinity;
-    return /^[+-]?(\d+\.?\d*|\.\d+)(e[+-]?\d+)?$/.test(text) ? Number(text) : NaN;
+    const value = readDecimal(this.bytes, this.tokenStart, this.at);
+    if (!Number.isNaN(value)) return value;
+    const slow = parseNumber(this.lastText());
+    this.saidNaN = Number.isNaN(slow);
+    return slow ?? NaN;
   }
 
   private nextToken(): void {
@@ -103,8 +68,4 @@ export class TokenReader {
     this.tokenStart = this.at;
     while (this.at < bytes.length && bytes[this.at] > 32) this.at++;
   }
-}
-
-function isDigit(byte: number): boolean {
-  return byte >= 48 && byte <= 57;
 }

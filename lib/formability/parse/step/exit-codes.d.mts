@@ -1,0 +1,1 @@
+export const EXIT: Record<'done' | 'parentGone' | 'tooSlow' | 'tooMuchMemory' | 'crashed', number>;
