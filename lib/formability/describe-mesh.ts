@@ -1,41 +1,40 @@
 import type { Columns } from './dexel/columns';
+import { isBalanced } from './mesh/build-edges';
+import { judgeShells } from './mesh/judge-shells';
 import type { Facets } from './mesh/measure-facets';
+import type { Placing } from './mesh/place-mesh';
 import type { Prepared } from './mesh/prepare-mesh';
-import { signedVolume } from './mesh/signed-volume';
 import { suggestScale } from './mesh/suggest-scale';
+import { suggestUp } from './mesh/suggest-up';
 import { warnPlacing } from './mesh/warn-placing';
 import type { MeshReport } from './report';
 
-/** Fewer columns than this share that look doubly covered are grazing noise. */
-const STRAY_COLUMNS = 1e-4;
-
 /**
- * The mesh section: facts as stored, warnings and repairs. The union volume is the signed volume after repair less
- * what the columns see covered more than once, so it has no grid error where nothing overlaps.
+ * The mesh section: facts as stored, warnings with their places, and repairs.
+ * @param undercutVolume mm³ of the part as it stands, which tells whether it lies on the wrong side
  */
-export function describeMesh(prepared: Prepared, facets: Facets, columns: Columns): MeshReport {
-  const { mesh, facts, shells, min, max } = prepared;
-  const warnings = new Set(prepared.warnings);
-  const repairs = new Set(prepared.repairs);
-  const placing = warnPlacing(prepared, facets);
-  for (const warning of placing.warnings) warnings.add(warning);
-  const covered = columns.count.reduce((sum, n) => sum + (n > 0 ? 1 : 0), 0);
-  const many = Math.max(2, STRAY_COLUMNS * covered);
-  const overlaps = columns.overlapColumns > many;
-  if (overlaps) warnings.add(shells.count > 1 ? 'overlapping_shells' : 'self_intersection');
-  if (columns.touchingColumns > many) warnings.add('touching_shells');
+export function describeMesh(
+  prepared: Prepared,
+  facets: Facets,
+  columns: Columns,
+  placing: Pick<Placing, 'up' | 'dropToBed'>,
+  undercutVolume: number,
+): MeshReport {
+  const { facts, shells, min, max, edges } = prepared;
+  const judged = judgeShells(prepared, columns);
+  const standing = warnPlacing(prepared, placing);
+  const warnings = new Set([...prepared.warnings, ...judged.warnings, ...standing.warnings]);
+  const repairs = new Set([...prepared.repairs, ...standing.repairs]);
   if (columns.closedAtBed > 0) repairs.add('closed_at_bed');
   if (columns.filledColumns > 0) repairs.add('filled_columns');
   const suggestedScale = suggestScale(min.map((low, k) => max[k] - low));
   if (suggestedScale !== null) warnings.add('suspicious_scale');
-  const sound = columns.openColumns === 0 && min[2] >= 0;
-  const union = sound
-    ? signedVolume(mesh, 0, 0) - (overlaps ? columns.excessVolume : 0)
-    : columns.solidVolume;
+  const suggestedUp = suggestUp(prepared, undercutVolume, columns.solidVolume);
+  if (suggestedUp !== null) warnings.add('orientation');
   return {
     boundsMm: { min, max },
     volumeMm3: facts.volume,
-    unionVolumeMm3: union,
+    unionVolumeMm3: judged.unionVolumeMm3,
     areaMm2: facets.totalArea,
     bedContactAreaMm2: facets.bedArea,
     shells: shells.count,
@@ -44,9 +43,11 @@ export function describeMesh(prepared: Prepared, facets: Facets, columns: Column
     degenerate: facts.degenerate,
     duplicates: facts.duplicates,
     suggestedScale,
-    suggestedUp: placing.suggestedUp,
+    suggestedUp,
     openColumns: columns.openColumns,
+    approximate: !isBalanced(edges),
     warnings: [...warnings].sort(),
     repairs: [...repairs].sort(),
+    places: [...prepared.places, ...standing.places, ...judged.places],
   };
 }

@@ -32,6 +32,9 @@ export type MeshRepair =
   | 'rewound_facets'
   | 'removed_degenerate'
   | 'removed_duplicates'
+  | 'split_at_t_junctions'
+  | 'dropped_to_bed'
+  | 'capped_holes'
   | 'closed_at_bed'
   | 'filled_columns';
 
@@ -58,6 +61,16 @@ export interface Bounds {
   max: Point;
 }
 
+/** Where a warning holds: edges, facets or shells that hang together, at their middle. */
+export interface MeshPlace {
+  code: MeshWarning;
+  at: Point;
+  /** How many edges, facets, corners or shells. */
+  count: number;
+  /** Diagonal of the box round them. */
+  sizeMm: number;
+}
+
 export interface MeshReport {
   boundsMm: Bounds;
   /** Divergence theorem over the triangles as stored, so negative for an inside-out file. */
@@ -77,7 +90,11 @@ export interface MeshReport {
   suggestedUp: Point | null;
   /** Grid columns that did not close (open meshes only). */
   openColumns: number;
+  /** True where the surface is still open after every repair: volumes and plan figures are then estimates. */
+  approximate: boolean;
   warnings: MeshWarning[];
+  /** Up to 12 for each warning that has a place, the gravest first. */
+  places: MeshPlace[];
   repairs: MeshRepair[];
 }
 

@@ -1,6 +1,7 @@
 import { connectAir, type Air } from './dexel/air';
 import { affordGrid } from './dexel/afford-grid';
 import { buildColumns, type Columns } from './dexel/columns';
+import { forgetFacets } from './dexel/forget-facets';
 import { makeGrid } from './dexel/grid';
 import { rasterise } from './dexel/raster';
 import { findAirTraps } from './measures/find-air-traps';
@@ -10,7 +11,6 @@ import { findVents, type Vents } from './measures/find-vents';
 import { measureDraft } from './measures/measure-draft';
 import { refineDepth } from './measures/refine-depth';
 import { findVisibility, type Visibility } from './measures/visibility';
-import { isClosed } from './mesh/build-edges';
 import type { Facets } from './mesh/measure-facets';
 import { prepareMesh, type Prepared } from './mesh/prepare-mesh';
 import type { RawMesh } from './parse/raw-mesh';
@@ -51,7 +51,9 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     const high = [max[0] - mesh.centre[0], max[1] - mesh.centre[1]];
     const grid = affordGrid(mesh, makeGrid(low, high, recipe.grid.cellMm));
     // Only a closed surface is sure to leave each column as often as it enters it.
-    const hits = rasterise(mesh, grid, isClosed(edges) ? 0 : 2);
+    const { capped } = prepared;
+    const hits = rasterise(capped.mesh, grid, capped.sealed ? 0 : 2);
+    if (capped.mesh !== mesh) forgetFacets(hits, mesh.triangles);
     return { columns: buildColumns(hits, grid, shells.ofFacet), perFacet: hits.perFacet };
   });
   const { grid } = columns;

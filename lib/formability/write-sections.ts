@@ -21,7 +21,7 @@ export function writeSections(part: Part, recipe: EffectiveRecipe): Sections {
   const { mesh, edges } = prepared;
   const { machine, print, limits } = recipe;
   const here = (at: Point): Point => [at[0] + mesh.centre[0], at[1] + mesh.centre[1], at[2]];
-  const meshReport = describeMesh(prepared, facets, columns);
+  const meshReport = describeMesh(prepared, facets, columns, recipe.mesh, air.undercutVolume);
   const shadow = measureShadow({
     mesh,
     facets,

@@ -23,6 +23,8 @@ export interface Columns {
   excessVolume: number;
   solidVolume: number;
   overlapColumns: number;
+  /** The columns so counted. */
+  oddColumns: number[];
   touchingColumns: number;
   openColumns: number;
   closedAtBed: number;
@@ -48,6 +50,7 @@ export function buildColumns(hits: Hits, grid: Grid, ofShell: Uint32Array): Colu
     excessVolume: 0,
     solidVolume: 0,
     overlapColumns: 0,
+    oddColumns: [],
     touchingColumns: 0,
     openColumns: 0,
     closedAtBed: 0,
@@ -108,7 +111,10 @@ function buildColumn(out: Columns, c: number, hits: number, ofShell: Uint32Array
     const beside = c % out.grid.nx > 0 ? out.height[c - 1] : 0;
     if (beside > from) pushInterval(out, c, from, beside, fromFacet, -1, ofShell);
   }
-  if (overlap > OVERLAP_MM) out.overlapColumns++;
+  if (overlap > OVERLAP_MM) {
+    out.overlapColumns++;
+    out.oddColumns.push(c);
+  }
   const n = out.count[c];
   if (n > 0) out.height[c] = z[first + 2 * n - 1];
   for (let s = first; s < first + 2 * n; s += 2) out.solidVolume += z[s + 1] - z[s];

@@ -95,3 +95,12 @@ export function neighbourOver(edges: Edges, facet: number, side: number): number
 export function isClosed(edges: Edges): boolean {
   return edges.count > 0 && edges.boundary + edges.nonManifold + edges.inconsistent === 0;
 }
+
+/** True where every edge is used as often one way as the other, so that a winding number is defined everywhere. */
+export function isBalanced(edges: Edges): boolean {
+  if (edges.count === 0) return false;
+  if (isClosed(edges)) return true;
+  if (edges.boundary + edges.inconsistent > 0) return false;
+  for (let e = 0; e < edges.count; e++) if (edges.forward[e] !== edges.backward[e]) return false;
+  return true;
+}

@@ -17,6 +17,8 @@ export interface Placed {
   zBeforeDrop: number;
   /** Largest absolute coordinate in millimetres, for the warning `precision`. */
   reach: number;
+  /** Rows of the turn from the file's frame, null where nothing was turned. */
+  turn: number[] | null;
 }
 
 /** Scales to millimetres, turns `up` to +Z by the least turn, drops to the bed and recentres x and y. */
@@ -56,11 +58,11 @@ export function placeMesh(weld: Weld, placing: Placing): Placed {
   min[2] -= drop;
   max[2] -= drop;
   const mesh: Mesh = { triangles: weld.index.length / 3, vertices, index: weld.index, position, centre };
-  return { mesh, min, max, zBeforeDrop, reach };
+  return { mesh, min, max, zBeforeDrop, reach, turn };
 }
 
 /** Rows of the rotation that takes `up` to +Z by the shortest way; null where nothing turns. */
-function turnToUp(up: [number, number, number]): number[] | null {
+export function turnToUp(up: readonly [number, number, number]): number[] | null {
   const length = Math.hypot(...up);
   const [x, y, z] = up.map((value) => value / length);
   if (z > 1 - 1e-12) return null;

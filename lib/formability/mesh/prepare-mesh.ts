@@ -1,15 +1,21 @@
 import type { RawMesh } from '../parse/raw-mesh';
-import type { MeshRepair, MeshWarning } from '../report';
+import type { MeshPlace, MeshRepair, MeshWarning } from '../report';
 import { UnusableInput } from '../unusable-input';
-import { buildEdges, isClosed, type Edges } from './build-edges';
+import { buildEdges, isBalanced, isClosed, type Edges } from './build-edges';
+import { capHoles, type Capped } from './cap-holes';
 import { dropFacets, markCollapsed, markDuplicates } from './drop-facets';
+import { shellBoxes } from './facet-boxes';
 import { findShells, type Shells } from './find-shells';
+import { gatherFaults } from './gather-faults';
+import { gatherPlaces, placesOfBoxes } from './gather-places';
 import { measureFacets, type Facets } from './measure-facets';
+import type { Mesh } from './mesh';
 import { orientShells } from './orient-shells';
 import { placeMesh, type Placed, type Placing } from './place-mesh';
 import { rewindFacets } from './rewind-facets';
-import { signedVolume } from './signed-volume';
 import { sortTriangles } from './sort-triangles';
+import { splitTJunctions } from './split-t-junctions';
+import { storedVolume } from './stored-volume';
 import { weldTolerant } from './weld-tolerant';
 import { weldVertices, type Weld } from './weld-vertices';
 
@@ -26,6 +32,8 @@ export interface Prepared extends Placed {
   facets: Facets;
   edges: Edges;
   shells: Shells;
+  /** The mesh with its holes closed, where it has any. */
+  capped: Capped;
   /** As stored. */
   facts: {
     watertight: boolean;
@@ -34,8 +42,11 @@ export interface Prepared extends Placed {
     degenerate: number;
     duplicates: number;
   };
+  /** What the file's coordinates can tell apart, and no less than what is welded: mm. */
+  toleranceMm: number;
   warnings: Set<MeshWarning>;
   repairs: Set<MeshRepair>;
+  places: MeshPlace[];
 }
 
 /**
@@ -45,67 +56,74 @@ export interface Prepared extends Placed {
 export function prepareMesh(raw: RawMesh, placing: Placing): Prepared {
   const warnings = new Set<MeshWarning>(raw.warnings);
   const repairs = new Set<MeshRepair>();
-  const { weld, edges: stored } = weldFully(raw, placing, warnings, repairs);
+  const { weld, edges: stored, joined } = weldFully(raw, placing);
   const placed = placeMesh(weld, placing);
   const { mesh } = placed;
+  const toleranceMm = Math.max(WELD_MM, 4 * placed.reach * 2 ** -23);
   const asStored = measureFacets(mesh);
-  const { degenerate, totalArea } = asStored;
-  if (totalArea === 0) {
+  if (asStored.totalArea === 0) {
     throw new UnusableInput('no_triangles', 'no facet of the file has an area; export the body again');
   }
-  const closed = isClosed(stored);
-  const volume = closed ? signedVolume(mesh, 0, 0) : signedVolume(mesh, -mesh.centre[0], -mesh.centre[1]);
+  const places: MeshPlace[] = [];
+  if (joined.length > 0) {
+    warnings.add('needs_tolerant_weld');
+    repairs.add('tolerant_weld');
+    places.push(...gatherPlaces('needs_tolerant_weld', mesh.position, mesh.centre, joined, 1));
+  }
   const { boundary, nonManifold, inconsistent } = stored;
+  const { degenerate } = asStored;
   const facts = {
-    watertight: closed,
+    watertight: isClosed(stored),
     edges: { boundary, nonManifold, inconsistent },
-    volume,
+    volume: storedVolume(raw.coords, isBalanced(stored)) * placing.mmPerUnit ** 3,
     degenerate,
     duplicates: 0,
   };
   if (degenerate > 0) warnings.add('degenerate_triangles');
   if (nonManifold > 0) warnings.add('nonmanifold_edge');
   if (boundary > 0) warnings.add('not_watertight');
+  if (inconsistent > 0) warnings.add('inconsistent_winding');
   if (mesh.triangles > MANY_FACETS) warnings.add('too_large');
   if (placed.reach * 2 ** -24 > COARSE_STEP_MM) warnings.add('precision');
 
-  const drop = new Uint8Array(mesh.triangles);
-  if (degenerate > 0 && markCollapsed(mesh.index, drop) > 0) repairs.add('removed_degenerate');
-  if (nonManifold + inconsistent > 0) {
-    facts.duplicates = markDuplicates(mesh.index, stored, mesh.vertices, drop);
-    if (facts.duplicates > 0) {
+  const { drop, duplicate } = markWaste(mesh, stored, asStored);
+  places.push(...gatherFaults(mesh, stored, asStored, duplicate));
+  let edges = stored;
+  if (drop) {
+    if (markCollapsed(mesh.index, drop) > 0) repairs.add('removed_degenerate');
+    if (duplicate) {
+      facts.duplicates = duplicate.reduce((sum, one) => sum + one, 0);
       warnings.add('duplicate_triangles');
       repairs.add('removed_duplicates');
     }
+    edges = takeIndex(mesh, dropFacets(mesh.index, drop));
   }
-  let edges = stored;
-  if (repairs.has('removed_degenerate') || facts.duplicates > 0) {
-    mesh.index = dropFacets(mesh.index, drop);
-    mesh.triangles = mesh.index.length / 3;
-    edges = buildEdges(mesh.index, mesh.vertices);
-  }
+  if (edges.boundary > 0) edges = mendTJunctions(mesh, edges, toleranceMm, warnings, repairs, places);
   const shells = findShells(mesh.index, mesh.vertices);
-  if (edges.inconsistent > 0) {
-    warnings.add('inconsistent_winding');
-    if (rewindFacets(mesh.index, edges) > 0) repairs.add('rewound_facets');
+  if (edges.inconsistent > 0 && rewindFacets(mesh.index, edges) > 0) {
+    repairs.add('rewound_facets');
+    edges = takeIndex(mesh, mesh.index);
   }
-  if (orientShells(mesh, shells) > 0) {
-    if (!warnings.has('inconsistent_winding')) warnings.add('inverted');
+  const turned = orientShells(mesh, shells, edges);
+  if (turned.length > 0) {
     repairs.add('flipped_inside_out');
+    if (!warnings.has('inconsistent_winding')) {
+      warnings.add('inverted');
+      places.push(...placesOfShells(mesh, shells, turned));
+    }
   }
   const facets = repairs.size === 0 ? asStored : measureFacets(mesh);
-  return { ...placed, facets, edges, shells, facts, warnings, repairs };
+  const capped = capHoles(mesh, edges, facets.totalArea);
+  if (capped.atBed) repairs.add('closed_at_bed');
+  if (capped.elsewhere) repairs.add('capped_holes');
+  return { ...placed, facets, edges, shells, capped, facts, toleranceMm, warnings, repairs, places };
 }
 
-function weldFully(
-  raw: RawMesh,
-  placing: Placing,
-  warnings: Set<MeshWarning>,
-  repairs: Set<MeshRepair>,
-): { weld: Weld; edges: Edges } {
+function weldFully(raw: RawMesh, placing: Placing): { weld: Weld; edges: Edges; joined: number[] } {
   const weld = weldVertices(sortTriangles(raw.coords));
   const edges = buildEdges(weld.index, weld.vertices);
-  if (edges.boundary === 0) return { weld, edges };
+  const asIs = { weld, edges, joined: [] };
+  if (edges.boundary === 0) return asIs;
   const loose = new Uint8Array(weld.vertices);
   for (let e = 0; e < edges.count; e++) {
     if (edges.forward[e] + edges.backward[e] !== 1) continue;
@@ -113,10 +131,60 @@ function weldFully(
     loose[edges.high[e]] = 1;
   }
   const tighter = weldTolerant(weld, loose, WELD_MM / placing.mmPerUnit);
-  if (tighter.vertices === weld.vertices) return { weld, edges };
+  if (tighter.joined.length === 0) return asIs;
   const tighterEdges = buildEdges(tighter.index, tighter.vertices);
-  if (tighterEdges.boundary >= edges.boundary) return { weld, edges };
-  warnings.add('needs_tolerant_weld');
-  repairs.add('tolerant_weld');
-  return { weld: tighter, edges: tighterEdges };
+  if (tighterEdges.boundary >= edges.boundary) return asIs;
+  return { weld: tighter, edges: tighterEdges, joined: tighter.joined };
+}
+
+/** Facets to leave out: collapsed ones and repeated ones; nulls where there is nothing of the kind. */
+function markWaste(
+  mesh: Mesh,
+  edges: Edges,
+  facets: Facets,
+): { drop: Uint8Array | null; duplicate: Uint8Array | null } {
+  if (facets.degenerate + edges.nonManifold + edges.inconsistent === 0)
+    return { drop: null, duplicate: null };
+  const drop = new Uint8Array(mesh.triangles);
+  const collapsed = facets.degenerate > 0 ? markCollapsed(mesh.index, drop) : 0;
+  const duplicate = drop.slice();
+  const repeated = edges.nonManifold + edges.inconsistent > 0 ? markDuplicates(mesh.index, edges, mesh.vertices, duplicate) : 0; // prettier-ignore
+  for (let t = 0; t < drop.length; t++) {
+    if (drop[t]) duplicate[t] = 0;
+    else drop[t] = duplicate[t];
+  }
+  return { drop: collapsed + repeated > 0 ? drop : null, duplicate: repeated > 0 ? duplicate : null };
+}
+
+function takeIndex(mesh: Mesh, index: Uint32Array): Edges {
+  mesh.index = index;
+  mesh.triangles = index.length / 3;
+  return buildEdges(index, mesh.vertices);
+}
+
+function mendTJunctions(
+  mesh: Mesh,
+  edges: Edges,
+  tolerance: number,
+  warnings: Set<MeshWarning>,
+  repairs: Set<MeshRepair>,
+  places: MeshPlace[],
+): Edges {
+  const split = splitTJunctions(mesh.index, mesh.position, edges, tolerance);
+  if (split === null) return edges;
+  warnings.add('t_junction');
+  places.push(...gatherPlaces('t_junction', mesh.position, mesh.centre, split.vertices, 1));
+  const mended = buildEdges(split.index, mesh.vertices);
+  if (mended.boundary >= edges.boundary) return edges;
+  repairs.add('split_at_t_junctions');
+  return takeIndex(mesh, split.index);
+}
+
+function placesOfShells(mesh: Mesh, shells: Shells, which: number[]): MeshPlace[] {
+  return placesOfBoxes(
+    'inverted',
+    shellBoxes(mesh.index, mesh.position, shells.ofFacet, shells.count),
+    which,
+    mesh.centre,
+  );
 }

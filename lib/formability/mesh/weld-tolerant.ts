@@ -5,9 +5,9 @@ const CELL = 16;
 
 /**
  * Welds again: each vertex marked `loose` (it lies on an open edge) joins the first earlier loose one within
- * `tolerance`, a length in the mesh's own unit.
+ * `tolerance`, a length in the mesh's own unit. `joined` are the new numbers of the vertices that took in others.
  */
-export function weldTolerant(weld: Weld, loose: Uint8Array, tolerance: number): Weld {
+export function weldTolerant(weld: Weld, loose: Uint8Array, tolerance: number): Weld & { joined: number[] } {
   const { coords, vertices } = weld;
   const cell = tolerance * CELL;
   let size = 16;
@@ -49,12 +49,16 @@ export function weldTolerant(weld: Weld, loose: Uint8Array, tolerance: number): 
   return compact(weld, target);
 }
 
-function compact(weld: Weld, target: Uint32Array): Weld {
+function compact(weld: Weld, target: Uint32Array): Weld & { joined: number[] } {
   const number = new Uint32Array(weld.vertices);
   const coords = new Float32Array(weld.coords.length);
+  const joined: number[] = [];
   let kept = 0;
   for (let v = 0; v < weld.vertices; v++) {
-    if (target[v] !== v) continue;
+    if (target[v] !== v) {
+      joined.push(number[target[v]]);
+      continue;
+    }
     for (let k = 0; k < 3; k++) coords[3 * kept + k] = weld.coords[3 * v + k];
     number[v] = kept++;
   }
@@ -62,5 +66,6 @@ function compact(weld: Weld, target: Uint32Array): Weld {
     index: weld.index.map((v) => number[target[v]]),
     vertices: kept,
     coords: coords.slice(0, 3 * kept),
+    joined,
   };
 }

@@ -1,0 +1,127 @@
+/** Boxes in a leaf: fewer make more nodes, more make more pairs; four was fastest on curved surfaces. */
+const LEAF = 4;
+const AXIS_CELLS = 1023;
+/** Room for the item number below the 30-bit cell key in a double. */
+const ITEM_SPAN = 2 ** 22;
+
+/** Boxes in Morton order under a complete binary tree; finds every pair of overlapping boxes. */
+export interface BoxTree {
+  /** Item numbers in tree order. */
+  order: Uint32Array;
+  /** 6 per item (minimum, maximum), as given. */
+  boxes: Float64Array;
+  /** 6 per node, heap numbered from 1. */
+  nodes: Float64Array;
+  leaves: number;
+}
+
+/** @param boxes 6 per item: minimum x, y, z, maximum x, y, z; fewer than 4 million items */
+export function buildBoxTree(boxes: Float64Array): BoxTree {
+  const n = boxes.length / 6;
+  const order = mortonOrder(boxes, n);
+  let leaves = 1;
+  while (leaves * LEAF < n) leaves *= 2;
+  const nodes = new Float64Array(12 * leaves);
+  for (let node = leaves; node < 2 * leaves; node++) {
+    clear(nodes, node);
+    const last = leafStart(n, leaves, node + 1);
+    for (let k = leafStart(n, leaves, node); k < last; k++) widen(nodes, 6 * node, boxes, 6 * order[k]);
+  }
+  for (let node = leaves - 1; node > 0; node--) {
+    clear(nodes, node);
+    widen(nodes, 6 * node, nodes, 12 * node);
+    widen(nodes, 6 * node, nodes, 12 * node + 6);
+  }
+  return { order, boxes, nodes, leaves };
+}
+
+/**
+ * Visits every pair of items whose boxes come within `near` of one another, each once, until `visit` returns false.
+ * @returns false where it was stopped
+ */
+export function visitPairs(tree: BoxTree, near: number, visit: (a: number, b: number) => boolean): boolean {
+  const { order, boxes, nodes, leaves } = tree;
+  const n = order.length;
+  const stack: number[] = [1, 1];
+  while (stack.length > 0) {
+    const b = stack.pop() as number;
+    const a = stack.pop() as number;
+    if (a !== b && !meet(nodes, 6 * a, nodes, 6 * b, near)) continue;
+    if (a < leaves) {
+      const [al, bl] = [2 * a, 2 * b];
+      stack.push(al, bl, al + 1, bl + 1, al, bl + 1);
+      if (a !== b) stack.push(al + 1, bl);
+      continue;
+    }
+    const lastA = leafStart(n, leaves, a + 1);
+    const lastB = leafStart(n, leaves, b + 1);
+    for (let i = leafStart(n, leaves, a); i < lastA; i++) {
+      const one = order[i];
+      for (let j = a === b ? i + 1 : leafStart(n, leaves, b); j < lastB; j++) {
+        const other = order[j];
+        if (meet(boxes, 6 * one, boxes, 6 * other, near) && !visit(one, other)) return false;
+      }
+    }
+  }
+  return true;
+}
+
+function leafStart(n: number, leaves: number, node: number): number {
+  return Math.floor((n * (node - leaves)) / leaves);
+}
+
+function meet(p: Float64Array, a: number, q: Float64Array, b: number, near: number): boolean {
+  return (
+    p[a] <= q[b + 3] + near &&
+    q[b] <= p[a + 3] + near &&
+    p[a + 1] <= q[b + 4] + near &&
+    q[b + 1] <= p[a + 4] + near &&
+    p[a + 2] <= q[b + 5] + near &&
+    q[b + 2] <= p[a + 5] + near
+  );
+}
+
+function clear(nodes: Float64Array, node: number): void {
+  nodes.fill(Infinity, 6 * node, 6 * node + 3);
+  nodes.fill(-Infinity, 6 * node + 3, 6 * node + 6);
+}
+
+function widen(to: Float64Array, at: number, from: Float64Array, source: number): void {
+  for (let k = 0; k < 3; k++) {
+    if (from[source + k] < to[at + k]) to[at + k] = from[source + k];
+    if (from[source + 3 + k] > to[at + 3 + k]) to[at + 3 + k] = from[source + 3 + k];
+  }
+}
+
+function mortonOrder(boxes: Float64Array, n: number): Uint32Array {
+  const low = [Infinity, Infinity, Infinity];
+  const high = [-Infinity, -Infinity, -Infinity];
+  for (let i = 0; i < n; i++) {
+    for (let k = 0; k < 3; k++) {
+      const twice = boxes[6 * i + k] + boxes[6 * i + 3 + k];
+      if (twice < low[k]) low[k] = twice;
+      if (twice > high[k]) high[k] = twice;
+    }
+  }
+  const scale = low.map((from, k) => AXIS_CELLS / Math.max(high[k] - from, 1e-300));
+  const keys = new Float64Array(n);
+  for (let i = 0, o = 0; i < n; i++, o += 6) {
+    const x = spread(((boxes[o] + boxes[o + 3] - low[0]) * scale[0]) | 0);
+    const y = spread(((boxes[o + 1] + boxes[o + 4] - low[1]) * scale[1]) | 0);
+    const z = spread(((boxes[o + 2] + boxes[o + 5] - low[2]) * scale[2]) | 0);
+    keys[i] = (x | (y << 1) | (z << 2)) * ITEM_SPAN + i;
+  }
+  keys.sort();
+  const order = new Uint32Array(n);
+  for (let i = 0; i < n; i++) order[i] = keys[i] % ITEM_SPAN;
+  return order;
+}
+
+/** Ten bits, two zeros between each. */
+function spread(value: number): number {
+  let v = value & 0x3ff;
+  v = (v | (v << 16)) & 0x30000ff;
+  v = (v | (v << 8)) & 0x300f00f;
+  v = (v | (v << 4)) & 0x30c30c3;
+  return (v | (v << 2)) & 0x9249249;
+}
