@@ -125,18 +125,34 @@ describe('undercut', () => {
 });
 
 describe('draw', () => {
-  it('a tall post in a narrow frame asks for less height, a wider margin or a thicker sheet', () => {
-    const report = reportOn(box(40, 40, 110), { ...coarse, machine: { frameMarginMm: 20 } });
-    const check = checkOf(report, 'draw');
-    expect(check.status).toBe('caution');
-    expect(check.remedy).toMatch(/^Lower the template to .* mm/);
-    const lower = number(check.remedy);
-    expect(checkOf(reportOn(box(40, 40, Math.floor(lower)), { ...coarse, machine: { frameMarginMm: 20 } }), 'draw').measured).toBeLessThan(3.01); // prettier-ignore
+  const thick = { gaugeMm: 2, minFormedMm: 0.35 };
+
+  it('a tall post in a narrow frame asks for less height or a wider margin, and either would do', () => {
+    const recipe = { ...coarse, sheet: thick, machine: { frameMarginMm: 20 } };
+    const check = checkOf(reportOn(box(40, 40, 110), recipe), 'draw');
+    expect(check).toMatchObject({ status: 'caution', limit: 3, unit: 'ratio' });
+    // Frame 80 × 80; formed area 80² + 160 h; ratio 3 at h = 80.
+    expect(check.measured).toBeCloseTo((6400 + 160 * 110) / 6400, 2);
+    expect(check.remedy).toMatch(/^Lower the template to 80 mm, or widen the frame margin to (\d+) mm\.$/);
+    const margin = Number(/margin to (\d+)/.exec(check.remedy)?.[1]);
+    expect(checkOf(reportOn(box(40, 40, 79.9), recipe), 'draw').status).toBe('pass');
+    const wider = { ...recipe, machine: { frameMarginMm: margin } };
+    expect(checkOf(reportOn(box(40, 40, 110), wider), 'draw').measured).toBeLessThanOrEqual(3);
+  });
+
+  it('fails where even the mean is thinner than the thinnest place may be, and names the gauge that averages it', () => {
+    const at = (gaugeMm: number) =>
+      checkOf(reportOn(box(60, 60, 30), { ...coarse, sheet: { gaugeMm, minFormedMm: 0.5 } }), 'draw');
+    // Frame 120 × 120 = 14 400, formed 14 400 + 4 × 60 × 30 = 21 600: ratio 1.5.
+    expect(at(0.7)).toMatchObject({ status: 'fail', limit: 0.5, unit: 'mm' });
+    expect(at(0.7).measured).toBeCloseTo(0.7 / 1.5, 3);
+    expect(at(0.7).remedy).toContain('take a gauge of 0.75 mm');
+    expect(at(0.76).status).toBe('pass');
   });
 
   it('fails beyond an areal ratio of 5', () => {
     expect(
-      checkOf(reportOn(box(20, 20, 115), { ...coarse, machine: { frameMarginMm: 5 } }), 'draw').status,
+      checkOf(reportOn(box(20, 20, 115), { ...coarse, sheet: { gaugeMm: 8, minFormedMm: 0.35 }, machine: { frameMarginMm: 5 } }), 'draw').status, // prettier-ignore
     ).toBe('fail');
   });
 });
