@@ -6,6 +6,7 @@ import { runChecks } from './checks/run-checks';
 import { facetFlags, facetPositions } from './facet-output';
 import { fillRecipe } from './fill-recipe';
 import { judgeWalls } from './measures/judge-walls';
+import { mapPockets } from './measures/map-pockets';
 import { findOverhangs } from './measures/overhangs';
 import { checkCoordinates } from './parse/check-coordinates';
 import { describeSource } from './parse/describe-source';
@@ -92,13 +93,16 @@ function judge(
   });
 }
 
-function drawGeometry({ prepared, facets, columns, draft, visibility }: Part): AnalysisGeometry {
+function drawGeometry({ prepared, facets, columns, holes, flood, draft, visibility, walls }: Part): AnalysisGeometry {
   const { mesh } = prepared;
   const { grid, height } = columns;
+  const pockets = mapPockets(mesh, facets, holes.surface, flood, grid);
   return {
     positions: facetPositions(mesh),
     facetDraftDeg: draft.ofFacet,
-    facetFlags: facetFlags(facets, visibility),
+    facetFlags: facetFlags(facets, visibility, pockets.unvented),
+    facetWallMm: walls.ofFacet,
+    facetSpillMm: pockets.spillMm,
     heightField: {
       cellMm: grid.cell,
       nx: grid.nx,

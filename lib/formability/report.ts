@@ -170,10 +170,22 @@ export interface Spacing {
   between: [Point, Point];
 }
 
+/** Thickness along the surface's normal, of solid parts too; null where nothing bounds it. */
 export interface WallsReport {
+  /** Least thickness of walls (draft below 60°), and where. */
   minMm: number | null;
+  minAt: Point | null;
+  /** Thickness that 5 % and 50 % of the walls' area lie below. */
+  p05Mm: number | null;
+  medianMm: number | null;
+  /** Least thickness of tops (draft from 60° on) of a hollow part. */
   topMm: number | null;
+  /** Least thickness between the bed and a sealed cavity. */
+  floorMm: number | null;
   hollow: boolean;
+  /** A cavity closed all round, or closed by the bed only; vents count as closed. A part may have both. */
+  sealed: boolean;
+  openAtBed: boolean;
 }
 
 export interface EdgesReport {
@@ -363,8 +375,12 @@ export interface AnalysisGeometry {
   /** 9 per facet: oriented, in millimetres, standing on the bed. */
   positions: Float32Array;
   facetDraftDeg: Float32Array;
-  /** Bit 0: on the bed. Bit 1: overhangs or lies in the shadow of the part above. */
+  /** Bit 0: on the bed. Bit 1: overhangs or lies in the shadow of the part above. Bit 2: in a pit without a vent. */
   facetFlags: Uint8Array;
+  /** Normal wall thickness in mm, NaN where the sheet does not touch or nothing bounds it. */
+  facetWallMm: Float32Array;
+  /** Level at which the pit that the facet looks into overflows its outer rim, mm above the bed; NaN without a pit. */
+  facetSpillMm: Float32Array;
   heightField: HeightField;
 }
 

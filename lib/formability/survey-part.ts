@@ -7,8 +7,10 @@ import { rasterise } from './dexel/raster';
 import { findAirTraps } from './measures/find-air-traps';
 import { findSpacing } from './measures/find-spacing';
 import { findUndercuts, type Undercuts } from './measures/find-undercuts';
+import type { Flood } from './measures/map-pockets';
 import { findVents, type Vents } from './measures/find-vents';
 import { measureDraft } from './measures/measure-draft';
+import { measureWalls, type Walls } from './measures/measure-walls';
 import { refineDepth } from './measures/refine-depth';
 import { findVisibility, type Visibility } from './measures/visibility';
 import type { Facets } from './mesh/measure-facets';
@@ -27,9 +29,11 @@ export interface Part {
   undercuts: Undercuts;
   holes: Vents;
   traps: AirTrap[];
+  flood: Flood;
   spacing: Spacing[];
   visibility: Visibility;
   draft: ReturnType<typeof measureDraft>;
+  walls: Walls;
   /** Width, depth, height above the bed. */
   size: Point;
 }
@@ -57,22 +61,24 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     return { columns: buildColumns(hits, grid, shells.ofFacet), perFacet: hits.perFacet };
   });
   const { grid } = columns;
-  const air = stages.run('air', () => connectAir(columns));
+  const holes = stages.run('vents', () =>
+    findVents(mesh, facets, edges, columns, shells.ofFacet, print.holeModel),
+  );
+  // Vents closed: no sheet goes through them, so a vented hollow template is no undercut.
+  const air = stages.run('air', () => connectAir(columns, 'open', holes.surface));
   const undercuts = stages.run('undercut', () => {
     const found = findUndercuts(columns, air, limits.undercutDepthMm, mesh.triangles);
     refineDepth(mesh, found.regions, grid.cell, shells.ofFacet);
     return found;
   });
-  const holes = stages.run('vents', () =>
-    findVents(mesh, facets, edges, columns, shells.ofFacet, print.holeModel),
-  );
-  const { traps, spacing } = stages.run('pits', () => ({
-    traps: findAirTraps(holes.surface, grid, holes.vents),
+  const { traps, flood, spacing } = stages.run('pits', () => ({
+    ...findAirTraps(holes.surface, grid, holes.vents),
     spacing: findSpacing(holes.surface, grid, size[2]),
   }));
   const { visibility, draft } = stages.run('facets', () => ({
     visibility: findVisibility(mesh, facets, columns, air, perFacet),
     draft: measureDraft(facets),
   }));
-  return { prepared, facets, columns, air, undercuts, holes, traps, spacing, visibility, draft, size };
+  const walls = stages.run('walls', () => measureWalls(mesh, facets, columns, air, visibility, holes.bore));
+  return { prepared, facets, columns, air, undercuts, holes, traps, flood, spacing, visibility, draft, walls, size };
 }

@@ -7,7 +7,6 @@ import { measureLayers } from './measures/measure-layers';
 import { measureMacroDraft } from './measures/measure-macro-draft';
 import { measurePlan } from './measures/measure-plan';
 import { measureShadow } from './measures/measure-shadow';
-import { measureWalls } from './measures/measure-walls';
 import type { Facets } from './mesh/measure-facets';
 import type { EffectiveRecipe } from './recipe';
 import type { Point, Report } from './report';
@@ -33,6 +32,7 @@ export function writeSections(part: Part, recipe: EffectiveRecipe): Sections {
   });
   const regions = undercuts.regions.map((region) => ({ ...region, at: here(region.at) }));
   const found = measureEdges(mesh, facets, edges, visibility, holes.bore);
+  const walls = part.walls.report;
   const margin = 2 * machine.frameMarginMm;
   return {
     mesh: meshReport,
@@ -67,7 +67,7 @@ export function writeSections(part: Part, recipe: EffectiveRecipe): Sections {
       ...pair,
       between: [here(pair.between[0]), here(pair.between[1])],
     })),
-    walls: measureWalls(mesh, facets, columns, air, visibility, holes.bore),
+    walls: { ...walls, minAt: walls.minAt && here(walls.minAt) },
     edges: { ...found, places: found.places.map((place) => ({ ...place, at: here(place.at) })) },
     layers: measureLayers(facets, print.layerMm, limits.layerGrooveMm),
     print: estimatePrint(

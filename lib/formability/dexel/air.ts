@@ -28,8 +28,13 @@ export function gapFloor(columns: Columns, c: number, s: number): number {
  * Joins gaps of neighbouring columns (4 sides) that overlap in height; a gap that reaches above a neighbour's
  * highest solid opens to the air above the part. The bed is closed.
  * @param rim what lies beyond the grid: open air (the whole part is inside), or unknown (a window on a part)
+ * @param surface the height above which air is open: H, or H with vents closed
  */
-export function connectAir(columns: Columns, rim: 'open' | 'unknown' = 'open'): Air {
+export function connectAir(
+  columns: Columns,
+  rim: 'open' | 'unknown' = 'open',
+  surface: Float64Array = columns.height,
+): Air {
   const { grid, start, count, z } = columns;
   const slots = z.length;
   const joined = new UnionFind(slots);
@@ -40,10 +45,10 @@ export function connectAir(columns: Columns, rim: 'open' | 'unknown' = 'open'): 
   for (let c = 0; c < nx * ny; c++) {
     const i = c % nx;
     const j = (c - i) / nx;
-    markMouths(columns, c, i > 0 ? c - 1 : beyond, mouth);
-    markMouths(columns, c, i + 1 < nx ? c + 1 : beyond, mouth);
-    markMouths(columns, c, j > 0 ? c - nx : beyond, mouth);
-    markMouths(columns, c, j + 1 < ny ? c + nx : beyond, mouth);
+    markMouths(columns, surface, c, i > 0 ? c - 1 : beyond, mouth);
+    markMouths(columns, surface, c, i + 1 < nx ? c + 1 : beyond, mouth);
+    markMouths(columns, surface, c, j > 0 ? c - nx : beyond, mouth);
+    markMouths(columns, surface, c, j + 1 < ny ? c + nx : beyond, mouth);
     if (i + 1 < nx) joinGaps(columns, c, c + 1, joined);
     if (j + 1 < ny) joinGaps(columns, c, c + nx, joined);
   }
@@ -78,10 +83,16 @@ export function connectAir(columns: Columns, rim: 'open' | 'unknown' = 'open'): 
   };
 }
 
-function markMouths(columns: Columns, c: number, beside: number, mouth: Uint8Array): void {
-  const { start, count, z, height } = columns;
+function markMouths(
+  columns: Columns,
+  surface: Float64Array,
+  c: number,
+  beside: number,
+  mouth: Uint8Array,
+): void {
+  const { start, count, z } = columns;
   if (beside === -2) return;
-  const over = beside < 0 ? 0 : height[beside];
+  const over = beside < 0 ? 0 : surface[beside];
   for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
     if (z[s] - gapFloor(columns, c, s) > GAP_MM && z[s] > over + GAP_MM) mouth[s] = 1;
   }
