@@ -1,4 +1,5 @@
 import type { Standing } from '@/lib/review/schemas';
+import { verdictTag } from '@/lib/review/verdict-words';
 import { StatusWord, type State } from './status-word';
 
 const stateOf: Record<Standing, State> = {
@@ -22,9 +23,9 @@ export function StandingWord({ standing }: { standing: Standing }) {
 export function VerdictWord({ verdict }: { verdict: 'pass' | 'caution' | 'fail' | null }) {
   if (verdict === null) return <span className="text-slate">not checked yet</span>;
   const shown = {
-    pass: { state: 'passed', word: 'should form' },
-    caution: { state: 'look-at', word: 'look at findings' },
-    fail: { state: 'must-settle', word: 'will not form as it is' },
+    pass: { state: 'passed', word: verdictTag.pass },
+    caution: { state: 'look-at', word: verdictTag.caution },
+    fail: { state: 'must-settle', word: verdictTag.fail },
   } as const;
   return <StatusWord {...shown[verdict]} />;
 }

@@ -1,4 +1,6 @@
 import type { EntryRow } from './activity-data';
+import { checkName } from './check-words';
+import { verdictTag } from './verdict-words';
 
 export type Told = { text: string; path: string | null };
 type Detail = Record<string, unknown>;
@@ -8,6 +10,9 @@ type Subject = Pick<EntryRow, 'detail' | 'subjectKind' | 'subjectId'>;
 const word = (value: unknown, fallback = '') => (typeof value === 'string' ? value : fallback);
 const quoted = (value: unknown) => `"${word(value).slice(0, 140)}"`;
 const list = (value: unknown) => (Array.isArray(value) ? value.map(String).join(', ') : '');
+const checks = (ids: unknown) =>
+  Array.isArray(ids) ? ids.map((id) => checkName(String(id))).join(', ') : '';
+const verdictOf = ({ verdict }: Detail) => verdictTag[verdict as keyof typeof verdictTag] ?? word(verdict);
 const revision = (d: Detail, at: Place) => `${at.number} revision ${word(d.letter, '?')}`;
 const passed = (d: Detail) => (list(d.gatesPassed) ? `; passed: ${list(d.gatesPassed)}` : '');
 const changed = (d: Detail) => {
@@ -51,11 +56,11 @@ const sentences: Record<string, (d: Detail, at: Place) => string> = {
   'pack.built': (d, at) => `built the release pack of ${revision(d, at)}`,
   'pack.failed': (d, at) => `could not build the release pack of ${revision(d, at)}`,
   'check.finished': (d, at) =>
-    `checked ${revision(d, at)}: ${word(d.verdict)}${list(d.failing) ? ` (${list(d.failing)})` : ''}${passed(d)}`,
+    `checked ${revision(d, at)}: ${verdictOf(d)}${checks(d.failing) ? ` (${checks(d.failing)})` : ''}${passed(d)}`,
   'check.failed': (d, at) => `could not check ${revision(d, at)}: ${word(d.reason)}`,
   'check.ordered-again': (d, at) => `had ${revision(d, at)} checked again`,
   'finding.waived': (d, at) =>
-    `waived the failing check "${word(d.checkId)}" on ${revision(d, at)}: ${word(d.reason)}${passed(d)}`,
+    `waived the failing check "${checkName(word(d.checkId))}" on ${revision(d, at)}: ${word(d.reason)}${passed(d)}`,
   'thread.opened': (d, at) => `noted on ${revision(d, at)}: ${quoted(d.text)}`,
   'note.posted': (d, at) => `replied on ${revision(d, at)}: ${quoted(d.text)}`,
   'thread.settled': (d, at) => `settled an item on ${revision(d, at)}`,

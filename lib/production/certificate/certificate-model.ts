@@ -1,5 +1,6 @@
 import type { Report } from '@/lib/formability/report';
 import type { Agreed } from '@/lib/review/load-agreed';
+import { verdictWords } from '@/lib/review/verdict-words';
 
 /** All that the certificate says, and nothing that it must look up. */
 export type CertificateModel = {
@@ -26,14 +27,8 @@ export const dayOf = (instant: string, timeZone: string) =>
 export const signersOf = ({ agreed }: CertificateModel) =>
   agreed.signatures.filter(({ decision }) => decision === 'sign');
 
-/** What the checks say altogether, with waivers named. */
-export function verdictSentence(model: CertificateModel): string {
-  const { findings } = model.agreed.lock.docket;
-  const count = (status: string) => findings.filter((finding) => finding.status === status).length;
-  const waived = findings.filter(({ status, waiver }) => status === 'fail' && waiver).length;
-  const parts = [`${count('pass')} checks hold`];
-  if (count('caution')) parts.push(`${count('caution')} to look at`);
-  if (waived) parts.push(`${waived} failing, let stand with a reason`);
-  if (count('not-run')) parts.push(`${count('not-run')} not run`);
-  return `${parts.join(', ')}.`;
-}
+/** What the checks say altogether, with waivers and checks not run named. */
+export const verdictSentence = ({ agreed }: CertificateModel): string =>
+  verdictWords(
+    agreed.lock.docket.findings.map(({ status, waiver }) => ({ status, waived: waiver !== null })),
+  );

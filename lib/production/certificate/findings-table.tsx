@@ -1,10 +1,11 @@
 import { Text, View } from '@react-pdf/renderer';
+import { checkName } from '@/lib/review/check-words';
 import type { DocketView } from '@/lib/review/schemas';
 import { zonedTime } from '@/lib/time/zoned-time';
 import { drawable } from './fonts';
 import { StatusShape } from './shapes';
 import { madder, statusColour, styles } from './styles';
-import { checkName, figure, statusWord } from './words';
+import { figure, statusWord } from './words';
 
 type Finding = DocketView['findings'][number];
 const columns = { name: 92, status: 64, measured: 54, limit: 54 };

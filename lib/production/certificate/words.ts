@@ -1,26 +1,3 @@
-const checkNames: Record<string, string> = {
-  mesh: 'Mesh',
-  fit: 'Fit on the machine',
-  draft: 'Draft',
-  undercut: 'Undercut',
-  layers: 'Layer lines',
-  edges: 'Edges and corners',
-  spacing: 'Spacing',
-  draw: 'Draw ratio',
-  sheet: 'Formed sheet',
-  air: 'Trapped air',
-  vents: 'Vents',
-  shell: 'Shell',
-  skin: 'Skin over the infill',
-  walls: 'Walls under pressure',
-  heat: 'Heat',
-  nozzle: 'Nozzle',
-  overhang: 'Overhang',
-  release: 'Release',
-  print: 'Print',
-};
-export const checkName = (id: string) => checkNames[id] ?? id;
-
 export const statusWord: Record<string, string> = {
   pass: 'holds',
   caution: 'look at this',

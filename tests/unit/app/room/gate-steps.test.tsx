@@ -5,7 +5,7 @@ import { gateSteps } from '@/app/w/[workspace]/templates/[template]/[letter]/_co
 import type { RevisionView } from '@/lib/review/schemas';
 import { gate, ids, revision, signature } from './fixtures/revision';
 
-const none = { failing: 0, waived: 0 };
+const none = { failing: 0, waived: 0, notRun: 0 };
 const words = (view: RevisionView, findings = none, mustSettle = 0) =>
   renderToStaticMarkup(<GateLine gates={gateSteps(view, findings, mustSettle)} />)
     .replaceAll(/<[^>]+>/g, ' ')
@@ -23,8 +23,9 @@ describe('the gate line of a revision', () => {
   });
 
   it('names signers with their words, who is awaited, and what must be settled first', () => {
-    const text = words(revision(), { failing: 0, waived: 1 }, 2);
-    expect(text).toContain('one finding waived');
+    const text = words(revision(), { failing: 0, waived: 1, notRun: 5 }, 2);
+    expect(text).toContain('no failing finding open, 1 Dec 2026');
+    expect(text).toContain('one finding waived , 5 checks were not run');
     expect(text).toMatch(/L\. Okafor , lead, 1 Dec 2026, 10:05 UTC “ready for the client”/);
     expect(text).toContain('waits for A. Brandt');
     expect(text).toContain('2 items to settle first');
@@ -41,7 +42,7 @@ describe('the gate line of a revision', () => {
       );
     expect(forming({ state: 'running' })).toContain('being checked');
     expect(forming({ state: 'failed' })).toContain('did not finish');
-    expect(forming({}, { failing: 2, waived: 0 })).toContain('2 findings to mend or to waive');
+    expect(forming({}, { ...none, failing: 2 })).toContain('2 findings to mend or to waive');
   });
 
   it('gives the reason of a return, and closes what came after', () => {

@@ -1,5 +1,5 @@
+import { checkName } from '@/lib/review/check-words';
 import type { ContentView } from '@/lib/review/schemas';
-import { checkName } from './check-names';
 
 /** What is different between the content a signer was shown and the content as it stands, in sentences. */
 export function contentChanges(shown: ContentView, now: ContentView): string[] {

@@ -4,22 +4,16 @@ import type { ReactNode } from 'react';
 import { Digest } from '@/app/_components/digest';
 import { formatBytes } from '@/app/_components/format-figure';
 import { StatusWord, type State } from '@/app/_components/status-word';
+import { checkName } from '@/lib/review/check-words';
 import type { ContentView } from '@/lib/review/schemas';
-import { checkName } from './check-names';
+import { verdictWords } from '@/lib/review/verdict-words';
 
 type Summary = ContentView['summary'];
 
-function verdictWords({ verdict, findings }: Summary): string {
-  if (verdict === null) return 'The check has not finished.';
-  if (verdict === 'pass') return 'Every check that was run is within its limits.';
-  if (verdict === 'caution') return 'It forms; some findings want a look.';
-  const failing = findings.filter((finding) => finding.status === 'fail');
-  const standing = failing.filter((finding) => !finding.waived).length;
-  if (standing > 0) return `${standing} of its findings fail.`;
-  return failing.length === 1
-    ? 'One finding fails and is waived.'
-    : `${failing.length} findings fail; all are waived.`;
-}
+const verdictOf = ({ verdict, findings }: Summary): string =>
+  verdict === null
+    ? 'The check has not finished.'
+    : verdictWords(findings.map(({ status, waived }) => ({ status, waived: waived !== null })));
 
 const findingState: Record<string, State> = {
   fail: 'must-settle',
@@ -49,7 +43,7 @@ export function ContentSummary({ content }: { content: ContentView }) {
           ))}
         </ul>
       </Row>
-      <Row label="Verdict">{verdictWords(summary)}</Row>
+      <Row label="Verdict">{verdictOf(summary)}</Row>
       <Row label="Findings">
         <Findings findings={summary.findings} />
       </Row>

@@ -6,7 +6,6 @@ import { MeasureBar } from '@/app/_components/measure-bar';
 import { usePreferences } from '@/app/_components/preferences-context';
 import { Time } from '@/app/_components/time';
 import type { FindingView } from '@/lib/review/schemas';
-import { checkName } from './check-names';
 import { figureOf, measureOf } from './measure-of';
 import { MetaButton } from './meta-button';
 import { PlaceLinks } from './place-links';

@@ -3,24 +3,22 @@ import { Time } from '@/app/_components/time';
 import type { RevisionView } from '@/lib/review/schemas';
 
 type Gate = RevisionView['gates'][number];
+/** Failing findings that nobody waived, waived ones, and checks that were not run. */
+export interface FindingCounts {
+  failing: number;
+  waived: number;
+  notRun: number;
+}
+
 const count = (n: number, one: string, many: string) => (n === 1 ? `one ${one}` : `${n} ${many}`);
 
 /** The gates as the line shows them, with the two steps that follow every plan: locked and released. */
-export function gateSteps(
-  revision: RevisionView,
-  findings: { failing: number; waived: number },
-  mustSettle: number,
-): GateStep[] {
+export function gateSteps(revision: RevisionView, findings: FindingCounts, mustSettle: number): GateStep[] {
   const steps = revision.gates.map((gate) => stepOf(gate, revision, findings, mustSettle));
   return [...steps, lockedStep(revision), releasedStep(revision)];
 }
 
-function stepOf(
-  gate: Gate,
-  revision: RevisionView,
-  findings: { failing: number; waived: number },
-  mustSettle: number,
-): GateStep {
+function stepOf(gate: Gate, revision: RevisionView, findings: FindingCounts, mustSettle: number): GateStep {
   const signatures = gate.signatures.map((signature) => ({
     name: signature.printedName,
     role: signature.role,
@@ -55,18 +53,22 @@ function stepOf(
   };
 }
 
-function passedLine(gate: Gate, { waived }: { waived: number }): GateStep['line'] {
+/** The rule by which it opened, not a promise that the template forms. */
+function passedLine(gate: Gate, { waived, notRun }: FindingCounts): GateStep['line'] {
   return (
     <>
-      passed {gate.passedAt ? <Time at={gate.passedAt} show="moment" /> : null}
+      no failing finding open, {gate.passedAt ? <Time at={gate.passedAt} show="moment" /> : null}
       {waived > 0 ? <span className="text-ink">, {count(waived, 'finding', 'findings')} waived</span> : null}
+      {notRun > 0 ? (
+        <span className="text-ink">, {count(notRun, 'check was', 'checks were')} not run</span>
+      ) : null}
     </>
   );
 }
 
 function formingLine(
   { check }: RevisionView,
-  { failing }: { failing: number },
+  { failing }: FindingCounts,
   mustSettle: number,
 ): GateStep['line'] {
   if (check.state === 'queued') return 'waits for the check';

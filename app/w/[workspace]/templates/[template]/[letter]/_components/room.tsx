@@ -66,6 +66,7 @@ export function Room({
     (item) => item.finding?.status === 'fail' && !item.finding.waiver,
   ).length;
   const waived = docket.findings.filter((finding) => finding.waiver).length;
+  const notRun = docket.findings.filter((finding) => finding.status === 'not-run').length;
   const step = primaryStep(revision, {
     pack: `${revisionApi(workspace.id, revision.id)}/pack`,
     post: `/w/${workspace.slug}/templates/${revision.template.id}/post`,
@@ -145,7 +146,7 @@ export function Room({
       <div className="flex flex-col gap-4">
         <RoomTitle
           revision={revision}
-          gates={gateSteps(revision, { failing, waived }, groups.settle.length)}
+          gates={gateSteps(revision, { failing, waived, notRun }, groups.settle.length)}
           action={
             step ? (
               <PrimaryAction

@@ -1,7 +1,7 @@
 import type { Point, StageCamera, StagePin } from '@/app/_components/stage/stage-props';
 import type { Units } from '@/app/_components/preferences';
 import { formatNumber } from '@/app/_components/format-figure';
-import { checkName } from './check-names';
+import { checkName } from '@/lib/review/check-words';
 import type { DocketGroup, DocketItem } from './docket-items';
 import { figureOf } from './measure-of';
 
