@@ -1,7 +1,17 @@
 import { redirect } from 'next/navigation';
 import { currentPerson } from '@/lib/auth/session';
+import { NOT_COMPUTED } from '@/lib/formability/checks/not-run';
+import { checkName } from '@/lib/review/check-words';
 import { ButtonLink } from '../_components/link';
 import { SectionDrawing } from './_components/section-drawing';
+
+const nameOf = (id: string) => checkName(id).toLowerCase();
+/** In the words of a sentence: a pocket without a vent is what the check on vents finds. */
+const checkedAlways = ['draft', 'undercuts', 'pockets without a vent', 'layer lines', 'edges', 'draw'];
+const sentence = (names: readonly string[]) => {
+  const words = `${names.slice(0, -1).join(', ')} and ${names[names.length - 1]}`;
+  return words.charAt(0).toUpperCase() + words.slice(1);
+};
 
 const promises = [
   {
@@ -10,7 +20,7 @@ const promises = [
   },
   {
     title: 'See whether it will form',
-    text: 'Draft, undercuts, trapped air, thinning and layer lines are checked on every revision: what was measured, where, what is wanted, and what to change.',
+    text: `${sentence(checkedAlways)} are checked on every revision: what was measured, where, what is wanted, and what to change. ${sentence(NOT_COMPUTED.map(nameOf))} are not computed yet, and every revision says so.`,
   },
   {
     title: 'Know what was agreed',

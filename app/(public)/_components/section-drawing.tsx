@@ -4,7 +4,7 @@ export function SectionDrawing() {
     <figure className="border border-rule bg-sheet">
       <svg
         role="img"
-        aria-label="Section through a template: hatched body, formed sheet over it, a wall with 9.5 degrees of draft, a foot where the sheet thins to 0.31 mm, and a vent of 0.6 mm."
+        aria-label="Section through a template: hatched body, the sheet over it, a wall with 10.4 degrees of draft, an inside corner with a radius of 0.2 mm where 0.8 mm is wanted, a top 60 mm wide, and a vent of 0.6 mm."
         viewBox="0 0 900 290"
         preserveAspectRatio="xMinYMid slice"
         className="h-72 w-full fill-none"
@@ -44,7 +44,7 @@ export function SectionDrawing() {
         </g>
         <g className="fill-ink font-mono" fontSize="12">
           <text x="154" y="34">
-            draft 9.5°
+            draft 10.4°
           </text>
           <text x="342" y="254">
             vent 0.6
@@ -53,12 +53,13 @@ export function SectionDrawing() {
             60.0
           </text>
           <text x="20" y="113" className="fill-madder">
-            0.31 foot
+            radius 0.2
           </text>
         </g>
       </svg>
       <figcaption className="border-t border-rule px-4 py-2 text-sm text-slate">
-        A section through a template, with the sheet drawn ten times thicker. The figures are an example.
+        A section through a template, with the sheet drawn thicker than it is. The figures are an example of
+        what a check measures.
       </figcaption>
     </figure>
   );
