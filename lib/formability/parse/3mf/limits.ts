@@ -1,8 +1,8 @@
 /** Most entries of an archive. */
 export const MAX_ENTRIES = 1_000;
 /** Most bytes of one unpacked part, and of all that are read together. */
-export const MAX_PART_BYTES = 1_000_000_000;
-export const MAX_TOTAL_BYTES = 1_200_000_000;
+export const MAX_PART_BYTES = 800_000_000;
+export const MAX_TOTAL_BYTES = 1_000_000_000;
 /** Most bytes of a relationships part. */
 export const MAX_RELATIONS_BYTES = 1_000_000;
 /** Most bytes of one tag, with its attributes. */

@@ -77,10 +77,8 @@ export class XmlScanner {
       if (next < 0) break;
       at = next;
     }
-    if (at < end && (final || end - at > MAX_TAG_BYTES)) {
-      if (final) throw this.cut(b[at] === LT || this.until ? 'inside a tag or comment' : 'inside an entity');
-      throw this.refuse(at, `has a tag of more than ${MAX_TAG_BYTES / 1024} kB`);
-    }
+    if (end - at > MAX_TAG_BYTES) throw this.refuse(at, `has a tag of more than ${MAX_TAG_BYTES / 1024} kB`);
+    if (final && at < end) throw this.cut(b[at] === LT || this.until ? 'inside a tag or comment' : 'inside an entity'); // prettier-ignore
     b.copyWithin(0, at, end);
     this.before += at;
     this.filled = end - at;
