@@ -1,6 +1,6 @@
 import type { MessagePort } from 'node:worker_threads';
-import { analyse } from '@/lib/formability/analyse';
-import { inspect } from '@/lib/formability/inspect';
+import { analyseFile } from '@/lib/formability/analyse-file';
+import { inspectFile } from '@/lib/formability/inspect';
 import type { RecipeInput, MeshUnit } from '@/lib/formability/recipe';
 import type { Inspection, Report } from '@/lib/formability/report';
 import { UnusableInput } from '@/lib/formability/unusable-input';
@@ -23,9 +23,9 @@ export type Inspected = { ok: true; inspection: Inspection } | Refused;
 export type Analysed = { ok: true; engineVersion: string; report: Report; derived: Derived[] } | Refused;
 
 /** Reads a mesh just far enough to accept or refuse it. */
-export function inspectMesh({ bytes, unit }: InspectTask): Inspected {
+export async function inspectMesh({ bytes, unit }: InspectTask): Promise<Inspected> {
   try {
-    return { ok: true, inspection: inspect(bytes, unit) };
+    return { ok: true, inspection: await inspectFile(bytes, unit) };
   } catch (error) {
     return refused(error);
   }
@@ -36,7 +36,7 @@ export async function analyseMesh({ bytes, recipe, derive, progress }: AnalyseTa
   try {
     const share = derive ? 0.75 : 1;
     const say = (stage: string, fraction: number) => progress?.postMessage({ stage, fraction });
-    const { report, geometry } = analyse(bytes, recipe, {
+    const { report, geometry } = await analyseFile(bytes, recipe, {
       onProgress: (stage, fraction) => say(stage, fraction * share),
     });
     const derived: Derived[] = [];

@@ -13,15 +13,16 @@ function fieldOf(reason: string): { pointer: string; detail: string } {
 
 /**
  * The recipe that a revision is posted and judged under: the draft's fields, the studio's limits, the unit in
- * which the file was read, the engine's defaults elsewhere. Throws `invalid` naming every field that is not right.
+ * which the file was read (a file's own, where `ownUnit`, whatever the draft says), the engine's defaults elsewhere. Throws `invalid` naming every field that is not right.
  */
 export function effectiveRecipe(
   draft: Record<string, unknown>,
   studioLimits: Record<string, number>,
   meshUnit: string,
+  ownUnit = false,
 ): EffectiveRecipe {
   const mesh = (draft.mesh ?? {}) as { unit?: string | null };
-  if (mesh.unit && mesh.unit !== meshUnit)
+  if (!ownUnit && mesh.unit && mesh.unit !== meshUnit)
     throw invalid('The recipe and the file do not agree on the unit of length.', [
       {
         pointer: '/recipe/mesh/unit',

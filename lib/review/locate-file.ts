@@ -4,6 +4,7 @@ import { notFound } from '@/lib/errors/app-error';
 import { store } from '@/lib/storage/store';
 import { asId } from './as-id';
 import { derivativesOf } from './check-data';
+import { mediaTypeOf, nameByFormat } from './mesh-format';
 import { requireNotRecalled } from './recalled';
 import { findRevision, loadRevisionParts } from './revision-data';
 
@@ -28,7 +29,8 @@ export async function locateFile(
     const { template, mesh } = await loadRevisionParts(tx, revision);
     if (file === 'mesh') {
       requireNotRecalled(ctx, revision);
-      return { key: mesh.storeKey, fileName: mesh.fileName, contentType: 'model/stl', inline: false };
+      const fileName = nameByFormat(mesh.fileName, mesh.format);
+      return { key: mesh.storeKey, fileName, contentType: mediaTypeOf(mesh.format), inline: false };
     }
     const made = (await derivativesOf(tx, ctx.workspace.id, mesh.id)).find((row) => row.kind === file);
     if (!made) throw notFound(file);

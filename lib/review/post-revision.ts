@@ -17,6 +17,7 @@ import { effectiveRecipe } from './effective-recipe';
 import { insertGates, newestGatePlan } from './gate-data';
 import { revisionLetter } from './letters';
 import { movedLimits } from './library-data';
+import { hasOwnUnit } from './mesh-format';
 import { workspacePeople } from './people-data';
 import {
   followLatest,
@@ -26,9 +27,11 @@ import {
   lockTemplate,
   type MeshRow,
   type RevisionRow,
+  type TemplateRow,
 } from './revision-data';
 import { mailAbout, tellToday } from './revision-mails';
 import { PostRevisionInput } from './schemas';
+import { tellWithdrawn } from './tell-withdrawn';
 import { findUpload, meshOfUpload } from './upload-data';
 
 /**
@@ -56,13 +59,18 @@ export async function postRevision(
     const mesh = await readyMesh(tx, draft);
     const plan = await newestGatePlan(tx, workspaceId);
     if (!plan) throw conflict('no-gate-plan', 'This workspace has no gate plan yet. Ask a lead to set one.');
-    const body = effectiveRecipe(draft.recipe, await movedLimits(tx, ctx.studio.id), mesh.unit);
+    const limits = await movedLimits(tx, ctx.studio.id);
+    const body = effectiveRecipe(draft.recipe, limits, mesh.unit, hasOwnUnit(mesh.format));
     const before = await latestRevision(tx, workspaceId, id);
     const ordinal = (before?.ordinal ?? 0) + 1;
     const letter = revisionLetter(ordinal - 1);
     // Two revisions in review would ask the same people twice. Signatures that the older one has stay to be seen.
-    if (before?.state === 'in_review')
-      await closeRevision(tx, ctx, before, 'withdrawn', `Replaced by ${letter}.`);
+    const replaced = before?.state === 'in_review' ? before : null;
+    if (replaced) {
+      const reason = `Replaced by ${letter}.`;
+      await closeRevision(tx, ctx, replaced, 'withdrawn', reason);
+      await tellWithdrawn(tx, ctx, { template, revision: replaced, reason }, ['client']);
+    }
 
     const recipe = await insertRecipe(tx, {
       workspaceId,
@@ -112,10 +120,10 @@ export async function postRevision(
         recipeDigest: recipe.digest,
         gatePlan: plan.number,
         carried,
-        replaces: before?.state === 'in_review' ? before.letter : null,
+        replaces: replaced?.letter ?? null,
       },
     });
-    await tellPosted(tx, ctx, template, revision);
+    await tellPosted(tx, ctx, { template, revision, replaces: replaced?.letter ?? null });
     return { revisionId: revision.id, letter };
   });
 }
@@ -138,20 +146,21 @@ async function readyMesh(tx: TenantTx, draft: DraftRow): Promise<MeshRow> {
 async function tellPosted(
   tx: TenantTx,
   ctx: WorkspaceContext,
-  template: Parameters<typeof mailAbout>[3]['template'],
-  revision: RevisionRow,
+  { template, revision, replaces }: { template: TemplateRow; revision: RevisionRow; replaces: string | null },
 ): Promise<void> {
   const people = await workspacePeople(tx, ctx.workspace.id);
   await mailAbout(
     tx,
     ctx,
-    people.filter((person) => person.id !== ctx.person.id),
+    // The client's people are told when the check has ended and there is something to look at (tell-check.ts).
+    people.filter((person) => person.side === 'studio'),
     { template, revision, occasion: `revision-posted:${revision.id}` },
     (base) => ({
       template: 'revision-posted',
       ...base,
       authorName: revision.authorName,
       note: revision.note,
+      replaces,
     }),
   );
   await tellToday(tx, ctx, people, revision.id);

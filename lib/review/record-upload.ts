@@ -1,6 +1,7 @@
 import { withTenant } from '@/db/tenant';
 import { appendEntry } from '@/lib/audit/append-entry';
 import type { JobContext } from '@/lib/auth/context';
+import type { MeshUnit } from '@/lib/formability/recipe';
 import { holdsJob, type Fence } from '@/lib/jobs/fence';
 import { queueLive } from '@/lib/jobs/queue-live';
 import { insertMesh } from './check-data';
@@ -11,6 +12,8 @@ export type ReadMesh = {
   sha256: string;
   bytes: number;
   format: 'stl-binary' | 'stl-ascii' | '3mf' | 'step';
+  /** That the file was read in: its own where it has one, the one that was given with it otherwise. */
+  unit: MeshUnit;
   triangles: number;
   boundsMm: { min: number[]; max: number[] };
 };
@@ -33,7 +36,6 @@ export async function acceptUpload(
       workspaceId: ctx.workspaceId,
       templateId: upload.templateId,
       fileName: upload.fileName,
-      unit: upload.unit,
       storeKey: upload.storeKey,
       createdBy: upload.createdBy,
       ...mesh,

@@ -1,3 +1,4 @@
+import { MAX_STEP_BYTES } from '@/lib/formability/parse/size-caps';
 import { z } from 'zod';
 
 /**
@@ -92,13 +93,19 @@ export type RevisionSummary = z.infer<typeof RevisionSummary>;
 
 // Uploads and drafts
 
-export const StartUploadInput = z.object({
-  fileName: z.string().trim().min(1).max(200),
-  bytes: z.number().int().min(1, 'The file is empty.').max(500_000_000, 'At most 500 MB.'),
-  /** When the file was last written, ms since 1970 in UTC, as the browser tells it. */
-  lastModified: z.number().int().nullable().default(null),
-  unit: lengthUnit.default('mm'),
-});
+export const StartUploadInput = z
+  .object({
+    fileName: z.string().trim().min(1).max(200),
+    bytes: z.number().int().min(1, 'The file is empty.').max(500_000_000, 'At most 500 MB.'),
+    /** When the file was last written, ms since 1970 in UTC, as the browser tells it. */
+    lastModified: z.number().int().nullable().default(null),
+    unit: lengthUnit.default('mm'),
+  })
+  // Told before anything is sent; whatever the name, the same cap is held again when the content is known.
+  .refine(({ fileName, bytes }) => !/\.(step|stp)$/i.test(fileName) || bytes <= MAX_STEP_BYTES, {
+    path: ['bytes'],
+    error: `A STEP file may have at most ${MAX_STEP_BYTES / 1e6} MB. Export the template alone, or as 3MF or STL.`,
+  });
 export type StartUploadInput = z.infer<typeof StartUploadInput>;
 
 export const UploadView = z.object({
@@ -118,6 +125,9 @@ export const UploadView = z.object({
     .object({
       id,
       sha256: z.string(),
+      format: z.enum(['stl-binary', 'stl-ascii', '3mf', 'step']),
+      /** That it was read in: the file's own where it has one. */
+      unit: lengthUnit,
       triangles: z.number(),
       boundsMm: z.object({ min: z.array(z.number()), max: z.array(z.number()) }),
     })

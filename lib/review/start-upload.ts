@@ -7,6 +7,7 @@ import { queueLive } from '@/lib/jobs/queue-live';
 import { uploadKey } from '@/lib/storage/keys';
 import { store } from '@/lib/storage/store';
 import { asId } from './as-id';
+import { UNREAD_MEDIA_TYPE } from './mesh-format';
 import { StartUploadInput, type UploadView } from './schemas';
 import { findTemplate } from './template-data';
 import { countUnfinished, insertUpload } from './upload-data';
@@ -34,7 +35,7 @@ export async function startUpload(
       );
   });
   const storeKey = uploadKey(workspaceId);
-  const multipartId = await store().startMultipart(storeKey, 'model/stl');
+  const multipartId = await store().startMultipart(storeKey, UNREAD_MEDIA_TYPE);
   return withTenant(ctx, async (tx) => {
     const upload = await insertUpload(tx, {
       workspaceId,

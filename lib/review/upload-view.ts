@@ -26,7 +26,14 @@ export async function uploadView(tx: TenantTx, upload: UploadRow): Promise<Uploa
     state: upload.state,
     refusal: upload.refusal,
     mesh: mesh
-      ? { id: mesh.id, sha256: mesh.sha256, triangles: mesh.triangles, boundsMm: mesh.boundsMm }
+      ? {
+          id: mesh.id,
+          sha256: mesh.sha256,
+          format: mesh.format,
+          unit: mesh.unit as UploadView['unit'],
+          triangles: mesh.triangles,
+          boundsMm: mesh.boundsMm,
+        }
       : null,
   };
 }

@@ -117,6 +117,7 @@ export async function sendMesh(ctx: WorkspaceContext, templateId: string): Promi
     sha256: sha256(bytes),
     bytes: bytes.length,
     format: 'stl-binary',
+    unit: 'mm',
     triangles: 12,
     boundsMm: { min: [-30, -30, 0], max: [30, 30, 20] },
   });

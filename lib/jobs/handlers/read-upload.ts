@@ -21,11 +21,12 @@ export const readUploadHandler: JobHandler = {
         const { code, message, reasons } = answer;
         return await refuseUpload(ctx, fence, job.subjectId, { code, message, reasons });
       }
-      const { format, triangles, boundsMm } = answer.inspection;
+      const { format, unit, triangles, boundsMm } = answer.inspection;
       await acceptUpload(ctx, fence, job.subjectId, {
         sha256,
         bytes: upload.bytes,
         format,
+        unit,
         triangles,
         boundsMm,
       });

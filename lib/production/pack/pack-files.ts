@@ -1,5 +1,6 @@
 import { canonical, sha256 } from '@/lib/audit/canonical';
 import type { Agreed } from '@/lib/review/load-agreed';
+import { nameByFormat } from '@/lib/review/mesh-format';
 import { renderCertificate } from '../certificate/render-certificate';
 import type { CertificateModel } from '../certificate/certificate-model';
 import { packReadme } from './pack-readme';
@@ -42,7 +43,8 @@ export async function packFiles(model: CertificateModel): Promise<PackFile[]> {
 }
 
 /** Name of the mesh inside the pack. */
-export const meshNameOf = (agreed: Agreed) => safeName(agreed.mesh.fileName);
+export const meshNameOf = (agreed: Agreed) =>
+  safeName(nameByFormat(agreed.mesh.fileName, agreed.mesh.format));
 
 const earlierName = (digest: string) => `content-as-signed-${digest.slice(0, 12)}.json`;
 

@@ -56,7 +56,7 @@ async function refused(run: () => Promise<unknown>, expected: Record<string, unk
 }
 
 describe('posting', () => {
-  it('freezes mesh and recipe, lays out the gates, queues the check and tells everybody else', async () => {
+  it('freezes mesh and recipe, lays out the gates, queues the check and tells the rest of the studio', async () => {
     const templateId = await newTemplate(designer);
     const version = await readyDraft(designer, templateId);
     const draft = await openDraft(designer, templateId);
@@ -93,13 +93,7 @@ describe('posting', () => {
     const told = mails
       .filter(({ payload }) => String(payload.path).endsWith(`${templateId}/A`))
       .map(({ person }) => person);
-    expect(new Set(told)).toEqual(
-      new Set(
-        Object.values(house.people)
-          .map(({ person }) => person.id)
-          .filter((id) => id !== designer.person.id),
-      ),
-    );
+    expect(new Set(told)).toEqual(new Set([lead.person.id, house.people.producer.person.id]));
     const [entry] = await entries(database, house.workspace.id, 1);
     expect(entry).toMatchObject({
       action: 'revision.posted',
@@ -286,6 +280,7 @@ describe('the records of a worker', () => {
       sha256: 'x',
       bytes: 1,
       format: 'stl-binary' as const,
+      unit: 'mm' as const,
       triangles: 1,
       boundsMm: { min: [], max: [] },
     };

@@ -13,7 +13,7 @@ import type { useUpload } from '../_hooks/use-upload';
 
 type Props = ReturnType<typeof useUpload> & { unit: string; onUnit: (unit: string) => void };
 
-const accept = ['.stl'];
+const accept = ['.stl', '.3mf', '.step', '.stp'];
 const units = [
   { value: 'mm', label: 'millimetres' },
   { value: 'cm', label: 'centimetres' },
@@ -23,6 +23,13 @@ const units = [
   { value: 'micron', label: 'microns' },
 ];
 
+const formats = {
+  'stl-binary': 'binary STL',
+  'stl-ascii': 'ASCII STL',
+  '3mf': '3MF',
+  step: 'STEP, cut into triangles',
+};
+
 /** The mesh of the draft: picked, sent, read by the worker; refused with what is wrong and what to do. */
 export function FilePanel({ sending, begin, resume, pause, cancel, unit, onUnit }: Props) {
   const [wrongName, setWrongName] = useState<string | null>(null);
@@ -31,7 +38,7 @@ export function FilePanel({ sending, begin, resume, pause, cancel, unit, onUnit 
   function pick(file: File) {
     if (!accept.some((ending) => file.name.toLowerCase().endsWith(ending))) {
       setWrongName(
-        `${file.name} is not an STL file. Export the template as binary or ASCII STL and pick that.`,
+        `${file.name} is not an STL, 3MF or STEP file. Export the template as one of these and pick that.`,
       );
       return;
     }
@@ -49,7 +56,7 @@ export function FilePanel({ sending, begin, resume, pause, cancel, unit, onUnit 
       <div className="flex flex-col gap-4">
         <Select
           label="Unit of the file"
-          help="STL files carry no unit. The check run warns when another one is likelier."
+          help="For STL, which carries no unit: the check run warns when another one is likelier. 3MF and STEP files bring their own."
           options={units}
           value={unit}
           onChange={onUnit}
@@ -59,7 +66,7 @@ export function FilePanel({ sending, begin, resume, pause, cancel, unit, onUnit 
           label="Drop the template’s mesh here"
           accept={accept}
           onFiles={([file]) => pick(file)}
-          help="Binary or ASCII STL, up to 500 MB. It stands on the bed with its base at z = 0; parts are pulled off upwards."
+          help="STL or 3MF up to 500 MB, STEP up to 100 MB. It stands on the bed with its base at z = 0; parts are pulled off upwards."
           error={wrongName ?? sending.trouble}
           disabled={phase === 'starting'}
         />
@@ -138,6 +145,10 @@ function MeshFacts({ mesh }: { mesh: NonNullable<NonNullable<Props['sending']['u
             <Length mm={mm} digits={1} />
           </span>
         ))}
+      </dd>
+      <dt className="text-slate">Read as</dt>
+      <dd>
+        {formats[mesh.format]}, in {units.find(({ value }) => value === mesh.unit)?.label ?? mesh.unit}
       </dd>
       <dt className="text-slate">Triangles</dt>
       <dd className="font-mono">{mesh.triangles.toLocaleString('en-GB')}</dd>
