@@ -33,6 +33,38 @@ export const mailRequest = z.discriminatedUnion('template', [
     ...revisionRef,
     authorName: z.string(),
     note: z.string(),
+    /** Letter of the revision in review that this one takes the place of. */
+    replaces: z.string().nullable().default(null),
+  }),
+  z.object({
+    template: z.literal('revision-checked'),
+    to: memberRecipient,
+    ...revisionRef,
+    authorName: z.string(),
+    note: z.string(),
+    /** Findings to look at, and failing ones that a lead has waived. */
+    look: z.number(),
+    waived: z.number(),
+  }),
+  z.object({
+    template: z.literal('check-fails'),
+    to: memberRecipient,
+    ...revisionRef,
+    /** Each check that fails, with the first sentence of what to change. */
+    failing: z.array(z.object({ check: z.string(), remedy: z.string() })).min(1),
+  }),
+  z.object({
+    template: z.literal('check-given-up'),
+    to: memberRecipient,
+    ...revisionRef,
+    reason: z.string(),
+  }),
+  z.object({
+    template: z.literal('revision-withdrawn'),
+    to: memberRecipient,
+    ...revisionRef,
+    printedName: z.string(),
+    reason: z.string(),
   }),
   z.object({
     template: z.literal('gate-waits'),

@@ -15,7 +15,6 @@ export async function tellPeople(
   write: (base: { to: To } & RevisionRef) => MailRequest,
 ): Promise<void> {
   const people = await workspacePeople(tx, ctx.workspace.id);
-  const others = people.filter(({ id }) => id !== ctx.person.id);
-  await mailAbout(tx, ctx, others, about, (base) => write(base));
+  await mailAbout(tx, ctx, people, about, (base) => write(base));
   await tellToday(tx, ctx, people, about.revision.id);
 }

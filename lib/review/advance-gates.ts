@@ -10,7 +10,7 @@ import { loadRevisionParts, type RevisionRow, type TemplateRow } from './revisio
 import { makersOf, whoMaySign } from './who-signs';
 
 /** Whether the check has finished on this revision and every failing finding is waived. */
-async function formingHolds(tx: TenantTx, revision: RevisionRow): Promise<boolean> {
+export async function formingHolds(tx: TenantTx, revision: RevisionRow): Promise<boolean> {
   const { workspaceId, id } = revision;
   const run = await findCheckRun(tx, workspaceId, id);
   if (run?.state !== 'finished') return false;
@@ -66,7 +66,7 @@ async function tellAwaited(
   const { mesh } = await loadRevisionParts(tx, revision);
   const awaited = whoMaySign(gate, makersOf(revision, mesh), people, signed);
   const openItems = (await openMustSettle(tx, revision.workspaceId, revision.id)).length;
-  const about = { template, revision, occasion: `gate-waits:${gate.id}` };
+  const about = { template, revision, occasion: `gate-waits:${gate.id}`, evenActor: true };
   await mailAbout(tx, ctx, awaited, about, (base) => ({
     template: 'gate-waits',
     ...base,

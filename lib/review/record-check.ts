@@ -19,6 +19,7 @@ import {
   type DerivativeRow,
 } from './check-data';
 import { findRevision, loadRevisionParts, lockRevision } from './revision-data';
+import { tellCheckEnded, tellCheckGivenUp } from './tell-check';
 
 export type DerivativeKind = DerivativeRow['kind'];
 
@@ -164,7 +165,10 @@ export async function finishCheck(
       error: null,
       finished: true,
     });
-    const passed = revision.state === 'in_review' ? await advanceGates(tx, ctx, template, revision) : [];
+    const inReview = revision.state === 'in_review';
+    // Told of the check first, then of a gate that waits: mails go out in the order in which they are queued.
+    if (inReview) await tellCheckEnded(tx, ctx, { template, revision });
+    const passed = inReview ? await advanceGates(tx, ctx, template, revision) : [];
     await appendEntry(tx, ctx, {
       action: 'check.finished',
       subjectKind: 'revision',
@@ -198,9 +202,11 @@ export async function failCheck(
 ): Promise<void> {
   await withTenant(ctx, async (tx) => {
     if (!(await holdsJob(tx, ctx, fence))) return;
-    const { revision } = await lockRevision(tx, ctx.workspaceId, revisionId);
+    const { template, revision } = await lockRevision(tx, ctx.workspaceId, revisionId);
     const run = await findCheckRun(tx, ctx.workspaceId, revisionId);
     if (!run || run.state === 'finished') return;
+    if (revision.state === 'in_review')
+      await tellCheckGivenUp(tx, ctx, { template, revision, jobId: run.jobId, reason: reason.slice(0, 500) });
     await changeCheckRun(tx, run, { state: 'failed', error: reason.slice(0, 500), finished: true });
     await appendEntry(tx, ctx, {
       action: 'check.failed',

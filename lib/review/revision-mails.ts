@@ -25,21 +25,26 @@ export type RevisionRef = ReturnType<typeof revisionRef>;
 
 type To = { personId: string; email: string; name: string };
 
-/** Queues one mail a person about a revision; `occasion` with the person's id is the key that drops repeats. */
+/**
+ * Queues one mail a person about a revision; `occasion` with the person's id is the key that drops repeats.
+ * Nobody is mailed about what they just did themselves, unless it asks something of them (`evenActor`).
+ */
 export async function mailAbout(
   tx: TenantTx,
   ctx: WorkspaceContext | JobContext,
   people: WorkspacePerson[],
-  about: { template: TemplateRow; revision: RevisionRow; occasion: string },
+  about: { template: TemplateRow; revision: RevisionRow; occasion: string; evenActor?: boolean },
   write: (base: { to: To } & RevisionRef, person: WorkspacePerson) => MailRequest,
 ): Promise<void> {
-  if (!people.length) return;
+  const actor = 'person' in ctx ? ctx.person.id : null;
+  const told = about.evenActor ? people : people.filter((person) => person.id !== actor);
+  if (!told.length) return;
   const workspaceId = workspaceIdOf(ctx);
   const ref = revisionRef(await workspaceNames(tx, workspaceId), about.template, about.revision);
   await queueMail(
     tx,
     { workspaceId },
-    people.map((person) => ({
+    told.map((person) => ({
       request: write({ to: { personId: person.id, email: person.email, name: person.name }, ...ref }, person),
       dedupeKey: `${about.occasion}:${person.id}`,
     })),

@@ -68,9 +68,7 @@ export async function signGate(ctx: WorkspaceContext, gateId: string, input: unk
     const passed = await advanceGates(tx, ctx, template, revision);
     const locked = (await findLockDigest(tx, workspaceId, revision.id)) !== null;
     const people = await workspacePeople(tx, workspaceId);
-    const concerned = people.filter(
-      (person) => locked || person.id === ctx.person.id || person.id === revision.authorId,
-    );
+    const concerned = people.filter((person) => locked || person.id === revision.authorId);
     const about = { template, revision, occasion: `revision-signed:${signature.id}` };
     await mailAbout(tx, ctx, concerned, about, (base) => ({
       template: 'revision-signed',

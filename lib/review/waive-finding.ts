@@ -4,7 +4,7 @@ import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
 import { conflict, notFound } from '@/lib/errors/app-error';
 import { parseInput } from '@/lib/http/read-input';
 import { queueLive } from '@/lib/jobs/queue-live';
-import { advanceGates } from './advance-gates';
+import { advanceGates, formingHolds } from './advance-gates';
 import { asId } from './as-id';
 import { findFinding } from './check-data';
 import { insertWaiver, waiversOf } from './docket-data';
@@ -12,6 +12,7 @@ import { viewDocketRows } from './docket-view';
 import { loadDocket } from './load-docket';
 import { lockRevision } from './revision-data';
 import { WaiveInput, type DocketView } from './schemas';
+import { tellCheckEnded } from './tell-check';
 
 /** A lead lets a failing finding stand, with a reason that is shown for ever after; the gates are looked at again. */
 export async function waiveFinding(
@@ -47,6 +48,7 @@ export async function waiveFinding(
       waivedBy: ctx.person.id,
       waivedByName: ctx.person.name,
     });
+    if (await formingHolds(tx, revision)) await tellCheckEnded(tx, ctx, { template, revision });
     const passed = await advanceGates(tx, ctx, template, revision);
     await appendEntry(tx, ctx, {
       action: 'finding.waived',

@@ -8,6 +8,7 @@ import { workspacePeople } from './people-data';
 import { countSignatures, lockRevision } from './revision-data';
 import { tellToday } from './revision-mails';
 import { ReasonInput } from './schemas';
+import { tellWithdrawn } from './tell-withdrawn';
 
 /** The author takes a revision back before anyone has signed it. It stays to be read, as withdrawn. */
 export async function withdrawRevision(
@@ -20,7 +21,7 @@ export async function withdrawRevision(
   const id = asId(revisionId, 'revision');
   const workspaceId = ctx.workspace.id;
   return withTenant(ctx, async (tx) => {
-    const { revision } = await lockRevision(tx, workspaceId, id);
+    const { template, revision } = await lockRevision(tx, workspaceId, id);
     if (revision.authorId !== ctx.person.id)
       throw forbidden(`Only ${revision.authorName}, who posted it, can withdraw it.`, 'not-the-author');
     if (revision.state !== 'in_review')
@@ -34,6 +35,7 @@ export async function withdrawRevision(
         `Revision ${revision.letter} has been signed, so it cannot be withdrawn. Ask for its return, or post the next one.`,
       );
     await closeRevision(tx, ctx, revision, 'withdrawn', reason);
+    await tellWithdrawn(tx, ctx, { template, revision, reason });
     await tellToday(tx, ctx, await workspacePeople(tx, workspaceId), id);
     return { state: 'withdrawn' };
   });

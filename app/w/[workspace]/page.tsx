@@ -177,7 +177,7 @@ function NoTemplates({ filtered, home, canCreate }: { filtered: boolean; home: s
     <EmptyState title="No templates yet">
       {canCreate
         ? 'Open the first one: give it a title, then post its mesh and recipe as revision A.'
-        : 'The studio has not opened a template here yet. You will get a mail when the first revision is posted.'}
+        : 'The studio has not opened a template here yet. You will get a mail as soon as there is a revision to look at.'}
     </EmptyState>
   );
 }

@@ -4,13 +4,13 @@ import { invitation, resetPassword, verifyAddress } from './identity';
 import {
   gateWaits,
   notePosted,
-  revisionPosted,
   revisionRecalled,
   revisionReleased,
   revisionRetired,
   revisionReturned,
   revisionSigned,
 } from './revision';
+import { checkFails, checkGivenUp, revisionChecked, revisionPosted, revisionWithdrawn } from './posting';
 import { toHtml } from './to-html';
 import { toText } from './to-text';
 
@@ -33,6 +33,14 @@ function contentOf(request: MailRequest, origin: string): MailContent {
       return invitation(request, url);
     case 'revision-posted':
       return revisionPosted(request, url);
+    case 'revision-checked':
+      return revisionChecked(request, url);
+    case 'check-fails':
+      return checkFails(request, url);
+    case 'check-given-up':
+      return checkGivenUp(request, url);
+    case 'revision-withdrawn':
+      return revisionWithdrawn(request, url);
     case 'gate-waits':
       return gateWaits(request, url);
     case 'note-posted':

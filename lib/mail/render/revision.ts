@@ -2,33 +2,9 @@ import { shortCautions } from '@/lib/production/cautions';
 import { zonedTime } from '@/lib/time/zoned-time';
 import type { MailRequest } from '../messages';
 import { oneLine, revisionName, type MailContent } from './content';
+import { facts, footer, subject } from './revision-parts';
 
 type Of<T extends MailRequest['template']> = Extract<MailRequest, { template: T }>;
-type AnyRevision = { workspaceName: string; number: string; title: string; letter: string };
-
-const facts = (request: AnyRevision): MailContent['facts'] => [
-  { label: 'Template', value: `${request.number}  ${request.title}` },
-  { label: 'Revision', value: request.letter },
-  { label: 'Workspace', value: request.workspaceName },
-];
-const footer = (request: AnyRevision) =>
-  `You get this as a member of ${request.workspaceName}. The link only opens the page; nothing is signed or changed by it.`;
-const subject = (request: AnyRevision, what: string) =>
-  oneLine(`${revisionName(request)} ${what} (${request.title})`);
-
-export function revisionPosted(request: Of<'revision-posted'>, url: string): MailContent {
-  const { authorName, note } = request;
-  return {
-    subject: subject(request, 'is posted'),
-    heading: `${authorName} posted ${revisionName(request)}`,
-    preview: note ? oneLine(note) : 'It is being checked for forming.',
-    paragraphs: ['Mesh and recipe are frozen from now on. The check for forming runs by itself.'],
-    quote: note ? { by: authorName, text: note } : undefined,
-    facts: facts(request),
-    action: { label: 'Look at the revision', url },
-    footer: footer(request),
-  };
-}
 
 export function gateWaits(request: Of<'gate-waits'>, url: string): MailContent {
   const { gateName, openItems } = request;

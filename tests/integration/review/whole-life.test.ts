@@ -86,6 +86,8 @@ describe('the life of a template', () => {
       'gate.signed',
       'note.posted',
     ]);
-    expect((await mailsOf(database, house.workspace.id, 'revision-posted')).length).toBe(8);
+    // Two postings, each to lead and producer; the client hears of the one that can be looked at.
+    expect((await mailsOf(database, house.workspace.id, 'revision-posted')).length).toBe(4);
+    expect((await mailsOf(database, house.workspace.id, 'revision-checked')).length).toBe(2);
   });
 });

@@ -79,7 +79,7 @@ export default async function TemplatePage({ params }: Props) {
               <EmptyState title="Nothing is posted yet" level={3}>
                 {canPost
                   ? 'Post the mesh and its recipe as revision A; the check run starts by itself.'
-                  : 'You will get a mail when the studio posts revision A.'}
+                  : 'You will get a mail as soon as revision A can be looked at.'}
               </EmptyState>
             }
           />
