@@ -27,7 +27,8 @@ export function DraftLegend(props: { meta: StageModelMeta; limitDeg: number; rea
   const max = draftScaleMaxDeg(limitDeg);
   const at = (deg: number) => LEFT + (Math.min(max, Math.max(0, deg)) / max) * SPAN;
   const { walls, below } = wallAreas(meta, limitDeg);
-  const words = `${formatArea(below, units)} of the walls, ${formatShare(below, walls)}, below ${limitDeg}°`;
+  const limit = Number(limitDeg.toFixed(1));
+  const words = `${formatArea(below, units)} of the walls, ${formatShare(below, walls)}, below ${limit}°`;
   const hatch = useId();
   const ticks = tickDegrees(max, limitDeg);
   return (
@@ -39,7 +40,7 @@ export function DraftLegend(props: { meta: StageModelMeta; limitDeg: number; rea
       <svg
         viewBox={`0 0 ${WIDTH} ${BARS + BAND + 18}`}
         role="img"
-        aria-label={`Scale from 0 to ${max} degrees of draft. Limit ${limitDeg} degrees: ${words}.`}
+        aria-label={`Scale from 0 to ${max} degrees of draft. Limit ${limit} degrees: ${words}.`}
         className="mt-0.5 block w-full overflow-visible"
       >
         <defs>
@@ -84,7 +85,7 @@ export function DraftLegend(props: { meta: StageModelMeta; limitDeg: number; rea
               deg === limitDeg ? 'fill-madder font-mono text-[10px]' : 'fill-slate font-mono text-[10px]'
             }
           >
-            {deg === max ? `${deg}+` : deg}
+            {deg === max ? `${deg}+` : Number(deg.toFixed(1))}
           </text>
         ))}
       </svg>

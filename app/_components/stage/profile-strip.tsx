@@ -139,7 +139,7 @@ export function ProfileStrip(props: ProfileStripProps) {
                 ? `Section of ${title} at ${axis} = ${formatLength(atMm, units, 1)}, seen from the ${side}: ` +
                   `${formatLength(section.boundsMm.to - section.boundsMm.from, units, 1)} wide, ` +
                   `${formatLength(section.boundsMm.high, units, 1)} high, ${walls.length} main walls, ` +
-                  `${broken} below ${limitDeg}° of draft.`
+                  `${broken} below ${Number(limitDeg.toFixed(1))}° of draft.`
                 : `The cutting line at ${axis} = ${formatLength(atMm, units, 1)} misses the template.`
             }
           />

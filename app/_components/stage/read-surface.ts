@@ -14,5 +14,5 @@ function readDraft({ draftDeg, undercut, bed }: SurfaceHit, limitDeg: number): s
   const draft = `Draft ${formatNumber(draftDeg, 1)}°`;
   if (undercut) return `${draft}, undercut`;
   if (draftDeg >= FLAT_FROM_DEG) return `${draft}, flat`;
-  return draftDeg < limitDeg ? `${draft}, below the limit of ${limitDeg}°` : draft;
+  return draftDeg < limitDeg ? `${draft}, below the limit of ${Number(limitDeg.toFixed(1))}°` : draft;
 }

@@ -41,7 +41,11 @@ export function StageFallback(props: {
       meta.draftRangeDeg[0] < limitDeg,
     ],
     ['Area of the walls', formatArea(walls, units)],
-    [`Walls below ${limitDeg}°`, `${formatArea(below, units)}, ${formatShare(below, walls)}`, below > 0],
+    [
+      `Walls below ${Number(limitDeg.toFixed(1))}°`,
+      `${formatArea(below, units)}, ${formatShare(below, walls)}`,
+      below > 0,
+    ],
     ['Undercut area', formatArea(meta.areaMm2.undercut, units), meta.areaMm2.undercut > 0],
     ['Area on the bed', formatArea(meta.areaMm2.bed, units)],
   ];

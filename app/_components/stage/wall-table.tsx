@@ -51,7 +51,9 @@ export function WallTable(props: {
                   </td>
                   <td className={clsx('px-3 text-right', broken && 'text-madder')}>
                     {formatNumber(wall.draftDeg, 1)}°
-                    <span className="font-sans">{broken ? ` below ${limitDeg}°` : ''}</span>
+                    <span className="font-sans">
+                      {broken ? ` below ${Number(limitDeg.toFixed(1))}°` : ''}
+                    </span>
                   </td>
                   <td className="px-3 text-right">{formatLength(low, units, 1)}</td>
                   <td className="px-3 text-right sm:px-4">{formatLength(top, units, 1)}</td>

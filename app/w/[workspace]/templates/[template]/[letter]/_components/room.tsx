@@ -14,6 +14,7 @@ import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { DocketView, RevisionView } from '@/lib/review/schemas';
 import { CheckPanel } from './check-panel';
 import { Docket } from './docket';
+import { draftLimit } from './draft-limit';
 import { byGroup, docketItems, filterItems, groupOrder } from './docket-items';
 import { gateSteps } from './gate-steps';
 import { primaryStep } from './primary-step';
@@ -174,6 +175,7 @@ export function Room({
             <h2 className="sr-only">Model and section</h2>
             <StagePanel
               revision={revision}
+              limitDeg={draftLimit(docket.findings, revision.recipe)}
               pins={pins}
               activePin={focus.activePin}
               onPinSelect={(id) => visit(itemOfPin(id))}

@@ -10,7 +10,6 @@ import type { SectionLine } from '@/lib/stage-model/section';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { RevisionView } from '@/lib/review/schemas';
 import { useVents } from '../_hooks/use-room-data';
-import { limitOf } from './describe-recipe';
 import { useRoom } from './room-context';
 
 // Cuts the model that the stage has fetched; nothing of it is needed before the model is there.
@@ -21,6 +20,8 @@ const ProfileStrip = dynamic(
 
 export interface StagePanelProps {
   revision: RevisionView;
+  /** least draft wanted, degrees */
+  limitDeg: number;
   pins: readonly StagePin[];
   activePin: string | null;
   onPinSelect: (id: string) => void;
@@ -56,7 +57,7 @@ function useShownTheme(): 'light' | 'dark' {
 
 /** The model with its maps and pins, and the section under it. */
 export function StagePanel(props: StagePanelProps) {
-  const { revision } = props;
+  const { revision, limitDeg } = props;
   const theme = useShownTheme();
   const [map, setMap] = useState<StageMap>('plain');
   const { workspace } = useRoom();
@@ -77,7 +78,6 @@ export function StagePanel(props: StagePanelProps) {
     );
   }
   const meta = revision.model.meta as unknown as StageModelMeta;
-  const limitDeg = limitOf(revision.recipe, 'draftMinDeg', 5);
   return (
     <>
       <Stage
