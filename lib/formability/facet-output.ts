@@ -5,6 +5,7 @@ import type { Visibility } from './measures/visibility';
 
 export const FLAG_BED = 1;
 export const FLAG_UNDERCUT = 2;
+export const FLAG_UNVENTED = 4;
 
 /** 9 per facet, oriented, in the file's frame in x and y, standing on the bed. */
 export function facetPositions(mesh: Mesh): Float32Array {
@@ -19,14 +20,18 @@ export function facetPositions(mesh: Mesh): Float32Array {
   return out;
 }
 
-/** Bit 0: on the bed. Bit 1: overhangs over connected air, or lies mostly in the shadow of the part. */
-export function facetFlags(facets: Facets, visibility: Visibility): Uint8Array {
+/**
+ * Bit 0: on the bed. Bit 1: overhangs over connected air, or lies mostly in the shadow of the part. Bit 2: looks into
+ * a pocket that no vent leads out of.
+ */
+export function facetFlags(facets: Facets, visibility: Visibility, unvented: Uint8Array): Uint8Array {
   const flags = new Uint8Array(facets.area.length);
   for (let t = 0; t < flags.length; t++) {
     if (facets.bed[t]) flags[t] = FLAG_BED;
     else if (facets.nz[t] < -SIN_VERTICAL) {
       if (visibility.visible[t] + visibility.shadowed[t] > 0.5) flags[t] = FLAG_UNDERCUT;
     } else if (visibility.shadowed[t] > 0.5) flags[t] = FLAG_UNDERCUT;
+    if (unvented[t]) flags[t] |= FLAG_UNVENTED;
   }
   return flags;
 }

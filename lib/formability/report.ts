@@ -106,8 +106,19 @@ export interface DraftReport {
   verticalAreaMm2: number;
   binEdgesDeg: number[];
   areaByBinMm2: number[];
-  /** Draft of the walls at scales above 1 mm, through steps and noise; null without walls. */
+  /** Draft of the walls at scales above 1 mm, through steps and noise, negative where they lean out; null without walls. */
   wallMinMacroDeg: number | null;
+  /** Draft that these walls need: the limit that the check holds them to. */
+  wantedDeg: number;
+  /** Connected walls below it, the largest first; seen through steps where the wall is made of steps. */
+  regions: DraftRegion[];
+}
+
+/** A connected part of the walls that leans back too little. */
+export interface DraftRegion {
+  at: Point;
+  areaMm2: number;
+  minDeg: number;
 }
 
 export interface PlanReport {

@@ -2,6 +2,7 @@ import { floodSurface } from '../dexel/flood';
 import { cellAt, centreX, centreY, type Grid } from '../dexel/grid';
 import type { AirTrap, Vent } from '../report';
 import { findPits } from './find-pits';
+import type { Flood } from './map-pockets';
 
 /** More pits than this are noise of the surface; the largest are reported. */
 const MOST_TRAPS = 200;
@@ -11,16 +12,26 @@ const MOST_TRAPS = 200;
  * @param surface H with vents closed
  * @param vents in the mesh's frame
  */
-export function findAirTraps(surface: Float64Array, grid: Grid, vents: Vent[]): AirTrap[] {
-  const pits = findPits(surface, floodSurface(surface, grid), grid);
+export function findAirTraps(
+  surface: Float64Array,
+  grid: Grid,
+  vents: Vent[],
+): { traps: AirTrap[]; flood: Flood } {
+  const level = floodSurface(surface, grid);
+  const pits = findPits(surface, level, grid);
   const pitOf = new Map<number, number>();
   const ventCells = new Map(vents.map((vent, id) => [id, cellAt(grid, vent.at[0], vent.at[1])]));
   const wanted = new Set(ventCells.values());
   pits.forEach((pit, id) => {
     for (const c of pit.members) if (wanted.has(c)) pitOf.set(c, id);
   });
+  const vented = new Set(pitOf.values());
+  const unvented = new Uint8Array(level.length);
+  pits.forEach((pit, id) => {
+    if (pit.children.length === 0 && !vented.has(id)) for (const c of pit.members) unvented[c] = 1;
+  });
   const kept = pits.length <= MOST_TRAPS ? pits : largest(pits);
-  return kept.map((pit): AirTrap => {
+  const traps = kept.map((pit): AirTrap => {
     const own = pit.children.length > 0 ? [] : vents.map((_, v) => v).filter((v) => pitOf.get(ventCells.get(v) ?? -1) === pits.indexOf(pit)); // prettier-ignore
     return {
       floor: [centreX(grid, pit.floor), centreY(grid, pit.floor), surface[pit.floor]],
@@ -32,6 +43,7 @@ export function findAirTraps(surface: Float64Array, grid: Grid, vents: Vent[]): 
       vents: own,
     };
   });
+  return { traps, flood: { level, unvented } };
 }
 
 /** The largest pits together with everything that they lie in. */
