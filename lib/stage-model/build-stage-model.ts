@@ -3,6 +3,7 @@ import { EXTMeshoptCompression, KHRMeshQuantization } from '@gltf-transform/exte
 import { MeshoptEncoder } from 'meshoptimizer/encoder';
 import { measureDraftArea } from './draft-histogram';
 import { findCreaseEdges } from './find-crease-edges';
+import { measureMaps } from './measure-maps';
 import { coarsenStageMesh, simplifyStageMesh, TRIANGLE_TARGET } from './simplify-stage-mesh';
 import { splitVertices, type SplitMesh } from './split-vertices';
 import {
@@ -10,6 +11,11 @@ import {
   DRAFT_ATTRIBUTE,
   DRAFT_STEP_DEG,
   FLAGS_ATTRIBUTE,
+  TRAP_ATTRIBUTE,
+  TRAP_NONE,
+  WALL_ATTRIBUTE,
+  WALL_NONE,
+  type MapFigures,
   type StageGeometry,
   type StageModelMeta,
 } from './stage-model-meta';
@@ -23,8 +29,9 @@ export interface StageModel {
 /**
  * The compact model that the browser draws, from the engine's geometry: welded, split where colours or shading may
  * not mix, simplified above `triangleTarget`, positions on a 16-bit grid (mm by the node's scale), `_DRAFT` in counts
- * of 0.01°, `_FLAGS` (1 bed, 2 undercut), a second primitive of ink lines, and for
- * heavy models a third, coarser one on the same vertices for frames in motion. Throws RangeError on unusable geometry.
+ * of 0.01°, `_FLAGS` (1 bed, 2 undercut, 4 unvented pocket), `_WALL` and `_TRAP` in counts of 0.01 mm where the engine
+ * found walls and pockets, a second primitive of ink lines, and for heavy models a third, coarser one on the same
+ * vertices for frames in motion. Throws RangeError on unusable geometry.
  */
 export async function buildStageModel(
   geometry: StageGeometry,
@@ -42,7 +49,7 @@ export async function buildStageModel(
   const [remap, vertices] = MeshoptEncoder.reorderMesh(index, true, true);
   const renamed = { index, coarse: coarse.map((v) => remap[v]), lines: lines.map((v) => remap[v]) };
   const meta: StageModelMeta = {
-    schema: 1,
+    schema: 2,
     triangles: index.length / 3,
     vertices,
     sourceTriangles: geometry.facetDraftDeg.length,
@@ -55,6 +62,7 @@ export async function buildStageModel(
     draftSplitDeg: mesh.draftSplitDeg,
     areaMm2: area.areaMm2,
     histogram: area.histogram,
+    maps: measureMaps(geometry),
   };
   const glb = await writeGlb(mesh, remap, vertices, renamed, meta);
   return { glb, meta: { ...meta, bytes: glb.byteLength } };
@@ -67,7 +75,7 @@ async function writeGlb(
   { index, coarse, lines }: Record<'index' | 'coarse' | 'lines', Uint32Array>,
   meta: StageModelMeta,
 ): Promise<Uint8Array> {
-  const { position, normal, draft, flags } = vertexArrays(mesh, remap, vertices);
+  const { position, normal, draft, flags, wall, trap } = vertexArrays(mesh, remap, vertices);
   const doc = new Document();
   const buffer = doc.createBuffer();
   const accessor = (type: 'SCALAR' | 'VEC3', array: Parameters<Accessor['setArray']>[0]) =>
@@ -77,6 +85,8 @@ async function writeGlb(
     NORMAL: accessor('VEC3', normal),
     [DRAFT_ATTRIBUTE]: accessor('SCALAR', draft),
     [FLAGS_ATTRIBUTE]: accessor('SCALAR', flags),
+    ...(wall ? { [WALL_ATTRIBUTE]: accessor('SCALAR', wall) } : {}),
+    ...(trap ? { [TRAP_ATTRIBUTE]: accessor('SCALAR', trap) } : {}),
   };
   const triangles = (corners: Uint32Array) => {
     const primitive = doc.createPrimitive().setIndices(accessor('SCALAR', narrow(corners, vertices)));
@@ -96,7 +106,8 @@ async function writeGlb(
     unit: 'mm',
     up: 'z',
     draft: { attribute: DRAFT_ATTRIBUTE, unit: 'deg', step: DRAFT_STEP_DEG, range: meta.draftRangeDeg },
-    flags: { attribute: FLAGS_ATTRIBUTE, bed: 1, undercut: 2 },
+    flags: { attribute: FLAGS_ATTRIBUTE, bed: 1, undercut: 2, unventedPocket: 4 },
+    ...mapExtras(meta.maps),
     sourceTriangles: meta.sourceTriangles,
     simplificationErrorMm: meta.simplificationErrorMm,
   });
@@ -120,6 +131,8 @@ function vertexArrays(mesh: SplitMesh, remap: Uint32Array, vertices: number) {
   const normal = new Float32Array(vertices * 3);
   const draft = new Int16Array(vertices);
   const flags = new Uint8Array(vertices);
+  const wall = mesh.wall && new Uint16Array(vertices);
+  const trap = mesh.trap && new Int16Array(vertices);
   for (let v = 0; v < mesh.vertices; v++) {
     const to = remap[v];
     if (to === 0xffffffff) continue;
@@ -129,8 +142,20 @@ function vertexArrays(mesh: SplitMesh, remap: Uint32Array, vertices: number) {
     }
     draft[to] = mesh.draft[v];
     flags[to] = mesh.flags[v];
+    if (wall) wall[to] = mesh.wall![v];
+    if (trap) trap[to] = mesh.trap![v];
   }
-  return { position, normal, draft, flags };
+  return { position, normal, draft, flags, wall, trap };
+}
+
+/** Attribute, unit, step and range of each map, for whoever reads the file without its record. */
+function mapExtras(maps: StageModelMeta['maps']): Record<string, object> {
+  const say = ({ attribute, unit, step, range }: MapFigures) => ({ attribute, unit, step, range });
+  return {
+    ...(maps ? { layers: { ...say(maps.layers), figure: 'sin(draft) × layer height' } } : {}),
+    ...(maps?.wall ? { wall: { ...say(maps.wall), none: WALL_NONE } } : {}),
+    ...(maps?.trap ? { trap: { ...say(maps.trap), none: TRAP_NONE } } : {}),
+  };
 }
 
 function narrow(index: Uint32Array, vertices: number): Uint16Array<ArrayBuffer> | Uint32Array<ArrayBuffer> {
@@ -144,7 +169,7 @@ function bounds({ grid, origin, stepMm }: SplitMesh): StageModelMeta['boundsMm']
   return { min: [...origin], max };
 }
 
-function assertUsable({ positions, facetDraftDeg, facetFlags }: StageGeometry): void {
+function assertUsable({ positions, facetDraftDeg, facetFlags, ...maps }: StageGeometry): void {
   const facets = facetDraftDeg.length;
   if (facets === 0) throw new RangeError('The mesh has no triangle; there is nothing to show.');
   if (positions.length !== facets * 9 || facetFlags.length !== facets) {
@@ -152,6 +177,12 @@ function assertUsable({ positions, facetDraftDeg, facetFlags }: StageGeometry): 
       `Geometry does not agree: ${positions.length} coordinates, ${facets} drafts, ${facetFlags.length} flags; ` +
         'nine coordinates, one draft and one flag a triangle are needed.',
     );
+  }
+  for (const name of ['facetWallMm', 'facetSpillMm'] as const) {
+    const length = maps[name]?.length ?? facets;
+    if (length !== facets) {
+      throw new RangeError(`Geometry does not agree: ${facets} facets, ${length} figures of ${name}.`);
+    }
   }
   for (let i = 0; i < positions.length; i++) {
     if (!Number.isFinite(positions[i])) {

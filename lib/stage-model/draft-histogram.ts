@@ -1,3 +1,5 @@
+import { facetArea } from './facet-area';
+import { areaBelow, binOf } from './map-histogram';
 import { FLAG_BED, FLAG_UNDERCUT, type DraftHistogram, type StageGeometry } from './stage-model-meta';
 
 /** Half a degree where walls are judged, coarse where nothing hangs on it. Bin [a, b), the last one closed. */
@@ -56,30 +58,5 @@ export function measureDraftArea({ positions, facetDraftDeg, facetFlags }: Stage
 /** Area of the non-bed facets whose draft is below the limit, mm²; a bin that the limit cuts counts in proportion. */
 export function areaBelowDraft(histogram: DraftHistogram, limitDeg: number): number {
   const { edgesDeg, areaMm2 } = histogram;
-  return areaMm2.reduce((sum, area, i) => {
-    const share = (limitDeg - edgesDeg[i]) / (edgesDeg[i + 1] - edgesDeg[i]);
-    return sum + area * Math.min(1, Math.max(0, share));
-  }, 0);
-}
-
-function binOf(edges: number[], draft: number): number {
-  let low = 0;
-  let high = edges.length - 2;
-  while (low < high) {
-    const mid = (low + high + 1) >> 1;
-    if (edges[mid] <= draft) low = mid;
-    else high = mid - 1;
-  }
-  return low;
-}
-
-function facetArea(p: Float32Array, facet: number): number {
-  const i = facet * 9;
-  const ux = p[i + 3] - p[i];
-  const uy = p[i + 4] - p[i + 1];
-  const uz = p[i + 5] - p[i + 2];
-  const vx = p[i + 6] - p[i];
-  const vy = p[i + 7] - p[i + 1];
-  const vz = p[i + 8] - p[i + 2];
-  return Math.hypot(uy * vz - uz * vy, uz * vx - ux * vz, ux * vy - uy * vx) / 2;
+  return areaBelow({ edges: edgesDeg, areaMm2 }, limitDeg);
 }

@@ -1,7 +1,7 @@
 import { MeshoptSimplifier } from 'meshoptimizer/simplifier';
 import { measureDeviation } from './measure-deviation';
 import type { SplitMesh } from './split-vertices';
-import { DRAFT_STEP_DEG } from './stage-model-meta';
+import { DRAFT_STEP_DEG, MAP_STEP_MM, TRAP_NONE } from './stage-model-meta';
 
 /** Above this many triangles the stage shows a simplified surface. */
 export const TRIANGLE_TARGET = 200_000;
@@ -45,9 +45,9 @@ async function collapse(mesh: SplitMesh, from: Uint32Array, target: number) {
       index,
       positions,
       3,
-      attributes,
-      4,
-      [0.5, 0.5, 0.5, 0.5],
+      attributes.values,
+      attributes.weights.length,
+      attributes.weights,
       null,
       target * 3,
       boundMm,
@@ -73,12 +73,23 @@ function vertexPositions(mesh: SplitMesh, points: Float32Array): Float32Array {
   return positions;
 }
 
-/** Normal, and draft in tens of degrees: a turn of the colour weighs like a turn of the surface. */
-function vertexAttributes(mesh: SplitMesh): Float32Array {
-  const attributes = new Float32Array(mesh.vertices * 4);
-  for (let v = 0; v < mesh.vertices; v++) {
-    for (let a = 0; a < 3; a++) attributes[v * 4 + a] = mesh.normals[v * 3 + a];
-    attributes[v * 4 + 3] = (mesh.draft[v] * DRAFT_STEP_DEG) / 10;
+/** Thicker than this is thick: no triangle is spent on how thick. */
+const WALL_THICK_MM = 12;
+
+/**
+ * Normal, and draft in tens of degrees: a turn of the colour weighs like a turn of the surface. A millimetre of wall
+ * weighs a tenth of one of shape; a pocket's depth follows the shape, only its end has to be kept.
+ */
+function vertexAttributes({ vertices, normals, draft, wall, trap }: SplitMesh) {
+  const weights = [0.5, 0.5, 0.5, 0.5, ...(wall ? [0.1] : []), ...(trap ? [0.5] : [])];
+  const size = weights.length;
+  const values = new Float32Array(vertices * size);
+  for (let v = 0; v < vertices; v++) {
+    const at = v * size;
+    for (let a = 0; a < 3; a++) values[at + a] = normals[v * 3 + a];
+    values[at + 3] = (draft[v] * DRAFT_STEP_DEG) / 10;
+    if (wall) values[at + 4] = Math.min(WALL_THICK_MM, wall[v] * MAP_STEP_MM);
+    if (trap) values[at + size - 1] = trap[v] === TRAP_NONE ? 0 : 1;
   }
-  return attributes;
+  return { values, weights };
 }

@@ -1,4 +1,5 @@
-import { DRAFT_STEP_DEG, type StageGeometry } from './stage-model-meta';
+import { DRAFT_STEP_DEG, MAP_STEP_MM, TRAP_NONE, WALL_NONE, type StageGeometry } from './stage-model-meta';
+import { averageByVertex } from './average-by-vertex';
 
 /** An indexed mesh whose vertices are split wherever shading or colour may not run across an edge. */
 export interface SplitMesh {
@@ -13,6 +14,10 @@ export interface SplitMesh {
   /** counts of DRAFT_STEP_DEG */
   draft: Int16Array;
   flags: Uint8Array;
+  /** counts of MAP_STEP_MM, WALL_NONE without a wall; null where no facet has one */
+  wall: Uint16Array | null;
+  /** counts of MAP_STEP_MM below the pocket's rim, TRAP_NONE without a pocket; null where no facet has one */
+  trap: Int16Array | null;
   vertices: number;
   places: number;
   origin: [number, number, number];
@@ -25,12 +30,26 @@ export const CREASE_DEG = 32;
 const CREASE_COS = Math.cos((CREASE_DEG * Math.PI) / 180);
 /** So many vertices are sent without a thought: about 4 MB at the worst. */
 const MOST_VERTICES = 600_000;
-/** At 180 nothing is split: the mesh is rough all over (a noisy scan) and its mean is what can be shown. */
-const DRAFT_SPLITS_DEG = [1, 3, 10, 180];
+/**
+ * Tried in turn until the vertices are few enough: draft and wall apart, draft alone, and at 180° nothing, as a mesh
+ * that is rough all over (a noisy scan) can show its mean only.
+ */
+const SPLITS = [
+  { deg: 1, walls: true },
+  { deg: 1, walls: false },
+  { deg: 3, walls: false },
+  { deg: 10, walls: false },
+  { deg: 180, walls: false },
+];
+type Split = (typeof SPLITS)[number];
+/** Walls that differ by more than this share no vertex, in counts; what is thicker than the second is thick. */
+const WALL_JUMP = 1 / MAP_STEP_MM;
+const WALL_THICK = 12 / MAP_STEP_MM;
 
 /**
- * Rounds positions to a 16-bit grid over the bounds, welds equal ones, and splits vertices by crease, draft and flag.
- * The draft step is widened from 1° upwards only where a heavy, rough mesh would otherwise be split nearly everywhere.
+ * Rounds positions to a 16-bit grid over the bounds, welds equal ones, and splits vertices by crease, draft, flag and
+ * jumps of the wall. The draft step is widened from 1° upwards, and walls run together, only where a heavy, rough mesh
+ * would otherwise be split nearly everywhere.
  */
 export function splitVertices(geometry: StageGeometry): SplitMesh {
   const welded = weldCorners(geometry.positions);
@@ -40,15 +59,48 @@ export function splitVertices(geometry: StageGeometry): SplitMesh {
   // A look at some of the places tells which tolerance will do, before all are gone through.
   const most = Math.max(MOST_VERTICES, kept.draft.length * 1.2);
   const stride = Math.max(1, Math.floor(welded.places / 10_000));
-  const splitDeg =
+  const last = SPLITS[SPLITS.length - 1];
+  const by =
     kept.corner.length <= MOST_VERTICES
-      ? DRAFT_SPLITS_DEG[0]
-      : (DRAFT_SPLITS_DEG.find(
-          (deg) =>
-            clusterCorners(kept, normals, incident, welded.places, deg, stride).vertices * stride <= most,
-        ) ?? 180);
-  const split = clusterCorners(kept, normals, incident, welded.places, splitDeg, 1);
-  return { ...split, grid: welded.grid, places: welded.places, origin: welded.origin, stepMm: welded.stepMm };
+      ? SPLITS[0]
+      : (SPLITS.find(
+          (one) =>
+            clusterCorners(kept, normals, incident, welded.places, one, stride).vertices * stride <= most,
+        ) ?? last);
+  const { areas, ...split } = clusterCorners(kept, normals, incident, welded.places, by, 1);
+  const { grid, places, origin, stepMm } = welded;
+  const { index, vertices } = split;
+  const mean = (figures: Float32Array) => averageByVertex(index, figures, areas, vertices);
+  return {
+    ...split,
+    draft: Int16Array.from(mean(Float32Array.from(kept.draft)), Math.round),
+    wall: kept.wall && wallCounts(mean(kept.wall)),
+    trap: kept.spillMm && trapCounts(mean(kept.spillMm), split.place, welded),
+    grid,
+    places,
+    origin,
+    stepMm,
+  };
+}
+
+function wallCounts(counts: Float32Array): Uint16Array {
+  // A hundredth is the least that is not "none".
+  return Uint16Array.from(counts, (v) =>
+    Number.isNaN(v) ? WALL_NONE : Math.min(65535, Math.max(1, Math.round(v))),
+  );
+}
+
+/** The level is the facets', the depth below it each vertex's own: it runs straight along every wall. */
+function trapCounts(
+  level: Float32Array,
+  place: Uint32Array,
+  { grid, origin, stepMm }: ReturnType<typeof weldCorners>,
+): Int16Array {
+  return Int16Array.from(level, (spill, v) => {
+    if (Number.isNaN(spill)) return TRAP_NONE;
+    const depth = (spill - (origin[2] + grid[place[v] * 3 + 2] * stepMm)) / MAP_STEP_MM;
+    return Math.max(TRAP_NONE + 1, Math.min(32767, Math.round(depth)));
+  });
 }
 
 function weldCorners(positions: Float32Array) {
@@ -106,21 +158,35 @@ function grow(grid: Uint16Array<ArrayBuffer>): Uint16Array<ArrayBuffer> {
 }
 
 /** Facets that the grid has closed to a line or a point have no area to show and are left out. */
-function keepSoundFacets(corner: Uint32Array, { facetDraftDeg, facetFlags }: StageGeometry) {
+function keepSoundFacets(corner: Uint32Array, geometry: StageGeometry) {
+  const { facetDraftDeg, facetFlags, facetWallMm, facetSpillMm } = geometry;
+  const facets = facetDraftDeg.length;
   const kept = new Uint32Array(corner.length);
-  const draft = new Int16Array(facetDraftDeg.length);
-  const flags = new Uint8Array(facetDraftDeg.length);
+  const draft = new Int16Array(facets);
+  const flags = new Uint8Array(facets);
+  const wall = facetWallMm?.some((mm) => mm > 0) ? new Float32Array(facets) : null;
+  const spillMm = facetSpillMm?.some((mm) => mm > 0) ? new Float32Array(facets) : null;
   let n = 0;
-  for (let f = 0; f < facetDraftDeg.length; f++) {
+  for (let f = 0; f < facets; f++) {
     const a = corner[f * 3];
     const b = corner[f * 3 + 1];
     const c = corner[f * 3 + 2];
     if (a === b || b === c || c === a) continue;
-    kept.set([a, b, c], n * 3);
+    kept[n * 3] = a;
+    kept[n * 3 + 1] = b;
+    kept[n * 3 + 2] = c;
     draft[n] = Math.round(facetDraftDeg[f] / DRAFT_STEP_DEG);
+    if (wall) wall[n] = facetWallMm![f] > 0 ? facetWallMm![f] / MAP_STEP_MM : NaN;
+    if (spillMm) spillMm[n] = facetSpillMm![f] > 0 ? facetSpillMm![f] : NaN;
     flags[n++] = facetFlags[f];
   }
-  return { corner: kept.subarray(0, n * 3), draft: draft.subarray(0, n), flags: flags.subarray(0, n) };
+  return {
+    corner: kept.subarray(0, n * 3),
+    draft: draft.subarray(0, n),
+    flags: flags.subarray(0, n),
+    wall: wall && wall.subarray(0, n),
+    spillMm: spillMm && spillMm.subarray(0, n),
+  };
 }
 
 /** Area-weighted (not unit) normals in grid counts, three numbers a facet. */
@@ -161,11 +227,12 @@ function clusterCorners(
   normals: Float32Array,
   { start, list }: Incident,
   places: number,
-  splitDeg: number,
+  by: Split,
   stride: number,
 ) {
-  const tolerance = splitDeg / DRAFT_STEP_DEG;
-  const rough = splitDeg === 180;
+  const tolerance = by.deg / DRAFT_STEP_DEG;
+  const rough = by.deg === 180;
+  const walls = by.walls ? kept.wall : null;
   const creaseCos = rough ? -2 : CREASE_COS;
   const lengths = new Float32Array(kept.draft.length);
   for (let f = 0; f < lengths.length; f++) {
@@ -177,8 +244,7 @@ function clusterCorners(
   const index = new Uint32Array(stride === 1 ? corners : 0);
   const place = new Uint32Array(corners);
   const outNormals = new Float32Array(corners * 3);
-  const draft = new Int16Array(corners);
-  const flags = new Uint8Array(corners);
+  const first = new Uint32Array(corners);
   let vertices = 0;
   // Per place: smooth groups carry the normal, draft groups inside them become the vertices.
   let leader: number[] = [];
@@ -210,50 +276,41 @@ function clusterCorners(
       sums[g * 3 + 2] += nz;
       groupOf.push(g);
     }
-    const first = vertices;
+    const begin = vertices;
     for (let k = from; k < to; k++) {
       const f = (list[k] / 3) | 0;
       const g = groupOf[k - from];
-      let v = first;
+      let v = begin;
       for (; v < vertices; v++) {
-        const alike =
-          rough || (flags[v] === kept.flags[f] && Math.abs(draft[v] - kept.draft[f]) <= tolerance);
-        if (place[v] === g && alike) break;
+        if (place[v] !== g) continue;
+        const l = first[v];
+        if (rough) break;
+        if (kept.flags[l] !== kept.flags[f] || Math.abs(kept.draft[l] - kept.draft[f]) > tolerance) continue;
+        if (walls === null || alikeWalls(walls[l], walls[f])) break;
       }
       if (v === vertices) {
         const length = Math.hypot(sums[g * 3], sums[g * 3 + 1], sums[g * 3 + 2]) || 1;
         for (let a = 0; a < 3; a++) outNormals[v * 3 + a] = sums[g * 3 + a] / length;
         place[v] = g;
-        draft[v] = kept.draft[f];
-        flags[v] = kept.flags[f];
+        first[v] = f;
         vertices++;
       }
       index[list[k]] = v;
     }
-    for (let v = first; v < vertices; v++) place[v] = p;
+    for (let v = begin; v < vertices; v++) place[v] = p;
   }
   return {
     index,
     place: place.slice(0, vertices),
     normals: outNormals.slice(0, vertices * 3),
-    draft: averageDraft(index, kept.draft, lengths, vertices),
-    flags: flags.slice(0, vertices),
+    flags: Uint8Array.from(first.subarray(0, vertices), (f) => kept.flags[f]),
     vertices,
-    draftSplitDeg: splitDeg,
+    areas: lengths,
+    draftSplitDeg: by.deg,
   };
 }
 
-/** Area-weighted mean of the facets that share a vertex; they differ by the split tolerance at most. */
-function averageDraft(index: Uint32Array, facetDraft: Int16Array, areas: Float32Array, vertices: number) {
-  const sum = new Float64Array(vertices);
-  const weight = new Float64Array(vertices);
-  for (let c = 0; c < index.length; c++) {
-    const f = (c / 3) | 0;
-    const w = areas[f] + 1e-9;
-    sum[index[c]] += facetDraft[f] * w;
-    weight[index[c]] += w;
-  }
-  const draft = new Int16Array(vertices);
-  for (let v = 0; v < vertices; v++) draft[v] = Math.round(sum[v] / weight[v]);
-  return draft;
+function alikeWalls(a: number, b: number): boolean {
+  if (!(a > 0) || !(b > 0)) return !(a > 0) === !(b > 0);
+  return Math.abs(Math.min(a, WALL_THICK) - Math.min(b, WALL_THICK)) <= WALL_JUMP;
 }
