@@ -19,12 +19,23 @@ export function MeasureBar({ value, limit, unit, sense, digits = 2, max }: Measu
   const share = (number: number) => Math.min(100, Math.max(0, (number / end) * 100));
   const wanted = `${sense === 'at-least' ? 'wanted' : 'at most'} ${formatNumber(limit, digits)}`;
   const late = share(limit) > 62;
+  const measured = `measured ${formatNumber(value, digits)}${unit === '°' || !unit ? '' : '\u202f'}${unit}`;
   return (
     <div
       role="img"
       aria-label={`Measured ${formatNumber(value, digits)} ${unit}, ${wanted} ${unit}`}
       className="relative pt-4"
     >
+      <span
+        aria-hidden
+        className={clsx(
+          'absolute top-0 font-mono text-[0.6875rem] leading-4',
+          broken && 'text-madder',
+          share(limit) > 38 ? 'left-0' : 'right-0',
+        )}
+      >
+        {measured}
+      </span>
       <span className="block h-1.5 bg-rule forced-colors:h-2 forced-colors:border">
         <span
           className={clsx('block h-full forced-colors:bg-[Highlight]', broken ? 'bg-madder' : 'bg-verdigris')}

@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import {
   figureOf,
   measureOf,
+  pairWords,
 } from '@/app/w/[workspace]/templates/[template]/[letter]/_components/measure-of';
 
 const measure = (
@@ -32,10 +33,37 @@ describe('measureOf', () => {
     ['no limit', 3, null],
     ['a limit of nothing', 2, 0],
     ['a negative figure', -2, 5],
+    ['a sharp edge, a radius of nothing', 0, 0.8],
     ['an endless figure', Infinity, 5],
     ['a breach of nothing', 5, 5],
   ])('draws no bar for %s', (_what, measured, limit) => {
     expect(measure('draft', 'fail', measured, limit)).toBeNull();
+  });
+});
+
+describe('measured against limit in words', () => {
+  const pair = (
+    checkId: string,
+    status: 'pass' | 'caution' | 'fail' | 'not-run',
+    [measured, limit]: [number | null, number | null],
+    unit = 'mm',
+  ) => pairWords({ checkId, status, measured, limit, unit }, 'mm');
+
+  it('gives both figures and the side that is wanted', () => {
+    expect(pair('draft', 'caution', [4.21, 6.81], 'deg')).toBe('measured 4.2°, at least 6.8° wanted');
+    expect(pair('edges', 'caution', [0, 0.8])).toBe('measured 0\u202fmm, at least 0.80\u202fmm wanted');
+    expect(pair('spacing', 'fail', [1.62, 1], 'height/gap')).toBe('measured 1.62, at most 1 wanted');
+    expect(pair('draw', 'pass', [1.8, 3], 'ratio')).toBe('measured 1.80, at most 3 wanted');
+    expect(pair('draw', 'fail', [0.31, 0.35])).toBe('measured 0.31\u202fmm, at least 0.35\u202fmm wanted');
+  });
+
+  it('says nothing where one is missing, nothing was run, or the two do not show the breach', () => {
+    expect(pair('draft', 'caution', [null, 5], 'deg')).toBeNull();
+    expect(pair('print', 'pass', [50_400, null], 's')).toBeNull();
+    expect(pair('heat', 'not-run', [60, 70], '°C')).toBeNull();
+    expect(pair('vents', 'fail', [0.8, 0.4])).toBeNull();
+    expect(pair('release', 'caution', [9, 7], 'deg')).toBeNull();
+    expect(pair('mesh', 'caution', [2, 0], 'warnings')).toBeNull();
   });
 });
 

@@ -94,7 +94,8 @@ function FindingItem({ item, finding }: { item: DocketItem; finding: FindingView
   const { workspace, revision, reader, people, hasDraft } = useRoom();
   const [answering, setAnswering] = useState(false);
   const waiting = useOutgoing(revision.id).filter((e) => e.findingId === finding.id && !e.threadId);
-  const mayAnswer = revision.can.note && !item.thread && !revision.lockedAt && waiting.length === 0;
+  const wasRun = finding.status !== 'not-run';
+  const mayAnswer = wasRun && revision.can.note && !item.thread && !revision.lockedAt && waiting.length === 0;
   const mayWaive = revision.can.waive && finding.status === 'fail' && !finding.waiver;
   return (
     <>

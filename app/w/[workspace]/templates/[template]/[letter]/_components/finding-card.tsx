@@ -5,8 +5,10 @@ import { Figure } from '@/app/_components/figure';
 import { MeasureBar } from '@/app/_components/measure-bar';
 import { usePreferences } from '@/app/_components/preferences-context';
 import { Time } from '@/app/_components/time';
+import { checkComputed, checkName } from '@/lib/review/check-words';
 import type { FindingView } from '@/lib/review/schemas';
-import { figureOf, measureOf } from './measure-of';
+import { basisWords } from './basis-words';
+import { figureOf, measureOf, pairWords } from './measure-of';
 import { MetaButton } from './meta-button';
 import { PlaceLinks } from './place-links';
 
@@ -16,10 +18,14 @@ export function FindingCard(props: { finding: FindingView; itemKey: string; acti
   const { units } = usePreferences();
   const [explained, setExplained] = useState(false);
   const basisId = useId();
-  const measure = measureOf(finding, units);
+  const wasRun = finding.status !== 'not-run';
+  const isBreach = finding.status === 'fail' || finding.status === 'caution';
+  const measure = isBreach ? measureOf(finding, units) : null;
+  const pair = measure ? null : pairWords(finding, units);
   return (
     <>
-      {measure && finding.status !== 'pass' ? <MeasureBar {...measure} /> : null}
+      {measure ? <MeasureBar {...measure} /> : null}
+      {pair ? <p className="font-mono text-xs text-slate">{pair}</p> : null}
       {finding.remedy ? <p>{finding.remedy}</p> : null}
       {finding.waiver ? (
         <p className="border-l-2 border-ochre pl-3 text-sm">
@@ -28,42 +34,43 @@ export function FindingCard(props: { finding: FindingView; itemKey: string; acti
         </p>
       ) : null}
       <div className="flex flex-wrap items-baseline gap-x-3.5 text-sm text-slate">
-        <PlaceLinks places={finding.places} itemKey={itemKey} />
-        <MetaButton
-          aria-expanded={explained}
-          aria-controls={basisId}
-          onPress={() => setExplained(!explained)}
-        >
-          how it is computed
-        </MetaButton>
+        {finding.places.length > 0 ? (
+          <PlaceLinks places={finding.places} itemKey={itemKey} />
+        ) : isBreach ? (
+          <span>concerns the whole template</span>
+        ) : null}
+        {wasRun ? (
+          <MetaButton
+            aria-expanded={explained}
+            aria-controls={basisId}
+            onPress={() => setExplained(!explained)}
+          >
+            how it is computed
+          </MetaButton>
+        ) : null}
         {actions}
       </div>
-      <div id={basisId} hidden={!explained} className="print:block">
-        <FindingBasis finding={finding} />
-      </div>
+      {wasRun ? (
+        <div id={basisId} hidden={!explained} className="print:block">
+          <FindingBasis finding={finding} />
+        </div>
+      ) : null}
     </>
   );
 }
 
-const kinds: Record<string, string> = {
-  'common practice': 'common practice',
-  handbook: 'a handbook',
-  standard: 'a standard',
-  computed: 'computed from mesh and recipe',
-};
-
 function FindingBasis({ finding }: { finding: FindingView }) {
   const { units } = usePreferences();
-  const { source, kind } = finding.basis;
   const rows: [string, ReactNode][] = [['check', checkName(finding.checkId)]];
+  const computed = checkComputed(finding.checkId);
+  if (computed) rows.push(['from', computed]);
   if (finding.measured !== null) {
     rows.push(['measured', <Figure key="m" {...figureOf(finding.measured, finding.unit, units)} />]);
   }
   if (finding.limit !== null) {
     rows.push(['limit', <Figure key="l" {...figureOf(finding.limit, finding.unit, units)} />]);
   }
-  const named = kinds[kind] && !source.startsWith(kinds[kind]);
-  rows.push(['basis', named ? `${source} (${kinds[kind]})` : source]);
+  rows.push(['basis', basisWords(finding.basis)]);
   return (
     <dl className="my-1 grid grid-cols-[auto_1fr] gap-x-4 gap-y-0.5 border-l-2 border-rule pl-3 text-sm">
       {rows.map(([label, value]) => (

@@ -1,4 +1,4 @@
-import { mmPerInch } from '@/app/_components/format-figure';
+import { formatNumber, mmPerInch } from '@/app/_components/format-figure';
 import type { Units } from '@/app/_components/preferences';
 import type { FindingView } from '@/lib/review/schemas';
 
@@ -59,24 +59,49 @@ const wanted: Record<string, Measure['sense']> = {
   overhang: 'at-most',
   fit: 'at-most',
   nozzle: 'at-most',
+  release: 'at-least',
 };
 
+type Judged = Pick<FindingView, 'checkId' | 'measured' | 'limit' | 'unit' | 'status'>;
+
 /**
- * What was measured against its limit, where a bar from zero says something: both known, none negative, a limit
- * above zero, and a breach that the two figures show (a pocket without any vent is none that they would show).
+ * Which side of the limit is wanted; null where the two figures do not show the breach that the finding tells of (a
+ * pocket without any vent beside wide vents).
  */
-export function measureOf(
-  finding: Pick<FindingView, 'checkId' | 'measured' | 'limit' | 'unit' | 'status'>,
-  units: Units,
-): Measure | null {
-  const { checkId, measured, limit, unit, status } = finding;
-  if (measured === null || limit === null || measured < 0 || limit <= 0) return null;
-  if (!Number.isFinite(measured) || !Number.isFinite(limit)) return null;
+function senseOf({ checkId, measured, limit, unit, status }: Judged): Measure['sense'] | null {
   const isBreach = status === 'fail' || status === 'caution';
   if (isBreach && measured === limit) return null;
-  const isShort = measured < limit;
-  const sense = wanted[checkId] ?? (isShort === isBreach ? 'at-least' : 'at-most');
-  if (isBreach && isShort !== (sense === 'at-least')) return null;
+  const isShort = measured! < limit!;
+  // The draw check tells of a ratio, or of the mean thickness where that is what falls short.
+  const known = checkId === 'draw' && unit === 'mm' ? 'at-least' : wanted[checkId];
+  const sense = known ?? (isShort === isBreach ? 'at-least' : 'at-most');
+  return isBreach && isShort !== (sense === 'at-least') ? null : sense;
+}
+
+/** Measured against limit in words, `measured 4.2°, at least 6.8° wanted`; null where the two say nothing together. */
+export function pairWords(finding: Judged, units: Units): string | null {
+  const { measured, limit, unit, status } = finding;
+  if (measured === null || limit === null || status === 'not-run' || unit === 'warnings') return null;
+  const sense = senseOf(finding);
+  if (!sense) return null;
+  const least = sense === 'at-least' ? 'at least' : 'at most';
+  return `measured ${figureWords(measured, unit, units)}, ${least} ${figureWords(limit, unit, units)} wanted`;
+}
+
+/** One figure with its unit: `4.2°`, `0.31 mm`. */
+export function figureWords(value: number, unit: string, units: Units): string {
+  const shown = figureOf(value, unit, units);
+  const space = shown.unit === '°' || shown.unit === '' ? '' : '\u202f';
+  return `${formatNumber(shown.value, shown.digits)}${space}${shown.unit}`;
+}
+
+/** Both figures for a bar from zero: known, above zero, and showing the breach if there is one. */
+export function measureOf(finding: Judged, units: Units): Measure | null {
+  const { measured, limit, unit } = finding;
+  if (measured === null || limit === null || measured <= 0 || limit <= 0) return null;
+  if (!Number.isFinite(measured) || !Number.isFinite(limit)) return null;
+  const sense = senseOf(finding);
+  if (!sense) return null;
   const value = figureOf(measured, unit, units);
   const bound = figureOf(limit, unit, units);
   const digits = Math.max(value.digits, bound.digits);

@@ -28,7 +28,7 @@ export function PlaceLinks(props: {
           {placeWords(place.at, units)}
         </MetaButton>
       ))}
-      {more > 0 ? <span>and {more} more places</span> : null}
+      {more > 0 ? <span>{more === 1 ? 'and 1 more place' : `and ${more} more places`}</span> : null}
     </>
   );
 }

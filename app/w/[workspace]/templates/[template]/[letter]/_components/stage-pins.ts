@@ -1,9 +1,8 @@
 import type { Point, StageCamera, StagePin } from '@/app/_components/stage/stage-props';
 import type { Units } from '@/app/_components/preferences';
-import { formatNumber } from '@/app/_components/format-figure';
 import { checkName } from '@/lib/review/check-words';
 import type { DocketGroup, DocketItem } from './docket-items';
-import { figureOf } from './measure-of';
+import { figureWords, pairWords } from './measure-of';
 
 export interface Bounds {
   min: Point;
@@ -71,10 +70,11 @@ export function placeOf({ finding, thread }: DocketItem): Point | null {
 
 function labelOf({ finding, thread }: DocketItem, units: Units): string {
   if (finding) {
-    if (!finding.measured) return checkName(finding.checkId);
-    const { value, unit, digits } = figureOf(finding.measured, finding.unit, units);
-    const figure = `${formatNumber(value, digits)}${unit === '°' ? '' : '\u202f'}${unit}`;
-    return `${checkName(finding.checkId)} ${figure}`;
+    const { checkId, measured, unit } = finding;
+    const name = checkName(checkId);
+    const pair = pairWords(finding, units);
+    if (pair) return `${name} ${pair.replace(/^measured /, '')}`;
+    return measured === null ? name : `${name} ${figureWords(measured, unit, units)}`;
   }
   const text = thread?.notes[0]?.text ?? 'Note';
   return text.length > 28 ? `${text.slice(0, 26)}…` : text;
