@@ -62,7 +62,9 @@ export function missesOf(report: unknown, claims: Claims): string[] {
 }
 
 function missOf(path: string, found: unknown, claim: Claim): string[] {
-  const told = (expected: string) => [`${path}: expected ${expected}, got ${JSON.stringify(found)?.slice(0, 300)}`];
+  const told = (expected: string) => [
+    `${path}: expected ${expected}, got ${JSON.stringify(found)?.slice(0, 300)}`,
+  ];
   if (claim instanceof Within) return claim.holds(found) ? [] : told(claim.toString());
   if (claim instanceof Having) {
     const list = Array.isArray(found) ? (found as string[]) : [];
