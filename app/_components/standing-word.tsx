@@ -1,6 +1,7 @@
 import type { Standing } from '@/lib/review/schemas';
 import { verdictTag } from '@/lib/review/verdict-words';
-import { StatusWord, type State } from './status-word';
+import { Link } from './link';
+import { states, StatusWord, type State } from './status-word';
 
 const stateOf: Record<Standing, State> = {
   draft: 'draft',
@@ -17,6 +18,22 @@ const stateOf: Record<Standing, State> = {
 /** The state of a template or a revision, as shape and word. */
 export function StandingWord({ standing }: { standing: Standing }) {
   return <StatusWord state={stateOf[standing]} />;
+}
+
+/** A newer revision on its way, in a word that leads to it: `B in review`. `here` is the template's address. */
+export function RevisionAhead({
+  here,
+  ahead,
+}: {
+  here: string;
+  ahead: { letter: string; standing: Standing };
+}) {
+  const state = stateOf[ahead.standing];
+  return (
+    <Link href={`${here}/${ahead.letter}`} className="text-sm whitespace-nowrap">
+      {ahead.letter} {states[state].word}
+    </Link>
+  );
 }
 
 /** What the check run said of a revision, in a word. */

@@ -38,10 +38,14 @@ export const templates = pgTable(
     number: text('number').notNull(),
     title: text('title').notNull(),
     dueOn: date('due_on', { mode: 'string' }),
-    /** State of the latest revision, kept for lists; `draft` before the first one is posted. */
+    /** State of the revision that counts (lib/review/standing.ts), kept for lists; `draft` before any is posted. */
     standing: text('standing', { enum: standings }).notNull().default('draft'),
+    standingRevisionId: uuid('standing_revision_id'),
+    standingLetter: text('standing_letter'),
+    /** The newest revision and its state: another one than the above while a newer one is on its way. */
     latestRevisionId: uuid('latest_revision_id'),
     latestLetter: text('latest_letter'),
+    latestStanding: text('latest_standing', { enum: standings }),
     createdBy: uuid('created_by')
       .notNull()
       .references(() => users.id),

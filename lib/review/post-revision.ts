@@ -20,7 +20,7 @@ import { movedLimits } from './library-data';
 import { hasOwnUnit } from './mesh-format';
 import { workspacePeople } from './people-data';
 import {
-  followLatest,
+  followRevisions,
   insertRecipe,
   insertRevision,
   latestRevision,
@@ -106,7 +106,7 @@ export async function postRevision(
     });
     await insertCheckRun(tx, { workspaceId, revisionId: revision.id, jobId });
     await advanceGates(tx, ctx, template, revision);
-    await followLatest(tx, template, revision);
+    await followRevisions(tx, template);
     await deleteDraft(tx, draft);
     await appendEntry(tx, ctx, {
       action: 'revision.posted',

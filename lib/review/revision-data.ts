@@ -8,6 +8,7 @@ import { appendEntry } from '@/lib/audit/append-entry';
 import { workspaceIdOf, type JobContext, type WorkspaceContext } from '@/lib/auth/context';
 import { notFound } from '@/lib/errors/app-error';
 import { queueLive } from '@/lib/jobs/queue-live';
+import { standingRevision } from './standing';
 
 export type TemplateRow = typeof templates.$inferSelect;
 export type RevisionRow = typeof revisions.$inferSelect;
@@ -154,18 +155,33 @@ export async function countSignatures(
   return row.n;
 }
 
-/** The template's list columns follow its newest revision. */
-export async function followLatest(
+/** The template's list columns follow its revisions: the one that counts, and the newest. */
+export async function followRevisions(
   tx: TenantTx,
   template: { workspaceId: string; id: string },
-  latest: { id: string; letter: string; state: Standing },
 ): Promise<void> {
+  const all = await tx
+    .select({
+      id: revisions.id,
+      letter: revisions.letter,
+      ordinal: revisions.ordinal,
+      state: revisions.state,
+    })
+    .from(revisions)
+    .where(and(eq(revisions.workspaceId, template.workspaceId), eq(revisions.templateId, template.id)))
+    .orderBy(desc(revisions.ordinal));
+  const [latest] = all;
+  const counts = standingRevision(all);
+  if (!latest || !counts) return;
   await tx
     .update(templates)
     .set({
       latestRevisionId: latest.id,
       latestLetter: latest.letter,
-      standing: latest.state,
+      latestStanding: latest.state,
+      standingRevisionId: counts.id,
+      standingLetter: counts.letter,
+      standing: counts.state,
       changedAt: sql`clock_timestamp()`,
     })
     .where(and(eq(templates.workspaceId, template.workspaceId), eq(templates.id, template.id)));
@@ -223,8 +239,7 @@ export async function moveRevision(
   const superseded: RevisionRow[] = [];
   for (const row of older)
     superseded.push(await setState(tx, row, 'superseded', `Superseded by ${moved.letter}.`));
-  const latest = await latestRevision(tx, workspaceId, revision.templateId);
-  if (latest) await followLatest(tx, { workspaceId, id: revision.templateId }, latest);
+  await followRevisions(tx, { workspaceId, id: revision.templateId });
   for (const row of superseded)
     await appendEntry(tx, ctx, {
       action: 'revision.superseded',

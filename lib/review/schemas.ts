@@ -59,10 +59,17 @@ export const TemplateSummary = z.object({
   number: z.string(),
   title: z.string(),
   dueOn: z.iso.date().nullable(),
+  /** State of the revision that counts: released before approved before in review before returned. */
   standing,
+  standingRevisionId: id.nullable(),
+  standingLetter: z.string().nullable(),
+  /** A newer revision in review, or returned, while the template stands on an older one. */
+  ahead: z.object({ id, letter: z.string(), standing }).nullable(),
   latestRevisionId: id.nullable(),
   latestLetter: z.string().nullable(),
+  /** Of the revision that counts. */
   verdict: verdict.nullable(),
+  /** Of the newer revision on its way, or else of the one that counts while it is not decided. */
   openMustSettle: z.number(),
   thumbnailUrl: z.string().nullable(),
   changedAt: instant,

@@ -7,6 +7,7 @@ import type { TenantTx } from '@/db/tenant';
 import { notFound } from '@/lib/errors/app-error';
 import type { TemplateRow } from './revision-data';
 import type { ListTemplatesInput } from './schemas';
+import { onItsWay } from './standing';
 
 /** The next serial of the workspace, gap-free: the workspace's row is held until commit. */
 export async function nextSerial(
@@ -70,7 +71,9 @@ function matching(workspaceId: string, filter: Filter): SQL | undefined {
   const found = filter.search
     ? or(ilike(templates.title, escaped(filter.search)), ilike(templates.number, escaped(filter.search)))
     : undefined;
-  const stands = filter.standing ? eq(templates.standing, filter.standing) : undefined;
+  const { standing } = filter;
+  const newer = standing && onItsWay.includes(standing) ? eq(templates.latestStanding, standing) : undefined;
+  const stands = standing ? or(eq(templates.standing, standing), newer) : undefined;
   return and(eq(templates.workspaceId, workspaceId), found, stands);
 }
 

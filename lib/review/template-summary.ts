@@ -3,6 +3,7 @@ import type { TenantTx } from '@/db/tenant';
 import { listFacts } from './template-data';
 import type { TemplateRow } from './revision-data';
 import type { TemplateSummary } from './schemas';
+import { onItsWay } from './standing';
 
 /** Address of one file of a revision in our API; it leads on to the store. */
 export const fileUrl = (
@@ -11,7 +12,12 @@ export const fileUrl = (
   kind: 'model' | 'picture' | 'thumbnail' | 'mesh',
 ) => `/api/v1/workspaces/${ctx.workspace.slug}/revisions/${revisionId}/${kind}`;
 
-const undecided = new Set(['in_review', 'returned']);
+/** The newer revision on its way, where the template stands on an older one. */
+function aheadOf(template: TemplateRow): TemplateSummary['ahead'] {
+  const { latestRevisionId: id, latestLetter: letter, latestStanding: standing } = template;
+  if (!id || !letter || !standing || id === template.standingRevisionId) return null;
+  return onItsWay.includes(standing) ? { id, letter, standing } : null;
+}
 
 /** Templates as lists show them; three statements for any number of them. */
 export async function summarise(
@@ -19,24 +25,31 @@ export async function summarise(
   ctx: WorkspaceContext,
   templates: TemplateRow[],
 ): Promise<TemplateSummary[]> {
-  const ids = templates.flatMap((template) => template.latestRevisionId ?? []);
+  const ids = templates.flatMap((template) => [
+    ...(template.standingRevisionId ? [template.standingRevisionId] : []),
+    ...(aheadOf(template) && template.latestRevisionId ? [template.latestRevisionId] : []),
+  ]);
   const facts = await listFacts(tx, ctx.workspace.id, ids);
   return templates.map((template) => {
-    const fact = template.latestRevisionId ? facts.get(template.latestRevisionId) : undefined;
+    const { standing, standingRevisionId, standingLetter } = template;
+    const ahead = aheadOf(template);
+    const fact = standingRevisionId ? facts.get(standingRevisionId) : undefined;
+    const undecided = ahead?.id ?? (onItsWay.includes(standing) ? standingRevisionId : null);
     return {
       id: template.id,
       number: template.number,
       title: template.title,
       dueOn: template.dueOn,
-      standing: template.standing,
+      standing,
+      standingRevisionId,
+      standingLetter,
+      ahead,
       latestRevisionId: template.latestRevisionId,
       latestLetter: template.latestLetter,
       verdict: fact?.verdict ?? null,
-      openMustSettle: undecided.has(template.standing) ? (fact?.mustSettle ?? 0) : 0,
+      openMustSettle: (undecided && facts.get(undecided)?.mustSettle) || 0,
       thumbnailUrl:
-        fact?.picture && template.latestRevisionId
-          ? fileUrl(ctx, template.latestRevisionId, 'thumbnail')
-          : null,
+        fact?.picture && standingRevisionId ? fileUrl(ctx, standingRevisionId, 'thumbnail') : null,
       changedAt: template.changedAt.toISOString(),
       version: template.version,
     };

@@ -140,7 +140,13 @@ export async function returnedRevisions(tx: TenantTx, personId: string) {
   return tx
     .select({ ...place, reason: revisions.stateReason, since: revisions.stateAt })
     .from(revisions)
-    .innerJoin(templates, and(ofTemplate, eq(templates.latestRevisionId, revisions.id)))
+    .innerJoin(
+      templates,
+      and(
+        ofTemplate,
+        or(eq(templates.latestRevisionId, revisions.id), eq(templates.standingRevisionId, revisions.id)),
+      ),
+    )
     .innerJoin(workspaces, ofWorkspace)
     .innerJoin(members, membership(personId))
     .where(and(eq(revisions.state, 'returned'), eq(revisions.authorId, personId)))

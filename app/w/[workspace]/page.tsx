@@ -5,7 +5,7 @@ import { DataTable, type Column } from '@/app/_components/data-table';
 import { EmptyState } from '@/app/_components/empty-state';
 import { PageHeader } from '@/app/_components/page-header';
 import { Paging } from '@/app/_components/paging';
-import { StandingWord, VerdictWord } from '@/app/_components/standing-word';
+import { RevisionAhead, StandingWord, VerdictWord } from '@/app/_components/standing-word';
 import { StatusWord } from '@/app/_components/status-word';
 import { RefreshOnLive } from '@/app/_components/live/refresh-on-live';
 import { Time } from '@/app/_components/time';
@@ -128,14 +128,23 @@ function columns(home: string, state: ListState): Column<TemplateSummary>[] {
     {
       key: 'letter',
       label: 'Revision',
-      cell: (row) => <span className="font-mono">{row.latestLetter ?? '–'}</span>,
+      cell: (row) => <span className="font-mono">{row.standingLetter ?? '–'}</span>,
     },
-    { key: 'standing', label: 'State', cell: (row) => <StandingWord standing={row.standing} /> },
+    {
+      key: 'standing',
+      label: 'State',
+      cell: (row) => (
+        <span className="flex flex-col gap-0.5">
+          <StandingWord standing={row.standing} />
+          {row.ahead ? <RevisionAhead here={`${home}/templates/${row.id}`} ahead={row.ahead} /> : null}
+        </span>
+      ),
+    },
     {
       key: 'verdict',
       label: 'Check',
       cell: (row) =>
-        row.latestLetter ? <VerdictWord verdict={row.verdict} /> : <span className="text-slate">–</span>,
+        row.standingLetter ? <VerdictWord verdict={row.verdict} /> : <span className="text-slate">–</span>,
     },
     {
       key: 'open',
@@ -164,7 +173,7 @@ function columns(home: string, state: ListState): Column<TemplateSummary>[] {
 }
 
 const addressOf = (home: string, row: TemplateSummary) =>
-  row.latestLetter ? `${home}/templates/${row.id}/${row.latestLetter}` : `${home}/templates/${row.id}`;
+  row.standingLetter ? `${home}/templates/${row.id}/${row.standingLetter}` : `${home}/templates/${row.id}`;
 
 function NoTemplates({ filtered, home, canCreate }: { filtered: boolean; home: string; canCreate: boolean }) {
   if (filtered)

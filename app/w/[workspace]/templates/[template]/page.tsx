@@ -5,7 +5,7 @@ import { EmptyState } from '@/app/_components/empty-state';
 import { ButtonLink } from '@/app/_components/link';
 import { RefreshOnLive } from '@/app/_components/live/refresh-on-live';
 import { SectionHead } from '@/app/_components/section-head';
-import { StandingWord, VerdictWord } from '@/app/_components/standing-word';
+import { RevisionAhead, StandingWord, VerdictWord } from '@/app/_components/standing-word';
 import { Time } from '@/app/_components/time';
 import { TitleBlock } from '@/app/_components/title-block';
 import { enterWorkspacePage, orNotFound } from '@/app/_frames/enter-page';
@@ -49,7 +49,20 @@ export default async function TemplatePage({ params }: Props) {
             label: 'Due',
             value: template.dueOn ? <Time at={`${template.dueOn}T12:00:00Z`} show="day" /> : 'no date',
           },
-          { label: 'State', value: <StandingWord standing={template.standing} /> },
+          {
+            label: 'State',
+            value: (
+              <span className="flex flex-wrap items-center gap-x-3">
+                <span className="inline-flex items-center gap-1.5">
+                  {template.standingLetter ? (
+                    <span className="font-mono">{template.standingLetter}</span>
+                  ) : null}
+                  <StandingWord standing={template.standing} />
+                </span>
+                {template.ahead ? <RevisionAhead here={here} ahead={template.ahead} /> : null}
+              </span>
+            ),
+          },
         ]}
       />
       <div className="mt-4 flex flex-wrap gap-2.5">
@@ -104,7 +117,17 @@ function columns(here: string): Column<RevisionSummary>[] {
         </NextLink>
       ),
     },
-    { key: 'state', label: 'State', cell: (row) => <StandingWord standing={row.state} /> },
+    {
+      key: 'state',
+      label: 'State',
+      className: 'max-w-xs',
+      cell: (row) => (
+        <>
+          <StandingWord standing={row.state} />
+          {row.stateReason ? <span className="block text-sm text-slate">{row.stateReason}</span> : null}
+        </>
+      ),
+    },
     { key: 'check', label: 'Check', cell: (row) => <VerdictWord verdict={row.verdict} /> },
     { key: 'author', label: 'Posted by', cell: (row) => row.authorName },
     { key: 'posted', label: 'Posted', cell: (row) => <Time at={row.postedAt} show="both" /> },
@@ -112,7 +135,7 @@ function columns(here: string): Column<RevisionSummary>[] {
       key: 'note',
       label: 'What to look at',
       className: 'max-w-md',
-      cell: (row) => row.stateReason ?? (row.note || <span className="text-slate">–</span>),
+      cell: (row) => row.note || <span className="text-slate">–</span>,
     },
   ];
 }

@@ -19,7 +19,7 @@ export function StateBanner({ revision }: { revision: RevisionView }) {
   const newer = newerSibling(revision);
   const newerLine = newer ? (
     <p>
-      Revision {newer.letter} has been posted since.{' '}
+      Revision {newer.letter}, posted since, is {states[stateKey(newer.state)].word}.{' '}
       <Link href={letterHref(workspace.slug, revision.template.id, newer.letter)}>
         Go to revision {newer.letter}
       </Link>
@@ -35,9 +35,9 @@ export function StateBanner({ revision }: { revision: RevisionView }) {
       <p className="font-semibold">
         <StatusWord state={stateKey(revision.state)} word={stateWord(revision)} />
       </p>
+      {newerLine}
       {reason}
       {revision.lockedAt ? <Agreed revision={revision} lockedAt={revision.lockedAt} /> : null}
-      {newerLine}
     </Banner>
   );
 }
