@@ -1,9 +1,10 @@
 'use client';
 
 import clsx from 'clsx';
-import { useCallback, useMemo, useState } from 'react';
+import { useCallback, useEffect, useMemo, useState } from 'react';
 import { ToggleButton, ToggleButtonGroup } from 'react-aria-components';
 import { findSectionWalls, type SectionWall } from '@/lib/stage-model/find-section-walls';
+import { meetSection } from '@/lib/stage-model/meet-section';
 import { cutSection, type SectionLine } from '@/lib/stage-model/section';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { formatLength } from '../format-figure';
@@ -22,6 +23,8 @@ export interface ProfileStripProps {
   meta: StageModelMeta;
   sectionLine: SectionLine;
   onSectionLineChange: (line: SectionLine) => void;
+  /** who put the line there; one that nobody moved by hand is shifted to where it meets the template */
+  cutBy?: 'opening' | 'place' | 'hand';
   limitDeg: number;
   vents?: readonly StripVent[];
   /** a wall was chosen: its middle, mm, and its draft */
@@ -40,6 +43,7 @@ export function ProfileStrip(props: ProfileStripProps) {
     limitDeg,
     vents = [],
     onWallSelect,
+    cutBy = 'hand',
   } = props;
   const { units } = usePreferences();
   const { model, problem } = useStageModel(modelUrl);
@@ -67,6 +71,13 @@ export function ProfileStrip(props: ProfileStripProps) {
     const [u, z] = [(wall.from[0] + wall.to[0]) / 2, (wall.from[1] + wall.to[1]) / 2];
     onWallSelect?.(axis === 'y' ? [u, atMm, z] : [atMm, u, z], wall.draftDeg);
   };
+  // An opening cut between two rows of cups would show the tray between them only: it goes to where the part is high.
+  const [low, top] = limits;
+  useEffect(() => {
+    if (!model || cutBy === 'hand') return;
+    const met = meetSection(model, { axis, atMm }, [low, top], cutBy === 'opening' ? high / 2 : 0);
+    if (met && met.atMm !== atMm) onSectionLineChange(met);
+  }, [model, cutBy, axis, atMm, low, top, high, onSectionLineChange]);
   const side = axis === 'y' ? 'front' : 'right';
   const broken = walls.filter((wall) => wall.draftDeg < limitDeg).length;
   const open = section?.loops.some((loop) => !loop.closed) ?? false;
@@ -144,7 +155,7 @@ export function ProfileStrip(props: ProfileStripProps) {
             }
           />
         ) : null}
-        {section && !section.boundsMm ? (
+        {section && !section.boundsMm && cutBy === 'hand' ? (
           <p className="px-4 text-sm text-slate">The line misses the template.</p>
         ) : null}
       </div>

@@ -1,5 +1,6 @@
 'use client';
 
+import clsx from 'clsx';
 import { useRef, type KeyboardEvent, type PointerEvent } from 'react';
 import type { SectionLine } from '@/lib/stage-model/section';
 import { formatLength } from '../format-figure';
@@ -27,13 +28,16 @@ export function SectionMarks(props: {
   bounds: Bounds;
   frame: StageFrame;
   toScreen: (at: Point) => [number, number];
+  /** true where the template stands between the eye and a point */
+  isHidden: (at: Point) => boolean;
   onChange?: (line: SectionLine) => void;
 }) {
-  const { line, bounds, frame, toScreen, onChange } = props;
+  const { line, bounds, frame, toScreen, isHidden, onChange } = props;
   const { units } = usePreferences();
   const across = line.axis === 'y' ? 1 : 0;
   const [low, high] = [bounds.min[across], bounds.max[across]];
-  const points = ends(line, bounds).map(toScreen);
+  const solid = ends(line, bounds);
+  const points = solid.map(toScreen);
   const grip = useRef<{ x: number; y: number; atMm: number } | null>(null);
 
   /** How far one mm across the cut moves it on the screen, CSS pixels. */
@@ -58,7 +62,7 @@ export function SectionMarks(props: {
     event.stopPropagation();
     onChange(next);
   };
-  const handle = (point: [number, number], first: boolean) => (
+  const handle = (point: [number, number], first: boolean, behind: boolean) => (
     <div
       key={first ? 'first' : 'second'}
       role={first ? 'slider' : undefined}
@@ -79,33 +83,59 @@ export function SectionMarks(props: {
       onPointerUp={() => (grip.current = null)}
       onPointerCancel={() => (grip.current = null)}
       style={{ left: point[0] - 16, top: point[1] - 16 }}
-      className="absolute flex size-8 cursor-move touch-none items-center justify-center text-sm font-semibold select-none"
+      className={clsx(
+        'absolute flex size-8 cursor-move touch-none items-center justify-center text-sm font-semibold select-none',
+        behind && 'pointer-events-none! opacity-0 focus-visible:opacity-100',
+      )}
     >
       <span className="bg-sheet/80 px-0.5 leading-none">A</span>
     </div>
   );
-  const [a, b, c, d] = points;
-  const outer = (from: [number, number], to: [number, number]): [number, number] => {
-    const length = Math.hypot(to[0] - from[0], to[1] - from[1]) || 1;
-    return [from[0] + ((from[0] - to[0]) / length) * 14, from[1] + ((from[1] - to[1]) / length) * 14];
-  };
+  const sides = [
+    { far: 0, near: 1 },
+    { far: 3, near: 2 },
+  ].map(({ far, near }) => {
+    const [from, to] = [points[far], points[near]];
+    const beyond = LETTER_PX / (Math.hypot(to[0] - from[0], to[1] - from[1]) || 1);
+    return {
+      from,
+      to,
+      letter: mid(from, to, -beyond),
+      behind: isHidden(along(solid[far], solid[near], -beyond)) || isHidden(solid[far]),
+      seen: seenPart(solid[far], solid[near], isHidden),
+    };
+  });
   return (
     <>
       <svg aria-hidden className="pointer-events-none absolute inset-0 size-full">
-        {[
-          [a, b],
-          [d, c],
-        ].map(([from, to], i) => (
-          <g key={i} className="stroke-ink">
-            <path d={`M${from}L${to}`} strokeWidth="1.1" strokeDasharray="12 3 2 3" />
-            <path d={`M${from}L${mid(from, to, 0.3)}`} strokeWidth="2.4" />
-          </g>
-        ))}
+        {sides
+          .filter(({ behind }) => !behind)
+          .map(({ from, to, seen }, i) => (
+            <g key={i} className="stroke-ink">
+              <path d={`M${from}L${mid(from, to, seen)}`} strokeWidth="1.1" strokeDasharray="12 3 2 3" />
+              <path d={`M${from}L${mid(from, to, Math.min(0.3, seen))}`} strokeWidth="2.4" />
+            </g>
+          ))}
       </svg>
-      {handle(outer(a, b), true)}
-      {handle(outer(d, c), false)}
+      {sides.map(({ letter, behind }, i) => handle(letter, i === 0, behind))}
     </>
   );
+}
+
+/** How far outside the end of the line its letter stands, CSS pixels. */
+const LETTER_PX = 14;
+const SAMPLES = 6;
+
+/** Share of the line, from its far end, that the template does not cover. */
+function seenPart(far: Point, near: Point, isHidden: (at: Point) => boolean): number {
+  for (let n = 1; n <= SAMPLES; n++) {
+    if (isHidden(along(far, near, n / SAMPLES))) return (n - 1) / SAMPLES;
+  }
+  return 1;
+}
+
+function along(a: Point, b: Point, t: number): Point {
+  return [0, 1, 2].map((k) => a[k] + (b[k] - a[k]) * t) as Point;
 }
 
 function mid(a: [number, number], b: [number, number], t: number): [number, number] {

@@ -40,6 +40,7 @@ export function StageMarks(props: {
           bounds={props.bounds}
           frame={frame}
           toScreen={onScreen}
+          isHidden={(at) => picker.isHidden(at, frame.rig)}
           onChange={props.onSectionLineChange}
         />
       ) : null}

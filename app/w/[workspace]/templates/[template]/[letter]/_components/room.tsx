@@ -24,7 +24,7 @@ import { PrimaryAction, RoomActions, RoomDialogs, type RoomDialog } from './room
 import { RoomProvider, type RoomReader, type RoomValue } from './room-context';
 import { RoomTitle } from './room-title';
 import { StagePanel } from './stage-panel';
-import { itemOfPin, placeOf, stagePins } from './stage-pins';
+import { isExactPlace, itemOfPin, placeOf, stagePins } from './stage-pins';
 import { StateBanner } from './state-banner';
 import { revisionApi } from '../_hooks/use-room-data';
 
@@ -60,8 +60,7 @@ export function Room({
   const bounds = meta?.boundsMm ?? null;
   const items = docketItems(docket);
   const groups = byGroup(items);
-  const first = [...groups.settle, ...groups.look, ...groups.settled].map(placeOf).find(Boolean) ?? null;
-  const focus = useStageFocus(bounds, first);
+  const focus = useStageFocus(bounds);
   const pins = bounds ? stagePins(items, bounds, units, active) : [];
   const failing = groups.settle.filter(
     (item) => item.finding?.status === 'fail' && !item.finding.waiver,
@@ -73,11 +72,13 @@ export function Room({
     post: `/w/${workspace.slug}/templates/${revision.template.id}/post`,
   });
 
+  const itemOf = (key: string) => items.find((each) => each.key === key);
   const activate = (key: string) => {
     setItem(key);
-    const item = items.find((each) => each.key === key);
+    const item = itemOf(key);
     const at = item ? placeOf(item) : null;
-    if (at) focus.look(at, `${key}#0`, (item?.thread?.pin?.view as StageCamera | undefined) ?? null);
+    const view = (item?.thread?.pin?.view as StageCamera | undefined) ?? null;
+    if (item && at) focus.look(at, `${key}#0`, view, isExactPlace(item));
     else focus.clear();
   };
   /** Goes to an item from the keyboard or from the model: marks it and brings it into sight. */
@@ -123,7 +124,8 @@ export function Room({
     activate,
     showPlace: (key, at) => {
       setItem(key);
-      focus.look(at as Point, `${key}#0`);
+      const item = itemOf(key);
+      focus.look(at as Point, `${key}#0`, null, item !== undefined && isExactPlace(item));
       document.getElementById('stage')?.scrollIntoView({ block: 'nearest' });
     },
     askForPin: revision.model
@@ -185,6 +187,7 @@ export function Room({
               view={focus.view}
               highlight={focus.highlight}
               line={focus.line}
+              cutBy={focus.cutBy}
               onWallSelect={focus.point}
               onLineChange={focus.setLine}
             />

@@ -1,15 +1,18 @@
 'use client';
 
 import dynamic from 'next/dynamic';
-import { useState, useSyncExternalStore } from 'react';
+import { useSyncExternalStore } from 'react';
 import { SkeletonBlock } from '@/app/_components/skeleton';
 import { Stage } from '@/app/_components/stage/stage';
-import type { Point, StageCamera, StageMap, StagePin } from '@/app/_components/stage/stage-props';
+import type { StageMap } from '@/app/_components/stage/stage-maps';
+import type { Point, StageCamera, StagePin } from '@/app/_components/stage/stage-props';
 import { usePreferences } from '@/app/_components/preferences-context';
+import type { StageLimits } from '@/lib/stage-model/map-scale';
 import type { SectionLine } from '@/lib/stage-model/section';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { RevisionView } from '@/lib/review/schemas';
 import { useVents } from '../_hooks/use-room-data';
+import type { CutBy } from '../_hooks/use-stage-focus';
 import { useRoom } from './room-context';
 
 // Cuts the model that the stage has fetched; nothing of it is needed before the model is there.
@@ -20,8 +23,9 @@ const ProfileStrip = dynamic(
 
 export interface StagePanelProps {
   revision: RevisionView;
-  /** least draft wanted, degrees */
-  limitDeg: number;
+  limits: StageLimits;
+  map: StageMap;
+  onMapChange: (map: StageMap) => void;
   pins: readonly StagePin[];
   activePin: string | null;
   onPinSelect: (id: string) => void;
@@ -31,6 +35,7 @@ export interface StagePanelProps {
   view: StageCamera | null;
   highlight: Point | null;
   line: SectionLine | null;
+  cutBy: CutBy;
   /** A wall of the section was chosen. */
   onWallSelect: (at: Point) => void;
   onLineChange: (line: SectionLine) => void;
@@ -57,9 +62,8 @@ function useShownTheme(): 'light' | 'dark' {
 
 /** The model with its maps and pins, and the section under it. */
 export function StagePanel(props: StagePanelProps) {
-  const { revision, limitDeg } = props;
+  const { revision, limits, map, onMapChange } = props;
   const theme = useShownTheme();
-  const [map, setMap] = useState<StageMap>('plain');
   const { workspace } = useRoom();
   const vents = useVents(workspace.id, revision);
   const title = `${revision.template.title}, revision ${revision.letter}`;
@@ -86,8 +90,8 @@ export function StagePanel(props: StagePanelProps) {
         pictureUrl={revision.model.pictureUrl}
         meta={meta}
         map={map}
-        onMapChange={setMap}
-        limitDeg={limitDeg}
+        onMapChange={onMapChange}
+        limits={limits}
         pins={props.pins}
         activePin={props.activePin}
         onPinSelect={props.onPinSelect}
@@ -107,7 +111,8 @@ export function StagePanel(props: StagePanelProps) {
           meta={meta}
           sectionLine={props.line}
           onSectionLineChange={props.onLineChange}
-          limitDeg={limitDeg}
+          cutBy={props.cutBy}
+          limitDeg={limits.draftDeg}
           vents={vents}
           onWallSelect={(at) => props.onWallSelect(at)}
           className="border-t-0 print:hidden"

@@ -68,6 +68,11 @@ export function placeOf({ finding, thread }: DocketItem): Point | null {
   return thread?.pin?.at ?? finding?.places[0]?.at ?? null;
 }
 
+/** True where the middle of the place is what is meant: a pin, a vent, a pocket's floor; else it lies on a wall or an edge. */
+export function isExactPlace({ finding, thread }: DocketItem): boolean {
+  return thread?.pin != null || finding?.checkId === 'vents' || finding?.checkId === 'air';
+}
+
 function labelOf({ finding, thread }: DocketItem, units: Units): string {
   if (finding) {
     const { checkId, measured, unit } = finding;

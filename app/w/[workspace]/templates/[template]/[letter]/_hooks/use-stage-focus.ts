@@ -1,24 +1,25 @@
 'use client';
 
-import { useRef, useState } from 'react';
+import { useCallback, useRef, useState } from 'react';
 import type { NotePin } from '@/app/_components/note-editor/note-draft';
 import type { Point, StageCamera } from '@/app/_components/stage/stage-props';
 import type { SectionLine } from '@/lib/stage-model/section';
+import { cutThrough, openingCut } from '../_components/cut-line';
 import { viewOf, type Bounds } from '../_components/stage-pins';
 
-/**
- * What the stage looks at, where it is cut, and whether it waits for somebody to name a place. Until somebody
- * moves it, the cut goes through `start`, the first place that the docket names.
- */
-export function useStageFocus(bounds: Bounds | null, start: Point | null) {
+/** How the cut came to be where it is: the page opened with it, a place was looked at, or somebody moved it. */
+export type CutBy = 'opening' | 'place' | 'hand';
+
+/** What the stage looks at, where it is cut, and whether it waits for somebody to name a place. */
+export function useStageFocus(bounds: Bounds | null) {
   const [view, setView] = useState<StageCamera | null>(null);
   const [highlight, setHighlight] = useState<Point | null>(null);
   const [activePin, setActivePin] = useState<string | null>(null);
-  const [line, setLine] = useState<SectionLine | null>(null);
+  const [cut, setCut] = useState<{ line: SectionLine; by: CutBy } | null>(null);
   const [placing, setPlacing] = useState(false);
   const taker = useRef<((pin: NotePin | null) => void) | null>(null);
-  const shownLine: SectionLine | null =
-    line ?? (bounds ? { axis: 'y', atMm: round(start?.[1] ?? (bounds.min[1] + bounds.max[1]) / 2) } : null);
+  const setLine = useCallback((next: SectionLine) => setCut({ line: next, by: 'hand' }), []);
+  const line = cut?.line ?? (bounds ? openingCut(bounds) : null);
 
   const settle = (pin: NotePin | null) => {
     setPlacing(false);
@@ -30,17 +31,17 @@ export function useStageFocus(bounds: Bounds | null, start: Point | null) {
     view,
     highlight,
     activePin,
-    line: shownLine,
+    line,
+    cutBy: cut?.by ?? ('opening' as CutBy),
     setLine,
     placing,
-    /** Flies to a place and cuts the section through it. */
-    look(at: Point, pin: string | null, kept: StageCamera | null = null) {
+    /** Flies to a place and cuts the section through it, or a little inside of it unless `exact`. */
+    look(at: Point, pin: string | null, kept: StageCamera | null = null, exact = false) {
       if (!bounds) return;
       setView(kept ? { ...kept } : viewOf(at, bounds));
       setHighlight(at);
       setActivePin(pin);
-      const axis = shownLine?.axis ?? 'y';
-      setLine({ axis, atMm: round(at[axis === 'y' ? 1 : 0]) });
+      setCut({ line: cutThrough(at, line?.axis ?? 'y', bounds, exact), by: 'place' });
     },
     /** Shows a place without moving the eye. */
     point(at: Point) {
@@ -59,5 +60,3 @@ export function useStageFocus(bounds: Bounds | null, start: Point | null) {
     cancel: () => settle(null),
   };
 }
-
-const round = (mm: number) => Math.round(mm * 10) / 10;
