@@ -2,12 +2,14 @@ import { existsSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
 import { setTimeout as pause } from 'node:timers/promises';
 import { LocalError } from './folders';
+import type { Ports } from './ports';
 import { identify, isRunning, signalGroup, type ProcessIdentity } from './process-identity';
 import { writeOwnerOnly } from './secrets';
 
 interface LockContent {
   holder: ProcessIdentity;
   address?: string;
+  ports?: Ports;
   children: Record<string, ProcessIdentity>;
 }
 
@@ -15,6 +17,8 @@ export interface DataLock {
   /** Notes a child, so that a later start can end it should we be killed without a chance to. */
   noteChild(name: string, pid: number | undefined): void;
   noteAddress(address: string): void;
+  /** Where the services listen, for commands in a second terminal. */
+  notePorts(ports: Ports): void;
   release(): void;
 }
 
@@ -61,6 +65,10 @@ export async function lockDataFolder(dataFolder: string, say: (line: string) => 
     },
     noteAddress(address) {
       content.address = address;
+      save();
+    },
+    notePorts(ports) {
+      content.ports = ports;
       save();
     },
     release() {

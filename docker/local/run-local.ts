@@ -50,6 +50,7 @@ export async function runLocal(args: string[], printer: StepPrinter): Promise<nu
     const asked = ending.requested.then((code) => Promise.reject(new Ended(code)));
     const product = await Promise.race([starting, asked]);
     lock.noteAddress(product.baseUrl);
+    lock.notePorts(ports);
     const seconds = Math.round(process.uptime());
     printer.note(`Up after ${seconds} s; Ctrl-C stops everything. Logs are in ${dataFolder}/logs.`);
     printer.note(signInLine(product));

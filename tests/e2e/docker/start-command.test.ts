@@ -1,10 +1,11 @@
-import { spawn } from 'node:child_process';
+import { execFile, spawn } from 'node:child_process';
 import { chmodSync, mkdtempSync, readdirSync, readFileSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
 import { isRoot, ownEntries, root } from '@/docker/local/folders';
 import { readHolder } from '@/docker/local/lock';
+import { typescriptCommand } from '@/docker/local/node-command';
 import { anyFreePort } from '@/docker/local/ports';
 import { isRunning } from '@/docker/local/process-identity';
 
@@ -44,6 +45,17 @@ function start(...args: string[]) {
   return { child, ended, says, output: () => output };
 }
 
+/** `npm run audit:verify` in a second terminal, which knows the data folder and nothing else. */
+function auditBeside(): Promise<{ code: number; output: string }> {
+  const [program, ...args] = typescriptCommand(path.join(root, 'docker/local/audit-verify.ts'));
+  const env = { PATH: process.env.PATH, FIRSTPULL_DATA_DIR: dataFolder } as never;
+  return new Promise((resolve) =>
+    execFile(program, args, { cwd: root, env }, (error, out, err) =>
+      resolve({ code: error ? Number(error.code) : 0, output: out + err }),
+    ),
+  );
+}
+
 const secrets = () => readFileSync(path.join(dataFolder, 'secrets.json'), 'utf8');
 const children = () => Object.values(readHolder(dataFolder)!.children);
 
@@ -55,6 +67,10 @@ describe('npm start', () => {
     expect((await fetch(`http://127.0.0.1:${port}/api/live`)).status).toBe(200);
     const started = children();
     expect(started.map(isRunning)).toEqual([true, true, true, true, true, true]);
+
+    const audit = await auditBeside();
+    expect(audit.output).toContain('Everything is as it was written.');
+    expect(audit.code).toBe(0);
 
     const second = start();
     expect(await second.ended).toBe(1);
