@@ -1,5 +1,5 @@
-/** Boxes in a leaf: fewer make more nodes, more make more pairs; four was fastest on curved surfaces. */
-const LEAF = 4;
+/** Boxes in a leaf: of 2, 4 and 8 the last was fastest on curved surfaces. */
+const LEAF = 8;
 const AXIS_CELLS = 1023;
 /** Room for the item number below the 30-bit cell key in a double. */
 const ITEM_SPAN = 2 ** 22;
@@ -8,24 +8,26 @@ const ITEM_SPAN = 2 ** 22;
 export interface BoxTree {
   /** Item numbers in tree order. */
   order: Uint32Array;
-  /** 6 per item (minimum, maximum), as given. */
+  /** 6 per item (minimum, maximum), in tree order. */
   boxes: Float64Array;
   /** 6 per node, heap numbered from 1. */
   nodes: Float64Array;
   leaves: number;
 }
 
-/** @param boxes 6 per item: minimum x, y, z, maximum x, y, z; fewer than 4 million items */
-export function buildBoxTree(boxes: Float64Array): BoxTree {
-  const n = boxes.length / 6;
-  const order = mortonOrder(boxes, n);
+/** @param given 6 per item: minimum x, y, z, maximum x, y, z; fewer than 4 million items */
+export function buildBoxTree(given: Float64Array): BoxTree {
+  const n = given.length / 6;
+  const order = mortonOrder(given, n);
+  const boxes = new Float64Array(6 * n);
+  for (let i = 0; i < n; i++) for (let k = 0; k < 6; k++) boxes[6 * i + k] = given[6 * order[i] + k];
   let leaves = 1;
   while (leaves * LEAF < n) leaves *= 2;
   const nodes = new Float64Array(12 * leaves);
   for (let node = leaves; node < 2 * leaves; node++) {
     clear(nodes, node);
     const last = leafStart(n, leaves, node + 1);
-    for (let k = leafStart(n, leaves, node); k < last; k++) widen(nodes, 6 * node, boxes, 6 * order[k]);
+    for (let k = leafStart(n, leaves, node); k < last; k++) widen(nodes, 6 * node, boxes, 6 * k);
   }
   for (let node = leaves - 1; node > 0; node--) {
     clear(nodes, node);
@@ -42,24 +44,31 @@ export function buildBoxTree(boxes: Float64Array): BoxTree {
 export function visitPairs(tree: BoxTree, near: number, visit: (a: number, b: number) => boolean): boolean {
   const { order, boxes, nodes, leaves } = tree;
   const n = order.length;
-  const stack: number[] = [1, 1];
-  while (stack.length > 0) {
-    const b = stack.pop() as number;
-    const a = stack.pop() as number;
-    if (a !== b && !meet(nodes, 6 * a, nodes, 6 * b, near)) continue;
+  // Both nodes of a pair lie at one depth; each step down adds at most three waiting pairs.
+  const stack = new Int32Array(2 * (4 + 3 * (Math.log2(leaves) + 1)));
+  let waiting = 2;
+  stack[0] = stack[1] = 1;
+  while (waiting > 0) {
+    const b = stack[--waiting];
+    const a = stack[--waiting];
     if (a < leaves) {
-      const [al, bl] = [2 * a, 2 * b];
-      stack.push(al, bl, al + 1, bl + 1, al, bl + 1);
-      if (a !== b) stack.push(al + 1, bl);
+      for (let i = 2 * a; i < 2 * a + 2; i++) {
+        for (let j = a === b ? i : 2 * b; j < 2 * b + 2; j++) {
+          if (i !== j && !meet(nodes, 6 * i, nodes, 6 * j, near)) continue;
+          stack[waiting++] = i;
+          stack[waiting++] = j;
+        }
+      }
       continue;
     }
     const lastA = leafStart(n, leaves, a + 1);
+    const firstB = leafStart(n, leaves, b);
     const lastB = leafStart(n, leaves, b + 1);
     for (let i = leafStart(n, leaves, a); i < lastA; i++) {
-      const one = order[i];
-      for (let j = a === b ? i + 1 : leafStart(n, leaves, b); j < lastB; j++) {
-        const other = order[j];
-        if (meet(boxes, 6 * one, boxes, 6 * other, near) && !visit(one, other)) return false;
+      // A box that misses the other leaf misses all in it.
+      if (a !== b && !meet(boxes, 6 * i, nodes, 6 * b, near)) continue;
+      for (let j = a === b ? i + 1 : firstB; j < lastB; j++) {
+        if (meet(boxes, 6 * i, boxes, 6 * j, near) && !visit(order[i], order[j])) return false;
       }
     }
   }

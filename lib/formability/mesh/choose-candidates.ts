@@ -1,18 +1,20 @@
 import type { Columns } from '../dexel/columns';
+import type { Edges } from './build-edges';
 import { buildBoxTree, visitPairs } from './box-tree';
 import type { Shells } from './find-shells';
 import type { Mesh } from './mesh';
 
 /** Up to this many facets every one is looked at; above it only where shells meet or columns are odd. */
-const ALL_FACETS = 200_000;
+const ALL_FACETS = 60_000;
 
 /**
  * The facets that may meet others: all of a small mesh; of a large one those where the boxes of two shells overlap,
- * and those over columns that are covered doubly (a crossing always leaves such columns beside it).
+ * those on edges with more than two facets, and those over columns that are covered doubly (a crossing always leaves such columns beside it).
  */
 export function chooseCandidates(
   mesh: Mesh,
   shells: Shells,
+  edges: Edges,
   boxes: Float64Array | null,
   columns: Columns,
   tolerance: number,
@@ -21,12 +23,20 @@ export function chooseCandidates(
   if (triangles <= ALL_FACETS) return Uint32Array.from({ length: triangles }, (_, t) => t);
   const chosen = new Uint8Array(triangles);
   markOddColumns(mesh, columns, chosen);
+  if (edges.nonManifold > 0) markCrowded(edges, chosen);
   if (boxes) markBoxes(mesh, shells, commonBoxes(boxes, shells.count, tolerance), chosen);
   let count = 0;
   for (let t = 0; t < triangles; t++) count += chosen[t];
   const facets = new Uint32Array(count);
   for (let t = 0, k = 0; t < triangles; t++) if (chosen[t]) facets[k++] = t;
   return facets;
+}
+
+function markCrowded({ forward, backward, ofCorner }: Edges, chosen: Uint8Array): void {
+  for (let c = 0; c < ofCorner.length; c++) {
+    const e = ofCorner[c];
+    if (e >= 0 && forward[e] + backward[e] > 2) chosen[(c / 3) | 0] = 1;
+  }
 }
 
 /** Whether any two shells have boxes that come within the tolerance. */

@@ -34,13 +34,22 @@ export function findFloating(
   for (let t = mesh.triangles - 1; t >= 0; t--) firstVertex[ofFacet[t]] = index[3 * t];
   const grounded = new Set<number>();
   for (let s = 0; s < count; s++) if (solid(s) && boxes[6 * s + 2] <= bed) grounded.add(joined.find(s));
-  const hanging = high.filter((s) => !grounded.has(joined.find(s)));
-  if (hanging.length === 0) return [];
+  if (high.every((s) => grounded.has(joined.find(s)))) return [];
   const probe = new WindingProbe(index, p);
-  const lone = hanging.filter((s) => {
+  const windingAt = (s: number, counts: (shell: number) => boolean) => {
     const v = 3 * firstVertex[s];
-    return probe.windingAt(p[v], p[v + 1], p[v + 2], true, (facet) => ofFacet[facet] !== s) <= 0;
-  });
+    return probe.windingAt(p[v], p[v + 1], p[v + 2], true, (facet) => counts(ofFacet[facet]));
+  };
+  const carries = (s: number) => solid(s) && grounded.has(joined.find(s));
+  // What meets the skin of a void meets the body round it.
+  for (const key of meetings.joined) {
+    const pair = [Math.floor(key / count), key % count];
+    const hole = pair.find((s) => !solid(s));
+    const body = pair.find(solid);
+    if (hole === undefined || body === undefined || carries(body)) continue;
+    if (windingAt(hole, carries) > 0) grounded.add(joined.find(body));
+  }
+  const lone = high.filter((s) => !carries(s) && windingAt(s, (shell) => shell !== s) <= 0);
   return meetings.complete ? lone : lone.filter((s) => standsApart(boxes, count, s, solid));
 }
 

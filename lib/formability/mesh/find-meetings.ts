@@ -32,8 +32,15 @@ export interface MeetingList {
 /**
  * Looks at every pair of near facets among those given. A crossing goes deeper than `tolerance` on both sides and is
  * longer than it; a contact of two shells is nearer than it.
+ * @param crowded some edges have more than two facets: bodies may be welded face to face
  */
-export function findMeetings(mesh: Mesh, shells: Shells, facets: Uint32Array, tolerance: number): Meetings {
+export function findMeetings(
+  mesh: Mesh,
+  shells: Shells,
+  facets: Uint32Array,
+  tolerance: number,
+  crowded: boolean,
+): Meetings {
   const { index, position: p } = mesh;
   const { ofFacet, count } = shells;
   const found: Meetings = {
@@ -50,7 +57,11 @@ export function findMeetings(mesh: Mesh, shells: Shells, facets: Uint32Array, to
     if (++pairs > MOST_PAIRS) return false;
     const [f, g] = [facets[i], facets[j]];
     const shared = sharedVertices(index, f, g).count;
-    if (shared > 1) return true;
+    if (shared > 1) {
+      if (crowded && liesOnBack(p, index, f, g))
+        note(found.touching, f, g, nearMiddle(p, cornersOf(index, f), cornersOf(index, g)));
+      return true;
+    }
     const [s, t] = [ofFacet[f], ofFacet[g]];
     const depth = crossingDepth(p, index, f, g, tolerance);
     if (depth > 0) {
@@ -58,8 +69,8 @@ export function findMeetings(mesh: Mesh, shells: Shells, facets: Uint32Array, to
       if (s !== t) crossed.add(pairKey(s, t, count));
     } else if (s !== t) {
       const key = pairKey(s, t, count);
-      const one: [number, number, number] = [3 * index[3 * f], 3 * index[3 * f + 1], 3 * index[3 * f + 2]];
-      const other: [number, number, number] = [3 * index[3 * g], 3 * index[3 * g + 1], 3 * index[3 * g + 2]];
+      const one = cornersOf(index, f);
+      const other = cornersOf(index, g);
       if (crossed.has(key) || facetDistanceSquared(p, one, other) > tolerance * tolerance) return true;
       found.joined.add(key);
       note(found.touching, f, g, nearMiddle(p, one, other));
@@ -73,6 +84,20 @@ export function findMeetings(mesh: Mesh, shells: Shells, facets: Uint32Array, to
 
 export function pairKey(s: number, t: number, count: number): number {
   return s < t ? s * count + t : t * count + s;
+}
+
+function cornersOf(index: Uint32Array, t: number): [number, number, number] {
+  return [3 * index[3 * t], 3 * index[3 * t + 1], 3 * index[3 * t + 2]];
+}
+
+/** Two facets with a common edge that face one another, one lying on the other: the wall between welded bodies. */
+function liesOnBack(p: Float64Array, index: Uint32Array, f: number, g: number): boolean {
+  const n = [0, 0, 0];
+  const m = [0, 0, 0];
+  normalInto(p, ...cornersOf(index, f), n);
+  normalInto(p, ...cornersOf(index, g), m);
+  const dot = n[0] * m[0] + n[1] * m[1] + n[2] * m[2];
+  return dot < -0.999999 * Math.hypot(n[0], n[1], n[2]) * Math.hypot(m[0], m[1], m[2]);
 }
 
 function emptyList(): MeetingList {

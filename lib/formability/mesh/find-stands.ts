@@ -2,8 +2,8 @@ import type { Point } from '../report';
 import type { Facets } from './measure-facets';
 import type { Mesh } from './mesh';
 
-/** Cells along a side of the map of directions that facets are gathered in. */
-const MAP = 48;
+/** Cells along a side of the map of directions that facets are gathered in; odd, so that an axis is in the middle of one. */
+const MAP = 49;
 /** A side must have this share of the surface to be stood on. */
 const LEAST_SHARE = 0.01;
 const MOST_SIDES = 10;
@@ -80,12 +80,20 @@ function flatSides(facets: Facets): Point[] {
 
 /** A cube's side and a cell on it, for a direction; a whole number of cells lies about each axis. */
 function cellOf(x: number, y: number, z: number): number {
-  const [ax, ay, az] = [Math.abs(x), Math.abs(y), Math.abs(z)];
-  const k = az >= ax && az >= ay ? 2 : ay >= ax ? 1 : 0;
-  const [main, a, b] = k === 2 ? [z, x, y] : k === 1 ? [y, z, x] : [x, y, z];
-  const cell = (value: number) =>
-    Math.min(MAP - 1, Math.floor(((value / Math.abs(main) + 1) / 2) * (MAP - 1) + 0.5));
-  return ((2 * k + (main > 0 ? 1 : 0)) * MAP + cell(a)) * MAP + cell(b);
+  const ax = x < 0 ? -x : x;
+  const ay = y < 0 ? -y : y;
+  const az = z < 0 ? -z : z;
+  const half = (MAP - 1) / 2;
+  if (az >= ax && az >= ay) {
+    const side = z > 0 ? 5 : 4;
+    return (side * MAP + ((half * (x / az + 1) + 0.5) | 0)) * MAP + ((half * (y / az + 1) + 0.5) | 0);
+  }
+  if (ay >= ax) {
+    const side = y > 0 ? 3 : 2;
+    return (side * MAP + ((half * (z / ay + 1) + 0.5) | 0)) * MAP + ((half * (x / ay + 1) + 0.5) | 0);
+  }
+  const side = x > 0 ? 1 : 0;
+  return (side * MAP + ((half * (y / ax + 1) + 0.5) | 0)) * MAP + ((half * (z / ax + 1) + 0.5) | 0);
 }
 
 function acrossAxes(up: Point): [Point, Point] {

@@ -43,20 +43,20 @@ export function gatherPlaces(
   return placesOf(code, [...clusters.values()], centre);
 }
 
-/** The same from bare points, 3 coordinates each: those nearer than `reach` are one place. */
+/** The same from bare points, 3 coordinates each; `keyOf` says to which place the i-th belongs. */
 export function gatherPoints(
   code: MeshWarning,
   points: ArrayLike<number>,
   centre: readonly [number, number],
-  reach: number,
+  keyOf: (i: number) => number | string,
 ): MeshPlace[] {
-  const clusters = new Map<string, Cluster>();
-  for (let i = 0; i < Math.min(points.length, 3 * MOST_ITEMS); i += 3) {
-    const key = [0, 1, 2].map((k) => Math.floor(points[i + k] / reach + 0.137)).join();
+  const clusters = new Map<number | string, Cluster>();
+  for (let i = 0; 3 * i < Math.min(points.length, 3 * MOST_ITEMS); i++) {
+    const key = keyOf(i);
     let cluster = clusters.get(key);
     if (!cluster) clusters.set(key, (cluster = newCluster()));
     cluster.count++;
-    addPoint(cluster, points, i);
+    addPoint(cluster, points, 3 * i);
   }
   return placesOf(code, [...clusters.values()], centre);
 }

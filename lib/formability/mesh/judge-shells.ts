@@ -5,7 +5,7 @@ import { boxesMeet, chooseCandidates } from './choose-candidates';
 import { dropFacets } from './drop-facets';
 import { shellBoxes } from './facet-boxes';
 import { findFloating } from './find-floating';
-import { findMeetings, type MeetingList } from './find-meetings';
+import { findMeetings, pairKey, type MeetingList } from './find-meetings';
 import { findOpposed } from './find-opposed';
 import { findShells, type Shells } from './find-shells';
 import { gatherPlaces, gatherPoints, placesOfBoxes } from './gather-places';
@@ -32,8 +32,8 @@ export interface ShellJudgement {
 export function judgeShells(prepared: Prepared, columns: Columns): ShellJudgement {
   const { mesh, shells, edges, toleranceMm: tolerance } = prepared;
   const boxes = shells.count > 1 ? shellBoxes(mesh.index, mesh.position, shells.ofFacet, shells.count) : null;
-  const facets = chooseCandidates(mesh, shells, boxes, columns, tolerance);
-  const meetings = findMeetings(mesh, shells, facets, tolerance);
+  const facets = chooseCandidates(mesh, shells, edges, boxes, columns, tolerance);
+  const meetings = findMeetings(mesh, shells, facets, tolerance, edges.nonManifold > 0);
   const opposed = findOpposed(mesh.index, edges, mesh.vertices);
   const covered = columns.count.reduce((sum, n) => sum + (n > 0 ? 1 : 0), 0);
   const odd = columns.overlapColumns > Math.max(2, STRAY_COLUMNS * covered);
@@ -42,7 +42,8 @@ export function judgeShells(prepared: Prepared, columns: Columns): ShellJudgemen
   const signed = signedVolume(capped.mesh, 0, 0);
   const union = capped.sealed && doubtful ? uniteExactly(prepared, facets, opposed) : null;
   const slop = 4 * SHELL_SHIFT * sizeOf(prepared) * (union?.cutAreaMm2 ?? 0) + 1e-9 * Math.abs(signed);
-  const excess = union === null ? odd : signed - union.volumeMm3 > slop;
+  const differs = union !== null && Math.abs(signed - union.volumeMm3) > slop;
+  const excess = union === null ? odd : differs && signed > union.volumeMm3;
 
   const warnings: MeshWarning[] = [];
   const places: MeshPlace[] = [];
@@ -55,25 +56,28 @@ export function judgeShells(prepared: Prepared, columns: Columns): ShellJudgemen
   // Bodies that share planes overlap without any facet going through another: their contacts then tell the place.
   const flush = excess && boxes ? takeThick(meetings.touching, shells, boxes, tolerance) : null;
   if (crossing || (excess && shells.count === 1))
-    say('self_intersection', placesOf('self_intersection', mesh, meetings.own));
+    say('self_intersection', crossingPlaces(mesh, sizeOf(prepared), meetings.own));
   if (between || (excess && shells.count > 1 && !crossing)) {
-    say(
+    const found = pairPlaces(
       'overlapping_shells',
-      placesOf('overlapping_shells', mesh, between || !flush ? meetings.between : flush.thick),
+      mesh,
+      shells,
+      between || !flush ? meetings.between : flush.thick,
     );
+    const inner = opposed === null && capped.mesh === mesh ? (union?.covered ?? []) : [];
+    say('overlapping_shells', found.length > 0 ? found : innerPlaces(mesh, inner));
   }
-  const walls = opposed ? facetCorners(mesh, opposed) : [];
   const touching = flush ? flush.thin : meetings.touching;
-  if (touching.at.length > 0 || opposed) {
-    say('touching_shells', [
-      ...placesOf('touching_shells', mesh, touching),
-      ...gatherPlaces('touching_shells', mesh.position, mesh.centre, walls, 3),
-    ]);
-  }
+  if (touching.at.length > 0) say('touching_shells', pairPlaces('touching_shells', mesh, shells, touching));
   const floating = boxes ? findFloating(mesh, shells, boxes, meetings, tolerance) : [];
   if (floating.length > 0 && boxes) say('floating', placesOfBoxes('floating', boxes, floating, mesh.centre));
   return {
-    unionVolumeMm3: volumeOf(columns, { sealed: capped.sealed, signed, union, odd }),
+    unionVolumeMm3: volumeOf(columns, {
+      sealed: capped.sealed,
+      signed,
+      union: differs ? union : null,
+      odd: odd && union === null,
+    }),
     warnings,
     places,
   };
@@ -91,7 +95,7 @@ function takeThick(
   for (let i = 0; 2 * i < list.facets.length; i++) {
     const [f, g] = [list.facets[2 * i], list.facets[2 * i + 1]];
     const [s, t] = [6 * shells.ofFacet[f], 6 * shells.ofFacet[g]];
-    let room = true;
+    let room = s !== t;
     for (let k = 0; k < 3; k++) {
       const shared = Math.min(boxes[s + 3 + k], boxes[t + 3 + k]) - Math.max(boxes[s + k], boxes[t + k]);
       if (shared <= 2 * tolerance) room = false;
@@ -125,18 +129,35 @@ function volumeOf(
 ): number {
   if (!sealed) return columns.solidVolume;
   if (union === null) return odd ? signed - columns.excessVolume : signed;
-  return Math.abs(signed - union.volumeMm3) > 1e-9 * Math.abs(signed) ? union.volumeMm3 : signed;
+  return union.volumeMm3;
 }
 
 function sizeOf({ min, max }: Pick<Prepared, 'min' | 'max'>): number {
   return Math.hypot(...max.map((high, k) => high - min[k]));
 }
 
-/** Crossings and contacts at their own points, gathered over a fiftieth of the part. */
-function placesOf(code: MeshWarning, mesh: Mesh, list: MeetingList): MeshPlace[] {
-  let reach = 0;
-  for (let i = 0; i < list.at.length; i++) reach = Math.max(reach, Math.abs(list.at[i]));
-  return gatherPoints(code, list.at, mesh.centre, Math.max(reach / 25, 1));
+/** Crossings within a shell, gathered over a twentieth of the part. */
+function crossingPlaces(mesh: Mesh, size: number, { at }: MeetingList): MeshPlace[] {
+  const cell = (i: number) => [0, 1, 2].map((k) => Math.floor((20 * at[3 * i + k]) / size + 0.137)).join();
+  return gatherPoints('self_intersection', at, mesh.centre, cell);
+}
+
+/** Crossings and contacts of two shells are one place. */
+function pairPlaces(
+  code: MeshWarning,
+  mesh: Mesh,
+  { ofFacet, count }: Shells,
+  list: MeetingList,
+): MeshPlace[] {
+  const pair = (i: number) => pairKey(ofFacet[list.facets[2 * i]], ofFacet[list.facets[2 * i + 1]], count);
+  return gatherPoints(code, list.at, mesh.centre, pair);
+}
+
+/** A body within another meets it nowhere: its own facets are the place. */
+function innerPlaces(mesh: Mesh, facets: number[]): MeshPlace[] {
+  const marks = new Uint8Array(mesh.triangles);
+  for (const t of facets) marks[t] = 1;
+  return gatherPlaces('overlapping_shells', mesh.position, mesh.centre, facetCorners(mesh, marks), 3);
 }
 
 function facetCorners(mesh: Mesh, marks: Uint8Array): number[] {

@@ -9,13 +9,14 @@ import { WindingProbe } from './winding-probe';
 
 /** More crossings than this are no overlap of bodies but a heap of facets: the columns measure it instead. */
 const MOST_CROSSINGS = 400_000;
+const MOST_COVERED = 1000;
 /** Winding not known yet; real windings are far smaller. */
 const UNKNOWN = -32768;
 
 export interface Union {
   volumeMm3: number;
-  /** Least number of facets of which some part lies inside other solid. */
-  coveredFacets: number;
+  /** Facets that lie wholly inside other solid, up to a thousand. */
+  covered: number[];
   /** Area of facets that others cut, mm²: what the tiny shifts can be wrong by, per mm of shift. */
   cutAreaMm2: number;
 }
@@ -40,7 +41,7 @@ export function measureUnion(
   const winding = spreadWinding(index, moved, edges, cuts);
   if (winding === null) return null;
   let six = 0;
-  let coveredFacets = 0;
+  const covered: number[] = [];
   let cutArea = 0;
   for (let t = 0; t < index.length / 3; t++) {
     const corners: [number, number, number] = [3 * index[3 * t], 3 * index[3 * t + 1], 3 * index[3 * t + 2]];
@@ -49,11 +50,10 @@ export function measureUnion(
     if (cuts.head[t] >= 0) {
       share = new FacetCover(moved, corners, cuts, t).shareOutside(first);
       cutArea += areaOf(position, corners);
-    }
-    if (share < 1) coveredFacets++;
+    } else if (first > 0 && covered.length < MOST_COVERED) covered.push(t);
     if (share > 0) six += share * sixVolumes(position, corners);
   }
-  return { volumeMm3: six / 6, coveredFacets, cutAreaMm2: cutArea };
+  return { volumeMm3: six / 6, covered, cutAreaMm2: cutArea };
 }
 
 function findCuts(index: Uint32Array, p: Float64Array, facets: Uint32Array): FacetCuts | null {
