@@ -101,6 +101,17 @@ describe('rectangular frusta', () => {
   });
 });
 
+/** Half the area of the walls and slopes has a smaller cusp. */
+function medianCusp(facets: { draftDeg: number; areaMm2: number }[]): number {
+  const sorted = [...facets].sort((a, b) => a.draftDeg - b.draftDeg);
+  let left = totalArea(sorted) / 2;
+  for (const { draftDeg, areaMm2 } of sorted) {
+    left -= areaMm2;
+    if (left <= 0) return LAYER * Math.sin(draftDeg * rad);
+  }
+  return NaN;
+}
+
 function turned(profile: [number, number][], sides: number): Claims {
   const segments = profile.map((from, i) => [from, profile[(i + 1) % profile.length]]);
   const isSkin = segments.map(([[r, z], [s, y]]) => r + s > 0 && z + y > 0);
@@ -111,6 +122,9 @@ function turned(profile: [number, number][], sides: number): Claims {
   const side = 2 * foot + 60;
   const formed = side * side - plan + totalArea(skin);
   const leaning = skin.filter(({ draftDeg }) => draftDeg > 0.25 && draftDeg < 85);
+  const slopes = skin.filter(({ draftDeg }) => draftDeg > 0.25 && draftDeg < 89.5);
+  const cusp = ({ draftDeg }: { draftDeg: number }) => LAYER * Math.sin(draftDeg * rad);
+  const tread = ({ draftDeg }: { draftDeg: number }) => LAYER * Math.tan(draftDeg * rad);
   // Corners lie on the x and y axes (sides is a multiple of 4): that section follows the profile itself.
   const section = segments.reduce(
     (sum, [[r, z], [s, y]], i) => (isSkin[i] ? sum + 2 * Math.hypot(s - r, y - z) : sum),
@@ -126,6 +140,9 @@ function turned(profile: [number, number][], sides: number): Claims {
     'draft.minUpFacingDeg': abs(Math.min(...leaning.map(({ draftDeg }) => draftDeg)), 0.02),
     'draft.minDeg': abs(Math.min(...skin.map(({ draftDeg }) => draftDeg)), 0.02),
     'draft.areaByBinMm2': binAreas(skin).map((area) => abs(area, 1e-5 * plan)),
+    'layers.cuspMaxMm': abs(Math.max(...slopes.map(cusp)), 1e-5),
+    'layers.cuspMedianMm': abs(medianCusp(slopes), 2e-3 * LAYER),
+    'layers.treadMinMm': abs(Math.min(...slopes.map(tread)), 1e-5),
     'plan.planAreaMm2': rel(plan, 0.005),
     'plan.formedAreaMm2': rel(formed, 0.005),
     'plan.arealDrawRatio': rel(formed / side ** 2, 0.005),
