@@ -76,5 +76,15 @@ describe('a recipe in words', () => {
     const lines = recipeLines({ ...fillRecipe({ sheet: { material: 'hips', gaugeMm: 1.2 } }) });
     expect(lines[0]).toEqual({ label: 'Sheet', value: 'HIPS, 1.2 mm' });
     expect(lines.every(({ label, value }) => label && value && !/undefined|NaN/.test(value))).toBe(true);
+    const of = (label: string) => lines.find((line) => line.label === label)?.value;
+    expect(of('Rates')).toBe('25 per kg, 1.5 per hour, 7.5 for handling, in the studio’s currency');
+    expect(of('Holes print')).toBe('1 × drawn − 0.2 mm, open from 0.4 mm');
+    expect(of('Clamp frame')).toBe('30 mm of free sheet round the template');
+    expect(of('Limits')).toBe('as the engine has them');
+  });
+
+  it('names the limits that the studio moved', () => {
+    const lines = recipeLines({ ...fillRecipe({ limits: { draftMinDeg: 9 } }) });
+    expect(lines.find(({ label }) => label === 'Limits')?.value).toMatch(/draft.*: 9 deg$/);
   });
 });

@@ -7,6 +7,7 @@ import { StatusWord, type State } from '@/app/_components/status-word';
 import { checkName } from '@/lib/review/check-words';
 import type { ContentView } from '@/lib/review/schemas';
 import { verdictWords } from '@/lib/review/verdict-words';
+import { RecipeList } from './recipe-list';
 
 type Summary = ContentView['summary'];
 
@@ -34,14 +35,7 @@ export function ContentSummary({ content }: { content: ContentView }) {
         </span>
       </Row>
       <Row label="Recipe">
-        <ul className="grid gap-x-6 sm:grid-cols-2">
-          {summary.recipe.map(({ label, value }) => (
-            <li key={label} className="flex justify-between gap-3 text-sm">
-              <span className="text-slate">{label}</span>
-              <span className="text-right font-mono text-xs leading-5">{value}</span>
-            </li>
-          ))}
-        </ul>
+        <RecipeList lines={summary.recipe} />
       </Row>
       <Row label="Verdict">{verdictOf(summary)}</Row>
       <Row label="Findings">

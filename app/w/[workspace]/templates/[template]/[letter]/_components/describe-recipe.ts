@@ -1,3 +1,4 @@
+import { FILAMENTS } from '@/lib/formability/materials/filaments';
 import { SHEETS } from '@/lib/formability/materials/sheets';
 import { formatLength } from '@/app/_components/format-figure';
 import type { Units } from '@/app/_components/preferences';
@@ -23,7 +24,7 @@ export function describeRecipe(recipe: Record<string, unknown>, units: Units) {
   const print = recipe.print as Part;
   return {
     sheet: `${nameIn(SHEETS, sheet?.material)} ${short(sheet?.gaugeMm, units)}`.trim(),
-    template: `${String(print?.material ?? 'unknown').toUpperCase()}, ${short(print?.nozzleMm, units)} nozzle`,
+    template: `${nameIn(FILAMENTS, print?.material)}; ${short(print?.nozzleMm, units)} nozzle`,
   };
 }
 

@@ -1,6 +1,6 @@
 'use client';
 
-import { useEffect, useRef, useState } from 'react';
+import { useEffect, useMemo, useRef, useState } from 'react';
 import { usePeople, useDocket, useRevision } from '../_hooks/use-room-data';
 import { useDocketAddress } from '../_hooks/use-docket-filter';
 import { useKeysOn, useRoomKeys } from '../_hooks/use-room-keys';
@@ -9,20 +9,22 @@ import { usePresence } from '@/app/_components/live/use-presence';
 import { draftKey } from '@/app/_components/note-editor/note-draft';
 import { useDraftKeys } from '@/app/_components/note-editor/use-draft-keys';
 import { usePreferences } from '@/app/_components/preferences-context';
+import { mapOfCheck, offeredMaps, type StageMap } from '@/app/_components/stage/stage-maps';
 import type { Point, StageCamera } from '@/app/_components/stage/stage-props';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { DocketView, RevisionView } from '@/lib/review/schemas';
 import { CheckPanel } from './check-panel';
 import { Docket } from './docket';
-import { draftLimit } from './draft-limit';
-import { byGroup, docketItems, filterItems, groupOrder } from './docket-items';
+import { byGroup, docketItems, filterItems, groupOrder, type DocketItem } from './docket-items';
 import { gateSteps } from './gate-steps';
 import { primaryStep } from './primary-step';
 import { PostedWith } from './posted-with';
 import { PrintedRecord } from './printed-record';
 import { PrimaryAction, RoomActions, RoomDialogs, type RoomDialog } from './room-actions';
 import { RoomProvider, type RoomReader, type RoomValue } from './room-context';
+import { RecipePanel } from './recipe-panel';
 import { RoomTitle } from './room-title';
+import { stageLimits } from './stage-limits';
 import { StagePanel } from './stage-panel';
 import { isExactPlace, itemOfPin, placeOf, stagePins } from './stage-pins';
 import { StateBanner } from './state-banner';
@@ -56,6 +58,11 @@ export function Room({
   const [dialog, setDialog] = useState<RoomDialog | null>(null);
   const filterInput = useRef<HTMLInputElement>(null);
 
+  const [map, setMap] = useState<StageMap>('plain');
+  const limits = useMemo(
+    () => stageLimits(docket.findings, revision.recipe),
+    [docket.findings, revision.recipe],
+  );
   const meta = revision.model ? (revision.model.meta as unknown as StageModelMeta) : null;
   const bounds = meta?.boundsMm ?? null;
   const items = docketItems(docket);
@@ -73,9 +80,15 @@ export function Room({
   });
 
   const itemOf = (key: string) => items.find((each) => each.key === key);
+  /** A finding that a map shows brings that map; a note leaves the one that is on. */
+  const showMapOf = (item: DocketItem | undefined) => {
+    const wanted = item?.finding ? mapOfCheck(item.finding.checkId) : null;
+    if (wanted && meta && offeredMaps(meta, limits).includes(wanted)) setMap(wanted);
+  };
   const activate = (key: string) => {
     setItem(key);
     const item = itemOf(key);
+    showMapOf(item);
     const at = item ? placeOf(item) : null;
     const view = (item?.thread?.pin?.view as StageCamera | undefined) ?? null;
     if (item && at) focus.look(at, `${key}#0`, view, isExactPlace(item));
@@ -125,6 +138,7 @@ export function Room({
     showPlace: (key, at) => {
       setItem(key);
       const item = itemOf(key);
+      showMapOf(item);
       focus.look(at as Point, `${key}#0`, null, item !== undefined && isExactPlace(item));
       document.getElementById('stage')?.scrollIntoView({ block: 'nearest' });
     },
@@ -169,6 +183,7 @@ export function Room({
         </div>
         <StateBanner revision={revision} />
         <CheckPanel revision={revision} />
+        <RecipePanel recipe={revision.recipe} />
         <div className="grid items-start gap-6 print:block lg:grid-cols-[minmax(0,1fr)_minmax(20rem,27rem)]">
           <div
             id="stage"
@@ -177,7 +192,9 @@ export function Room({
             <h2 className="sr-only">Model and section</h2>
             <StagePanel
               revision={revision}
-              limitDeg={draftLimit(docket.findings, revision.recipe)}
+              limits={limits}
+              map={map}
+              onMapChange={setMap}
               pins={pins}
               activePin={focus.activePin}
               onPinSelect={(id) => visit(itemOfPin(id))}
