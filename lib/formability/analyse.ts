@@ -16,6 +16,7 @@ import type { Analysis, AnalysisGeometry, Check } from './report';
 import { Stages } from './stages';
 import { surveyPart, type Part } from './survey-part';
 import { ENGINE_VERSION } from './version';
+import { writePhysics } from './write-physics';
 import { writeSections } from './write-sections';
 
 /**
@@ -41,20 +42,24 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
   });
   const part = surveyPart(raw, effective, stages);
   effective.grid.cellMm = part.columns.grid.cell;
-  const sections = stages.run('sections', () => ({
-    schema: 1 as const,
-    engine: ENGINE_VERSION,
-    input: {
-      sha256: raw.sha256,
-      bytes: bytes.length,
-      format: raw.format,
-      unit: effective.mesh.unit,
-      triangles: raw.triangles,
-      ...describeSource(raw),
-    },
-    recipe: effective,
-    ...writeSections(part, effective),
-  }));
+  const sections = stages.run('sections', () => {
+    const geometric = writeSections(part, effective);
+    return {
+      schema: 1 as const,
+      engine: ENGINE_VERSION,
+      input: {
+        sha256: raw.sha256,
+        bytes: bytes.length,
+        format: raw.format,
+        unit: effective.mesh.unit,
+        triangles: raw.triangles,
+        ...describeSource(raw),
+      },
+      recipe: effective,
+      ...geometric,
+      ...(options.geometryOnly ? {} : writePhysics(effective, geometric, part.size)),
+    };
+  });
   const checks = stages.run('checks', () => judge(part, effective, sections, options.geometryOnly ?? false));
   const geometry = stages.run('geometry', () => drawGeometry(part));
   stages.finish();
@@ -93,7 +98,16 @@ function judge(
   });
 }
 
-function drawGeometry({ prepared, facets, columns, holes, flood, draft, visibility, walls }: Part): AnalysisGeometry {
+function drawGeometry({
+  prepared,
+  facets,
+  columns,
+  holes,
+  flood,
+  draft,
+  visibility,
+  walls,
+}: Part): AnalysisGeometry {
   const { mesh } = prepared;
   const { grid, height } = columns;
   const pockets = mapPockets(mesh, facets, holes.surface, flood, grid);

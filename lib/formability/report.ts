@@ -256,26 +256,41 @@ export interface VentMark {
 }
 
 export interface HeatReport {
+  /** Surface at the first touch, semi-infinite bodies. */
   contactC: number;
   limitC: number;
+  /** Surface after pull 1…N. */
   peakC: number[];
+  /** How many of the planned pulls stay below the limit from a cold start; 0 where the first does not. */
   pullsBeforeRest: number;
-  cycleThatHoldsS: number;
+  /** Shortest cycle from the planned one up at which all planned pulls hold; null where none does. */
+  cycleThatHoldsS: number | null;
   model: 'lumped' | '1-d';
 }
 
 export interface SkinReport {
-  spanMm: number;
+  /** Null without infill: nothing carries the top. */
+  spanMm: number | null;
   modulusMPa: number;
   atC: number;
-  sagMm: number;
-  stressMPa: number;
+  sagMm: number | null;
+  stressMPa: number | null;
   limitMm: number;
+  /** Top thickness, or infill, at which the sag is the limit. */
+  topThatHoldsMm: number | null;
+  infillThatHoldsPercent: number | null;
 }
 
 export interface WallsUnderPressureReport {
+  /** Hollow by its mesh, or printed without infill. */
+  empty: boolean;
+  wallMm: number;
   sagMm: number;
-  collapseBar: number;
+  stressMPa: number;
+  /** Across the layers, at the hottest pull. */
+  strengthMPa: number;
+  /** Ring collapse with knock-down; null where infill carries the walls. */
+  collapseBar: number | null;
 }
 
 export interface Advice {

@@ -21,6 +21,11 @@ export function say(value: number, digits = 1): string {
   return value.toFixed(digits).replace(/\.0+$|(\.\d*?)0+$/, '$1');
 }
 
+/** A deflection in mm for a sentence: formulas of small bending say nothing beyond a few millimetres. */
+export function sayGive(mm: number): string {
+  return mm > 5 ? 'more than 5' : mm < 0.001 ? 'less than 0.001' : say(mm, 3);
+}
+
 /** A place for a sentence, in whole tenths of a millimetre. */
 export function sayPlace(at: readonly number[]): string {
   return `x ${say(at[0])}, y ${say(at[1])}, z ${say(at[2])}`;

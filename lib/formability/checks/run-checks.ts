@@ -3,6 +3,7 @@ import { checkDraft } from './check-draft';
 import { checkDraw } from './check-draw';
 import { checkEdges } from './check-edges';
 import { checkFit } from './check-fit';
+import { checkHeat } from './check-heat';
 import { checkLayers } from './check-layers';
 import { checkMesh } from './check-mesh';
 import { checkNozzle } from './check-nozzle';
@@ -10,13 +11,15 @@ import { checkOverhang } from './check-overhang';
 import { checkPrint } from './check-print';
 import { checkRelease } from './check-release';
 import { checkShell } from './check-shell';
+import { checkSkin } from './check-skin';
 import { checkSpacing } from './check-spacing';
 import { checkUndercut } from './check-undercut';
 import { checkVents } from './check-vents';
+import { checkWalls } from './check-walls';
 import type { CheckInput } from './check-input';
 import { notRun } from './not-run';
 
-const CHECKS: Partial<Record<CheckId, (input: CheckInput) => Check>> = {
+const CHECKS: Partial<Record<CheckId, (input: CheckInput) => Check | null>> = {
   mesh: checkMesh,
   fit: checkFit,
   draft: checkDraft,
@@ -27,6 +30,9 @@ const CHECKS: Partial<Record<CheckId, (input: CheckInput) => Check>> = {
   draw: checkDraw,
   vents: checkVents,
   shell: checkShell,
+  skin: checkSkin,
+  walls: checkWalls,
+  heat: checkHeat,
   nozzle: checkNozzle,
   overhang: checkOverhang,
   release: checkRelease,

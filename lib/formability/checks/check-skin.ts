@@ -1,0 +1,51 @@
+import { FILAMENTS } from '../materials/filaments';
+import type { Basis, Check } from '../report';
+import { roundUp, say, sayGive } from './basis';
+import type { CheckInput } from './check-input';
+
+const BASIS: Basis = {
+  source:
+    'clamped plate over one cell of the infill (Timoshenko and Woinowsky-Krieger) at the modulus of the hottest pull (ISO 75 construction, derived) with creep factor 3; sag that shows: common practice, no source',
+  kind: 'computed',
+};
+/** Sag of this many limits is no matter of taste. */
+const FAIL_AT = 2;
+
+/** Will the top sink between the infill lines? */
+export function checkSkin({ recipe, report }: CheckInput): Check | null {
+  const { skin } = report;
+  if (!skin) return null;
+  const { print, machine } = recipe;
+  const sag = skin.sagMm ?? Infinity;
+  const status = sag > FAIL_AT * skin.limitMm ? 'fail' : sag > skin.limitMm ? 'caution' : 'pass';
+  const over =
+    skin.spanMm === null
+      ? 'With no infill the top spans the whole template'
+      : `Over free spans of ${say(skin.spanMm, 2)} mm between ${print.infillPattern} infill lines a ${say(print.topMm, 2)} mm top sinks ${sayGive(sag)} mm`;
+  return {
+    id: 'skin',
+    status,
+    measured: skin.sagMm,
+    limit: skin.limitMm,
+    unit: 'mm',
+    basis: BASIS,
+    message: `${over} at ${say(machine.pressureBar, 1)} bar and ${say(skin.atC, 0)} °C, where ${FILAMENTS[print.material].name} keeps ${say(skin.modulusMPa, 0)} MPa; ${say(skin.limitMm, 2)} mm show through.`,
+    remedy: status === 'pass' ? '' : remedy(skin, print.topMm, print.infillPercent),
+    places: [],
+  };
+}
+
+function remedy(
+  skin: NonNullable<CheckInput['report']['skin']>,
+  topMm: number,
+  infillPercent: number,
+): string {
+  const ways: string[] = [];
+  if (skin.topThatHoldsMm !== null && skin.topThatHoldsMm > topMm && skin.topThatHoldsMm <= 10 * topMm)
+    ways.push(`print a top of ${say(roundUp(skin.topThatHoldsMm, 0.1), 1)} mm`);
+  const infill = skin.infillThatHoldsPercent;
+  if (infill !== null && infill > infillPercent && infill <= 100)
+    ways.push(`an infill of ${say(roundUp(infill, 1), 0)} %`);
+  if (ways.length === 0) return 'It is too soft there: first mend the heat, then the skin follows.';
+  return `${ways.join(', or ').replace(/^./, (first) => first.toUpperCase())}.`;
+}

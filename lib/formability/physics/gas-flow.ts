@@ -1,0 +1,76 @@
+/** Dry air at room temperature (usual values). */
+export const AIR = { gasJkgK: 287.05, gamma: 1.4, viscosityPaS: 1.82e-5 };
+/** Standard atmosphere, Pa. */
+export const ATMOSPHERE_PA = 101_325;
+
+/** Downstream over upstream pressure below which an orifice is choked: (2/(γ+1))^(γ/(γ−1)) = 0.5283. */
+export const CRITICAL_RATIO = (2 / (AIR.gamma + 1)) ** (AIR.gamma / (AIR.gamma - 1));
+
+/** ψ(r) of an isentropic orifice; C* = 0.68473 when choked (ISO 9300 form q_m = A C_d C* p₀ / √(R T₀)). */
+export function flowFunction(ratio: number): number {
+  const { gamma: g } = AIR;
+  const r = Math.min(1, Math.max(CRITICAL_RATIO, ratio));
+  return Math.sqrt(Math.max(0, ((2 * g) / (g - 1)) * (r ** (2 / g) - r ** ((g + 1) / g))));
+}
+
+export interface Flow {
+  kgS: number;
+  regime: 'choked' | 'subcritical' | 'laminar';
+}
+
+export interface Bore {
+  diameterMm: number;
+  lengthMm: number;
+}
+
+export interface Pressures {
+  upstreamPa: number;
+  downstreamPa: number;
+  kelvin: number;
+}
+
+/** Mass flow through a sharp hole, kg/s. */
+export function orificeFlow(areaMm2: number, discharge: number, at: Pressures): number {
+  const { upstreamPa, downstreamPa, kelvin } = at;
+  const psi = flowFunction(downstreamPa / upstreamPa);
+  return (discharge * areaMm2 * 1e-6 * upstreamPa * psi) / Math.sqrt(AIR.gasJkgK * kelvin);
+}
+
+/** Isothermal laminar mass flow of a gas through a long bore, kg/s: π d⁴ (p₁² − p₂²) / (256 μ L R T). */
+export function laminarFlow({ diameterMm, lengthMm }: Bore, at: Pressures): number {
+  const { upstreamPa, downstreamPa, kelvin } = at;
+  const d = diameterMm / 1000;
+  const length = lengthMm / 1000;
+  if (length <= 0) return Infinity;
+  return (
+    (Math.PI * d ** 4 * (upstreamPa ** 2 - downstreamPa ** 2)) /
+    (256 * AIR.viscosityPaS * length * AIR.gasJkgK * kelvin)
+  );
+}
+
+/** Flow through a bore: the smaller of orifice and laminar rules. */
+export function boreFlow(bore: Bore, discharge: number, at: Pressures): Flow {
+  const orifice = orificeFlow((Math.PI / 4) * bore.diameterMm ** 2, discharge, at);
+  const laminar = laminarFlow(bore, at);
+  if (laminar < orifice) return { kgS: laminar, regime: 'laminar' };
+  return {
+    kgS: orifice,
+    regime: at.downstreamPa / at.upstreamPa < CRITICAL_RATIO ? 'choked' : 'subcritical',
+  };
+}
+
+/** Time to drive a volume out at constant pressure and temperature, s; choked, it is V / (C_d A C* √(R T)). */
+export function expelTimeS(volumeMm3: number, kgS: number, at: Pressures): number {
+  return (volumeMm3 * 1e-9 * at.upstreamPa) / (AIR.gasJkgK * at.kelvin) / kgS;
+}
+
+/** Time for a fixed volume to fall from one pressure to another through a choked orifice, s: τ ln(p₁/p₂). */
+export function chokedEvacuationS(
+  volumeMm3: number,
+  areaMm2: number,
+  discharge: number,
+  { fromPa, toPa, kelvin }: { fromPa: number; toPa: number; kelvin: number },
+): number {
+  const speed = flowFunction(0) * Math.sqrt(AIR.gasJkgK * kelvin);
+  return ((volumeMm3 * 1e-9) / (discharge * areaMm2 * 1e-6 * speed)) * Math.log(fromPa / toPa);
+}
