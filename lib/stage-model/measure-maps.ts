@@ -1,5 +1,6 @@
 import { facetArea } from './facet-area';
 import { binOf } from './map-histogram';
+import { LAYERS_FROM_DEG, LAYERS_TO_DEG } from './shown-range';
 import {
   DRAFT_ATTRIBUTE,
   FLAG_BED,
@@ -12,9 +13,6 @@ import {
   type StageMaps,
 } from './stage-model-meta';
 
-/** A face of these drafts shows layer lines; an upright one has no step, a flat one lies in a layer (engine contract). */
-export const LAYERS_FROM_DEG = 0.25;
-export const LAYERS_TO_DEG = 89.5;
 /** A tenth of a millimetre where walls are judged, coarse where they are thick; the last edge is the most a count holds. */
 const WALL_EDGES_MM = [
   ...Array.from({ length: 60 }, (_, i) => i / 10),
@@ -53,10 +51,11 @@ function layerFigures({ positions, facetDraftDeg, facetFlags }: StageGeometry): 
 
 function wallFigures({ positions, facetFlags }: StageGeometry, wallMm: Float32Array): MapFigures {
   const tally = new Tally(WALL_EDGES_MM);
+  const counts = Math.round(1 / MAP_STEP_MM);
   for (let f = 0; f < wallMm.length; f++) {
     if (facetFlags[f] & FLAG_BED || !(wallMm[f] > 0)) continue;
     // As the file holds it: a wall of 3 mm that was measured as 2.9999 is not below 3 mm.
-    tally.add(Math.round(wallMm[f] / MAP_STEP_MM) * MAP_STEP_MM, facetArea(positions, f));
+    tally.add(Math.max(1, Math.round(wallMm[f] * counts)) / counts, facetArea(positions, f));
   }
   return { attribute: WALL_ATTRIBUTE, unit: 'mm', step: MAP_STEP_MM, ...tally.figures() };
 }

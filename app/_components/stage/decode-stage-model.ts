@@ -13,6 +13,10 @@ import {
   DRAFT_ATTRIBUTE,
   DRAFT_STEP_DEG,
   FLAGS_ATTRIBUTE,
+  MAP_STEP_MM,
+  TRAP_ATTRIBUTE,
+  TRAP_NONE,
+  WALL_ATTRIBUTE,
 } from '@/lib/stage-model/stage-model-meta';
 
 /** A stage model ready to draw, cut and pick; plain arrays, so that a worker can hand it over. */
@@ -22,6 +26,10 @@ export interface StageModelData {
   normals: Float32Array;
   draftDeg: Float32Array;
   flags: Float32Array;
+  /** mm, 0 where no wall was measured; null where the model has none at all */
+  wallMm: Float32Array | null;
+  /** mm below the pocket's rim, negative above it, under NO_TRAP_MM without a pocket; null where the model has none */
+  trapMm: Float32Array | null;
   /** corners, in the order that the search tree wants them */
   index: Uint32Array;
   /** fewer triangles on the same vertices for frames in motion; empty where the model is light */
@@ -30,6 +38,9 @@ export interface StageModelData {
   lines: Uint32Array;
   tree: SerializedBVH;
 }
+
+/** A vertex below this looks into no pocket. */
+export const NO_TRAP_MM = (TRAP_NONE + 0.5) * MAP_STEP_MM;
 
 export async function fetchStageModel(url: string): Promise<StageModelData> {
   const answer = await fetch(url, { credentials: 'same-origin' }).catch(() => null);
@@ -65,6 +76,8 @@ export async function decodeStageModel(glb: ArrayBuffer): Promise<StageModelData
     normals: plain(geometry.getAttribute('normal'), 3),
     draftDeg: plain(draft, 1).map((v) => v * DRAFT_STEP_DEG),
     flags: plain(flags, 1),
+    wallMm: lengths(geometry, WALL_ATTRIBUTE),
+    trapMm: lengths(geometry, TRAP_ATTRIBUTE),
     index: Uint32Array.from(geometry.index.array),
     coarse: Uint32Array.from(found.coarse?.geometry.index?.array ?? []),
     lines: Uint32Array.from(found.ink?.geometry.index?.array ?? []),
@@ -72,7 +85,7 @@ export async function decodeStageModel(glb: ArrayBuffer): Promise<StageModelData
 }
 
 export function transferables({ tree, ...arrays }: StageModelData): ArrayBuffer[] {
-  const buffers = Object.values(arrays).map((a) => a.buffer as ArrayBuffer);
+  const buffers = Object.values(arrays).flatMap((a) => (a ? [a.buffer as ArrayBuffer] : []));
   return [...new Set([...buffers, ...tree.roots])];
 }
 
@@ -85,6 +98,12 @@ function withTree(model: Omit<StageModelData, 'tree'>): StageModelData {
   geometry.setIndex(new BufferAttribute(model.index, 1));
   const tree = MeshBVH.serialize(new MeshBVH(geometry, { targetLeafSize: 8 }), { cloneBuffers: false });
   return { ...model, index: geometry.index!.array as Uint32Array, tree: { ...tree, index: null as never } };
+}
+
+/** Models of an older schema, and parts without walls or pockets, do not have the attribute. */
+function lengths(geometry: BufferGeometry, name: string): Float32Array | null {
+  const attribute = geometry.getAttribute(name.toLowerCase());
+  return attribute ? plain(attribute, 1).map((v) => v * MAP_STEP_MM) : null;
 }
 
 /** Tightly packed floats of an attribute that may be quantised and strided. */

@@ -2,11 +2,14 @@
 
 import clsx from 'clsx';
 import type { ReactNode } from 'react';
+import type { StageLimits } from '@/lib/stage-model/map-scale';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { formatLength } from '../format-figure';
+import type { Units } from '../preferences';
 import { usePreferences } from '../preferences-context';
 import { wallAreas } from './draft-legend';
 import { formatArea, formatShare } from './format-area';
+import { layerWords, trapWords, wallWords, type MapWords } from './map-words';
 import type { StagePin } from './stage-props';
 
 const STATES: Record<StagePin['state'], string> = {
@@ -20,7 +23,7 @@ export function StageFallback(props: {
   title: string;
   pictureUrl: string;
   meta: StageModelMeta;
-  limitDeg: number;
+  limits: StageLimits;
   pins?: readonly StagePin[];
   activePin?: string | null;
   onPinSelect?: (id: string) => void;
@@ -28,7 +31,8 @@ export function StageFallback(props: {
   action?: ReactNode;
   className?: string;
 }) {
-  const { title, pictureUrl, meta, limitDeg, pins = [], activePin, onPinSelect, reason, action } = props;
+  const { title, pictureUrl, meta, limits, pins = [], activePin, onPinSelect, reason, action } = props;
+  const limitDeg = limits.draftDeg;
   const { units } = usePreferences();
   const { min, max } = meta.boundsMm;
   const { walls, below } = wallAreas(meta, limitDeg);
@@ -47,6 +51,7 @@ export function StageFallback(props: {
       below > 0,
     ],
     ['Undercut area', formatArea(meta.areaMm2.undercut, units), meta.areaMm2.undercut > 0],
+    ...mapRows(meta, limits, units),
     ['Area on the bed', formatArea(meta.areaMm2.bed, units)],
   ];
   return (
@@ -105,4 +110,21 @@ export function StageFallback(props: {
       ) : null}
     </section>
   );
+}
+
+/** What the legends of the other maps say, for the maps that this model has. */
+function mapRows({ maps }: StageModelMeta, limits: StageLimits, units: Units): [string, string, boolean][] {
+  const row = (name: string, { area, range, broken }: MapWords): [string, string, boolean] => [
+    name,
+    range ? `${area}${area.endsWith('.') ? '' : '.'} ${range.replace(/\.$/, '')}` : area.replace(/\.$/, ''),
+    broken,
+  ];
+  const { layerMm } = limits;
+  return [
+    ...(layerMm !== null && maps
+      ? [row('Layer lines', layerWords(maps, { ...limits, layerMm }, units))]
+      : []),
+    ...(maps?.wall ? [row('Wall thickness', wallWords(maps.wall, limits, units))] : []),
+    ...(maps?.trap ? [row('Trapped air', trapWords(maps.trap, units))] : []),
+  ];
 }

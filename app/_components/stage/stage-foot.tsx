@@ -3,7 +3,9 @@
 import type { Ref } from 'react';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { DraftLegend } from './draft-legend';
-import type { StageMap } from './stage-props';
+import type { StageLimits } from '@/lib/stage-model/map-scale';
+import { LayerLegend, TrapLegend, WallLegend } from './length-legends';
+import type { StageMap } from './stage-maps';
 import { UndercutLegend } from './undercut-legend';
 
 /** The words at the foot of the stage: the reading or what to do, and the legend of the map. */
@@ -11,12 +13,13 @@ export function StageFoot(props: {
   ref: Ref<HTMLDivElement>;
   map: StageMap;
   meta: StageModelMeta;
-  limitDeg: number;
+  limits: StageLimits;
+  /** the place under the pointer in words, and its figure on the map's scale */
   reading: string | null;
-  draftDeg: number | null;
+  figure: number | null;
   hint: 'loading' | 'placing' | 'pins' | 'free';
 }) {
-  const { ref, map, meta, limitDeg, reading, draftDeg, hint } = props;
+  const { ref, reading, hint, ...legend } = props;
   return (
     <div
       ref={ref}
@@ -25,10 +28,21 @@ export function StageFoot(props: {
       <p className="min-h-9 max-w-md flex-1 basis-52 text-xs text-slate sm:min-h-0">
         {reading ? <span className="bg-sheet/80 font-mono text-ink">{reading}</span> : <Hint hint={hint} />}
       </p>
-      {map === 'draft' ? <DraftLegend meta={meta} limitDeg={limitDeg} reading={draftDeg} /> : null}
-      {map === 'undercut' ? <UndercutLegend meta={meta} /> : null}
+      <Legend {...legend} />
     </div>
   );
+}
+
+function Legend(props: { map: StageMap; meta: StageModelMeta; limits: StageLimits; figure: number | null }) {
+  const { map, meta, limits, figure } = props;
+  const { maps } = meta;
+  if (map === 'draft') return <DraftLegend meta={meta} limitDeg={limits.draftDeg} reading={figure} />;
+  if (map === 'undercut') return <UndercutLegend meta={meta} />;
+  if (map === 'layers' && limits.layerMm !== null)
+    return <LayerLegend maps={maps} limits={limits} layerMm={limits.layerMm} reading={figure} />;
+  if (map === 'wall' && maps?.wall) return <WallLegend wall={maps.wall} limits={limits} reading={figure} />;
+  if (map === 'trap' && maps?.trap) return <TrapLegend maps={maps} reading={figure} />;
+  return null;
 }
 
 function Hint({ hint }: { hint: 'loading' | 'placing' | 'pins' | 'free' }) {

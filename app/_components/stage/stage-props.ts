@@ -1,7 +1,8 @@
+import type { StageLimits } from '@/lib/stage-model/map-scale';
 import type { SectionLine } from '@/lib/stage-model/section';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
+import type { StageMap } from './stage-maps';
 
-export type StageMap = 'plain' | 'draft' | 'undercut';
 export type PinState = 'must-settle' | 'look' | 'settled';
 export type Point = [number, number, number];
 
@@ -34,8 +35,8 @@ export interface StageProps {
   meta: StageModelMeta;
   map: StageMap;
   onMapChange: (map: StageMap) => void;
-  /** least draft wanted; hatched below it on the draft map */
-  limitDeg: number;
+  /** what the maps are held against, and hatched beyond */
+  limits: StageLimits;
   pins?: readonly StagePin[];
   activePin?: string | null;
   onPinSelect?: (id: string) => void;

@@ -13,7 +13,8 @@ import {
 import { rigAxes, type RigState } from './camera-rig';
 import type { StageModelData } from './decode-stage-model';
 import { probeWebgl } from './probe-webgl';
-import type { StageMap } from './stage-props';
+import type { MapScale } from '@/lib/stage-model/map-scale';
+import type { StageMap } from './stage-maps';
 import { createTemplateMaterial, type StageColours } from './template-material';
 
 const HATCH_CSS_PX = 7;
@@ -60,6 +61,9 @@ export class StageScene {
     this.surface.setAttribute('normal', new BufferAttribute(model.normals, 3));
     this.surface.setAttribute('draft', new BufferAttribute(model.draftDeg, 1));
     this.surface.setAttribute('flags', new BufferAttribute(model.flags, 1));
+    if (model.wallMm) this.surface.setAttribute('wall', new BufferAttribute(model.wallMm, 1));
+    // Without a pocket the attribute reads 0 everywhere: the depth of a rim, which is not drawn.
+    if (model.trapMm) this.surface.setAttribute('trap', new BufferAttribute(model.trapMm, 1));
     this.surface.setIndex(new BufferAttribute(model.index, 1));
     this.surface.computeBoundingSphere();
     this.reach = (this.surface.boundingSphere?.radius ?? 100) * 4;
@@ -81,12 +85,8 @@ export class StageScene {
     this.renderer.setSize(this.size.width, this.size.height, false);
   }
 
-  setMap(map: StageMap): void {
-    this.template.setMap(map);
-  }
-
-  setLimit(deg: number): void {
-    this.template.setLimit(deg);
+  setMap(map: StageMap, scale: MapScale | null, layerMm: number): void {
+    this.template.setMap(map, scale, layerMm);
   }
 
   setColours(colours: StageColours): void {

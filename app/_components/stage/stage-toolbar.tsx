@@ -3,16 +3,15 @@
 import clsx from 'clsx';
 import { Button, ToggleButton, ToggleButtonGroup, Toolbar } from 'react-aria-components';
 import { STANDARD_VIEWS, type StandardViewId } from './camera-rig';
-import type { StageMap } from './stage-props';
-
-const MAPS: { id: StageMap; label: string }[] = [
-  { id: 'plain', label: 'Plain' },
-  { id: 'draft', label: 'Draft' },
-  { id: 'undercut', label: 'Undercut' },
-];
+import { STAGE_MAPS, type StageMap } from './stage-maps';
 
 /** What is shown on the model: words in a row, the one in use underlined in ink. */
-export function MapChoice({ map, onMapChange }: { map: StageMap; onMapChange: (map: StageMap) => void }) {
+export function MapChoice(props: {
+  map: StageMap;
+  offered: readonly StageMap[];
+  onMapChange: (map: StageMap) => void;
+}) {
+  const { map, offered, onMapChange } = props;
   return (
     <ToggleButtonGroup
       aria-label="Shown on the model"
@@ -23,9 +22,9 @@ export function MapChoice({ map, onMapChange }: { map: StageMap; onMapChange: (m
         const [next] = keys;
         if (next) onMapChange(next as StageMap);
       }}
-      className="flex gap-x-4"
+      className="flex flex-wrap gap-x-4"
     >
-      {MAPS.map(({ id, label }) => (
+      {STAGE_MAPS.filter(({ id }) => offered.includes(id)).map(({ id, label }) => (
         <ToggleButton
           key={id}
           id={id}

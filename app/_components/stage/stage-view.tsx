@@ -7,11 +7,12 @@ import { Button } from '../button';
 import { usePreferences } from '../preferences-context';
 import { describeView, fromCamera } from './camera-rig';
 import type { Kept } from './layout-pin-labels';
-import { readSurface } from './read-surface';
+import { figureAt, readSurface } from './read-surface';
 import { readStageColours } from './stage-colours';
 import { StageFallback } from './stage-fallback';
 import { StageFoot } from './stage-foot';
 import { StageMarks } from './stage-marks';
+import { offeredMaps, scaleOfMap, STAGE_MAPS } from './stage-maps';
 import { Picture, STAGE_FRAME, STAGE_HEIGHT } from './stage-picture';
 import type { StageProps } from './stage-props';
 import type { SurfaceHit } from './surface-picker';
@@ -19,21 +20,14 @@ import { MapChoice, ViewChoice } from './stage-toolbar';
 import { traceOfCut } from './trace-of-cut';
 import { useStageEngine, type EngineHandlers } from './use-stage-engine';
 
-const MAP_WORDS = { plain: 'plain', draft: 'draft map', undercut: 'undercut map' };
-
 /** The stage with its 3D code; reached through `Stage`, which loads it. */
 export default function StageView(props: StageProps) {
-  const {
-    title,
-    meta,
-    map,
-    limitDeg,
-    pins = [],
-    activePin = null,
-    placing = false,
-    sectionLine = null,
-  } = props;
+  const { title, meta, limits, pins = [], activePin = null, placing = false, sectionLine = null } = props;
   const { theme, units } = usePreferences();
+  const offered = offeredMaps(meta, limits);
+  // A page that shows another model keeps its map where that model has it.
+  const map = offered.includes(props.map) ? props.map : 'plain';
+  const mapWords = STAGE_MAPS.find(({ id }) => id === map)!.words;
   const [hit, setHit] = useState<SurfaceHit | null>(null);
   const [spoken, setSpoken] = useState('');
   const [crossHair, setCrossHair] = useState(false);
@@ -53,7 +47,9 @@ export default function StageView(props: StageProps) {
   const readMiddle = () => {
     const found = engine?.control.pickMiddle() ?? null;
     setHit(found);
-    setSpoken(found ? readSurface(found, limitDeg, units) : 'Nothing of the template under the cross-hair');
+    setSpoken(
+      found ? readSurface(found, map, limits, units) : 'Nothing of the template under the cross-hair',
+    );
   };
 
   useLayoutEffect(() => {
@@ -78,10 +74,9 @@ export default function StageView(props: StageProps) {
   });
 
   useEffect(() => {
-    engine?.scene.setMap(map);
-    engine?.scene.setLimit(limitDeg);
+    engine?.scene.setMap(map, scaleOfMap(map, meta, limits), limits.layerMm ?? 0);
     engine?.control.invalidate();
-  }, [engine, map, limitDeg]);
+  }, [engine, map, meta, limits]);
 
   const shownTheme = props.theme ?? theme;
   useEffect(() => {
@@ -173,7 +168,7 @@ export default function StageView(props: StageProps) {
   return (
     <section aria-label={`Model of ${title}`} className={clsx(STAGE_FRAME, 'group/stage', props.className)}>
       <div className="relative z-10 flex flex-wrap items-center justify-between gap-x-6 px-3 pt-1.5 sm:px-4">
-        <MapChoice map={map} onMapChange={props.onMapChange} />
+        <MapChoice map={map} offered={offered} onMapChange={props.onMapChange} />
         <ViewChoice
           className="-mx-1.5 max-sm:order-last"
           onView={(id) => engine?.control.standard(id)}
@@ -189,7 +184,7 @@ export default function StageView(props: StageProps) {
           )}
           role="application"
           aria-roledescription="3D view"
-          aria-label={`${title}, ${MAP_WORDS[map]}, ${viewWords}, ${counts}`}
+          aria-label={`${title}, ${mapWords}, ${viewWords}, ${counts}`}
           aria-describedby={keys}
           tabIndex={0}
           onKeyDown={onKey}
@@ -233,9 +228,9 @@ export default function StageView(props: StageProps) {
         ref={foot}
         map={map}
         meta={meta}
-        limitDeg={limitDeg}
-        reading={hit ? readSurface(hit, limitDeg, units) : null}
-        draftDeg={hit && !hit.bed ? hit.draftDeg : null}
+        limits={limits}
+        reading={hit ? readSurface(hit, map, limits, units) : null}
+        figure={hit ? figureAt(hit, map, limits) : null}
         hint={!engine ? 'loading' : placing ? 'placing' : pins.length > 0 ? 'pins' : 'free'}
       />
       <p id={keys} className="sr-only">

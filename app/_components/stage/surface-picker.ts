@@ -1,8 +1,8 @@
 import { DoubleSide, BufferAttribute, BufferGeometry, Ray, Vector3 } from 'three';
 import { MeshBVH } from 'three-mesh-bvh';
-import { FLAG_BED, FLAG_UNDERCUT } from '@/lib/stage-model/stage-model-meta';
+import { FLAG_BED, FLAG_UNDERCUT, FLAG_UNVENTED } from '@/lib/stage-model/stage-model-meta';
 import { rigAxes, type RigState } from './camera-rig';
-import type { StageModelData } from './decode-stage-model';
+import { NO_TRAP_MM, type StageModelData } from './decode-stage-model';
 import type { Point } from './stage-props';
 
 /** What the stage knows of a place on the surface. */
@@ -12,6 +12,12 @@ export interface SurfaceHit {
   draftDeg: number;
   undercut: boolean;
   bed: boolean;
+  /** null where none was measured */
+  wallMm: number | null;
+  /** below the rim that the pocket fills to; null outside of pockets and above the rim */
+  trapMm: number | null;
+  /** in a pocket that no vent leads out of */
+  unvented: boolean;
 }
 
 export interface StageSize {
@@ -75,6 +81,9 @@ export class SurfacePicker {
       draftDeg,
       undercut: (flags & FLAG_UNDERCUT) !== 0,
       bed: (flags & FLAG_BED) !== 0,
+      wallMm: known(this.model.wallMm, corners, weights, 0),
+      trapMm: positive(known(this.model.trapMm, corners, weights, NO_TRAP_MM)),
+      unvented: (flags & FLAG_UNVENTED) !== 0,
     };
   }
 
@@ -86,4 +95,24 @@ export class SurfacePicker {
     const [wa, wb] = [part(b, c), part(c, a)];
     return [wa, wb, Math.max(0, 1 - wa - wb)];
   }
+}
+
+/** The figure between corners that have one (above `none`); null where they weigh less than those without. */
+function known(
+  figures: Float32Array | null,
+  corners: number[],
+  weights: number[],
+  none: number,
+): number | null {
+  let [sum, weight] = [0, 0];
+  corners.forEach((v, k) => {
+    if (!figures || figures[v] <= none) return;
+    sum += figures[v] * weights[k];
+    weight += weights[k];
+  });
+  return weight > 0.5 ? sum / weight : null;
+}
+
+function positive(figure: number | null): number | null {
+  return figure !== null && figure > 0 ? figure : null;
 }

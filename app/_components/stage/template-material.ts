@@ -9,8 +9,12 @@ import {
   Vector3,
 } from 'three';
 import { cividisTable } from '@/lib/stage-model/cividis';
-import { draftScaleMaxDeg, FLAT_FROM_DEG } from '@/lib/stage-model/draft-scale';
-import type { StageMap } from './stage-props';
+import { FLAT_FROM_DEG } from '@/lib/stage-model/draft-scale';
+import type { MapScale } from '@/lib/stage-model/map-scale';
+import { LAYERS_FROM_DEG, LAYERS_TO_DEG, TRAP_FROM_MM } from '@/lib/stage-model/shown-range';
+import { NO_TRAP_MM } from './decode-stage-model';
+import { STROKES_TURN } from './scale-legend';
+import type { StageMap } from './stage-maps';
 
 /** Colours of the stage as CSS text, read from the page's theme. */
 export interface StageColours {
@@ -22,18 +26,25 @@ export interface StageColours {
   clayDark: string;
 }
 
-const MAPS: Record<StageMap, number> = { plain: 0, draft: 1, undercut: 2 };
+/** Strokes on the light half of the scale; the same on both themes, as the map's colours are. */
+const DARK_STROKE = 'vec3(0.114, 0.137, 0.129)';
 
+const MAPS: Record<StageMap, number> = { plain: 0, draft: 1, undercut: 2, layers: 3, wall: 4, trap: 5 };
+
+// Wall and pocket come as (figure, has one), both 0 without one: between a vertex that has a figure and one that has
+// none the quotient stays the figure, so that no false thin wall appears.
 const vertexShader = /* glsl */ `
-  attribute float draft;
-  attribute float flags;
+  attribute float draft, flags, wall, trap;
   varying vec3 vNormal;
   varying float vDraft;
-  varying float vFlags;
+  varying vec3 vFlags;
+  varying vec2 vWall, vTrap;
   void main() {
     vNormal = normal;
     vDraft = draft;
-    vFlags = flags;
+    vFlags = vec3(mod(flags, 2.0), mod(floor(flags / 2.0), 2.0), mod(floor(flags / 4.0), 2.0));
+    vWall = wall > 0.0 ? vec2(wall, 1.0) : vec2(0.0);
+    vTrap = trap > ${NO_TRAP_MM.toFixed(3)} ? vec2(trap, 1.0) : vec2(0.0);
     gl_Position = projectionMatrix * modelViewMatrix * vec4(position, 1.0);
   }
 `;
@@ -42,12 +53,13 @@ const vertexShader = /* glsl */ `
 const fragmentShader = /* glsl */ `
   precision highp float;
   uniform int map;
-  uniform float limit, scaleMax, flatFrom, pitch;
+  uniform float limit, scaleMax, dark, isoStep, layer, flatFrom, pitch;
   uniform sampler2D scale;
   uniform vec3 clayLight, clayDark, hatch, ink, madder, right, toEye;
   varying vec3 vNormal;
   varying float vDraft;
-  varying float vFlags;
+  varying vec3 vFlags;
+  varying vec2 vWall, vTrap;
 
   float stripe() {
     float at = mod(gl_FragCoord.x - gl_FragCoord.y, pitch) / pitch;
@@ -67,14 +79,38 @@ const fragmentShader = /* glsl */ `
     float light = 0.3 + 0.4 * max(0.0, n.z) + 0.22 * abs(facing) - 0.24 * dot(n, right);
     vec3 clay = mix(clayDark, clayLight, clamp(light, 0.0, 1.0));
     vec3 colour = clay;
-    bool bed = mod(vFlags + 0.5, 2.0) >= 1.0;
-    bool undercut = vFlags > 1.5;
-    if (map == 1 && !bed && vDraft < flatFrom) {
-      colour = texture2D(scale, vec2((clamp(vDraft / scaleMax, 0.0, 1.0) * 255.0 + 0.5) / 256.0, 0.5)).rgb;
-      if (vDraft < limit) colour = mix(colour, hatch, 0.75 * stripe());
-      colour = mix(colour, ink, 0.35 * isoLine(vDraft / 5.0, 0.6));
-      float toLimit = abs(vDraft - limit) / max(fwidth(vDraft), 1e-4);
-      if (fwidth(vDraft) > 1e-4 && fwidth(vDraft) < 2.0) colour = mix(colour, ink, 0.9 * (1.0 - smoothstep(0.8, 1.6, toLimit)));
+    bool bed = vFlags.x > 0.5;
+    bool undercut = vFlags.y > 0.5;
+    float v = 0.0;
+    bool shown = false;
+    if (map == 1) {
+      v = vDraft;
+      shown = vDraft < flatFrom;
+    } else if (map == 3) {
+      v = layer * sin(radians(vDraft));
+      shown = vDraft > ${LAYERS_FROM_DEG.toFixed(2)} && vDraft < ${LAYERS_TO_DEG.toFixed(2)};
+    } else if (map == 4) {
+      v = vWall.x / max(vWall.y, 0.1);
+      shown = vWall.y > 0.5;
+    } else if (map == 5) {
+      v = vTrap.x / max(vTrap.y, 0.1);
+      shown = vTrap.y > 0.5 && v > ${TRAP_FROM_MM.toFixed(2)};
+    }
+    // Outside of the branch: neighbours in a block of pixels must all have a figure to differ from.
+    float slope = fwidth(v);
+    if (shown && !bed) {
+      float at = clamp(v / scaleMax, 0.0, 1.0);
+      if (dark > 0.0) at = 1.0 - at;
+      colour = texture2D(scale, vec2((at * 255.0 + 0.5) / 256.0, 0.5)).rgb;
+      vec3 stroke = at > ${STROKES_TURN.toFixed(2)} ? ${DARK_STROKE} : hatch;
+      float beyond = (v - limit) * dark;
+      bool broken = map == 5 ? vFlags.z > 0.5 : limit >= 0.0 && beyond > (map == 4 ? 0.005 : 0.0);
+      if (broken) colour = mix(colour, stroke, 0.75 * stripe());
+      // Half a step off the round figures: walls are drawn with round figures, and a line has no place on a plane.
+      colour = mix(colour, ink, 0.35 * isoLine(v / isoStep + (map == 4 ? 0.5 : 0.0), 0.6));
+      float least = map == 1 ? 1e-4 : scaleMax * 5e-4;
+      if (map != 5 && limit >= 0.0 && slope > least && slope < scaleMax * 0.13)
+        colour = mix(colour, ink, 0.9 * (1.0 - smoothstep(0.8, 1.6, abs(v - limit) / slope)));
     }
     if (undercut) {
       if (map == 2) colour = mix(colour, madder, 0.28);
@@ -90,8 +126,8 @@ const fragmentShader = /* glsl */ `
 
 export interface TemplateMaterial {
   material: ShaderMaterial;
-  setMap(map: StageMap): void;
-  setLimit(deg: number): void;
+  /** `layerMm` is the height of a printed layer, for the map of layer lines */
+  setMap(map: StageMap, scale: MapScale | null, layerMm: number): void;
   setColours(colours: StageColours): void;
   /** hatch pitch in device pixels */
   setPitch(px: number): void;
@@ -109,6 +145,9 @@ export function createTemplateMaterial(): TemplateMaterial {
     map: { value: 0 },
     limit: { value: 5 },
     scaleMax: { value: 15 },
+    dark: { value: -1 },
+    isoStep: { value: 5 },
+    layer: { value: 0 },
     flatFrom: { value: FLAT_FROM_DEG },
     pitch: { value: 8 },
     scale: { value: scale },
@@ -131,10 +170,14 @@ export function createTemplateMaterial(): TemplateMaterial {
   });
   return {
     material,
-    setMap: (map) => void (uniforms.map.value = MAPS[map]),
-    setLimit(deg) {
-      uniforms.limit.value = deg;
-      uniforms.scaleMax.value = draftScaleMaxDeg(deg);
+    setMap(map, shown, layerMm) {
+      uniforms.map.value = MAPS[map];
+      uniforms.layer.value = layerMm;
+      if (!shown) return;
+      uniforms.limit.value = shown.limit ?? -1;
+      uniforms.scaleMax.value = shown.max;
+      uniforms.dark.value = shown.dark === 'high' ? 1 : -1;
+      uniforms.isoStep.value = shown.isoStep;
     },
     setColours(colours) {
       uniforms.clayLight.value.copy(displayRgb(colours.clayLight));

@@ -8,9 +8,11 @@ import { StageFallback } from '@/app/_components/stage/stage-fallback';
 import type { StagePin } from '@/app/_components/stage/stage-props';
 import { UndercutLegend } from '@/app/_components/stage/undercut-legend';
 import { buildStageModel } from '@/lib/stage-model/build-stage-model';
+import type { StageLimits } from '@/lib/stage-model/map-scale';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { frustum, geometryOf } from '../../stage-model/shapes';
 
+const limits: StageLimits = { draftDeg: 5, layerMm: 0.15, stepMm: 0.1, wallMm: 3 };
 let four: StageModelMeta;
 let leaning: StageModelMeta;
 
@@ -37,7 +39,7 @@ describe('the stage without 3D', () => {
         title="Cover, revision B"
         pictureUrl="/p.png"
         meta={four}
-        limitDeg={5}
+        limits={limits}
         pins={pins}
         reason="No WebGL."
       />,
@@ -55,7 +57,13 @@ describe('the stage without 3D', () => {
   it('marks nothing where nothing is broken', () => {
     const text = words(
       renderToStaticMarkup(
-        <StageFallback title="T" pictureUrl="/p.png" meta={four} limitDeg={4} reason="No WebGL." />,
+        <StageFallback
+          title="T"
+          pictureUrl="/p.png"
+          meta={four}
+          limits={{ ...limits, draftDeg: 4 }}
+          reason="No WebGL."
+        />,
       ),
     );
     expect(text).not.toContain('outside the limit');
@@ -70,7 +78,7 @@ describe('the stage without 3D', () => {
         meta={four}
         map="draft"
         onMapChange={() => {}}
-        limitDeg={5}
+        limits={limits}
       />,
     );
     expect(markup).toContain('src="/p.png"');

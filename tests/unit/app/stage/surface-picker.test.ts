@@ -9,6 +9,7 @@ import { frustum, geometryOf, hemisphere, tray } from '../../stage-model/shapes'
 
 const size = { width: 800, height: 500 };
 const rad = Math.PI / 180;
+const limits = { draftDeg: 5, layerMm: 0.15, stepMm: 0.1, wallMm: 3 };
 
 async function load(positions: Float32Array) {
   const { glb, meta } = await buildStageModel(geometryOf(positions));
@@ -96,7 +97,7 @@ describe('picking', () => {
     expect(picker.pick(2, 2, rig, size)).toBeNull();
     const hit = picker.pick(size.width / 2, size.height / 2, rig, size)!;
     expect(hit.bed).toBe(true);
-    expect(readSurface(hit, 5, 'mm')).toMatch(/^Stands on the bed, at x/);
+    expect(readSurface(hit, 'draft', limits, 'mm')).toMatch(/^Stands on the bed, at x/);
   });
 
   it('knows which places the template hides', async () => {
@@ -112,6 +113,9 @@ describe('readSurface', () => {
   const hit = {
     at: [12, -3.04, 18] as [number, number, number],
     normal: [0, 0, 1] as [number, number, number],
+    wallMm: null,
+    trapMm: null,
+    unvented: false,
   };
   it.each([
     [4.21, false, 'Draft 4.2°, below the limit of 5°, at x 12.0\u00a0mm, y −3.0\u00a0mm, z 18.0\u00a0mm'],
@@ -119,6 +123,6 @@ describe('readSurface', () => {
     [-12, true, 'Draft −12.0°, undercut, at x 12.0\u00a0mm, y −3.0\u00a0mm, z 18.0\u00a0mm'],
     [90, false, 'Draft 90.0°, flat, at x 12.0\u00a0mm, y −3.0\u00a0mm, z 18.0\u00a0mm'],
   ])('reads %d° in words', (draftDeg, undercut, words) => {
-    expect(readSurface({ ...hit, draftDeg, undercut, bed: false }, 5, 'mm')).toBe(words);
+    expect(readSurface({ ...hit, draftDeg, undercut, bed: false }, 'plain', limits, 'mm')).toBe(words);
   });
 });
