@@ -148,6 +148,8 @@ export const drafts = pgTable(
       .notNull()
       .references(() => users.id),
     createdAt: createdAt(),
+    /** Who saved it last; null until somebody has. */
+    changedBy: uuid('changed_by').references(() => users.id),
     changedAt: instant('changed_at').notNull().defaultNow(),
     version: version(),
   },

@@ -42,6 +42,7 @@ const sentences: Record<string, (d: Detail, at: Place) => string> = {
   'upload.started': (d, at) => `began to send ${word(d.fileName)} for ${at.number}`,
   'upload.completed': (d, at) => `sent ${word(d.fileName)} for ${at.number}`,
   'upload.cancelled': (d, at) => `cancelled ${word(d.fileName)} for ${at.number}`,
+  'upload.read-again': (d, at) => `had ${word(d.fileName)} for ${at.number} read again, in ${word(d.to)}`,
   'upload.accepted': (d, at) => `read ${word(d.fileName)} for ${at.number}`,
   'upload.refused': (d, at) => `refused ${word(d.fileName)} for ${at.number}: ${word(d.message)}`,
   'revision.posted': (d, at) =>

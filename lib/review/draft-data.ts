@@ -1,4 +1,5 @@
 import { and, eq, sql } from 'drizzle-orm';
+import { users } from '@/db/schema/identity';
 import { drafts } from '@/db/schema/templates';
 import type { TenantTx } from '@/db/tenant';
 
@@ -27,7 +28,7 @@ export async function insertDraft(tx: TenantTx, row: typeof drafts.$inferInsert)
 export async function changeDraft(
   tx: TenantTx,
   draft: DraftRow,
-  change: Pick<DraftRow, 'uploadId' | 'recipe' | 'note'>,
+  change: Pick<DraftRow, 'uploadId' | 'recipe' | 'note' | 'changedBy'>,
 ): Promise<DraftRow> {
   const [row] = await tx
     .update(drafts)
@@ -35,6 +36,13 @@ export async function changeDraft(
     .where(and(eq(drafts.workspaceId, draft.workspaceId), eq(drafts.id, draft.id)))
     .returning();
   return row;
+}
+
+/** Who saved a draft last, or began it. */
+export async function lastEditor(tx: TenantTx, draft: DraftRow): Promise<{ id: string; name: string }> {
+  const personId = draft.changedBy ?? draft.authorId;
+  const [row] = await tx.select({ name: users.name }).from(users).where(eq(users.id, personId));
+  return { id: personId, name: row?.name ?? 'somebody who has left' };
 }
 
 export async function deleteDraft(tx: TenantTx, draft: DraftRow): Promise<void> {

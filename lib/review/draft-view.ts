@@ -1,5 +1,5 @@
 import type { TenantTx } from '@/db/tenant';
-import type { DraftRow } from './draft-data';
+import { lastEditor, type DraftRow } from './draft-data';
 import { revisionLetter } from './letters';
 import { latestRevision } from './revision-data';
 import type { DraftView } from './schemas';
@@ -19,5 +19,6 @@ export async function draftView(tx: TenantTx, draft: DraftRow): Promise<DraftVie
     upload: upload ? await uploadView(tx, upload) : null,
     version: draft.version,
     changedAt: draft.changedAt.toISOString(),
+    changedBy: await lastEditor(tx, draft),
   };
 }

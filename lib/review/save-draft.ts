@@ -44,7 +44,7 @@ export async function saveDraft(
     if (uploadId) await requireOwnUpload(tx, workspaceId, id, uploadId);
     const before = { uploadId: draft.uploadId, recipe: draft.recipe, note: draft.note };
     if (digestOf(before) === digestOf({ uploadId, recipe, note })) return draftView(tx, draft);
-    const saved = await changeDraft(tx, draft, { uploadId, recipe, note });
+    const saved = await changeDraft(tx, draft, { uploadId, recipe, note, changedBy: ctx.person.id });
     await queueLive(tx, ctx, { name: 'draft.changed', data: { id: draft.id, templateId: id } });
     return draftView(tx, saved);
   });

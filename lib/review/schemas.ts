@@ -27,12 +27,15 @@ export const lengthUnit = z.enum(['mm', 'cm', 'm', 'in', 'ft', 'micron']);
 
 // Templates
 
+/** Longer than the 25 characters that ISO 7200 advises for a title field (from memory): people paste whole names. */
+export const longestTitle = 80;
+
 export const CreateTemplateInput = z.object({
   title: z
     .string()
     .trim()
     .min(1, 'Give the template a title.')
-    .max(25, 'At most 25 characters (ISO 7200 title field).'),
+    .max(longestTitle, `At most ${longestTitle} characters.`),
   dueOn: z.iso.date('Write the date as YYYY-MM-DD.').nullable().default(null),
 });
 export type CreateTemplateInput = z.infer<typeof CreateTemplateInput>;
@@ -115,6 +118,9 @@ export const StartUploadInput = z
   });
 export type StartUploadInput = z.infer<typeof StartUploadInput>;
 
+/** Unit of length in which a file without one of its own is to be read. */
+export const UploadUnitInput = z.object({ unit: lengthUnit });
+
 export const UploadView = z.object({
   id,
   fileName: z.string(),
@@ -171,6 +177,8 @@ export const DraftView = z.object({
   upload: UploadView.nullable(),
   version: z.number(),
   changedAt: instant,
+  /** Who saved it last; whoever began it until then. */
+  changedBy: z.object({ id, name: z.string() }),
 });
 export type DraftView = z.infer<typeof DraftView>;
 
@@ -422,6 +430,8 @@ export const TodayItem = z.object({
   text: z.string(),
   since: instant,
   dueOn: z.iso.date().nullable(),
+  /** How far the template has come: what is agreed is no longer overdue. */
+  standing,
 });
 export type TodayItem = z.infer<typeof TodayItem>;
 export const TodayView = z.object({

@@ -29,7 +29,7 @@ export async function lockUpload(tx: TenantTx, workspaceId: string, uploadId: st
 export async function changeUpload(
   tx: TenantTx,
   upload: UploadRow,
-  change: Partial<Pick<UploadRow, 'parts' | 'state' | 'refusal' | 'meshId'>>,
+  change: Partial<Pick<UploadRow, 'parts' | 'state' | 'refusal' | 'meshId' | 'unit'>>,
 ): Promise<UploadRow> {
   const [row] = await tx
     .update(uploads)

@@ -28,6 +28,7 @@ import {
   TemplateSummary,
   ThreadView,
   TodayView,
+  UploadUnitInput,
   UploadView,
   WaiveInput,
 } from '@/lib/review/schemas';
@@ -111,6 +112,10 @@ export const reviewOperations: Operation[] = [
     answer: UploadView,
   }),
   post(`${upload}/complete`, 'All parts have arrived', { answer: UploadView }),
+  post(`${upload}/unit`, 'Read the file again, in another unit of length', {
+    body: UploadUnitInput,
+    answer: UploadView,
+  }),
   post(`${upload}/cancel`, 'Give the upload up', { answer: UploadView }),
   get(`${template}/revisions`, 'Revisions of a template', z.array(RevisionSummary)),
   post(`${template}/revisions`, 'Post the draft as the next revision', {

@@ -10,13 +10,15 @@ import { markPartDone } from '@/lib/review/mark-part-done';
 import { openDraft } from '@/lib/review/open-draft';
 import { postRevision } from '@/lib/review/post-revision';
 import { presignParts } from '@/lib/review/presign-parts';
-import { refuseUpload } from '@/lib/review/record-upload';
+import { readUploadAgain } from '@/lib/review/read-upload-again';
+import { acceptUpload, refuseUpload } from '@/lib/review/record-upload';
 import { saveDraft } from '@/lib/review/save-draft';
 import { startUpload } from '@/lib/review/start-upload';
 import { viewTemplate } from '@/lib/review/view-template';
 import { viewToday } from '@/lib/review/view-today';
 import { viewUpload } from '@/lib/review/view-upload';
 import { store } from '@/lib/storage/store';
+import { dayIn } from '@/lib/time/day-in';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import { blockStl, entries, fingerprint, newTemplate, sendMesh, takeJob } from '@/tests/support/factory';
 import { makeHouse, type House } from '@/tests/support/make-house';
@@ -60,11 +62,19 @@ describe('templates', () => {
 
   it.each([
     [{ title: '' }, '/title'],
-    [{ title: 'A title of more than 25 signs' }, '/title'],
+    [{ title: 'T'.repeat(81) }, '/title'],
+    [{ title: 'x', dueOn: '2026-01-31' }, '/dueOn'],
     [{ title: 'x', dueOn: '2027-02-30' }, '/dueOn'],
     [{ title: 7 }, '/title'],
   ])('refuse %j', async (input, pointer) => {
     await refused(() => createTemplate(lead, input), { code: 'invalid', errors: [{ pointer }] });
+  });
+
+  it('keep a long title whole and take a day that has only begun', async () => {
+    const title = 'Blister tray for twelve ampoules, left-hand cavity, with snap rim and label step';
+    expect(title).toHaveLength(80);
+    const today = dayIn(lead.person.timeZone);
+    expect(await createTemplate(lead, { title, dueOn: today })).toMatchObject({ title, dueOn: today });
   });
 
   it('change at the version that was seen, else not at all', async () => {
@@ -136,6 +146,18 @@ describe('drafts', () => {
         reason: 'no-draft',
       },
     );
+  });
+
+  it('say who saved them last, so that a second tab of one person is told from a colleague', async () => {
+    const templateId = await newTemplate(designer);
+    const draft = await openDraft(designer, templateId);
+    expect(draft.changedBy).toEqual({ id: designer.person.id, name: designer.person.name });
+    const { recipe, version } = draft;
+    await saveDraft(lead, templateId, { uploadId: null, recipe, note: 'By the lead.', version });
+    expect((await openDraft(designer, templateId)).changedBy).toEqual({
+      id: lead.person.id,
+      name: lead.person.name,
+    });
   });
 
   it('are on the desk of whoever began them once they hold something', async () => {
@@ -329,6 +351,53 @@ describe('uploads', () => {
   ])('refuse %j', async (input, pointer) => {
     const templateId = await newTemplate(designer);
     await refused(() => startUpload(designer, templateId, input), { code: 'invalid', errors: [{ pointer }] });
+  });
+
+  it('are read again in another unit without being sent again', async () => {
+    const templateId = await newTemplate(designer);
+    const uploadId = await sendMesh(designer, templateId);
+    const before = await viewUpload(designer, uploadId);
+    const reading = await readUploadAgain(designer, uploadId, { unit: 'in' });
+    expect(reading).toMatchObject({ state: 'reading', unit: 'in', mesh: null });
+    expect(await readUploadAgain(lead, uploadId, { unit: 'in' })).toMatchObject({ state: 'reading' });
+    const [entry] = await entries(database, house.workspace.id, 1);
+    expect(entry).toMatchObject({ action: 'upload.read-again', subject_id: uploadId });
+    const job = await takeJob(designer.workspace.id, 'read-upload', uploadId);
+    await acceptUpload(job.ctx, job.fence, uploadId, {
+      sha256: before.mesh!.sha256,
+      bytes: before.bytes,
+      format: 'stl-binary',
+      unit: 'in',
+      triangles: 12,
+      boundsMm: { min: [-762, -762, 0], max: [762, 762, 508] },
+    });
+    const after = await viewUpload(designer, uploadId);
+    expect(after).toMatchObject({ state: 'ready', mesh: { unit: 'in', sha256: before.mesh!.sha256 } });
+    expect(after.mesh!.id).not.toBe(before.mesh!.id);
+  });
+
+  it('are not read in another unit before they were read once, or where the file names its own', async () => {
+    const templateId = await newTemplate(designer);
+    const sending = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: 684 });
+    await refused(() => readUploadAgain(designer, sending.id, { unit: 'cm' }), {
+      reason: 'upload-not-ready',
+    });
+    await refused(() => readUploadAgain(designer, sending.id, { unit: 'ell' }), {
+      code: 'invalid',
+      errors: [{ pointer: '/unit' }],
+    });
+    const uploadId = await sendMesh(designer, templateId);
+    await readUploadAgain(designer, uploadId, { unit: 'cm' });
+    const job = await takeJob(designer.workspace.id, 'read-upload', uploadId);
+    await acceptUpload(job.ctx, job.fence, uploadId, {
+      sha256: 'ab'.repeat(32),
+      bytes: 684,
+      format: '3mf',
+      unit: 'mm',
+      triangles: 12,
+      boundsMm: { min: [0, 0, 0], max: [1, 1, 1] },
+    });
+    await refused(() => readUploadAgain(designer, uploadId, { unit: 'm' }), { reason: 'own-unit' });
   });
 
   it('say why a file cannot be used, and the draft stays', async () => {

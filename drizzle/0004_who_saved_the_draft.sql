@@ -1,0 +1,2 @@
+ALTER TABLE "drafts" ADD COLUMN "changed_by" uuid;--> statement-breakpoint
+ALTER TABLE "drafts" ADD CONSTRAINT "drafts_changed_by_users_id_fk" FOREIGN KEY ("changed_by") REFERENCES "public"."users"("id") ON DELETE no action ON UPDATE no action;
