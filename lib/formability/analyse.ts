@@ -1,12 +1,11 @@
 import { createHash } from 'node:crypto';
 import type { AnalyseOptions } from './analyse-options';
-import { wantedDraft } from './checks/check-draft';
 import type { CheckInput } from './checks/check-input';
 import { runChecks } from './checks/run-checks';
 import { facetFlags, facetPositions } from './facet-output';
 import { fillRecipe } from './fill-recipe';
-import { judgeWalls } from './measures/judge-walls';
 import { mapPockets } from './measures/map-pockets';
+import { judgeDraft, type DraftJudgement } from './judge-draft';
 import { findOverhangs } from './measures/overhangs';
 import { checkCoordinates } from './parse/check-coordinates';
 import { describeSource } from './parse/describe-source';
@@ -42,8 +41,9 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
   });
   const part = surveyPart(raw, effective, stages);
   effective.grid.cellMm = part.columns.grid.cell;
+  const wallDraft = stages.run('draft', () => judgeDraft(part, effective));
   const sections = stages.run('sections', () => {
-    const geometric = writeSections(part, effective);
+    const geometric = writeSections(part, effective, wallDraft.section);
     return {
       schema: 1 as const,
       engine: ENGINE_VERSION,
@@ -57,10 +57,12 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
       },
       recipe: effective,
       ...geometric,
-      ...(options.geometryOnly ? {} : writePhysics(effective, geometric, part.size)),
+      ...(options.geometryOnly ? {} : writePhysics(part, effective, geometric)),
     };
   });
-  const checks = stages.run('checks', () => judge(part, effective, sections, options.geometryOnly ?? false));
+  const checks = stages.run('checks', () =>
+    judge(part, effective, sections, wallDraft, options.geometryOnly ?? false),
+  );
   const geometry = stages.run('geometry', () => drawGeometry(part));
   stages.finish();
   return { report: { ...sections, advice: [], checks, timings: stages.timings }, geometry };
@@ -70,29 +72,15 @@ function judge(
   part: Part,
   recipe: EffectiveRecipe,
   report: CheckInput['report'],
+  wallDraft: DraftJudgement,
   geometryOnly: boolean,
 ): Check[] {
-  const { limits, print } = recipe;
-  const { mesh } = part.prepared;
-  const wantedDraftDeg = wantedDraft({
-    sanded: print.sanded,
-    minDeg: limits.draftMinDeg,
-    failDeg: limits.draftFailDeg,
-    layerDraftDeg: report.layers.layerDraftDeg,
-  });
   return runChecks({
     recipe,
     report,
-    walls: judgeWalls(
-      mesh,
-      part.facets,
-      part.draft.ofFacet,
-      part.visibility,
-      part.holes.bore,
-      wantedDraftDeg,
-    ),
-    wantedDraftDeg,
-    overhangs: findOverhangs(mesh, part.facets, part.holes.bore, limits.overhangDeg),
+    walls: wallDraft.walls,
+    wantedDraftDeg: wallDraft.section.wantedDeg,
+    overhangs: findOverhangs(part.prepared.mesh, part.facets, part.holes.bore, recipe.limits.overhangDeg),
     geometryOnly,
     sizeMm: part.size,
   });

@@ -242,17 +242,26 @@ export interface SheetReport {
 }
 
 export interface AirFlow {
+  /** Index into airTraps; pits that hold no other pit. */
   trap: number;
+  /** Of the vents as this printer leaves them open. */
   ventAreaMm2: number;
-  clearS: number;
+  /** Null where no vent is open. */
+  clearS: number | null;
+  /** Of the widest vent, or of the one that is wanting. */
   regime: 'choked' | 'subcritical' | 'laminar';
+  /** Further vents of the printer's smallest open size, `ventDiameterMm`, that would clear it in time. */
   ventsNeeded: number;
+  ventDiameterMm: number;
   ventPlaces: Point[];
 }
 
 export interface VentMark {
+  /** Index into vents. */
   vent: number;
   heightMm: number;
+  /** Formed thickness that it was reckoned with. */
+  thicknessMm: number;
 }
 
 export interface HeatReport {

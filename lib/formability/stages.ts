@@ -12,7 +12,8 @@ const WEIGHT = {
   undercut: 10,
   facets: 10,
   walls: 8,
-  sections: 20,
+  draft: 12,
+  sections: 10,
   checks: 5,
   geometry: 2,
 };

@@ -1,10 +1,10 @@
 import type { CheckInput } from './checks/check-input';
 import { describeMesh } from './describe-mesh';
 import { undercutAreas } from './facet-output';
+import type { DraftJudgement } from './judge-draft';
 import { estimatePrint } from './measures/estimate-print';
 import { measureEdges } from './measures/measure-edges';
 import { measureLayers } from './measures/measure-layers';
-import { measureMacroDraft } from './measures/measure-macro-draft';
 import { measurePlan } from './measures/measure-plan';
 import { measureShadow } from './measures/measure-shadow';
 import type { Facets } from './mesh/measure-facets';
@@ -15,7 +15,11 @@ import type { Part } from './survey-part';
 type Sections = Omit<CheckInput['report'], 'schema' | 'engine' | 'input' | 'recipe'>;
 
 /** The report's sections, with places in the file's own frame in x and y. */
-export function writeSections(part: Part, recipe: EffectiveRecipe): Sections {
+export function writeSections(
+  part: Part,
+  recipe: EffectiveRecipe,
+  wallDraft: DraftJudgement['section'],
+): Sections {
   const { prepared, facets, columns, air, undercuts, holes, visibility, draft, size } = part;
   const { mesh, edges } = prepared;
   const { machine, print, limits } = recipe;
@@ -36,10 +40,7 @@ export function writeSections(part: Part, recipe: EffectiveRecipe): Sections {
   const margin = 2 * machine.frameMarginMm;
   return {
     mesh: meshReport,
-    draft: {
-      ...draft.draft,
-      wallMinMacroDeg: measureMacroDraft(mesh, facets, notWalls(part), Math.max(...size)),
-    },
+    draft: { ...draft.draft, ...wallDraft },
     plan: measurePlan({
       mesh,
       facets,
@@ -87,16 +88,6 @@ const NOT_COMPUTED: Pick<Report, 'sheet' | 'air' | 'ventMarks' | 'heat' | 'skin'
   skin: null,
   wallsUnderPressure: null,
 };
-
-/** Facets that are no wall to the sheet: bed, bores, ceilings of undercuts, cavities. */
-function notWalls({ facets, holes, undercuts, visibility }: Part): Uint8Array {
-  const skip = facets.bed.slice();
-  for (let t = 0; t < skip.length; t++) {
-    if (holes.bore[t] || undercuts.ceiling[t] || visibility.visible[t] + visibility.shadowed[t] < 0.5)
-      skip[t] = 1;
-  }
-  return skip;
-}
 
 /** Areas of walls, and of tops and undersides, for the print estimate. */
 function facingAreas({ area, nz }: Facets) {

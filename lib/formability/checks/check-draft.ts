@@ -1,9 +1,11 @@
 import type { Check } from '../report';
-import { basisOf, roundUp, say } from './basis';
+import { VERTICAL_DEG } from '../measures/thresholds';
+import { basisOf, roundUp, say, sayPlace } from './basis';
 import type { CheckInput } from './check-input';
 
 /** Rounding of a wall that was drawn with exactly the limit. */
 const ROUNDING_DEG = 0.01;
+const MOST_PLACES = 12;
 const PER_DEG = Math.PI / 180;
 
 /**
@@ -35,25 +37,31 @@ export function checkDraft({ recipe, report, walls, wantedDraftDeg }: CheckInput
   }
   const good = stepped ? measured >= wantedDraftDeg - ROUNDING_DEG : walls.areaBelowMm2 === 0;
   const status = good ? 'pass' : measured < limits.draftFailDeg - ROUNDING_DEG ? 'fail' : 'caution';
+  const lean = `${say(measured)}°${stepped ? ' through their steps' : ''}`;
+  const wanted = `${say(wantedDraftDeg)}° ${wantedDraftDeg === limits.draftMinDeg ? 'is wanted' : `is wanted (${say(limits.draftFailDeg)}° and ${say(report.layers.layerDraftDeg)}° for layers not sanded)`}`;
+  if (good) return { ...base, status, measured, message: `The walls lean back by ${lean} at least; ${wanted}.`, remedy: '', places: [] }; // prettier-ignore
   const missing = roundUp(wantedDraftDeg - measured, 0.1);
   const height = walls.heightMm;
-  const wider = height * (Math.tan(wantedDraftDeg * PER_DEG) - Math.tan(Math.max(measured, 0) * PER_DEG));
+  const wider = height * (Math.tan(wantedDraftDeg * PER_DEG) - Math.tan(measured * PER_DEG));
   const sandingHelps = !print.sanded && measured >= limits.draftMinDeg - ROUNDING_DEG;
+  const { regions } = report.draft;
+  const area = regions.reduce((sum, region) => sum + region.areaMm2, 0);
+  const where = regions.length > 0 ? ` at ${sayPlace(regions[0].at)}` : '';
   return {
     ...base,
     status,
     measured,
-    message: good
-      ? `Every wall leans back far enough: ${stepped ? `${say(measured)}° through its steps` : `at least ${say(wantedDraftDeg)}°`}.`
-      : `Walls of ${say(walls.areaBelowMm2, 0)} mm² lean back by less than ${say(wantedDraftDeg)}° (the least ${say(measured)}°), so the part will grip the template as it shrinks.`,
-    remedy: good
-      ? ''
-      : [
-          `Add ${say(missing)}° to these walls: over their ${say(height)} mm of height that is ${say(wider)} mm more at the foot of each`,
-          sandingHelps ? `or sand them, which makes ${say(limits.draftMinDeg)}° enough` : '',
-        ]
-          .filter(Boolean)
-          .join(', ') + '.',
-    places: good ? [] : walls.places,
+    message:
+      measured < -VERTICAL_DEG
+        ? `Walls of ${say(area, 0)} mm² stand too steep or lean out, by ${say(-measured)}° at most; ${wanted}, or the part locks on the template.`
+        : `Walls of ${say(area, 0)} mm² lean back by ${lean} at least; ${wanted}, or the part grips the template as it shrinks.`,
+    remedy:
+      [
+        `Add ${say(missing)}° to these walls, the largest${where}: over their ${say(height)} mm of height that is ${say(wider)} mm more at the foot of each`,
+        sandingHelps ? `or sand them, which makes ${say(limits.draftMinDeg)}° enough` : '',
+      ]
+        .filter(Boolean)
+        .join(', ') + '.',
+    places: regions.slice(0, MOST_PLACES).map(({ at, areaMm2 }) => ({ at, areaMm2 })),
   };
 }

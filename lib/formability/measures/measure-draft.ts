@@ -9,10 +9,10 @@ const EDGE_DEG = 1e-4;
 
 /**
  * Draft of every non-bed facet: asin(n_z), geometry. Bins hold lower ≤ draft < upper, the last one 90 too.
- * @returns the report section without `wallMinMacroDeg`, and the draft of each facet
+ * @returns the report section without what concerns walls only, and the draft of each facet
  */
 export function measureDraft(facets: Facets): {
-  draft: Omit<DraftReport, 'wallMinMacroDeg'>;
+  draft: Omit<DraftReport, 'wallMinMacroDeg' | 'wantedDeg' | 'regions'>;
   ofFacet: Float32Array;
 } {
   const { area, nz, bed } = facets;

@@ -1,129 +1,127 @@
 import type { Facets } from '../mesh/measure-facets';
 import type { Mesh } from '../mesh/mesh';
+import type { DraftRegion } from '../report';
+import { sumCells, type CellSums } from './sum-cells';
 import { DEG } from './thresholds';
 
-/** Steepest macroscopic slope that still counts as a wall. */
+/** Steepest macroscopic slope that still counts as a wall, on either side of upright. */
 const WALL_DEG = 45;
 /** A cell that alone leans by more than 70° is no part of a wall of 45°. */
 const STEEPEST = Math.tan((70 * Math.PI) / 180);
 /** Share of the walls' area that may lie below the figure: one patch cut in mid-step is not the wall. */
 const SHARE = 0.02;
+/** A patch cut off by the bed is left out where one above it reads nearly the same. */
+const SAME_DEG = 1.5;
+/** A window reaches so many cells up and down from its own: two, with the linear share between cells. */
+const REACH_CELLS = 2;
+
+/** The walls at scales above 1 mm, patch by patch. */
+export interface MacroWalls {
+  /** Draft that 2 % of the walls' area lie below; null without walls. */
+  minDeg: number | null;
+  patches: { at: [number, number, number]; cell: [number, number, number]; deg: number; areaMm2: number }[];
+}
 
 /**
  * Draft of the walls at scales above 1 mm. The sum of area vectors over a patch of surface depends only on the
  * patch's rim, so a stair or a noisy scan sums to the plane behind it (divergence theorem). Patches are cubes of
- * 3 × 3 × 3 cells that overlap; a patch that also holds part of a top reads too high, never too low.
+ * 3 × 3 × 3 cells that overlap, weighed linearly in height. A patch that also holds part of a top reads too high, never
+ * too low; one cut off by the bed reads low by half a layer, so such count only where a wall has no others.
  * @param skip facets left out (bed, bores, cavities)
- * @returns the draft that 2 % of the walls' area lie below, or null without walls
  */
-export function measureMacroDraft(mesh: Mesh, facets: Facets, skip: Uint8Array, size: number): number | null {
-  const cell = Math.max(1.5, size / 150);
-  const cells = sumCells(mesh, facets, skip, cell);
-  const walls: { draft: number; area: number }[] = [];
-  for (const own of cells.values()) {
+export function measureMacroDraft(mesh: Mesh, facets: Facets, skip: Uint8Array, size: number): MacroWalls {
+  const cell = Math.max(2, size / 150);
+  const sums = sumCells(mesh, facets, skip, cell);
+  const whole: MacroWalls['patches'] = [];
+  const cut: MacroWalls['patches'] = [];
+  for (let c = 0; c < sums.count; c++) {
+    const [x, y, z] = [sums.x[c], sums.y[c], sums.z[c]];
+    const across = Math.hypot(x, y);
     // A cell of little but tops cannot come out as a wall.
-    if (Math.abs(own.z) > STEEPEST * Math.hypot(own.x, own.y)) continue;
-    const sum = [0, 0, 0];
-    for (let n = 0; n < 27; n++) {
-      const near = cells.get(
-        keyOf(own.i - 1 + (n % 3), own.j - 1 + (Math.floor(n / 3) % 3), own.k - 1 + Math.floor(n / 9)),
-      );
-      if (!near) continue;
-      // Opposite walls of a rib share a window; only what faces the same way in plan, or straight up, belongs.
-      if (near.x * own.x + near.y * own.y < 0) continue;
-      sum[0] += near.x;
-      sum[1] += near.y;
-      sum[2] += near.z;
+    if (Math.abs(z) > STEEPEST * across) continue;
+    const deg = windowDraft(sums, c);
+    if (Math.abs(deg) >= WALL_DEG) continue;
+    const own: [number, number, number] = [sums.i[c], sums.j[c], sums.k[c]];
+    const at = own.map((value) => (value + 0.5) * cell) as [number, number, number];
+    (own[2] < REACH_CELLS ? cut : whole).push({ at, cell: own, deg, areaMm2: across });
+  }
+  const patches = whole.length > 0 ? [...whole, ...onlyCut(whole, cut)] : cut;
+  return { minDeg: quantile(patches, SHARE), patches };
+}
+
+function windowDraft(sums: CellSums, c: number): number {
+  let [x, y, z] = [0, 0, 0];
+  for (let n = 0; n < 27; n++) {
+    const i = sums.i[c] - 1 + (n % 3);
+    const j = sums.j[c] - 1 + (Math.floor(n / 3) % 3);
+    const near = sums.table.get(i, j, sums.k[c] - 1 + Math.floor(n / 9));
+    // Opposite walls of a rib share a window; only what faces the same way in plan, or straight up, belongs.
+    if (near < 0 || sums.x[near] * sums.x[c] + sums.y[near] * sums.y[c] < 0) continue;
+    x += sums.x[near];
+    y += sums.y[near];
+    z += sums.z[near];
+  }
+  return Math.atan2(z, Math.hypot(x, y)) * DEG;
+}
+
+/** Patches at the bed for which no whole patch above speaks: walls lower than a window, and feet of another slope. */
+function onlyCut(whole: MacroWalls['patches'], cut: MacroWalls['patches']): MacroWalls['patches'] {
+  const above = new Map<number, number[]>();
+  for (const { cell, deg } of whole) {
+    if (cell[2] > 2 * REACH_CELLS) continue;
+    for (let n = 0; n < 9; n++) {
+      const key = keyOf(cell[0] - 1 + (n % 3), cell[1] - 1 + Math.floor(n / 3));
+      const known = above.get(key);
+      if (known) known.push(deg);
+      else above.set(key, [deg]);
     }
-    const draft = Math.atan2(sum[2], Math.hypot(sum[0], sum[1])) * DEG;
-    if (Math.abs(draft) < WALL_DEG) walls.push({ draft, area: Math.hypot(own.x, own.y) });
   }
-  const total = walls.reduce((area, wall) => area + wall.area, 0);
-  if (!(total > 0)) return null;
-  walls.sort((a, b) => a.draft - b.draft);
+  return cut.filter(
+    ({ cell, deg }) => !above.get(keyOf(cell[0], cell[1]))?.some((whole) => Math.abs(whole - deg) < SAME_DEG),
+  );
+}
+
+function keyOf(i: number, j: number): number {
+  return (i + 32_768) * 65_536 + (j + 32_768);
+}
+
+function quantile(patches: MacroWalls['patches'], share: number): number | null {
+  const total = patches.reduce((area, patch) => area + patch.areaMm2, 0);
   let below = 0;
-  for (const wall of walls) {
-    below += wall.area;
-    if (below >= SHARE * total) return wall.draft;
+  for (const { deg, areaMm2 } of [...patches].sort((a, b) => a.deg - b.deg)) {
+    below += areaMm2;
+    if (below >= share * total) return deg;
   }
-  return walls[walls.length - 1].draft;
+  return null;
 }
 
-interface Cell {
-  i: number;
-  j: number;
-  k: number;
-  x: number;
-  y: number;
-  z: number;
-}
-
-function keyOf(i: number, j: number, k: number): number {
-  return ((i + 4096) * 8192 + (j + 4096)) * 8192 + (k + 4096);
-}
-
-/**
- * Area vectors per cell; a facet longer than a cell is spread over points on it. In height each point is shared between
- * the two nearest cells by distance, so a step that falls on a cell's rim does not tip the balance.
- */
-function sumCells(mesh: Mesh, facets: Facets, skip: Uint8Array, cell: number): Map<number, Cell> {
-  const { index, position: p, triangles } = mesh;
-  const cells = new Map<number, Cell>();
-  const recent: (Cell | undefined)[] = [undefined, undefined];
-  const cellAt = (i: number, j: number, k: number): Cell => {
-    const last = recent[k & 1];
-    if (last && last.i === i && last.j === j && last.k === k) return last;
-    const key = keyOf(i, j, k);
-    let found = cells.get(key);
-    if (!found) cells.set(key, (found = { i, j, k, x: 0, y: 0, z: 0 }));
-    recent[k & 1] = found;
-    return found;
-  };
-  for (let t = 0; t < triangles; t++) {
-    if (skip[t] || facets.area[t] === 0) continue;
-    const a = index[3 * t] * 3;
-    const b = index[3 * t + 1] * 3;
-    const d = index[3 * t + 2] * 3;
-    const ux = p[b] - p[a];
-    const uy = p[b + 1] - p[a + 1];
-    const uz = p[b + 2] - p[a + 2];
-    const vx = p[d] - p[a];
-    const vy = p[d + 1] - p[a + 1];
-    const vz = p[d + 2] - p[a + 2];
-    const reach = Math.max(
-      Math.abs(ux),
-      Math.abs(uy),
-      Math.abs(uz),
-      Math.abs(vx),
-      Math.abs(vy),
-      Math.abs(vz),
-    );
-    const m = Math.min(256, Math.max(1, Math.ceil((3 * reach) / cell)));
-    const share = 1 / (2 * m * m);
-    const x = (uy * vz - uz * vy) * share;
-    const y = (uz * vx - ux * vz) * share;
-    const z = (ux * vy - uy * vx) * share;
-    for (let i = 0; i < m; i++) {
-      for (let j = 0; j < m - i; j++) {
-        for (let half = 0; half < (j < m - i - 1 ? 2 : 1); half++) {
-          const s = (i + (1 + half) / 3) / m;
-          const r = (j + (1 + half) / 3) / m;
-          const height = (p[a + 2] + s * uz + r * vz) / cell - 0.5;
-          const ci = Math.floor((p[a] + s * ux + r * vx) / cell);
-          const cj = Math.floor((p[a + 1] + s * uy + r * vy) / cell);
-          const ck = Math.floor(height);
-          const upper = height - ck;
-          const low = cellAt(ci, cj, ck);
-          low.x += x * (1 - upper);
-          low.y += y * (1 - upper);
-          low.z += z * (1 - upper);
-          const high = cellAt(ci, cj, ck + 1);
-          high.x += x * upper;
-          high.y += y * upper;
-          high.z += z * upper;
-        }
+/** Connected patches below a limit, the largest first; the place is where the wall is steepest. */
+export function macroRegions(
+  { patches }: MacroWalls,
+  belowDeg: number,
+  leastAreaMm2: number,
+  most: number,
+): DraftRegion[] {
+  const low = new Map(patches.filter(({ deg }) => deg < belowDeg).map((patch) => [patch.cell.join(), patch]));
+  const regions: DraftRegion[] = [];
+  for (const [key, first] of low) {
+    if (!low.delete(key)) continue;
+    const queue = [first];
+    let steepest = first;
+    let areaMm2 = 0;
+    for (const patch of queue) {
+      areaMm2 += patch.areaMm2;
+      if (patch.deg < steepest.deg) steepest = patch;
+      const [i, j, k] = patch.cell;
+      for (let n = 0; n < 27; n++) {
+        const near = `${i - 1 + (n % 3)},${j - 1 + (Math.floor(n / 3) % 3)},${k - 1 + Math.floor(n / 9)}`;
+        const found = low.get(near);
+        if (!found) continue;
+        low.delete(near);
+        queue.push(found);
       }
     }
+    if (areaMm2 >= leastAreaMm2) regions.push({ at: steepest.at, areaMm2, minDeg: steepest.deg });
   }
-  return cells;
+  return regions.sort((a, b) => b.areaMm2 - a.areaMm2).slice(0, most);
 }

@@ -161,7 +161,7 @@ function followThinnest(
     const [a, b, d] = corners(sample.facet);
     const spacing = Math.sqrt(sample.area);
     let now = sample;
-    for (let k = 0, share = 1; k < HALVINGS;) {
+    for (let k = 0, share = 1, moves = 0; k < HALVINGS && moves < MOST_MOVES; moves++) {
       const ds = Math.min(0.5, (share * spacing) / far(a, b));
       const dr = Math.min(0.5, (share * spacing) / far(a, d));
       const around = [[ds, 0], [-ds, 0], [0, dr], [0, -dr], [ds, -dr], [-ds, dr]]; // prettier-ignore

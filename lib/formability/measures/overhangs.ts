@@ -26,5 +26,7 @@ export function findOverhangs(
     area += facets.area[t];
   }
   if (area < LEAST_AREA_MM2) return { areaMm2: 0, worstDeg: worst, places: [] };
-  return { areaMm2: area, worstDeg: worst, places: groupFacets(mesh, facets.area, leaning, 12) };
+  const groups = groupFacets(mesh, facets.area, leaning, 12);
+  const places = groups.map(({ at, areaMm2 }) => ({ at, areaMm2 }));
+  return { areaMm2: area, worstDeg: worst, places };
 }

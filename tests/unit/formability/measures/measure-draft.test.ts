@@ -76,11 +76,45 @@ describe('draft of facets: asin(n_z), geometry', () => {
 });
 
 describe('wallMinMacroDeg: the wall behind steps and noise', () => {
-  it.each([3, 5, 8])('reads %s° through layers of 0.2 mm, where facets say 0 and 90', (deg) => {
-    const found = draftOf(stairs(80, 60, 150, 0.2, 0.2 * Math.tan(deg * rad)));
-    expect(found.minUpFacingDeg).toBeNull();
-    expect(found.minDeg).toBe(0);
-    expect(Math.abs((found.wallMinMacroDeg ?? 0) - deg)).toBeLessThan(0.5);
+  it.each([
+    [2, 0.4],
+    [3, 0.1],
+    [5, 0.2],
+    [8, 0.3],
+    [10, 0.4],
+    [12, 0.3],
+  ])('reads %s° through layers of %s mm, where facets say 0 and 90', (deg, layer) => {
+    const mesh = stairs(80, 60, Math.round(24 / layer), layer, layer * Math.tan(deg * rad));
+    for (const found of [draftOf(mesh), draftOf(turned(mesh, 25))]) {
+      expect(found.minUpFacingDeg).toBeNull();
+      expect(Math.abs((found.wallMinMacroDeg ?? 0) - deg)).toBeLessThan(0.1);
+    }
+  });
+
+  it('reads a wall that leans out, and calls it a wall below the limit', () => {
+    const found = draftOf(frustum(80, 60, 30, [-5, 8, 8, 8]));
+    expect(found.wallMinMacroDeg).toBeCloseTo(-5, 1);
+    expect(found.regions).toHaveLength(1);
+    expect(found.regions[0].minDeg).toBeCloseTo(-5, 3);
+  });
+
+  it('names the regions below what is wanted: area and place of the one wall', () => {
+    // Foot 120 × 90, 40 high; only the wall at +x leans by less than 6.8°: a trapezoid, at the foot 90 wide.
+    const found = draftOf(frustum(120, 90, 40, [3, 8, 8, 8]));
+    const wide = 90 - 40 * Math.tan(8 * rad);
+    expect(found.wantedDeg).toBeCloseTo(3 + Math.atan(0.01 / 0.15) / rad, 6);
+    expect(found.regions).toHaveLength(1);
+    expect(found.regions[0].areaMm2).toBeCloseTo((wide * 40) / Math.cos(3 * rad), 1);
+    expect(found.regions[0].at[0]).toBeGreaterThan(56);
+  });
+
+  it('sees regions through steps: two walls of a stair below what is wanted', () => {
+    const found = draftOf(stairs(80, 60, 100, 0.2, 0.2 * Math.tan(4 * rad)));
+    const walls = 2 * (80 + 60) * 20;
+    const sum = found.regions.reduce((total, { areaMm2 }) => total + areaMm2, 0);
+    expect(sum / walls).toBeGreaterThan(0.5);
+    expect(sum / walls).toBeLessThan(1.05);
+    for (const { minDeg } of found.regions) expect(Math.abs(minDeg - 4)).toBeLessThan(0.1);
   });
 
   it('reads a 5° wall through 0.05 mm of noise (xorshift seed 7)', () => {
@@ -101,7 +135,7 @@ describe('wallMinMacroDeg: the wall behind steps and noise', () => {
     });
     const found = draftOf(mesh);
     expect(found.minUpFacingDeg).toBeLessThan(3);
-    expect(Math.abs((found.wallMinMacroDeg ?? 0) - 5)).toBeLessThan(1);
+    expect(Math.abs((found.wallMinMacroDeg ?? 0) - 5)).toBeLessThan(0.2);
   });
 
   it('takes a dome by its steep foot', () => {
