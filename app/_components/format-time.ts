@@ -36,10 +36,10 @@ export function formatClock(at: Date, zone: string): string {
   return formatter(zone, { hour: '2-digit', minute: '2-digit' }).format(at);
 }
 
-/** Length of a span in one unit, cut down and never rounded up: `under a minute`, `12 min`, `5 h`, `3 days`. */
+/** Length of a span in one unit, cut down and never rounded up: `less than a minute`, `12 min`, `5 h`, `3 days`. */
 export function formatSpan(milliseconds: number): string {
   const span = Math.abs(milliseconds);
-  if (span < minute) return 'under a minute';
+  if (span < minute) return 'less than a minute';
   if (span < hour) return `${Math.floor(span / minute)} min`;
   if (span < 2 * day) return `${Math.floor(span / hour)} h`;
   if (span < 90 * day) return `${Math.floor(span / day)} days`;

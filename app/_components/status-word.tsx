@@ -7,6 +7,7 @@ type Tone = 'madder' | 'ochre' | 'verdigris' | 'ink' | 'slate';
 export const states = {
   'must-settle': { shape: 'triangle', word: 'must settle', tone: 'madder' },
   'look-at': { shape: 'triangle-open', word: 'look at this', tone: 'ochre' },
+  overdue: { shape: 'triangle-open', word: 'overdue', tone: 'ochre' },
   settled: { shape: 'checked', word: 'settled', tone: 'ink' },
   waived: { shape: 'struck', word: 'waived', tone: 'ochre' },
   passed: { shape: 'checked', word: 'passed', tone: 'ink' },

@@ -16,6 +16,7 @@ const place = {
   number: templates.number,
   title: templates.title,
   dueOn: templates.dueOn,
+  standing: templates.standing,
   letter: revisions.letter,
 };
 

@@ -1,7 +1,7 @@
 import { withTenant } from '@/db/tenant';
 import type { PersonContext } from '@/lib/auth/context';
 import { tell, templateOf } from './activity-words';
-import type { TodayItem, TodayView } from './schemas';
+import type { Standing, TodayItem, TodayView } from './schemas';
 import {
   findingsToMend,
   gatesToSign,
@@ -22,6 +22,7 @@ type Row = {
   number: string;
   title: string;
   dueOn: string | null;
+  standing: Standing;
   letter?: string;
   since: Date | null;
 };
@@ -42,6 +43,7 @@ function item(kind: TodayItem['kind'], row: Row, text: string, page?: string): T
     text,
     since: (row.since ?? new Date(0)).toISOString(),
     dueOn: row.dueOn,
+    standing: row.standing,
   };
 }
 

@@ -1,6 +1,6 @@
 import type { Metadata } from 'next';
 import NextLink from 'next/link';
-import { EmptyState } from '@/app/_components/empty-state';
+import { DueDay } from '@/app/_components/due-day';
 import { RefreshOnLive } from '@/app/_components/live/refresh-on-live';
 import { PageHeader } from '@/app/_components/page-header';
 import { SectionHead } from '@/app/_components/section-head';
@@ -8,9 +8,12 @@ import { StatusWord, type State } from '@/app/_components/status-word';
 import { Time } from '@/app/_components/time';
 import { enterDesk } from '@/app/_frames/enter-page';
 import { DeskFrame } from '@/app/_frames/desk-frame';
+import { spacesOf } from '@/app/_frames/spaces';
 import { personContext } from '@/lib/auth/context';
 import type { TodayItem, TodayView } from '@/lib/review/schemas';
 import { viewToday } from '@/lib/review/view-today';
+import { NothingWaits } from './_components/nothing-waits';
+import { Places } from './_components/places';
 
 export const metadata: Metadata = { title: 'Today' };
 
@@ -28,6 +31,7 @@ const kinds: Record<TodayItem['kind'], { state: State; word: string }> = {
 export default async function TodayPage() {
   const person = await enterDesk();
   const today = await viewToday(personContext(person));
+  const places = await spacesOf(person.id, '');
   const waits = today.items.length;
   return (
     <DeskFrame person={person} crumbs={[{ label: 'Today' }]}>
@@ -37,7 +41,9 @@ export default async function TodayPage() {
         lead={
           waits === 0
             ? 'Nothing waits on you.'
-            : `${waits === 1 ? 'One thing waits' : `${waits} things wait`} on you, the longest first.`
+            : waits === 1
+              ? 'One thing waits on you.'
+              : `${waits} things wait on you, the longest first.`
         }
       />
       <div className="grid grid-cols-1 gap-x-10 gap-y-8 lg:grid-cols-[2fr_1fr]">
@@ -51,17 +57,17 @@ export default async function TodayPage() {
             </ol>
           ) : (
             <div className="mt-3">
-              <EmptyState title="All clear" level={3}>
-                You will get a mail when a gate waits for your name, a note names you, or a check fails on
-                what you posted.
-              </EmptyState>
+              <NothingWaits places={places} />
             </div>
           )}
         </section>
-        <section aria-labelledby="recent">
-          <SectionHead title="Lately" id="recent" />
-          <Recent recent={today.recent} />
-        </section>
+        <div className="flex min-w-0 flex-col gap-8">
+          <Places places={places} />
+          <section aria-labelledby="recent">
+            <SectionHead title="Lately" id="recent" />
+            <Recent recent={today.recent} />
+          </section>
+        </div>
       </div>
     </DeskFrame>
   );
@@ -90,7 +96,7 @@ function Waiting({ item }: { item: TodayItem }) {
           </span>
           {item.dueOn ? (
             <span>
-              due <Time at={`${item.dueOn}T12:00:00Z`} show="day" />
+              due <DueDay on={item.dueOn} standing={item.standing} />
             </span>
           ) : null}
         </p>

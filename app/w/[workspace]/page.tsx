@@ -2,6 +2,7 @@ import type { Metadata } from 'next';
 import NextLink from 'next/link';
 import { ButtonLink } from '@/app/_components/link';
 import { DataTable, type Column } from '@/app/_components/data-table';
+import { DueDay } from '@/app/_components/due-day';
 import { EmptyState } from '@/app/_components/empty-state';
 import { PageHeader } from '@/app/_components/page-header';
 import { Paging } from '@/app/_components/paging';
@@ -161,7 +162,7 @@ function columns(home: string, state: ListState): Column<TemplateSummary>[] {
       label: 'Due',
       sortHref: sortHref('due'),
       cell: (row) =>
-        row.dueOn ? <Time at={`${row.dueOn}T12:00:00Z`} show="day" /> : <span className="text-slate">–</span>,
+        row.dueOn ? <DueDay on={row.dueOn} standing={row.standing} /> : <span className="text-slate">–</span>,
     },
     {
       key: 'changed',

@@ -6,6 +6,7 @@ import { api, ApiError, explainError, newIdempotencyKey } from '@/app/_component
 import { Button } from '@/app/_components/button';
 import { Dialog, DialogTrigger } from '@/app/_components/dialog';
 import { TextField } from '@/app/_components/text-field';
+import { longestTitle, titleTooLong } from './title-too-long';
 
 type Props = { apiPath: string; homePath: string; code: string };
 
@@ -53,7 +54,7 @@ export function NewTemplate({ apiPath, homePath, code }: Props) {
             <Button
               variant="primary"
               isPending={busy}
-              isDisabled={!title.trim()}
+              isDisabled={!title.trim() || titleTooLong(title) !== undefined}
               onPress={() => void create(close)}
             >
               Open template
@@ -65,12 +66,11 @@ export function NewTemplate({ apiPath, homePath, code }: Props) {
           <p className="text-sm text-slate">It gets the next number of this workspace, {code}-…</p>
           <TextField
             label="Title"
-            help="What the part is called, at most 25 characters."
+            help={`What the part is called, at most ${longestTitle} characters.`}
             value={title}
             onChange={setTitle}
-            maxLength={25}
             isRequired
-            error={errors.title}
+            error={titleTooLong(title) ?? errors.title}
             autoFocus
           />
           <TextField

@@ -33,7 +33,7 @@ describe('times', () => {
   });
 
   it.each([
-    [30_000, 'under a minute'],
+    [30_000, 'less than a minute'],
     [minute, '1 min'],
     [hour - 1, '59 min'],
     [hour, '1 h'],

@@ -1,6 +1,7 @@
 import type { Metadata } from 'next';
 import NextLink from 'next/link';
 import { DataTable, type Column } from '@/app/_components/data-table';
+import { DueDay } from '@/app/_components/due-day';
 import { EmptyState } from '@/app/_components/empty-state';
 import { ButtonLink } from '@/app/_components/link';
 import { RefreshOnLive } from '@/app/_components/live/refresh-on-live';
@@ -47,7 +48,7 @@ export default async function TemplatePage({ params }: Props) {
           { label: 'Client', value: ctx.workspace.name },
           {
             label: 'Due',
-            value: template.dueOn ? <Time at={`${template.dueOn}T12:00:00Z`} show="day" /> : 'no date',
+            value: template.dueOn ? <DueDay on={template.dueOn} standing={template.standing} /> : 'no date',
           },
           {
             label: 'State',

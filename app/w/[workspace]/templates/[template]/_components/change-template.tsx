@@ -6,6 +6,7 @@ import { api, explainError } from '@/app/_components/api-client';
 import { Button } from '@/app/_components/button';
 import { Dialog, DialogTrigger } from '@/app/_components/dialog';
 import { TextField } from '@/app/_components/text-field';
+import { titleTooLong } from '../../../_components/title-too-long';
 
 type Props = { path: string; title: string; dueOn: string | null; version: number };
 
@@ -46,7 +47,7 @@ export function ChangeTemplate(props: Props) {
             <Button
               variant="primary"
               isPending={busy}
-              isDisabled={!title.trim()}
+              isDisabled={!title.trim() || titleTooLong(title) !== undefined}
               onPress={() => void save(close)}
             >
               Save
@@ -59,9 +60,8 @@ export function ChangeTemplate(props: Props) {
             label="Title"
             value={title}
             onChange={setTitle}
-            maxLength={25}
             isRequired
-            error={trouble}
+            error={titleTooLong(title) ?? trouble}
           />
           <TextField label="Due on" type="date" value={dueOn} onChange={setDueOn} optional />
         </div>
