@@ -9,7 +9,6 @@ import { Controlled } from '../../_components/controlled';
 import { askAuth } from '../../_components/explain-auth';
 import { FormProblem } from '../../_components/form-problem';
 import { Link } from '../../_components/link';
-import { notify } from '../../_components/notices';
 import { PasswordField } from '../../_components/password-field';
 import { newPasswordHelp, newPasswordRules } from '../../_components/new-password-rules';
 
@@ -25,8 +24,7 @@ export function ResetForm({ token }: { token: string }) {
       setProblem(answer.problem);
       return;
     }
-    notify('The new password is set. Sign in with it.');
-    router.replace('/sign-in');
+    router.replace('/sign-in?password=set');
   }
 
   return (
