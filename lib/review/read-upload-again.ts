@@ -29,17 +29,19 @@ export async function readUploadAgain(
     if (upload.unit === unit && (upload.state === 'ready' || upload.state === 'reading'))
       return uploadView(tx, upload);
     const mesh = await meshOfUpload(tx, upload);
-    if (upload.state !== 'ready' || !mesh)
+    // Refused for its size only: in another unit it may be a template.
+    const misread = upload.state === 'refused' && upload.refusal?.code === 'out_of_range';
+    if (upload.state !== 'ready' && !misread)
       throw conflict(
         'upload-not-ready',
         'Only a file that was read can be read in another unit. Wait for it, or send it anew.',
       );
-    if (hasOwnUnit(mesh.format))
+    if (mesh && hasOwnUnit(mesh.format))
       throw conflict(
         'own-unit',
         `This file says itself that it is in ${mesh.unit}. Export it in another unit and send that.`,
       );
-    const reading = await changeUpload(tx, upload, { state: 'reading', unit, meshId: null });
+    const reading = await changeUpload(tx, upload, { state: 'reading', unit, meshId: null, refusal: null });
     await enqueueJob(tx, ctx, {
       kind: 'read-upload',
       subjectId: id,

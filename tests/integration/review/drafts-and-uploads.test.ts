@@ -376,6 +376,22 @@ describe('uploads', () => {
     expect(after.mesh!.id).not.toBe(before.mesh!.id);
   });
 
+  it('are read again when only their size in the unit given was out of range', async () => {
+    const templateId = await newTemplate(designer);
+    const uploadId = await sendMesh(designer, templateId);
+    const refuseAs = async (code: string, unit: string) => {
+      await readUploadAgain(designer, uploadId, { unit });
+      const job = await takeJob(designer.workspace.id, 'read-upload', uploadId);
+      await refuseUpload(job.ctx, job.fence, uploadId, { code, message: 'It is out of range.', reasons: [] });
+    };
+    await refuseAs('out_of_range', 'm');
+    const again = await readUploadAgain(designer, uploadId, { unit: 'cm' });
+    expect(again).toMatchObject({ state: 'reading', unit: 'cm', refusal: null });
+    const job = await takeJob(designer.workspace.id, 'read-upload', uploadId);
+    await refuseUpload(job.ctx, job.fence, uploadId, { code: 'truncated', message: 'Cut off.', reasons: [] });
+    await refused(() => readUploadAgain(designer, uploadId, { unit: 'mm' }), { reason: 'upload-not-ready' });
+  });
+
   it('are not read in another unit before they were read once, or where the file names its own', async () => {
     const templateId = await newTemplate(designer);
     const sending = await startUpload(designer, templateId, { fileName: 'a.stl', bytes: 684 });

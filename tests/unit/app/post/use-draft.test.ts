@@ -11,6 +11,8 @@ describe('the draft on the page', () => {
   let draft: ReturnType<typeof useDraft>;
   let sent: Sent[];
   let onServer: number;
+  /** The draft was posted or discarded; asking for it begins the next one. */
+  let gone: boolean;
 
   /** The server's side of it: a save must name the version that is there. */
   const answer = async (_url: string, init: RequestInit) => {
@@ -21,8 +23,14 @@ describe('the draft on the page', () => {
         status: 412,
         headers: { 'content-type': 'application/problem+json' },
       });
+    if (body && gone)
+      return new Response(JSON.stringify({ detail: 'There is none.', status: 409, type: '/problems/no-draft' }), {
+        status: 409,
+        headers: { 'content-type': 'application/problem+json' },
+      });
     if (body) onServer += 1;
-    return Response.json({ version: onServer });
+    gone = false;
+    return Response.json({ version: onServer, changedBy: { id: 'p2', name: 'Lewin Okafor' } });
   };
 
   beforeEach(async () => {
@@ -31,6 +39,7 @@ describe('the draft on the page', () => {
     vi.useFakeTimers();
     sent = [];
     onServer = 1;
+    gone = false;
     const initial = { uploadId: null, recipe: {}, note: '', version: 1 };
     function Page() {
       draft = useDraft('/api/v1/workspaces/w/templates/t/draft', initial);
@@ -64,11 +73,24 @@ describe('the draft on the page', () => {
     onServer = 5;
     await act(async () => draft.change({ note: 'Mine' }));
     await act(async () => vi.advanceTimersByTimeAsync(1000));
-    expect(draft.state).toMatchObject({ kind: 'trouble', stale: true });
+    expect(draft.state).toMatchObject({
+      kind: 'trouble',
+      clash: { kind: 'changed', by: { id: 'p2', name: 'Lewin Okafor' } },
+    });
     expect(onServer).toBe(5);
     await act(async () => draft.keepMine());
     expect(sent.at(-1)).toMatchObject({ method: 'PUT', body: { note: 'Mine', version: 5 } });
     expect(draft.state.kind).toBe('saved');
     expect(draft.version.current).toBe(6);
+  });
+
+  it('says when it was posted or discarded elsewhere, and begins the next with this form when asked to', async () => {
+    gone = true;
+    await act(async () => draft.change({ note: 'Typed on' }));
+    await act(async () => vi.advanceTimersByTimeAsync(1000));
+    expect(draft.state).toMatchObject({ kind: 'trouble', clash: { kind: 'gone' } });
+    await act(async () => draft.keepMine());
+    expect(sent.at(-1)).toMatchObject({ method: 'PUT', body: { note: 'Typed on', version: 1 } });
+    expect(draft.state.kind).toBe('saved');
   });
 });

@@ -90,4 +90,15 @@ describe('the file of the draft', () => {
     await act(async () => file.resume(same));
     expect(asked).toHaveLength(1);
   });
+
+  it('is read again in another unit, and stays as it was when that is refused', async () => {
+    await show(upload('ready'), () => Response.json({ ...upload('reading'), unit: 'in' }));
+    await act(async () => file.readIn('in'));
+    expect(asked).toEqual(['0192f1c4-0000-7000-8000-0000000000c1/unit']);
+    expect(file.sending).toMatchObject({ phase: 'reading', upload: { unit: 'in' } });
+    await act(async () => root.unmount());
+    await show(upload('ready'), () => problem(409, 'own-unit'));
+    await act(async () => file.readIn('in'));
+    expect(file.sending).toMatchObject({ phase: 'ready', trouble: 'In words.', upload: { unit: 'mm' } });
+  });
 });

@@ -43,6 +43,7 @@ export default async function PostPage({ params }: Props) {
       <PostDesk
         apiPath={`/api/v1/workspaces/${ctx.workspace.slug}`}
         roomPath={here}
+        readerId={ctx.person.id}
         draft={draft}
         library={library}
       />

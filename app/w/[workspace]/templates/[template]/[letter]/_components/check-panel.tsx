@@ -3,6 +3,7 @@
 import { Button } from '@/app/_components/button';
 import { ErrorState } from '@/app/_components/error-state';
 import { ProgressBar } from '@/app/_components/progress-bar';
+import { sentenceCase } from '@/app/_components/sentence-case';
 import type { RevisionView } from '@/lib/review/schemas';
 import { useOrderAgain } from '../_hooks/use-room-commands';
 import { useCheckProgress } from '../_hooks/use-room-data';
@@ -18,7 +19,7 @@ export function CheckPanel({ revision }: { revision: RevisionView }) {
   return (
     <section aria-label="Check run" className="border border-rule bg-sheet px-4 py-3 print:hidden">
       <ProgressBar
-        label={queued ? 'Waits for the checker' : sentence(progress.stage ?? 'Being checked')}
+        label={queued ? 'Waits for the checker' : sentenceCase(progress.stage ?? 'Being checked')}
         value={queued ? null : progress.progress}
         detail={queued ? 'in the queue' : undefined}
       />
@@ -44,7 +45,8 @@ function FailedCheck({ revision }: { revision: RevisionView }) {
         ) : null
       }
     >
-      {revision.check.error ?? 'The worker gave no reason.'} {wayOn(revision, mayOrder)}
+      {sentenceCase(revision.check.error ?? 'The worker gave no reason.', revision.mesh.fileName)}{' '}
+      {wayOn(revision, mayOrder)}
     </ErrorState>
   );
 }
@@ -56,5 +58,3 @@ function wayOn({ state, author, can }: RevisionView, mayOrder: boolean): string 
     ? 'Have it checked again; if the reason names the mesh, withdraw the revision and post a mended one.'
     : `Have it checked again; if the reason names the mesh, post the next revision with a mended one, or ask ${author.name}, who posted this one.`;
 }
-
-const sentence = (words: string) => words.charAt(0).toUpperCase() + words.slice(1);

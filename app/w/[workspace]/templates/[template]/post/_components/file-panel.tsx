@@ -1,6 +1,7 @@
 'use client';
 
 import { useState } from 'react';
+import { FileTrigger } from 'react-aria-components';
 import { Button } from '@/app/_components/button';
 import { Digest } from '@/app/_components/digest';
 import { ErrorState } from '@/app/_components/error-state';
@@ -9,6 +10,7 @@ import { formatBytes } from '@/app/_components/format-figure';
 import { Length } from '@/app/_components/length';
 import { ProgressBar } from '@/app/_components/progress-bar';
 import { Select } from '@/app/_components/select';
+import { sentenceCase } from '@/app/_components/sentence-case';
 import type { useUpload } from '../_hooks/use-upload';
 
 type Props = ReturnType<typeof useUpload> & { unit: string; onUnit: (unit: string) => void };
@@ -31,7 +33,7 @@ const formats = {
 };
 
 /** The mesh of the draft: picked, sent, read by the worker; refused with what is wrong and what to do. */
-export function FilePanel({ sending, begin, resume, pause, cancel, unit, onUnit }: Props) {
+export function FilePanel({ sending, begin, resume, pause, cancel, readIn, unit, onUnit }: Props) {
   const [wrongName, setWrongName] = useState<string | null>(null);
   const { upload, phase } = sending;
 
@@ -103,33 +105,73 @@ export function FilePanel({ sending, begin, resume, pause, cancel, unit, onUnit 
           <ProgressBar label="Reading the file: hash, soundness, size" value={null} />
         ) : null}
         {phase === 'ready' && upload.mesh ? <MeshFacts mesh={upload.mesh} /> : null}
+        {takesUnit(upload) ? (
+          <Select
+            label="Unit of the file"
+            help="Another one has the file read again; it is not sent again."
+            options={units}
+            value={upload.unit}
+            onChange={(next) => {
+              onUnit(next);
+              void readIn(next);
+            }}
+            disabled={phase === 'reading'}
+          />
+        ) : null}
         {phase === 'refused' && upload.refusal ? (
           <ErrorState title="This file cannot be used" level={3}>
-            <p>{upload.refusal.message}</p>
-            {upload.refusal.reasons.length > 0 ? (
-              <ul className="mt-2 list-disc pl-5">
-                {upload.refusal.reasons.map((reason) => (
-                  <li key={reason}>{reason}</li>
-                ))}
-              </ul>
-            ) : null}
+            <p>{sentenceCase(upload.refusal.message, upload.fileName)}</p>
+            <Reasons message={upload.refusal.message} reasons={upload.refusal.reasons} />
             <p className="mt-2">Your draft is kept. Mend the file and pick it again.</p>
           </ErrorState>
         ) : null}
-        {sending.trouble ? (
+        {sending.trouble || (wrongName && !sending.needsFile) ? (
           <p role="alert" className="text-sm font-medium text-madder">
-            {sending.trouble}
+            {sending.trouble ?? wrongName}
           </p>
         ) : null}
         <div className="flex flex-wrap gap-2">
           {phase === 'sending' ? <Button onPress={pause}>Pause</Button> : null}
           {phase === 'paused' && !sending.needsFile ? <Button onPress={() => resume()}>Resume</Button> : null}
-          <Button variant="plain" onPress={() => void cancel()}>
-            {phase === 'ready' || phase === 'refused' ? 'Choose another file' : 'Cancel'}
-          </Button>
+          {phase === 'ready' || phase === 'refused' ? (
+            <FileTrigger
+              acceptedFileTypes={accept}
+              onSelect={(list) => {
+                if (list?.[0]) pick(list[0]);
+              }}
+            >
+              <Button variant="plain">Choose another file</Button>
+            </FileTrigger>
+          ) : (
+            <Button variant="plain" onPress={() => void cancel()}>
+              Cancel
+            </Button>
+          )}
         </div>
       </div>
     </div>
+  );
+}
+
+type Upload = NonNullable<Props['sending']['upload']>;
+
+/** True for a file that carries no unit of its own and was read, or was refused for its size in the unit given. */
+function takesUnit({ state, mesh, refusal, fileName }: Upload): boolean {
+  if (state === 'ready') return mesh?.format === 'stl-binary' || mesh?.format === 'stl-ascii';
+  if (state === 'refused') return refusal?.code === 'out_of_range';
+  return state === 'reading' && fileName.toLowerCase().endsWith('.stl');
+}
+
+/** What the engine adds to its sentence; what the sentence says already is not said again. */
+function Reasons({ message, reasons }: { message: string; reasons: readonly string[] }) {
+  const more = reasons.filter((reason) => !message.toLowerCase().includes(reason.toLowerCase()));
+  if (more.length === 0) return null;
+  return (
+    <ul className="mt-2 list-disc pl-5">
+      {more.map((reason) => (
+        <li key={reason}>{sentenceCase(reason)}</li>
+      ))}
+    </ul>
   );
 }
 

@@ -4,12 +4,16 @@ import { useCallback, useEffect, useRef, useState } from 'react';
 import { api, ApiError, explainError } from '@/app/_components/api-client';
 
 export type DraftFields = { uploadId: string | null; recipe: Record<string, unknown>; note: string };
-type Saved = { version: number };
+type Editor = { id: string; name: string };
+type Saved = { version: number; changedBy?: Editor };
+
+/** What this form can no longer be saved over: a newer state of the draft, or nothing, where it was posted or discarded. */
+export type Clash = { kind: 'changed'; by: Editor | null } | { kind: 'gone' };
 
 export type SaveState =
   | { kind: 'saved'; at: number | null }
   | { kind: 'saving' }
-  | { kind: 'trouble'; detail: string; stale: boolean };
+  | { kind: 'trouble'; detail: string; clash: Clash | null };
 
 const restMs = 800;
 
@@ -24,6 +28,25 @@ export function useDraft(path: string, initial: DraftFields & { version: number 
   const dirty = useRef(false);
   const running = useRef<Promise<void> | null>(null);
   const timer = useRef<ReturnType<typeof setTimeout> | null>(null);
+
+  /** Shows a clash, if that is what an answer of the server means; says whether it is one. */
+  const tell = useCallback(
+    async (error: unknown): Promise<boolean> => {
+      if (!(error instanceof ApiError)) return false;
+      const { detail } = explainError(error);
+      if (error.reason === 'no-draft') setState({ kind: 'trouble', detail, clash: { kind: 'gone' } });
+      else if (error.code !== 'precondition_failed') return false;
+      else {
+        const by = await api<Saved>(path).then(
+          ({ changedBy }) => changedBy ?? null,
+          () => null,
+        );
+        setState({ kind: 'trouble', detail, clash: { kind: 'changed', by } });
+      }
+      return true;
+    },
+    [path],
+  );
 
   const save = useCallback(async (): Promise<void> => {
     if (timer.current) clearTimeout(timer.current);
@@ -41,8 +64,8 @@ export function useDraft(path: string, initial: DraftFields & { version: number 
         setState({ kind: 'saved', at: Date.now() });
       } catch (error) {
         dirty.current = true;
-        const stale = error instanceof ApiError && error.code === 'precondition_failed';
-        setState({ kind: 'trouble', detail: explainError(error).detail, stale });
+        if (!(await tell(error)))
+          setState({ kind: 'trouble', detail: explainError(error).detail, clash: null });
         throw error;
       } finally {
         running.current = null;
@@ -50,7 +73,7 @@ export function useDraft(path: string, initial: DraftFields & { version: number 
     })();
     running.current = work.catch(() => undefined);
     return work;
-  }, [path]);
+  }, [path, tell]);
 
   const change = useCallback(
     (part: Partial<DraftFields>) => {
@@ -62,14 +85,18 @@ export function useDraft(path: string, initial: DraftFields & { version: number 
     [save],
   );
 
-  /** Takes the version that the server has now and saves this form over it. */
+  /** Takes the version that the server has now, a new draft where there is none, and saves this form over it. */
   const keepMine = useCallback(async (): Promise<void> => {
     try {
       version.current = (await api<Saved>(path)).version;
     } catch (error) {
-      setState({ kind: 'trouble', detail: explainError(error).detail, stale: true });
+      const { detail } = explainError(error);
+      setState((old) =>
+        old.kind === 'trouble' ? { ...old, detail } : { kind: 'trouble', detail, clash: null },
+      );
       throw error;
     }
+    dirty.current = true;
     await save();
   }, [path, save]);
 
@@ -93,5 +120,5 @@ export function useDraft(path: string, initial: DraftFields & { version: number 
     };
   }, [save]);
 
-  return { state, change, save, keepMine, forget, version };
+  return { state, change, save, keepMine, forget, tell, version };
 }

@@ -182,6 +182,25 @@ export function useUpload(
     take(null);
   }, [hold, take, upload, workspacePath]);
 
+  /** Has the file that is in the store read again in another unit. */
+  const readIn = useCallback(
+    async (unit: string) => {
+      if (!upload) return;
+      setTrouble(null);
+      try {
+        take(
+          await api<UploadView>(`${workspacePath}/uploads/${upload.id}/unit`, {
+            method: 'POST',
+            body: { unit },
+          }),
+        );
+      } catch (error) {
+        setTrouble(explainError(error).detail);
+      }
+    },
+    [take, upload, workspacePath],
+  );
+
   useReading(workspacePath, upload, take);
   useEffect(() => () => stop.current?.abort(), []);
 
@@ -194,7 +213,7 @@ export function useUpload(
     trouble,
     needsFile: phase === 'paused' && !holdsFile,
   };
-  return { sending, begin, resume, pause, cancel };
+  return { sending, begin, resume, pause, cancel, readIn };
 }
 
 const bytesOf = (upload: UploadView, number: number) =>
