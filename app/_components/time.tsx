@@ -26,7 +26,7 @@ export function Time({ at, show = 'both', className }: TimeProps) {
   return (
     <time
       dateTime={date.toISOString()}
-      title={show === 'moment' || show === 'both' ? undefined : moment}
+      title={show === 'moment' || show === 'both' ? zone : moment}
       className={clsx(show !== 'both' && show !== 'moment' && 'whitespace-nowrap', className)}
     >
       {show === 'moment' ? moment : null}

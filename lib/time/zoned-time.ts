@@ -1,18 +1,28 @@
-/** An instant in a zone, with its offset and name, as anything signed shows it: `2026-10-25 02:30:10 +01:00 Europe/Berlin`. */
+const named = (date: Date, timeZone: string, timeZoneName: 'short' | 'longOffset') =>
+  new Intl.DateTimeFormat('en-GB', { timeZone, timeZoneName })
+    .formatToParts(date)
+    .find(({ type }) => type === 'timeZoneName')?.value ?? '';
+
+/**
+ * An instant as mails and papers give it, written as on the pages and then to the second, with offset and zone so that
+ * it stands alone: `25 Oct 2026, 02:30:10 CET (UTC+01:00, Europe/Berlin)`.
+ */
 export function zonedTime(instant: string, timeZone: string): string {
   const date = new Date(instant);
-  const parts = new Intl.DateTimeFormat('en-GB', {
+  const moment = new Intl.DateTimeFormat('en-GB', {
     timeZone,
+    day: 'numeric',
+    month: 'short',
     year: 'numeric',
-    month: '2-digit',
-    day: '2-digit',
     hour: '2-digit',
     minute: '2-digit',
     second: '2-digit',
     hourCycle: 'h23',
-    timeZoneName: 'longOffset',
-  }).formatToParts(date);
-  const get = (type: string) => parts.find((part) => part.type === type)?.value ?? '';
-  const offset = get('timeZoneName').replace('GMT', '') || '+00:00';
-  return `${get('year')}-${get('month')}-${get('day')} ${get('hour')}:${get('minute')}:${get('second')} ${offset} ${timeZone}`;
+  }).format(date);
+  const short = named(date, timeZone, 'short');
+  if (timeZone === 'UTC') return `${moment} ${short}`;
+  const offset = named(date, timeZone, 'longOffset').replace('GMT', '') || '+00:00';
+  // `GMT-5` would only repeat the offset.
+  const name = /^(GMT|UTC)[+-]/.test(short) ? '' : ` ${short}`;
+  return `${moment}${name} (UTC${offset}, ${timeZone})`;
 }

@@ -27,7 +27,7 @@ export function SignaturesTable({ model }: { model: CertificateModel }) {
               <Text style={styles.muted}>{drawable(one.role)}</Text>
             </View>
             <Text style={[styles.figures, { width: secondColumn, paddingRight: 8, paddingTop: 1 }]}>
-              {zonedTime(one.signedAt, one.timeZone).replace(/ (?=[+-])/, '\n')}
+              {zonedTime(one.signedAt, model.timeZone).replace(' (', '\n(')}
             </Text>
             <Text style={{ flex: 1 }}>
               <Text style={styles.strong}>{drawable(one.gateName)}. </Text>

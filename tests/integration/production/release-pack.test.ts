@@ -137,7 +137,7 @@ describe('the release pack', () => {
       expect(text).toContain(meaning);
       expect(text).toContain(content_digest);
     }
-    expect(text).toMatch(/\d{4}-\d\d-\d\d \d\d:\d\d:\d\d [+-]\d\d:\d\d/);
+    expect(text).toMatch(/\d{1,2} \w{3} \d{4}, \d\d:\d\d:\d\d \w+ \(UTC[+-]\d\d:\d\d, Europe\/Lisbon\)/);
     expect(text).toContain('Europe/Lisbon');
     expect(text).toContain(sha256(posted.bytes));
     expect(text).toContain('test pull');

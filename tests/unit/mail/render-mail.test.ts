@@ -185,8 +185,8 @@ it('every template of the union is rendered here', () => {
 
 it('a signature shows its local time with offset and zone', () => {
   const { text, html } = renderMail(all['revision-signed'], origin);
-  expect(text).toContain('2026-10-25 02:30:10 +02:00 Europe/Berlin');
-  expect(visible(html)).toContain('2026-10-25 02:30:10 +02:00 Europe/Berlin');
+  expect(text).toContain('25 Oct 2026, 02:30:10 CEST (UTC+02:00, Europe/Berlin)');
+  expect(visible(html)).toContain('25 Oct 2026, 02:30:10 CEST (UTC+02:00, Europe/Berlin)');
   expect(text).toContain('ab'.repeat(32));
 });
 
