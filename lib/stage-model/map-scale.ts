@@ -24,6 +24,9 @@ export interface MapScale {
   isoStep: number;
 }
 
+/** Place in the colour table from which on hatching is dark, as light strokes would not show. */
+export const STROKES_TURN = 0.62;
+
 export function draftMapScale({ draftDeg }: Pick<StageLimits, 'draftDeg'>): MapScale {
   return { max: draftScaleMaxDeg(draftDeg), limit: draftDeg, dark: 'low', isoStep: 5 };
 }

@@ -3,7 +3,7 @@
 import clsx from 'clsx';
 import { useId, type ReactNode } from 'react';
 import { cividisCss } from '@/lib/stage-model/cividis';
-import { placeOnScale, type MapScale } from '@/lib/stage-model/map-scale';
+import { placeOnScale, STROKES_TURN, type MapScale } from '@/lib/stage-model/map-scale';
 import type { MapHistogram } from '@/lib/stage-model/stage-model-meta';
 
 const WIDTH = 280;
@@ -141,9 +141,6 @@ function Hatch(props: {
       />
     ));
 }
-
-/** Place in the colour table from which on strokes are dark; the shader's own threshold. */
-export const STROKES_TURN = 0.62;
 
 /** Ends, thirds and the limit; where the limit's figure would run into another, that one is left out. */
 export function ticksOf({ max, limit }: Pick<MapScale, 'max' | 'limit'>): number[] {

@@ -10,10 +10,9 @@ import {
 } from 'three';
 import { cividisTable } from '@/lib/stage-model/cividis';
 import { FLAT_FROM_DEG } from '@/lib/stage-model/draft-scale';
-import type { MapScale } from '@/lib/stage-model/map-scale';
+import { STROKES_TURN, type MapScale } from '@/lib/stage-model/map-scale';
 import { LAYERS_FROM_DEG, LAYERS_TO_DEG, TRAP_FROM_MM } from '@/lib/stage-model/shown-range';
 import { NO_TRAP_MM } from './decode-stage-model';
-import { STROKES_TURN } from './scale-legend';
 import type { StageMap } from './stage-maps';
 
 /** Colours of the stage as CSS text, read from the page's theme. */
