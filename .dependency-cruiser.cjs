@@ -33,6 +33,17 @@ module.exports = {
       to: { path: '^(app|db|lib|realtime|tests)/', pathNot: '^lib/formability/' },
     },
     {
+      name: 'engine-starts-processes-in-one-place',
+      comment:
+        'A STEP file is converted in a process of its own; nothing else of the engine starts one or opens sockets.',
+      severity: 'error',
+      from: {
+        path: '^lib/formability/',
+        pathNot: '^lib/formability/parse/step/(run-converter\\.ts|step-process\\.mjs)$',
+      },
+      to: { path: '^(node:)?(child_process|net|http|https|dgram|tls)$' },
+    },
+    {
       name: 'raw-client-stays-home',
       comment:
         'The untenanted client may be imported by db, lib/auth, lib/jobs, the health probe and commands (which close it) only.',

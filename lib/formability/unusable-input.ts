@@ -12,8 +12,12 @@ export type UnusableCode =
   | 'invalid_recipe'
   | 'stopped';
 
+/** Control characters, line ends, and those that turn the direction of writing. */
+const UNPRINTABLE = /[\u0000-\u001f\u007f-\u009f\u2028-\u202e\u2066-\u2069]+/g;
+
 /**
- * Thrown for input that no report can be made of. `message` is one line: what, where, what to do;
+ * Thrown for input that no report can be made of. `message` is one line, whatever the file put into it: what, where,
+ * what to do;
  * `reasons` holds the single facts behind it.
  */
 export class UnusableInput extends Error {
@@ -21,7 +25,7 @@ export class UnusableInput extends Error {
   readonly reasons: string[];
 
   constructor(code: UnusableCode, message: string, reasons: string[] = []) {
-    super(message);
+    super(message.replace(UNPRINTABLE, ' '));
     this.name = 'UnusableInput';
     this.code = code;
     this.reasons = reasons;
