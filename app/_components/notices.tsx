@@ -27,11 +27,19 @@ function subscribe(listener: () => void): () => void {
   return () => listeners.delete(listener);
 }
 
+/** A notice may lie behind a dialog: it leaves only when there is none, so that it can be read after it. */
+function leaveLater(id: number): void {
+  window.setTimeout(() => {
+    if (document.querySelector('[role="dialog"], [role="alertdialog"]')) leaveLater(id);
+    else dismissNotice(id);
+  }, lifeMs);
+}
+
 /** Tells the person what just happened; returns the notice's id. A `done` notice leaves after 10 s. */
 export function notify(text: string, options: Partial<Pick<Notice, 'kind' | 'action'>> = {}): number {
   const notice: Notice = { id: nextId++, text, kind: options.kind ?? 'done', action: options.action };
   set([...notices.slice(-2), notice]);
-  if (notice.kind === 'done') window.setTimeout(() => dismissNotice(notice.id), lifeMs);
+  if (notice.kind === 'done') leaveLater(notice.id);
   return notice.id;
 }
 
@@ -39,7 +47,10 @@ export function dismissNotice(id: number): void {
   if (notices.some((notice) => notice.id === id)) set(notices.filter((notice) => notice.id !== id));
 }
 
-/** The live regions, mounted once by `Providers`; they exist before the first notice so that it is read out. */
+/**
+ * The live regions, mounted once by `Providers`; they exist before the first notice so that it is read out. They stand
+ * to the side and below the layer of dialogs: nothing that is being filled in is ever covered.
+ */
 export function NoticeRegion() {
   const shown = useSyncExternalStore(
     subscribe,
@@ -47,15 +58,15 @@ export function NoticeRegion() {
     () => none,
   );
   return (
-    <div className="pointer-events-none fixed inset-x-0 bottom-0 z-50 flex flex-col items-center gap-2 p-3 print:hidden">
-      <div role="status" aria-live="polite" className="flex w-full flex-col items-center gap-2">
+    <div className="pointer-events-none fixed inset-x-0 bottom-0 z-30 flex flex-col gap-2 p-3 print:hidden sm:right-auto sm:w-96">
+      <div role="status" aria-live="polite" className="flex w-full flex-col gap-2">
         {shown
           .filter((notice) => notice.kind === 'done')
           .map((notice) => (
             <NoticeCard key={notice.id} notice={notice} />
           ))}
       </div>
-      <div role="alert" className="flex w-full flex-col items-center gap-2">
+      <div role="alert" className="flex w-full flex-col gap-2">
         {shown
           .filter((notice) => notice.kind === 'trouble')
           .map((notice) => (
@@ -70,7 +81,7 @@ function NoticeCard({ notice }: { notice: Notice }) {
   const trouble = notice.kind === 'trouble';
   return (
     <div
-      className={`arrive pointer-events-auto flex w-full max-w-lg items-start gap-3 border border-l-4 bg-sheet px-4 py-2.5 text-base shadow-lift ${trouble ? 'border-madder' : 'border-verdigris'}`}
+      className={`arrive pointer-events-auto flex w-full items-start gap-3 border border-l-4 bg-sheet px-4 py-2.5 text-base shadow-lift ${trouble ? 'border-madder' : 'border-verdigris'}`}
     >
       <span aria-hidden className={trouble ? 'text-madder' : 'text-verdigris'}>
         {trouble ? '▲' : '✓'}

@@ -14,7 +14,7 @@ import { sendNote } from './send-note';
 const againMs = 15_000;
 const none: readonly OutgoingEntry[] = [];
 
-const OutboxContext = createContext<NoteOutbox | null>(null);
+export const OutboxContext = createContext<NoteOutbox | null>(null);
 
 /** Holds the notes that are on their way, and sends them when the connection is back. */
 export function OutboxProvider({ personId, children }: { personId: string; children: ReactNode }) {

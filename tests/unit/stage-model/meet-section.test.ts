@@ -6,7 +6,7 @@ import { frustum } from './shapes';
 /** Two frusta 30 mm high, 20 mm wide, 60 mm apart in y, and a plate of 4 mm under both when wanted. */
 function pair(withPlate: boolean): { positions: Float32Array } {
   const shift = (soup: Float32Array, dy: number) => soup.map((v, i) => (i % 3 === 1 ? v + dy : v));
-  const parts = [shift(frustum(20, 30, 5), -30), shift(frustum(20, 30, 5), 30)];
+  const parts: Float32Array[] = [shift(frustum(20, 30, 5), -30), shift(frustum(20, 30, 5), 30)];
   if (withPlate) parts.push(frustum(100, 4, 5));
   const positions = new Float32Array(parts.reduce((sum, part) => sum + part.length, 0));
   let at = 0;
