@@ -6,12 +6,21 @@ import { ButtonLink } from '../_components/link';
 import { SectionDrawing } from './_components/section-drawing';
 
 const nameOf = (id: string) => checkName(id).toLowerCase();
+const physics = ['sheet', 'air', 'skin', 'walls', 'heat'] as const;
+const left: readonly string[] = NOT_COMPUTED;
 /** In the words of a sentence: a pocket without a vent is what the check on vents finds. */
-const checkedAlways = ['draft', 'undercuts', 'pockets without a vent', 'layer lines', 'edges', 'draw'];
+const checked = ['draft', 'undercuts', 'pockets without a vent', 'layer lines', 'edges', 'draw'].concat(
+  physics.filter((id) => !left.includes(id)).map(nameOf),
+);
 const sentence = (names: readonly string[]) => {
-  const words = `${names.slice(0, -1).join(', ')} and ${names[names.length - 1]}`;
+  const last = names[names.length - 1];
+  const words = names.length > 1 ? `${names.slice(0, -1).join(', ')} and ${last}` : last;
   return words.charAt(0).toUpperCase() + words.slice(1);
 };
+const missing =
+  left.length > 0
+    ? ` ${sentence(left.map(nameOf))} ${left.length > 1 ? 'are' : 'is'} not computed yet, and every revision says so.`
+    : '';
 
 const promises = [
   {
@@ -20,7 +29,7 @@ const promises = [
   },
   {
     title: 'See whether it will form',
-    text: `${sentence(checkedAlways)} are checked on every revision: what was measured, where, what is wanted, and what to change. ${sentence(NOT_COMPUTED.map(nameOf))} are not computed yet, and every revision says so.`,
+    text: `${sentence(checked)} are checked on every revision: what was measured, where, what is wanted, and what to change.${missing}`,
   },
   {
     title: 'Know what was agreed',
