@@ -21,8 +21,8 @@ export interface Pockets {
 
 /** In front of a facet is so far along its level normal, in cells: far enough that the cell looked at is not behind it. */
 const STEP = 1.25;
-/** Places in a facet that are looked at: its middle, then near its lowest corner (weights of that corner). */
-const LOWEST_CORNER = [1 / 3, 0.9];
+/** A facet is looked at in its middle, then so far on the way from there to its lowest corner. */
+const NEAR_CORNER = 0.85;
 
 /**
  * The pit that each facet looks into, from the flood that found the pits: a facet lies in a pit where the flood stands
@@ -41,41 +41,41 @@ export function mapPockets(
   const { cell, nx: columns, ny: rows, x0, y0 } = grid;
   const spillMm = new Float32Array(triangles).fill(NaN);
   const unvented = new Uint8Array(triangles);
-  let lowest = Infinity;
   let highest = -Infinity;
+  const wet = new Uint8Array(level.length);
   for (let c = 0; c < level.length; c++) {
     if (level[c] - surface[c] <= PIT_MM) continue;
+    wet[c] = 1;
     if (level[c] > highest) highest = level[c];
-    if (surface[c] < lowest) lowest = surface[c];
   }
   if (highest === -Infinity) return { spillMm, unvented };
   for (let t = 0; t < triangles; t++) {
-    const nz = facets.nz[t];
-    if (nz < -SIN_VERTICAL || facets.bed[t] || facets.area[t] === 0) continue;
     const a = index[3 * t] * 3;
     const b = index[3 * t + 1] * 3;
     const d = index[3 * t + 2] * 3;
     let low = a;
     if (p[b + 2] < p[low + 2]) low = b;
     if (p[d + 2] < p[low + 2]) low = d;
-    if (p[low + 2] >= highest - PIT_MM) continue;
-    if (p[a + 2] < lowest && p[b + 2] < lowest && p[d + 2] < lowest) continue;
+    const foot = p[low + 2];
+    if (foot >= highest - PIT_MM || facets.nz[t] < -SIN_VERTICAL || facets.bed[t]) continue;
+    const mx = (p[a] + p[b] + p[d]) / 3;
+    const my = (p[a + 1] + p[b + 1] + p[d + 1]) / 3;
+    const mz = (p[a + 2] + p[b + 2] + p[d + 2]) / 3;
     const flat = Math.sqrt(facets.nx[t] * facets.nx[t] + facets.ny[t] * facets.ny[t]);
-    const stepX = flat > 1e-6 ? (facets.nx[t] / flat) * STEP * cell : 0;
-    const stepY = flat > 1e-6 ? (facets.ny[t] / flat) * STEP * cell : 0;
-    for (let k = 0; k < LOWEST_CORNER.length; k++) {
-      const own = LOWEST_CORNER[k];
-      const rest = (1 - own) / 2;
-      const wa = low === a ? own : rest;
-      const wb = low === b ? own : rest;
-      const wd = low === d ? own : rest;
-      const i = Math.floor((wa * p[a] + wb * p[b] + wd * p[d] + stepX - x0) / cell);
-      const j = Math.floor((wa * p[a + 1] + wb * p[b + 1] + wd * p[d + 1] + stepY - y0) / cell);
+    const step = flat > 1e-6 ? STEP / flat : 0;
+    const i0 = (mx - x0) / cell + step * facets.nx[t];
+    const j0 = (my - y0) / cell + step * facets.ny[t];
+    // From the middle to near the lowest corner, in cells; a facet about as small as a cell is told by its middle.
+    const di = ((p[low] - mx) / cell) * NEAR_CORNER;
+    const dj = ((p[low + 1] - my) / cell) * NEAR_CORNER;
+    const dz = (foot - mz) * NEAR_CORNER;
+    const looks = Math.abs(di) + Math.abs(dj) - dz / cell > 1 ? 2 : 1;
+    for (let k = 0; k < looks; k++) {
+      const i = Math.floor(i0 + k * di);
+      const j = Math.floor(j0 + k * dj);
       if (i < 0 || j < 0 || i >= columns || j >= rows) continue;
       const c = j * columns + i;
-      if (level[c] - surface[c] <= PIT_MM || level[c] - p[low + 2] <= PIT_MM) continue;
-      const z = wa * p[a + 2] + wb * p[b + 2] + wd * p[d + 2];
-      if (z < surface[c] - PIT_MM) continue;
+      if (wet[c] === 0 || level[c] - foot <= PIT_MM || mz + k * dz < surface[c] - PIT_MM) continue;
       spillMm[t] = level[c];
       unvented[t] = flood.unvented[c];
       break;
