@@ -9,9 +9,6 @@ const MISSING: Partial<Record<CheckId, { unit: string; needs: string }>> = {
   heat: { unit: '°C', needs: 'the temperature of the template over the pulls' },
 };
 
-/** Checks that this version never runs. */
-export const NOT_COMPUTED = Object.keys(MISSING) as CheckId[];
-
 /** A check that is honest about not having been made; undefined for those that are. */
 export function notRun(id: CheckId, geometryOnly: boolean): Check | undefined {
   const missing = MISSING[id];
