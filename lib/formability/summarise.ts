@@ -21,7 +21,9 @@ function title(report: Report, name: string): string {
   const file = `${name}  ${input.triangles} facets, ${input.format}, ${input.unit}, sha256 ${input.sha256.slice(0, 12)}`;
   const { sheet, print } = recipe;
   const job = `${sheet.gaugeMm} mm ${SHEETS[sheet.material].name} over ${FILAMENTS[print.material].name}, ${print.layerMm} mm layers, ${print.sanded ? 'sanded' : 'not sanded'}`; // prettier-ignore
-  return `${file}\n${job}`;
+  const { deflectionMm, leftOut } = input;
+  const cut = deflectionMm === undefined ? [] : [`curved surfaces cut into facets within ${fixed(deflectionMm, 3)} mm`]; // prettier-ignore
+  return [file, job, ...cut, ...(leftOut ?? []).map((one) => `left out: ${one}`)].join('\n');
 }
 
 function figures(report: Report): string[] {

@@ -1,9 +1,16 @@
 import { beforeAll, describe, expect, it, vi } from 'vitest';
 import { tartTray } from '@/db/seed/templates';
+import type { EffectiveRecipe } from '@/lib/formability/recipe';
+import type { Report } from '@/lib/formability/report';
 import { createTemplate } from '@/lib/review/create-template';
+import { locateFile } from '@/lib/review/locate-file';
 import { recheckRevision } from '@/lib/review/recheck-revision';
 import { viewRevision } from '@/lib/review/view-revision';
 import { viewUpload } from '@/lib/review/view-upload';
+import { frustum } from '@/tests/fixtures/meshes/solids';
+import { scaled } from '@/tests/fixtures/meshes/triangles';
+import { packed, plain3mf } from '@/tests/fixtures/meshes/write-3mf';
+import { frustumStep } from '@/tests/fixtures/meshes/write-step';
 import {
   freshDatabase,
   freshObjectStore,
@@ -93,6 +100,48 @@ async function removeObject(key: string): Promise<void> {
   const { innerClient } = await import('@/lib/storage/client');
   await innerClient().send(new DeleteObjectCommand({ Bucket: objects.bucket, Key: key }));
 }
+
+describe('a 3MF and a STEP file', { timeout: 240_000 }, () => {
+  const inches = plain3mf(scaled(frustum(60, 40, 20, 5), 1 / 25.4), 'unit="inch"');
+
+  it.each([
+    // The name says nothing, and neither does the unit that was given with the file.
+    { fileName: 'lid.stl', bytes: inches, format: '3mf', unit: 'in', out: 'lid.stl.3mf', type: 'model/3mf' },
+    { fileName: 'lid.stp', bytes: frustumStep(60, 40, 20, 5), format: 'step', unit: 'mm', out: 'lid.stp', type: 'model/step' }, // prettier-ignore
+  ])('$format is read, posted, checked, drawn and handed out as its exact bytes', async (given) => {
+    const { fileName, bytes, format, unit } = given;
+    const { revisionId, uploadId } = await postFile(database, house, { fileName, bytes });
+    const designer = await house.enter('designer');
+    const { mesh } = await viewUpload(designer, uploadId);
+    expect(mesh).toMatchObject({ format, unit, triangles: 12 });
+    expect(mesh!.boundsMm.max[0]).toBeCloseTo(30, 3);
+    expect(await settledJob(database, revisionId)).toMatchObject({ state: 'done', attempt: 1 });
+    const { rows } = await database.query<{ body: Report; recipe: EffectiveRecipe; kinds: string[] }>(
+      `select p.body, c.body as recipe,
+         (select array_agg(d.kind::text order by d.kind::text) from derivatives d where d.mesh_id = r.mesh_id) as kinds
+       from revisions r join recipes c on c.id = r.recipe_id
+       join check_runs k on k.revision_id = r.id join reports p on p.id = k.report_id where r.id = $1`,
+      [revisionId],
+    );
+    expect(rows[0].body.input).toMatchObject({ format, unit, bodies: 1, bytes: bytes.length });
+    expect(rows[0].recipe.mesh.unit).toBe(unit);
+    expect(rows[0].body.mesh.volumeMm3).toBeCloseTo(44_582.1, 0);
+    expect(rows[0].kinds).toEqual(['model', 'picture', 'thumbnail']);
+    const answer = await fetch(await locateFile(await house.enter('lead'), revisionId, 'mesh'));
+    expect(answer.headers.get('content-type')).toBe(given.type);
+    expect(answer.headers.get('content-disposition')).toContain(`"${given.out}"`);
+    expect(Buffer.compare(Buffer.from(await answer.arrayBuffer()), Buffer.from(bytes))).toBe(0);
+  });
+
+  it.each([
+    ['dtd.3mf', packed('<!DOCTYPE model><model/>'), 'unsupported', /document type/],
+    ['cut.step', frustumStep(60, 40, 20, 5).slice(0, 3000), 'truncated', /END-ISO-10303-21/],
+  ] as const)('%s is refused in words', async (fileName, bytes, code, words) => {
+    const { upload } = await readyUpload(database, house, { fileName, bytes });
+    expect(upload).toMatchObject({ state: 'refused', refusal: { code } });
+    expect(upload.refusal!.message).toMatch(words);
+  });
+});
 
 describe('two workers side by side', { timeout: 240_000 }, () => {
   it('do every job once', async () => {

@@ -69,6 +69,10 @@ describe('the effective recipe', () => {
       },
     ]);
   });
+
+  it('lets the unit of a file that names its own stand against the draft’s', () => {
+    expect(effectiveRecipe({ mesh: { unit: 'in' } }, {}, 'mm', true).mesh.unit).toBe('mm');
+  });
 });
 
 describe('a recipe in words', () => {
