@@ -79,7 +79,7 @@ function decimalsOf(value: number): number {
 
 function rangeProblem(value: number | null, min?: number, max?: number, unit = ''): string | undefined {
   if (value === null) return undefined;
-  if (min !== undefined && value < min) return `Write ${min} ${unit} or more.`.replace('  ', ' ');
-  if (max !== undefined && value > max) return `Write ${max} ${unit} or less.`.replace('  ', ' ');
+  if (min !== undefined && value < min) return `At least ${min}${unit && ` ${unit}`}.`;
+  if (max !== undefined && value > max) return `At most ${max}${unit && ` ${unit}`}.`;
   return undefined;
 }

@@ -62,7 +62,7 @@ describe('fields', () => {
 
   it('name a limit that a number breaks', () => {
     const html = render(<NumberField label="Gauge" unit="mm" value={9} max={3} onChange={() => {}} />);
-    expect(text(html)).toContain('Write 3 mm or less.');
+    expect(text(html)).toContain('At most 3 mm.');
   });
 
   it('show the chosen option of a select', () => {

@@ -49,7 +49,7 @@ export function PostDesk({ apiPath, roomPath, readerId, draft, library }: Props)
     resolver: recipeResolver,
     mode: 'onBlur',
   });
-  const { watch, setValue, getValues, control, trigger, setError } = form;
+  const { watch, setValue, getValues, control, trigger, setError, formState } = form;
 
   useEffect(() => {
     const subscription = watch((values) => change({ recipe: structuredClone(values) }));
@@ -152,7 +152,7 @@ export function PostDesk({ apiPath, roomPath, readerId, draft, library }: Props)
                 {trouble}
               </p>
             ) : null}
-            <SaveLine state={state} />
+            <SaveLine state={state} marked={Object.keys(formState.errors).length > 0 || trouble !== null} />
             <DiscardDraft
               apiPath={`${templatePath}/draft`}
               templatePath={roomPath}

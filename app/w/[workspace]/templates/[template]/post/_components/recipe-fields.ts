@@ -3,7 +3,16 @@ import { SHEETS } from '@/lib/formability/materials/sheets';
 
 type Base = { path: string; label: string; help: string };
 export type RecipeField =
-  | (Base & { kind: 'number'; unit?: string; min: number; max: number; step: number; whole?: boolean })
+  | (Base & {
+      kind: 'number';
+      unit?: string;
+      min: number;
+      max: number;
+      step: number;
+      whole?: boolean;
+      /** An empty field has a meaning of its own, which the help says. */
+      mayBeEmpty?: boolean;
+    })
   | (Base & { kind: 'choice'; options: { value: string; label: string; detail?: string }[] })
   | (Base & { kind: 'yes-no' });
 
@@ -42,13 +51,16 @@ export const recipeSections: RecipeSection[] = [
         [0, 20, 0.05],
         'The formed part may be no thinner than this anywhere.',
       ),
-      number(
-        'sheet.formingC',
-        'Forming temperature',
-        '°C',
-        [20, 400, 1],
-        'Of the sheet when it meets the template; empty takes the middle of the material’s window. An estimate until a test pull proves it.',
-      ),
+      {
+        ...number(
+          'sheet.formingC',
+          'Forming temperature',
+          '°C',
+          [20, 400, 1],
+          'Of the sheet when it meets the template; empty takes the middle of the material’s window. An estimate until a test pull proves it.',
+        ),
+        mayBeEmpty: true,
+      } as RecipeField,
     ],
   },
   {
