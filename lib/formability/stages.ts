@@ -9,6 +9,7 @@ const WEIGHT = {
   vents: 5,
   air: 5,
   pits: 10,
+  sort: 4,
   undercut: 10,
   facets: 10,
   walls: 8,

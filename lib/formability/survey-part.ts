@@ -4,6 +4,7 @@ import { buildColumns, type Columns } from './dexel/columns';
 import { forgetFacets } from './dexel/forget-facets';
 import { makeGrid } from './dexel/grid';
 import { rasterise } from './dexel/raster';
+import { buildFacetGrid } from './measures/facet-grid';
 import { findAirTraps } from './measures/find-air-traps';
 import { findSpacing } from './measures/find-spacing';
 import { findUndercuts, type Undercuts } from './measures/find-undercuts';
@@ -71,14 +72,31 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     refineDepth(mesh, found.regions, grid.cell, shells.ofFacet);
     return found;
   });
+  const facetGrid = stages.run('sort', () => buildFacetGrid(mesh, facets));
   const { traps, flood, spacing } = stages.run('pits', () => ({
     ...findAirTraps(holes.surface, grid, holes.vents),
-    spacing: findSpacing(holes.surface, grid, size[2]),
+    spacing: findSpacing(mesh, facetGrid, holes.surface, grid),
   }));
   const { visibility, draft } = stages.run('facets', () => ({
     visibility: findVisibility(mesh, facets, columns, air, perFacet),
     draft: measureDraft(facets),
   }));
-  const walls = stages.run('walls', () => measureWalls(mesh, facets, columns, air, visibility, holes.bore));
-  return { prepared, facets, columns, air, undercuts, holes, traps, flood, spacing, visibility, draft, walls, size };
+  const walls = stages.run('walls', () =>
+    measureWalls(mesh, facets, facetGrid, columns, air, visibility, holes.bore),
+  );
+  return {
+    prepared,
+    facets,
+    columns,
+    air,
+    undercuts,
+    holes,
+    traps,
+    flood,
+    spacing,
+    visibility,
+    draft,
+    walls,
+    size,
+  };
 }

@@ -1,5 +1,9 @@
 import { centreX, centreY, type Grid } from '../dexel/grid';
+import type { Mesh } from '../mesh/mesh';
 import type { Point, Spacing } from '../report';
+import type { FacetGrid } from './facet-grid';
+import { findValleys } from './find-valleys';
+import { measureGap } from './measure-gap';
 
 /** Neighbours lower than this over their common floor are not towers. */
 const LEAST_HEIGHT_MM = 1;
@@ -13,56 +17,60 @@ interface Island {
   top: number;
 }
 
+/** A cut is made so far above the floor, or below the top, mm: the floor itself lies in no wall. */
+const CUT_MM = 0.01;
+/** Round the two nearest cells, walls are looked for this far, in cells and mm. */
+const REACH_CELLS = 6;
+const REACH_MM = 1.5;
+/** Two bodies are parted by a valley where they meet within this below its floor, mm. */
+const VALLEY_MM = 0.1;
+
 /**
- * Gaps between neighbouring towers: islands of H above the bed, and above every wide flat floor (a common plate).
- * The gap at the bed is taken where the two are nearest at that floor, the gap at the top at the height of the lower.
+ * Gaps between neighbouring towers: islands of H above the bed, and above the floor of every valley between bodies (a
+ * common plate, a groove, a saddle). The gap at the bed is the nearest distance of the two walls just above that
+ * floor, the gap at the top that at the height of the lower; both are cut from the mesh, the grid only says where.
  */
-export function findSpacing(surface: Float64Array, grid: Grid, heightMm: number): Spacing[] {
+export function findSpacing(mesh: Mesh, facets: FacetGrid, surface: Float64Array, grid: Grid): Spacing[] {
   const found: Spacing[] = [];
-  for (const floor of floorLevels(surface, heightMm)) {
-    const label = new Int32Array(surface.length).fill(-1);
+  const label = new Int32Array(surface.length);
+  const below = new Int32Array(surface.length);
+  for (const floor of findValleys(surface, grid, LEAST_HEIGHT_MM, MOST_LEVELS)) {
     const islands = findIslands(surface, grid, floor + LEAST_HEIGHT_MM / 20, label);
     if (islands.length < 2) continue;
-    const pairs = nearestPairs(grid, label);
+    if (floor > 0) findIslands(surface, grid, Math.max(0, floor - VALLEY_MM), below);
+    const pairs = nearestPairs(grid, label, islands, floor + LEAST_HEIGHT_MM);
     for (const pair of [...pairs.values()].sort((p, q) => p.gap - q.gap).slice(0, MOST_PAIRS)) {
       const [a, b] = [islands[pair.a], islands[pair.b]];
+      // Parted by a lower valley: told there.
+      if (floor > 0 && below[a.cells[0]] !== below[b.cells[0]]) continue;
       const top = Math.min(a.top, b.top);
       const height = top - floor;
       if (height < LEAST_HEIGHT_MM || pair.gap <= 0) continue;
-      const between = nearestAt(surface, grid, a, b, top);
+      const cut = (z: number, p: number, q: number) =>
+        measureGap(mesh, facets, z, [centreX(grid, p), centreY(grid, p)], [centreX(grid, q), centreY(grid, q)], REACH_CELLS * grid.cell + REACH_MM); // prettier-ignore
+      const atFloor = cut(floor + CUT_MM, pair.from, pair.to);
+      const gapAtBedMm = atFloor ? atFloor.gap : pair.gap;
+      const upper = nearestAt(surface, grid, a, b, top);
+      const atTop = cut(top - CUT_MM, upper.cells[0], upper.cells[1]);
+      const point = (at: [number, number] | undefined, c: number): Point =>
+        at ? [at[0], at[1], top] : [centreX(grid, c), centreY(grid, c), surface[c]];
       found.push({
-        gapMm: Math.max(between.gap, pair.gap),
-        gapAtBedMm: pair.gap,
+        gapMm: Math.max(atTop ? atTop.gap : upper.gap, gapAtBedMm),
+        gapAtBedMm,
         heightMm: height,
-        heightOverGap: height / pair.gap,
-        between: between.points,
+        heightOverGap: height / gapAtBedMm,
+        between: [point(atTop?.from, upper.cells[0]), point(atTop?.to, upper.cells[1])],
       });
     }
   }
   return found.sort((a, b) => b.heightOverGap - a.heightOverGap).slice(0, MOST_PAIRS);
 }
 
-/** The bed, and heights at which much of the surface lies flat. */
-function floorLevels(surface: Float64Array, heightMm: number): number[] {
-  const step = Math.max(heightMm / 400, 1e-6);
-  const bins = new Uint32Array(402);
-  let covered = 0;
-  for (const h of surface) {
-    if (h <= 0) continue;
-    covered++;
-    bins[Math.min(401, Math.floor(h / step))]++;
-  }
-  const floors: { at: number; cells: number }[] = [];
-  for (let b = 1; b < 360; b++)
-    if (bins[b] > covered * 0.08) floors.push({ at: (b + 1) * step, cells: bins[b] });
-  floors.sort((p, q) => q.cells - p.cells);
-  return [0, ...floors.slice(0, MOST_LEVELS - 1).map((floor) => floor.at)];
-}
-
 function findIslands(surface: Float64Array, grid: Grid, above: number, label: Int32Array): Island[] {
   const { nx, ny } = grid;
   const islands: Island[] = [];
   const queue = new Int32Array(surface.length);
+  label.fill(-1);
   let end = 0;
   for (let first = 0; first < surface.length; first++) {
     if (label[first] >= 0 || surface[first] <= above) continue;
@@ -92,17 +100,22 @@ interface Pair {
   a: number;
   b: number;
   gap: number;
+  /** Cells of a and b between which it is. */
+  from: number;
+  to: number;
 }
 
-/** Spreads every island outwards cell by cell; where two fronts meet lies the gap between those two. */
-function nearestPairs(grid: Grid, label: Int32Array): Map<string, Pair> {
+/** Spreads every island that rises to `least` outwards cell by cell; where two fronts meet lies the gap between those two. */
+function nearestPairs(grid: Grid, label: Int32Array, islands: Island[], least: number): Map<string, Pair> {
   const { nx, ny, cell } = grid;
   const owner = label.slice();
   const source = new Int32Array(label.length);
   let front: number[] = [];
   for (let c = 0; c < label.length; c++) {
     source[c] = c;
-    if (label[c] >= 0) front.push(c);
+    if (label[c] < 0) continue;
+    if (islands[label[c]].top < least) owner[c] = -1;
+    else if (onRim(grid, label, c)) front.push(c);
   }
   const far = (a: number, b: number) =>
     Math.hypot((a % nx) - (b % nx), Math.floor(a / nx) - Math.floor(b / nx));
@@ -120,11 +133,13 @@ function nearestPairs(grid: Grid, label: Int32Array): Map<string, Pair> {
           source[n] = source[c];
           next.push(n);
         } else if (owner[n] !== owner[c]) {
-          const [a, b] = owner[n] < owner[c] ? [owner[n], owner[c]] : [owner[c], owner[n]];
+          const turned = owner[n] < owner[c];
+          const [a, b] = turned ? [owner[n], owner[c]] : [owner[c], owner[n]];
           const gap = Math.max(0, far(source[c], source[n]) - 1) * cell;
           const known = pairs.get(`${a},${b}`);
-          if (!known || gap < known.gap) pairs.set(`${a},${b}`, { a, b, gap });
-        } else if (label[n] < 0 && far(n, source[c]) < far(n, source[n]) - 1e-9) {
+          const [from, to] = turned ? [source[n], source[c]] : [source[c], source[n]];
+          if (!known || gap < known.gap) pairs.set(`${a},${b}`, { a, b, gap, from, to });
+        } else if (label[n] !== owner[c] && far(n, source[c]) < far(n, source[n]) - 1e-9) {
           source[n] = source[c];
           next.push(n);
         }
@@ -135,14 +150,26 @@ function nearestPairs(grid: Grid, label: Int32Array): Map<string, Pair> {
   return pairs;
 }
 
-/** The nearest points of two islands at a height, found coarsely and then by going to and fro. */
+/** An island's cells with a neighbour outside it: only they spread. */
+function onRim({ nx, ny }: Grid, label: Int32Array, c: number): boolean {
+  const i = c % nx;
+  const own = label[c];
+  return (
+    (i > 0 && label[c - 1] !== own) ||
+    (i + 1 < nx && label[c + 1] !== own) ||
+    (c >= nx && label[c - nx] !== own) ||
+    (c < nx * (ny - 1) && label[c + nx] !== own)
+  );
+}
+
+/** The nearest cells of two islands at a height, found coarsely and then by going to and fro. */
 function nearestAt(
   surface: Float64Array,
   grid: Grid,
   a: Island,
   b: Island,
   z: number,
-): { gap: number; points: [Point, Point] } {
+): { gap: number; cells: [number, number] } {
   const { nx, cell } = grid;
   const high = (island: Island) => {
     const cells = island.cells.filter((c) => surface[c] >= z - 0.01 * z);
@@ -167,6 +194,5 @@ function nearestAt(
     q = nearest(p, bs);
     p = nearest(q, as);
   }
-  const point = (c: number): Point => [centreX(grid, c), centreY(grid, c), surface[c]];
-  return { gap: Math.max(0, far(p, q) - 1) * cell, points: [point(p), point(q)] };
+  return { gap: Math.max(0, far(p, q) - 1) * cell, cells: [p, q] };
 }

@@ -3,7 +3,7 @@ import type { Columns } from '../dexel/columns';
 import type { Facets } from '../mesh/measure-facets';
 import type { Mesh } from '../mesh/mesh';
 import type { Point, WallsReport } from '../report';
-import { buildFacetGrid } from './facet-grid';
+import type { FacetGrid } from './facet-grid';
 import { RayCaster } from './ray-caster';
 import { sampleSurface, type Sample } from './sample-surface';
 import type { Visibility } from './visibility';
@@ -43,13 +43,14 @@ interface Measured extends Sample {
 export function measureWalls(
   mesh: Mesh,
   facets: Facets,
+  grid: FacetGrid,
   columns: Columns,
   air: Air,
   visibility: Visibility,
   bore: Uint8Array,
 ): Walls {
   const hollow = findCavities(columns, air);
-  const caster = new RayCaster(mesh, buildFacetGrid(mesh, facets));
+  const caster = new RayCaster(mesh, grid);
   const thickness = (t: number, s: number, r: number) => thicknessAt(mesh, facets, caster, t, s, r);
   const measured = (chosen: Uint8Array, rays: number) => {
     const { samples, ofFacet } = sampleSurface(mesh, facets, chosen, rays);
