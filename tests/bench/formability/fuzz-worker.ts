@@ -2,7 +2,7 @@ import { analyse } from '@/lib/formability/analyse';
 import { analyseFile } from '@/lib/formability/analyse-file';
 import { isStep } from '@/lib/formability/parse/sniff-format';
 import { UnusableInput } from '@/lib/formability/unusable-input';
-import { mutatedFile } from './mutate';
+import { mutatedFile } from '../../fixtures/meshes/mutate';
 
 /** Runs the cases that its parent names, one after another, and tells how each ended. */
 process.on('message', (index: number) => {

@@ -3,7 +3,7 @@ import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
-import { mutatedFile } from './mutate';
+import { mutatedFile } from '../../fixtures/meshes/mutate';
 
 const HERE = path.dirname(fileURLToPath(import.meta.url));
 const ROOT = path.resolve(HERE, '../../..');
@@ -28,6 +28,10 @@ interface Told {
 async function run(cases: number, first: number, everyNth: number): Promise<number> {
   const counts = new Map<string, number>();
   const faults: string[] = [];
+  const blame = (...found: string[]) => {
+    faults.push(...found);
+    for (const fault of found) console.error(fault);
+  };
   let peakMB = 0;
   let slowestMs = 0;
   let child = start();
@@ -36,22 +40,21 @@ async function run(cases: number, first: number, everyNth: number): Promise<numb
     const told = await judge(child, index);
     slowestMs = Math.max(slowestMs, performance.now() - began);
     if (told.outcome === 'crash' || told.outcome === 'hang') {
-      faults.push(`case ${index}: ${told.outcome} ${told.why ?? ''}`);
+      blame(`case ${index}: ${told.outcome} ${told.why ?? ''}`);
       child.kill('SIGKILL');
       child = start();
       continue;
     }
     peakMB = Math.max(peakMB, told.rssMB);
-    if (told.rssMB > MEMORY_CAP_MB) faults.push(`case ${index}: ${told.rssMB.toFixed(0)} MB`);
-    if (told.outcome === 'fault') faults.push(`case ${index} (${told.format}): ${told.why}`);
+    if (told.rssMB > MEMORY_CAP_MB) blame(`case ${index}: ${told.rssMB.toFixed(0)} MB`);
+    if (told.outcome === 'fault') blame(`case ${index} (${told.format}): ${told.why}`);
     const key = `${told.format.replace(/-text|-round/, '').padEnd(11)} ${told.outcome}`;
     counts.set(key, (counts.get(key) ?? 0) + 1);
-    if (everyNth > 0 && index % everyNth === 0) faults.push(...throughCommandLine(index));
+    if (everyNth > 0 && index % everyNth === 0) blame(...throughCommandLine(index));
   }
   child.kill('SIGKILL');
   for (const [key, count] of [...counts].sort()) console.log(`${key.padEnd(34)}${String(count).padStart(6)}`);
   console.log(`cases ${first} to ${first + cases - 1}: ${faults.length} faults, slowest ${slowestMs.toFixed(0)} ms, peak ${peakMB.toFixed(0)} MB`); // prettier-ignore
-  for (const fault of faults) console.log(fault);
   return faults.length;
 }
 

@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import type { RecipeInput } from '@/lib/formability/recipe';
 import { frustumAnswer, polygonFactor } from '../../../fixtures/meshes/answers';
 import { box, dome, frustum, lathe } from '../../../fixtures/meshes/solids';
 import {
@@ -12,7 +13,11 @@ import {
   turned,
   type Triangles,
 } from '../../../fixtures/meshes/triangles';
-import { abs, analysed, has, hold, holdChecks, lacks, missesOf, rel, tight } from './claims';
+import { abs, analysed, has, hold, holdChecks, lacks, missesOf, rel, tight, type Claims } from './claims';
+
+/** Coarser cells than the default: what is held here needs no finer ones. */
+const quick = (mesh: Triangles, claims: Claims, recipe: RecipeInput = {}) =>
+  hold(mesh, claims, { grid: { cellMm: 0.2 }, ...recipe });
 
 type P = [number, number];
 const rad = Math.PI / 180;
@@ -26,7 +31,7 @@ const without = (mesh: Triangles, ...gone: number[]) =>
 
 describe('shells: apart, overlapping, touching, within each other', () => {
   it('two cubes apart', () => {
-    hold(together(cube(20), cube(20, 50)), {
+    quick(together(cube(20), cube(20, 50)), {
       'mesh.shells': 2,
       'mesh.volumeMm3': tight(16_000),
       'mesh.unionVolumeMm3': tight(16_000),
@@ -40,7 +45,7 @@ describe('shells: apart, overlapping, touching, within each other', () => {
     ['along two axes', [8, 5, 0], 12 * 15 * 20],
     ['along three axes', [8, 5, 3], 12 * 15 * 17],
   ] as const)('two cubes overlapping %s', (_, [x, y, z], common) => {
-    const report = hold(together(cube(20), cube(20, x, y, z)), {
+    const report = quick(together(cube(20), cube(20, x, y, z)), {
       'mesh.shells': 2,
       'mesh.volumeMm3': tight(16_000),
       'mesh.unionVolumeMm3': rel(16_000 - common, 1e-4),
@@ -69,7 +74,7 @@ describe('shells: apart, overlapping, touching, within each other', () => {
       }
     });
     const body = lathe([[0, 0], [r, 0], [r, 15], [0, 15]], n); // prettier-ignore
-    hold(together(body, moved(body, d, 0, 0)), {
+    quick(together(body, moved(body, d, 0, 0)), {
       'mesh.unionVolumeMm3': rel((2 * polygonFactor(n) * r * r - 2 * segment) * 15, 1e-4),
       'plan.planAreaMm2': rel(2 * polygonFactor(n) * r * r - 2 * segment, 0.005),
       'mesh.warnings': has('overlapping_shells'),
@@ -77,7 +82,7 @@ describe('shells: apart, overlapping, touching, within each other', () => {
   });
 
   it('a body within a body counts once', () => {
-    const report = hold(together(cube(30), cube(10, 2, 3, 8)), {
+    const report = quick(together(cube(30), cube(10, 2, 3, 8)), {
       'mesh.shells': 2,
       'mesh.volumeMm3': tight(28_000),
       'mesh.unionVolumeMm3': rel(27_000, 1e-4),
@@ -89,14 +94,14 @@ describe('shells: apart, overlapping, touching, within each other', () => {
   });
 
   it('the same body twice over is duplicate facets, not two bodies', () => {
-    hold(together(cube(30), cube(30)), {
+    quick(together(cube(30), cube(30)), {
       'mesh.unionVolumeMm3': tight(27_000),
       'mesh.warnings': has('duplicate_triangles'),
     });
   });
 
   it('three bodies in a row, each overlapping the next', () => {
-    hold(together(cube(20), cube(20, 15), cube(20, 30)), {
+    quick(together(cube(20), cube(20, 15), cube(20, 30)), {
       'mesh.shells': 3,
       'mesh.unionVolumeMm3': rel(50 * 400, 1e-4),
       'mesh.warnings': has('overlapping_shells'),
@@ -104,13 +109,13 @@ describe('shells: apart, overlapping, touching, within each other', () => {
   });
 
   it('three bodies in one place: winding number 3 in the middle', () => {
-    hold(together(cube(20), cube(20, 4, 0, 0), cube(20, 8, 0, 0)), {
+    quick(together(cube(20), cube(20, 4, 0, 0), cube(20, 8, 0, 0)), {
       'mesh.unionVolumeMm3': rel(28 * 400, 1e-4),
     });
   });
 
   it('bodies that touch at faces of different size', () => {
-    hold(together(box(40, 40, 10), moved(box(20, 16, 12), 3, 2, 10)), {
+    quick(together(box(40, 40, 10), moved(box(20, 16, 12), 3, 2, 10)), {
       'mesh.shells': 2,
       'mesh.volumeMm3': tight(16_000 + 3840),
       'mesh.unionVolumeMm3': rel(16_000 + 3840, 1e-4),
@@ -123,7 +128,7 @@ describe('shells: apart, overlapping, touching, within each other', () => {
   });
 
   it('bodies that touch side by side', () => {
-    hold(together(box(20, 30, 20), moved(box(20, 18, 12), 20, 1, 0)), {
+    quick(together(box(20, 30, 20), moved(box(20, 18, 12), 20, 1, 0)), {
       'mesh.shells': 2,
       'mesh.unionVolumeMm3': rel(12_000 + 4320, 1e-4),
       'mesh.warnings': has('touching_shells'),
@@ -133,7 +138,7 @@ describe('shells: apart, overlapping, touching, within each other', () => {
 
   it('cubes that share four corners, an edge, or one corner', () => {
     // Corners are shared bit for bit: one component. A shared edge has four triangles; so has each side of a shared face.
-    hold(together(cube(20), cube(20, 20)), {
+    quick(together(cube(20), cube(20, 20)), {
       'mesh.shells': 1,
       'mesh.watertight': false,
       'mesh.volumeMm3': tight(16_000),
@@ -141,7 +146,7 @@ describe('shells: apart, overlapping, touching, within each other', () => {
       'mesh.warnings': has('nonmanifold_edge'),
       'mesh.edges.boundary': 0,
     });
-    hold(together(cube(20), cube(20, 20, 20)), {
+    quick(together(cube(20), cube(20, 20, 20)), {
       'mesh.shells': 1,
       'mesh.watertight': false,
       'mesh.edges.nonManifold': 1,
@@ -150,7 +155,7 @@ describe('shells: apart, overlapping, touching, within each other', () => {
       'mesh.unionVolumeMm3': tight(16_000),
       'mesh.warnings': has('nonmanifold_edge'),
     });
-    hold(together(cube(20), cube(20, 20, 20, 20)), {
+    quick(together(cube(20), cube(20, 20, 20, 20)), {
       'mesh.shells': 1,
       'mesh.watertight': true,
       'mesh.edges.nonManifold': 0,
@@ -160,14 +165,14 @@ describe('shells: apart, overlapping, touching, within each other', () => {
 
   it('voids: one, and one inside out with its body', () => {
     const hollow = together(box(60, 40, 30), flipped(moved(box(40, 20, 10), 5, 5, 10)));
-    hold(hollow, {
+    quick(hollow, {
       'mesh.shells': 2,
       'mesh.volumeMm3': tight(64_000),
       'mesh.unionVolumeMm3': tight(64_000),
       'mesh.warnings': [],
       'undercut.enclosedVolumeMm3': rel(8000, 0.01),
     });
-    hold(flipped(hollow), {
+    quick(flipped(hollow), {
       'mesh.volumeMm3': tight(-64_000),
       'mesh.unionVolumeMm3': tight(64_000),
       'mesh.warnings': has('inverted'),
@@ -177,7 +182,7 @@ describe('shells: apart, overlapping, touching, within each other', () => {
   });
 
   it('a body inside out beside a sound one', () => {
-    hold(together(cube(20), flipped(cube(20, 50))), {
+    quick(together(cube(20), flipped(cube(20, 50))), {
       'mesh.volumeMm3': abs(0, 1e-6),
       'mesh.unionVolumeMm3': tight(16_000),
       'mesh.warnings': has('inverted'),
@@ -202,7 +207,7 @@ describe('shells: apart, overlapping, touching, within each other', () => {
     const inner = (R * Math.cos(72 * rad)) / Math.cos(36 * rad);
     const stored = (n / 2) * R * R * Math.sin(144 * rad);
     const star = n * R * inner * Math.sin(36 * rad);
-    hold(mesh, {
+    quick(mesh, {
       'mesh.shells': 1,
       'mesh.watertight': true,
       'mesh.volumeMm3': tight(stored * 20),
@@ -222,7 +227,7 @@ describe('edges that do not close', () => {
   const whole = box(60, 40, 20);
 
   it.each(Array.from({ length: 12 }, (_, i) => i))('a box without its facet %s', (gone) => {
-    hold(without(whole, gone), {
+    quick(without(whole, gone), {
       'mesh.watertight': false,
       'mesh.edges.boundary': 3,
       'mesh.edges.nonManifold': 0,
@@ -262,7 +267,7 @@ describe('edges that do not close', () => {
   it('a fin: a facet that hangs on an edge of the box', () => {
     const mesh: Triangles = [...whole];
     addFacet(mesh, [-30, -20, 20], [30, -20, 20], [0, -35, 30]);
-    hold(mesh, {
+    quick(mesh, {
       'mesh.edges.nonManifold': 1,
       'mesh.edges.boundary': 2,
       'mesh.watertight': false,
@@ -278,7 +283,7 @@ describe('edges that do not close', () => {
     addFacet(mesh, a, [0, -20, 20], d);
     addFacet(mesh, [0, -20, 20], c, d);
     addFacet(mesh, [0, -20, 20], b, c);
-    hold(mesh, {
+    quick(mesh, {
       'mesh.watertight': false,
       'mesh.edges.boundary': 3,
       'mesh.volumeMm3': tight(48_000),
@@ -298,7 +303,7 @@ describe('edges that do not close', () => {
     const mesh: Triangles = [...whole];
     addFacet(mesh, [-30, -20, 0], [-30, -20, 0], [30, -20, 0]);
     addFacet(mesh, [-30, -20, 0], [0, -20, 0], [30, -20, 0]);
-    hold(mesh, {
+    quick(mesh, {
       'mesh.degenerate': 2,
       'mesh.volumeMm3': tight(48_000),
       'mesh.unionVolumeMm3': tight(48_000),
@@ -308,7 +313,7 @@ describe('edges that do not close', () => {
   });
 
   it('a facet twice', () => {
-    hold(together(whole, whole.slice(45, 54)), {
+    quick(together(whole, whole.slice(45, 54)), {
       'mesh.warnings': has('duplicate_triangles'),
       'mesh.unionVolumeMm3': tight(48_000),
     });
@@ -345,7 +350,7 @@ describe('corners that do not meet bit for bit (xorshift seed 11)', () => {
   };
 
   it.each([1e-5, 2.5e-5])('by %s mm: welded, and said so', (amount) => {
-    hold(jittered(amount), {
+    quick(jittered(amount), {
       'mesh.watertight': true,
       'mesh.edges.boundary': 0,
       'mesh.shells': 1,
@@ -356,7 +361,7 @@ describe('corners that do not meet bit for bit (xorshift seed 11)', () => {
   });
 
   it.each([0.002, 0.02])('by %s mm: open, and still measured', (amount) => {
-    hold(jittered(amount), {
+    quick(jittered(amount), {
       'mesh.watertight': false,
       'mesh.warnings': has('not_watertight'),
       'mesh.repairs': lacks('tolerant_weld'),
@@ -375,7 +380,7 @@ describe('size, place and stand', () => {
     [1e4, []],
     [1e5, ['precision']],
   ] as const)('%s mm away', (far, wanted) => {
-    hold(moved(part, far, -far, 0), {
+    quick(moved(part, far, -far, 0), {
       'mesh.volumeMm3': rel(answer.volumeMm3, far > 5e4 ? 1e-3 : 1e-4),
       'mesh.warnings': wanted.length ? has(...wanted) : [],
       'mesh.watertight': true,
@@ -387,7 +392,7 @@ describe('size, place and stand', () => {
 
   it('high above and far below the bed: dropped onto it', () => {
     for (const z of [500, -500]) {
-      hold(moved(part, 0, 0, z), {
+      quick(moved(part, 0, 0, z), {
         'mesh.boundsMm.min.2': abs(0, 1e-4),
         'mesh.boundsMm.max.2': abs(40, 1e-3),
         'mesh.bedContactAreaMm2': tight(10_800),
@@ -398,14 +403,14 @@ describe('size, place and stand', () => {
 
   it('left where it is: floating, and below the bed', () => {
     const stay = { mesh: { dropToBed: false } };
-    const floating = hold(moved(part, 0, 0, 5), {
+    const floating = quick(moved(part, 0, 0, 5), {
       'mesh.warnings': has('floating'),
       'mesh.bedContactAreaMm2': 0,
       'mesh.boundsMm.min.2': abs(5, 1e-5),
       'plan.depthRatio': rel(45 / 150, 0.2),
     }, stay); // prettier-ignore
     holdChecks(floating, { mesh: 'caution|fail' });
-    hold(moved(part, 0, 0, -4), { 'mesh.warnings': has('below_bed') }, stay);
+    quick(moved(part, 0, 0, -4), { 'mesh.warnings': has('below_bed') }, stay);
   });
 
   it.each([
@@ -414,8 +419,8 @@ describe('size, place and stand', () => {
     ['metres', 'm', 1000],
   ] as const)('drawn in %s', (_, unit, factor) => {
     const small = scaled(part, 1 / factor);
-    hold(small, { 'mesh.suggestedScale': factor, 'mesh.warnings': has('suspicious_scale') });
-    hold(
+    quick(small, { 'mesh.suggestedScale': factor, 'mesh.warnings': has('suspicious_scale') });
+    quick(
       small,
       {
         'mesh.suggestedScale': null,
@@ -434,11 +439,11 @@ describe('size, place and stand', () => {
     ['inches', 300, 25.4],
   ])('a template in %s, %s mm long', (_, size, factor) => {
     const mesh = scaled(frustum(size, size * 0.7, size * 0.25, 5), 1 / factor);
-    hold(mesh, { 'mesh.suggestedScale': factor });
+    quick(mesh, { 'mesh.suggestedScale': factor });
   });
 
   it.each([25, 60, 120, 300, 450])('a template of %s mm is of a likely size', (size) => {
-    hold(frustum(size, size * 0.7, size * 0.25, 5), { 'mesh.suggestedScale': null, 'mesh.warnings': [] }, { grid: { cellMm: size / 200 } }); // prettier-ignore
+    quick(frustum(size, size * 0.7, size * 0.25, 5), { 'mesh.suggestedScale': null, 'mesh.warnings': [] }, { grid: { cellMm: size / 200 } }); // prettier-ignore
   });
 
   it.each([
@@ -447,9 +452,9 @@ describe('size, place and stand', () => {
     ['on its head', (x: number, y: number, z: number) => [x, -y, -z] as const, [0, 0, -1]],
   ])('lying %s: says how to stand it, and stands when told', (_, lay, up) => {
     const lying = mapPoints(part, lay);
-    const report = hold(lying, { 'mesh.warnings': has('orientation') });
+    const report = quick(lying, { 'mesh.warnings': has('orientation') });
     expect(report.mesh.suggestedUp?.map((value) => Math.round(value * 100) / 100 + 0)).toEqual(up);
-    hold(
+    quick(
       lying,
       {
         'mesh.warnings': [],
@@ -496,25 +501,25 @@ describe('the same part turned, moved, renumbered and scaled', () => {
   });
 
   it.each([17, 45, 90, 133])('turned by %s° about Z', (deg) => {
-    hold(turned(part, deg), figures(1, 0.005));
+    quick(turned(part, deg), figures(1, 0.005));
   });
 
   it('moved', () => {
-    hold(moved(part, 1234.56, -77.7, 55), figures(1, 0.003));
+    quick(moved(part, 1234.56, -77.7, 55), figures(1, 0.003));
   });
 
   it('with its facets in another order (stride 101)', () => {
     const n = facets(part);
     const order = Array.from({ length: n }, (_, i) => (i * 101) % n);
     expect(new Set(order).size).toBe(n);
-    hold(reordered(part, order), figures(1, 1e-9));
+    quick(reordered(part, order), figures(1, 1e-9));
   });
 
   it('with each facet beginning at another corner', () => {
     const rolled: Triangles = [];
     for (let i = 0; i < part.length; i += 9)
       rolled.push(...part.slice(i + 3, i + 9), ...part.slice(i, i + 3));
-    hold(rolled, figures(1, 1e-6));
+    quick(rolled, figures(1, 1e-6));
   });
 
   it.each([
@@ -523,6 +528,6 @@ describe('the same part turned, moved, renumbered and scaled', () => {
     ['cm', 0.1],
     ['in', 1 / 25.4],
   ] as const)('in %s with that unit named', (unit, factor) => {
-    hold(scaled(part, factor), figures(1, 0.003), { mesh: { unit } });
+    quick(scaled(part, factor), figures(1, 0.003), { mesh: { unit } });
   });
 });

@@ -1,9 +1,14 @@
 import { describe, expect, it } from 'vitest';
+import type { RecipeInput } from '@/lib/formability/recipe';
 import { frustumAnswer, polygonFactor, turnedVolume } from '../../../fixtures/meshes/answers';
 import { openFrustum, sealedFrustum } from '../../../fixtures/meshes/hollow';
 import { box, lathe } from '../../../fixtures/meshes/solids';
-import { moved, turned } from '../../../fixtures/meshes/triangles';
-import { abs, analysed, hold, holdChecks, rel, tight } from './claims';
+import { moved, turned, type Triangles } from '../../../fixtures/meshes/triangles';
+import { abs, analysed, hold, holdChecks, rel, tight, type Claims } from './claims';
+
+/** Coarser cells than the default: what is held here needs no finer ones. */
+const quick = (mesh: Triangles, claims: Claims, recipe: RecipeInput = {}) =>
+  hold(mesh, claims, { grid: { cellMm: 0.25 }, ...recipe });
 
 const rad = Math.PI / 180;
 
@@ -31,7 +36,7 @@ describe('hollow templates', () => {
     const outer = frustumAnswer(120, 90, 40, [deg, deg, deg, deg]);
     const inner = cavity(120, 90, 40, deg, wall, top, 0);
     const inset = (2 * wall) / Math.cos(deg * rad);
-    hold(openFrustum(120, 90, 40, deg, wall, top), {
+    quick(openFrustum(120, 90, 40, deg, wall, top), {
       'mesh.shells': 1,
       'mesh.watertight': true,
       'mesh.warnings': [],
@@ -58,7 +63,7 @@ describe('hollow templates', () => {
   ])('sealed, walls at %s°, %s mm, top %s, floor %s', (deg, wall, top, floor) => {
     const inner = cavity(120, 90, 40, deg, wall, top, floor);
     const outer = frustumAnswer(120, 90, 40, [deg, deg, deg, deg]);
-    hold(sealedFrustum(120, 90, 40, deg, wall, top, floor), {
+    quick(sealedFrustum(120, 90, 40, deg, wall, top, floor), {
       'mesh.shells': 2,
       'mesh.warnings': [],
       'mesh.volumeMm3': tight(outer.volumeMm3 - inner),
@@ -72,21 +77,21 @@ describe('hollow templates', () => {
   });
 
   it('a void 1 mm off the middle: the thinner side counts', () => {
-    hold(sealedFrustum(120, 90, 40, 5, 4, 6, 6, 1), {
+    quick(sealedFrustum(120, 90, 40, 5, 4, 6, 6, 1), {
       'walls.minMm': abs(4 - Math.cos(5 * rad), 0.05),
       'walls.topMm': abs(6, 0.05),
     });
   });
 
   it('turned out of the grid, walls are as thick', () => {
-    hold(turned(openFrustum(120, 90, 40, 8, 2.5, 4), 29), {
+    quick(turned(openFrustum(120, 90, 40, 8, 2.5, 4), 29), {
       'walls.minMm': abs(2.5, 0.05),
       'walls.topMm': abs(4, 0.05),
     });
   });
 
   it.each([1.2, 3.5])('a large one, 300 × 200 mm, walls %s mm', (wall) => {
-    const report = hold(openFrustum(300, 200, 80, 6, wall, 3.5), {
+    const report = quick(openFrustum(300, 200, 80, 6, wall, 3.5), {
       'walls.hollow': true,
       'walls.minMm': abs(wall, 0.05),
       'walls.topMm': abs(3.5, 0.05),
@@ -98,7 +103,7 @@ describe('hollow templates', () => {
     const profile: [number, number][] = [[36, 0], [40, 0], [37, 40], [0, 40], [0, 36], [33.3, 36]]; // prettier-ignore
     const across = Math.cos(Math.PI / 64);
     const slope = Math.atan((3 * across) / 40);
-    hold(lathe(profile, 64), {
+    quick(lathe(profile, 64), {
       'mesh.volumeMm3': tight(turnedVolume(profile, 64)),
       'undercut.enclosedVolumeMm3': rel(
         (polygonFactor(64) * 36 * (36 ** 2 + 36 * 33.3 + 33.3 ** 2)) / 3,
