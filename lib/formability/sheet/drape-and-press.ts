@@ -17,7 +17,12 @@ export interface DrapePlan {
   mostPressure: number;
   /** Whether nodes that the last pressure leaves free are pushed home. */
   close: boolean;
+  /** Called with the sheet as it hangs when the frame has landed, before any pressure. */
+  onLanded?(sheet: Membrane): void;
 }
+
+/** Nodes of the level sheet this near to the template lie on its plateau, in cells of the sheet. */
+export const NEAR = 0.021;
 
 export interface Drape {
   steps: number;
@@ -49,7 +54,7 @@ export function drapeAndPress(
   const total = plan.lowerSteps + Math.max(1, pressSteps);
   const frame = clampedNodes(sheet);
   const top = template.highest;
-  stickTouching(run);
+  stickTouching(run, NEAR);
   for (let step = 1; step <= plan.lowerSteps; step++) {
     if (!goOn(done.steps++ / total)) return { ...done, stopped: true };
     const z = step === plan.lowerSteps ? 0 : top * (1 - step / plan.lowerSteps);
@@ -60,6 +65,7 @@ export function drapeAndPress(
   }
   for (let k = 0; k < plan.settleIterations && run.residual > plan.tolerance; k++) iterate(run, 0);
   done.residual = run.freeCount > 0 ? run.residual : 0;
+  plan.onLanded?.(sheet);
   let pressure = Math.min(plan.firstPressure, plan.mostPressure);
   while (run.freeCount > 0) {
     if (!goOn(Math.min(1, done.steps++ / total))) return { ...done, stopped: true };

@@ -8,6 +8,7 @@ import { makeRectangle, type Membrane } from './membrane';
 import { makeObstacle, type Obstacle } from './obstacle';
 import { planDrape } from './plan-drape';
 import { checkSheetInput, placeFrame, type SheetInput, type SheetOptions } from './sheet-input';
+import { snapToPlateau } from './snap-to-plateau';
 import { drawSurface, type SheetSurface } from './sheet-surface';
 import { makeThicknessAt, type ThicknessAt } from './thickness-at';
 import { areaQuantile, orderByThickness } from './area-quantile';
@@ -25,7 +26,10 @@ export interface FormedSheet {
   pressureRatio: number;
   /** Sides of an element before forming, mm. */
   elementMm: [number, number];
+  formedAreaMm2: number;
   minPlace: PlaceKind;
+  /** Area in folds when the frame had landed, before pressure pulls them straight or presses them flat, mm². */
+  hangingWebMm2: number;
   /** Largest fold left and largest place that the sheet does not reach, if any. */
   webAt: Point | null;
   surface: SheetSurface;
@@ -66,14 +70,16 @@ export function formSheet(input: SheetInput, options: SheetOptions = {}): Formed
   };
   const form = (size: [number, number], onStep: (share: number) => boolean) => {
     const sheet = makeRectangle(centre, input.frameMm, size, template.highest);
+    snapToPlateau(sheet, template);
     const plan = planDrape(input, template, sheet, options.preview ?? false);
+    let hangingWebMm2 = 0;
+    plan.onLanded = () => (hangingWebMm2 = foldedArea(measureElements(sheet, input.gaugeMm)));
     const drape = drapeAndPress(sheet, template, plan, onStep);
-    return { sheet, drape, stretches: measureElements(sheet, input.gaugeMm) };
+    return { sheet, drape, hangingWebMm2, stretches: measureElements(sheet, input.gaugeMm) };
   };
   const half = form([cells[0] / 2, cells[1] / 2], report(0, HALF_SHARE)).stretches;
   const halfQ05 = areaQuantile(half, orderByThickness(half), 0.05);
-  const { sheet, drape, stretches } = form(cells, report(HALF_SHARE, 0.97));
-  const formed = summarise(input, template, sheet, stretches, drape, halfQ05);
+  const formed = summarise(input, template, form(cells, report(HALF_SHARE, 0.97)), halfQ05);
   options.onProgress?.(1);
   return formed;
 }
@@ -86,12 +92,23 @@ export function gridCells(frameMm: readonly [number, number], nodes: number): [n
   return [count(frameMm[0]), count(frameMm[1])];
 }
 
+interface Result {
+  sheet: Membrane;
+  drape: Drape;
+  stretches: Stretches;
+  hangingWebMm2: number;
+}
+
+function foldedArea({ area, folded }: Stretches): number {
+  let sum = 0;
+  for (let e = 0; e < area.length; e++) if (folded[e]) sum += area[e];
+  return sum;
+}
+
 function summarise(
   input: SheetInput,
   template: Obstacle,
-  sheet: Membrane,
-  stretches: Stretches,
-  drape: Drape,
+  { sheet, stretches, drape, hangingWebMm2 }: Result,
   halfQ05: number,
 ): FormedSheet {
   const { frameMm, gaugeMm, minFormedMm } = input;
@@ -117,7 +134,7 @@ function summarise(
       q01Mm: areaQuantile(stretches, order, 0.01),
       q05Mm,
       belowLimitAreaMm2: areaWhere((e) => stretches.thickness[e] < minFormedMm),
-      webAreaMm2: areaWhere((e) => (surface.web[e] & 1) === 1),
+      webAreaMm2: foldedArea(stretches),
       unclosedAreaMm2: areaWhere((e) => surface.web[e] >= 2),
       volumeErrorPercent: 100 * volumeError,
       nodes: surface.nodes,
@@ -131,7 +148,9 @@ function summarise(
     iterations: drape.iterations,
     pressureRatio: drape.pressure,
     elementMm: [sheet.cellX, sheet.cellY],
+    formedAreaMm2: stretches.formedArea,
     minPlace,
+    hangingWebMm2,
     webAt: worstWeb(sheet, stretches, surface),
     surface,
     thicknessAt: makeThicknessAt(surface),

@@ -103,8 +103,13 @@ function build(
       sheet.corners.set(second, 3 * e + 3);
     }
   }
-  for (let e = 0; e < elements; e++) measureElement(sheet, e);
+  measureRest(sheet);
   return sheet;
+}
+
+/** Rest areas and inverse edges from the rest positions. */
+export function measureRest(sheet: Membrane): void {
+  for (let e = 0; e < sheet.elements; e++) measureElement(sheet, e);
 }
 
 function measureElement(sheet: Membrane, e: number): void {

@@ -79,15 +79,14 @@ export function follow(run: Run, dz: number): void {
   run.velocity.fill(0);
 }
 
-/** Fixes free nodes that touch the template already, at their height or the template's, whichever is higher. */
-export function stickTouching(run: Run): void {
+/** Fixes free nodes that lie on the template already or within `near` cells of it, where they are. */
+export function stickTouching(run: Run, near: number): void {
   const { sheet, template } = run;
   if (!template) return;
   for (let n = 0; n < sheet.nodes; n++) {
     if (!sheet.free[n]) continue;
     const h = heightAt(template, sheet.at[3 * n], sheet.at[3 * n + 1]);
-    if (sheet.at[3 * n + 2] - h > TOUCH * sheet.cell) continue;
-    sheet.at[3 * n + 2] = Math.max(h, sheet.at[3 * n + 2]);
+    if (sheet.at[3 * n + 2] - h > near * sheet.cell) continue;
     stick(run, n);
   }
   run.activeCount = listActive(sheet, run.active);

@@ -1,0 +1,61 @@
+import { formSheet, type FormedSheet } from './form-sheet';
+import type { SheetInput, SheetOptions } from './sheet-input';
+
+/** What helps a sheet that comes out too thin: a thicker one, or a change of the template where it is thin. */
+export type ThinRemedy = 'gauge' | 'radius' | 'gap' | 'height';
+
+export interface GaugeRemedy {
+  /** Least gauge, rounded up to the step, whose own run reached the thickness; null where none did. */
+  gaugeMm: number | null;
+  /** Least thickness of the last run, mm. */
+  minMm: number;
+  runs: number;
+  /** What would serve better than gauge where little of the sheet is thin. */
+  better: ThinRemedy;
+}
+
+const MOST_RUNS = 4;
+/** Share of the formed area below the limit up to which the template is better changed than the whole sheet. */
+const LOCAL_SHARE = 0.05;
+
+/**
+ * The gauge that gives a wanted least thickness: scaled (thickness goes with gauge while p/(μ t0) is held), then
+ * verified by a run of its own, and scaled again while that falls short, as it may where a given load presses a
+ * thicker sheet less far into corners.
+ * @param formed the run at `input`'s own gauge
+ * @param stepMm gauges go up in this step (0.05 mm: common practice, no source)
+ */
+export function gaugeFor(
+  input: SheetInput,
+  formed: FormedSheet,
+  wantedMinMm: number,
+  options: SheetOptions = {},
+  stepMm = 0.05,
+): GaugeRemedy {
+  if (!(wantedMinMm > 0 && stepMm > 0)) {
+    throw new RangeError(
+      `a wanted thickness of ${wantedMinMm} mm in steps of ${stepMm} mm: give numbers above 0`,
+    );
+  }
+  const better = betterChange(formed);
+  let gaugeMm = input.gaugeMm;
+  let { minMm } = formed.report;
+  let runs = 0;
+  while (minMm < wantedMinMm && runs < MOST_RUNS) {
+    gaugeMm = stepMm * Math.ceil((gaugeMm * wantedMinMm) / minMm / stepMm - 1e-9);
+    minMm = formSheet({ ...input, gaugeMm }, options).report.minMm;
+    runs++;
+  }
+  return { gaugeMm: minMm >= wantedMinMm ? gaugeMm : null, minMm, runs, better };
+}
+
+/**
+ * Gauge where much of the part is thin; else the template where it is thin: a radius in an inner corner, room in a
+ * pit or slot, less height on a wall (own judgement, no source).
+ */
+export function betterChange({ report, minPlace, formedAreaMm2 }: FormedSheet): ThinRemedy {
+  if (report.belowLimitAreaMm2 > LOCAL_SHARE * formedAreaMm2) return 'gauge';
+  if (minPlace === 'inner-corner') return 'radius';
+  if (minPlace === 'pit' || report.unclosedAreaMm2 > report.belowLimitAreaMm2) return 'gap';
+  return minPlace === 'wall' ? 'height' : 'gauge';
+}
