@@ -132,6 +132,15 @@ export const LIMIT_RULES = {
     source: 'public design guidelines of custom formers: radius at least the sheet gauge',
     label: 'least radius of edges and inside corners, in gauges',
   },
+  airClearS: {
+    value: 0.5,
+    unit: 's',
+    min: 0.01,
+    max: 30,
+    kind: 'common practice',
+    source: `${PRACTICE}: the sheet sets against a cool template within about a second`,
+    label: 'time in which the air must leave a pocket',
+  },
   shellMinMm: {
     value: 3,
     unit: 'mm',

@@ -205,6 +205,17 @@ export interface EdgesReport {
   minConvexRadiusMm: number | null;
   minConcaveRadiusMm: number | null;
   places: Place[];
+  /** Edges tighter than the sheet wants, the longest first. */
+  lines: EdgeLine[];
+}
+
+/** An edge as a line along it (a rounded one: along its middle); at most 120 lines of at most 64 points. */
+export interface EdgeLine {
+  kind: 'convex' | 'concave';
+  /** 0 where it is sharp. */
+  radiusMm: number;
+  lengthMm: number;
+  points: Point[];
 }
 
 export interface LayersReport {

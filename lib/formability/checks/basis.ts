@@ -39,3 +39,8 @@ export function roundUp(value: number, step: number): number {
 export function roundDown(value: number, step: number): number {
   return Number((Math.floor(value / step + 1e-9) * step).toFixed(6));
 }
+
+/** Diameter to draw, mm, for a vent that this printer leaves just open. */
+export function drawnFor({ print: { holeModel } }: EffectiveRecipe): number {
+  return roundUp((holeModel.minOpenMm - holeModel.offsetMm) / holeModel.slope, 0.05);
+}

@@ -1,4 +1,5 @@
 import { CHECK_IDS, type Check, type CheckId } from '../report';
+import { checkAir } from './check-air';
 import { checkDraft } from './check-draft';
 import { checkDraw } from './check-draw';
 import { checkEdges } from './check-edges';
@@ -28,6 +29,7 @@ const CHECKS: Partial<Record<CheckId, (input: CheckInput) => Check | null>> = {
   edges: checkEdges,
   spacing: checkSpacing,
   draw: checkDraw,
+  air: checkAir,
   vents: checkVents,
   shell: checkShell,
   skin: checkSkin,

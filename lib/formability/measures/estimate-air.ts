@@ -1,0 +1,86 @@
+import { cellAt, type Grid } from '../dexel/grid';
+import { ATMOSPHERE_PA, boreFlow, expelTimeS, type Flow, type Pressures } from '../physics/gas-flow';
+import type { EffectiveRecipe } from '../recipe';
+import type { AirFlow, AirTrap, Vent } from '../report';
+import { placeVents } from './place-vents';
+
+/** Sharp printed or drilled hole (0.6 to 0.7: common practice, no source; the smaller is used). */
+export const DISCHARGE = 0.6;
+/** Trapped air stands this far above the air that it leaves to, Pa: 1 bar, or the machine's pressure where that is less. */
+const OVER_PA = 100_000;
+/** No list of places is longer. */
+const MOST_PLACES = 24;
+
+/** What drives the air out: the sheet holds it at constant pressure and temperature against the bed's open side. */
+export function drivingPressures(recipe: EffectiveRecipe): Pressures {
+  const over = Math.min(OVER_PA, recipe.machine.pressureBar * 100_000);
+  return {
+    upstreamPa: ATMOSPHERE_PA + over,
+    downstreamPa: ATMOSPHERE_PA,
+    kelvin: 273.15 + recipe.run.ambientC,
+  };
+}
+
+/**
+ * Time in which the air leaves each pocket (pits with no pit inside) through the vents as this printer leaves them open,
+ * and how many of its smallest open size are wanting, with places to drill. Isothermal, at constant pressure; per vent
+ * the smaller of orifice and laminar flow.
+ * @param surface H with vents closed
+ * @param clearS time allowed
+ */
+export function estimateAir(
+  recipe: EffectiveRecipe,
+  part: { traps: AirTrap[]; vents: Vent[]; surface: Float64Array; grid: Grid },
+  clearS: number,
+): AirFlow[] {
+  const at = drivingPressures(recipe);
+  const parents = new Set(part.traps.map((trap) => trap.parent));
+  return part.traps.flatMap((trap, id) =>
+    parents.has(id) ? [] : [flowOf(recipe, part, at, trap, id, clearS)],
+  );
+}
+
+function flowOf(
+  recipe: EffectiveRecipe,
+  { vents, surface, grid }: { vents: Vent[]; surface: Float64Array; grid: Grid },
+  at: Pressures,
+  trap: AirTrap,
+  id: number,
+  clearS: number,
+): AirFlow {
+  const open = recipe.machine.ventedBed
+    ? trap.vents.map((v) => vents[v]).filter((vent) => vent.printable)
+    : [];
+  const flows = open.map((vent): [Vent, Flow] => [
+    vent,
+    boreFlow({ diameterMm: vent.printedMm, lengthMm: vent.lengthMm }, DISCHARGE, at),
+  ]);
+  const kgS = flows.reduce((sum, [, flow]) => sum + flow.kgS, 0);
+  const takes = kgS > 0 ? expelTimeS(trap.volumeMm3, kgS, at) : null;
+  // What a further vent of the smallest open size would carry, as long as the floor stands above the bed.
+  const smallest = recipe.print.holeModel.minOpenMm;
+  const one = boreFlow(
+    { diameterMm: smallest, lengthMm: Math.max(trap.floor[2], recipe.print.layerMm) },
+    DISCHARGE,
+    at,
+  );
+  const lacking = expelTimeS(trap.volumeMm3, 1, at) / clearS - kgS;
+  const ventsNeeded =
+    takes === null
+      ? Math.max(1, Math.ceil(lacking / one.kgS))
+      : Math.max(0, Math.ceil(lacking / one.kgS - 1e-9));
+  const widest = flows.reduce<Flow | null>(
+    (most, [, flow]) => (most && most.kgS >= flow.kgS ? most : flow),
+    null,
+  );
+  const floor = cellAt(grid, trap.floor[0], trap.floor[1]);
+  return {
+    trap: id,
+    ventAreaMm2: open.reduce((sum, vent) => sum + (Math.PI / 4) * vent.printedMm ** 2, 0),
+    clearS: takes,
+    regime: (widest ?? one).regime,
+    ventsNeeded,
+    ventDiameterMm: smallest,
+    ventPlaces: placeVents(surface, grid, floor, trap.spillZMm, Math.min(ventsNeeded, MOST_PLACES)),
+  };
+}
