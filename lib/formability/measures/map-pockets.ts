@@ -38,7 +38,9 @@ export function mapPockets(
 ): Pockets {
   const { triangles, index, position: p } = mesh;
   const { level } = flood;
-  const { cell, nx: columns, ny: rows, x0, y0 } = grid;
+  const { nx, ny, nz, bed } = facets;
+  const { nx: columns, ny: rows, x0, y0 } = grid;
+  const perMm = 1 / grid.cell;
   const spillMm = new Float32Array(triangles).fill(NaN);
   const unvented = new Uint8Array(triangles);
   let highest = -Infinity;
@@ -57,19 +59,19 @@ export function mapPockets(
     if (p[b + 2] < p[low + 2]) low = b;
     if (p[d + 2] < p[low + 2]) low = d;
     const foot = p[low + 2];
-    if (foot >= highest - PIT_MM || facets.nz[t] < -SIN_VERTICAL || facets.bed[t]) continue;
+    if (foot >= highest - PIT_MM || nz[t] < -SIN_VERTICAL || bed[t]) continue;
     const mx = (p[a] + p[b] + p[d]) / 3;
     const my = (p[a + 1] + p[b + 1] + p[d + 1]) / 3;
     const mz = (p[a + 2] + p[b + 2] + p[d + 2]) / 3;
-    const flat = Math.sqrt(facets.nx[t] * facets.nx[t] + facets.ny[t] * facets.ny[t]);
+    const flat = Math.sqrt(nx[t] * nx[t] + ny[t] * ny[t]);
     const step = flat > 1e-6 ? STEP / flat : 0;
-    const i0 = (mx - x0) / cell + step * facets.nx[t];
-    const j0 = (my - y0) / cell + step * facets.ny[t];
+    const i0 = (mx - x0) * perMm + step * nx[t];
+    const j0 = (my - y0) * perMm + step * ny[t];
     // From the middle to near the lowest corner, in cells; a facet about as small as a cell is told by its middle.
-    const di = ((p[low] - mx) / cell) * NEAR_CORNER;
-    const dj = ((p[low + 1] - my) / cell) * NEAR_CORNER;
+    const di = (p[low] - mx) * perMm * NEAR_CORNER;
+    const dj = (p[low + 1] - my) * perMm * NEAR_CORNER;
     const dz = (foot - mz) * NEAR_CORNER;
-    const looks = Math.abs(di) + Math.abs(dj) - dz / cell > 1 ? 2 : 1;
+    const looks = Math.abs(di) + Math.abs(dj) - dz * perMm > 1 ? 2 : 1;
     for (let k = 0; k < looks; k++) {
       const i = Math.floor(i0 + k * di);
       const j = Math.floor(j0 + k * dj);
