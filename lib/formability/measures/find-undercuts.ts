@@ -45,7 +45,7 @@ export function findUndercuts(columns: Columns, air: Air, textureMm: number, tri
       region.sum += z[s] - floor;
       if (floor < region.low) region.low = floor;
       if (z[s] > region.high) region.high = z[s];
-      if (depth[s] > region.depth) {
+      if (depth[s] < Infinity && depth[s] > region.depth) {
         region.depth = depth[s];
         region.deepest = c;
         region.slot = s;
@@ -58,7 +58,8 @@ export function findUndercuts(columns: Columns, air: Air, textureMm: number, tri
       at: [centreX(grid, region.deepest), centreY(grid, region.deepest), z[region.slot]],
       planAreaMm2: region.cells * cell * cell,
       volumeMm3: region.sum * cell * cell,
-      maxDepthMm: Math.max(region.depth, 0),
+      // No lip was found (damaged meshes): about half as wide as it is.
+      maxDepthMm: region.depth >= 0 ? region.depth : (Math.sqrt(region.cells) * cell) / 2,
       zMm: [region.low, region.high],
     }));
   list.sort(
