@@ -13,10 +13,15 @@ export interface BoxTree {
   /** 6 per node, heap numbered from 1. */
   nodes: Float64Array;
   leaves: number;
+  /** Group of each item, in tree order, and of each node, −1 where it holds several; null where all pairs count. */
+  groups: { items: Int32Array; nodes: Int32Array } | null;
 }
 
-/** @param given 6 per item: minimum x, y, z, maximum x, y, z; fewer than 4 million items */
-export function buildBoxTree(given: Float64Array): BoxTree {
+/**
+ * @param given 6 per item: minimum x, y, z, maximum x, y, z; fewer than 4 million items
+ * @param groupOf where given, pairs within one group are passed over
+ */
+export function buildBoxTree(given: Float64Array, groupOf?: (item: number) => number): BoxTree {
   const n = given.length / 6;
   const order = mortonOrder(given, n);
   const boxes = new Float64Array(6 * n);
@@ -34,7 +39,23 @@ export function buildBoxTree(given: Float64Array): BoxTree {
     widen(nodes, 6 * node, nodes, 12 * node);
     widen(nodes, 6 * node, nodes, 12 * node + 6);
   }
-  return { order, boxes, nodes, leaves };
+  return { order, boxes, nodes, leaves, groups: groupOf ? groupNodes(order, leaves, groupOf) : null };
+}
+
+function groupNodes(order: Uint32Array, leaves: number, groupOf: (item: number) => number) {
+  const n = order.length;
+  const items = Int32Array.from(order, groupOf);
+  const nodes = new Int32Array(2 * leaves).fill(-1);
+  for (let node = leaves; node < 2 * leaves; node++) {
+    const first = leafStart(n, leaves, node);
+    const last = leafStart(n, leaves, node + 1);
+    nodes[node] = first < last ? items[first] : -1;
+    for (let k = first; k < last; k++) if (items[k] !== nodes[node]) nodes[node] = -1;
+  }
+  for (let node = leaves - 1; node > 0; node--) {
+    if (nodes[2 * node] === nodes[2 * node + 1]) nodes[node] = nodes[2 * node];
+  }
+  return { items, nodes };
 }
 
 /**
@@ -42,7 +63,7 @@ export function buildBoxTree(given: Float64Array): BoxTree {
  * @returns false where it was stopped
  */
 export function visitPairs(tree: BoxTree, near: number, visit: (a: number, b: number) => boolean): boolean {
-  const { order, boxes, nodes, leaves } = tree;
+  const { order, boxes, nodes, leaves, groups } = tree;
   const n = order.length;
   // Both nodes of a pair lie at one depth; each step down adds at most three waiting pairs.
   const stack = new Int32Array(2 * (4 + 3 * (Math.log2(leaves) + 1)));
@@ -54,6 +75,7 @@ export function visitPairs(tree: BoxTree, near: number, visit: (a: number, b: nu
     if (a < leaves) {
       for (let i = 2 * a; i < 2 * a + 2; i++) {
         for (let j = a === b ? i : 2 * b; j < 2 * b + 2; j++) {
+          if (groups && groups.nodes[i] >= 0 && groups.nodes[i] === groups.nodes[j]) continue;
           if (i !== j && !meet(nodes, 6 * i, nodes, 6 * j, near)) continue;
           stack[waiting++] = i;
           stack[waiting++] = j;
@@ -68,6 +90,7 @@ export function visitPairs(tree: BoxTree, near: number, visit: (a: number, b: nu
       // A box that misses the other leaf misses all in it.
       if (a !== b && !meet(boxes, 6 * i, nodes, 6 * b, near)) continue;
       for (let j = a === b ? i + 1 : firstB; j < lastB; j++) {
+        if (groups && groups.items[i] === groups.items[j]) continue;
         if (meet(boxes, 6 * i, boxes, 6 * j, near) && !visit(order[i], order[j])) return false;
       }
     }

@@ -3,7 +3,7 @@ import { BED_TOLERANCE_MM } from './measure-facets';
 import type { Mesh } from './mesh';
 import { UnionFind } from './union-find';
 
-/** Caps larger than this share of the surface close no body: the file is a heap of loose facets. */
+/** Caps off the bed larger than this share of the surface close no body: the file is a heap of loose facets. */
 const MOST_CAPS = 0.7;
 /** A large hole that looks down, this share of the surface, is the underside of a sheet: the bed closes that. */
 const SHEET = 0.2;
@@ -38,9 +38,10 @@ export function capHoles(mesh: Mesh, edges: Edges, area: number): Capped {
   const asIs = { mesh, sealed: isBalanced(edges), atBed: false, elsewhere: false };
   if (asIs.sealed) return asIs;
   const holes = findHoles(mesh, edges);
-  if (holes.reduce((sum, hole) => sum + hole.area, 0) > MOST_CAPS * area) return asIs;
+  const onBed = (hole: Hole) => hole.highest <= BED_TOLERANCE_MM;
+  if (holes.reduce((sum, hole) => sum + (onBed(hole) ? 0 : hole.area), 0) > MOST_CAPS * area) return asIs;
   const wanted = holes.filter(
-    (hole) => hole.highest <= BED_TOLERANCE_MM || !(hole.plan < -0.5 * hole.area && hole.area > SHEET * area),
+    (hole) => onBed(hole) || !(hole.plan < -0.5 * hole.area && hole.area > SHEET * area),
   );
   if (wanted.length === 0) return asIs;
   const index: number[] = [];
@@ -66,8 +67,8 @@ export function capHoles(mesh: Mesh, edges: Edges, area: number): Capped {
       vertices: mesh.vertices + wanted.length,
     },
     sealed: wanted.length === holes.length,
-    atBed: wanted.some((hole) => hole.highest <= BED_TOLERANCE_MM),
-    elsewhere: wanted.some((hole) => hole.highest > BED_TOLERANCE_MM),
+    atBed: wanted.some(onBed),
+    elsewhere: wanted.some((hole) => !onBed(hole)),
   };
 }
 

@@ -7,8 +7,14 @@ import type { Mesh } from './mesh';
 /** Up to this many facets every one is looked at; above it only where shells meet or columns are odd. */
 const ALL_FACETS = 60_000;
 
+export interface Candidates {
+  facets: Uint32Array;
+  /** Only meetings of different shells are looked for: a large file of several bodies. */
+  apart: boolean;
+}
+
 /**
- * The facets that may meet others: all of a small mesh; of a large one those where the boxes of two shells overlap,
+ * The facets that may meet others: all of a small mesh; of a large one those where the boxes of two shells overlap, else
  * those on edges with more than two facets, and those over columns that are covered doubly (a crossing always leaves such columns beside it).
  */
 export function chooseCandidates(
@@ -18,18 +24,21 @@ export function chooseCandidates(
   boxes: Float64Array | null,
   columns: Columns,
   tolerance: number,
-): Uint32Array {
+): Candidates {
   const { triangles } = mesh;
-  if (triangles <= ALL_FACETS) return Uint32Array.from({ length: triangles }, (_, t) => t);
+  if (triangles <= ALL_FACETS) {
+    return { facets: Uint32Array.from({ length: triangles }, (_, t) => t), apart: false };
+  }
   const chosen = new Uint8Array(triangles);
-  markOddColumns(mesh, columns, chosen);
-  if (edges.nonManifold > 0) markCrowded(edges, chosen);
-  if (boxes) markBoxes(mesh, shells, commonBoxes(boxes, shells.count, tolerance), chosen);
+  const apart = boxes !== null && boxesMeet(boxes, tolerance);
+  if (apart) markBoxes(mesh, shells, commonBoxes(boxes, shells.count, tolerance), chosen);
+  else markOddColumns(mesh, columns, chosen);
+  if (edges.nonManifold > 0 && !apart) markCrowded(edges, chosen);
   let count = 0;
   for (let t = 0; t < triangles; t++) count += chosen[t];
   const facets = new Uint32Array(count);
   for (let t = 0, k = 0; t < triangles; t++) if (chosen[t]) facets[k++] = t;
-  return facets;
+  return { facets, apart };
 }
 
 function markCrowded({ forward, backward, ofCorner }: Edges, chosen: Uint8Array): void {

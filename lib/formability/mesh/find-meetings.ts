@@ -1,4 +1,5 @@
 import { buildBoxTree, visitPairs } from './box-tree';
+import type { Candidates } from './choose-candidates';
 import { facetBoxes } from './facet-boxes';
 import { facetDistanceSquared } from './facet-distance';
 import type { Shells } from './find-shells';
@@ -7,8 +8,10 @@ import { sharedVertices } from './shared-vertices';
 
 /** Facet pairs beyond this number are not listed; that there are more is known all the same. */
 const MOST_LISTED = 20_000;
-/** Facet pairs of near boxes that are looked at before the search gives up: a heap of facets, not a body. */
-const MOST_PAIRS = 3e7;
+/** Facet pairs of near boxes that are looked at, for each facet, before the search gives up: a heap, not a body. */
+export const MOST_PAIRS_PER_FACET = 30;
+/** Small meshes may use up more for each. */
+export const LEAST_PAIRS = 1e6;
 
 /** Where facets go through one another by more than rounding, and where shells touch. */
 export interface Meetings {
@@ -37,7 +40,7 @@ export interface MeetingList {
 export function findMeetings(
   mesh: Mesh,
   shells: Shells,
-  facets: Uint32Array,
+  { facets, apart }: Candidates,
   tolerance: number,
   crowded: boolean,
 ): Meetings {
@@ -51,10 +54,11 @@ export function findMeetings(
     complete: true,
   };
   const crossed = new Set<number>();
-  const tree = buildBoxTree(facetBoxes(index, p, facets));
+  const tree = buildBoxTree(facetBoxes(index, p, facets), apart ? (i) => ofFacet[facets[i]] : undefined);
+  const most = LEAST_PAIRS + MOST_PAIRS_PER_FACET * facets.length;
   let pairs = 0;
   found.complete = visitPairs(tree, count > 1 ? tolerance : 0, (i, j) => {
-    if (++pairs > MOST_PAIRS) return false;
+    if (++pairs > most) return false;
     const [f, g] = [facets[i], facets[j]];
     const shared = sharedVertices(index, f, g).count;
     if (shared > 1) {
@@ -64,6 +68,7 @@ export function findMeetings(
     }
     const [s, t] = [ofFacet[f], ofFacet[g]];
     const depth = crossingDepth(p, index, f, g, tolerance);
+    if (depth < 0) return true;
     if (depth > 0) {
       note(s === t ? found.own : found.between, f, g, middle);
       if (s !== t) crossed.add(pairKey(s, t, count));
@@ -145,14 +150,15 @@ const sideF = new Float64Array(3);
 const sideG = new Float64Array(3);
 
 /**
- * How deep two facets go through one another, or 0; leaves the middle of the common segment in `middle`. Depth is
+ * How deep two facets go through one another, 0 where they do not, −1 where a plane parts them; leaves the middle of the common segment in `middle`. Depth is
  * the least way by which either facet's corners lie on both sides of the other's plane.
  */
 function crossingDepth(p: Float64Array, index: Uint32Array, f: number, g: number, tolerance: number): number {
-  const deepG = straddle(p, index, f, g, sideG);
-  if (!(deepG > tolerance)) return 0;
-  const deepF = straddle(p, index, g, f, sideF);
-  if (!(deepF > tolerance)) return 0;
+  const deepG = straddle(p, index, f, g, sideG, tolerance);
+  if (deepG < 0) return -1;
+  const deepF = straddle(p, index, g, f, sideF, tolerance);
+  if (deepF < 0) return -1;
+  if (!(deepG > tolerance && deepF > tolerance)) return 0;
   const [a, b, c] = [3 * index[3 * f], 3 * index[3 * f + 1], 3 * index[3 * f + 2]];
   const [d, e, h] = [3 * index[3 * g], 3 * index[3 * g + 1], 3 * index[3 * g + 2]];
   const n = [0, 0, 0];
@@ -172,8 +178,15 @@ function crossingDepth(p: Float64Array, index: Uint32Array, f: number, g: number
   return Math.min(deepF, deepG);
 }
 
-/** Signed distances of g's corners from f's plane into `side`; the smaller of what lies on either side. */
-function straddle(p: Float64Array, index: Uint32Array, f: number, g: number, side: Float64Array): number {
+/** Signed distances of g's corners from f's plane into `side`; the smaller of what lies on either side, −1 if all is off. */
+function straddle(
+  p: Float64Array,
+  index: Uint32Array,
+  f: number,
+  g: number,
+  side: Float64Array,
+  tolerance: number,
+): number {
   const a = 3 * index[3 * f];
   const b = 3 * index[3 * f + 1];
   const c = 3 * index[3 * f + 2];
@@ -186,8 +199,8 @@ function straddle(p: Float64Array, index: Uint32Array, f: number, g: number, sid
   const nx = uy * vz - uz * vy;
   const ny = uz * vx - ux * vz;
   const nz = ux * vy - uy * vx;
-  let above = 0;
-  let below = 0;
+  let above = -Infinity;
+  let below = Infinity;
   for (let k = 0; k < 3; k++) {
     const v = 3 * index[3 * g + k];
     const d = nx * (p[v] - p[a]) + ny * (p[v + 1] - p[a + 1]) + nz * (p[v + 2] - p[a + 2]);
@@ -195,8 +208,10 @@ function straddle(p: Float64Array, index: Uint32Array, f: number, g: number, sid
     if (d > above) above = d;
     if (d < below) below = d;
   }
+  const off = tolerance * Math.sqrt(nx * nx + ny * ny + nz * nz);
+  if (above < -off || below > off) return -1;
   const least = above < -below ? above : -below;
-  return least > 0 ? least / Math.sqrt(nx * nx + ny * ny + nz * nz) : 0;
+  return least > 0 ? (least / off) * tolerance : 0;
 }
 
 function normalInto(p: Float64Array, a: number, b: number, c: number, out: number[]): void {
@@ -216,8 +231,14 @@ function interval(p: Float64Array, corners: number[], side: Float64Array, line: 
     const t = side[k] / (side[k] - side[n]);
     const at = [0, 1, 2].map((i) => p[corners[k] + i] + t * (p[corners[n] + i] - p[corners[k] + i]));
     const along = at[0] * line[0] + at[1] * line[1] + at[2] * line[2];
-    if (along < out[0]) ((out[0] = along), out.splice(2, 3, ...at));
-    if (along > out[1]) ((out[1] = along), out.splice(5, 3, ...at));
+    if (along < out[0]) {
+      out[0] = along;
+      out.splice(2, 3, ...at);
+    }
+    if (along > out[1]) {
+      out[1] = along;
+      out.splice(5, 3, ...at);
+    }
   }
   return out;
 }

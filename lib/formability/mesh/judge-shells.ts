@@ -1,7 +1,7 @@
 import type { Columns } from '../dexel/columns';
 import type { MeshPlace, MeshWarning } from '../report';
 import { buildEdges } from './build-edges';
-import { boxesMeet, chooseCandidates } from './choose-candidates';
+import { boxesMeet, chooseCandidates, type Candidates } from './choose-candidates';
 import { dropFacets } from './drop-facets';
 import { shellBoxes } from './facet-boxes';
 import { findFloating } from './find-floating';
@@ -17,6 +17,8 @@ import { signedVolume } from './signed-volume';
 
 /** Fewer columns than this share that look doubly covered are grazing noise. */
 const STRAY_COLUMNS = 1e-4;
+/** Grid error of a volume by columns, as a share. */
+const COLUMNS_AGREE = 0.01;
 
 /** How the shells lie to one another, and what volume they fill together. */
 export interface ShellJudgement {
@@ -32,15 +34,18 @@ export interface ShellJudgement {
 export function judgeShells(prepared: Prepared, columns: Columns): ShellJudgement {
   const { mesh, shells, edges, toleranceMm: tolerance } = prepared;
   const boxes = shells.count > 1 ? shellBoxes(mesh.index, mesh.position, shells.ofFacet, shells.count) : null;
-  const facets = chooseCandidates(mesh, shells, edges, boxes, columns, tolerance);
-  const meetings = findMeetings(mesh, shells, facets, tolerance, edges.nonManifold > 0);
+  const candidates = chooseCandidates(mesh, shells, edges, boxes, columns, tolerance);
+  const meetings = findMeetings(mesh, shells, candidates, tolerance, edges.nonManifold > 0);
   const opposed = findOpposed(mesh.index, edges, mesh.vertices);
   const covered = columns.count.reduce((sum, n) => sum + (n > 0 ? 1 : 0), 0);
   const odd = columns.overlapColumns > Math.max(2, STRAY_COLUMNS * covered);
   const doubtful = odd || meetings.own.at.length > 0 || (boxes !== null && boxesMeet(boxes, tolerance));
   const { capped } = prepared;
   const signed = signedVolume(capped.mesh, 0, 0);
-  const union = capped.sealed && doubtful ? uniteExactly(prepared, facets, opposed) : null;
+  const exact = capped.sealed && doubtful ? uniteExactly(prepared, candidates, opposed) : null;
+  // Where shells were not looked at in themselves, the columns must bear the result out.
+  const borne = !candidates.apart || exact === null || agree(exact.volumeMm3, columns.solidVolume);
+  const union = borne ? exact : null;
   const slop = 4 * SHELL_SHIFT * sizeOf(prepared) * (union?.cutAreaMm2 ?? 0) + 1e-9 * Math.abs(signed);
   const differs = union !== null && Math.abs(signed - union.volumeMm3) > slop;
   const excess = union === null ? odd : differs && signed > union.volumeMm3;
@@ -107,11 +112,22 @@ function takeThick(
   return { thick, thin };
 }
 
-function uniteExactly(prepared: Prepared, facets: Uint32Array, opposed: Uint8Array | null): Union | null {
+function uniteExactly(
+  prepared: Prepared,
+  { facets, apart }: Candidates,
+  opposed: Uint8Array | null,
+): Union | null {
   const { mesh, shells, edges, capped } = prepared;
   const size = sizeOf(prepared);
   if (opposed === null && capped.mesh === mesh) {
-    return measureUnion(mesh.index, mesh.position, perturbMesh(mesh, shells, size), edges, facets);
+    return measureUnion(
+      mesh.index,
+      mesh.position,
+      perturbMesh(mesh, shells, size),
+      edges,
+      facets,
+      apart ? (t) => shells.ofFacet[t] : undefined,
+    );
   }
   const { index, position, vertices } = capped.mesh;
   const marks = new Uint8Array(capped.mesh.triangles);
@@ -130,6 +146,10 @@ function volumeOf(
   if (!sealed) return columns.solidVolume;
   if (union === null) return odd ? signed - columns.excessVolume : signed;
   return union.volumeMm3;
+}
+
+function agree(one: number, other: number): boolean {
+  return Math.abs(one - other) <= COLUMNS_AGREE * Math.abs(other);
 }
 
 function sizeOf({ min, max }: Pick<Prepared, 'min' | 'max'>): number {

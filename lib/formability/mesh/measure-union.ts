@@ -3,6 +3,7 @@ import { buildBoxTree, visitPairs } from './box-tree';
 import { facetBoxes } from './facet-boxes';
 import { FacetCover } from './facet-cover';
 import { FacetCuts } from './facet-cuts';
+import { LEAST_PAIRS, MOST_PAIRS_PER_FACET } from './find-meetings';
 import { crossesFromVertex, pierceFacets, type Crossing } from './pierce-facets';
 import { sharedVertices } from './shared-vertices';
 import { WindingProbe } from './winding-probe';
@@ -27,6 +28,7 @@ export interface Union {
  * edge goes through another facet, and is fixed once for each connected surface by a ray.
  * @param moved positions in general position (perturb-mesh); the volumes themselves are taken from `position`
  * @param facets those that may cross others; the rest must not
+ * @param groupOf where given, facets of one group do not cross
  * @returns null where the surface is not closed in the sense of winding, or crosses itself too often or at a vertex
  */
 export function measureUnion(
@@ -35,8 +37,9 @@ export function measureUnion(
   moved: Float64Array,
   edges: Edges,
   facets: Uint32Array,
+  groupOf?: (facet: number) => number,
 ): Union | null {
-  const cuts = findCuts(index, moved, facets);
+  const cuts = findCuts(index, moved, facets, groupOf);
   if (cuts === null) return null;
   const winding = spreadWinding(index, moved, edges, cuts);
   if (winding === null) return null;
@@ -56,7 +59,12 @@ export function measureUnion(
   return { volumeMm3: six / 6, covered, cutAreaMm2: cutArea };
 }
 
-function findCuts(index: Uint32Array, p: Float64Array, facets: Uint32Array): FacetCuts | null {
+function findCuts(
+  index: Uint32Array,
+  p: Float64Array,
+  facets: Uint32Array,
+  groupOf?: (facet: number) => number,
+): FacetCuts | null {
   const cuts = new FacetCuts(index.length / 3);
   const crossing: Crossing = {
     points: new Float64Array(6),
@@ -65,8 +73,11 @@ function findCuts(index: Uint32Array, p: Float64Array, facets: Uint32Array): Fac
     startEdgeOfB: -1,
     endEdgeOfB: -1,
   };
-  const tree = buildBoxTree(facetBoxes(index, p, facets));
+  const tree = buildBoxTree(facetBoxes(index, p, facets), groupOf ? (i) => groupOf(facets[i]) : undefined);
+  const most = LEAST_PAIRS + MOST_PAIRS_PER_FACET * facets.length;
+  let pairs = 0;
   const sound = visitPairs(tree, 0, (i, j) => {
+    if (++pairs > most) return false;
     const [f, g] = [facets[i], facets[j]];
     const { count, vertex } = sharedVertices(index, f, g);
     if (count > 1) return true;
@@ -99,7 +110,10 @@ function spreadWinding(
     for (let at = 0; at < end; at++) {
       const t = queue[at];
       const lies = Math.abs(planArea(index, p, t));
-      if (lies > most) ((most = lies), (flattest = t));
+      if (lies > most) {
+        most = lies;
+        flattest = t;
+      }
       for (let side = 0; side < 3; side++) {
         const n = neighbourOver(edges, t, side);
         if (n < 0) continue;

@@ -4,6 +4,11 @@ import type { Mesh } from './mesh';
 import { shellVolumes } from './signed-volume';
 import { WindingProbe } from './winding-probe';
 
+/** Volumes below this share of the whole say nothing of in and out. */
+const ROUNDING = 1e-9;
+/** More shells than this in an open file are a heap of loose facets, judged as one. */
+const MOST_LOOSE = 2000;
+
 /**
  * Turns inside-out shells: a shell is right when it is positive outside all others; a negative one is right
  * inside another (a void). Where every outermost shell is negative the whole file is inside out.
@@ -11,10 +16,16 @@ import { WindingProbe } from './winding-probe';
  */
 export function orientShells(mesh: Mesh, shells: Shells, edges: Edges): number[] {
   const volumes = shellVolumes(mesh, shells.ofFacet, shells.count);
-  if (!volumes.some((volume) => volume < 0)) return [];
+  const whole = volumes.reduce((sum, volume) => sum + Math.abs(volume), 0);
+  if (!volumes.some((volume) => volume < -ROUNDING * whole)) return [];
   const all = Array.from(volumes, (_, shell) => shell);
+  if (shells.count > MOST_LOOSE && edges.boundary > 0) {
+    if (volumes.reduce((sum, volume) => sum + volume, 0) > 0) return [];
+    turn(mesh, shells, edges, new Set(all));
+    return all;
+  }
   const outermost = shells.count === 1 ? all : findOutermost(mesh, shells);
-  const wrong = outermost.filter((shell) => volumes[shell] < 0);
+  const wrong = outermost.filter((shell) => volumes[shell] < -ROUNDING * whole);
   const flip = outermost.length > 0 && wrong.length === outermost.length ? all : wrong;
   if (flip.length > 0) turn(mesh, shells, edges, new Set(flip));
   return flip;

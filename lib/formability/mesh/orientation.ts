@@ -6,12 +6,40 @@
 export function orientation(p: Float64Array, a: number, b: number, c: number, d: number): number {
   let sign = 1;
   let swap = 0;
-  if (a > b) ((swap = a), (a = b), (b = swap), (sign = -sign));
-  if (c > d) ((swap = c), (c = d), (d = swap), (sign = -sign));
-  if (a > c) ((swap = a), (a = c), (c = swap), (sign = -sign));
-  if (b > d) ((swap = b), (b = d), (d = swap), (sign = -sign));
-  if (b > c) ((swap = b), (b = c), (c = swap), (sign = -sign));
-  const [i, j, k, l] = [3 * a, 3 * b, 3 * c, 3 * d];
+  if (a > b) {
+    swap = a;
+    a = b;
+    b = swap;
+    sign = -sign;
+  }
+  if (c > d) {
+    swap = c;
+    c = d;
+    d = swap;
+    sign = -sign;
+  }
+  if (a > c) {
+    swap = a;
+    a = c;
+    c = swap;
+    sign = -sign;
+  }
+  if (b > d) {
+    swap = b;
+    b = d;
+    d = swap;
+    sign = -sign;
+  }
+  if (b > c) {
+    swap = b;
+    b = c;
+    c = swap;
+    sign = -sign;
+  }
+  const i = 3 * a;
+  const j = 3 * b;
+  const k = 3 * c;
+  const l = 3 * d;
   const ux = p[j] - p[i];
   const uy = p[j + 1] - p[i + 1];
   const uz = p[j + 2] - p[i + 2];

@@ -39,14 +39,24 @@ export function pierceFacets(
     const n = (k + 1) % 3;
     if (sideA[k] > 0 !== sideA[n] > 0 && passes(p, index, index[a + k], index[a + n], b)) {
       const isEnd = sideA[k] > 0;
-      if (isEnd) ((out.endEdgeOfA = k), ends++);
-      else ((out.startEdgeOfA = k), starts++);
+      if (isEnd) {
+        out.endEdgeOfA = k;
+        ends++;
+      } else {
+        out.startEdgeOfA = k;
+        starts++;
+      }
       writePoint(p, index[a + k], index[a + n], sideA[k], sideA[n], out.points, isEnd ? 3 : 0);
     }
     if (sideB[k] > 0 !== sideB[n] > 0 && passes(p, index, index[b + k], index[b + n], a)) {
       const isEnd = !(sideB[k] > 0);
-      if (isEnd) ((out.startEdgeOfB = k), ends++);
-      else ((out.endEdgeOfB = k), starts++);
+      if (isEnd) {
+        out.startEdgeOfB = k;
+        ends++;
+      } else {
+        out.endEdgeOfB = k;
+        starts++;
+      }
       writePoint(p, index[b + k], index[b + n], sideB[k], sideB[n], out.points, isEnd ? 3 : 0);
     }
   }
