@@ -2,8 +2,11 @@ import type { TenantTx } from '@/db/tenant';
 import type { UploadView } from './schemas';
 import { meshOfUpload, type UploadRow } from './upload-data';
 
-/** Bytes of one part; fixed, so that a reload finds the same parts. S3 wants at least 5 MiB in all but the last. */
-export const partBytes = 8 * 1024 * 1024;
+/**
+ * Bytes of one part; fixed, so that a reload finds the same parts. The least that S3 takes in all but the last (5 MiB),
+ * because only whole parts are kept when sending breaks off.
+ */
+export const partBytes = 5 * 1024 * 1024;
 
 export const partCountOf = (upload: Pick<UploadRow, 'bytes' | 'partBytes'>) =>
   Math.ceil(upload.bytes / upload.partBytes);

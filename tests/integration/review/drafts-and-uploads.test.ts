@@ -190,13 +190,13 @@ describe('drafts', () => {
 describe('uploads', () => {
   it('fix size and parts at the start, and remember the parts that the store has', async () => {
     const templateId = await newTemplate(designer);
-    const bytes = 20_000_000;
+    const bytes = 12_000_000;
     const upload = await startUpload(designer, templateId, { fileName: 'big.stl', bytes });
-    expect(upload).toMatchObject({ state: 'sending', partBytes: 8_388_608, partCount: 3, partsDone: [] });
+    expect(upload).toMatchObject({ state: 'sending', partBytes: 5_242_880, partCount: 3, partsDone: [] });
     const { parts } = await presignParts(designer, upload.id, { parts: [3, 1, 1] });
     expect(parts.map(({ number, bytes: length }) => [number, length])).toEqual([
-      [3, bytes - 2 * 8_388_608],
-      [1, 8_388_608],
+      [3, bytes - 2 * 5_242_880],
+      [1, 5_242_880],
     ]);
     await refused(() => presignParts(designer, upload.id, { parts: [1, 4] }), {
       code: 'invalid',

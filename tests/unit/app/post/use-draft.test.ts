@@ -24,10 +24,13 @@ describe('the draft on the page', () => {
         headers: { 'content-type': 'application/problem+json' },
       });
     if (body && gone)
-      return new Response(JSON.stringify({ detail: 'There is none.', status: 409, type: '/problems/no-draft' }), {
-        status: 409,
-        headers: { 'content-type': 'application/problem+json' },
-      });
+      return new Response(
+        JSON.stringify({ detail: 'There is none.', status: 409, type: '/problems/no-draft' }),
+        {
+          status: 409,
+          headers: { 'content-type': 'application/problem+json' },
+        },
+      );
     if (body) onServer += 1;
     gone = false;
     return Response.json({ version: onServer, changedBy: { id: 'p2', name: 'Lewin Okafor' } });

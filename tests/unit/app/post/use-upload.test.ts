@@ -91,6 +91,59 @@ describe('the file of the draft', () => {
     expect(asked).toHaveLength(1);
   });
 
+  it('sends after a reload only the parts that had not arrived whole, and keeps each at once', async () => {
+    const broken = { ...upload('sending'), bytes: 25, partBytes: 10, partCount: 3, partsDone: [1] };
+    const puts: { url: string; bytes: number }[] = [];
+    // Answers each part as the store does; the last one is held back to pause in the middle of it.
+    class Store {
+      upload: { onprogress?: (event: { loaded: number }) => void } = {};
+      onloadend?: () => void;
+      status = 0;
+      url = '';
+      getResponseHeader = () => (this.status === 200 ? '"etag"' : null);
+      open(_: string, url: string) {
+        this.url = url;
+      }
+      send(body: Blob) {
+        puts.push({ url: this.url, bytes: body.size });
+        this.upload.onprogress?.({ loaded: body.size });
+        if (this.url.endsWith('/3') && puts.length < 3) return;
+        this.status = 200;
+        queueMicrotask(() => this.onloadend?.());
+      }
+      abort() {
+        this.onloadend?.();
+      }
+    }
+    await show(broken, () => problem(500, 'unasked'));
+    vi.stubGlobal('XMLHttpRequest', Store);
+    vi.stubGlobal(
+      'fetch',
+      vi.fn(async (path: string, init: RequestInit) => {
+        if (!path.endsWith('/parts'))
+          return Response.json(path.endsWith('/complete') ? { ...broken, state: 'reading' } : broken);
+        const [number] = (JSON.parse(String(init.body)) as { parts: number[] }).parts;
+        return Response.json({ parts: [{ number, url: `/store/${number}`, bytes: number === 3 ? 5 : 10 }] });
+      }),
+    );
+    expect(file.sending).toMatchObject({ phase: 'paused', needsFile: true, progress: 0.4 });
+    const picked = new File([new Uint8Array(25)], 'lid.stl', { lastModified: 1_790_000_000_000 });
+    await act(async () => file.resume(picked));
+    await vi.waitFor(() => expect(file.sending.upload?.partsDone).toEqual([1, 2]));
+    expect(file.sending.progress).toBe(1);
+    await act(async () => file.pause());
+    await vi.waitFor(() =>
+      expect(file.sending).toMatchObject({ phase: 'paused', progress: 0.8, trouble: null }),
+    );
+    await act(async () => file.resume());
+    await vi.waitFor(() => expect(file.sending.phase).toBe('reading'));
+    expect(puts).toEqual([
+      { url: '/store/2', bytes: 10 },
+      { url: '/store/3', bytes: 5 },
+      { url: '/store/3', bytes: 5 },
+    ]);
+  });
+
   it('is read again in another unit, and stays as it was when that is refused', async () => {
     await show(upload('ready'), () => Response.json({ ...upload('reading'), unit: 'in' }));
     await act(async () => file.readIn('in'));

@@ -92,10 +92,10 @@ export function FilePanel({ sending, begin, resume, pause, cancel, readIn, unit,
             />
             {sending.needsFile ? (
               <FileDrop
-                label={`Pick ${upload.fileName} again to go on`}
+                label={pickAgain(upload)}
                 accept={accept}
                 onFiles={([file]) => pick(file)}
-                help={`${upload.partsDone.length} of ${upload.partCount} parts are in the store already.`}
+                help="Choose the same file, unchanged; the browser does not keep it over a reload."
                 error={wrongName}
               />
             ) : null}
@@ -154,6 +154,12 @@ export function FilePanel({ sending, begin, resume, pause, cancel, readIn, unit,
 }
 
 type Upload = NonNullable<Props['sending']['upload']>;
+
+/** What is kept of a file that was broken off, and what to do. Only whole parts are kept. */
+function pickAgain({ fileName, partsDone, partCount }: Upload): string {
+  if (partsDone.length === 0) return `No part of ${fileName} had arrived whole: pick it again to send it`;
+  return `${partsDone.length} of ${partCount} parts kept: pick ${fileName} again to send the others`;
+}
 
 /** True for a file that carries no unit of its own and was read, or was refused for its size in the unit given. */
 function takesUnit({ state, mesh, refusal, fileName }: Upload): boolean {

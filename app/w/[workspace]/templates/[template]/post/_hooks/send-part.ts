@@ -36,8 +36,8 @@ function putOnce(url: string, body: Blob, { signal, onProgress }: Options): Prom
 function storeTrouble(status: number): ApiError {
   const detail =
     status === 0
-      ? 'The connection to the file store broke off. What was sent is kept; press Resume to go on.'
-      : `The file store answered ${status}. What was sent is kept; press Resume to go on.`;
+      ? 'The connection to the file store broke off. Parts that arrived whole are kept; press Resume to go on.'
+      : `The file store answered ${status}. Parts that arrived whole are kept; press Resume to go on.`;
   return new ApiError(status, 'The file could not be sent', detail);
 }
 

@@ -21,7 +21,8 @@ export type Sending = {
   needsFile: boolean;
 };
 
-const atOnce = 3;
+/** Parts under way at the same time: few, so that on a slow line each is whole, and kept, soon. */
+const atOnce = 2;
 const triesPerPart = 5;
 
 function phaseOf(upload: UploadView | null, running: boolean): Sending['phase'] {
@@ -75,43 +76,44 @@ export function useUpload(
         setSentBytes(whole + [...inFlight.values()].reduce((sum, bytes) => sum + bytes, 0));
       };
       report();
-      try {
-        let latest = current;
-        const missing = Array.from({ length: current.partCount }, (_, i) => i + 1).filter(
-          (n) => !done.has(n),
+      const missing = Array.from({ length: current.partCount }, (_, i) => i + 1).filter((n) => !done.has(n));
+      const sendOne = async (number: number) => {
+        const { parts } = await api<{ parts: Part[] }>(`${base}/parts`, {
+          body: { parts: [number] },
+          signal: controller.signal,
+        });
+        const from = (number - 1) * current.partBytes;
+        const etag = await sendPart(parts[0].url, file.current!.slice(from, from + parts[0].bytes), {
+          signal: controller.signal,
+          tries: triesPerPart,
+          onProgress: (bytes) => {
+            inFlight.set(number, bytes);
+            report();
+          },
+        });
+        await api<UploadView>(`${base}/parts/done`, { body: { number, etag } });
+        inFlight.delete(number);
+        done.add(number);
+        report();
+        // At once, so that a pause in the middle of the others does not send this one again.
+        setUpload((old) =>
+          old?.id === current.id && old.state === 'sending'
+            ? { ...old, partsDone: [...done].sort((a, b) => a - b) }
+            : old,
         );
-        for (let at = 0; at < missing.length; at += atOnce) {
-          const numbers = missing.slice(at, at + atOnce);
-          const { parts } = await api<{ parts: Part[] }>(`${base}/parts`, {
-            body: { parts: numbers },
-            signal: controller.signal,
-          });
-          const answers = await Promise.all(
-            parts.map(async (part) => {
-              const from = (part.number - 1) * current.partBytes;
-              const etag = await sendPart(part.url, file.current!.slice(from, from + part.bytes), {
-                signal: controller.signal,
-                tries: triesPerPart,
-                onProgress: (bytes) => {
-                  inFlight.set(part.number, bytes);
-                  report();
-                },
-              });
-              const answer = await api<UploadView>(`${base}/parts/done`, {
-                body: { number: part.number, etag },
-              });
-              inFlight.delete(part.number);
-              done.add(part.number);
-              report();
-              return answer;
-            }),
-          );
-          latest = answers.reduce((a, b) => (b.partsDone.length > a.partsDone.length ? b : a), latest);
-          take(latest);
-        }
+      };
+      const lane = async () => {
+        for (let number = missing.shift(); number !== undefined; number = missing.shift())
+          await sendOne(number);
+      };
+      try {
+        await Promise.all(Array.from({ length: atOnce }, lane));
         take(await api<UploadView>(`${base}/complete`, { method: 'POST', body: {} }));
       } catch (error) {
         if (!controller.signal.aborted) setTrouble(explainError(error).detail);
+        // The other lane stops too; what it had half sent is not kept, so it is not shown as sent.
+        controller.abort();
+        setSentBytes(0);
         // The server has forgotten the parts: Resume sends them all.
         if (error instanceof ApiError && error.reason === 'parts-missing')
           await api<UploadView>(base).then(take, () => undefined);
