@@ -35,7 +35,14 @@ export function writeSections(
     sound: columns.openColumns + columns.overlapColumns === 0 && prepared.min[2] >= 0,
   });
   const regions = undercuts.regions.map((region) => ({ ...region, at: here(region.at) }));
-  const found = measureEdges(mesh, facets, edges, visibility, holes.bore);
+  const found = measureEdges(
+    mesh,
+    facets,
+    edges,
+    visibility,
+    holes.bore,
+    limits.edgeRadiusGauges * recipe.sheet.gaugeMm,
+  );
   const walls = part.walls.report;
   const margin = 2 * machine.frameMarginMm;
   return {
