@@ -5,6 +5,8 @@ import path from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
 import type { Report } from '@/lib/formability/report';
 import { frustum } from '../../fixtures/meshes/solids';
+import { plain3mf } from '../../fixtures/meshes/write-3mf';
+import { cylindersStep } from '../../fixtures/meshes/write-step';
 import { binaryStl } from '../../fixtures/meshes/write-stl';
 
 const root = path.resolve(import.meta.dirname, '../../..');
@@ -52,6 +54,16 @@ describe('npm run formability', () => {
     ).toBeLessThanOrEqual(100);
   });
 
+  it('reads 3MF and STEP by their content, whatever they are called', () => {
+    const mesh = file('mesh.bin', plain3mf(frustum(60, 40, 20, 4)));
+    const surfaces = file('surfaces.bin', cylindersStep([[0, 0, 20, 10]]));
+    const [as3mf, asStep] = [mesh, surfaces].map((path) => JSON.parse(run(path, '--json').out) as Report);
+    expect(as3mf.input).toMatchObject({ format: '3mf', triangles: 12 });
+    expect(asStep.input).toMatchObject({ format: 'step', bodies: 1 });
+    expect(asStep.timings.convertMs).toBeGreaterThan(0);
+    expect(run(surfaces).out).toContain('curved surfaces cut into facets within 0.006 mm');
+  });
+
   it('takes a recipe', () => {
     const recipe = file(
       'recipe.json',
@@ -64,6 +76,8 @@ describe('npm run formability', () => {
 
   it.each([
     ['a broken mesh', [file('bad.stl', binaryStl(frustum(60, 40, 20, 4)).slice(0, 300))], 'truncated'],
+    ['a broken 3MF', [file('bad.3mf', plain3mf(frustum(60, 40, 20, 4)).slice(0, 300))], 'truncated'],
+    ['a broken STEP file', [file('bad.step', cylindersStep([[0, 0, 20, 10]]).slice(0, 900))], 'truncated'],
     ['a missing file', [path.join(folder, 'none.stl')], 'unreadable'],
     ['a folder', [folder], 'unreadable'],
     [

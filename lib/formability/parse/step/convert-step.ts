@@ -9,10 +9,9 @@ export interface ConvertLimits {
   stepWallMs?: number;
   /** Most memory of the converting process, in megabytes. */
   stepMemoryMb?: number;
+  /** Most solids and shells of one file. */
+  stepBodies?: number;
 }
-
-/** Most solids and shells of one file. */
-const MAX_BODIES = 500;
 
 /**
  * How fine curved surfaces are cut: a share of the mean side of the box, within absolute bounds, and never more than
@@ -28,14 +27,19 @@ const FINENESS = { sizeShare: 2e-4, finestMm: 0.005, coarsestMm: 0.05, angularDe
  */
 export async function convertStep(
   bytes: Uint8Array,
-  { stepWallMs = 120_000, stepMemoryMb = 3_000, signal }: ConvertLimits & { signal?: AbortSignal } = {},
+  {
+    stepWallMs = 120_000,
+    stepMemoryMb = 3_000,
+    stepBodies = 500,
+    signal,
+  }: ConvertLimits & { signal?: AbortSignal } = {},
 ): Promise<RawMesh> {
   checkStepText(bytes);
   const limits: ConverterLimits = {
     wallMs: stepWallMs,
     memoryMb: stepMemoryMb,
     heapMb: Math.round(stepMemoryMb / 2),
-    bodies: MAX_BODIES,
+    bodies: stepBodies,
     triangles: MAX_TRIANGLES,
     ...FINENESS,
   };
