@@ -5,6 +5,7 @@ import { useCallback, useEffect, useMemo, useState } from 'react';
 import { ToggleButton, ToggleButtonGroup } from 'react-aria-components';
 import { findSectionWalls, type SectionWall } from '@/lib/stage-model/find-section-walls';
 import { meetSection } from '@/lib/stage-model/meet-section';
+import { openSection } from '@/lib/stage-model/open-section';
 import { cutSection, type SectionLine } from '@/lib/stage-model/section';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { formatLength } from '../format-figure';
@@ -71,13 +72,14 @@ export function ProfileStrip(props: ProfileStripProps) {
     const [u, z] = [(wall.from[0] + wall.to[0]) / 2, (wall.from[1] + wall.to[1]) / 2];
     onWallSelect?.(axis === 'y' ? [u, atMm, z] : [atMm, u, z], wall.draftDeg);
   };
-  // An opening cut between two rows of cups would show the tray between them only: it goes to where the part is high.
   const [low, top] = limits;
   useEffect(() => {
     if (!model || cutBy === 'hand') return;
-    const met = meetSection(model, { axis, atMm }, [low, top], cutBy === 'opening' ? high / 2 : 0);
+    const line = { axis, atMm };
+    const opening = cutBy === 'opening' ? openSection(model, line, [low, top]) : null;
+    const met = opening ?? meetSection(model, line, [low, top]);
     if (met && met.atMm !== atMm) onSectionLineChange(met);
-  }, [model, cutBy, axis, atMm, low, top, high, onSectionLineChange]);
+  }, [model, cutBy, axis, atMm, low, top, onSectionLineChange]);
   const side = axis === 'y' ? 'front' : 'right';
   const broken = walls.filter((wall) => wall.draftDeg < limitDeg).length;
   const open = section?.loops.some((loop) => !loop.closed) ?? false;

@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { meetSection } from '@/lib/stage-model/meet-section';
+import { openSection } from '@/lib/stage-model/open-section';
 import { cutSection } from '@/lib/stage-model/section';
 import { frustum } from './shapes';
 
@@ -30,15 +31,26 @@ describe('a cut that nobody placed by hand', () => {
     expect(cutSection(pair(false), met!).boundsMm).not.toBeNull();
   });
 
-  it('goes on to where the part is as high as is asked', () => {
-    const low = meetSection(pair(true), { axis: 'y', atMm: 0 }, [-50, 50]);
-    expect(low!.atMm).toBe(0);
-    const high = meetSection(pair(true), { axis: 'y', atMm: 0 }, [-50, 50], 15);
-    expect(cutSection(pair(true), high!).boundsMm!.high).toBeGreaterThanOrEqual(15);
-    expect(Math.abs(high!.atMm)).toBeLessThan(28);
-  });
-
   it('says so where no line meets', () => {
     expect(meetSection(pair(false), { axis: 'y', atMm: 0 }, [-15, 15])).toBeNull();
+  });
+});
+
+describe('the cut that a page opens with', () => {
+  it('stays in the middle where that tells as much as any other', () => {
+    const line = { axis: 'y', atMm: 0 } as const;
+    expect(openSection({ positions: frustum(100, 40, 5) }, line, [-50, 50])).toEqual(line);
+  });
+
+  it('goes through the parts where the middle runs between them', () => {
+    for (const withPlate of [true, false]) {
+      const opened = openSection(pair(withPlate), { axis: 'y', atMm: 0 }, [-50, 50]);
+      expect(cutSection(pair(withPlate), opened!).boundsMm!.high).toBeGreaterThan(15);
+      expect(Math.abs(opened!.atMm)).toBeLessThan(28);
+    }
+  });
+
+  it('says so where nothing near the middle is met', () => {
+    expect(openSection(pair(false), { axis: 'y', atMm: 0 }, [-15, 15])).toBeNull();
   });
 });

@@ -2,6 +2,7 @@ import { describe, expect, it } from 'vitest';
 import {
   figureOf,
   measureOf,
+  pairMark,
   pairWords,
 } from '@/app/w/[workspace]/templates/[template]/[letter]/_components/measure-of';
 
@@ -55,6 +56,14 @@ describe('measured against limit in words', () => {
     expect(pair('spacing', 'fail', [1.62, 1], 'height/gap')).toBe('measured 1.62, at most 1 wanted');
     expect(pair('draw', 'pass', [1.8, 3], 'ratio')).toBe('measured 1.80, at most 3 wanted');
     expect(pair('draw', 'fail', [0.31, 0.35])).toBe('measured 0.31\u202fmm, at least 0.35\u202fmm wanted');
+  });
+
+  it('fits on a mark', () => {
+    const mark = (checkId: string, measured: number, limit: number) =>
+      pairMark({ checkId, status: 'fail', measured, limit, unit: 'mm' }, 'mm');
+    expect(mark('undercut', 0.43, 0.2)).toBe('0.43, most 0.20\u202fmm');
+    expect(mark('edges', 0, 0.8)).toBe('0, least 0.80\u202fmm');
+    expect(mark('vents', 0.8, 0.4)).toBeNull();
   });
 
   it('says nothing where one is missing, nothing was run, or the two do not show the breach', () => {

@@ -18,7 +18,7 @@ describe('stagePins', () => {
 
   it('marks pinned threads and the places of findings that are not fine', () => {
     expect(pins.filter((pin) => pin.state === 'must-settle')).toHaveLength(2);
-    expect(pins.some((pin) => pin.label === 'Draft 2.4°, at least 5.0° wanted')).toBe(true);
+    expect(pins.some((pin) => pin.label === 'Draft 2.4, least 5.0°')).toBe(true);
     expect(pins.every((pin) => items.some((item) => item.key === itemOfPin(pin.id)))).toBe(true);
   });
 

@@ -88,6 +88,16 @@ export function pairWords(finding: Judged, units: Units): string | null {
   return `measured ${figureWords(measured, unit, units)}, ${least} ${figureWords(limit, unit, units)} wanted`;
 }
 
+/** The same as few words as a mark on the model has room for: `4.2, least 6.8°`. */
+export function pairMark(finding: Judged, units: Units): string | null {
+  const { measured, limit, unit } = finding;
+  const sense = pairWords(finding, units) === null ? null : senseOf(finding);
+  if (measured === null || limit === null || !sense) return null;
+  const { value, digits } = figureOf(measured, unit, units);
+  const bound = figureWords(limit, unit, units);
+  return `${formatNumber(value, digits)}, ${sense === 'at-least' ? 'least' : 'most'} ${bound}`;
+}
+
 /** One figure with its unit: `4.2°`, `0.31 mm`. */
 export function figureWords(value: number, unit: string, units: Units): string {
   const shown = figureOf(value, unit, units);

@@ -2,7 +2,7 @@ import type { Point, StageCamera, StagePin } from '@/app/_components/stage/stage
 import type { Units } from '@/app/_components/preferences';
 import { checkName } from '@/lib/review/check-words';
 import type { DocketGroup, DocketItem } from './docket-items';
-import { figureWords, pairWords } from './measure-of';
+import { figureWords, pairMark } from './measure-of';
 
 export interface Bounds {
   min: Point;
@@ -76,9 +76,10 @@ export function isExactPlace({ finding, thread }: DocketItem): boolean {
 function labelOf({ finding, thread }: DocketItem, units: Units): string {
   if (finding) {
     const { checkId, measured, unit } = finding;
-    const name = checkName(checkId);
-    const pair = pairWords(finding, units);
-    if (pair) return `${name} ${pair.replace(/^measured /, '')}`;
+    // `Edges` for `Edges and corners`: a mark has room for its figures only with a short name.
+    const name = checkName(checkId).split(/ (?:and|on|over|under) /)[0];
+    const pair = pairMark(finding, units);
+    if (pair) return `${name} ${pair}`;
     return measured === null ? name : `${name} ${figureWords(measured, unit, units)}`;
   }
   const text = thread?.notes[0]?.text ?? 'Note';

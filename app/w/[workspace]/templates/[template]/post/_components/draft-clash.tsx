@@ -43,7 +43,7 @@ export function DraftClash({ state, readerId, templatePath, onTheirs, onMine }: 
       <div className="flex flex-wrap gap-2">
         {gone ? <ButtonLink href={templatePath}>Go to the template</ButtonLink> : null}
         <Button onPress={onMine}>Keep mine</Button>
-        <Button variant="primary" onPress={onTheirs}>
+        <Button onPress={onTheirs}>
           {gone ? 'Reload' : isReader(clash, readerId) ? 'Take the other tab’s' : 'Take theirs'}
         </Button>
       </div>
