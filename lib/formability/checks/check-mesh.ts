@@ -17,7 +17,7 @@ const many = (count: number, one: string, more: string) => (count === 1 ? `one $
 
 const MEANING: Record<MeshWarning, Meaning> = {
   trailing_data: { weight: 'note', says: () => 'bytes follow after the last facet', todo: 'export the file again' },
-  normals_disagree: { weight: 'note', says: () => 'the normals written in the file point another way than its facets; the facets count', todo: '' },
+  normals_disagree: { weight: 'note', says: (n) => `the normals written in the file point another way than ${many(n, 'facet', 'of its facets')}; the facets count`, todo: '' },
   inverted: { weight: 'unsound', says: (n) => `${many(n, 'body was', 'bodies were')} inside out`, todo: 'export with normals outward' },
   inconsistent_winding: { weight: 'unsound', says: (n) => `facets face against their neighbours along ${many(n, 'edge', 'edges')}`, todo: 'unify the normals' },
   not_watertight: { weight: 'grave', says: (n, span) => `the surface is open along ${many(n, 'edge', 'edges')}, the widest gap ${say(span, 2)} mm across`, todo: 'close the surface' },

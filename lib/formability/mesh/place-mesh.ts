@@ -61,6 +61,19 @@ export function placeMesh(weld: Weld, placing: Placing): Placed {
   return { mesh, min, max, zBeforeDrop, reach, turn };
 }
 
+/** A point of the file, x and y in the turned file's frame, z above the bed: the frame of places in the report. */
+export function placePoint(
+  at: readonly [number, number, number],
+  placing: Placing,
+  { turn, zBeforeDrop }: Pick<Placed, 'turn' | 'zBeforeDrop'>,
+): Point {
+  const mm = at.map((value) => value * placing.mmPerUnit);
+  const [x, y, z] = turn
+    ? [0, 3, 6].map((row) => turn[row] * mm[0] + turn[row + 1] * mm[1] + turn[row + 2] * mm[2])
+    : mm;
+  return [x, y, placing.dropToBed ? z - zBeforeDrop : z];
+}
+
 /** Rows of the rotation that takes `up` to +Z by the shortest way; null where nothing turns. */
 export function turnToUp(up: readonly [number, number, number]): number[] | null {
   const length = Math.hypot(...up);

@@ -1,5 +1,5 @@
 import type { RawMesh } from '../parse/raw-mesh';
-import type { MeshPlace, MeshRepair, MeshWarning } from '../report';
+import type { MeshPlace, MeshRepair, MeshWarning, Point } from '../report';
 import { UnusableInput } from '../unusable-input';
 import { buildEdges, isBalanced, isClosed, type Edges } from './build-edges';
 import { capHoles, type Capped } from './cap-holes';
@@ -11,7 +11,7 @@ import { gatherPlaces, placesOfBoxes } from './gather-places';
 import { measureFacets, type Facets } from './measure-facets';
 import type { Mesh } from './mesh';
 import { orientShells } from './orient-shells';
-import { placeMesh, type Placed, type Placing } from './place-mesh';
+import { placeMesh, placePoint, type Placed, type Placing } from './place-mesh';
 import { rewindFacets } from './rewind-facets';
 import { sortTriangles } from './sort-triangles';
 import { splitTJunctions } from './split-t-junctions';
@@ -64,7 +64,7 @@ export function prepareMesh(raw: RawMesh, placing: Placing): Prepared {
   if (asStored.totalArea === 0) {
     throw new UnusableInput('no_triangles', 'no facet of the file has an area; export the body again');
   }
-  const places: MeshPlace[] = [];
+  const places = placeAgainst(raw, placing, placed);
   if (joined.length > 0) {
     warnings.add('needs_tolerant_weld');
     repairs.add('tolerant_weld');
@@ -154,6 +154,15 @@ function markWaste(
     else drop[t] = duplicate[t];
   }
   return { drop: collapsed + repeated > 0 ? drop : null, duplicate: repeated > 0 ? duplicate : null };
+}
+
+/** The first facet whose stored normal points another way, standing for all of them. */
+function placeAgainst(raw: RawMesh, placing: Placing, placed: Placed): MeshPlace[] {
+  if (!raw.against) return [];
+  const { count, facet } = raw.against;
+  const c = raw.coords.subarray(9 * facet, 9 * facet + 9);
+  const middle: Point = [(c[0] + c[3] + c[6]) / 3, (c[1] + c[4] + c[7]) / 3, (c[2] + c[5] + c[8]) / 3];
+  return [{ code: 'normals_disagree', at: placePoint(middle, placing, placed), count, sizeMm: 0 }];
 }
 
 function takeIndex(mesh: Mesh, index: Uint32Array): Edges {

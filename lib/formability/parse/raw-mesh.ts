@@ -8,6 +8,8 @@ export interface RawMesh {
   /** 9 × triangles. */
   coords: Float32Array;
   warnings: MeshWarning[];
+  /** Facets whose stored normal points another way: how many, and the first; where that is worth a warning. */
+  against?: { count: number; facet: number };
   /** The file's own unit, which wins over the recipe's; missing where the format has none. */
   unit?: MeshUnit;
   /** Separate bodies of the file: built objects of a 3MF, solids and shells of a STEP file. */

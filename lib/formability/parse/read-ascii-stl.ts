@@ -13,7 +13,7 @@ const LEAST_FACET_BYTES = 60;
  */
 export function readAsciiStl(bytes: Uint8Array): RawMesh {
   const reader = new TokenReader(bytes);
-  const state = { coords: new Float32Array(9 * 256), triangles: 0, against: 0 };
+  const state = { coords: new Float32Array(9 * 256), triangles: 0, against: 0, first: -1 };
   const ceiling = Math.ceil(bytes.length / LEAST_FACET_BYTES) * 9;
   const normal = new Float64Array(3);
   const warnings: MeshWarning[] = [];
@@ -38,12 +38,15 @@ export function readAsciiStl(bytes: Uint8Array): RawMesh {
     }
   }
   if (state.triangles === 0) throw nothingIn(bytes);
-  if (state.against > state.triangles / 100) warnings.push('normals_disagree');
+  const against =
+    state.against > state.triangles / 100 ? { count: state.against, facet: state.first } : undefined;
+  if (against) warnings.push('normals_disagree');
   return {
     format: 'stl-ascii',
     triangles: state.triangles,
     coords: state.coords.slice(0, state.triangles * 9),
     warnings,
+    against,
   };
 }
 
@@ -51,6 +54,8 @@ interface State {
   coords: Float32Array;
   triangles: number;
   against: number;
+  /** First facet so counted. */
+  first: number;
 }
 
 function grow(state: State, ceiling: number): void {
@@ -74,7 +79,8 @@ function readFacet(reader: TokenReader, state: State, normal: Float64Array): voi
   expect(reader, 'endloop');
   expect(reader, 'endfacet');
   state.triangles++;
-  if (pointsAgainst(state.coords, at, normal)) state.against++;
+  if (!pointsAgainst(state.coords, at, normal)) return;
+  if (state.against++ === 0) state.first = at / 9;
 }
 
 function pointsAgainst(c: Float32Array, at: number, normal: Float64Array): boolean {

@@ -22,7 +22,9 @@ export function readBinaryStl(bytes: Uint8Array): RawMesh {
   const count = view.getUint32(80, true);
   const warnings: MeshWarning[] = [];
   checkCount(view, count, length, warnings);
-  return { format: 'stl-binary', triangles: count, coords: readFacets(view, count, warnings), warnings };
+  const { coords, against } = readFacets(view, count);
+  if (against) warnings.push('normals_disagree');
+  return { format: 'stl-binary', triangles: count, coords, warnings, against };
 }
 
 function checkCount(view: DataView, count: number, length: number, warnings: MeshWarning[]): void {
@@ -71,9 +73,10 @@ function facetsLookReal(view: DataView, from: number, n: number): boolean {
   return withArea > 0;
 }
 
-function readFacets(view: DataView, count: number, warnings: MeshWarning[]): Float32Array {
+function readFacets(view: DataView, count: number): Pick<RawMesh, 'coords' | 'against'> {
   const coords = new Float32Array(count * 9);
   let against = 0;
+  let first = -1;
   for (let i = 0, o = 0, at = HEADER; i < count; i++, o += 9, at += FACET) {
     const ax = (coords[o] = view.getFloat32(at + 12, true));
     const ay = (coords[o + 1] = view.getFloat32(at + 16, true));
@@ -97,8 +100,8 @@ function readFacets(view: DataView, count: number, warnings: MeshWarning[]): Flo
       (dot > 0 && 4 * dot * dot < (nx * nx + ny * ny + nz * nz) * (sx * sx + sy * sy + sz * sz))
     ) {
       against++;
+      if (first < 0) first = i;
     }
   }
-  if (against > count / 100) warnings.push('normals_disagree');
-  return coords;
+  return against > count / 100 ? { coords, against: { count: against, facet: first } } : { coords };
 }

@@ -1,6 +1,8 @@
 import { describe, expect, it } from 'vitest';
+import { analyse } from '@/lib/formability/analyse';
 import { box, extrude, frustum } from '../../../fixtures/meshes/solids';
 import { addFacet, flipped, mapPoints, moved, reordered, scaled, together, turned, type Triangles } from '../../../fixtures/meshes/triangles'; // prettier-ignore
+import { binaryStl } from '../../../fixtures/meshes/write-stl';
 import { checkOf, reportOn } from '../run-engine';
 
 const coarse = { grid: { cellMm: 1 } };
@@ -285,4 +287,16 @@ describe('invariance of the mesh facts', () => {
     same(meshOf(scaled(part, 1e-3), { mesh: { unit: 'm' } }), 1, 1e-6);
     same(meshOf(scaled(part, 1e3), { mesh: { unit: 'micron' } }), 1, 1e-6);
   });
+});
+
+it('names the first facet whose stored normal points another way, where it stands after the drop', () => {
+  const bytes = binaryStl(moved(box(60, 40, 20), 0, 0, 5));
+  const view = new DataView(bytes.buffer);
+  // Facet 2 is half of the top: a normal straight down.
+  view.setFloat32(84 + 50 * 2 + 8, -1, true);
+  const { mesh } = analyse(bytes, coarse).report;
+  expect(mesh.warnings).toEqual(['floating', 'normals_disagree']);
+  const [place] = mesh.places.filter(({ code }) => code === 'normals_disagree');
+  expect(place).toMatchObject({ count: 1, sizeMm: 0 });
+  expect(place.at.map((value) => Math.round(value * 10) / 10)).toEqual([10, -6.7, 20]);
 });
