@@ -1,4 +1,5 @@
 import { createHash } from 'node:crypto';
+import { advise } from './advise';
 import type { AnalyseOptions } from './analyse-options';
 import type { CheckInput } from './checks/check-input';
 import { runChecks } from './checks/run-checks';
@@ -11,7 +12,7 @@ import { checkCoordinates } from './parse/check-coordinates';
 import { describeSource } from './parse/describe-source';
 import { readMesh } from './parse/read-mesh';
 import { MM_PER_UNIT, type EffectiveRecipe, type RecipeInput } from './recipe';
-import type { Analysis, AnalysisGeometry, Check } from './report';
+import type { Analysis, AnalysisGeometry } from './report';
 import { Stages } from './stages';
 import { surveyPart, type Part } from './survey-part';
 import { ENGINE_VERSION } from './version';
@@ -60,22 +61,22 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
       ...(options.geometryOnly ? {} : writePhysics(part, effective, geometric)),
     };
   });
-  const checks = stages.run('checks', () =>
-    judge(part, effective, sections, wallDraft, options.geometryOnly ?? false),
-  );
+  const input = checkInput(part, effective, sections, wallDraft, options.geometryOnly ?? false);
+  const checks = stages.run('checks', () => runChecks(input));
+  const advice = options.geometryOnly ? [] : stages.run('advice', () => advise(part, input, checks));
   const geometry = stages.run('geometry', () => drawGeometry(part));
   stages.finish();
-  return { report: { ...sections, advice: [], checks, timings: stages.timings }, geometry };
+  return { report: { ...sections, advice, checks, timings: stages.timings }, geometry };
 }
 
-function judge(
+function checkInput(
   part: Part,
   recipe: EffectiveRecipe,
   report: CheckInput['report'],
   wallDraft: DraftJudgement,
   geometryOnly: boolean,
-): Check[] {
-  return runChecks({
+): CheckInput {
+  return {
     recipe,
     report,
     walls: wallDraft.walls,
@@ -83,7 +84,7 @@ function judge(
     overhangs: findOverhangs(part.prepared.mesh, part.facets, part.holes.bore, recipe.limits.overhangDeg),
     geometryOnly,
     sizeMm: part.size,
-  });
+  };
 }
 
 function drawGeometry({

@@ -16,6 +16,7 @@ const WEIGHT = {
   draft: 12,
   sections: 10,
   checks: 5,
+  advice: 3,
   geometry: 2,
 };
 export type Stage = keyof typeof WEIGHT;

@@ -1,6 +1,6 @@
 import { FILAMENTS } from './materials/filaments';
 import { SHEETS } from './materials/sheets';
-import type { Check, CheckStatus, Report } from './report';
+import type { Advice, Check, CheckStatus, Report } from './report';
 
 const WIDTH = 100;
 const MARK: Record<CheckStatus, string> = { pass: 'ok  ', caution: 'LOOK', fail: 'FAIL', 'not-run': '--  ' };
@@ -11,7 +11,7 @@ export function summarise(report: Report, name: string): string {
   const order: CheckStatus[] = ['fail', 'caution', 'pass', 'not-run'];
   for (const status of order)
     lines.push(...report.checks.filter((c) => c.status === status).flatMap(checkLines));
-  lines.push('', verdict(report.checks));
+  lines.push(...adviceLines(report.advice), '', verdict(report.checks));
   lines.push('Every figure is an estimate, to be proven by a test pull. Mind hot sheet, pressure and fumes.');
   return `${lines.join('\n')}\n`;
 }
@@ -47,6 +47,25 @@ function checkLines(check: Check): string[] {
   const head = `${MARK[check.status]} ${check.id.padEnd(9)} `;
   const text = check.remedy ? `${check.message} ${check.remedy}` : check.message;
   return wrap(text, WIDTH - head.length).map((line, i) => (i === 0 ? head : ' '.repeat(head.length)) + line);
+}
+
+function adviceLines(advice: Advice[]): string[] {
+  if (advice.length === 0) return [];
+  return [
+    '',
+    'What buys most, tried with all checks:',
+    ...advice.flatMap(({ text, mends, costS, costG }, k) => {
+      const cost = `${signed(costS / 3600, 1)} h, ${signed(costG, 0)} g`;
+      return wrap(`${text} Mends ${mends.join(', ')}; print ${cost}.`, WIDTH - 5).map(
+        (line, i) => (i === 0 ? `  ${k + 1}. ` : '     ') + line,
+      );
+    }),
+  ];
+}
+
+function signed(value: number, digits: number): string {
+  const text = fixed(Math.abs(value), digits);
+  return Number(text) === 0 ? '±0' : `${value < 0 ? '−' : '+'}${text}`;
 }
 
 function verdict(checks: Check[]): string {

@@ -2,12 +2,11 @@ import type { CheckInput } from './checks/check-input';
 import { describeMesh } from './describe-mesh';
 import { undercutAreas } from './facet-output';
 import type { DraftJudgement } from './judge-draft';
-import { estimatePrint } from './measures/estimate-print';
+import { estimatePrint, facingAreas } from './measures/estimate-print';
 import { measureEdges } from './measures/measure-edges';
 import { measureLayers } from './measures/measure-layers';
 import { measurePlan } from './measures/measure-plan';
 import { measureShadow } from './measures/measure-shadow';
-import type { Facets } from './mesh/measure-facets';
 import type { EffectiveRecipe } from './recipe';
 import type { Point, Report } from './report';
 import type { Part } from './survey-part';
@@ -95,16 +94,3 @@ const NOT_COMPUTED: Pick<Report, 'sheet' | 'air' | 'ventMarks' | 'heat' | 'skin'
   skin: null,
   wallsUnderPressure: null,
 };
-
-/** Areas of walls, and of tops and undersides, for the print estimate. */
-function facingAreas({ area, nz }: Facets) {
-  let wallAreaMm2 = 0;
-  let topAreaMm2 = 0;
-  let bottomAreaMm2 = 0;
-  for (let t = 0; t < area.length; t++) {
-    wallAreaMm2 += area[t] * Math.sqrt(Math.max(0, 1 - nz[t] * nz[t]));
-    if (nz[t] > 0) topAreaMm2 += area[t] * nz[t];
-    else bottomAreaMm2 -= area[t] * nz[t];
-  }
-  return { wallAreaMm2, topAreaMm2, bottomAreaMm2 };
-}

@@ -1,4 +1,5 @@
 import { FILAMENTS } from '../materials/filaments';
+import type { Facets } from '../mesh/measure-facets';
 import type { EffectiveRecipe } from '../recipe';
 import type { PrintReport } from '../report';
 
@@ -53,4 +54,20 @@ export function estimatePrint(part: PrintInput, recipe: EffectiveRecipe): PrintR
     timeS,
     cost: (massG / 1000) * costs.materialPerKg + (timeS / 3600) * costs.machinePerHour + costs.labour,
   };
+}
+
+/** Areas of walls, and of tops and undersides, for the print estimate. */
+export function facingAreas({
+  area,
+  nz,
+}: Facets): Pick<PrintInput, 'wallAreaMm2' | 'topAreaMm2' | 'bottomAreaMm2'> {
+  let wallAreaMm2 = 0;
+  let topAreaMm2 = 0;
+  let bottomAreaMm2 = 0;
+  for (let t = 0; t < area.length; t++) {
+    wallAreaMm2 += area[t] * Math.sqrt(Math.max(0, 1 - nz[t] * nz[t]));
+    if (nz[t] > 0) topAreaMm2 += area[t] * nz[t];
+    else bottomAreaMm2 -= area[t] * nz[t];
+  }
+  return { wallAreaMm2, topAreaMm2, bottomAreaMm2 };
 }

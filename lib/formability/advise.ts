@@ -1,0 +1,116 @@
+import type { CheckInput } from './checks/check-input';
+import { runChecks } from './checks/run-checks';
+import { fillRecipe } from './fill-recipe';
+import { judgeDraft } from './judge-draft';
+import { candidateChanges } from './measures/candidate-changes';
+import { estimatePrint, facingAreas } from './measures/estimate-print';
+import { measureLayers } from './measures/measure-layers';
+import type { EffectiveRecipe, RecipeInput } from './recipe';
+import type { Advice, Check, CheckId, CheckStatus } from './report';
+import type { Part } from './survey-part';
+import { writePhysics } from './write-physics';
+
+const MOST_ADVICE = 3;
+const WEIGHT: Record<CheckStatus, number> = { fail: 3, caution: 1, pass: 0, 'not-run': 0 };
+
+/**
+ * The changes of the recipe that buy most: each is tried by running all checks on the changed recipe, on the same mesh.
+ * Ranked by what they mend, then by what they cost in print time. Those that make anything worse are left out.
+ */
+export function advise(part: Part, input: CheckInput, checks: Check[]): Advice[] {
+  const before = new Map(checks.map((check) => [check.id, check.status]));
+  const weight = total(checks);
+  if (weight === 0) return [];
+  const tried = candidateChanges(input.recipe, input.report, before).flatMap(({ change, text }) => {
+    const changed = judgeAgain(part, input, change);
+    const worse = changed.checks.some(
+      (check) => WEIGHT[check.status] > WEIGHT[before.get(check.id) ?? 'pass'],
+    );
+    const mends = changed.checks
+      .filter((check) => WEIGHT[check.status] < WEIGHT[before.get(check.id) ?? 'pass'])
+      .map((check): CheckId => check.id);
+    if (worse || mends.length === 0) return [];
+    const { print } = input.report;
+    return [
+      {
+        gain: weight - total(changed.checks),
+        advice: {
+          change,
+          mends,
+          costS: changed.report.print.timeS - print.timeS,
+          costG: changed.report.print.massG - print.massG,
+          text,
+        },
+      },
+    ];
+  });
+  tried.sort(
+    (a, b) => b.gain - a.gain || a.advice.costS - b.advice.costS || (a.advice.text < b.advice.text ? -1 : 1),
+  );
+  // One of each kind: three materials would say one thing thrice.
+  const kinds = new Set<string>();
+  const best = tried.filter(({ advice }) => {
+    const kind = kindOf(advice.change);
+    return kinds.has(kind) ? false : kinds.add(kind);
+  });
+  return best.slice(0, MOST_ADVICE).map(({ advice }) => advice);
+}
+
+function kindOf(change: RecipeInput): string {
+  return Object.entries(change)
+    .flatMap(([part, fields]) => Object.keys(fields as object).map((field) => `${part}.${field}`))
+    .sort()[0];
+}
+
+function total(checks: Check[]): number {
+  return checks.reduce((sum, check) => sum + WEIGHT[check.status], 0);
+}
+
+/** All checks on the same mesh with a changed recipe; only what hangs on the change is reckoned anew. */
+function judgeAgain(
+  part: Part,
+  input: CheckInput,
+  change: RecipeInput,
+): { checks: Check[]; report: CheckInput['report'] } {
+  const recipe = withChange(input.recipe, change);
+  const { print, limits } = recipe;
+  const layered = print.layerMm !== input.recipe.print.layerMm;
+  const redrawn = layered || print.sanded !== input.recipe.print.sanded;
+  const draft = redrawn ? judgeDraft(part, recipe) : null;
+  const report = {
+    ...input.report,
+    recipe,
+    ...(layered ? { layers: measureLayers(part.facets, print.layerMm, limits.layerGrooveMm) } : {}),
+    ...(draft ? { draft: { ...input.report.draft, ...draft.section } } : {}),
+    print: estimatePrint(
+      {
+        volumeMm3: input.report.mesh.unionVolumeMm3,
+        heightMm: part.size[2],
+        ...facingAreas(part.facets),
+      },
+      recipe,
+    ),
+  };
+  const whole = { ...report, ...writePhysics(part, recipe, report) };
+  return {
+    report: whole,
+    checks: runChecks({
+      ...input,
+      recipe,
+      report: whole,
+      walls: draft?.walls ?? input.walls,
+      wantedDraftDeg: draft?.section.wantedDeg ?? input.wantedDraftDeg,
+    }),
+  };
+}
+
+/** The recipe with a change; the line width follows a changed nozzle. */
+function withChange(recipe: EffectiveRecipe, change: RecipeInput): EffectiveRecipe {
+  const follows = change.print?.nozzleMm === undefined ? {} : { lineMm: null };
+  return fillRecipe({
+    ...recipe,
+    print: { ...recipe.print, ...change.print, ...follows },
+    sheet: { ...recipe.sheet, ...change.sheet },
+    run: { ...recipe.run, ...change.run },
+  });
+}
