@@ -1,9 +1,13 @@
 const POWERS = Array.from({ length: 23 }, (_, i) => Number(`1e${i}`));
 const NUMBER = /^[+-]?(\d+\.?\d*|\.\d+)(e[+-]?\d+)?$/i;
 
+/** Digits that are taken; what follows changes a double by less than its last bit. */
+const DIGITS = 18;
+
 /**
- * The plain decimal number in `bytes[start, end)`; NaN where it is none, or one that takes the slow way. Up to 15
- * digits and powers within 1e±22 are exact in a double, so one division or product rounds correctly.
+ * The plain decimal number in `bytes[start, end)`; NaN where it is none, or one that takes the slow way (powers beyond
+ * 1e±22). Up to 15 digits are exact in a double, so one division or product rounds correctly; more, as doubles are
+ * written, come within 1e-15 of the number, far below the float32 that it becomes.
  */
 export function readDecimal(bytes: Uint8Array, start: number, end: number): number {
   let i = start;
@@ -12,12 +16,22 @@ export function readDecimal(bytes: Uint8Array, start: number, end: number): numb
   let mantissa = 0;
   let digits = 0;
   let exponent = 0;
-  for (; i < end && isDigit(bytes[i]); i++, digits++) mantissa = mantissa * 10 + bytes[i] - 48;
-  if (bytes[i] === 46 && i < end) {
-    for (i++; i < end && isDigit(bytes[i]); i++, digits++, exponent--)
-      mantissa = mantissa * 10 + bytes[i] - 48;
+  const whole = i;
+  for (; i < end && isDigit(bytes[i]); i++) {
+    if (digits === DIGITS) exponent++;
+    else if ((mantissa = mantissa * 10 + bytes[i] - 48) > 0) digits++;
   }
-  if (digits === 0) return NaN;
+  let count = i - whole;
+  if (bytes[i] === 46 && i < end) {
+    const fraction = ++i;
+    for (; i < end && isDigit(bytes[i]); i++) {
+      if (digits === DIGITS) continue;
+      exponent--;
+      if ((mantissa = mantissa * 10 + bytes[i] - 48) > 0) digits++;
+    }
+    count += i - fraction;
+  }
+  if (count === 0) return NaN;
   if (i < end && (bytes[i] | 32) === 101) {
     i++;
     const sign = bytes[i] === 45 ? -1 : 1;
@@ -28,7 +42,7 @@ export function readDecimal(bytes: Uint8Array, start: number, end: number): numb
     if (i === from) return NaN;
     exponent += sign * power;
   }
-  if (i !== end || digits > 15 || exponent > 22 || exponent < -22) return NaN;
+  if (i !== end || exponent > 22 || exponent < -22) return NaN;
   const value = exponent < 0 ? mantissa / POWERS[-exponent] : mantissa * POWERS[exponent];
   return negative ? -value : value;
 }
