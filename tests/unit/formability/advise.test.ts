@@ -51,9 +51,12 @@ describe('advice', () => {
   });
 
   it('follows what the checks say of layers and sanding too', () => {
-    const stepped = reportOn(mesh, { ...coarse, print: { layerMm: 0.2 } });
-    const sand = stepped.advice.find(({ change }) => change.print?.sanded);
-    expect(sand?.mends).toContain('layers');
+    const thick = reportOn(mesh, { ...coarse, print: { layerMm: 0.3 } });
+    expect(thick.advice[0]).toMatchObject({ change: { print: { layerMm: 0.2 } }, mends: ['layers'] });
+    expect(thick.advice[0].costS).toBeGreaterThan(3600);
+    const steep = reportOn(frustum(120, 90, 40, 6), coarse);
+    const sand = steep.advice.find(({ change }) => change.print?.sanded);
+    expect(sand?.mends).toContain('draft');
     expect(sand).toMatchObject({ costS: 0, costG: 0 });
   });
 
