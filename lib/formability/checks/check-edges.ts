@@ -19,7 +19,7 @@ export function checkEdges({ recipe, report }: CheckInput): Check {
     basis: basisOf('edgeRadiusGauges', recipe),
     message: small
       ? sharp > 0
-        ? `${say(edges.sharpConvexMm, 0)} mm of edges and ${say(edges.sharpConcaveMm, 0)} mm of inside corners are sharp; the ${say(recipe.sheet.gaugeMm, 2)} mm sheet thins over them and does not fill them.`
+        ? `${[edges.sharpConvexMm > 0 ? `${say(edges.sharpConvexMm, 0)} mm of edges` : '', edges.sharpConcaveMm > 0 ? `${say(edges.sharpConcaveMm, 0)} mm of inside corners` : ''].filter(Boolean).join(' and ')} are sharp; the ${say(recipe.sheet.gaugeMm, 2)} mm sheet thins over them and does not fill them.`
         : `The tightest rounding has a radius of ${say(measured, 2)} mm, less than the sheet is thick.`
       : 'Edges and inside corners are round enough for this sheet.',
     remedy: small ? `Round edges and inside corners with a radius of at least ${say(limit, 2)} mm; 1.5 gauges (${say(1.5 * recipe.sheet.gaugeMm, 2)} mm) is better.` : '', // prettier-ignore

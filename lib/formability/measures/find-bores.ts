@@ -9,6 +9,9 @@ const VENT_SLACK_MM = 0.05;
 const MOUTH_MM = 8;
 /** Steeper than this, facing up, is the wall of a bore; flatter is the floor of the pit round it. */
 const FLOOR_NZ = 0.5;
+/** A bore may lean by up to 45°, and have so many facets. */
+const MOST_LEAN = 1;
+const MOST_FACETS = 20_000;
 
 /** A narrow bore from the bed up through the part, found on the mesh, however narrow against a grid cell. */
 export interface Bore {
@@ -28,7 +31,8 @@ export interface Bore {
  * Bores start at holes in the bed face: loops of edges between a bed facet and a wall facet, as wide as a vent or
  * its counter-bore. From there the walls are followed up to facets that face up.
  */
-export function findBores(mesh: Mesh, facets: Facets, edges: Edges): Bore[] {
+export function findBores(mesh: Mesh, measured: Facets, edges: Edges): Bore[] {
+  const facets = { ...measured, bed: withNeedles(mesh, measured) };
   const rims = bedRims(mesh, facets, edges);
   const bores: Bore[] = [];
   for (const rim of rims) {
@@ -36,6 +40,18 @@ export function findBores(mesh: Mesh, facets: Facets, edges: Edges): Bore[] {
     if (bore && bore.through && bore.diameter <= VENT_MM + VENT_SLACK_MM) bores.push(bore);
   }
   return bores.sort((a, b) => a.x - b.x || a.y - b.y);
+}
+
+/** The bed facets, and those without area that lie on the bed among them. */
+function withNeedles(mesh: Mesh, { area, bed }: Facets): Uint8Array {
+  const all = bed.slice();
+  const { index, position: p } = mesh;
+  for (let t = 0; t < all.length; t++) {
+    if (area[t] > 0) continue;
+    const [a, b, c] = [index[3 * t], index[3 * t + 1], index[3 * t + 2]];
+    if (Math.max(p[3 * a + 2], p[3 * b + 2], p[3 * c + 2]) <= BED_TOLERANCE_MM) all[t] = 1;
+  }
+  return all;
 }
 
 interface Rim {
@@ -92,40 +108,79 @@ function planArea(mesh: Mesh, loop: number[]): number {
   return twice / 2;
 }
 
+/**
+ * Follows the walls up from the bed. The axis runs from the middle of the lower rim to that of the upper one, so a bore
+ * may lean; every wall must stay as near to it as the lower rim is.
+ */
 function climb(mesh: Mesh, facets: Facets, edges: Edges, rim: Rim): Bore | null {
   const { position: p, index } = mesh;
-  const n = rim.vertices.length;
-  const x = rim.vertices.reduce((sum, v) => sum + p[3 * v], 0) / n;
-  const y = rim.vertices.reduce((sum, v) => sum + p[3 * v + 1], 0) / n;
-  const away = (v: number) => Math.hypot(p[3 * v] - x, p[3 * v + 1] - y);
-  const widest = Math.max(...rim.vertices.map(away)) * 1.05 + BED_TOLERANCE_MM;
+  const foot = middleOf(mesh, rim.vertices);
+  const widest =
+    Math.max(...rim.vertices.map((v) => Math.hypot(p[3 * v] - foot[0], p[3 * v + 1] - foot[1]))) * 1.05 +
+    BED_TOLERANCE_MM;
   const seen = new Set<number>(rim.walls);
   const queue = [...seen];
-  let top = 0;
-  let through = false;
+  const upper = new Set<number>();
   for (let at = 0; at < queue.length; at++) {
     const facet = queue[at];
     for (let k = 0; k < 3; k++) {
       const v = index[3 * facet + k];
-      if (away(v) > widest) return null;
-      if (p[3 * v + 2] > top) top = p[3 * v + 2];
+      const away = Math.hypot(p[3 * v] - foot[0], p[3 * v + 1] - foot[1]);
+      if (away > widest + MOST_LEAN * p[3 * v + 2]) return null;
       const other = neighbourOver(edges, facet, k);
       if (other < 0) return null;
       if (facets.bed[other] || seen.has(other)) continue;
-      if (facets.nz[other] > FLOOR_NZ) {
-        through = true;
+      if (isFloor(mesh, facets, other)) {
+        upper.add(v);
+        upper.add(index[3 * facet + ((k + 1) % 3)]);
         continue;
       }
+      if (queue.length >= MOST_FACETS) return null;
       seen.add(other);
       queue.push(other);
     }
   }
-  const narrow = narrowest(mesh, queue, x, y);
-  return { x, y, top, diameter: narrow.diameter, area: narrow.area, facets: queue, through };
+  const through = upper.size > 0;
+  const head = through ? middleOf(mesh, [...upper]) : foot;
+  const top = Math.max(0, ...[...upper].map((v) => p[3 * v + 2]));
+  if (!(top > 0)) return null;
+  const lean: [number, number] = [(head[0] - foot[0]) / top, (head[1] - foot[1]) / top];
+  const away = (v: number) =>
+    Math.hypot(p[3 * v] - foot[0] - lean[0] * p[3 * v + 2], p[3 * v + 1] - foot[1] - lean[1] * p[3 * v + 2]);
+  for (const facet of queue) for (let k = 0; k < 3; k++) if (away(index[3 * facet + k]) > widest) return null;
+  const narrow = narrowest(mesh, queue, away);
+  return {
+    x: head[0],
+    y: head[1],
+    top,
+    diameter: narrow.diameter,
+    area: narrow.area,
+    facets: queue,
+    through,
+  };
+}
+
+/** Faces up; or has no area and lies level, as a triangulation leaves behind between bores in a row. */
+function isFloor(mesh: Mesh, facets: Facets, t: number): boolean {
+  if (facets.area[t] > 0) return facets.nz[t] > FLOOR_NZ;
+  const [a, b, c] = [0, 1, 2].map((k) => mesh.position[3 * mesh.index[3 * t + k] + 2]);
+  return Math.max(a, b, c) - Math.min(a, b, c) <= BED_TOLERANCE_MM;
+}
+
+function middleOf({ position: p }: Mesh, vertices: readonly number[]): [number, number] {
+  const n = vertices.length;
+  return [
+    vertices.reduce((sum, v) => sum + p[3 * v], 0) / n,
+    vertices.reduce((sum, v) => sum + p[3 * v + 1], 0) / n,
+  ];
 }
 
 /** Circle through the bore's corners, level by level; the narrowest counts. */
-function narrowest(mesh: Mesh, facets: number[], x: number, y: number): { diameter: number; area: number } {
+function narrowest(
+  mesh: Mesh,
+  facets: number[],
+  away: (v: number) => number,
+): { diameter: number; area: number } {
   const { position: p, index } = mesh;
   const levels = new Map<number, Map<number, number>>();
   for (const facet of facets) {
@@ -133,7 +188,7 @@ function narrowest(mesh: Mesh, facets: number[], x: number, y: number): { diamet
       const v = index[3 * facet + k];
       const key = Math.round(p[3 * v + 2] * 100);
       const level = levels.get(key) ?? new Map<number, number>();
-      level.set(v, Math.hypot(p[3 * v] - x, p[3 * v + 1] - y));
+      level.set(v, away(v));
       levels.set(key, level);
     }
   }

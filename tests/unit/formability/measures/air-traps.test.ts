@@ -1,4 +1,5 @@
 import { describe, expect, it } from 'vitest';
+import { carved, rectangle, turnedRing } from '../../../fixtures/meshes/carved';
 import { lathe, plate, ring } from '../../../fixtures/meshes/solids';
 import { moved, together } from '../../../fixtures/meshes/triangles';
 import { checkOf, polygonArea, reportOn } from '../run-engine';
@@ -115,6 +116,24 @@ describe('vents, found as bores on the mesh', () => {
     const { vents } = reportOn(lathe(profile, 32));
     expect(vents).toHaveLength(1);
     expect(vents[0].diameterMm).toBeCloseTo(0.8, 2);
+  });
+
+  it('three bores in a row, between which a triangulation leaves facets without area', () => {
+    const bores = [-10, 0, 10].map((x) => ({ ring: turnedRing(0.5, 32, x, 0), z: 0 }));
+    const mesh = carved(rectangle(80, 60), 30, [{ ring: rectangle(40, 30), z: 10, pockets: bores }]);
+    const { vents } = reportOn(mesh, { grid: { cellMm: 0.4 } });
+    expect(vents.map(({ at }) => Number(at[0].toFixed(3)))).toEqual([-10, 0, 10]);
+    for (const vent of vents) expect(vent.diameterMm).toBeCloseTo(1, 4);
+  });
+
+  it('a bore that leans by 15°: as wide in level section as it was drawn', () => {
+    const shift = 10 * Math.tan((15 * Math.PI) / 180);
+    const bore = { ring: turnedRing(0.5, 24, 2, 1), foot: turnedRing(0.5, 24, 2 + shift, 1), z: 0 };
+    const { vents, airTraps } = reportOn(carved(rectangle(60, 60), 30, [{ ring: rectangle(24, 24), z: 10, pockets: [bore] }])); // prettier-ignore
+    expect(vents).toHaveLength(1);
+    expect(vents[0].diameterMm).toBeCloseTo(1, 3);
+    expect(vents[0].at[0]).toBeCloseTo(2, 3);
+    expect(airTraps[0]).toMatchObject({ trapsAir: false, vents: [0] });
   });
 
   it('a blind hole from below is no vent', () => {

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { box, extrude, frustum, lathe, plate, stairs } from '../../../fixtures/meshes/solids';
+import { box, extrude, frustum, lathe, stairs } from '../../../fixtures/meshes/solids';
 import { moved, together, turned } from '../../../fixtures/meshes/triangles';
 import { checkOf, reportOn } from '../run-engine';
 
