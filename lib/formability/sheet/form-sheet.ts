@@ -1,7 +1,7 @@
 import type { Point, SheetReport } from '../report';
 import { UnusableInput } from '../unusable-input';
 import { drapeAndPress, type Drape } from './drape-and-press';
-import { findThinnest } from './find-thinnest';
+import { DISC_MM, findThinnest } from './find-thinnest';
 import { judgePlace, marginPercent, type PlaceKind } from './judge-place';
 import { measureElements, type Stretches } from './measure-elements';
 import { makeRectangle, type Membrane } from './membrane';
@@ -114,8 +114,10 @@ function summarise(
   const { frameMm, gaugeMm, minFormedMm } = input;
   const order = orderByThickness(stretches);
   const thinnest = findThinnest(sheet, stretches, order);
-  const minPlace = judgePlace(template, thinnest.at, Math.max(TIGHT_MM, 2 * sheet.cell));
+  const reach = Math.max(TIGHT_MM, 2 * sheet.cell);
   const surface = drawSurface(sheet, stretches);
+  const webbed = isWebNear(sheet, surface, thinnest.at, DISC_MM / 2);
+  const minPlace = webbed ? 'web' : judgePlace(template, thinnest.at, reach);
   const q05Mm = areaQuantile(stretches, order, 0.05);
   const volume = frameMm[0] * frameMm[1] * gaugeMm;
   const volumeError = (stretches.volume - volume) / volume;
@@ -155,6 +157,23 @@ function summarise(
     surface,
     thicknessAt: makeThicknessAt(surface),
   };
+}
+
+/** Whether a folded or unsupported triangle has a corner within `reach` of a point. */
+function isWebNear(
+  { corners, at, elements }: Membrane,
+  { web }: SheetSurface,
+  point: Point,
+  reach: number,
+): boolean {
+  for (let e = 0; e < elements; e++) {
+    if (!web[e]) continue;
+    for (let c = 3 * e; c < 3 * e + 3; c++) {
+      const k = 3 * corners[c];
+      if (Math.hypot(at[k] - point[0], at[k + 1] - point[1], at[k + 2] - point[2]) <= reach) return true;
+    }
+  }
+  return false;
 }
 
 /** Middle of the largest triangle that is folded or lies on nothing. */

@@ -2,16 +2,16 @@ import type { Point } from '../report';
 import { heightAt, type Obstacle } from './obstacle';
 
 /** Where on the template a point of the sheet lies. */
-export type PlaceKind = 'flat' | 'wall' | 'inner-corner' | 'pit';
+export type PlaceKind = 'flat' | 'wall' | 'inner-corner' | 'pit' | 'web';
 
 const DIRECTIONS = 16;
 
 /**
  * Honest margin of thickness figures, percent: the spread between two laws of the free sheet, ±20 on walls and
- * ±30 in tight inner corners and pits (own estimate from a numerical comparison; no experiment).
+ * ±30 in tight inner corners, pits and webs (own estimate from a numerical comparison; no experiment).
  */
 export function marginPercent(kind: PlaceKind): number {
-  return kind === 'inner-corner' || kind === 'pit' ? 30 : 20;
+  return kind === 'flat' || kind === 'wall' ? 20 : 30;
 }
 
 /**

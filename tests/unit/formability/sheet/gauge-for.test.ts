@@ -1,0 +1,63 @@
+import { describe, expect, it } from 'vitest';
+import { formSheet } from '@/lib/formability/sheet/form-sheet';
+import { betterChange, gaugeFor } from '@/lib/formability/sheet/gauge-for';
+import type { SheetInput } from '@/lib/formability/sheet/sheet-input';
+import { block, field } from './templates';
+
+const input: SheetInput = {
+  template: field([50, 50], block(50, 50, 18, 8)),
+  frameMm: [90, 90],
+  gaugeMm: 0.6,
+  minFormedMm: 0.35,
+};
+const options = { nodes: 32 };
+const thin = formSheet(input, options);
+
+describe('gauge for a wanted least thickness', () => {
+  it('is the least in its steps that a run of its own confirms', () => {
+    const wanted = 1.37 * thin.report.minMm;
+    const found = gaugeFor(input, thin, wanted, options);
+    expect(found.gaugeMm).toBeCloseTo(0.85, 12);
+    expect(found.runs).toBe(1);
+    const own = formSheet({ ...input, gaugeMm: found.gaugeMm! }, options).report.minMm;
+    expect(found.minMm).toBe(own);
+    expect(own).toBeGreaterThanOrEqual(wanted);
+    expect(formSheet({ ...input, gaugeMm: 0.8 }, options).report.minMm).toBeLessThan(wanted);
+  });
+
+  it('asks for no run where the sheet is thick enough', () => {
+    const found = gaugeFor(input, thin, 0.5 * thin.report.minMm, options);
+    expect(found).toMatchObject({ gaugeMm: 0.6, runs: 0, minMm: thin.report.minMm });
+  });
+
+  it('counts in that a given load presses a thicker sheet less far', () => {
+    const loaded = { ...input, load: { pressureMPa: 0.05, modulusMPa: 1 } };
+    const formed = formSheet(loaded, options);
+    const wanted = 1.5 * formed.report.minMm;
+    const found = gaugeFor(loaded, formed, wanted, options);
+    expect(found.minMm).toBeGreaterThanOrEqual(wanted);
+    expect(found.minMm).not.toBe((found.gaugeMm! / 0.6) * formed.report.minMm);
+    expect(found.runs).toBeGreaterThanOrEqual(1);
+  });
+
+  it('refuses a thickness of nothing', () => {
+    expect(() => gaugeFor(input, thin, 0, options)).toThrow(/give numbers above 0/);
+  });
+});
+
+describe('where the template is better changed', () => {
+  const formed = (belowLimitAreaMm2: number, minPlace: (typeof thin)['minPlace'], unclosedAreaMm2 = 0) => ({
+    ...thin,
+    minPlace,
+    report: { ...thin.report, belowLimitAreaMm2, unclosedAreaMm2 },
+  });
+
+  it('goes by how much is thin, and by where', () => {
+    expect(betterChange(formed(0.1 * thin.formedAreaMm2, 'inner-corner'))).toBe('gauge');
+    expect(betterChange(formed(20, 'inner-corner'))).toBe('radius');
+    expect(betterChange(formed(20, 'pit'))).toBe('gap');
+    expect(betterChange(formed(20, 'web', 40))).toBe('gap');
+    expect(betterChange(formed(20, 'wall'))).toBe('height');
+    expect(betterChange(formed(20, 'flat'))).toBe('gauge');
+  });
+});
