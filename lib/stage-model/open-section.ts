@@ -3,7 +3,7 @@ import { cutSection, type SectionLine, type SectionMesh } from './section';
 /** How far from the middle a line may lie, as a share of the way across, and in how many steps to each side. */
 const REACH = 0.25;
 const STEPS = 8;
-/** A line nearer to the middle is taken when its outline is at least this share of the longest. */
+/** The middle is kept when its outline is at least this share of the longest. */
 const ENOUGH = 0.9;
 
 /**
@@ -22,7 +22,8 @@ export function openSection(
     return { line: { axis: line.axis, atMm }, length: outlineLength(mesh, { axis: line.axis, atMm }) };
   });
   const longest = Math.max(...lines.map(({ length }) => length));
-  return longest > 0 ? lines.find(({ length }) => length >= ENOUGH * longest)!.line : null;
+  if (longest === 0) return null;
+  return lines.find(({ length }, n) => length >= (n === 0 ? ENOUGH : 1) * longest)!.line;
 }
 
 function outlineLength(mesh: SectionMesh, line: SectionLine): number {

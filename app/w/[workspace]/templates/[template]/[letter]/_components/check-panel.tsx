@@ -3,7 +3,7 @@
 import { Button } from '@/app/_components/button';
 import { ErrorState } from '@/app/_components/error-state';
 import { ProgressBar } from '@/app/_components/progress-bar';
-import { sentenceCase } from '@/app/_components/sentence-case';
+import { asSentence, sentenceCase } from '@/app/_components/sentence-case';
 import type { RevisionView } from '@/lib/review/schemas';
 import { useOrderAgain } from '../_hooks/use-room-commands';
 import { useCheckProgress } from '../_hooks/use-room-data';
@@ -45,7 +45,7 @@ function FailedCheck({ revision }: { revision: RevisionView }) {
         ) : null
       }
     >
-      {sentenceCase(revision.check.error ?? 'The worker gave no reason.', revision.mesh.fileName)}{' '}
+      {asSentence(revision.check.error ?? 'The worker gave no reason.', revision.mesh.fileName)}{' '}
       {wayOn(revision, mayOrder)}
     </ErrorState>
   );

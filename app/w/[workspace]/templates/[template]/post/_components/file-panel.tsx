@@ -10,7 +10,7 @@ import { formatBytes } from '@/app/_components/format-figure';
 import { Length } from '@/app/_components/length';
 import { ProgressBar } from '@/app/_components/progress-bar';
 import { Select } from '@/app/_components/select';
-import { sentenceCase } from '@/app/_components/sentence-case';
+import { asSentence } from '@/app/_components/sentence-case';
 import type { useUpload } from '../_hooks/use-upload';
 
 type Props = ReturnType<typeof useUpload> & { unit: string; onUnit: (unit: string) => void };
@@ -120,7 +120,7 @@ export function FilePanel({ sending, begin, resume, pause, cancel, readIn, unit,
         ) : null}
         {phase === 'refused' && upload.refusal ? (
           <ErrorState title="This file cannot be used" level={3}>
-            <p>{sentenceCase(upload.refusal.message, upload.fileName)}</p>
+            <p>{asSentence(upload.refusal.message, upload.fileName)}</p>
             <Reasons message={upload.refusal.message} reasons={upload.refusal.reasons} />
             <p className="mt-2">Your draft is kept. Mend the file and pick it again.</p>
           </ErrorState>
@@ -175,7 +175,7 @@ function Reasons({ message, reasons }: { message: string; reasons: readonly stri
   return (
     <ul className="mt-2 list-disc pl-5">
       {more.map((reason) => (
-        <li key={reason}>{sentenceCase(reason)}</li>
+        <li key={reason}>{asSentence(reason)}</li>
       ))}
     </ul>
   );
