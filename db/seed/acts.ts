@@ -13,7 +13,9 @@ import { saveDraft } from '@/lib/review/save-draft';
 import { signGate } from '@/lib/review/sign-gate';
 import { startUpload } from '@/lib/review/start-upload';
 import { viewContent } from '@/lib/review/view-content';
+import { viewDocket } from '@/lib/review/view-docket';
 import { viewRevision } from '@/lib/review/view-revision';
+import { waiveFinding } from '@/lib/review/waive-finding';
 import { viewUpload } from '@/lib/review/view-upload';
 import type { PinInput, RevisionView } from '@/lib/review/schemas';
 
@@ -122,6 +124,12 @@ export async function reply(
   body: Record<string, unknown>,
 ): Promise<void> {
   await replyToThread(ctx, threadId, { clientKey: randomUUID(), body });
+}
+
+/** Lets what fails on a revision stand, with a reason; nothing where nothing fails. The context is a lead's. */
+export async function waiveFailing(ctx: WorkspaceContext, revisionId: string, reason: string): Promise<void> {
+  const { findings } = await viewDocket(ctx, revisionId);
+  for (const { id, status } of findings) if (status === 'fail') await waiveFinding(ctx, id, { reason });
 }
 
 /** Signs the open gate of a revision, after reading what is signed. */
