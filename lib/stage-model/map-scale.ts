@@ -59,9 +59,9 @@ export function colourAt(figure: number, scale: MapScale): number {
   return scale.dark === 'high' ? 1 - at : at;
 }
 
-const PLAIN = [1, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10];
+const PLAIN = [1, 1.2, 1.5, 2, 2.5, 3, 4, 5, 6, 8, 10];
 
-/** The next of 1, 1.5, 2, 2.5, 3, 4, 5, 6, 8 and their tenfolds; 0.1 at least. */
+/** The next of 1, 1.2, 1.5, 2, 2.5, 3, 4, 5, 6, 8 and their tenfolds; 0.1 at least. */
 export function roundUp(figure: number): number {
   const size = 10 ** Math.floor(Math.log10(Math.max(0.1, figure)) + 1e-9);
   const plain = PLAIN.find((step) => step * size >= figure - 1e-6 * size) ?? 10;

@@ -245,6 +245,7 @@ function clusterCorners(
   const place = new Uint32Array(corners);
   const outNormals = new Float32Array(corners * 3);
   const first = new Uint32Array(corners);
+  const wallOf = new Float32Array(walls ? corners : 0);
   let vertices = 0;
   // Per place: smooth groups carry the normal, draft groups inside them become the vertices.
   let leader: number[] = [];
@@ -286,15 +287,16 @@ function clusterCorners(
         const l = first[v];
         if (rough) break;
         if (kept.flags[l] !== kept.flags[f] || Math.abs(kept.draft[l] - kept.draft[f]) > tolerance) continue;
-        if (walls === null || alikeWalls(walls[l], walls[f])) break;
+        if (walls === null || alikeWalls(wallOf[v], walls[f])) break;
       }
       if (v === vertices) {
         const length = Math.hypot(sums[g * 3], sums[g * 3 + 1], sums[g * 3 + 2]) || 1;
         for (let a = 0; a < 3; a++) outNormals[v * 3 + a] = sums[g * 3 + a] / length;
         place[v] = g;
         first[v] = f;
+        if (walls) wallOf[v] = walls[f];
         vertices++;
-      }
+      } else if (walls && !(wallOf[v] > 0)) wallOf[v] = walls[f];
       index[list[k]] = v;
     }
     for (let v = begin; v < vertices; v++) place[v] = p;
@@ -310,7 +312,7 @@ function clusterCorners(
   };
 }
 
+/** A facet without a figure goes with any: it lies between ones that were measured, and no ray has spoken for it. */
 function alikeWalls(a: number, b: number): boolean {
-  if (!(a > 0) || !(b > 0)) return !(a > 0) === !(b > 0);
-  return Math.abs(Math.min(a, WALL_THICK) - Math.min(b, WALL_THICK)) <= WALL_JUMP;
+  return !(Math.abs(Math.min(a, WALL_THICK) - Math.min(b, WALL_THICK)) > WALL_JUMP);
 }

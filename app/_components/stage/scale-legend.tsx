@@ -160,5 +160,6 @@ function histogramPath({ edges, areaMm2 }: MapHistogram, max: number): string {
   const height = (density: number) => BARS - Math.sqrt(density / top) * (BARS - 4);
   const x = (figure: number) => LEFT + (Math.min(max, figure) / max) * SPAN;
   const steps = bins.map((b) => `L${x(b.from)} ${height(b.density)}L${x(b.to)} ${height(b.density)}`);
-  return `M${LEFT} ${BARS}${steps.join('')}L${LEFT + SPAN} ${BARS}Z`;
+  const [first, last] = [x(bins[0]?.from ?? 0), x(bins.at(-1)?.to ?? 0)];
+  return `M${first} ${BARS}${steps.join('')}L${last} ${BARS}Z`;
 }

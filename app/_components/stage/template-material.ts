@@ -106,7 +106,7 @@ const fragmentShader = /* glsl */ `
       bool broken = map == 5 ? vFlags.z > 0.5 : limit >= 0.0 && beyond > (map == 4 ? 0.005 : 0.0);
       if (broken) colour = mix(colour, stroke, 0.75 * stripe());
       // Half a step off the round figures: walls are drawn with round figures, and a line has no place on a plane.
-      colour = mix(colour, ink, 0.35 * isoLine(v / isoStep + (map == 4 ? 0.5 : 0.0), 0.6));
+      if (v < scaleMax) colour = mix(colour, ink, 0.35 * isoLine(v / isoStep + (map == 4 ? 0.5 : 0.0), 0.6));
       float least = map == 1 ? 1e-4 : scaleMax * 5e-4;
       if (map != 5 && limit >= 0.0 && slope > least && slope < scaleMax * 0.13)
         colour = mix(colour, ink, 0.9 * (1.0 - smoothstep(0.8, 1.6, abs(v - limit) / slope)));

@@ -73,7 +73,7 @@ describe('wall thickness in the stage model', () => {
     expect(await walls(3, 8)).toEqual([3, 3, 3, 3, 8, 8, 8, 8]);
     expect(await walls(3, 3.6)).toEqual([3, 3, 3.2, 3.4, 3.6, 3.6]);
     expect(await walls(20, 40)).toEqual([20, 20, 26.67, 33.33, 40, 40]);
-    expect(await walls(3, NaN)).toEqual([0, 0, 0, 0, 3, 3, 3, 3]);
+    expect(await walls(3, NaN)).toEqual([0, 0, 3, 3, 3, 3]);
   });
 
   it('shows only figures that were measured where the surface was simplified', async () => {
