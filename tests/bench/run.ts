@@ -8,7 +8,7 @@ const HERE = path.dirname(fileURLToPath(import.meta.url));
  * Runs every benchmark: each file tests/bench/<area>/<name>.ts that exports `run` and is named on the command line,
  * or all of the list below. A benchmark prints its own table of ratios.
  */
-const BENCHES = ['formability/geometry', 'formability/formats', 'stage/derivative'];
+const BENCHES = ['formability/geometry', 'formability/formats', 'formability/sheet', 'stage/derivative'];
 
 const wanted = process.argv.slice(2);
 const known = BENCHES.filter((name) => wanted.length === 0 || wanted.some((part) => name.includes(part)));
