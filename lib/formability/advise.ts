@@ -107,10 +107,13 @@ function judgeAgain(
 /** The recipe with a change; the line width follows a changed nozzle. */
 function withChange(recipe: EffectiveRecipe, change: RecipeInput): EffectiveRecipe {
   const follows = change.print?.nozzleMm === undefined ? {} : { lineMm: null };
-  return fillRecipe({
-    ...recipe,
+  const { grid, ...rest } = recipe;
+  const filled = fillRecipe({
+    ...rest,
     print: { ...recipe.print, ...change.print, ...follows },
     sheet: { ...recipe.sheet, ...change.sheet },
     run: { ...recipe.run, ...change.run },
   });
+  // The grid is the one that the part was measured on, finer than a recipe may ask for where the part is tiny.
+  return { ...filled, grid };
 }

@@ -9,6 +9,9 @@ export interface Inflated {
 
 /** Where pressure is highest: above it no state of balance is left, and the sheet blows out. */
 export const LIMIT_STRETCH = 2.1959445;
+const LIMIT_PRESSURE = 3.7583469;
+/** Steps that give a height to four digits. */
+const COARSE = 60;
 
 /** Steps of the first, rough pass, which finds how wide the disc is. */
 const ROUGH = 100;
@@ -103,12 +106,24 @@ function rungeKutta(
 /** Height over radius of the disc at a pressure p a / (C₁ t₀); null above the highest pressure it can hold. */
 export function heightAtPressure(pressure: number): number | null {
   if (pressure <= 0) return 0;
-  if (pressure >= inflateMembrane(LIMIT_STRETCH).pressure) return null;
+  if (pressure >= LIMIT_PRESSURE) return null;
+  // False position, Illinois variant, on a pressure that rises with the stretch.
   let [low, high] = [1 + 1e-9, LIMIT_STRETCH];
-  for (let round = 0; round < 50; round++) {
-    const middle = (low + high) / 2;
-    if (inflateMembrane(middle, 60).pressure < pressure) low = middle;
-    else high = middle;
+  let [below, above] = [-pressure, LIMIT_PRESSURE - pressure];
+  let stretch = high;
+  for (let round = 0, side = 0; round < 60 && high - low > 1e-10; round++) {
+    stretch = (low * above - high * below) / (above - below);
+    const off = inflateMembrane(stretch, COARSE).pressure - pressure;
+    if (Math.abs(off) < 1e-9 * pressure) break;
+    if (off > 0) {
+      [high, above] = [stretch, off];
+      if (side > 0) below /= 2;
+      side = 1;
+    } else {
+      [low, below] = [stretch, off];
+      if (side < 0) above /= 2;
+      side = -1;
+    }
   }
-  return inflateMembrane((low + high) / 2).height;
+  return inflateMembrane(stretch, COARSE).height;
 }
