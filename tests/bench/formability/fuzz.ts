@@ -48,6 +48,7 @@ async function run(cases: number, first: number, everyNth: number): Promise<numb
     peakMB = Math.max(peakMB, told.rssMB);
     if (told.rssMB > MEMORY_CAP_MB) blame(`case ${index}: ${told.rssMB.toFixed(0)} MB`);
     if (told.outcome === 'fault') blame(`case ${index} (${told.format}): ${told.why}`);
+    if ((index + 1) % 500 === 0) console.error(`${index + 1 - first} cases, ${faults.length} faults`);
     const key = `${told.format.replace(/-text|-round/, '').padEnd(11)} ${told.outcome}`;
     counts.set(key, (counts.get(key) ?? 0) + 1);
     if (everyNth > 0 && index % everyNth === 0) blame(...throughCommandLine(index));

@@ -142,7 +142,7 @@ describe('unions against manifold-3d', () => {
     expect(report.mesh.warnings).toContain('overlapping_shells');
   });
 
-  it.each([1, 2, 3, 4])('six bodies thrown together (linear congruential generator, seed %s)', (seed) => {
+  it.each([1, 2])('six bodies thrown together (linear congruential generator, seed %s)', (seed) => {
     let state = seed;
     const roll = (limit: number) => {
       state = (Math.imul(state, 1664525) + 1013904223) >>> 0;

@@ -1,9 +1,20 @@
 import { describe, expect, it } from 'vitest';
+import type { RecipeInput } from '@/lib/formability/recipe';
 import { polygonFactor } from '../../../fixtures/meshes/answers';
 import { carved, rectangle, turnedRing, type Pocket } from '../../../fixtures/meshes/carved';
 import { extrude, lathe, ring } from '../../../fixtures/meshes/solids';
-import { moved, together, turned } from '../../../fixtures/meshes/triangles';
+import { moved, together, turned, type Triangles } from '../../../fixtures/meshes/triangles';
 import { abs, analysed, hold, holdChecks, missesOf, rel, tight, type Claims } from './claims';
+
+/** Coarser cells than the default in small templates: a vent is found on the mesh, not on the grid. */
+const cells = (mesh: Triangles, recipe: RecipeInput): RecipeInput => {
+  const wide =
+    Math.max(...mesh.filter((_, i) => i % 3 === 0)) - Math.min(...mesh.filter((_, i) => i % 3 === 0));
+  return wide < 200 ? { grid: { cellMm: 0.2 }, ...recipe } : recipe;
+};
+const quick = (mesh: Triangles, claims: Claims, recipe: RecipeInput = {}) =>
+  hold(mesh, claims, cells(mesh, recipe));
+const looked = (mesh: Triangles) => analysed(mesh, cells(mesh, {}));
 
 type P = [number, number];
 const bore = (d: number, sides: number) => polygonFactor(sides) * (d / 2) ** 2;
@@ -21,7 +32,7 @@ describe.each([60, 300])('a square pit in a template of %s mm', (size) => {
 
   it('without a vent traps 8000 mm³', () => {
     const { mesh } = ventedPit(size, []);
-    const report = hold(mesh, {
+    const report = quick(mesh, {
       'mesh.volumeMm3': tight(size * size * 0.8 * 30 - 8000),
       'airTraps.length': 1,
       'airTraps.0.spillZMm': abs(30, 1e-4),
@@ -34,7 +45,7 @@ describe.each([60, 300])('a square pit in a template of %s mm', (size) => {
       'plan.formedAreaMm2': rel(frame + walls + 80 * 20, 0.005),
       'undercut.undercutVolumeMm3': 0,
     });
-    holdChecks(report, { vents: 'caution|fail' });
+    holdChecks(report, { air: 'caution|fail' });
   });
 
   it.each([
@@ -48,7 +59,7 @@ describe.each([60, 300])('a square pit in a template of %s mm', (size) => {
   ])('with one vent of %s mm in %s sides, which the printer leaves open: %s', (diameter, sides, open) => {
     const centre: P = [size / 6 + 4.37, -size / 10 - 3.21];
     const { mesh } = ventedPit(size, [{ ring: ring(diameter / 2, sides, ...centre), z: 0 }]);
-    const report = hold(mesh, {
+    const report = quick(mesh, {
       'mesh.volumeMm3': tight(size * size * 0.8 * 30 - 8000 - bore(diameter, sides) * 10),
       'mesh.watertight': true,
       'vents.length': 1,
@@ -67,14 +78,17 @@ describe.each([60, 300])('a square pit in a template of %s mm', (size) => {
       'plan.formedAreaMm2': rel(frame + walls + 80 * 20, 0.005),
       'undercut.shadowVolumeMm3': 0,
     });
-    holdChecks(report, { vents: open ? 'pass' : 'caution|fail', undercut: 'pass' });
+    // From 0.8 mm on a vent may be said to mark.
+    if (diameter < 0.7) holdChecks(report, { vents: open ? 'pass' : 'caution|fail' });
+    if (!open) holdChecks(report, { air: 'caution|fail' });
+    holdChecks(report, { undercut: 'pass' });
   });
 
   it('a hole of 3.5 mm is no vent but part of the pit, down to the bed', () => {
     const { mesh, at } = ventedPit(size, []);
     expect(mesh.length).toBeGreaterThan(0);
     const holed = ventedPit(size, [{ ring: ring(1.75, 32, at[0] + 2, at[1] + 1), z: 0 }]);
-    hold(holed.mesh, {
+    quick(holed.mesh, {
       vents: [],
       'airTraps.length': 1,
       'airTraps.0.floor.2': abs(0, 1e-4),
@@ -87,7 +101,7 @@ describe.each([60, 300])('a square pit in a template of %s mm', (size) => {
     const sizes = [0.4, 0.5, 0.7, 1.2, 2.5];
     const at: P = [size / 6, -size / 10];
     const vents = sizes.map((d, i): Pocket => ({ ring: turnedRing(d / 2, 16, at[0] - 7 + 3.3 * i, at[1] + (i % 2) * 4.1), z: 0 })); // prettier-ignore
-    const report = analysed(ventedPit(size, vents).mesh);
+    const report = looked(ventedPit(size, vents).mesh);
     expect(report.vents.map((vent) => vent.diameterMm).sort((a, b) => a - b)).toHaveLength(5);
     const found = report.vents.map((vent) => vent.diameterMm).sort((a, b) => a - b);
     expect(missesOf({ found }, { found: sizes.map((d) => abs(d, 0.05)) })).toEqual([]);
@@ -101,14 +115,14 @@ describe('vents of other shapes', () => {
 
   it('turned and moved, a vent is found all the same', () => {
     const mesh = moved(turned(block({ ring: ring(0.3, 12, 11, -5), z: 0 }), 33), 140, -60, 0);
-    const report = analysed(mesh);
+    const report = looked(mesh);
     const angle = (33 * Math.PI) / 180;
     const [x, y] = [11 * Math.cos(angle) + 5 * Math.sin(angle) + 140, 11 * Math.sin(angle) - 5 * Math.cos(angle) - 60]; // prettier-ignore
     expect(missesOf(report, { 'vents.length': 1, 'vents.0.diameterMm': abs(0.6, 0.05), 'vents.0.at.0': abs(x, 0.05), 'vents.0.at.1': abs(y, 0.05), 'airTraps.0.trapsAir': false })).toEqual([]); // prettier-ignore
   });
 
   it('a square bore of 1 × 1 mm: the circle through its corners', () => {
-    hold(block({ ring: rectangle(1, 1, 9, -4), z: 0 }), {
+    quick(block({ ring: rectangle(1, 1, 9, -4), z: 0 }), {
       'vents.length': 1,
       'vents.0.diameterMm': abs(Math.SQRT2, 0.05),
       'airTraps.0.trapsAir': false,
@@ -116,7 +130,7 @@ describe('vents of other shapes', () => {
   });
 
   it('a bore that widens towards the bed is as wide as its narrow end', () => {
-    hold(block({ ring: ring(0.5, 24, 9, -4), foot: ring(1.2, 24, 9, -4), z: 0 }), {
+    quick(block({ ring: ring(0.5, 24, 9, -4), foot: ring(1.2, 24, 9, -4), z: 0 }), {
       'vents.length': 1,
       'vents.0.diameterMm': abs(1, 0.05),
       'vents.0.lengthMm': abs(10, 0.01),
@@ -131,7 +145,7 @@ describe('vents of other shapes', () => {
       z: 6,
       pockets: [{ ring: ring(0.4, 12, 7.5, 7.5), z: 0 }],
     };
-    hold(carved(rectangle(60, 60), 30, [pit]), {
+    quick(carved(rectangle(60, 60), 30, [pit]), {
       'vents.length': 1,
       'vents.0.diameterMm': abs(0.8, 0.05),
       'vents.0.lengthMm': abs(6, 0.01),
@@ -147,7 +161,7 @@ describe('vents of other shapes', () => {
       for (let j = 0; j < 10; j++) pockets.push({ ring: turnedRing(0.4, 10, -123.5 + 13 * i, -76.5 + 17 * j), z: 0 }); // prettier-ignore
     }
     const tray: Pocket = { ring: rectangle(280, 180), z: 8, pockets };
-    const report = hold(carved(rectangle(300, 200), 20, [tray]), {
+    const report = quick(carved(rectangle(300, 200), 20, [tray]), {
       'vents.length': 200,
       'airTraps.length': 1,
       'airTraps.0.vents.length': 200,
@@ -169,7 +183,7 @@ describe('pits in pits, moats and channels', () => {
       ],
     };
     const well = polygonFactor(64) * 64 * 15;
-    const report = analysed(carved(rectangle(90, 60), 30, [basin]));
+    const report = looked(carved(rectangle(90, 60), 30, [basin]));
     const byVolume = [...report.airTraps].sort((a, b) => b.volumeMm3 - a.volumeMm3);
     expect(
       missesOf(
@@ -204,7 +218,7 @@ describe('pits in pits, moats and channels', () => {
         { ring: rectangle(14, 14, 18, 2), z: 5 },
       ],
     };
-    const { airTraps, vents } = analysed(carved(rectangle(90, 60), 30, [basin]));
+    const { airTraps, vents } = looked(carved(rectangle(90, 60), 30, [basin]));
     expect(vents).toHaveLength(1);
     const open = airTraps.filter((trap) => trap.vents.length > 0 && trap.spillZMm < 25);
     expect(open.map((trap) => [Math.round(trap.floor[2]), trap.trapsAir])).toEqual([[12, false]]);
@@ -225,7 +239,7 @@ describe('pits in pits, moats and channels', () => {
         { ring: rectangle(20, 20, 22, 0), z: 10 },
       ],
     };
-    const report = analysed(carved(rectangle(100, 60), 30, [basin]));
+    const report = looked(carved(rectangle(100, 60), 30, [basin]));
     const middle = 34 * 24 * 10;
     const found = [...report.airTraps].sort((a, b) => b.volumeMm3 - a.volumeMm3);
     expect(
@@ -263,13 +277,13 @@ describe('pits in pits, moats and channels', () => {
   };
   it.each([40, 25, 18])('a moat round an island %s mm high in a rim of 25', (island) => {
     const pocket: Pocket = { ring: rectangle(50, 40), z: 8, islands: [{ ring: rectangle(20, 16, 3, 2), z: island }] }; // prettier-ignore
-    hold(carved(rectangle(70, 60), 25, [pocket]), moat(island));
+    quick(carved(rectangle(70, 60), 25, [pocket]), moat(island));
   });
 
   it('a round moat between two bodies on the bed', () => {
     const k = polygonFactor(96);
     const outer = lathe([[30, 0], [40, 0], [40, 20], [30, 20]], 96); // prettier-ignore
-    hold(
+    quick(
       together(
         outer,
         lathe(
@@ -294,7 +308,7 @@ describe('pits in pits, moats and channels', () => {
 
   it('a channel open at its ends holds nothing; closed at one end neither', () => {
     const u: P[] = [[-30, 0], [30, 0], [30, 25], [10, 25], [10, 8], [-10, 8], [-10, 25], [-30, 25]]; // prettier-ignore
-    hold(extrude(u, 60), { airTraps: [], 'undercut.shadowVolumeMm3': 0, vents: [] });
+    quick(extrude(u, 60), { airTraps: [], 'undercut.shadowVolumeMm3': 0, vents: [] });
   });
 
   it('a rim with a low side spills there: a trough between slopes', () => {
@@ -306,7 +320,7 @@ describe('pits in pits, moats and channels', () => {
       moved(extrude(end(18), 5), 0, -27.4, 0),
       moved(extrude(end(22), 5), 0, 27.4, 0),
     );
-    hold(mesh, {
+    quick(mesh, {
       'airTraps.length': 1,
       'airTraps.0.spillZMm': abs(18, 1e-3),
       'airTraps.0.volumeMm3': rel(20 * 49.8 * 10, 0.015),
@@ -318,7 +332,7 @@ describe('pits in pits, moats and channels', () => {
       { ring: rectangle(15, 15, -15, 0), z: 19.96 },
       { ring: rectangle(15, 15, 15, 0), z: 19.94 },
     ];
-    hold(carved(rectangle(70, 40), 20, pockets), {
+    quick(carved(rectangle(70, 40), 20, pockets), {
       'airTraps.length': 1,
       'airTraps.0.volumeMm3': rel(225 * 0.06, 0.02),
     });
