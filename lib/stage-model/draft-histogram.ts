@@ -1,5 +1,6 @@
 import { facetArea } from './facet-area';
 import { areaBelow, binOf } from './map-histogram';
+import { LAYERS_FROM_DEG } from './shown-range';
 import { FLAG_BED, FLAG_UNDERCUT, type DraftHistogram, type StageGeometry } from './stage-model-meta';
 
 /** Half a degree where walls are judged, coarse where nothing hangs on it. Bin [a, b), the last one closed. */
@@ -27,7 +28,10 @@ export interface DraftArea {
   areaMm2: { total: number; bed: number; undercut: number };
 }
 
-/** Area of the facets by draft, in mm²; bed facets count in `areaMm2.total` and `.bed` only. */
+/**
+ * Area of the facets by draft, in mm²; bed facets count in `areaMm2.total` and `.bed` only. What looks down without
+ * being an undercut is the inside of a hollow, which no sheet meets: it counts in the total alone.
+ */
 export function measureDraftArea({ positions, facetDraftDeg, facetFlags }: StageGeometry): DraftArea {
   const edges = [...HISTOGRAM_EDGES_DEG];
   const areas = new Array<number>(edges.length - 1).fill(0);
@@ -42,6 +46,7 @@ export function measureDraftArea({ positions, facetDraftDeg, facetFlags }: Stage
       continue;
     }
     if (facetFlags[f] & FLAG_UNDERCUT) area.undercut += a;
+    else if (facetDraftDeg[f] < -LAYERS_FROM_DEG) continue;
     if (a === 0) continue;
     const draft = Math.min(90, Math.max(-90, facetDraftDeg[f]));
     low = Math.min(low, draft);

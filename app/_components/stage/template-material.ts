@@ -84,7 +84,8 @@ const fragmentShader = /* glsl */ `
     bool shown = false;
     if (map == 1) {
       v = vDraft;
-      shown = vDraft < flatFrom;
+      // What looks down without being an undercut is the inside of a hollow.
+      shown = vDraft < flatFrom && (undercut || vDraft > -${LAYERS_FROM_DEG.toFixed(2)});
     } else if (map == 3) {
       v = layer * sin(radians(vDraft));
       shown = vDraft > ${LAYERS_FROM_DEG.toFixed(2)} && vDraft < ${LAYERS_TO_DEG.toFixed(2)};
