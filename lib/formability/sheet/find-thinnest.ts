@@ -17,8 +17,8 @@ export interface Thinnest {
 
 /**
  * Least thickness averaged over a disc of 3 mm diameter on the formed surface. Elements are cut into points of equal
- * area with the nodes' thickness between them; a disc is all points within 1.5 mm of its centre, and centres are the
- * nodes and middles of the thinnest tenth of the surface.
+ * area with the element's thickness (nodes' means are up to half again too thick at an inner corner); a disc is all
+ * points within 1.5 mm of its centre, and centres are the nodes and middles of the thinnest tenth of the surface.
  * @param thinFirst element numbers by rising thickness
  */
 export function findThinnest(sheet: Membrane, stretches: Stretches, thinFirst: Uint32Array): Thinnest {
@@ -120,7 +120,6 @@ type Visit = (bin: number, x: number, y: number, z: number, area: number, thickn
 
 function eachPoint(sheet: Membrane, stretches: Stretches, bins: Bins, visit: Visit): void {
   const { at, corners, elements } = sheet;
-  const t = stretches.nodeThickness;
   for (let e = 0; e < elements; e++) {
     const [a, b, c] = [corners[3 * e], corners[3 * e + 1], corners[3 * e + 2]];
     const [p, q, r] = [3 * a, 3 * b, 3 * c];
@@ -140,7 +139,7 @@ function eachPoint(sheet: Membrane, stretches: Stretches, bins: Bins, visit: Vis
         const bin = binAt(bins, x, y);
         if (!bins.wanted[bin]) continue;
         const z = w * at[p + 2] + u * at[q + 2] + v * at[r + 2];
-        visit(bin, x, y, z, area, w * t[a] + u * t[b] + v * t[c]);
+        visit(bin, x, y, z, area, stretches.thickness[e]);
       }
     }
   }

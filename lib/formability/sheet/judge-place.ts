@@ -15,8 +15,8 @@ export function marginPercent(kind: PlaceKind): number {
 }
 
 /**
- * Looks at the template around a point: what rises (steeper than 45°) all round is a pit, what rises without falling
- * away as steeply is an inner corner.
+ * Looks at the template around a point: what rises (by half the reach or more) all round is a pit, what rises without
+ * falling away at 45° is an inner corner.
  * @param reach how far, mm: the size of what counts as tight, and no less than the sheet's elements can tell
  */
 export function judgePlace(template: Obstacle, [x, y, z]: Point, reach: number): PlaceKind {
@@ -25,7 +25,7 @@ export function judgePlace(template: Obstacle, [x, y, z]: Point, reach: number):
   for (let k = 0; k < DIRECTIONS; k++) {
     const angle = (2 * Math.PI * (k + 0.5)) / DIRECTIONS;
     const h = heightAt(template, x + reach * Math.cos(angle), y + reach * Math.sin(angle));
-    if (h - z > reach) rising++;
+    if (h - z > reach / 2) rising++;
     else if (z - h > reach) falling++;
   }
   if (rising === 0 && falling === 0) return 'flat';
