@@ -192,6 +192,38 @@ describe('bores of other kinds', () => {
   const pit = (vents: Pocket[]) =>
     carved(rectangle(60, 60), 30, [{ ring: rectangle(24, 24), z: 10, pockets: vents }]);
 
+  it('a slanted bore, 15° off upright', () => {
+    const shift = 10 * Math.tan(15 * rad);
+    const vent: Pocket = { ring: ring(0.5, 24, 1, 2), foot: ring(0.5, 24, 1 + shift, 2), z: 0 };
+    quick(pit([vent]), {
+      'vents.length': 1,
+      'vents.0.diameterMm': abs(1, 0.08),
+      'vents.0.lengthMm': abs(10, 0.4),
+      'airTraps.0.trapsAir': false,
+    });
+  });
+
+  it('from the bottom of a funnel, far from the origin', () => {
+    const funnel: P[] = [[0.4, 0], [40, 0], [40, 30], [30, 30], [0.4, 5]]; // prettier-ignore
+    const k = polygonFactor(48);
+    quick(moved(lathe(funnel, 48), 9000, -4000, 0), {
+      'vents.length': 1,
+      'vents.0.diameterMm': abs(0.8, 0.05),
+      'vents.0.lengthMm': abs(5, 0.05),
+      'vents.0.at.0': abs(9000, 0.05),
+      'airTraps.length': 1,
+      'airTraps.0.volumeMm3': rel((25 / 3) * k * (900 + 12 + 0.16), 0.015),
+      'airTraps.0.trapsAir': false,
+    });
+  });
+
+  it('a shut bore and an open one in one pit: the air gets out', () => {
+    const vents = [0.4, 0.8].map((d, i): Pocket => ({ ring: ring(d / 2, 12, 5 * i, 0), z: 0 }));
+    const { airTraps, vents: found } = quick(pit(vents), { 'vents.length': 2, 'airTraps.0.trapsAir': false });
+    expect(found.map((vent) => vent.printable).sort()).toEqual([false, true]);
+    expect(airTraps[0].vents).toHaveLength(2);
+  });
+
   it('64 sides of 0.02 mm', () => {
     quick(pit([{ ring: ring(0.2, 64, 1, 2), z: 0 }]), {
       'vents.length': 1,
