@@ -22,13 +22,15 @@ const CUT_MM = 0.01;
 /** Round the two nearest cells, walls are looked for this far, in cells and mm. */
 const REACH_CELLS = 6;
 const REACH_MM = 1.5;
+/** The foot of a wall over a rounded floor is found to this, mm. */
+const FOOT_MM = 0.02;
 /** Two bodies are parted by a valley where they meet within this below its floor, mm. */
 const VALLEY_MM = 0.1;
 
 /**
  * Gaps between neighbouring towers: islands of H above the bed, and above the floor of every valley between bodies (a
- * common plate, a groove, a saddle). The gap at the bed is the nearest distance of the two walls just above that
- * floor, the gap at the top that at the height of the lower; both are cut from the mesh, the grid only says where.
+ * common plate, a groove, a saddle). The gap at the bed is the nearest distance of the two walls at their foot, where
+ * they become steeper than 45°, the gap at the top that at the height of the lower; both are cut from the mesh, the grid only says where.
  */
 export function findSpacing(mesh: Mesh, facets: FacetGrid, surface: Float64Array, grid: Grid): Spacing[] {
   const found: Spacing[] = [];
@@ -44,12 +46,15 @@ export function findSpacing(mesh: Mesh, facets: FacetGrid, surface: Float64Array
       // Parted by a lower valley: told there.
       if (floor > 0 && below[a.cells[0]] !== below[b.cells[0]]) continue;
       const top = Math.min(a.top, b.top);
-      const height = top - floor;
-      if (height < LEAST_HEIGHT_MM || pair.gap <= 0) continue;
-      const cut = (z: number, p: number, q: number) =>
-        measureGap(mesh, facets, z, [centreX(grid, p), centreY(grid, p)], [centreX(grid, q), centreY(grid, q)], REACH_CELLS * grid.cell + REACH_MM); // prettier-ignore
-      const atFloor = cut(floor + CUT_MM, pair.from, pair.to);
-      const gapAtBedMm = atFloor ? atFloor.gap : pair.gap;
+      if (top - floor < LEAST_HEIGHT_MM || pair.gap <= 0) continue;
+      const cut = (z: number, p: number, q: number, walls?: 'any') =>
+        measureGap(mesh, facets, z, [centreX(grid, p), centreY(grid, p)], [centreX(grid, q), centreY(grid, q)], REACH_CELLS * grid.cell + REACH_MM, walls); // prettier-ignore
+      const foot = findFoot((z) => cut(z, pair.from, pair.to), floor, top);
+      // Slopes that lean further than 45° all the way are a hollow, not a gap.
+      if (!foot && cut(floor + CUT_MM, pair.from, pair.to, 'any')) continue;
+      const gapAtBedMm = foot ? foot.gap : pair.gap;
+      const height = top - (foot ? foot.z : floor);
+      if (height < LEAST_HEIGHT_MM) continue;
       const upper = nearestAt(surface, grid, a, b, top);
       const atTop = cut(top - CUT_MM, upper.cells[0], upper.cells[1]);
       const point = (at: [number, number] | undefined, c: number): Point =>
@@ -64,6 +69,27 @@ export function findSpacing(mesh: Mesh, facets: FacetGrid, surface: Float64Array
     }
   }
   return found.sort((a, b) => b.heightOverGap - a.heightOverGap).slice(0, MOST_PAIRS);
+}
+
+/** The lowest level at which two walls face each other: the floor, or where a rounded floor has become a wall. */
+function findFoot(
+  cut: (z: number) => { gap: number } | null,
+  floor: number,
+  top: number,
+): { gap: number; z: number } | null {
+  const atFloor = cut(floor + CUT_MM);
+  if (atFloor) return { gap: atFloor.gap, z: floor };
+  let high = top - CUT_MM;
+  let found = cut(high);
+  if (!found) return null;
+  let low = floor;
+  while (high - low > FOOT_MM) {
+    const middle = (low + high) / 2;
+    const there = cut(middle);
+    if (there) [high, found] = [middle, there];
+    else low = middle;
+  }
+  return { gap: found.gap, z: high };
 }
 
 function findIslands(surface: Float64Array, grid: Grid, above: number, label: Int32Array): Island[] {

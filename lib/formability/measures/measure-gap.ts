@@ -14,6 +14,7 @@ export interface Gap {
  * The exact gap at a height between two walls that face each other near two points: the facets near them are cut by
  * the level plane, and the nearest points of the cuts are taken between those that face to and fro.
  * @param reach how far round the two points walls are looked for, mm
+ * @param walls `steep`: only faces nearer to upright than to level; the rest is floor
  * @returns null where no two walls face each other there
  */
 export function measureGap(
@@ -23,6 +24,7 @@ export function measureGap(
   p: readonly [number, number],
   q: readonly [number, number],
   reach: number,
+  walls: 'steep' | 'any' = 'steep',
 ): Gap | null {
   const span = Math.hypot(q[0] - p[0], q[1] - p[1]) || 1;
   const [dx, dy] = [(q[0] - p[0]) / span, (q[1] - p[1]) / span];
@@ -36,7 +38,8 @@ export function measureGap(
   for (const t of facetsAt(grid, z, box)) {
     const cut = cutFacet(mesh, t, z);
     if (!cut) continue;
-    const [ax, ay, bx, by, nx, ny] = cut;
+    const [ax, ay, bx, by, nx, ny, nz] = cut;
+    if (walls === 'steep' && nx * nx + ny * ny < nz * nz) continue;
     const facing = (nx * dx + ny * dy) / Math.hypot(nx, ny);
     const along = ((ax + bx) / 2 - p[0]) * dx + ((ay + by) / 2 - p[1]) * dy;
     // Walls of the first look towards the second, stand nearer to it, and the other way round.
@@ -77,7 +80,7 @@ function facetsAt(grid: FacetGrid, z: number, box: readonly number[]): Set<numbe
   return found;
 }
 
-/** Ends of the facet's cut by the plane, and the level part of its normal; null where it is not cut. */
+/** Ends of the facet's cut by the plane, and its normal (not of length 1); null where it is not cut. */
 function cutFacet(mesh: Mesh, t: number, z: number): number[] | null {
   const { index, position: p } = mesh;
   const v = [0, 1, 2].map((k) => index[3 * t + k] * 3);
@@ -92,7 +95,7 @@ function cutFacet(mesh: Mesh, t: number, z: number): number[] | null {
   const [a, b, d] = v;
   const [ux, uy, uz] = [p[b] - p[a], p[b + 1] - p[a + 1], p[b + 2] - p[a + 2]];
   const [vx, vy, vz] = [p[d] - p[a], p[d + 1] - p[a + 1], p[d + 2] - p[a + 2]];
-  return [...ends, uy * vz - uz * vy, uz * vx - ux * vz];
+  return [...ends, uy * vz - uz * vy, uz * vx - ux * vz, ux * vy - uy * vx];
 }
 
 function thinned(segments: number[]): number[] {

@@ -6,6 +6,27 @@ import { checkOf, reportOn } from '../run-engine';
 const rad = Math.PI / 180;
 
 describe('spacing: height of the lower neighbour over the gap at the bed', () => {
+  it('a round trough begins where its sides are walls: at 45°, not at its bottom', () => {
+    // Arc of radius 17 whose middle lies 5 above the top at 26: at 45° it is 24.04 wide and 18.98 high.
+    const half = Math.acos(5 / 17);
+    const arc = Array.from({ length: 97 }, (_, k): [number, number] => {
+      const angle = half - (2 * half * k) / 96;
+      return [17 * Math.sin(angle), 31 - 17 * Math.cos(angle)];
+    });
+    const profile: [number, number][] = [[-60, 0], [60, 0], [60, 26], ...arc, [-60, 26]]; // prettier-ignore
+    const report = reportOn(extrude(profile, 80), { grid: { cellMm: 0.4 } });
+    expect(report.spacing).toHaveLength(1);
+    expect(report.spacing[0].gapAtBedMm).toBeCloseTo(34 * Math.SQRT1_2, 0);
+    expect(report.spacing[0].heightMm).toBeCloseTo(26 - (31 - 17 * Math.SQRT1_2), 0);
+    expect(report.spacing[0].gapMm).toBeCloseTo(2 * Math.sqrt(17 ** 2 - 25), 0);
+    expect(checkOf(report, 'spacing').status).toBe('pass');
+  });
+
+  it('a hollow gentler than 45° all over is no gap', () => {
+    const profile: [number, number][] = [[-60, 0], [60, 0], [60, 26], [30, 26], [0, 8], [-30, 26], [-60, 26]]; // prettier-ignore
+    expect(reportOn(extrude(profile, 80), { grid: { cellMm: 0.4 } }).spacing).toEqual([]);
+  });
+
   it('two boxes, 45 and 30 high, 26 apart', () => {
     const report = reportOn(together(box(30, 40, 45), moved(box(30, 40, 30), 56, 0, 0)));
     expect(report.spacing).toHaveLength(1);
