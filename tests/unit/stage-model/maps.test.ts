@@ -184,6 +184,15 @@ describe('the record of the maps', () => {
     expect(areaAbove(histogram, 0.08)).toBeCloseTo(walls, 1);
   });
 
+  it('leaves the inside of a hollow, which looks down and is no undercut, out of the draft figures', async () => {
+    const { meta } = await load(engine(openFrustum(80, 80, 40, 5, 3, 5)));
+    const top = 80 - 80 * Math.tan((5 * Math.PI) / 180);
+    const walls = (4 * ((80 + top) / 2) * 40) / Math.cos((5 * Math.PI) / 180);
+    expect(meta.draftRangeDeg[0]).toBeCloseTo(5, 3);
+    expect(meta.histogram.areaMm2.reduce((a, b) => a + b, 0) / (walls + top * top)).toBeCloseTo(1, 4);
+    expect(meta.areaMm2.undercut).toBe(0);
+  });
+
   it('leaves out what nobody measured, and refuses figures that do not fit the facets', async () => {
     const plain = geometryOf(frustum(60, 30, 5));
     const { model, meta } = await load(plain);
