@@ -5,6 +5,11 @@ import { heightAt, type Obstacle } from './obstacle';
 export type PlaceKind = 'flat' | 'wall' | 'inner-corner' | 'pit' | 'web';
 
 const DIRECTIONS = 16;
+/** Mean rise around, by the reach, from which a place counts as an inner corner, and as a pit. */
+const CORNER = 0.1;
+const PIT = 0.6;
+/** Rise or fall by the reach from which a place without corner counts as wall. */
+const STEEP = 0.5;
 
 /**
  * Honest margin of thickness figures, percent: the spread between two laws of the free sheet, ±20 on walls and
@@ -15,20 +20,22 @@ export function marginPercent(kind: PlaceKind): number {
 }
 
 /**
- * Looks at the template around a point: what rises (by half the reach or more) all round is a pit, what rises without
- * falling away at 45° is an inner corner.
+ * Looks at the template around a point. Rises and falls, each cut to the reach, cancel on a plain wall; what is left
+ * over is a corner, and where nearly all sides rise, a pit.
  * @param reach how far, mm: the size of what counts as tight, and no less than the sheet's elements can tell
  */
 export function judgePlace(template: Obstacle, [x, y, z]: Point, reach: number): PlaceKind {
-  let rising = 0;
-  let falling = 0;
+  let sum = 0;
+  let steepest = 0;
   for (let k = 0; k < DIRECTIONS; k++) {
     const angle = (2 * Math.PI * (k + 0.5)) / DIRECTIONS;
     const h = heightAt(template, x + reach * Math.cos(angle), y + reach * Math.sin(angle));
-    if (h - z > reach / 2) rising++;
-    else if (z - h > reach) falling++;
+    const rise = Math.max(-1, Math.min(1, (h - z) / reach));
+    sum += rise;
+    steepest = Math.max(steepest, Math.abs(rise));
   }
-  if (rising === 0 && falling === 0) return 'flat';
-  if (falling > 0) return 'wall';
-  return rising >= DIRECTIONS - 4 ? 'pit' : 'inner-corner';
+  const mean = sum / DIRECTIONS;
+  if (mean > PIT) return 'pit';
+  if (mean > CORNER) return 'inner-corner';
+  return steepest > STEEP ? 'wall' : 'flat';
 }

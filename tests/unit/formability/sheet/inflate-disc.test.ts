@@ -56,6 +56,16 @@ describe('clamped circular membrane: the reference solution', () => {
   });
 });
 
+describe('small deflection', () => {
+  it('tends to the dish of H. Hencky (1915, recomputed for ν = 0.5): w0 = k a (p a / E t0)^1/3, k = 0.594879', () => {
+    // E = 3 μ = 6 C1.
+    const k = (height: number, pressure: number) => height / (pressure / 6) ** (1 / 3);
+    const [near, nearer] = [0.04, 0.02].map((height) => k(height, inflateTo(height).pressure));
+    // The difference goes with the square of the height.
+    expect(Math.abs((4 * nearer - near) / 3 / 0.594879 - 1)).toBeLessThan(1e-4);
+  });
+});
+
 describe('membrane solver against the reference', () => {
   it.each([0.25, 0.5, 1, 1.3])('pressure, pole and whole thickness profile at h/a = %d', (height) => {
     const radiusMm = 37;

@@ -11,6 +11,7 @@ export interface Inflation {
 }
 
 const FINEST = 5e-4;
+const LEAST_STRETCH = 1 + 1e-5;
 
 /**
  * Clamped circular Mooney-Rivlin membrane (α = C2/C1) under pressure: the equations of J. E. Adkins and R. S. Rivlin,
@@ -18,7 +19,8 @@ const FINEST = 5e-4;
  * p = 1 and 2 C1 t0 = 1 until r = R; they scale, so that radius is the clamp's and no shooting is needed.
  */
 export function inflate(poleStretch: number, alpha = 0): Inflation {
-  const STEP = Math.min(FINEST, (poleStretch - 1) / 100);
+  // A shallow dish is small in these units: its radius goes with the strain to the power 3/2.
+  const STEP = Math.min(FINEST, 0.01 * (poleStretch - 1) ** 1.5);
   const tension = (l1: number, l2: number) => (l1 / l2 - 1 / (l1 * l2) ** 3) * (1 + alpha * l2 * l2);
   const meridian = (t1: number, l2: number, guess: number) => {
     let l1 = guess;
@@ -48,7 +50,7 @@ export function inflate(poleStretch: number, alpha = 0): Inflation {
     return y.map((v, i) => v + (h / 6) * (a[i] + 2 * b[i] + 2 * c[i] + d[i]));
   };
   const poleTension = tension(poleStretch, poleStretch);
-  let R = 1e-5;
+  let R = STEP / 50;
   let y = [poleStretch * R, 0, poleTension, (poleStretch * R) / (2 * poleTension)];
   const radii = [R];
   const states = [y];
@@ -96,7 +98,7 @@ export function inflateTo(height: number, alpha = 0): Inflation {
     const miss = inflate(stretch, alpha).height - height;
     if (Math.abs(miss) < 1e-12) break;
     const next = stretch - (miss * (stretch - before)) / (miss - missBefore);
-    [before, missBefore, stretch] = [stretch, miss, Math.max(1.0001, next)];
+    [before, missBefore, stretch] = [stretch, miss, Math.max(LEAST_STRETCH, next)];
   }
   return inflate(stretch, alpha);
 }
