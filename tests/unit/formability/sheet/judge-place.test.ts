@@ -7,7 +7,7 @@ const REACH = 3;
 
 describe('what sort of place a point of the sheet is', () => {
   const wall = makeObstacle(field([60, 60], block(60, 60, 30, 5)));
-  const pit = makeObstacle(field([60, 60], (x, y) => (Math.hypot(x, y) < 3 ? 4 : 30)));
+  const pit = makeObstacle(field([60, 60], (x, y) => (Math.hypot(x, y) < 2 ? 4 : 30)));
   const slope = makeObstacle(field([60, 60], (x) => Math.max(0, 30 - Math.abs(x))));
   const wallX = (z: number) => 30 - z * Math.tan((5 * Math.PI) / 180);
 
