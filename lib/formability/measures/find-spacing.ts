@@ -22,6 +22,7 @@ const CUT_MM = 0.01;
 /** Round the two nearest cells, walls are looked for this far, in cells and mm. */
 const REACH_CELLS = 6;
 const REACH_MM = 1.5;
+const REACH_HEIGHTS = 1.5;
 /** The foot of a wall over a rounded floor is found to this, mm. */
 const FOOT_MM = 0.02;
 /** Two bodies are parted by a valley where they meet within this below its floor, mm. */
@@ -47,11 +48,17 @@ export function findSpacing(mesh: Mesh, facets: FacetGrid, surface: Float64Array
       if (floor > 0 && below[a.cells[0]] !== below[b.cells[0]]) continue;
       const top = Math.min(a.top, b.top);
       if (top - floor < LEAST_HEIGHT_MM || pair.gap <= 0) continue;
-      const cut = (z: number, p: number, q: number, walls?: 'any') =>
-        measureGap(mesh, facets, z, [centreX(grid, p), centreY(grid, p)], [centreX(grid, q), centreY(grid, q)], REACH_CELLS * grid.cell + REACH_MM, walls); // prettier-ignore
-      const foot = findFoot((z) => cut(z, pair.from, pair.to), floor, top);
+      const near = REACH_CELLS * grid.cell + REACH_MM;
+      const cut = (z: number, p: number, q: number, reach = near, walls?: 'any') =>
+        measureGap(mesh, facets, z, [centreX(grid, p), centreY(grid, p)], [centreX(grid, q), centreY(grid, q)], reach, walls); // prettier-ignore
+      // Over a rounded floor the walls begin further out.
+      const foot = findFoot(
+        (z) => cut(z, pair.from, pair.to, z > floor + CUT_MM ? near + REACH_HEIGHTS * (top - floor) : near),
+        floor,
+        top,
+      );
       // Slopes that lean further than 45° all the way are a hollow, not a gap.
-      if (!foot && cut(floor + CUT_MM, pair.from, pair.to, 'any')) continue;
+      if (!foot && cut(floor + CUT_MM, pair.from, pair.to, near, 'any')) continue;
       const gapAtBedMm = foot ? foot.gap : pair.gap;
       const height = top - (foot ? foot.z : floor);
       if (height < LEAST_HEIGHT_MM) continue;
