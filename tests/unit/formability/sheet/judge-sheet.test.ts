@@ -1,0 +1,101 @@
+import { describe, expect, it } from 'vitest';
+import { checkSheet } from '@/lib/formability/checks/check-sheet';
+import { fillRecipe } from '@/lib/formability/fill-recipe';
+import { formSheet } from '@/lib/formability/sheet/form-sheet';
+import { judgeSheet, type SheetJudgement } from '@/lib/formability/sheet/judge-sheet';
+import type { Part } from '@/lib/formability/survey-part';
+import { block, field } from './templates';
+
+const template = field([60, 40], block(60, 40, 16, 8));
+
+/** What the sheet needs of a surveyed part: its middle lies at 100, −50 in the file. */
+const part = {
+  columns: {
+    grid: {
+      cell: template.cellMm,
+      nx: template.nx,
+      ny: template.ny,
+      x0: template.originX,
+      y0: template.originY,
+    },
+  },
+  holes: { surface: template.heights },
+  prepared: { mesh: { centre: [100, -50] } },
+  size: [60, 40, 16],
+} as unknown as Part;
+
+const recipeOf = (gaugeMm: number, minFormedMm: number) =>
+  fillRecipe({ sheet: { gaugeMm, minFormedMm }, grid: { sheetNodes: 32 } });
+
+describe('the sheet over a surveyed part', () => {
+  const thick = recipeOf(2, 0.3);
+  const judged = judgeSheet(part, thick, [100, 80]);
+
+  it('is formed in the file’s own frame', () => {
+    const plain = formSheet(
+      { template, frameMm: [100, 80], gaugeMm: 2, minFormedMm: 0.3, centreMm: [0, 0] },
+      { nodes: 32 },
+    );
+    expect(judged.formed!.report.q05Mm).toBeCloseTo(plain.report.q05Mm, 6);
+    expect(judged.formed!.thicknessAt(100, -50)).toBeCloseTo(2, 6);
+    expect(Math.abs(judged.formed!.report.minAt[0] - 100)).toBeLessThan(50);
+    expect(judged.formed!.report.nodes).toEqual([33, 25]);
+  });
+
+  it('passes with the margin counted in, and then wants no remedy', () => {
+    expect(judged.remedy).toBeNull();
+    const check = checkSheet({ recipe: thick, sheet: judged })!;
+    expect(check).toMatchObject({ id: 'sheet', status: 'pass', limit: 0.3, unit: 'mm', remedy: '' });
+    expect(check.measured).toBe(judged.formed!.report.minMm);
+    expect(check.message).toContain('An estimate; prove it with a test pull.');
+  });
+
+  it('cautions within the margin, fails below the limit, with a gauge whose own run is enough', () => {
+    const { minMm, marginPercent } = judged.formed!.report;
+    const near = recipeOf(2, minMm * (1 - marginPercent / 200));
+    const caution = judgeSheet(part, near, [100, 80]);
+    expect(checkSheet({ recipe: near, sheet: caution })!.status).toBe('caution');
+    const far = recipeOf(2, minMm * 1.2);
+    const fail = judgeSheet(part, far, [100, 80]);
+    const check = checkSheet({ recipe: far, sheet: fail })!;
+    expect(check.status).toBe('fail');
+    expect(fail.remedy!.gaugeMm).toBeGreaterThan(2);
+    expect(fail.remedy!.minMm).toBeGreaterThanOrEqual(fail.neededMm);
+    expect(check.remedy).toMatch(/^Take a gauge of \d/);
+    const mended = recipeOf(fail.remedy!.gaugeMm!, minMm * 1.2);
+    expect(checkSheet({ recipe: mended, sheet: judgeSheet(part, mended, [100, 80]) })!.status).toBe('pass');
+  });
+
+  it('is cautious where the run is not to be relied on', () => {
+    const shaken = (
+      change: object,
+      outcome: 'not-settled' | 'converged' | 'volume-lost' = 'converged',
+    ): SheetJudgement => ({
+      ...judged,
+      formed: { ...judged.formed!, outcome, report: { ...judged.formed!.report, ...change } },
+    });
+    const say = (sheet: SheetJudgement) => checkSheet({ recipe: thick, sheet })!;
+    expect(say(shaken({}, 'not-settled'))).toMatchObject({
+      status: 'caution',
+      message: expect.stringContaining('did not settle'),
+    });
+    expect(say(shaken({}, 'volume-lost'))).toMatchObject({
+      status: 'caution',
+      message: expect.stringContaining('lost sheet volume'),
+    });
+    expect(say(shaken({ meshErrorPercent: 60 }))).toMatchObject({
+      status: 'caution',
+      message: expect.stringContaining('60 % away'),
+    });
+    expect(say(shaken({ unclosedAreaMm2: 900 })).message).toContain('does not close onto the template');
+  });
+
+  it('is not formed in a frame without room, and says along which side', () => {
+    const tight = judgeSheet(part, thick, [60, 80]);
+    expect(tight).toMatchObject({ formed: null, remedy: null });
+    const check = checkSheet({ recipe: thick, sheet: tight })!;
+    expect(check).toMatchObject({ status: 'not-run', measured: null });
+    expect(check.message).toMatch(/leaves no room round the template along x\.$/);
+    expect(checkSheet({ recipe: thick, sheet: null })).toBeNull();
+  });
+});
