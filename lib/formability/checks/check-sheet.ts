@@ -81,11 +81,14 @@ function messageOf(
   return parts.join(' ');
 }
 
-function remedyOf({ gaugeMm, minMm, better }: GaugeRemedy, neededMm: number, marginPercent: number): string {
+function remedyOf(remedy: GaugeRemedy, neededMm: number, marginPercent: number): string {
+  const { gaugeMm, scaledMm, minMm, better } = remedy;
+  if (gaugeMm === null) {
+    const change =
+      LOCALLY[better] || 'a template that draws less: lower, with wider gaps, more draft and larger radii';
+    return `No usual gauge mends this: ${say(neededMm, 2)} mm would take about ${say(scaledMm, 1)} mm of sheet. It needs ${change}.`;
+  }
+  const gauge = `Take a gauge of ${say(gaugeMm, 2)} mm: a run with it leaves ${say(minMm, 2)} mm, enough with the margin of ${marginPercent} %`;
   const local = LOCALLY[better];
-  const gauge =
-    gaugeMm === null
-      ? `No gauge that was tried reaches ${say(neededMm, 2)} mm`
-      : `Take a gauge of ${say(gaugeMm, 2)} mm: a run with it leaves ${say(minMm, 2)} mm, enough with the margin of ${marginPercent} %`;
   return local === '' ? `${gauge}.` : `${gauge}; little of the sheet is thin, so ${local} serves better.`;
 }

@@ -7,6 +7,8 @@ export type ThinRemedy = 'gauge' | 'radius' | 'gap' | 'height';
 export interface GaugeRemedy {
   /** Least gauge, rounded up to the step, whose own run reached the thickness; null where none did. */
   gaugeMm: number | null;
+  /** Gauge that scaling asks for, mm: beyond four times the present one it is not run, for no gauge mends that. */
+  scaledMm: number;
   /** Least thickness of the last run, mm. */
   minMm: number;
   runs: number;
@@ -15,6 +17,7 @@ export interface GaugeRemedy {
 }
 
 const MOST_RUNS = 4;
+const MOST_FACTOR = 4;
 /** Share of the formed area below the limit up to which the template is better changed than the whole sheet. */
 const LOCAL_SHARE = 0.05;
 
@@ -42,15 +45,17 @@ export function gaugeFor(
   let { minMm } = formed.report;
   let runs = 0;
   while (minMm < wantedMinMm && runs < MOST_RUNS) {
-    gaugeMm = stepMm * Math.ceil((gaugeMm * wantedMinMm) / minMm / stepMm - 1e-9);
+    const scaled = stepMm * Math.ceil((gaugeMm * wantedMinMm) / minMm / stepMm - 1e-9);
+    if (scaled > MOST_FACTOR * input.gaugeMm) return { gaugeMm: null, scaledMm: scaled, minMm, runs, better };
+    gaugeMm = scaled;
     minMm = formSheet({ ...input, gaugeMm }, options).report.minMm;
     runs++;
   }
-  return { gaugeMm: minMm >= wantedMinMm ? gaugeMm : null, minMm, runs, better };
+  return { gaugeMm: minMm >= wantedMinMm ? gaugeMm : null, scaledMm: gaugeMm, minMm, runs, better };
 }
 
 /**
- * Gauge where much of the part is thin; else the template where it is thin: a radius in an inner corner, room in a
+ * What serves: gauge where much of the part is thin; else the template where it is thin: a radius in an inner corner, room in a
  * pit or slot, less height on a wall (own judgement, no source).
  */
 export function betterChange({ report, minPlace, formedAreaMm2 }: FormedSheet): ThinRemedy {

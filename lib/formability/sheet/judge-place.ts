@@ -26,16 +26,18 @@ export function marginPercent(kind: PlaceKind): number {
  */
 export function judgePlace(template: Obstacle, [x, y, z]: Point, reach: number): PlaceKind {
   let sum = 0;
-  let steepest = 0;
+  let [highest, deepest] = [0, 0];
   for (let k = 0; k < DIRECTIONS; k++) {
     const angle = (2 * Math.PI * (k + 0.5)) / DIRECTIONS;
     const h = heightAt(template, x + reach * Math.cos(angle), y + reach * Math.sin(angle));
     const rise = Math.max(-1, Math.min(1, (h - z) / reach));
     sum += rise;
-    steepest = Math.max(steepest, Math.abs(rise));
+    highest = Math.max(highest, rise);
+    deepest = Math.max(deepest, -rise);
   }
   const mean = sum / DIRECTIONS;
   if (mean > PIT) return 'pit';
-  if (mean > CORNER) return 'inner-corner';
-  return steepest > STEEP ? 'wall' : 'flat';
+  // A steep wall beside and a floor within reach below: a foot, however little it rises on the whole.
+  if (mean > CORNER || (highest >= 1 && deepest < 1)) return 'inner-corner';
+  return Math.max(highest, deepest) > STEEP ? 'wall' : 'flat';
 }

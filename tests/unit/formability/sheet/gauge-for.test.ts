@@ -40,6 +40,13 @@ describe('gauge for a wanted least thickness', () => {
     expect(found.runs).toBeGreaterThanOrEqual(1);
   });
 
+  it('does not pretend that a sheet four times as thick is a remedy', () => {
+    const wanted = 5 * thin.report.minMm;
+    const found = gaugeFor(input, thin, wanted, options);
+    expect(found).toMatchObject({ gaugeMm: null, runs: 0, minMm: thin.report.minMm });
+    expect(found.scaledMm).toBeCloseTo(3, 12);
+  });
+
   it('refuses a thickness of nothing', () => {
     expect(() => gaugeFor(input, thin, 0, options)).toThrow(/give numbers above 0/);
   });

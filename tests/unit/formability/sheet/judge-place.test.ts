@@ -19,6 +19,8 @@ describe('what sort of place a point of the sheet is', () => {
     ['wall', slope, [14, 0, 16]],
     ['inner-corner', wall, [30.5, 0, 0]],
     ['inner-corner', wall, [wallX(1), 4, 1]],
+    ['inner-corner', wall, [31, 2, 2.5]],
+    ['inner-corner', wall, [30.6, 30.6, 1]],
     ['pit', pit, [0, 0, 4]],
     ['pit', pit, [0.8, 0.3, 5]],
   ] as const)('%s', (kind, template, at) => {

@@ -90,6 +90,13 @@ describe('the sheet over a surveyed part', () => {
     expect(say(shaken({ unclosedAreaMm2: 900 })).message).toContain('does not close onto the template');
   });
 
+  it('says so where no gauge mends it', () => {
+    const recipe = recipeOf(2, 1.99);
+    const hopeless = checkSheet({ recipe, sheet: judgeSheet(part, recipe, [72, 52]) })!;
+    expect(hopeless.status).toBe('fail');
+    expect(hopeless.remedy).toMatch(/^No usual gauge mends this: .* would take about \d+(\.\d)? mm of sheet/);
+  });
+
   it('is not formed in a frame without room, and says along which side', () => {
     const tight = judgeSheet(part, thick, [60, 80]);
     expect(tight).toMatchObject({ formed: null, remedy: null });
