@@ -82,13 +82,20 @@ function missOf(path: string, found: unknown, claim: Claim): string[] {
   return Object.is(found, claim) || found === claim ? [] : told(JSON.stringify(claim));
 }
 
-export function analysed(mesh: Triangles | Uint8Array, recipe: RecipeInput = {}): Report {
-  return analyse(mesh instanceof Uint8Array ? mesh : binaryStl(mesh), recipe).report;
+/** The report; its geometric half alone unless the whole is asked for. */
+export function analysed(mesh: Triangles | Uint8Array, recipe: RecipeInput = {}, whole = false): Report {
+  const bytes = mesh instanceof Uint8Array ? mesh : binaryStl(mesh);
+  return analyse(bytes, recipe, { geometryOnly: !whole }).report;
 }
 
 /** Holds a mesh's report against what was worked out for it; every miss is told at once. */
-export function hold(mesh: Triangles | Uint8Array, claims: Claims, recipe: RecipeInput = {}): Report {
-  const report = analysed(mesh, recipe);
+export function hold(
+  mesh: Triangles | Uint8Array,
+  claims: Claims,
+  recipe: RecipeInput = {},
+  whole = false,
+): Report {
+  const report = analysed(mesh, recipe, whole);
   expect(missesOf(report, claims)).toEqual([]);
   return report;
 }

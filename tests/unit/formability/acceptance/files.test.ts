@@ -56,7 +56,7 @@ function utf16(text: string, littleEndian: boolean): Uint8Array {
 
 async function outcome(bytes: Uint8Array): Promise<{ code: string; message: string } | Report> {
   try {
-    return (await analyseFile(bytes, COARSE)).report;
+    return (await analyseFile(bytes, COARSE, { geometryOnly: true })).report;
   } catch (error) {
     if (error instanceof UnusableInput) return { code: error.code, message: error.message };
     throw error;
@@ -227,12 +227,14 @@ const USABLE: [string, Uint8Array, Claims][] = [
 
 describe('files that can be used, whatever is odd about them', () => {
   it.each(USABLE)('%s', async (_, bytes, claims) => {
-    const { report } = await analyseFile(bytes, COARSE);
+    const { report } = await analyseFile(bytes, COARSE, { geometryOnly: true });
     expect(missesOf(report, claims)).toEqual([]);
   });
 
   it('says the same bits twice', async () => {
-    const once = JSON.stringify((await analyseFile(binary, COARSE)).report);
-    expect(JSON.stringify((await analyseFile(binary.slice(), COARSE)).report)).toBe(once);
+    const once = JSON.stringify((await analyseFile(binary, COARSE, { geometryOnly: true })).report);
+    expect(JSON.stringify((await analyseFile(binary.slice(), COARSE, { geometryOnly: true })).report)).toBe(
+      once,
+    );
   });
 });

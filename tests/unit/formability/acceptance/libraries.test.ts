@@ -90,7 +90,7 @@ describe.each([
   const mesh = make();
 
   it('volume, area, plan, shadow, undercut, heights', () => {
-    const { report, geometry } = analyse(binaryStl(mesh));
+    const { report, geometry } = analyse(binaryStl(mesh), {}, { geometryOnly: true });
     const exact = solid(mesh);
     const rays = byRays(mesh, 0.4);
     const { area, overhang } = rays.shadowed();
@@ -130,7 +130,7 @@ describe('unions against manifold-3d', () => {
   it('two rabbits that run into each other', () => {
     const one = scannedRabbit(8);
     const two = moved(turned(one, 65), 21, 9, 0);
-    const { report } = analyse(binaryStl(together(one, two)));
+    const { report } = analyse(binaryStl(together(one, two)), {}, { geometryOnly: true });
     const union = solid(one).add(solid(two));
     expect(
       missesOf(report.mesh, {
@@ -158,7 +158,7 @@ describe('unions against manifold-3d', () => {
             : box(r, r, 8 + roll(20)); // prettier-ignore
       return moved(turned(body, roll(360)), roll(40), roll(40), i === 5 ? 4 + roll(5) : 0);
     });
-    const { report } = analyse(binaryStl(together(...bodies)));
+    const { report } = analyse(binaryStl(together(...bodies)), {}, { geometryOnly: true });
     const union = bodies.map(solid).reduce((a, b) => a.add(b));
     const rays = byRays(together(...bodies), 0.4);
     expect(
@@ -175,7 +175,7 @@ describe('unions against manifold-3d', () => {
 describe('the teapot: sheets that cross and do not close', () => {
   it('is told so, and seen from above as rays see it', () => {
     const mesh = teapot(30, 10);
-    const { report, geometry } = analyse(binaryStl(mesh));
+    const { report, geometry } = analyse(binaryStl(mesh), {}, { geometryOnly: true });
     expect(report.mesh.watertight).toBe(false);
     expect(report.mesh.warnings).toContain('not_watertight');
     const rays = byRays(mesh, 0.5);

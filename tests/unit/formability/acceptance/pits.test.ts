@@ -32,7 +32,7 @@ describe.each([60, 300])('a square pit in a template of %s mm', (size) => {
 
   it('without a vent traps 8000 mm³', () => {
     const { mesh } = ventedPit(size, []);
-    const report = quick(mesh, {
+    quick(mesh, {
       'mesh.volumeMm3': tight(size * size * 0.8 * 30 - 8000),
       'airTraps.length': 1,
       'airTraps.0.spillZMm': abs(30, 1e-4),
@@ -45,7 +45,7 @@ describe.each([60, 300])('a square pit in a template of %s mm', (size) => {
       'plan.formedAreaMm2': rel(frame + walls + 80 * 20, 0.005),
       'undercut.undercutVolumeMm3': 0,
     });
-    holdChecks(report, { air: 'caution|fail' });
+    holdChecks(analysed(mesh, cells(mesh, {}), true), { air: 'caution|fail' });
   });
 
   it.each([
@@ -80,7 +80,6 @@ describe.each([60, 300])('a square pit in a template of %s mm', (size) => {
     });
     // From 0.8 mm on a vent may be said to mark.
     if (diameter < 0.7) holdChecks(report, { vents: open ? 'pass' : 'caution|fail' });
-    if (!open) holdChecks(report, { air: 'caution|fail' });
     holdChecks(report, { undercut: 'pass' });
   });
 
