@@ -1,13 +1,12 @@
 import { redirect } from 'next/navigation';
 import { currentPerson } from '@/lib/auth/session';
-import { UNRUN_CHECKS } from '@/lib/formability/checks/run-checks';
-import { checkName } from '@/lib/review/check-words';
+import { checkName, LEFT_OUT_CHECKS } from '@/lib/review/check-words';
 import { ButtonLink } from '../_components/link';
 import { SectionDrawing } from './_components/section-drawing';
 
 const nameOf = (id: string) => checkName(id).toLowerCase();
 const physics = ['sheet', 'air', 'skin', 'walls', 'heat'] as const;
-const left: readonly string[] = UNRUN_CHECKS;
+const left: readonly string[] = LEFT_OUT_CHECKS;
 /** In the words of a sentence: a pocket without a vent is what the check on vents finds. */
 const checked = ['draft', 'undercuts', 'pockets without a vent', 'layer lines', 'edges', 'draw'].concat(
   physics.filter((id) => !left.includes(id)).map(nameOf),

@@ -7,6 +7,7 @@ import { estimatePrint, facingAreas } from './measures/estimate-print';
 import { measureLayers } from './measures/measure-layers';
 import type { EffectiveRecipe, RecipeInput } from './recipe';
 import type { Advice, Check, CheckId, CheckStatus } from './report';
+import { scaleSheet } from './sheet/scale-sheet';
 import type { Part } from './survey-part';
 import { writePhysics } from './write-physics';
 
@@ -21,29 +22,31 @@ export function advise(part: Part, input: CheckInput, checks: Check[]): Advice[]
   const before = new Map(checks.map((check) => [check.id, check.status]));
   const weight = total(checks);
   if (weight === 0) return [];
-  const tried = candidateChanges(input.recipe, input.report, before).flatMap(({ change, text }) => {
-    const changed = judgeAgain(part, input, change);
-    const worse = changed.checks.some(
-      (check) => WEIGHT[check.status] > WEIGHT[before.get(check.id) ?? 'pass'],
-    );
-    const mends = changed.checks
-      .filter((check) => WEIGHT[check.status] < WEIGHT[before.get(check.id) ?? 'pass'])
-      .map((check): CheckId => check.id);
-    if (worse || mends.length === 0) return [];
-    const { print } = input.report;
-    return [
-      {
-        gain: weight - total(changed.checks),
-        advice: {
-          change,
-          mends,
-          costS: changed.report.print.timeS - print.timeS,
-          costG: changed.report.print.massG - print.massG,
-          text,
+  const tried = candidateChanges(input.recipe, input.report, before, input.sheet?.remedy?.gaugeMm).flatMap(
+    ({ change, text }) => {
+      const changed = judgeAgain(part, input, change);
+      const worse = changed.checks.some(
+        (check) => WEIGHT[check.status] > WEIGHT[before.get(check.id) ?? 'pass'],
+      );
+      const mends = changed.checks
+        .filter((check) => WEIGHT[check.status] < WEIGHT[before.get(check.id) ?? 'pass'])
+        .map((check): CheckId => check.id);
+      if (worse || mends.length === 0) return [];
+      const { print } = input.report;
+      return [
+        {
+          gain: weight - total(changed.checks),
+          advice: {
+            change,
+            mends,
+            costS: changed.report.print.timeS - print.timeS,
+            costG: changed.report.print.massG - print.massG,
+            text,
+          },
         },
-      },
-    ];
-  });
+      ];
+    },
+  );
   tried.sort(
     (a, b) => b.gain - a.gain || a.advice.costS - b.advice.costS || (a.advice.text < b.advice.text ? -1 : 1),
   );
@@ -91,11 +94,12 @@ function judgeAgain(
       recipe,
     ),
   };
-  const whole = { ...report, ...writePhysics(part, recipe, report) };
+  const whole = { ...report, ...writePhysics(part, recipe, report, input.sheet) };
   return {
     report: whole,
     checks: runChecks({
       ...input,
+      sheet: input.sheet && scaleSheet(input.sheet, recipe.sheet.gaugeMm / input.recipe.sheet.gaugeMm),
       recipe,
       report: whole,
       walls: draft?.walls ?? input.walls,

@@ -10,6 +10,8 @@ export interface AnalyseOptions {
   mesh?: RawMesh;
   /** Leave out everything but geometry: the checks that rest on physics say so. */
   geometryOnly?: boolean;
+  /** Form the sheet too: seconds more; left out, its check says so. */
+  sheet?: boolean;
   /** Milliseconds; lent only to fill `timings`. */
   now?(): number;
 }

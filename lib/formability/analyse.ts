@@ -13,6 +13,7 @@ import { describeSource } from './parse/describe-source';
 import { readMesh } from './parse/read-mesh';
 import { MM_PER_UNIT, type EffectiveRecipe, type RecipeInput } from './recipe';
 import type { Analysis, AnalysisGeometry } from './report';
+import { judgeSheet, type SheetJudgement } from './sheet/judge-sheet';
 import { Stages } from './stages';
 import { surveyPart, type Part } from './survey-part';
 import { ENGINE_VERSION } from './version';
@@ -43,25 +44,31 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
   const part = surveyPart(raw, effective, stages);
   effective.grid.cellMm = part.columns.grid.cell;
   const wallDraft = stages.run('draft', () => judgeDraft(part, effective));
-  const sections = stages.run('sections', () => {
-    const geometric = writeSections(part, effective, wallDraft.section);
-    return {
-      schema: 1 as const,
-      engine: ENGINE_VERSION,
-      input: {
-        sha256: raw.sha256,
-        bytes: bytes.length,
-        format: raw.format,
-        unit: effective.mesh.unit,
-        triangles: raw.triangles,
-        ...describeSource(raw),
-      },
-      recipe: effective,
-      ...geometric,
-      ...(options.geometryOnly ? {} : writePhysics(part, effective, geometric)),
-    };
-  });
-  const input = checkInput(part, effective, sections, wallDraft, options.geometryOnly ?? false);
+  const geometric = stages.run('sections', () => writeSections(part, effective, wallDraft.section));
+  const sheet =
+    options.sheet && !options.geometryOnly
+      ? stages.run('sheet', (onProgress) =>
+          judgeSheet(part, effective, geometric.plan.frameMm, { onProgress, shouldStop: options.shouldStop }),
+        )
+      : null;
+  const sections = {
+    schema: 1 as const,
+    engine: ENGINE_VERSION,
+    input: {
+      sha256: raw.sha256,
+      bytes: bytes.length,
+      format: raw.format,
+      unit: effective.mesh.unit,
+      triangles: raw.triangles,
+      ...describeSource(raw),
+    },
+    recipe: effective,
+    ...geometric,
+    ...(options.geometryOnly
+      ? {}
+      : stages.run('physics', () => writePhysics(part, effective, geometric, sheet))),
+  };
+  const input = checkInput(part, effective, sections, wallDraft, sheet, options.geometryOnly ?? false);
   const checks = stages.run('checks', () => runChecks(input));
   const advice = options.geometryOnly ? [] : stages.run('advice', () => advise(part, input, checks));
   const geometry = stages.run('geometry', () => drawGeometry(part));
@@ -74,6 +81,7 @@ function checkInput(
   recipe: EffectiveRecipe,
   report: CheckInput['report'],
   wallDraft: DraftJudgement,
+  sheet: SheetJudgement | null,
   geometryOnly: boolean,
 ): CheckInput {
   return {
@@ -82,6 +90,7 @@ function checkInput(
     walls: wallDraft.walls,
     wantedDraftDeg: wallDraft.section.wantedDeg,
     overhangs: findOverhangs(part.prepared.mesh, part.facets, part.holes.bore, recipe.limits.overhangDeg),
+    sheet,
     geometryOnly,
     sizeMm: part.size,
   };

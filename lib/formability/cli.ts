@@ -13,6 +13,7 @@ interface Arguments {
   mesh: string;
   recipe: string | null;
   json: boolean;
+  sheet: boolean;
   geometryOnly: boolean;
 }
 
@@ -33,7 +34,13 @@ function readArguments(argv: string[]): Arguments {
   }
   if (files.length !== 1)
     throw new WrongUse(files.length === 0 ? 'no mesh was named' : 'more than one mesh was named');
-  return { mesh: files[0], recipe, json: flags.has('--json'), geometryOnly: flags.has('--geometry-only') };
+  return {
+    mesh: files[0],
+    recipe,
+    json: flags.has('--json'),
+    sheet: flags.has('--sheet'),
+    geometryOnly: flags.has('--geometry-only'),
+  };
 }
 
 function readBytes(path: string): Uint8Array {
@@ -75,6 +82,7 @@ export async function main(argv: string[]): Promise<void> {
     const bytes = readBytes(args.mesh);
     const { report } = await analyseFile(bytes, readRecipe(args.recipe), {
       geometryOnly: args.geometryOnly,
+      sheet: args.sheet,
       now: () => performance.now(),
       onProgress: process.stderr.isTTY ? showProgress : undefined,
     });

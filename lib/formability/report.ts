@@ -234,7 +234,7 @@ export interface PrintReport {
   cost: number;
 }
 
-/** The membrane run (not computed by this engine version: null in the report). */
+/** The membrane run; null where the sheet was not asked for or could not be formed. */
 export interface SheetReport {
   minMm: number;
   minAt: Point;

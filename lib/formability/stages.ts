@@ -15,6 +15,8 @@ const WEIGHT = {
   walls: 8,
   draft: 12,
   sections: 10,
+  sheet: 250,
+  physics: 2,
   checks: 5,
   advice: 3,
   geometry: 2,
@@ -25,16 +27,22 @@ export type Stage = keyof typeof WEIGHT;
 export class Stages {
   readonly timings: Record<string, number> = {};
   private done = 0;
+  private readonly total: number;
 
-  constructor(private readonly options: AnalyseOptions) {}
+  constructor(private readonly options: AnalyseOptions) {
+    const sheet = options.sheet && !options.geometryOnly;
+    this.total = TOTAL - (sheet ? 0 : WEIGHT.sheet);
+  }
 
-  run<T>(stage: Stage, work: () => T): T {
+  run<T>(stage: Stage, work: (onProgress: (share: number) => void) => T): T {
     if (this.options.shouldStop?.()) {
       throw new UnusableInput('stopped', `the run was stopped before the stage "${stage}"; start it again`);
     }
-    this.options.onProgress?.(stage, this.done / TOTAL);
+    this.options.onProgress?.(stage, this.done / this.total);
     const began = this.options.now?.();
-    const result = work();
+    const result = work((share) =>
+      this.options.onProgress?.(stage, (this.done + share * WEIGHT[stage]) / this.total),
+    );
     const ended = this.options.now?.();
     if (began !== undefined && ended !== undefined) this.timings[`${stage}Ms`] = ended - began;
     this.done += WEIGHT[stage];

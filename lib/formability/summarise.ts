@@ -37,10 +37,17 @@ function figures(report: Report): string[] {
     ['undercut', undercut.maxDepthMm > 0 ? `${fixed(undercut.maxDepthMm, 2)} mm deep, ${fixed(undercut.undercutVolumeMm3 / 1000, 2)} cm³` : 'none'], // prettier-ignore
     ['draw', `${fixed(plan.arealDrawRatio, 2)} areal, ${fixed(plan.linearDrawRatioX, 2)} × ${fixed(plan.linearDrawRatioY, 2)} linear, ${fixed(plan.depthRatio, 2)} depth`], // prettier-ignore
     ['pockets', `${airTraps.length}, of which ${trapped} trap air; ${vents.length} ${vents.length === 1 ? 'vent' : 'vents'}`], // prettier-ignore
+    ...sheetFigures(report),
     ['layers', `cusp up to ${fixed(layers.cuspMaxMm, 3)} mm, median ${fixed(layers.cuspMedianMm, 3)} mm`],
     ['print', `${fixed(print.timeS / 3600, 1)} h, ${fixed(print.massG, 0)} g, ${print.layers} layers`],
   ];
   return rows.map(([key, value]) => `  ${key.padEnd(12)} ${value}`);
+}
+
+function sheetFigures({ sheet }: Report): [string, string][] {
+  if (!sheet) return [];
+  const { minMm, q05Mm, meanMm, marginPercent } = sheet;
+  return [['sheet', `${fixed(minMm, 2)} mm at its thinnest, a twentieth below ${fixed(q05Mm, 2)} mm, ${fixed(meanMm, 2)} mm on average, ± ${marginPercent} %`]]; // prettier-ignore
 }
 
 function checkLines(check: Check): string[] {

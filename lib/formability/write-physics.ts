@@ -5,15 +5,17 @@ import { estimateSkin } from './measures/estimate-skin';
 import { estimateVentMarks } from './measures/estimate-vent-marks';
 import type { EffectiveRecipe } from './recipe';
 import type { Point, Report } from './report';
+import type { SheetJudgement } from './sheet/judge-sheet';
 import type { Part } from './survey-part';
 
-type Physics = Pick<Report, 'air' | 'ventMarks' | 'heat' | 'skin' | 'wallsUnderPressure'>;
+type Physics = Pick<Report, 'sheet' | 'air' | 'ventMarks' | 'heat' | 'skin' | 'wallsUnderPressure'>;
 
 /** Sections of the forming itself: air, vent marks, heat, skin, walls. Estimates, to be proven by a test pull. */
 export function writePhysics(
   part: Part,
   recipe: EffectiveRecipe,
   geometric: Pick<Report, 'walls' | 'plan'>,
+  sheet: SheetJudgement | null,
 ): Physics {
   const { traps, holes, columns, prepared, size } = part;
   const heat = estimateHeat(recipe);
@@ -24,11 +26,17 @@ export function writePhysics(
     { traps, vents: holes.vents, surface: holes.surface, grid: columns.grid },
     recipe.limits.airClearS,
   );
-  // Without a run of the sheet the formed thickness is taken to be its mean.
   const meanMm = recipe.sheet.gaugeMm / geometric.plan.arealDrawRatio;
+  const formed = sheet?.formed;
+  // Over a vent as the sheet was formed; without that, its mean.
+  const over = ([x, y, z]: Point) => {
+    const there = formed ? formed.thicknessAt(x, y, z) : NaN;
+    return there > 0 ? there : meanMm;
+  };
   return {
+    sheet: formed?.report ?? null,
     air: flows.map((flow) => ({ ...flow, ventPlaces: flow.ventPlaces.map(here) })),
-    ventMarks: estimateVentMarks(recipe, holes.vents, () => meanMm),
+    ventMarks: estimateVentMarks(recipe, holes.vents, (vent) => over(here(vent.at))),
     heat,
     skin: estimateSkin(recipe, heat),
     wallsUnderPressure: estimateHold(recipe, heat, geometric.walls, size),

@@ -104,3 +104,6 @@ export const checkName = (checkId: string): string => words[checkId]?.name ?? ch
 
 /** What the figures of a check are computed from, as a sentence; null for one that this list does not know. */
 export const checkComputed = (checkId: string): string | null => words[checkId]?.computed ?? null;
+
+/** Checks that a posted revision's run leaves out: forming the sheet waits for recipes to be tuned to it. */
+export const LEFT_OUT_CHECKS: readonly string[] = ['sheet'];

@@ -1,6 +1,7 @@
 import type { WallJudgement } from '../measures/judge-walls';
 import type { EffectiveRecipe } from '../recipe';
 import type { Place, Report } from '../report';
+import type { SheetJudgement } from '../sheet/judge-sheet';
 
 /** What a check may look at: the report's sections, and a few judgements that only checks need. */
 export interface CheckInput {
@@ -11,6 +12,8 @@ export interface CheckInput {
   wantedDraftDeg: number;
   /** Faces steeper from vertical than the printer bridges, cavities included. */
   overhangs: { areaMm2: number; worstDeg: number; places: Place[] };
+  /** Null where the sheet was not asked for. */
+  sheet: SheetJudgement | null;
   geometryOnly: boolean;
   sizeMm: [number, number, number];
 }

@@ -2,8 +2,8 @@ import type { EffectiveRecipe } from '../recipe';
 import type { Basis, Check, CheckStatus } from '../report';
 import type { FormedSheet } from '../sheet/form-sheet';
 import type { GaugeRemedy, ThinRemedy } from '../sheet/gauge-for';
-import type { SheetJudgement } from '../sheet/judge-sheet';
 import { say, sayPlace } from './basis';
+import type { CheckInput } from './check-input';
 
 const BASIS: Basis = {
   source:
@@ -30,8 +30,7 @@ const LOCALLY: Record<ThinRemedy, string> = {
 };
 
 /** Is the formed part thick enough everywhere, with the honest margin of the model? Null where nothing was formed. */
-export function checkSheet(input: { recipe: EffectiveRecipe; sheet: SheetJudgement | null }): Check | null {
-  const { recipe, sheet } = input;
+export function checkSheet({ recipe, sheet }: Pick<CheckInput, 'recipe' | 'sheet'>): Check | null {
   if (!sheet) return null;
   const limit = recipe.sheet.minFormedMm;
   const { formed } = sheet;
@@ -56,7 +55,8 @@ export function checkSheet(input: { recipe: EffectiveRecipe; sheet: SheetJudgeme
 
 function statusOf({ outcome, report }: FormedSheet, limit: number, neededMm: number): CheckStatus {
   if (outcome === 'volume-lost') return 'caution';
-  if (report.minMm < limit) return 'fail';
+  // Too thin whatever the model's margin, or over more than a corner.
+  if (report.minMm * (1 + report.marginPercent / 100) < limit || report.q05Mm < limit) return 'fail';
   const sure = outcome === 'converged' && report.meshErrorPercent <= COARSE_PERCENT;
   return sure && report.minMm >= neededMm ? 'pass' : 'caution';
 }

@@ -1,28 +1,28 @@
 import type { Check, CheckId } from '../report';
 
-/** Checks whose physics this version does not compute, and what each would need. */
-const MISSING: Partial<Record<CheckId, { unit: string; needs: string }>> = {
-  sheet: { unit: 'mm', needs: 'the thickness of the formed sheet' },
-  air: { unit: 's', needs: 'the time in which the air leaves each pocket' },
-  skin: { unit: 'mm', needs: 'the sag of the top between infill lines' },
-  walls: { unit: 'mm', needs: 'the give of hollow walls under pressure' },
-  heat: { unit: '°C', needs: 'the temperature of the template over the pulls' },
+/** Checks that a caller may leave out, and what each finds. */
+const LEFT_OUT: Partial<Record<CheckId, { unit: string; finds: string }>> = {
+  sheet: { unit: 'mm', finds: 'the thickness of the formed sheet' },
+  air: { unit: 's', finds: 'the time in which the air leaves each pocket' },
+  skin: { unit: 'mm', finds: 'the sag of the top between infill lines' },
+  walls: { unit: 'mm', finds: 'the give of hollow walls under pressure' },
+  heat: { unit: '°C', finds: 'the temperature of the template over the pulls' },
 };
 
-/** A check that is honest about not having been made; undefined for those that are. */
+/** A check that is honest about not having been made; undefined for those that always are. */
 export function notRun(id: CheckId, geometryOnly: boolean): Check | undefined {
-  const missing = MISSING[id];
-  if (!missing) return undefined;
+  const left = LEFT_OUT[id];
+  if (!left) return undefined;
   return {
     id,
     status: 'not-run',
     measured: null,
     limit: null,
-    unit: missing.unit,
+    unit: left.unit,
     basis: { source: 'none: nothing was judged', kind: 'computed' },
     message: geometryOnly
-      ? `Left out: only geometry was asked for, not ${missing.needs}.`
-      : `Not computed by this engine version: it does not yet find ${missing.needs}. Prove it with a test pull.`,
+      ? `Left out: only geometry was asked for, not ${left.finds}.`
+      : `Left out: ${left.finds} was not asked for. Prove it with a test pull.`,
     remedy: '',
     places: [],
   };

@@ -19,13 +19,15 @@ export function candidateChanges(
   recipe: EffectiveRecipe,
   report: Known,
   status: ReadonlyMap<CheckId, CheckStatus>,
+  /** Gauge that a run of the sheet found to do. */
+  provenGaugeMm?: number | null,
 ): Candidate[] {
   const bad = (id: CheckId) => status.get(id) === 'fail' || status.get(id) === 'caution';
   return [
     ...(bad('heat') ? forHeat(recipe, report) : []),
     ...(bad('skin') || bad('shell') || bad('walls') ? forStiffness(recipe, report) : []),
     ...(bad('draft') || bad('layers') ? forLayers(recipe, report) : []),
-    ...(bad('draw') || bad('vents') || bad('sheet') ? forGauge(recipe, report) : []),
+    ...(bad('draw') || bad('vents') || bad('sheet') ? forGauge(recipe, report, provenGaugeMm ?? null) : []),
     ...(bad('nozzle') ? forNozzle(recipe) : []),
     ...(bad('release') && recipe.print.releaseAgent === 'none'
       ? [
@@ -109,9 +111,9 @@ function forLayers(recipe: EffectiveRecipe, { layers }: Known): Candidate[] {
   return found;
 }
 
-function forGauge({ sheet }: EffectiveRecipe, { plan }: Known): Candidate[] {
+function forGauge({ sheet }: EffectiveRecipe, { plan }: Known, provenMm: number | null): Candidate[] {
   const gaugeMm = Math.ceil(sheet.minFormedMm * plan.arealDrawRatio * 20 - 1e-9) / 20;
-  return [gaugeMm, 1.25 * sheet.gaugeMm, 1.5 * sheet.gaugeMm]
+  return [provenMm ?? gaugeMm, gaugeMm, 1.25 * sheet.gaugeMm, 1.5 * sheet.gaugeMm]
     .map((wanted) => Math.round(wanted * 20) / 20)
     .filter((wanted, k, all) => wanted > sheet.gaugeMm && all.indexOf(wanted) === k)
     .map((wanted) => ({

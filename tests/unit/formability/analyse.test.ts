@@ -222,7 +222,7 @@ describe('running', () => {
   it('tells its stages, rising to 1', () => {
     const seen: [string, number][] = [];
     analyse(bytes, {}, { onProgress: (stage, fraction) => seen.push([stage, fraction]) });
-    expect(seen.map(([stage]) => stage)).toEqual(['parse', 'mesh', 'columns', 'vents', 'air', 'undercut', 'sort', 'pits', 'facets', 'walls', 'draft', 'sections', 'checks', 'geometry', 'done']); // prettier-ignore
+    expect(seen.map(([stage]) => stage)).toEqual(['parse', 'mesh', 'columns', 'vents', 'air', 'undercut', 'sort', 'pits', 'facets', 'walls', 'draft', 'sections', 'physics', 'checks', 'advice', 'geometry', 'done']); // prettier-ignore
     seen.forEach(([, fraction], i) => expect(fraction).toBeGreaterThanOrEqual(i === 0 ? 0 : seen[i - 1][1]));
     expect(seen.at(-1)?.[1]).toBe(1);
   });
