@@ -2,9 +2,7 @@ import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { personContext, type WorkspaceContext } from '@/lib/auth/context';
 import { fillRecipe } from '@/lib/formability/fill-recipe';
 import { cancelUpload } from '@/lib/review/cancel-upload';
-import { changeTemplate } from '@/lib/review/change-template';
 import { completeUpload } from '@/lib/review/complete-upload';
-import { createTemplate } from '@/lib/review/create-template';
 import { discardDraft } from '@/lib/review/discard-draft';
 import { markPartDone } from '@/lib/review/mark-part-done';
 import { openDraft } from '@/lib/review/open-draft';
@@ -14,11 +12,9 @@ import { readUploadAgain } from '@/lib/review/read-upload-again';
 import { acceptUpload, refuseUpload } from '@/lib/review/record-upload';
 import { saveDraft } from '@/lib/review/save-draft';
 import { startUpload } from '@/lib/review/start-upload';
-import { viewTemplate } from '@/lib/review/view-template';
 import { viewToday } from '@/lib/review/view-today';
 import { viewUpload } from '@/lib/review/view-upload';
 import { store } from '@/lib/storage/store';
-import { dayIn } from '@/lib/time/day-in';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import { blockStl, entries, fingerprint, newTemplate, sendMesh, takeJob } from '@/tests/support/factory';
 import { makeHouse, type House } from '@/tests/support/make-house';
@@ -41,53 +37,6 @@ async function refused(run: () => Promise<unknown>, expected: Record<string, unk
   await expect(run()).rejects.toMatchObject(expected);
   expect(await fingerprint(database, house.workspace.id)).toBe(before);
 }
-
-describe('templates', () => {
-  it('carry the workspace’s code and the next serial, and are on the chain', async () => {
-    const made = await createTemplate(lead, { title: '  Lid for cups ', dueOn: '2027-03-01' });
-    expect(made).toMatchObject({
-      number: `${house.workspace.code}-001`,
-      title: 'Lid for cups',
-      dueOn: '2027-03-01',
-      standing: 'draft',
-      latestLetter: null,
-      verdict: null,
-      openMustSettle: 0,
-      version: 1,
-    });
-    const [entry] = await entries(database, house.workspace.id, 1);
-    expect(entry).toMatchObject({ action: 'template.created', subject_id: made.id });
-    expect((await createTemplate(lead, { title: 'Next' })).number).toBe(`${house.workspace.code}-002`);
-  });
-
-  it.each([
-    [{ title: '' }, '/title'],
-    [{ title: 'T'.repeat(81) }, '/title'],
-    [{ title: 'x', dueOn: '2026-01-31' }, '/dueOn'],
-    [{ title: 'x', dueOn: '2027-02-30' }, '/dueOn'],
-    [{ title: 7 }, '/title'],
-  ])('refuse %j', async (input, pointer) => {
-    await refused(() => createTemplate(lead, input), { code: 'invalid', errors: [{ pointer }] });
-  });
-
-  it('keep a long title whole and take a day that has only begun', async () => {
-    const title = 'Blister tray for twelve ampoules, left-hand cavity, with snap rim and label step';
-    expect(title).toHaveLength(80);
-    const today = dayIn(lead.person.timeZone);
-    expect(await createTemplate(lead, { title, dueOn: today })).toMatchObject({ title, dueOn: today });
-  });
-
-  it('change at the version that was seen, else not at all', async () => {
-    const { id, version } = await createTemplate(lead, { title: 'Before' });
-    const changed = await changeTemplate(designer, id, { title: 'After', dueOn: '2027-05-05', version });
-    expect(changed).toMatchObject({ title: 'After', dueOn: '2027-05-05', version: version + 1 });
-    await refused(() => changeTemplate(lead, id, { title: 'Other', version }), {
-      code: 'precondition_failed',
-      reason: 'changed-meanwhile',
-    });
-    expect((await viewTemplate(lead, id)).title).toBe('After');
-  });
-});
 
 describe('drafts', () => {
   it('begin with the studio’s library and its defaults', async () => {
