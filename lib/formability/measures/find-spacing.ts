@@ -23,6 +23,8 @@ const CUT_MM = 0.01;
 const REACH_CELLS = 6;
 const REACH_MM = 1.5;
 const REACH_HEIGHTS = 1.5;
+/** Nearer than this, mm, walls touch. */
+const TOUCH_MM = 1e-3;
 /** The foot of a wall over a rounded floor is found to this, mm. */
 const FOOT_MM = 0.02;
 /** Two bodies are parted by a valley where they meet within this below its floor, mm. */
@@ -61,7 +63,8 @@ export function findSpacing(mesh: Mesh, facets: FacetGrid, surface: Float64Array
       if (!foot && cut(floor + CUT_MM, pair.from, pair.to, near, 'any')) continue;
       const gapAtBedMm = foot ? foot.gap : pair.gap;
       const height = top - (foot ? foot.z : floor);
-      if (height < LEAST_HEIGHT_MM) continue;
+      // Walls that meet are one body, whatever the cells say.
+      if (height < LEAST_HEIGHT_MM || gapAtBedMm < TOUCH_MM) continue;
       const upper = nearestAt(surface, grid, a, b, top);
       const atTop = cut(top - CUT_MM, upper.cells[0], upper.cells[1]);
       const point = (at: [number, number] | undefined, c: number): Point =>

@@ -50,18 +50,24 @@ export function measureMacroDraft(mesh: Mesh, facets: Facets, skip: Uint8Array, 
 }
 
 function windowDraft(sums: CellSums, c: number): number {
-  let [x, y, z] = [0, 0, 0];
+  let level = 0;
+  let z = 0;
+  const rough: number[] = [];
   for (let n = 0; n < 27; n++) {
     const i = sums.i[c] - 1 + (n % 3);
     const j = sums.j[c] - 1 + (Math.floor(n / 3) % 3);
     const near = sums.table.get(i, j, sums.k[c] - 1 + Math.floor(n / 9));
     // Opposite walls of a rib share a window; only what faces the same way in plan, or straight up, belongs.
     if (near < 0 || sums.x[near] * sums.x[c] + sums.y[near] * sums.y[c] < 0) continue;
-    x += sums.x[near];
-    y += sums.y[near];
+    level += sums.level[near];
     z += sums.z[near];
+    const across = Math.hypot(sums.x[near], sums.y[near]);
+    if (across > 0) rough.push(sums.level[near] / across);
   }
-  return Math.atan2(z, Math.hypot(x, y)) * DEG;
+  // By length, where two walls meet in a corner each keeps its own draft; what noise adds to the length is taken out
+  // again by how rough the calmer quarter of the cells is.
+  rough.sort((p, q) => p - q);
+  return Math.atan2(z, level / (rough[rough.length >> 2] ?? 1)) * DEG;
 }
 
 /** Patches at the bed for which no whole patch above speaks: walls lower than a window, and feet of another slope. */

@@ -16,6 +16,8 @@ export interface CellSums {
   x: Float64Array;
   y: Float64Array;
   z: Float64Array;
+  /** Lengths, not vectors, of the level parts: more than the vectors' where directions differ (noise, corners). */
+  level: Float64Array;
 }
 
 /**
@@ -104,6 +106,7 @@ class Sums implements CellSums {
   x = new Float64Array(4096);
   y = new Float64Array(4096);
   z = new Float64Array(4096);
+  level = new Float64Array(4096);
   /** The cells met last, one for even and one for odd levels: neighbours in the list are neighbours in space. */
   private even = 0;
   private odd = 0;
@@ -147,6 +150,7 @@ class Sums implements CellSums {
     this.x[c] += x * share;
     this.y[c] += y * share;
     this.z[c] += z * share;
+    this.level[c] += Math.sqrt(x * x + y * y) * share;
   }
 
   private begin(i: number, j: number, k: number): void {
@@ -157,7 +161,7 @@ class Sums implements CellSums {
         to.set(from);
         return to;
       });
-      [this.x, this.y, this.z] = [this.x, this.y, this.z].map((from) => {
+      [this.x, this.y, this.z, this.level] = [this.x, this.y, this.z, this.level].map((from) => {
         const to = new Float64Array(wider);
         to.set(from);
         return to;

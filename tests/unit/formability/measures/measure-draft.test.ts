@@ -76,6 +76,11 @@ describe('draft of facets: asin(n_z), geometry', () => {
 });
 
 describe('wallMinMacroDeg: the wall behind steps and noise', () => {
+  it.each([2, 5, 10, 15])('walls that all lean out by %i° keep that in their corners too', (deg) => {
+    const { draft: found } = reportOn(frustum(80, 60, 30, -deg), { grid: { cellMm: 0.5 } });
+    expect(Math.abs((found.wallMinMacroDeg ?? 0) + deg)).toBeLessThan(0.02);
+  });
+
   it.each([
     [2, 0.4],
     [3, 0.1],

@@ -22,6 +22,15 @@ describe('spacing: height of the lower neighbour over the gap at the bed', () =>
     expect(checkOf(report, 'spacing').status).toBe('pass');
   });
 
+  it('a V groove is judged by its opening: its sides meet at the bottom', () => {
+    const groove = (half: number): [number, number][] => [[-60, 0], [60, 0], [60, 26], [half, 26], [0, 6], [-half, 26], [-60, 26]]; // prettier-ignore
+    const at = (half: number) => reportOn(extrude(groove(half), 80), { grid: { cellMm: 0.4 } });
+    expect(at(15).spacing[0].gapMm).toBeCloseTo(30, 0);
+    expect(checkOf(at(15), 'spacing')).toMatchObject({ status: 'pass' });
+    expect(checkOf(at(15), 'spacing').measured).toBeCloseTo(20 / 30, 1);
+    expect(checkOf(at(8), 'spacing').status).toBe('caution');
+  });
+
   it('a hollow gentler than 45° all over is no gap', () => {
     const profile: [number, number][] = [[-60, 0], [60, 0], [60, 26], [30, 26], [0, 8], [-30, 26], [-60, 26]]; // prettier-ignore
     expect(reportOn(extrude(profile, 80), { grid: { cellMm: 0.4 } }).spacing).toEqual([]);
