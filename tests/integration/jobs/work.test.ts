@@ -151,7 +151,8 @@ describe('two workers side by side', { timeout: 240_000 }, () => {
     for (const { revisionId } of posted)
       expect(await settledJob(database, revisionId)).toMatchObject({ state: 'done', attempt: 1 });
     const { rows } = await database.query<{ n: number }>(
-      "select count(*)::int as n from audit_entries where action = 'check.finished' group by subject_id",
+      "select count(*)::int as n from audit_entries where action = 'check.finished' and subject_id = any($1) group by subject_id",
+      [posted.map(({ revisionId }) => revisionId)],
     );
     expect(rows).toEqual(posted.map(() => ({ n: 1 })));
     const { rows: workers } = await database.query(

@@ -171,6 +171,9 @@ export const routes: Record<string, Route> = {
     POST: { may: ['designer'], names: upload, body: { number: 1, etag: 'x' } },
   }),
   'workspaces/[workspace]/uploads/[upload]/complete': w({ POST: { may: ['designer'], names: upload } }),
+  'workspaces/[workspace]/uploads/[upload]/unit': w({
+    POST: { may: ['designer', 'lead'], names: upload, body: { unit: 'mm' } },
+  }),
   'workspaces/[workspace]/uploads/[upload]/cancel': w({ POST: { may: ['designer', 'lead'], names: upload } }),
 
   'workspaces/[workspace]/revisions/[revision]': read(revision),
