@@ -10,7 +10,12 @@ export default defineConfig({
     projects: [
       {
         resolve: { alias },
-        test: { name: 'unit', include: ['tests/unit/**/*.test.{ts,tsx}'], testTimeout: 60_000 },
+        test: {
+          name: 'unit',
+          include: ['tests/unit/**/*.test.{ts,tsx}'],
+          testTimeout: 120_000,
+          maxWorkers: 2,
+        },
       },
       {
         resolve: { alias },

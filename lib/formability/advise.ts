@@ -6,6 +6,7 @@ import { candidateChanges } from './measures/candidate-changes';
 import { estimatePrint, facingAreas } from './measures/estimate-print';
 import { measureLayers } from './measures/measure-layers';
 import type { EffectiveRecipe, RecipeInput } from './recipe';
+import { recipeSchema } from './recipe-schema';
 import type { Advice, Check, CheckId, CheckStatus } from './report';
 import { scaleSheet } from './sheet/scale-sheet';
 import type { Part } from './survey-part';
@@ -24,7 +25,9 @@ export function advise(part: Part, input: CheckInput, checks: Check[]): Advice[]
   if (weight === 0) return [];
   const tried = candidateChanges(input.recipe, input.report, before, input.sheet?.remedy?.gaugeMm).flatMap(
     ({ change, text }) => {
-      const changed = judgeAgain(part, input, change);
+      const recipe = withChange(input.recipe, change);
+      if (!recipe) return [];
+      const changed = judgeAgain(part, input, recipe);
       const worse = changed.checks.some(
         (check) => WEIGHT[check.status] > WEIGHT[before.get(check.id) ?? 'pass'],
       );
@@ -73,9 +76,8 @@ function total(checks: Check[]): number {
 function judgeAgain(
   part: Part,
   input: CheckInput,
-  change: RecipeInput,
+  recipe: EffectiveRecipe,
 ): { checks: Check[]; report: CheckInput['report'] } {
-  const recipe = withChange(input.recipe, change);
   const { print, limits } = recipe;
   const layered = print.layerMm !== input.recipe.print.layerMm;
   const redrawn = layered || print.sanded !== input.recipe.print.sanded;
@@ -94,7 +96,7 @@ function judgeAgain(
       recipe,
     ),
   };
-  const whole = { ...report, ...writePhysics(part, recipe, report, input.sheet) };
+  const whole = { ...report, ...writePhysics(part, recipe, report, input.sheet, input.report.air) };
   return {
     report: whole,
     checks: runChecks({
@@ -108,16 +110,17 @@ function judgeAgain(
   };
 }
 
-/** The recipe with a change; the line width follows a changed nozzle. */
-function withChange(recipe: EffectiveRecipe, change: RecipeInput): EffectiveRecipe {
+/** The recipe with a change, its line width following the nozzle; null where no recipe may say that. */
+function withChange(recipe: EffectiveRecipe, change: RecipeInput): EffectiveRecipe | null {
   const follows = change.print?.nozzleMm === undefined ? {} : { lineMm: null };
   const { grid, ...rest } = recipe;
-  const filled = fillRecipe({
+  const changed = {
     ...rest,
     print: { ...recipe.print, ...change.print, ...follows },
     sheet: { ...recipe.sheet, ...change.sheet },
     run: { ...recipe.run, ...change.run },
-  });
+  };
+  if (!recipeSchema.safeParse(changed).success) return null;
   // The grid is the one that the part was measured on, finer than a recipe may ask for where the part is tiny.
-  return { ...filled, grid };
+  return { ...fillRecipe(changed), grid };
 }

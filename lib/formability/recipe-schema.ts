@@ -96,7 +96,7 @@ export const recipeSchema = z.strictObject({
     .nullish(),
   run: z
     .strictObject({
-      pulls: whole(1, 1_000_000).nullish(),
+      pulls: whole(1, 10_000).nullish(),
       cycleS: size(1, 86_400, 's'),
       ambientC: size(-40, 100, '°C'),
     })

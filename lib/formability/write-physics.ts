@@ -10,22 +10,27 @@ import type { Part } from './survey-part';
 
 type Physics = Pick<Report, 'sheet' | 'air' | 'ventMarks' | 'heat' | 'skin' | 'wallsUnderPressure'>;
 
-/** Sections of the forming itself: air, vent marks, heat, skin, walls. Estimates, to be proven by a test pull. */
+/**
+ * Sections of the forming itself: air, vent marks, heat, skin, walls. Estimates, to be proven by a test pull.
+ * @param knownAir reckoned before, where the recipe's change does not touch it
+ */
 export function writePhysics(
   part: Part,
   recipe: EffectiveRecipe,
   geometric: Pick<Report, 'walls' | 'plan'>,
   sheet: SheetJudgement | null,
+  knownAir?: Report['air'],
 ): Physics {
   const { traps, holes, columns, prepared, size } = part;
   const heat = estimateHeat(recipe);
   const { centre } = prepared.mesh;
   const here = (at: Point): Point => [at[0] + centre[0], at[1] + centre[1], at[2]];
-  const flows = estimateAir(
-    recipe,
-    { traps, vents: holes.vents, surface: holes.surface, grid: columns.grid },
-    recipe.limits.airClearS,
-  );
+  const flow = () =>
+    estimateAir(
+      recipe,
+      { traps, vents: holes.vents, surface: holes.surface, grid: columns.grid },
+      recipe.limits.airClearS,
+    ).map((one) => ({ ...one, ventPlaces: one.ventPlaces.map(here) }));
   const meanMm = recipe.sheet.gaugeMm / geometric.plan.arealDrawRatio;
   const formed = sheet?.formed;
   // Over a vent as the sheet was formed; without that, its mean.
@@ -35,7 +40,7 @@ export function writePhysics(
   };
   return {
     sheet: formed?.report ?? null,
-    air: flows.map((flow) => ({ ...flow, ventPlaces: flow.ventPlaces.map(here) })),
+    air: knownAir ?? flow(),
     ventMarks: estimateVentMarks(recipe, holes.vents, (vent) => over(here(vent.at))),
     heat,
     skin: estimateSkin(recipe, heat),

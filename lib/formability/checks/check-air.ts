@@ -3,6 +3,9 @@ import type { AirFlow, Check } from '../report';
 import { basisOf, drawnFor, say, sayPlace } from './basis';
 import type { CheckInput } from './check-input';
 
+/** Vents lead nowhere on a bed that lets no air out. */
+const CLOSED_BED =
+  'Form on a vented bed, or on a spacer that lets the air out below: this one is closed. Then: ';
 /** Places told in a sentence; the rest are in the report. */
 const SAID_PLACES = 4;
 
@@ -24,7 +27,8 @@ export function checkAir({ recipe, report, geometryOnly }: CheckInput): Check | 
     unit: 's',
     basis: basisOf('airClearS', recipe),
     message: `${message(air, shut.length, slow.length, slowest, limit)}${air.length > 0 ? ` Reckoned at ${say(over, 1)} bar over the air below, discharge ${DISCHARGE}, at constant temperature.` : ''}`,
-    remedy: bad.length > 0 ? remedy(bad, drawnFor(recipe)) : '',
+    remedy:
+      bad.length > 0 ? `${recipe.machine.ventedBed ? '' : CLOSED_BED}${remedy(bad, drawnFor(recipe))}` : '',
     places: bad.map((flow) => ({
       at: airTraps[flow.trap].floor,
       areaMm2: airTraps[flow.trap].planAreaMm2,

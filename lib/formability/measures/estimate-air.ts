@@ -8,6 +8,8 @@ import { placeVents } from './place-vents';
 export const DISCHARGE = 0.6;
 /** Trapped air stands this far above the air that it leaves to, Pa: 1 bar, or the machine's pressure where that is less. */
 const OVER_PA = 100_000;
+/** A bore narrower than this is no vent, whatever the hole model says, mm. */
+const SMALLEST_MM = 0.1;
 /** No list of places is longer. */
 const MOST_PLACES = 24;
 
@@ -58,17 +60,15 @@ function flowOf(
   const kgS = flows.reduce((sum, [, flow]) => sum + flow.kgS, 0);
   const takes = kgS > 0 ? expelTimeS(trap.volumeMm3, kgS, at) : null;
   // What a further vent of the smallest open size would carry, as long as the floor stands above the bed.
-  const smallest = recipe.print.holeModel.minOpenMm;
+  const smallest = Math.max(recipe.print.holeModel.minOpenMm, SMALLEST_MM);
   const one = boreFlow(
     { diameterMm: smallest, lengthMm: Math.max(trap.floor[2], recipe.print.layerMm) },
     DISCHARGE,
     at,
   );
-  const lacking = expelTimeS(trap.volumeMm3, 1, at) / clearS - kgS;
-  const ventsNeeded =
-    takes === null
-      ? Math.max(1, Math.ceil(lacking / one.kgS))
-      : Math.max(0, Math.ceil(lacking / one.kgS - 1e-9));
+  // Vents that are wanting; without pressure nothing drives the air, and one says where it stands.
+  const lacking = one.kgS > 0 ? (expelTimeS(trap.volumeMm3, 1, at) / clearS - kgS) / one.kgS : 0;
+  const ventsNeeded = Math.max(takes === null ? 1 : 0, Math.ceil(lacking - 1e-9));
   const widest = flows.reduce<Flow | null>(
     (most, [, flow]) => (most && most.kgS >= flow.kgS ? most : flow),
     null,

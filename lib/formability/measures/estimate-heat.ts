@@ -54,7 +54,9 @@ export function estimateHeat(recipe: EffectiveRecipe): HeatReport {
     const rise = model === 'lumped' ? lumpedRiseK(at, pull) : halfSpaceRiseK(at, pull);
     return Math.min(sheet.formingC, Math.max(contact, run.ambientC + rise));
   };
-  const peakC = Array.from({ length: run.pulls }, (_, n) => peakAfter(cycling, n + 1));
+  const peakC = peaks(cycling, run.pulls, model, (rise) =>
+    Math.min(sheet.formingC, Math.max(contact, run.ambientC + rise)),
+  );
   const tooHot = peakC.findIndex((peak) => peak > limitC);
   return {
     contactC: contact,
@@ -64,6 +66,21 @@ export function estimateHeat(recipe: EffectiveRecipe): HeatReport {
     cycleThatHoldsS: cycleThatHolds(cycling, (at) => peakAfter(at, run.pulls) <= limitC),
     model,
   };
+}
+
+/** After pull 1…N; the half-space's sum is carried on from pull to pull. */
+function peaks(
+  cycling: Cycling,
+  pulls: number,
+  model: HeatReport['model'],
+  surface: (riseK: number) => number,
+): number[] {
+  const first = halfSpaceRiseK(cycling, 1);
+  let sum = 0;
+  return Array.from({ length: pulls }, (_, n) => {
+    sum += 1 / Math.sqrt(n + 1);
+    return surface(model === 'lumped' ? lumpedRiseK(cycling, n + 1) : first * sum);
+  });
 }
 
 /** Shortest cycle from the planned one up at which all pulls hold, in whole seconds; null where none does. */

@@ -45,38 +45,62 @@ export function placeVents(
   return chosen.map(point);
 }
 
-function floorCells(surface: Float64Array, grid: Grid, first: number, rim: number): number[] {
+function floorCells(surface: Float64Array, grid: Grid, first: number, rim: number): Int32Array {
   const { nx, ny } = grid;
   const high = Math.min(surface[first] + FLOOR_MM, rim);
-  const seen = new Set([first]);
-  const cells = [first];
-  for (let at = 0; at < cells.length; at++) {
+  const seen = new Uint8Array(nx * ny);
+  const cells = new Int32Array(nx * ny);
+  let end = 1;
+  cells[0] = first;
+  seen[first] = 1;
+  const visit = (n: number) => {
+    if (seen[n] || surface[n] > high) return;
+    seen[n] = 1;
+    cells[end++] = n;
+  };
+  for (let at = 0; at < end; at++) {
     const c = cells[at];
     const i = c % nx;
-    for (const n of [i > 0 ? c - 1 : -1, i + 1 < nx ? c + 1 : -1, c - nx, c + nx]) {
-      if (n < 0 || n >= nx * ny || seen.has(n) || surface[n] > high) continue;
-      seen.add(n);
-      cells.push(n);
-    }
+    if (i > 0) visit(c - 1);
+    if (i + 1 < nx) visit(c + 1);
+    if (c >= nx) visit(c - nx);
+    if (c < nx * (ny - 1)) visit(c + nx);
   }
-  return cells;
+  return cells.subarray(0, end);
 }
 
-/** Cells whose square neighbourhood of `reach` lies in the floor; the innermost there are where the floor is narrow. */
-function insetCells(cells: number[], grid: Grid, reach: number): number[] {
-  let inside = new Set(cells);
-  for (let step = 0; step < reach; step++) {
-    const smaller = new Set<number>();
-    for (const c of inside) {
-      let whole = true;
-      for (let dy = -1; dy <= 1 && whole; dy++)
-        for (let dx = -1; dx <= 1 && whole; dx++) whole = inside.has(c + dy * grid.nx + dx);
-      if (whole) smaller.add(c);
-    }
-    if (smaller.size === 0) break;
-    inside = smaller;
+/** Cells at least `reach` cells inside the floor's rim; the innermost there are where the floor is narrow. */
+function insetCells(cells: Int32Array, grid: Grid, reach: number): Int32Array {
+  const { nx, ny } = grid;
+  // 0 outside the floor, else one more than the steps (8 neighbours) to its rim.
+  const depth = new Int32Array(nx * ny);
+  for (const c of cells) depth[c] = -1;
+  const eachBeside = (c: number, visit: (n: number) => void) => {
+    const i = c % nx;
+    for (let dy = c >= nx ? -nx : 0; dy <= (c < nx * (ny - 1) ? nx : 0); dy += nx)
+      for (let dx = i > 0 ? -1 : 0; dx <= (i + 1 < nx ? 1 : 0); dx++) visit(c + dy + dx);
+  };
+  const queue = new Int32Array(cells.length);
+  let end = 0;
+  for (const c of cells) {
+    let rim = false;
+    eachBeside(c, (n) => {
+      if (depth[n] === 0) rim = true;
+    });
+    if (rim) queue[end++] = c;
   }
-  return [...inside].sort((a, b) => a - b);
+  for (let k = 0; k < end; k++) depth[queue[k]] = 1;
+  for (let at = 0; at < end; at++) {
+    const c = queue[at];
+    eachBeside(c, (n) => {
+      if (depth[n] >= 0) return;
+      depth[n] = depth[c] + 1;
+      queue[end++] = n;
+    });
+  }
+  const deepest = end > 0 ? depth[queue[end - 1]] : 1;
+  const wanted = Math.min(reach + 1, deepest);
+  return cells.filter((c) => depth[c] >= wanted).sort();
 }
 
 function squared({ nx }: Grid, a: number, b: number): number {
@@ -85,7 +109,7 @@ function squared({ nx }: Grid, a: number, b: number): number {
   return dx * dx + dy * dy;
 }
 
-function farthestFrom(cells: number[], grid: Grid, from: number): number {
+function farthestFrom(cells: Int32Array, grid: Grid, from: number): number {
   let farthest = -1;
   let most = -1;
   cells.forEach((c, k) => {

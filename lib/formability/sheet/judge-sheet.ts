@@ -15,6 +15,9 @@ export interface SheetJudgement {
   remedy: GaugeRemedy | null;
 }
 
+/** What the run takes; a recipe may ask for more or less. */
+const [LEAST_NODES, MOST_NODES] = [16, 512];
+const LEAST_WANTED_MM = 1e-3;
 /** Shares of the work: the sheet itself, then the run that verifies a thicker gauge. */
 const FORM_SHARE = 0.5;
 
@@ -39,7 +42,7 @@ export function judgeSheet(
   const input = sheetInput(part, recipe, frameMm);
   const stage = (from: number, to: number): SheetOptions => ({
     ...options,
-    nodes: recipe.grid.sheetNodes,
+    nodes: Math.min(MOST_NODES, Math.max(LEAST_NODES, recipe.grid.sheetNodes)),
     onProgress: (share) => options.onProgress?.(from + share * (to - from)),
   });
   const formed = formSheet(input, stage(0, FORM_SHARE));
@@ -70,6 +73,7 @@ function sheetInput(
     frameMm,
     centreMm: centre,
     gaugeMm: sheet.gaugeMm,
-    minFormedMm: sheet.minFormedMm,
+    // 0 asks for nothing.
+    minFormedMm: Math.max(sheet.minFormedMm, LEAST_WANTED_MM),
   };
 }
