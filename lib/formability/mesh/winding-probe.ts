@@ -1,13 +1,15 @@
 /** Buckets along a side of the plan, per square root of the facets. */
 const BUCKETS = 0.7;
+/** Buckets that would hold more entries than this are made wider: facets that all reach far fill every bucket. */
+const MOST_ENTRIES = 2 ** 23;
 
 /** Winding numbers at points, by signed crossings of a vertical ray with the facets of the bucket it runs through. */
 export class WindingProbe {
   private readonly start: Uint32Array;
   private readonly facets: Uint32Array;
-  private readonly side: number;
+  private side: number;
   private readonly low: [number, number] = [Infinity, Infinity];
-  private readonly scale: [number, number];
+  private scale: [number, number];
 
   constructor(
     private readonly index: Uint32Array,
@@ -22,7 +24,12 @@ export class WindingProbe {
       }
     }
     this.side = Math.max(1, Math.min(512, Math.floor(BUCKETS * Math.sqrt(triangles))));
-    this.scale = [0, 1].map((k) => this.side / Math.max(high[k] - this.low[k], 1e-300)) as [number, number];
+    const scaleOf = (k: number) => this.side / Math.max(high[k] - this.low[k], 1e-300);
+    this.scale = [scaleOf(0), scaleOf(1)];
+    while (this.side > 1 && this.countEntries() > MOST_ENTRIES) {
+      this.side >>= 1;
+      this.scale = [scaleOf(0), scaleOf(1)];
+    }
     this.start = new Uint32Array(this.side * this.side + 1);
     this.eachBucket((bucket) => this.start[bucket + 1]++);
     for (let b = 1; b < this.start.length; b++) this.start[b] += this.start[b - 1];
@@ -75,7 +82,24 @@ export class WindingProbe {
     return Math.min(this.side - 1, Math.max(0, Math.floor((value - this.low[axis]) * this.scale[axis])));
   }
 
+  /** Entries of all buckets together, as a double: they may be more than 2³². */
+  private countEntries(): number {
+    let entries = 0;
+    this.eachExtent((_, fromX, toX, fromY, toY) => (entries += (toX - fromX + 1) * (toY - fromY + 1)));
+    return entries;
+  }
+
   private eachBucket(visit: (bucket: number, t: number) => void): void {
+    this.eachExtent((t, fromX, toX, fromY, toY) => {
+      for (let j = fromY; j <= toY; j++) {
+        for (let i = fromX; i <= toX; i++) visit(j * this.side + i, t);
+      }
+    });
+  }
+
+  private eachExtent(
+    visit: (t: number, fromX: number, toX: number, fromY: number, toY: number) => void,
+  ): void {
     const { index, p } = this;
     for (let t = 0; t < index.length / 3; t++) {
       const a = 3 * index[3 * t];
@@ -83,10 +107,9 @@ export class WindingProbe {
       const c = 3 * index[3 * t + 2];
       const fromX = this.cell(Math.min(p[a], p[b], p[c]), 0);
       const toX = this.cell(Math.max(p[a], p[b], p[c]), 0);
+      const fromY = this.cell(Math.min(p[a + 1], p[b + 1], p[c + 1]), 1);
       const toY = this.cell(Math.max(p[a + 1], p[b + 1], p[c + 1]), 1);
-      for (let j = this.cell(Math.min(p[a + 1], p[b + 1], p[c + 1]), 1); j <= toY; j++) {
-        for (let i = fromX; i <= toX; i++) visit(j * this.side + i, t);
-      }
+      visit(t, fromX, toX, fromY, toY);
     }
   }
 }
