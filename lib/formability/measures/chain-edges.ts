@@ -6,6 +6,8 @@ const MOST_LINES = 120;
 const MOST_POINTS = 64;
 /** A line goes on over a vertex where it bends by less than 50°. */
 const GOES_ON = Math.cos((50 * Math.PI) / 180);
+/** A line ends where more found edges than this come together: a tip has no straight way on, and a search for it is slow. */
+const MOST_AT_VERTEX = 16;
 /** Points that lie within this of the line through their neighbours are left out, mm. */
 const STRAIGHT_MM = 0.01;
 
@@ -45,7 +47,9 @@ export function chainEdges(mesh: Mesh, edges: Edges, found: readonly FoundEdge[]
       let own = from;
       for (let here = v; ;) {
         vertices.push(here);
-        const next = straightest(mesh, edges, found, at.get(here) ?? [], own, here, used);
+        const candidates = at.get(here) ?? [];
+        if (candidates.length > MOST_AT_VERTEX) return vertices;
+        const next = straightest(mesh, edges, found, candidates, own, here, used);
         if (next < 0) return vertices;
         used[next] = 1;
         line.lengthMm += found[next].length;
