@@ -1,8 +1,8 @@
 /** Boxes in a leaf: of 2, 4 and 8 the last was fastest on curved surfaces. */
 const LEAF = 8;
 const AXIS_CELLS = 1023;
-/** Room for the item number below the 30-bit cell key in a double. */
-const ITEM_SPAN = 2 ** 22;
+/** Room for the item number below the 30-bit cell key in a double: 53 bits in all. */
+const ITEM_SPAN = 2 ** 23;
 
 /** Boxes in Morton order under a complete binary tree; finds every pair of overlapping boxes. */
 export interface BoxTree {
@@ -15,14 +15,17 @@ export interface BoxTree {
   leaves: number;
   /** Group of each item, in tree order, and of each node, −1 where it holds several; null where all pairs count. */
   groups: { items: Int32Array; nodes: Int32Array } | null;
+  /** More items than can be told apart: the tree is empty, and a search in it is incomplete. */
+  tooMany: boolean;
 }
 
 /**
- * @param given 6 per item: minimum x, y, z, maximum x, y, z; fewer than 4 million items
+ * @param given 6 per item: minimum x, y, z, maximum x, y, z; with more than 8 million items nothing is searched
  * @param groupOf where given, pairs within one group are passed over
  */
 export function buildBoxTree(given: Float64Array, groupOf?: (item: number) => number): BoxTree {
-  const n = given.length / 6;
+  const tooMany = given.length / 6 > ITEM_SPAN;
+  const n = tooMany ? 0 : given.length / 6;
   const order = mortonOrder(given, n);
   const boxes = new Float64Array(6 * n);
   for (let i = 0; i < n; i++) for (let k = 0; k < 6; k++) boxes[6 * i + k] = given[6 * order[i] + k];
@@ -39,7 +42,14 @@ export function buildBoxTree(given: Float64Array, groupOf?: (item: number) => nu
     widen(nodes, 6 * node, nodes, 12 * node);
     widen(nodes, 6 * node, nodes, 12 * node + 6);
   }
-  return { order, boxes, nodes, leaves, groups: groupOf ? groupNodes(order, leaves, groupOf) : null };
+  return {
+    order,
+    boxes,
+    nodes,
+    leaves,
+    groups: groupOf ? groupNodes(order, leaves, groupOf) : null,
+    tooMany,
+  };
 }
 
 function groupNodes(order: Uint32Array, leaves: number, groupOf: (item: number) => number) {
@@ -60,10 +70,11 @@ function groupNodes(order: Uint32Array, leaves: number, groupOf: (item: number) 
 
 /**
  * Visits every pair of items whose boxes come within `near` of one another, each once, until `visit` returns false.
- * @returns false where it was stopped
+ * @returns false where it was stopped, or where the tree was given too many items to search
  */
 export function visitPairs(tree: BoxTree, near: number, visit: (a: number, b: number) => boolean): boolean {
   const { order, boxes, nodes, leaves, groups } = tree;
+  if (tree.tooMany) return false;
   const n = order.length;
   // Both nodes of a pair lie at one depth; each step down adds at most three waiting pairs.
   const stack = new Int32Array(2 * (4 + 3 * (Math.log2(leaves) + 1)));
