@@ -6,11 +6,15 @@ import type { Mesh } from './mesh';
 
 /** Up to this many facets every one is looked at; above it only where shells meet or columns are odd. */
 const ALL_FACETS = 60_000;
+/** Pairs of shells with near boxes that are looked at before the search gives up: a heap, not bodies side by side. */
+const MOST_SHELL_PAIRS = 2e6;
 
 export interface Candidates {
   facets: Uint32Array;
   /** Only meetings of different shells are looked for: a large file of several bodies. */
   apart: boolean;
+  /** False where there were too many pairs of shells to choose by: some facets that meet others may be missing. */
+  complete: boolean;
 }
 
 /**
@@ -27,18 +31,20 @@ export function chooseCandidates(
 ): Candidates {
   const { triangles } = mesh;
   if (triangles <= ALL_FACETS) {
-    return { facets: Uint32Array.from({ length: triangles }, (_, t) => t), apart: false };
+    return { facets: Uint32Array.from({ length: triangles }, (_, t) => t), apart: false, complete: true };
   }
   const chosen = new Uint8Array(triangles);
-  const apart = boxes !== null && boxesMeet(boxes, tolerance);
-  if (apart) markBoxes(mesh, shells, commonBoxes(boxes, shells.count, tolerance), chosen);
+  const meet = boxes !== null && boxesMeet(boxes, tolerance);
+  const common = meet ? commonBoxes(boxes, shells.count, tolerance) : null;
+  const apart = common !== null;
+  if (apart) markBoxes(mesh, shells, common, chosen);
   else markOddColumns(mesh, columns, chosen);
   if (edges.nonManifold > 0 && !apart) markCrowded(edges, chosen);
   let count = 0;
   for (let t = 0; t < triangles; t++) count += chosen[t];
   const facets = new Uint32Array(count);
   for (let t = 0, k = 0; t < triangles; t++) if (chosen[t]) facets[k++] = t;
-  return { facets, apart };
+  return { facets, apart, complete: apart || !meet };
 }
 
 function markCrowded({ forward, backward, ofCorner }: Edges, chosen: Uint8Array): void {
@@ -53,14 +59,16 @@ export function boxesMeet(boxes: Float64Array, tolerance: number): boolean {
   return !visitPairs(buildBoxTree(boxes), tolerance, () => false);
 }
 
-/** For each shell the box round everything that its box shares with others; empty where nothing. */
-function commonBoxes(boxes: Float64Array, count: number, near: number): Float64Array {
+/** For each shell the box round everything that its box shares with others, empty where nothing; null where too many meet. */
+function commonBoxes(boxes: Float64Array, count: number, near: number): Float64Array | null {
   const common = new Float64Array(6 * count);
   for (let s = 0; s < count; s++) {
     common.fill(Infinity, 6 * s, 6 * s + 3);
     common.fill(-Infinity, 6 * s + 3, 6 * s + 6);
   }
-  visitPairs(buildBoxTree(boxes), near, (s, t) => {
+  let pairs = 0;
+  const complete = visitPairs(buildBoxTree(boxes), near, (s, t) => {
+    if (++pairs > MOST_SHELL_PAIRS) return false;
     for (const own of [s, t]) {
       for (let k = 0; k < 3; k++) {
         const low = Math.max(boxes[6 * s + k], boxes[6 * t + k]) - near;
@@ -71,7 +79,7 @@ function commonBoxes(boxes: Float64Array, count: number, near: number): Float64A
     }
     return true;
   });
-  return common;
+  return complete ? common : null;
 }
 
 function markBoxes(

@@ -23,7 +23,7 @@ export interface Meetings {
   touching: MeetingList;
   /** Pairs of shells (lower × shells + higher) that cross or touch. */
   joined: Set<number>;
-  /** False where the search gave up. */
+  /** False where the search gave up, or the choice of facets did. */
   complete: boolean;
 }
 
@@ -40,7 +40,7 @@ export interface MeetingList {
 export function findMeetings(
   mesh: Mesh,
   shells: Shells,
-  { facets, apart }: Candidates,
+  { facets, apart, complete }: Candidates,
   tolerance: number,
   crowded: boolean,
 ): Meetings {
@@ -57,7 +57,7 @@ export function findMeetings(
   const tree = buildBoxTree(facetBoxes(index, p, facets), apart ? (i) => ofFacet[facets[i]] : undefined);
   const most = LEAST_PAIRS + MOST_PAIRS_PER_FACET * facets.length;
   let pairs = 0;
-  found.complete = visitPairs(tree, count > 1 ? tolerance : 0, (i, j) => {
+  const searched = visitPairs(tree, count > 1 ? tolerance : 0, (i, j) => {
     if (++pairs > most) return false;
     const [f, g] = [facets[i], facets[j]];
     const shared = sharedVertices(index, f, g).count;
@@ -82,6 +82,7 @@ export function findMeetings(
     }
     return true;
   });
+  found.complete = complete && searched;
   found.touching = withoutCrossed(found.touching, ofFacet, count, crossed);
   for (const key of crossed) found.joined.add(key);
   return found;

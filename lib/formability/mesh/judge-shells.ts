@@ -42,7 +42,8 @@ export function judgeShells(prepared: Prepared, columns: Columns): ShellJudgemen
   const doubtful = odd || meetings.own.at.length > 0 || (boxes !== null && boxesMeet(boxes, tolerance));
   const { capped } = prepared;
   const signed = signedVolume(capped.mesh, 0, 0);
-  const exact = capped.sealed && doubtful ? uniteExactly(prepared, candidates, opposed) : null;
+  const exact =
+    capped.sealed && doubtful && candidates.complete ? uniteExactly(prepared, candidates, opposed) : null;
   // Where shells were not looked at in themselves, the columns must bear the result out.
   const borne = !candidates.apart || exact === null || agree(exact.volumeMm3, columns.solidVolume);
   const union = borne ? exact : null;
