@@ -45,6 +45,8 @@ export const mailRequest = z.discriminatedUnion('template', [
     /** Findings to look at, and failing ones that a lead has waived. */
     look: z.number(),
     waived: z.number(),
+    /** Checks that were not run; mails queued before they were counted have none. */
+    notRun: z.number().default(0),
   }),
   z.object({
     template: z.literal('check-fails'),

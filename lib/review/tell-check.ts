@@ -48,6 +48,7 @@ export async function tellCheckEnded(
     note: revision.note,
     look: found.filter(({ status }) => status === 'caution').length,
     waived: waived.size,
+    notRun: found.filter(({ status }) => status === 'not-run').length,
   }));
 }
 

@@ -26,17 +26,19 @@ export function revisionPosted(request: Of<'revision-posted'>, url: string): Mai
 
 /** To the client's people, once there is something to look at. */
 export function revisionChecked(request: Of<'revision-checked'>, url: string): MailContent {
-  const { authorName, note, look, waived } = request;
+  const { authorName, note, look, waived, notRun } = request;
   const found =
     look === 0
-      ? 'The check found nothing that stands against forming it.'
-      : `The check found nothing that keeps it from forming, and ${counted(look, 'finding', 'findings')} to look at.`;
+      ? 'Nothing that was checked stands against forming it.'
+      : `Nothing that was checked keeps it from forming; ${counted(look, 'finding is', 'findings are')} left to look at.`;
   const stand = `The studio has let ${counted(waived, 'failing finding', 'failing findings')} stand; the reason is on the revision’s page.`;
-  const said = waived
+  const judged = waived
     ? look
-      ? `${stand} There is also ${counted(look, 'finding', 'findings')} to look at.`
+      ? `${stand} ${look === 1 ? 'One more finding is' : `${look} more findings are`} left to look at.`
       : stand
     : found;
+  const unrun = notRun === 1 ? 'One check was not run.' : `${notRun} checks were not run.`;
+  const said = notRun ? `${judged} ${unrun}` : judged;
   return {
     subject: subject(request, 'is posted and checked'),
     heading: `${revisionName(request)} is posted and checked: you can look at it`,

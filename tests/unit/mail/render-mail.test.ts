@@ -56,6 +56,7 @@ const all: { [T in MailRequest['template']]: Extract<MailRequest, { template: T 
     note: hostile,
     look: 2,
     waived: 1,
+    notRun: 1,
   },
   'check-fails': {
     template: 'check-fails',
@@ -188,6 +189,35 @@ it('a signature shows its local time with offset and zone', () => {
   expect(text).toContain('25 Oct 2026, 02:30:10 CEST (UTC+02:00, Europe/Berlin)');
   expect(visible(html)).toContain('25 Oct 2026, 02:30:10 CEST (UTC+02:00, Europe/Berlin)');
   expect(text).toContain('ab'.repeat(32));
+});
+
+it.each([
+  [0, 0, 0, 'Nothing that was checked stands against forming it.'],
+  [0, 0, 1, 'Nothing that was checked stands against forming it. One check was not run.'],
+  [
+    1,
+    0,
+    2,
+    'Nothing that was checked keeps it from forming; one finding is left to look at. 2 checks were not run.',
+  ],
+  [
+    2,
+    1,
+    1,
+    'The studio has let one failing finding stand; the reason is on the revision’s page. 2 more findings are left to look at. One check was not run.',
+  ],
+])(
+  'a client is told no more than was checked: %i to look at, %i waived, %i not run',
+  (look, waived, notRun, words) => {
+    const { text } = renderMail({ ...all['revision-checked'], look, waived, notRun }, origin);
+    expect(text.replace(/\s+/g, ' ')).toContain(`${words} Turn the model`);
+    expect(text).not.toContain('The check found nothing');
+  },
+);
+
+it('a mail queued before checks not run were counted still goes out', () => {
+  const { notRun: _, ...older } = all['revision-checked'];
+  expect(mailRequest.parse(older)).toMatchObject({ template: 'revision-checked', notRun: 0 });
 });
 
 it.each(['revision-released', 'revision-recalled'] as const)('%s names the cautions', (template) => {
