@@ -1,5 +1,13 @@
 import type { FacetCuts } from './facet-cuts';
 
+/** Work of a crossing of two segments: its height adds a slab. */
+const CROSSING_STEPS = 10;
+
+/** Steps left for all facets of a body together: segments compared, and segments looked at in each slab. */
+export interface CoverBudget {
+  steps: number;
+}
+
 /**
  * One cut facet laid flat, with the winding number of the space just outside it: known at its first corner, and
  * changed by one over every segment. Slabs between all heights at which anything begins, ends or crosses are exact.
@@ -35,12 +43,13 @@ export class FacetCover {
     }
   }
 
-  /** Share of the facet's area with winding 0 just outside, given the winding at its first corner. */
-  shareOutside(first: number): number {
+  /** Share of the facet's area with winding 0 just outside, given the winding at its first corner; null where it costs more than is left. */
+  shareOutside(first: number, budget: CoverBudget): number | null {
     const { u, v } = this;
     const whole = ((u[1] - u[0]) * (v[2] - v[0]) - (v[1] - v[0]) * (u[2] - u[0])) / 2;
     if (!(whole > 0)) return 0;
-    const heights = this.heights();
+    const heights = this.heights(budget);
+    if (heights === null) return null;
     const byFoot = this.su.map((_, s) => s).sort((a, b) => this.foot(a) - this.foot(b));
     let active: number[] = [];
     let taken = 0;
@@ -51,6 +60,8 @@ export class FacetCover {
       const at = heights[h] + thick / 2;
       while (taken < byFoot.length && this.foot(byFoot[taken]) <= at) active.push(byFoot[taken++]);
       active = active.filter((s) => this.head(s) > at);
+      budget.steps -= active.length + this.pierced.length + 1;
+      if (budget.steps < 0) return null;
       area += thick * this.widthOutside(at, first, active);
     }
     return Math.min(1, Math.max(0, area / whole));
@@ -83,16 +94,19 @@ export class FacetCover {
     return winding === 0 ? width + right - from : width;
   }
 
-  /** All heights between which nothing begins, ends or crosses. */
-  private heights(): number[] {
+  /** All heights between which nothing begins, ends or crosses; null where they are too many to find. */
+  private heights(budget: CoverBudget): number[] | null {
     const { sv, ev, v } = this;
     const heights = [...v, ...sv, ...ev];
     const byFoot = sv.map((_, s) => s).sort((a, b) => this.foot(a) - this.foot(b));
     for (let i = 0; i < byFoot.length; i++) {
       const top = this.head(byFoot[i]);
       for (let j = i + 1; j < byFoot.length && this.foot(byFoot[j]) < top; j++) {
+        if (--budget.steps < 0) return null;
         const crossing = this.crossingHeight(byFoot[i], byFoot[j]);
-        if (crossing !== null) heights.push(crossing);
+        if (crossing === null) continue;
+        budget.steps -= CROSSING_STEPS;
+        heights.push(crossing);
       }
     }
     const low = v[this.lowest];

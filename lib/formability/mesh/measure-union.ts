@@ -1,7 +1,7 @@
 import { neighbourOver, type Edges } from './build-edges';
 import { buildBoxTree, visitPairs } from './box-tree';
 import { facetBoxes } from './facet-boxes';
-import { FacetCover } from './facet-cover';
+import { FacetCover, type CoverBudget } from './facet-cover';
 import { FacetCuts } from './facet-cuts';
 import { LEAST_PAIRS, MOST_PAIRS_PER_FACET } from './find-meetings';
 import { crossesFromVertex, pierceFacets, type Crossing } from './pierce-facets';
@@ -10,6 +10,8 @@ import { WindingProbe } from './winding-probe';
 
 /** More crossings than this are no overlap of bodies but a heap of facets: the columns measure it instead. */
 const MOST_CROSSINGS = 400_000;
+/** Work on the cut facets before the columns measure instead: a few seconds. */
+const MOST_COVER_STEPS = 2e7;
 const MOST_COVERED = 1000;
 /** Winding not known yet; real windings are far smaller. */
 const UNKNOWN = -32768;
@@ -46,12 +48,15 @@ export function measureUnion(
   let six = 0;
   const covered: number[] = [];
   let cutArea = 0;
+  const budget: CoverBudget = { steps: MOST_COVER_STEPS };
   for (let t = 0; t < index.length / 3; t++) {
     const corners: [number, number, number] = [3 * index[3 * t], 3 * index[3 * t + 1], 3 * index[3 * t + 2]];
     const first = winding[3 * t];
     let share = first === 0 ? 1 : 0;
     if (cuts.head[t] >= 0) {
-      share = new FacetCover(moved, corners, cuts, t).shareOutside(first);
+      const outside = new FacetCover(moved, corners, cuts, t).shareOutside(first, budget);
+      if (outside === null) return null;
+      share = outside;
       cutArea += areaOf(position, corners);
     } else if (first > 0 && covered.length < MOST_COVERED) covered.push(t);
     if (share > 0) six += share * sixVolumes(position, corners);
