@@ -4,8 +4,8 @@ import type { Tag } from './xml-tag';
 export const CORE = 'http://schemas.microsoft.com/3dmanufacturing/core/2015/02';
 export const PRODUCTION = 'http://schemas.microsoft.com/3dmanufacturing/production/2015/06';
 
-/** Extensions that may be required: production is read, the others change no shape. */
-const HARMLESS = new Set([
+/** Extensions that may be required, or stand inside a mesh: production is read, the others change no shape. */
+export const HARMLESS: ReadonlySet<string> = new Set([
   CORE,
   PRODUCTION,
   'http://schemas.microsoft.com/3dmanufacturing/material/2015/02',

@@ -1,7 +1,7 @@
 import { UnusableInput } from '../../unusable-input';
 import { parseNumber, readDecimal } from '../decimal';
 import { MAX_TRIANGLES } from '../size-caps';
-import { checkExtensions, CORE, PRODUCTION } from './extensions';
+import { checkExtensions, CORE, HARMLESS, PRODUCTION } from './extensions';
 import { Growing } from './growing';
 import { MAX_COMPONENTS, MAX_OBJECTS } from './limits';
 import type { ModelObject, ModelPart, ObjectType, Reference } from './model';
@@ -83,13 +83,22 @@ export class ModelReader implements XmlHandler {
     else if (kind === Kind.Mesh) this.beginMesh();
     else if (kind === Kind.Component) this.component(tag);
     else if (kind === Kind.Item) this.item(tag);
-    else if (kind === Kind.Other && parent === Kind.Object && tag.uri !== CORE && this.object) this.object.foreign = tag.uri; // prettier-ignore
+    else if (kind === Kind.Other) this.other(parent, tag);
   }
 
   close(): void {
     const kind = this.kinds.pop();
     if (kind === Kind.Mesh) this.endMesh();
     else if (kind === Kind.Object) this.endObject();
+  }
+
+  /** A shape by an extension: instead of a mesh, or added inside one, whether the file calls it required or not. */
+  private other(parent: Kind | null, tag: Tag): void {
+    if (!this.object || tag.uri === CORE) return;
+    if (parent === Kind.Object) this.object.foreign = tag.uri;
+    else if (parent === Kind.Mesh && !HARMLESS.has(tag.uri)) {
+      this.object.foreignInMesh ??= `<${tag.local.slice(0, 40)}> of "${tag.uri.slice(0, 200)}"`;
+    }
   }
 
   private root(tag: Tag): Kind {
@@ -126,6 +135,7 @@ export class ModelReader implements XmlHandler {
       triangles: new Uint32Array(0),
       components: [],
       foreign: null,
+      foreignInMesh: null,
     };
     this.hasMesh = false;
   }
@@ -218,8 +228,7 @@ export class ModelReader implements XmlHandler {
     if (++this.tally.components > MAX_COMPONENTS) throw this.tooMany('build items', MAX_COMPONENTS);
     const owner = `build item ${this.part.items.length + 1} of ${this.where}`;
     // Slicers write this attribute for what stays on the plate unprinted; the core specification has no such word.
-    if (tag.attribute('printable') === '0') return;
-    this.part.items.push(this.reference(tag, owner));
+    this.part.items.push(tag.attribute('printable') === '0' ? null : this.reference(tag, owner));
   }
 
   private reference(tag: Tag, owner: string): Reference {

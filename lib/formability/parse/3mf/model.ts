@@ -23,6 +23,8 @@ export interface ModelObject {
   components: Reference[];
   /** Namespace of a shape that no mesh and no component gives, or null. */
   foreign: string | null;
+  /** Element and namespace of what an extension adds inside the mesh, changing its shape; null: nothing. */
+  foreignInMesh: string | null;
 }
 
 export interface ModelPart {
@@ -33,5 +35,6 @@ export interface ModelPart {
   /** False where the file leaves the unit to its default, millimetres. */
   unitStated: boolean;
   objects: Map<string, ModelObject>;
-  items: Reference[];
+  /** Build items in the file's order; null: marked not to be printed. */
+  items: (Reference | null)[];
 }

@@ -24,12 +24,17 @@ export type LoadPart = (path: string, owner: string) => ModelPart;
  * The build of the start part as triangles: every item, through its components, with all transforms; a mirroring
  * transform turns the facets' winding. Objects of type `model` and `surface` are the template. `support` and
  * `solidsupport` hold it while it prints and are broken away, `other` is not printed at all (Core Specification,
- * §4.1; from memory): they are left out, with all that they consist of, and named in `leftOut`.
+ * §4.1; from memory): they are left out, with all that they consist of, and named in `leftOut`; so are items that are
+ * marked not to be printed.
  * @throws UnusableInput no_triangles, not_a_mesh (cycle, missing object), unsupported, out_of_range, too_large_file
  */
 export function placeObjects(start: ModelPart, loadPart: LoadPart): Assembled {
   const walk = new Walk(start, loadPart);
-  start.items.forEach((item, k) => walk.follow(start, item, null, `build item ${k + 1} of ${start.where}`));
+  start.items.forEach((item, k) => {
+    const owner = `build item ${k + 1} of ${start.where}`;
+    if (item === null) walk.leave(`${owner}, marked not to be printed`);
+    else walk.follow(start, item, null, owner);
+  });
   const { placed, leftOut } = walk;
   let triangles = 0;
   for (const { object } of placed) triangles += object.triangles.length / 3;
@@ -76,7 +81,9 @@ class Walk {
     if (++this.steps > MAX_PLACED) {
       throw new UnusableInput('too_large_file', `${this.start.where} builds more than ${MAX_PLACED} components; export the template as one mesh`); // prettier-ignore
     }
-    if (object.type !== 'model' && object.type !== 'surface') return this.leave(object, part);
+    if (object.type !== 'model' && object.type !== 'surface') {
+      return this.leave(`${named}, of type ${object.type}`);
+    }
     const transform = multiply(reference.transform, outer);
     if (object.components.length === 0) return this.place(object, transform, named);
     this.path.push(object);
@@ -89,13 +96,15 @@ class Walk {
     if (object.triangles.length === 0 && object.foreign !== null) {
       throw new UnusableInput('unsupported', `${named} has no mesh but a shape of the extension ${object.foreign.slice(0, 200)}, which is not read here; export it as a plain mesh (3MF core)`); // prettier-ignore
     }
+    if (object.foreignInMesh !== null) {
+      throw new UnusableInput('unsupported', `${named} has ${object.foreignInMesh} inside its mesh, an extension's shape that is not read here; export it as a plain mesh (3MF core)`); // prettier-ignore
+    }
     this.triangles += object.triangles.length / 3;
     if (this.triangles > MAX_TRIANGLES) checkTriangles(this.triangles, this.start.where);
     if (object.triangles.length > 0) this.placed.push({ object, transform });
   }
 
-  private leave(object: ModelObject, part: ModelPart): void {
-    const what = `object ${object.id} of ${part.where}, of type ${object.type}`;
+  leave(what: string): void {
     if (this.leftOut.size < 20 || this.leftOut.has(what)) {
       this.leftOut.set(what, (this.leftOut.get(what) ?? 0) + 1);
     }

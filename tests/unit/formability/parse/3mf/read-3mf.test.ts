@@ -75,13 +75,17 @@ describe('a 3MF of one object', () => {
   });
 
   it('passes over metadata, materials, properties and elements of unknown extensions', () => {
+    const triangleSets =
+      '<t:trianglesets xmlns:t="http://schemas.microsoft.com/3dmanufacturing/trianglesets/2021/07"><t:triangleset name="a" identifier="a"><t:ref index="0"/></t:triangleset></t:trianglesets>';
     const dressed = modelXml(
       [
         '<basematerials id="9"><base name="a" displaycolor="#FFFFFF"/></basematerials>',
         `<x:thing xmlns:x="urn:x"><vertices><vertex x="9" y="9" z="9"/></vertices></x:thing>`,
         objectXml(
           1,
-          `<metadatagroup><metadata name="a">b</metadata></metadatagroup>${meshXml(mesh).replace('<triangle ', '<triangle pid="9" p1="0" ')}`,
+          `<metadatagroup><metadata name="a">b</metadata></metadatagroup>${meshXml(mesh)
+            .replace('<triangle ', '<triangle pid="9" p1="0" ')
+            .replace('</mesh>', `${triangleSets}</mesh>`)}`,
         ),
       ],
       ['objectid="1" partnumber="7"'],
@@ -177,9 +181,10 @@ describe('build items and components', () => {
     );
     expect(input.bodies).toBe(2);
     expect(found.boundsMm.max[0]).toBe(130);
-    expect(input.leftOut).toEqual(
-      [[10, 'support'], [11, 'solidsupport'], [12, 'other']].map(([id, type]) => `object ${id} of 3D/3dmodel.model, of type ${type}`), // prettier-ignore
-    );
+    expect(input.leftOut).toEqual([
+      ...[[10, 'support'], [11, 'solidsupport'], [12, 'other']].map(([id, type]) => `object ${id} of 3D/3dmodel.model, of type ${type}`), // prettier-ignore
+      'build item 5 of 3D/3dmodel.model, marked not to be printed',
+    ]);
   });
 });
 

@@ -146,6 +146,9 @@ describe('models that cannot be used', () => {
     ['a required extension that is not read', packed(modelXml([one], undefined, 'xmlns:b="http://schemas.microsoft.com/3dmanufacturing/beamlattice/2017/02" requiredextensions="p b"')), 'unsupported', /beamlattice/], // prettier-ignore
     ['a required extension that is not declared', packed(modelXml([one], undefined, 'requiredextensions="q"')), 'not_a_mesh', /extension "q"/], // prettier-ignore
     ['a shape that an extension gives', packed(modelXml([objectXml(1, '<v:levelset xmlns:v="urn:volume"/>')])), 'unsupported', /urn:volume/], // prettier-ignore
+    ['a shape that an extension adds inside a mesh, required or not', packed(modelXml([objectXml(1, mesh.replace('</mesh>', '<b:beamlattice xmlns:b="urn:beams"><b:beams/></b:beamlattice></mesh>'))])), 'unsupported', /object 1 of .* <beamlattice> of "urn:beams" inside its mesh/], // prettier-ignore
+    ['a build of what is marked not to be printed alone', packed(modelXml([one], ['objectid="1" printable="0"'])), 'no_triangles', /build item 1 of .* marked not to be printed/], // prettier-ignore
+    ['an item after one that is not printed, by its own number', packed(modelXml([one], ['objectid="1" printable="0"', 'objectid="x"'])), 'not_a_mesh', /build item 2 /], // prettier-ignore
     ['another document', packed('<svg xmlns="http://www.w3.org/2000/svg"/>'), 'not_a_mesh', /no 3MF model: its root is <svg>/], // prettier-ignore
     ['a model of another namespace', swapped('core/2015/02', 'core/1999/01'), 'not_a_mesh', /no 3MF model/],
     ['an entity bomb', packed('<!DOCTYPE model [<!ENTITY a "aaaaaaaaaa"><!ENTITY b "&a;&a;&a;">]><model>&b;</model>'), 'unsupported', /document type or entities/], // prettier-ignore
