@@ -3,10 +3,10 @@ import { parseNumber, readDecimal } from '../decimal';
 import { MAX_TRIANGLES } from '../size-caps';
 import { checkExtensions, CORE, HARMLESS, PRODUCTION } from './extensions';
 import { Growing } from './growing';
-import { MAX_COMPONENTS, MAX_OBJECTS } from './limits';
+import { MAX_COMPONENTS, MAX_NAME, MAX_OBJECTS, MAX_PATH } from './limits';
 import type { ModelObject, ModelPart, ObjectType, Reference } from './model';
 import { readMatrix, readUnit } from './model-values';
-import type { Tag } from './xml-tag';
+import { decode, type Tag } from './xml-tag';
 import type { XmlHandler } from './xml-scanner';
 
 /** What an element is, where it stands; everything the core specification does not name there is passed over. */
@@ -38,9 +38,9 @@ const CHILDREN: Partial<Record<Kind, Record<string, Kind>>> = {
 };
 
 const TYPES: ObjectType[] = ['model', 'surface', 'support', 'solidsupport', 'other'];
-const ascii = (text: string) => new TextEncoder().encode(text);
-const AXES = ['x', 'y', 'z'].map(ascii);
-const CORNERS = ['v1', 'v2', 'v3'].map(ascii);
+const utf8 = (text: string) => new TextEncoder().encode(text);
+const AXES = ['x', 'y', 'z'].map(utf8);
+const CORNERS = ['v1', 'v2', 'v3'].map(utf8);
 
 /** Objects and components read so far in all parts of the file: one count against their caps. */
 export interface Tally {
@@ -129,7 +129,7 @@ export class ModelReader implements XmlHandler {
     if (!known) throw this.wrong(`object ${id} of ${this.where} has the type "${type.slice(0, 40)}", which 3MF does not know`); // prettier-ignore
     this.object = {
       id,
-      name: tag.attribute('name') ?? '',
+      name: kept(tag.attribute('name') ?? ''),
       type: known,
       vertices: new Float64Array(0),
       triangles: new Uint32Array(0),
@@ -232,9 +232,13 @@ export class ModelReader implements XmlHandler {
   }
 
   private reference(tag: Tag, owner: string): Reference {
+    const path = tag.foreign(PRODUCTION, 'path');
+    if (path !== null && path.length > MAX_PATH) {
+      throw this.wrong(`${owner} has a path of ${path.length} characters, more than the ${MAX_PATH} of a part's name`); // prettier-ignore
+    }
     return {
       objectId: this.id(tag.attribute('objectid'), owner, 'objectid'),
-      path: tag.foreign(PRODUCTION, 'path'),
+      path,
       transform: readMatrix(tag.attribute('transform'), owner),
     };
   }
@@ -260,6 +264,13 @@ export class ModelReader implements XmlHandler {
   private tooMany(what: string, most: number): UnusableInput {
     return new UnusableInput('too_large_file', `${this.where} has more ${what} than the ${most} that are read; export the mesh with a coarser tolerance`); // prettier-ignore
   }
+}
+
+/** The start of a name, copied: a mere slice would hold on to all of a long one, for each of many objects. */
+function kept(name: string): string {
+  if (name.length <= MAX_NAME) return name;
+  const bytes = utf8(name.slice(0, MAX_NAME));
+  return decode(bytes, 0, bytes.length);
 }
 
 /** A plain row of up to nine digits; -1 for anything else. */

@@ -139,6 +139,8 @@ describe('models that cannot be used', () => {
     ['a ring of components', packed(modelXml([objectXml(1, componentsXml('objectid="2"')), objectXml(2, componentsXml('objectid="1"'))])), 'not_a_mesh', /component of itself/], // prettier-ignore
     ['components 40 deep', packed(modelXml([one, ...Array.from({ length: 40 }, (_, k) => objectXml(k + 2, componentsXml(`objectid="${k + 1}"`)))], ['objectid="41"'])), 'unsupported', /32 components deep/], // prettier-ignore
     ['a part that is not there', packed(modelXml([], ['objectid="1" p:path="/3D/none.model"'])), 'not_a_mesh', /3d\/none.model/], // prettier-ignore
+    ['a path of 1,025 characters', packed(modelXml([], [`objectid="1" p:path="/${'a'.repeat(1024)}"`])), 'not_a_mesh', /build item 1 .* path of 1025 characters, more than the 1024/], // prettier-ignore
+    ['a path of 1,024 characters to nothing', packed(modelXml([], [`objectid="1" p:path="/${'a'.repeat(1023)}"`])), 'not_a_mesh', /which the archive does not hold/], // prettier-ignore
     ['an empty build', packed(modelXml([one], [])), 'no_triangles', /nothing into its build/],
     ['a build of supports alone', packed(modelXml([objectXml(1, mesh, 'type="support"')])), 'no_triangles', /object 1 of .* of type support/], // prettier-ignore
     ['an object of nothing', packed(modelXml([objectXml(1, '')])), 'no_triangles', /no triangles/],
