@@ -46,7 +46,9 @@ describe('the end of a check', () => {
   });
 
   it('mails the client when the last failing finding is waived, not before, and the poster no second time', async () => {
-    const posted = await postChecked(house, { statuses: { draft: 'fail', vents: 'fail', edges: 'caution' } });
+    const posted = await postChecked(house, {
+      statuses: { draft: 'fail', vents: 'fail', edges: 'caution', sheet: 'not-run' },
+    });
     const { findings } = await viewDocket(lead, posted.revisionId);
     const failing = findings.filter(({ status }) => status === 'fail');
     await waiveFinding(lead, failing[0].id, { reason: 'Accepted for a trial run.' });
@@ -54,7 +56,7 @@ describe('the end of a check', () => {
     await waiveFinding(lead, failing[1].id, { reason: 'Accepted for a trial run.' });
     const { people, payloads } = await told('revision-checked', posted);
     expect(people).toEqual(client);
-    expect(payloads[0]).toMatchObject({ waived: 2, look: 1, authorName: designer.person.name });
+    expect(payloads[0]).toMatchObject({ waived: 2, look: 1, notRun: 1, authorName: designer.person.name });
     expect((await told('check-fails', posted)).people).toEqual([designer.person.id]);
   });
 
