@@ -55,18 +55,19 @@ describe('the whole job', () => {
 
     // The finding reaches the approver's open page without a reload.
     await approver.page.goto(`${templatePath}/A`);
-    const finding = approver.page.getByText(/grip the template/).first();
+    const finding = approver.page.getByText(/grips the template/).first();
     await finding.waitFor();
     const revisions = await designer.call('GET', `${api}/templates/${templateId}/revisions`);
     expect(revisions.body.map((r: { letter: string }) => r.letter)).toEqual(['A']);
-    await mailTo(
-      'anselm@quillon.example',
-      (mail) => /Petit four tray/.test(mail.subject) && /A/.test(mail.subject),
+    const warned = await mailTo(
+      'mara@larkfield.example',
+      (mail) => /Petit four tray/.test(mail.subject) && /will not form as it is/.test(mail.subject),
     );
+    expect(warned.text).toContain('Draft');
 
     // A note and its answer appear to the other within a second, without a reload.
     await designer.page
-      .getByText(/grip the template/)
+      .getByText(/grips the template/)
       .first()
       .waitFor();
     await approver.page.getByRole('button', { name: 'Add a note' }).click();
