@@ -1,10 +1,11 @@
 import type { CheckInput } from './checks/check-input';
 import { runChecks } from './checks/run-checks';
+import { candidateChanges } from './candidate-changes';
 import { fillRecipe } from './fill-recipe';
 import { judgeDraft } from './judge-draft';
-import { candidateChanges } from './measures/candidate-changes';
 import { estimatePrint, facingAreas } from './measures/estimate-print';
 import { measureLayers } from './measures/measure-layers';
+import type { MacroWalls } from './measures/measure-macro-draft';
 import type { EffectiveRecipe, RecipeInput } from './recipe';
 import { recipeSchema } from './recipe-schema';
 import type { Advice, Check, CheckId, CheckStatus } from './report';
@@ -19,15 +20,16 @@ const WEIGHT: Record<CheckStatus, number> = { fail: 3, caution: 1, pass: 0, 'not
  * The changes of the recipe that buy most: each is tried by running all checks on the changed recipe, on the same mesh.
  * Ranked by what they mend, then by what they cost in print time. Those that make anything worse are left out.
  */
-export function advise(part: Part, input: CheckInput, checks: Check[]): Advice[] {
+export function advise(part: Part, input: CheckInput, checks: Check[], macro: MacroWalls): Advice[] {
   const before = new Map(checks.map((check) => [check.id, check.status]));
   const weight = total(checks);
   if (weight === 0) return [];
+  const facing = facingAreas(part.facets);
   const tried = candidateChanges(input.recipe, input.report, before, input.sheet?.remedy?.gaugeMm).flatMap(
     ({ change, text }) => {
       const recipe = withChange(input.recipe, change);
       if (!recipe) return [];
-      const changed = judgeAgain(part, input, recipe);
+      const changed = judgeAgain(part, input, recipe, { macro, facing });
       const worse = changed.checks.some(
         (check) => WEIGHT[check.status] > WEIGHT[before.get(check.id) ?? 'pass'],
       );
@@ -77,11 +79,12 @@ function judgeAgain(
   part: Part,
   input: CheckInput,
   recipe: EffectiveRecipe,
+  known: { macro: MacroWalls; facing: ReturnType<typeof facingAreas> },
 ): { checks: Check[]; report: CheckInput['report'] } {
   const { print, limits } = recipe;
   const layered = print.layerMm !== input.recipe.print.layerMm;
   const redrawn = layered || print.sanded !== input.recipe.print.sanded;
-  const draft = redrawn ? judgeDraft(part, recipe) : null;
+  const draft = redrawn ? judgeDraft(part, recipe, known.macro) : null;
   const report = {
     ...input.report,
     recipe,
@@ -91,7 +94,7 @@ function judgeAgain(
       {
         volumeMm3: input.report.mesh.unionVolumeMm3,
         heightMm: part.size[2],
-        ...facingAreas(part.facets),
+        ...known.facing,
       },
       recipe,
     ),

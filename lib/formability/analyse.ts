@@ -70,7 +70,9 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
   };
   const input = checkInput(part, effective, sections, wallDraft, sheet, options.geometryOnly ?? false);
   const checks = stages.run('checks', () => runChecks(input));
-  const advice = options.geometryOnly ? [] : stages.run('advice', () => advise(part, input, checks));
+  const advice = options.geometryOnly
+    ? []
+    : stages.run('advice', () => advise(part, input, checks, wallDraft.macro));
   const geometry = stages.run('geometry', () => drawGeometry(part));
   stages.finish();
   return { report: { ...sections, advice, checks, timings: stages.timings }, geometry };

@@ -1,7 +1,7 @@
 import { wantedDraft } from './checks/check-draft';
 import { judgeWalls, type WallJudgement } from './measures/judge-walls';
-import { macroRegions, measureMacroDraft } from './measures/measure-macro-draft';
-import { DEG } from './measures/thresholds';
+import { layerDraftDeg } from './measures/measure-layers';
+import { macroRegions, measureMacroDraft, type MacroWalls } from './measures/measure-macro-draft';
 import type { EffectiveRecipe } from './recipe';
 import type { DraftReport } from './report';
 import type { Part } from './survey-part';
@@ -13,20 +13,29 @@ const NZ_CEILING = -Math.sin(Math.PI / 4);
 
 export interface DraftJudgement {
   walls: WallJudgement;
+  /** The walls at scales above 1 mm, which no recipe changes. */
+  macro: MacroWalls;
   section: Pick<DraftReport, 'wallMinMacroDeg' | 'wantedDeg' | 'regions'>;
 }
 
-/** The walls' draft facet by facet and at scales above 1 mm, held to what the recipe's print needs. */
-export function judgeDraft(part: Part, { print, limits }: EffectiveRecipe): DraftJudgement {
+/**
+ * The walls' draft facet by facet and at scales above 1 mm, held to what the recipe's print needs.
+ * @param known the walls as measured before, for another recipe on the same part
+ */
+export function judgeDraft(
+  part: Part,
+  { print, limits }: EffectiveRecipe,
+  known?: MacroWalls,
+): DraftJudgement {
   const { prepared, facets, draft, visibility, holes, size } = part;
   const { mesh } = prepared;
   const wantedDeg = wantedDraft({
     sanded: print.sanded,
     minDeg: limits.draftMinDeg,
     failDeg: limits.draftFailDeg,
-    layerDraftDeg: Math.atan(limits.layerGrooveMm / print.layerMm) * DEG,
+    layerDraftDeg: layerDraftDeg(print.layerMm, limits.layerGrooveMm),
   });
-  const macro = measureMacroDraft(mesh, facets, notWalls(part), Math.max(...size));
+  const macro = known ?? measureMacroDraft(mesh, facets, notWalls(part), Math.max(...size));
   const walls = judgeWalls(mesh, facets, draft.ofFacet, visibility, holes.bore, wantedDeg);
   const regions = walls.stepped
     ? macroRegions(macro, wantedDeg, LEAST_AREA_MM2, MOST_REGIONS)
@@ -34,6 +43,7 @@ export function judgeDraft(part: Part, { print, limits }: EffectiveRecipe): Draf
   const [x, y] = mesh.centre;
   return {
     walls,
+    macro,
     section: {
       wallMinMacroDeg: macro.minDeg,
       wantedDeg,

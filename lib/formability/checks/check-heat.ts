@@ -1,6 +1,5 @@
-import { FILAMENT_IDS, FILAMENTS } from '../materials/filaments';
-import { estimateHeat } from '../measures/estimate-heat';
-import { hottestC } from '../measures/estimate-skin';
+import { FILAMENTS } from '../materials/filaments';
+import { filamentsThatHold, hottestC } from '../measures/estimate-heat';
 import type { EffectiveRecipe } from '../recipe';
 import type { Basis, Check, HeatReport } from '../report';
 import { say } from './basis';
@@ -61,13 +60,6 @@ function waysOut(recipe: EffectiveRecipe, heat: HeatReport): string {
 
 /** The material with the least margin that still holds with room to spare: no stronger one is asked for than needed. */
 function coolest(recipe: EffectiveRecipe): string | null {
-  // A resin for vats is no choice on a filament printer.
-  const margins = FILAMENT_IDS.filter((id) => id !== recipe.print.material && id !== 'resin-ht')
-    .map((id) => {
-      const heat = estimateHeat({ ...recipe, print: { ...recipe.print, material: id } });
-      return { name: FILAMENTS[id].name, margin: heat.limitC - hottestC(heat) };
-    })
-    .filter(({ margin }) => margin >= NEAR_K)
-    .sort((a, b) => a.margin - b.margin);
-  return margins.length > 0 ? margins[0].name : null;
+  const [first] = filamentsThatHold(recipe, NEAR_K).sort((a, b) => a.marginK - b.marginK);
+  return first ? FILAMENTS[first.id].name : null;
 }

@@ -1,4 +1,4 @@
-import { FILAMENTS, type FilamentMaterial } from '../materials/filaments';
+import { FILAMENT_IDS, FILAMENTS, type FilamentId, type FilamentMaterial } from '../materials/filaments';
 import { SHEETS } from '../materials/sheets';
 import { contactC, type ThermalBody } from '../physics/conduction';
 import { halfSpaceRiseK, heatOfPull, lumpedRiseK, type Cycling } from '../physics/cycle-heating';
@@ -94,4 +94,25 @@ function cycleThatHolds(cycling: Cycling, holds: (at: Cycling) => boolean): numb
     else low = middle;
   }
   return Math.ceil(high);
+}
+
+/** Hottest surface of the planned pulls, °C. */
+export function hottestC(heat: HeatReport): number {
+  return heat.peakC.reduce((most, peak) => Math.max(most, peak), heat.contactC);
+}
+
+/**
+ * Other filaments that stay below their softening by at least a margin over the same pulls. A resin for vats is no choice
+ * on a filament printer.
+ */
+export function filamentsThatHold(
+  recipe: EffectiveRecipe,
+  leastMarginK: number,
+): { id: FilamentId; marginK: number }[] {
+  return FILAMENT_IDS.filter((id) => id !== recipe.print.material && id !== 'resin-ht')
+    .map((id) => {
+      const heat = estimateHeat({ ...recipe, print: { ...recipe.print, material: id } });
+      return { id, marginK: heat.limitC - hottestC(heat) };
+    })
+    .filter(({ marginK }) => marginK >= leastMarginK);
 }

@@ -4,7 +4,8 @@ import { modulusAt } from '../physics/modulus-at';
 import { clampedPlate, ringCollapseMPa } from '../physics/plates';
 import type { EffectiveRecipe } from '../recipe';
 import type { HeatReport, WallsReport, WallsUnderPressureReport } from '../report';
-import { CREEP, hottestC, MPA_PER_BAR, overInfill, POISSON } from './estimate-skin';
+import { hottestC } from './estimate-heat';
+import { CREEP, MPA_PER_BAR, overInfill, POISSON } from './estimate-skin';
 
 /** Printed walls are never ideal: share of the ideal buckling pressure (0.3 to 0.5: common practice, no source). */
 const KNOCK_DOWN = 0.4;

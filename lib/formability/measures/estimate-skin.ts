@@ -4,6 +4,7 @@ import { modulusAt } from '../physics/modulus-at';
 import { clampedDisc, clampedPlate, clampedStrip, type Plate, type PlateAnswer } from '../physics/plates';
 import type { EffectiveRecipe } from '../recipe';
 import type { HeatReport, SkinReport } from '../report';
+import { hottestC } from './estimate-heat';
 
 /** Creep under minutes of load in warmth: modulus divided by 3 (2 to 5: common practice, no source). */
 export const CREEP = 3;
@@ -31,11 +32,6 @@ export function overInfill(
     case 'gyroid':
       return clampedDisc(plate, spanMm / 2);
   }
-}
-
-/** Hottest surface of the planned pulls, °C. */
-export function hottestC(heat: HeatReport): number {
-  return heat.peakC.reduce((most, peak) => Math.max(most, peak), heat.contactC);
 }
 
 /** How far the top sinks between the lines of the infill under forming pressure, at the hottest pull. */

@@ -35,8 +35,13 @@ export function measureLayers(facets: Facets, layerMm: number, grooveMm: number)
     cuspMaxMm: layerMm * most,
     cuspMedianMm: layerMm * within,
     treadMinMm: total > 0 ? layerMm * Math.tan(Math.asin(least)) : 0,
-    layerDraftDeg: Math.atan(grooveMm / layerMm) * DEG,
+    layerDraftDeg: layerDraftDeg(layerMm, grooveMm),
   };
+}
+
+/** Draft at which a nub of the groove's depth clears the next bead, degrees. */
+export function layerDraftDeg(layerMm: number, grooveMm: number): number {
+  return Math.atan(grooveMm / layerMm) * DEG;
 }
 
 /** The exact area-weighted median of n_z inside its bucket. */

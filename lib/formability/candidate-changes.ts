@@ -1,8 +1,8 @@
-import { FILAMENT_IDS, FILAMENTS } from '../materials/filaments';
-import type { EffectiveRecipe, RecipeInput } from '../recipe';
-import type { CheckId, CheckStatus, Report } from '../report';
-import { estimateHeat } from './estimate-heat';
-import { hottestC } from './estimate-skin';
+import { roundUp, say } from './checks/basis';
+import { FILAMENTS } from './materials/filaments';
+import { filamentsThatHold } from './measures/estimate-heat';
+import type { EffectiveRecipe, RecipeInput } from './recipe';
+import type { CheckId, CheckStatus, Report } from './report';
 
 export interface Candidate {
   change: RecipeInput;
@@ -46,7 +46,7 @@ function forHeat(recipe: EffectiveRecipe, { heat }: Known): Candidate[] {
   if (heat.cycleThatHoldsS !== null && heat.cycleThatHoldsS > recipe.run.cycleS)
     found.push({
       change: { run: { cycleS: heat.cycleThatHoldsS } },
-      text: `Take ${heat.cycleThatHoldsS} s a pull instead of ${figure(recipe.run.cycleS)} s.`,
+      text: `Take ${heat.cycleThatHoldsS} s a pull instead of ${say(recipe.run.cycleS, 2)} s.`,
     });
   const pulls = Math.floor(heat.pullsBeforeRest);
   if (pulls > 0 && pulls < recipe.run.pulls)
@@ -54,12 +54,8 @@ function forHeat(recipe: EffectiveRecipe, { heat }: Known): Candidate[] {
       change: { run: { pulls } },
       text: `Let it cool after every ${pulls} ${pulls === 1 ? 'pull' : 'pulls'}.`,
     });
-  for (const id of FILAMENT_IDS) {
-    if (id === recipe.print.material || id === 'resin-ht') continue;
-    const again = estimateHeat({ ...recipe, print: { ...recipe.print, material: id } });
-    if (hottestC(again) > again.limitC) continue;
+  for (const { id } of filamentsThatHold(recipe, 0))
     found.push({ change: { print: { material: id } }, text: `Print it in ${FILAMENTS[id].name}.` });
-  }
   return found;
 }
 
@@ -67,29 +63,29 @@ function forStiffness(recipe: EffectiveRecipe, { skin, wallsUnderPressure }: Kno
   const { print, limits } = recipe;
   const found: Candidate[] = [];
   const top = Math.max(skin?.topThatHoldsMm ?? 0, limits.shellMinMm);
-  const topMm = tenthUp(top);
+  const topMm = roundUp(top, 0.1);
   if (topMm > print.topMm && topMm <= 4 * print.topMm)
     found.push({
       change: { print: { topMm } },
-      text: `Print a top of ${figure(topMm)} mm instead of ${figure(print.topMm)} mm.`,
+      text: `Print a top of ${say(topMm, 2)} mm instead of ${say(print.topMm, 2)} mm.`,
     });
   const infill = Math.ceil(skin?.infillThatHoldsPercent ?? 0);
   if (infill > print.infillPercent && infill <= 100)
     found.push({
       change: { print: { infillPercent: infill } },
-      text: `Fill it to ${infill} % instead of ${figure(print.infillPercent)} %.`,
+      text: `Fill it to ${infill} % instead of ${say(print.infillPercent, 2)} %.`,
     });
   if (print.infillPercent < 25)
     found.push({
       change: { print: { infillPercent: 35 } },
-      text: `Fill it to 35 % instead of ${figure(print.infillPercent)} %.`,
+      text: `Fill it to 35 % instead of ${say(print.infillPercent, 2)} %.`,
     });
   for (const shellMm of [limits.shellMinMm, (limits.shellMinMm + limits.shellMaxMm) / 2, limits.shellMaxMm]) {
     if (shellMm === print.shellMm) continue;
     const evenTop = Math.max(print.topMm, shellMm);
     found.push({
       change: { print: { shellMm, ...(evenTop > print.topMm ? { topMm: evenTop } : {}) } },
-      text: `Print walls of ${figure(shellMm)} mm${evenTop > print.topMm ? ' and a top as thick' : ''}.`,
+      text: `Print walls of ${say(shellMm, 2)} mm${evenTop > print.topMm ? ' and a top as thick' : ''}.`,
     });
   }
   if (wallsUnderPressure?.empty && print.infillPercent === 0 && infill === 0)
@@ -106,19 +102,19 @@ function forLayers(recipe: EffectiveRecipe, { layers }: Known): Candidate[] {
     if (layerMm >= 0.04 && layerMm !== print.layerMm && layerMm <= 0.8 * print.nozzleMm)
       found.push({
         change: { print: { layerMm } },
-        text: `Print in layers of ${figure(layerMm)} mm instead of ${figure(print.layerMm)} mm.`,
+        text: `Print in layers of ${say(layerMm, 2)} mm instead of ${say(print.layerMm, 2)} mm.`,
       });
   return found;
 }
 
 function forGauge({ sheet }: EffectiveRecipe, { plan }: Known, provenMm: number | null): Candidate[] {
-  const gaugeMm = Math.ceil(sheet.minFormedMm * plan.arealDrawRatio * 20 - 1e-9) / 20;
+  const gaugeMm = roundUp(sheet.minFormedMm * plan.arealDrawRatio, 0.05);
   return [provenMm ?? gaugeMm, gaugeMm, 1.25 * sheet.gaugeMm, 1.5 * sheet.gaugeMm]
     .map((wanted) => Math.round(wanted * 20) / 20)
     .filter((wanted, k, all) => wanted > sheet.gaugeMm && all.indexOf(wanted) === k)
     .map((wanted) => ({
       change: { sheet: { gaugeMm: wanted } },
-      text: `Take a sheet of ${figure(wanted)} mm instead of ${figure(sheet.gaugeMm)} mm.`,
+      text: `Take a sheet of ${say(wanted, 2)} mm instead of ${say(sheet.gaugeMm, 2)} mm.`,
     }));
 }
 
@@ -126,15 +122,7 @@ function forNozzle({ print }: EffectiveRecipe): Candidate[] {
   return NOZZLES.filter((nozzleMm) => nozzleMm !== print.nozzleMm && print.layerMm <= 0.8 * nozzleMm).map(
     (nozzleMm) => ({
       change: { print: { nozzleMm } },
-      text: `Take a nozzle of ${figure(nozzleMm)} mm instead of ${figure(print.nozzleMm)} mm.`,
+      text: `Take a nozzle of ${say(nozzleMm, 2)} mm instead of ${say(print.nozzleMm, 2)} mm.`,
     }),
   );
-}
-
-function tenthUp(mm: number): number {
-  return Math.ceil(mm * 10 - 1e-9) / 10;
-}
-
-function figure(value: number): string {
-  return String(Number(value.toFixed(2)));
 }
