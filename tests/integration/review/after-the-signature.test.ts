@@ -21,6 +21,7 @@ import {
   sign,
 } from '@/tests/support/factory';
 import { makeHouse, type House } from '@/tests/support/make-house';
+import { refusedIn } from '@/tests/support/refused';
 
 let database: FreshDatabase;
 let house: House;
@@ -40,11 +41,7 @@ beforeEach(async () => {
   ]);
 });
 
-async function refused(run: () => Promise<unknown>, expected: Record<string, unknown>): Promise<void> {
-  const before = await fingerprint(database, house.workspace.id);
-  await expect(run()).rejects.toMatchObject(expected);
-  expect(await fingerprint(database, house.workspace.id)).toBe(before);
-}
+const refused = refusedIn(() => ({ database, house }));
 
 describe('returning and withdrawing', () => {
   it('returns with a reason: gates close, everybody else is told, the name stays', async () => {

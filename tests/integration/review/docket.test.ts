@@ -15,7 +15,6 @@ import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import {
   approved,
   entries,
-  fingerprint,
   mailsOf,
   newTemplate,
   note,
@@ -24,6 +23,7 @@ import {
   sign,
 } from '@/tests/support/factory';
 import { makeHouse, type House } from '@/tests/support/make-house';
+import { refusedIn } from '@/tests/support/refused';
 import { createWorkspace } from '@/lib/workspaces/create-workspace';
 
 let database: FreshDatabase;
@@ -46,11 +46,7 @@ beforeEach(async () => {
   ]);
 });
 
-async function refused(run: () => Promise<unknown>, expected: Record<string, unknown>): Promise<void> {
-  const before = await fingerprint(database, house.workspace.id);
-  await expect(run()).rejects.toMatchObject(expected);
-  expect(await fingerprint(database, house.workspace.id)).toBe(before);
-}
+const refused = refusedIn(() => ({ database, house }));
 
 const mailsFor = async (revisionId: string, text: string) => {
   const all = await mailsOf(database, house.workspace.id, 'note-posted');

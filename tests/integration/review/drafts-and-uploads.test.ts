@@ -18,6 +18,7 @@ import { store } from '@/lib/storage/store';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import { blockStl, entries, fingerprint, newTemplate, sendMesh, takeJob } from '@/tests/support/factory';
 import { makeHouse, type House } from '@/tests/support/make-house';
+import { refusedIn } from '@/tests/support/refused';
 
 let database: FreshDatabase;
 let house: House;
@@ -32,11 +33,7 @@ beforeEach(async () => {
   [designer, lead] = await Promise.all([house.enter('designer'), house.enter('lead')]);
 });
 
-async function refused(run: () => Promise<unknown>, expected: Record<string, unknown>): Promise<void> {
-  const before = await fingerprint(database, house.workspace.id);
-  await expect(run()).rejects.toMatchObject(expected);
-  expect(await fingerprint(database, house.workspace.id)).toBe(before);
-}
+const refused = refusedIn(() => ({ database, house }));
 
 describe('drafts', () => {
   it('begin with the studio’s library and its defaults', async () => {

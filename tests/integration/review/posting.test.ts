@@ -35,6 +35,7 @@ import {
   takeJob,
 } from '@/tests/support/factory';
 import { joinStudio, makeHouse, type House } from '@/tests/support/make-house';
+import { refusedIn } from '@/tests/support/refused';
 
 let database: FreshDatabase;
 let house: House;
@@ -49,11 +50,7 @@ beforeEach(async () => {
   [designer, lead] = await Promise.all([house.enter('designer'), house.enter('lead')]);
 });
 
-async function refused(run: () => Promise<unknown>, expected: Record<string, unknown>): Promise<void> {
-  const before = await fingerprint(database, house.workspace.id);
-  await expect(run()).rejects.toMatchObject(expected);
-  expect(await fingerprint(database, house.workspace.id)).toBe(before);
-}
+const refused = refusedIn(() => ({ database, house }));
 
 describe('posting', () => {
   it('freezes mesh and recipe, lays out the gates, queues the check and tells the rest of the studio', async () => {

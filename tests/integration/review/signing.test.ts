@@ -21,7 +21,6 @@ import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
 import {
   approved,
   entries,
-  fingerprint,
   gateOf,
   mailsOf,
   note,
@@ -34,6 +33,7 @@ import {
   sign,
 } from '@/tests/support/factory';
 import { makeHouse, testPassword, type House } from '@/tests/support/make-house';
+import { refusedIn } from '@/tests/support/refused';
 
 let database: FreshDatabase;
 let house: House;
@@ -53,11 +53,7 @@ beforeEach(async () => {
   ]);
 });
 
-async function refused(run: () => Promise<unknown>, expected: Record<string, unknown>): Promise<void> {
-  const before = await fingerprint(database, house.workspace.id);
-  await expect(run()).rejects.toMatchObject(expected);
-  expect(await fingerprint(database, house.workspace.id)).toBe(before);
-}
+const refused = refusedIn(() => ({ database, house }));
 
 describe('signing', () => {
   it('records name, role, meaning, time, zone and digest, and tells who is next', async () => {

@@ -5,8 +5,9 @@ import { createTemplate } from '@/lib/review/create-template';
 import { viewTemplate } from '@/lib/review/view-template';
 import { dayIn } from '@/lib/time/day-in';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
-import { entries, fingerprint } from '@/tests/support/factory';
+import { entries } from '@/tests/support/factory';
 import { makeHouse, type House } from '@/tests/support/make-house';
+import { refusedIn } from '@/tests/support/refused';
 
 let database: FreshDatabase;
 let house: House;
@@ -21,11 +22,7 @@ beforeEach(async () => {
   [designer, lead] = await Promise.all([house.enter('designer'), house.enter('lead')]);
 });
 
-async function refused(run: () => Promise<unknown>, expected: Record<string, unknown>): Promise<void> {
-  const before = await fingerprint(database, house.workspace.id);
-  await expect(run()).rejects.toMatchObject(expected);
-  expect(await fingerprint(database, house.workspace.id)).toBe(before);
-}
+const refused = refusedIn(() => ({ database, house }));
 
 describe('templates', () => {
   it('carry the workspace’s code and the next serial, and are on the chain', async () => {
