@@ -209,8 +209,9 @@ function Verify({ model }: { model: CertificateModel }) {
       <Text>
         In the unpacked folder run <Text style={styles.figures}>sha256sum -c SHA256SUMS</Text>: every line
         must say OK. Then <Text style={styles.figures}>sha256sum content.json</Text> must give the content
-        digest on sheet 1, and content.json names the sum of {drawable(model.meshFileInPack)}. README.txt says
-        the same at length.
+        digest on sheet 1, and content.json names the sum of {drawable(model.meshFileInPack)}. With Node.js,{' '}
+        <Text style={styles.figures}>node check-pack.mjs</Text> does all of it and names whatever was changed.
+        README.txt says the same at length.
       </Text>
     </View>
   );

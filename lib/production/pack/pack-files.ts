@@ -1,3 +1,4 @@
+import { readFile } from 'node:fs/promises';
 import { canonical, sha256 } from '@/lib/audit/canonical';
 import type { Agreed } from '@/lib/review/load-agreed';
 import { nameByFormat } from '@/lib/review/mesh-format';
@@ -29,6 +30,7 @@ export async function packFiles(model: CertificateModel): Promise<PackFile[]> {
     file('report.json', readable(agreed.report.body)),
     file('docket.json', readable(agreed.lock.docket)),
     file('certificate.pdf', await renderCertificate(model)),
+    file('check-pack.mjs', await readFile(new URL('check-pack.mjs', import.meta.url))),
   ];
   return [
     ...files,

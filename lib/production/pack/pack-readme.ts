@@ -9,6 +9,7 @@ const what: Record<string, string> = {
   'report.json': 'the engine’s whole report on exactly this mesh and recipe',
   'docket.json': 'all findings, waivers, threads and notes as they stood when the revision was locked',
   'certificate.pdf': 'the same for reading and printing',
+  'check-pack.mjs': 'a small script that does all the checks below; read it first, then run it',
 };
 
 /** README.txt of a pack: what is in it, how to check it, and the cautions. Names are cut free of line breaks. */
@@ -31,6 +32,12 @@ ${names.map((name) => entry(name, what[name] ?? 'the content of an earlier signa
 ${entry('SHA256SUMS', 'the SHA-256 of every file above')}
 
 TO CHECK IT (no account and no network needed)
+
+With Node.js 18 or later, unpack, open a terminal in the folder, and run
+
+     node check-pack.mjs ${lock.contentDigest}
+
+It names every file that is not as it was agreed. Without it, by hand:
 
 1. Unpack, open a terminal in the folder, and run
 
@@ -57,6 +64,10 @@ TO CHECK IT (no account and no network needed)
 
    and so must the sum of the mesh file. signatures.json gives for each
    signature the digest it stands on and the file that has this digest.
+
+The digest proves what was agreed. Who signed, when and with what meaning is
+proven by the audit chain of the workspace: ask the studio to verify it where
+a name or a time is in doubt.
 
 BEFORE ANYONE ACTS ON IT
 

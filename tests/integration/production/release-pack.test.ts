@@ -87,6 +87,7 @@ describe('the release pack', () => {
         'SHA256SUMS',
         fileName,
         'certificate.pdf',
+        'check-pack.mjs',
         'content.json',
         'docket.json',
         'recipe.json',
@@ -120,6 +121,86 @@ describe('the release pack', () => {
         contentDigest: signatures.contentDigest,
         content: 'content.json',
       });
+  });
+
+  it('checks itself with the script inside, and names whatever was changed', async () => {
+    const { contentDigest } = JSON.parse(await readFile(path.join(folder, 'signatures.json'), 'utf8'));
+    const check = (...given: string[]) =>
+      run(process.execPath, [path.join(folder, 'check-pack.mjs'), ...given], { cwd: tmpdir() }).then(
+        ({ stdout }) => ({ code: 0, stdout }),
+        ({ code, stdout }: { code: number; stdout: string }) => ({ code, stdout }),
+      );
+    const whole = await check(contentDigest);
+    expect(whole).toEqual({
+      code: 0,
+      stdout: expect.stringContaining(`All 9 files are as they were packed.`),
+    });
+    expect(whole.stdout).toContain(contentDigest);
+    expect((await check('0'.repeat(64))).stdout).toContain('not the one that you were handed');
+
+    const kept = async (name: string) => ({ name, bytes: await readFile(path.join(folder, name)) });
+    const restore = ({ name, bytes }: { name: string; bytes: Buffer }) =>
+      writeFile(path.join(folder, name), bytes);
+    const sums = await kept('SHA256SUMS');
+    const names = sums.bytes
+      .toString()
+      .trim()
+      .split('\n')
+      .map((line) => line.slice(66));
+    for (const name of names) {
+      const file = await kept(name);
+      const changed = Buffer.from(file.bytes);
+      // The script itself gets a line more: with a byte flipped it might not run at all.
+      if (name === 'check-pack.mjs')
+        await restore({ name, bytes: Buffer.concat([changed, Buffer.from('\n')]) });
+      else {
+        changed[changed.length >> 1] ^= 1;
+        await restore({ name, bytes: changed });
+      }
+      const found = await check();
+      expect(found, name).toMatchObject({ code: 1, stdout: expect.stringContaining(`${name}: was changed`) });
+      if (name !== 'check-pack.mjs') {
+        await rm(path.join(folder, name));
+        expect((await check()).stdout).toContain(`${name}: is missing`);
+      }
+      await restore(file);
+    }
+
+    // Somebody who also makes the sums anew is found by the signed digest.
+    const forge = async (name: string, change: (text: string) => string) => {
+      const file = await kept(name);
+      const text = change(file.bytes.toString());
+      expect(text).not.toBe(file.bytes.toString());
+      await restore({ name, bytes: Buffer.from(text) });
+      await restore({
+        name: 'SHA256SUMS',
+        bytes: Buffer.from(sums.bytes.toString().replace(sha256(file.bytes), sha256(text))),
+      });
+      const found = await check(contentDigest);
+      await restore(file);
+      await restore(sums);
+      return found;
+    };
+    const not = (name: string) => ({
+      code: 1,
+      stdout: expect.stringContaining(`${name}: is not what was signed`),
+    });
+    expect(await forge('docket.json', (text) => text.replace('"status": "', '"status": "not '))).toEqual(
+      not('docket.json'),
+    );
+    expect(await forge('report.json', (text) => text.replace('"measured": ', '"measured": 1'))).toEqual(
+      not('report.json'),
+    );
+    expect(await forge('recipe.json', (text) => text.replace('"gaugeMm": ', '"gaugeMm": 1'))).toEqual(
+      not('recipe.json'),
+    );
+    expect(
+      (await forge('content.json', (text) => text.replace('"fileName"', '"fileNam3"'))).stdout,
+    ).toContain('content.json: is not what');
+    await writeFile(path.join(folder, 'extra.stl'), 'solid');
+    expect((await check()).stdout).toContain('extra.stl: does not belong to the pack');
+    await rm(path.join(folder, 'extra.stl'));
+    expect((await check()).code).toBe(0);
   });
 
   it('holds a certificate that names signers, meanings, times with zone and digest, and the cautions', async () => {
