@@ -1,4 +1,7 @@
+import { sql } from 'drizzle-orm';
 import {
+  check,
+  date,
   foreignKey,
   index,
   integer,
@@ -10,10 +13,10 @@ import {
   uuid,
 } from 'drizzle-orm/pg-core';
 import { createdAt, id, instant, printedName, version, workspaceId } from '../columns';
-import { workspacePolicy } from '../policies';
+import { relayPolicy, workspacePolicy } from '../policies';
 import { users } from './identity';
 import { revisions } from './templates';
-import type { GateRule } from './workspaces';
+import { workspaces, type GateRule } from './workspaces';
 
 /** The gates of one revision, in order, under the plan that it was posted with. */
 export const gates = pgTable(
@@ -29,6 +32,8 @@ export const gates = pgTable(
       .default('waiting'),
     openedAt: instant('opened_at'),
     passedAt: instant('passed_at'),
+    /** Last day for signing, in the workspace's zone; set when the gate opens. */
+    dueOn: date('due_on', { mode: 'string' }),
     version: version(),
   },
   (t) => [
@@ -38,7 +43,11 @@ export const gates = pgTable(
       columns: [t.workspaceId, t.revisionId],
       foreignColumns: [revisions.workspaceId, revisions.id],
     }),
+    index('gates_open')
+      .on(t.workspaceId)
+      .where(sql`state = 'open'`),
     workspacePolicy('gates'),
+    relayPolicy('gates'),
   ],
 );
 
@@ -62,9 +71,13 @@ export const signatures = pgTable(
     method: text('method').notNull(),
     signedAt: instant('signed_at').notNull(),
     timeZone: text('time_zone').notNull(),
+    /** Whom the signer stood in for at this gate, with the name as it was then. */
+    signedForId: uuid('signed_for_id').references(() => users.id),
+    signedForName: text('signed_for_name'),
   },
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
+    check('signatures_for_another', sql`signed_for_id <> signer_id`),
     unique('signatures_once').on(t.workspaceId, t.gateId, t.signerId),
     index('signatures_revision').on(t.workspaceId, t.revisionId),
     foreignKey({
@@ -73,6 +86,33 @@ export const signatures = pgTable(
     }),
     foreignKey({ columns: [t.workspaceId, t.gateId], foreignColumns: [gates.workspaceId, gates.id] }),
     workspacePolicy('signatures'),
+  ],
+);
+
+/** Who signs for whom, from the first day to the last in the workspace's zone. Ended early, it stays to be seen. */
+export const standIns = pgTable(
+  'stand_ins',
+  {
+    id: id(),
+    workspaceId: workspaceId().references(() => workspaces.id),
+    /** Who is away. */
+    personId: uuid('person_id')
+      .notNull()
+      .references(() => users.id),
+    standInId: uuid('stand_in_id')
+      .notNull()
+      .references(() => users.id),
+    fromOn: date('from_on', { mode: 'string' }).notNull(),
+    untilOn: date('until_on', { mode: 'string' }).notNull(),
+    createdAt: createdAt(),
+    endedAt: instant('ended_at'),
+  },
+  (t) => [
+    primaryKey({ columns: [t.workspaceId, t.id] }),
+    index('stand_ins_until').on(t.workspaceId, t.untilOn),
+    check('stand_ins_span', sql`from_on <= until_on`),
+    check('stand_ins_other', sql`person_id <> stand_in_id`),
+    workspacePolicy('stand_ins'),
   ],
 );
 

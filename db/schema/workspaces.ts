@@ -166,16 +166,25 @@ export const studioInvitations = pgTable(
   ],
 );
 
+/** What an automatic gate waits for: no failing finding open; no open item of the docket that must be settled. */
+export type GateCondition = 'checks-pass' | 'docket-settled';
+
 export type GateRule = {
   key: string;
   name: string;
   kind: 'automatic' | 'people';
-  /** Roles that may sign; empty for an automatic gate. */
+  /** Of an automatic gate; plans from before it could be chosen have none, and wait for the checks. */
+  conditions?: GateCondition[];
+  /** Roles that may sign; empty for an automatic gate and where people are named. */
   roles: string[];
-  /** How many signatures close the gate. */
-  quorum: number;
+  /** Ids of the people who may sign, whatever the roles say; empty or missing: the roles decide. */
+  people?: string[];
+  /** How many signatures close the gate, or everybody who may sign. */
+  quorum: number | 'all';
   /** The author of the revision never signs. */
   fourEyes: boolean;
+  /** Days after it opens by which it is to be signed. */
+  dueDays?: number | null;
   /** The words that a signer puts their name to. */
   meaning: string;
 };

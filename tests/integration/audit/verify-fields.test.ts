@@ -114,6 +114,7 @@ const another: Record<string, string> = {
   'double precision': 'coalesce(c, 0) + 1000',
   boolean: 'not c',
   uuid: 'gen_random_uuid()',
+  date: 'coalesce(c, current_date) + 1',
   'timestamp with time zone': "coalesce(c, now()) + interval '1 second'",
   jsonb:
     "case jsonb_typeof(c) when 'array' then c || '[1]'::jsonb when 'object' then c || '{\"added\": 1}'::jsonb else '{\"added\": 1}'::jsonb end",
