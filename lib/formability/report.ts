@@ -199,6 +199,14 @@ export interface WallsReport {
   openAtBed: boolean;
 }
 
+/** The finest solid and the finest air between two walls, measured level; null where there is none. */
+export interface DetailReport {
+  smallestFeatureMm: number | null;
+  smallestFeatureAt: Point | null;
+  smallestGapMm: number | null;
+  smallestGapAt: Point | null;
+}
+
 export interface EdgesReport {
   sharpConvexMm: number;
   sharpConcaveMm: number;
@@ -390,6 +398,7 @@ export interface Report {
   vents: Vent[];
   spacing: Spacing[];
   walls: WallsReport;
+  detail: DetailReport;
   edges: EdgesReport;
   sheet: SheetReport | null;
   layers: LayersReport;

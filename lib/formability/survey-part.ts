@@ -10,6 +10,7 @@ import { findSpacing } from './measures/find-spacing';
 import { findUndercuts, type Undercuts } from './measures/find-undercuts';
 import type { Flood } from './measures/map-pockets';
 import { findVents, type Vents } from './measures/find-vents';
+import { measureDetails } from './measures/measure-details';
 import { measureDraft } from './measures/measure-draft';
 import { measureWalls, type Walls } from './measures/measure-walls';
 import { refineDepth } from './measures/refine-depth';
@@ -18,7 +19,7 @@ import type { Facets } from './mesh/measure-facets';
 import { prepareMesh, type Prepared } from './mesh/prepare-mesh';
 import type { RawMesh } from './parse/raw-mesh';
 import { MM_PER_UNIT, type EffectiveRecipe } from './recipe';
-import type { AirTrap, Point, Spacing } from './report';
+import type { AirTrap, DetailReport, Point, Spacing } from './report';
 import type { Stages } from './stages';
 
 /** Everything that the report is written from, in the mesh's own frame. */
@@ -35,6 +36,7 @@ export interface Part {
   visibility: Visibility;
   draft: ReturnType<typeof measureDraft>;
   walls: Walls;
+  detail: DetailReport;
   /** Width, depth, height above the bed. */
   size: Point;
 }
@@ -81,9 +83,11 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     visibility: findVisibility(mesh, facets, columns, air, perFacet),
     draft: measureDraft(facets),
   }));
-  const walls = stages.run('walls', () =>
-    measureWalls(mesh, facets, facetGrid, columns, air, visibility, holes.bore),
-  );
+  const { walls, detail } = stages.run('walls', () => {
+    const walls = measureWalls(mesh, facets, facetGrid, columns, air, visibility, holes.bore);
+    const detail = measureDetails(mesh, facets, facetGrid, visibility, holes.bore, walls.sampled);
+    return { walls, detail };
+  });
   return {
     prepared,
     facets,
@@ -97,6 +101,7 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     visibility,
     draft,
     walls,
+    detail,
     size,
   };
 }

@@ -43,6 +43,7 @@ export function writeSections(
     limits.edgeRadiusGauges * recipe.sheet.gaugeMm,
   );
   const walls = part.walls.report;
+  const { detail } = part;
   const margin = 2 * machine.frameMarginMm;
   return {
     mesh: meshReport,
@@ -75,6 +76,11 @@ export function writeSections(
       between: [here(pair.between[0]), here(pair.between[1])],
     })),
     walls: { ...walls, minAt: walls.minAt && here(walls.minAt) },
+    detail: {
+      ...detail,
+      smallestFeatureAt: detail.smallestFeatureAt && here(detail.smallestFeatureAt),
+      smallestGapAt: detail.smallestGapAt && here(detail.smallestGapAt),
+    },
     edges: { ...found, places: found.places.map((place) => ({ ...place, at: here(place.at) })) },
     layers: measureLayers(facets, print.layerMm, limits.layerGrooveMm),
     print: estimatePrint(

@@ -1,46 +1,98 @@
-import type { Check } from '../report';
-import { say } from './basis';
+import type { Check, Point } from '../report';
+import { roundUp, say, sayPlace } from './basis';
 import type { CheckInput } from './check-input';
 
 const STANDARD = 0.4;
 const SIZES = [0.2, 0.25, 0.3, 0.4, 0.5, 0.6, 0.8, 1];
-/** Lines that the thinnest wall needs side by side. */
-const LINES = 2;
-const LINE_PER_NOZZLE = 1.125;
+/** Lines that the thinnest solid needs side by side, and that the narrowest gap must be wide to stay open. */
+const LINES = { feature: 2, gap: 1 };
+/** Finer than this over a large template takes very long. */
+const FINE = 0.3;
+/** What float32 corners round away, mm. */
+const ROUNDING = 1e-3;
 
-/** Does the nozzle suit the size and the finest detail (thinnest wall, narrowest gap)? */
+interface Detail {
+  kind: keyof typeof LINES;
+  mm: number;
+  at: Point | null;
+}
+
+/** Does the nozzle suit the size and the finest detail (thinnest solid, narrowest gap)? */
 export function checkNozzle({ recipe, report, sizeMm }: CheckInput): Check {
   const { limits, print } = recipe;
   const long = Math.max(sizeMm[0], sizeMm[1]);
-  const gaps = report.spacing.map((pair) => pair.gapAtBedMm).filter((gap) => gap > 0);
-  const finest = Math.min(report.walls.minMm ?? Infinity, ...gaps);
-  const byDetail = finest / (LINES * LINE_PER_NOZZLE);
-  const bySize = long >= limits.largeTemplateMm ? 0.6 : long <= limits.smallTemplateMm ? STANDARD : 0.5;
+  const large = long >= limits.largeTemplateMm;
+  const perNozzle = print.lineMm / print.nozzleMm;
+  const widest = ({ kind, mm }: Detail) => mm / (LINES[kind] * perNozzle);
+  const [detail] = detailsOf(report).sort((a, b) => widest(a) - widest(b));
+  const byDetail = detail ? widest(detail) : Infinity;
+  const bySize = large ? 0.6 : long <= limits.smallTemplateMm ? STANDARD : 0.5;
   const most = Math.min(byDetail, bySize);
-  const suited = [...SIZES].reverse().find((size) => size <= most + 1e-9) ?? SIZES[0];
-  const coarse = print.nozzleMm > most + 1e-9;
-  const slow = long >= limits.largeTemplateMm && print.nozzleMm < 0.3;
-  const detail = Number.isFinite(finest) ? ` and a finest detail of ${say(finest, 2)} mm` : '';
+  const suited = largestUpTo(most);
+  const coarse = print.nozzleMm > most + ROUNDING;
+  const usual = largestUpTo(Math.min(byDetail, STANDARD));
+  const slow = large && print.nozzleMm < FINE && usual > print.nozzleMm;
+  const told = detail ? ` and a finest detail of ${describe(detail)}` : '';
+  const nozzle = `A ${say(print.nozzleMm, 2)} mm nozzle`;
   return {
     id: 'nozzle',
     status: coarse || slow ? 'caution' : 'pass',
     measured: print.nozzleMm,
-    limit: slow ? STANDARD : Number(most.toFixed(3)),
+    limit: slow && !coarse ? usual : Number(most.toFixed(3)),
     unit: 'mm',
     basis: {
-      source: 'common practice, no source: 0.4 mm as the standard, smaller for small precise templates, larger for large simple ones; two lines to the thinnest wall', // prettier-ignore
+      source: 'common practice, no source: 0.4 mm as the standard, smaller for small precise templates, larger for large simple ones; two lines to the thinnest solid, one to the narrowest gap', // prettier-ignore
       kind: 'common practice',
     },
     message: coarse
-      ? `A ${say(print.nozzleMm, 2)} mm nozzle is too wide for ${say(long, 0)} mm of length${detail}.`
+      ? `${nozzle} is too wide for ${say(long, 0)} mm of length${told}.`
       : slow
-        ? `A ${say(print.nozzleMm, 2)} mm nozzle will take very long over ${say(long, 0)} mm of length.`
-        : `A ${say(print.nozzleMm, 2)} mm nozzle suits ${say(long, 0)} mm of length${detail}.`,
+        ? `${nozzle} will take very long over ${say(long, 0)} mm of length.`
+        : `${nozzle} suits ${say(long, 0)} mm of length${told}.${suited > print.nozzleMm ? ` Up to ${say(suited, 2)} mm would do, and print faster.` : ''}`,
     remedy: coarse
-      ? `Use a ${say(suited, 2)} mm nozzle.`
+      ? remedyFor(
+          byDetail < bySize ? detail : null,
+          suited,
+          suited <= most + ROUNDING,
+          print.nozzleMm,
+          perNozzle,
+        )
       : slow
-        ? `Use a ${say(STANDARD, 2)} mm nozzle.`
+        ? `Use a ${say(usual, 2)} mm nozzle.`
         : '',
-    places: [],
+    places: coarse && byDetail < bySize && detail.at ? [{ at: detail.at, areaMm2: 0 }] : [],
   };
+}
+
+function detailsOf({ detail }: CheckInput['report']): Detail[] {
+  const { smallestFeatureMm, smallestFeatureAt, smallestGapMm, smallestGapAt } = detail;
+  const all: Detail[] = [];
+  if (smallestFeatureMm !== null) all.push({ kind: 'feature', mm: smallestFeatureMm, at: smallestFeatureAt });
+  if (smallestGapMm !== null) all.push({ kind: 'gap', mm: smallestGapMm, at: smallestGapAt });
+  return all;
+}
+
+function largestUpTo(most: number): number {
+  return [...SIZES].reverse().find((size) => size <= most + ROUNDING) ?? SIZES[0];
+}
+
+function describe({ kind, mm }: Detail): string {
+  return `${say(mm, 2)} mm (${kind === 'gap' ? 'a gap' : 'solid'})`;
+}
+
+/** A finer nozzle, or a wider detail; where no nozzle is fine enough, both. */
+function remedyFor(
+  detail: Detail | null,
+  suited: number,
+  isFine: boolean,
+  nozzle: number,
+  perNozzle: number,
+): string {
+  if (!detail) return `Use a ${say(suited, 2)} mm nozzle.`;
+  const where = detail.at ? ` at ${sayPlace(detail.at)}` : '';
+  const what = detail.kind === 'gap' ? 'gap' : 'detail';
+  const wide = (size: number) => say(roundUp(LINES[detail.kind] * perNozzle * size, 0.05), 2);
+  return isFine
+    ? `Use a ${say(suited, 2)} mm nozzle, or widen the ${what}${where} to ${wide(nozzle)} mm.`
+    : `No nozzle is fine enough: widen the ${what}${where} to ${wide(suited)} mm and use a ${say(suited, 2)} mm nozzle, or to ${wide(nozzle)} mm with this one.`; // prettier-ignore
 }

@@ -28,6 +28,8 @@ export interface Walls {
   report: WallsReport;
   /** Normal wall thickness of each facet that the sheet meets, mm; NaN elsewhere and where nothing bounds it. */
   ofFacet: Float32Array;
+  /** Facets that rays were cast from, spread evenly over what the sheet meets. */
+  sampled: Int32Array;
 }
 
 interface Measured extends Sample {
@@ -81,6 +83,7 @@ export function measureWalls(
       ...hollow,
     },
     ofFacet: mapThickness(all, ofFacet),
+    sampled: Int32Array.from(all, (sample) => sample.facet),
   };
 }
 

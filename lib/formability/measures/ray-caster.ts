@@ -12,7 +12,7 @@ const START_MM = 1e-6;
 const MOST_CROSSINGS = 200;
 const MOST_LOOKS = 20_000_000;
 
-/** Rays inside the solid, answered without allocation. */
+/** Rays inside the solid, or through the air outside it, answered without allocation. */
 export class RayCaster {
   /** Facet through which the last ray left, or −1. */
   exit = -1;
@@ -31,6 +31,25 @@ export class RayCaster {
   ) {}
 
   /**
+   * How far a ray goes through air before it enters solid.
+   * @param from facet on which the ray starts, not hit itself; −1 for none
+   * @returns length in mm; NaN where nothing is met, or where the ray leaves solid first: it began inside. `exit` is
+   * the facet first met, or −1
+   */
+  airAlong(
+    from: number,
+    x: number,
+    y: number,
+    z: number,
+    dx: number,
+    dy: number,
+    dz: number,
+    longest: number,
+  ): number {
+    return this.along(true, from, x, y, z, dx, dy, dz, longest);
+  }
+
+  /**
    * How far a ray stays inside the solid. It starts inside (winding number 1); bodies that overlap or touch count as
    * one, so it goes on until the winding number falls to 0 for good.
    * @param from facet on which the ray starts, not hit itself
@@ -39,6 +58,20 @@ export class RayCaster {
    * @returns length in mm, or NaN where nothing ends it; `exit` is the facet that did
    */
   solidAlong(
+    from: number,
+    x: number,
+    y: number,
+    z: number,
+    dx: number,
+    dy: number,
+    dz: number,
+    longest: number,
+  ): number {
+    return this.along(false, from, x, y, z, dx, dy, dz, longest);
+  }
+
+  private along(
+    air: boolean,
     from: number,
     x: number,
     y: number,
@@ -79,6 +112,10 @@ export class RayCaster {
         const next = this.nearest();
         if (next < 0 || this.t[next] > reach) break;
         const t = this.t[next];
+        if (air) {
+          this.exit = this.facet[next];
+          return this.turn[next] > 0 ? t : NaN;
+        }
         if (winding <= 0 && t > left + TOUCH_MM) return left;
         if (this.turn[next] < 0) {
           winding--;
