@@ -22,6 +22,8 @@ const AROUND = [[NEAR, NEAR], [1 - 2 * NEAR, NEAR], [NEAR, 1 - 2 * NEAR], [0.5, 
 const MIDDLE = [1 / 3, 1 / 3];
 /** Details beyond this many times the finest found are not followed any more. */
 const STILL_FINE = 4;
+/** Facets that all rays together look at. */
+const MOST_LOOKS = 5e6;
 
 interface Found {
   facet: number;
@@ -48,7 +50,7 @@ export function measureDetails(
   sampled: Int32Array,
 ): DetailReport {
   const candidates = chooseWalls(facets, bore, sampled);
-  const caster = new RayCaster(mesh, grid);
+  const caster = new RayCaster(mesh, grid, MOST_LOOKS);
   const solids: Found[] = [];
   const gaps: Found[] = [];
   let [leastSolid, leastGap] = [Infinity, Infinity];

@@ -28,6 +28,7 @@ export class RayCaster {
   constructor(
     private readonly mesh: Mesh,
     private readonly grid: FacetGrid,
+    private readonly mostLooks = MOST_LOOKS,
   ) {}
 
   /**
@@ -106,7 +107,7 @@ export class RayCaster {
         if (list[at] !== from) this.hit(list[at], x, y, z, dx, dy, dz);
       }
       this.looks += start[c + 1] - start[c];
-      if (this.held > MOST_CROSSINGS || this.looks > MOST_LOOKS) return NaN;
+      if (this.held > MOST_CROSSINGS || this.looks > this.mostLooks) return NaN;
       const reach = Math.min(toX, toY, toZ);
       for (;;) {
         const next = this.nearest();

@@ -31,7 +31,8 @@ export interface Union {
  * @param moved positions in general position (perturb-mesh); the volumes themselves are taken from `position`
  * @param facets those that may cross others; the rest must not
  * @param groupOf where given, facets of one group do not cross
- * @returns null where the surface is not closed in the sense of winding, or crosses itself too often or at a vertex
+ * @returns null where the surface is not closed in the sense of winding, crosses itself too often or at a vertex, or has
+ * too many shells over one another
  */
 export function measureUnion(
   index: Uint32Array,
@@ -94,7 +95,7 @@ function findCuts(
   return sound ? cuts : null;
 }
 
-/** Winding just outside every facet at its corners; null where going round comes back with another number. */
+/** Winding just outside every facet at its corners; null where going round comes back with another number, or is not known. */
 function spreadWinding(
   index: Uint32Array,
   p: Float64Array,
@@ -132,6 +133,7 @@ function spreadWinding(
       }
     }
     const shift = probeWinding(index, p, cuts, probe, flattest, winding[3 * flattest]);
+    if (Number.isNaN(shift)) return null;
     for (let at = 0; at < end; at++) for (let k = 0; k < 3; k++) winding[3 * queue[at] + k] += shift;
   }
   return winding;

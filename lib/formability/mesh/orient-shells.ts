@@ -51,7 +51,7 @@ function turn(mesh: Mesh, shells: Shells, edges: Edges, flip: Set<number>): void
   }
 }
 
-/** Shells of which some outermost corner (lowest or highest along an axis) lies in no other shell. */
+/** Shells of which some outermost corner (lowest or highest along an axis) lies in no other shell; none where that is too much to ask. */
 function findOutermost(mesh: Mesh, shells: Shells): number[] {
   const { index, position: p } = mesh;
   const { ofFacet, count } = shells;
@@ -70,7 +70,9 @@ function findOutermost(mesh: Mesh, shells: Shells): number[] {
     const others = (facet: number) => ofFacet[facet] !== shell;
     for (let k = 0; k < 6; k++) {
       const v = 3 * extreme[6 * shell + k];
-      if (probe.windingAt(p[v], p[v + 1], p[v + 2], true, others) !== 0) continue;
+      const winding = probe.windingAt(p[v], p[v + 1], p[v + 2], true, others);
+      if (Number.isNaN(winding)) return [];
+      if (winding !== 0) continue;
       outermost.push(shell);
       break;
     }

@@ -2,6 +2,8 @@
 const BUCKETS = 0.7;
 /** Buckets that would hold more entries than this are made wider: facets that all reach far fill every bucket. */
 const MOST_ENTRIES = 2 ** 23;
+/** Facets looked at by all rays together, a second or two: many shells that all lie over one another want more. */
+const MOST_LOOKS = 2e7;
 
 /** Winding numbers at points, by signed crossings of a vertical ray with the facets of the bucket it runs through. */
 export class WindingProbe {
@@ -10,6 +12,7 @@ export class WindingProbe {
   private side: number;
   private readonly low: [number, number] = [Infinity, Infinity];
   private scale: [number, number];
+  private looks = 0;
 
   constructor(
     private readonly index: Uint32Array,
@@ -39,6 +42,7 @@ export class WindingProbe {
   }
 
   /**
+   * The winding number at a point, NaN once all rays together have looked at too many facets: then nobody knows.
    * @param counts which facets count
    * @param up ray along +Z, or along −Z
    */
@@ -46,6 +50,8 @@ export class WindingProbe {
     const { index, p, start, facets } = this;
     const bucket = this.cell(x, 0) + this.side * this.cell(y, 1);
     let winding = 0;
+    this.looks += start[bucket + 1] - start[bucket];
+    if (this.looks > MOST_LOOKS) return NaN;
     for (let f = start[bucket]; f < start[bucket + 1]; f++) {
       const t = facets[f];
       if (!counts(t)) continue;
