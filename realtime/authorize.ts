@@ -19,8 +19,11 @@ export function signChannel(
   });
 }
 
-/** Signs a socket in as a person; without it the server ends the socket (`enableUserAuthentication`). */
-export function signPerson(socketId: string, person: { id: string }): { auth: string; user_data: string } {
+/**
+ * Signs a socket in; without it the server ends the socket (`enableUserAuthentication`). The protocol's user is the
+ * session, so that one session's sockets can be ended; who is present is told by `signChannel`.
+ */
+export function signSession(socketId: string, sessionId: string): { auth: string; user_data: string } {
   if (!socketIdPattern.test(socketId)) throw new TypeError('not a socket id');
-  return pusher().authenticateUser(socketId, { id: person.id }) as { auth: string; user_data: string };
+  return pusher().authenticateUser(socketId, { id: sessionId }) as { auth: string; user_data: string };
 }

@@ -29,7 +29,7 @@ export async function publish(events: LivePayload[]): Promise<void> {
   }
 }
 
-/** Ends the open sockets of a person, e.g. when a membership ends; they must ask again for each channel. */
-export async function endSockets(personId: string): Promise<void> {
-  await pusher().terminateUserConnections(personId);
+/** Ends the open sockets of a session; whoever opens another must be signed in and asks again for each channel. */
+export async function endSockets(sessionId: string): Promise<void> {
+  await pusher().terminateUserConnections(sessionId);
 }

@@ -13,7 +13,8 @@ export const users = pgTable(
     emailVerified: boolean('email_verified').notNull().default(false),
     image: text('image'),
     units: text('units').notNull().default('mm'),
-    timeZone: text('time_zone').notNull().default('Europe/Lisbon'),
+    timeZone: text('time_zone').notNull().default('UTC'),
+    twoFactorEnabled: boolean('two_factor_enabled').notNull().default(false),
     createdAt: createdAt(),
     updatedAt: instant('updated_at')
       .notNull()
@@ -87,6 +88,29 @@ export const verifications = pgTable(
       .default(sql`clock_timestamp()`),
   },
   () => [authPolicy('verifications')],
+);
+
+/** The second factor of a person: set up while `verified` is false, asked for from then on. */
+export const twoFactors = pgTable(
+  'two_factors',
+  {
+    id: id().primaryKey(),
+    userId: uuid('user_id')
+      .notNull()
+      .unique()
+      .references(() => users.id, { onDelete: 'cascade' }),
+    /** Encrypted under the service's secret. */
+    secret: text('secret').notNull(),
+    /** JSON list of keyed hashes; a code that was used is no longer in it. */
+    backupCodes: text('backup_codes').notNull(),
+    verified: boolean('verified').notNull().default(false),
+    failedVerificationCount: integer('failed_verification_count').notNull().default(0),
+    lockedUntil: instant('locked_until'),
+    /** The 30 s step of the last code that was taken: no code of it or before it is taken again. */
+    lastStep: bigint('last_step', { mode: 'number' }),
+    createdAt: createdAt(),
+  },
+  () => [authPolicy('two_factors')],
 );
 
 /** Request limits of better-auth and of signing, shared by every web process and kept over restarts. */

@@ -1,7 +1,7 @@
 import { and, asc, eq, inArray } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { authDatabase } from '@/db/client';
-import { users } from '@/db/schema/identity';
+import { sessions, users } from '@/db/schema/identity';
 import { outbox } from '@/db/schema/trail';
 import {
   invitations,
@@ -77,6 +77,14 @@ export async function listMemberships(personId: string) {
 export async function findPerson(personId: string) {
   const [row] = await authDatabase().select().from(users).where(eq(users.id, personId));
   return row ?? null;
+}
+
+export async function listSessionIds(personId: string): Promise<string[]> {
+  const rows = await authDatabase()
+    .select({ id: sessions.id })
+    .from(sessions)
+    .where(eq(sessions.userId, personId));
+  return rows.map((row) => row.id);
 }
 
 /** An invitation of a client or of studio staff, with the names that its page shows. */

@@ -8,6 +8,7 @@ import {
   forgetConfirmAttempts,
   forgetSignInAttempts,
 } from './attempts-data';
+import { afterSecondFactor, beforeSecondFactor } from './second-factor-hooks';
 
 /** Wrong passwords that an address may take in a quarter of an hour. */
 export const signInAttempts = 20;
@@ -21,7 +22,15 @@ const SignUp = z.strictObject({
   rememberMe: z.boolean().optional(),
 });
 const Address = z.object({ email: z.string().max(254) });
-const Changed = z.object({ user: z.object({ id: z.string() }) });
+/** Endpoints that ask a signed-in person for their password; they share their count with signing. */
+const askingPassword = [
+  '/change-password',
+  '/two-factor/enable',
+  '/two-factor/disable',
+  '/two-factor/generate-backup-codes',
+];
+/** Whose password a request has asked for, from its first hook to its last. */
+const asked = new WeakMap<object, string>();
 
 const tooMany = (message: string, retryAfterS: number) =>
   new APIError(
@@ -48,21 +57,21 @@ export const before = createAuthMiddleware(async (ctx) => {
         retryAfterS,
       );
   }
-  if (ctx.path === '/change-password') {
-    // It asks for the same password as signing does, so it shares that count.
+  if (askingPassword.includes(ctx.path)) {
     const session = await getSessionFromCtx(ctx);
     if (!session) return;
     const { count, retryAfterS } = await countConfirmAttempt(session.user.id);
     if (count > confirmAttempts)
       throw tooMany('Too many wrong passwords. Wait a quarter of an hour and try again.', retryAfterS);
+    asked.set(ctx.context, session.user.id);
   }
+  return beforeSecondFactor(ctx);
 });
 
 export const after = createAuthMiddleware(async (ctx) => {
   const signedIn = ctx.context.newSession;
   if (ctx.path === '/sign-in/email' && signedIn) await forgetSignInAttempts(signedIn.user.email);
-  if (ctx.path === '/change-password' && !isAPIError(ctx.context.returned)) {
-    const changed = Changed.safeParse(ctx.context.returned);
-    if (changed.success) await forgetConfirmAttempts(changed.data.user.id);
-  }
+  const personId = asked.get(ctx.context);
+  if (personId && !isAPIError(ctx.context.returned)) await forgetConfirmAttempts(personId);
+  await afterSecondFactor(ctx, ctx.context.returned);
 });

@@ -2,18 +2,19 @@ import { betterAuth } from 'better-auth';
 import { isAPIError } from 'better-auth/api';
 import { drizzleAdapter } from 'better-auth/adapters/drizzle';
 import { nextCookies } from 'better-auth/next-js';
-import { organization } from 'better-auth/plugins';
+import { organization, twoFactor } from 'better-auth/plugins';
 import { uuidv7 } from 'uuidv7';
 import { authDatabase } from '@/db/client';
-import { accounts, rateLimits, sessions, users, verifications } from '@/db/schema/identity';
+import { accounts, rateLimits, sessions, twoFactors, users, verifications } from '@/db/schema/identity';
 import { invitations, members, workspaces } from '@/db/schema/workspaces';
 import { authEnv } from '@/lib/env/env';
-import { endPersonSockets } from '@/lib/workspaces/end-person-sockets';
+import { endSessionSockets } from '@/lib/workspaces/end-person-sockets';
 import { accessControl, accessRoles } from '@/lib/workspaces/roles';
 import { log } from '@/lib/log/log';
 import { queueIdentityMail } from './auth-data';
 import { after, before } from './auth-hooks';
 import { closedPaths } from './endpoints';
+import { newRecoveryCodes, recoveryCodeStorage } from './recovery-codes';
 import { passwordMax, passwordMin } from './password-rules';
 
 /** Columns that our verbs write; the library knows of them and neither takes nor gives them. */
@@ -42,10 +43,9 @@ function build() {
       log: (level, message) => log()[level === 'error' ? 'error' : 'warn']({ service: 'identity' }, message),
     },
     hooks: { before, after },
-    // Sockets outlive a request: whichever way a session ends, they end with it. Nobody waits for it, and the
-    // person's other sessions ask again for their channels.
+    // Sockets outlive a request: whichever way a session ends, those that it opened end with it. Nobody waits.
     databaseHooks: {
-      session: { delete: { after: async ({ userId }) => void endPersonSockets(userId) } },
+      session: { delete: { after: async ({ id }) => void endSessionSockets(id) } },
     },
     database: drizzleAdapter(authDatabase(), {
       provider: 'pg',
@@ -55,6 +55,7 @@ function build() {
         sessions,
         accounts,
         verifications,
+        two_factors: twoFactors,
         rate_limits: rateLimits,
         workspaces,
         members,
@@ -65,7 +66,7 @@ function build() {
       modelName: 'users',
       additionalFields: {
         units: { type: 'string', defaultValue: 'mm', input: false },
-        timeZone: { type: 'string', defaultValue: 'Europe/Lisbon', input: false },
+        timeZone: { type: 'string', defaultValue: 'UTC', input: false },
       },
     },
     session: {
@@ -104,6 +105,7 @@ function build() {
         '/sign-in/email': { window: 60, max: env.TRUSTED_PROXY ? 20 : 300 },
         '/sign-up/email': { window: 300, max: env.TRUSTED_PROXY ? 10 : 100 },
         '/change-password': { window: 60, max: env.TRUSTED_PROXY ? 10 : 100 },
+        '/two-factor/*': { window: 60, max: env.TRUSTED_PROXY ? 20 : 300 },
         '/request-password-reset': { window: 300, max: env.TRUSTED_PROXY ? 10 : 100 },
         '/send-verification-email': { window: 300, max: env.TRUSTED_PROXY ? 10 : 100 },
         '/get-session': { window: 60, max: 6000 },
@@ -142,6 +144,15 @@ function build() {
             fields: { organizationId: 'workspaceId' },
             additionalFields: { tokenHash: ours },
           },
+        },
+      }),
+      // Codes are marked as used, and recovery codes hashed, in second-factor-hooks.ts.
+      twoFactor({
+        issuer: 'Firstpull',
+        schema: { twoFactor: { modelName: 'two_factors' } },
+        backupCodeOptions: {
+          customBackupCodesGenerate: newRecoveryCodes,
+          storeBackupCodes: recoveryCodeStorage,
         },
       }),
       nextCookies(),

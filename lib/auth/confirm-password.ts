@@ -5,13 +5,20 @@ import { accounts } from '@/db/schema/identity';
 import { AppError, forbidden } from '@/lib/errors/app-error';
 import { confirmAttempts, countConfirmAttempt, forgetConfirmAttempts } from './attempts-data';
 import type { Person } from './context';
+import { readSecondFactor, takeCode } from './second-factor-data';
 
 /**
- * Asks a signed-in person for their password again, as signing does. Each attempt is counted before it is
- * looked at; after five in fifteen minutes the rest of that time is closed (`limit_exceeded`, with
- * retryAfterS), changing the password included. A right one starts anew; a wrong one is `wrong-password`.
+ * Asks a signed-in person for their password again, as signing does, and for a code of their authenticator where
+ * they have a second factor. Both come in the request that names the digest and the gate, are never stored, and
+ * the code is marked as used: the proof serves that one act. Each attempt is counted before it is looked at; after
+ * five wrong ones the next must wait (`limit_exceeded`, with retryAfterS). Refusals: `wrong-password`,
+ * `code-needed`, `wrong-code`.
  */
-export async function confirmPassword(person: Person, password: string): Promise<'password'> {
+export async function confirmPassword(
+  person: Person,
+  password: string,
+  code?: string,
+): Promise<'password' | 'password+totp'> {
   const { count, retryAfterS } = await countConfirmAttempt(person.id);
   if (count > confirmAttempts)
     throw new AppError(
@@ -25,6 +32,24 @@ export async function confirmPassword(person: Person, password: string): Promise
     .where(and(eq(accounts.userId, person.id), eq(accounts.providerId, 'credential')));
   const right = account?.password ? await verifyPassword({ hash: account.password, password }) : false;
   if (!right) throw forbidden('That is not your password. Nothing was signed.', 'wrong-password');
+  const { on } = await readSecondFactor(person.id);
+  if (on) await confirmCode(person, code);
   await forgetConfirmAttempts(person.id);
-  return 'password';
+  return on ? 'password+totp' : 'password';
+}
+
+async function confirmCode(person: Person, code: string | undefined): Promise<void> {
+  if (code === undefined)
+    throw forbidden(
+      'Your second factor is on: give the code that your authenticator shows. Nothing was signed.',
+      'code-needed',
+    );
+  const taken = await takeCode(person.id, code);
+  if (taken === 'used')
+    throw forbidden('This code was used already. Wait for the next one. Nothing was signed.', 'wrong-code');
+  if (taken === 'wrong')
+    throw forbidden(
+      'That is not the code that your authenticator shows now. Nothing was signed.',
+      'wrong-code',
+    );
 }

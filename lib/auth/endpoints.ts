@@ -14,6 +14,11 @@ export const openPaths = [
   '/revoke-session',
   '/revoke-sessions',
   '/revoke-other-sessions',
+  '/two-factor/enable',
+  '/two-factor/disable',
+  '/two-factor/generate-backup-codes',
+  '/two-factor/verify-totp',
+  '/two-factor/verify-backup-code',
   '/organization/list',
   '/ok',
 ] as const;
@@ -43,6 +48,10 @@ export const closedPaths = [
   '/get-access-token',
   '/account-info',
   '/error',
+  // The secret is shown while it is set up, never again; no codes go by mail or text.
+  '/two-factor/get-totp-uri',
+  '/two-factor/send-otp',
+  '/two-factor/verify-otp',
   '/organization/create',
   '/organization/update',
   '/organization/delete',

@@ -29,6 +29,11 @@ export async function personFromHeaders(requestHeaders: Headers): Promise<Person
   return session?.user.emailVerified ? personOf(session.user) : null;
 }
 
+/** The session that a request's cookie carries; null for none. */
+export async function sessionIdFromHeaders(requestHeaders: Headers): Promise<string | null> {
+  return (await auth().api.getSession({ headers: requestHeaders }))?.session.id ?? null;
+}
+
 /** Who is signed in, for pages and server actions; read once a request. */
 export const currentPerson = cache(async (): Promise<Person | null> => personFromHeaders(await headers()));
 

@@ -77,8 +77,8 @@ async function answerOnce(
   if (!key || key.length > 100) throw invalid('Send an Idempotency-Key header (a UUID made by the caller).');
   const route = `${request.method} ${new URL(request.url).pathname}`;
   const where = { workspaceId: ctx.workspace.id, userId: ctx.person.id, route, key };
-  // A password is never kept, not even as part of a hash that could be guessed at.
-  const { password: _password, ...said } = (body ?? {}) as Record<string, unknown>;
+  // A password or code is never kept, not even as part of a hash that could be guessed at.
+  const { password: _password, code: _code, ...said } = (body ?? {}) as Record<string, unknown>;
   const requestHash = digestOf(said);
   const known = await withTenant(ctx, (tx) => claimKey(tx, where, requestHash));
   if (known) {

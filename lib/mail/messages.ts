@@ -18,6 +18,13 @@ export const mailRequest = z.discriminatedUnion('template', [
   z.object({ template: z.literal('verify-address'), to: recipient, url: z.url() }),
   z.object({ template: z.literal('reset-password'), to: recipient, url: z.url() }),
   z.object({
+    template: z.literal('second-factor'),
+    to: recipient,
+    /** Turned on or off, all recovery codes made anew, or one of them used to sign in. */
+    what: z.enum(['on', 'off', 'new-codes', 'code-spent']),
+    codesLeft: z.number().int(),
+  }),
+  z.object({
     template: z.literal('invitation'),
     to: recipient,
     inviterName: z.string(),

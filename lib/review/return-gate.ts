@@ -19,11 +19,11 @@ export async function returnGate(
   input: unknown,
 ): Promise<SignatureView> {
   requirePermission(ctx, 'gate.sign');
-  const { digest, password, reason } = parseInput(ReturnInput, input);
+  const { digest, password, code, reason } = parseInput(ReturnInput, input);
   const id = asId(gateId, 'gate');
   const workspaceId = ctx.workspace.id;
   await withTenant(ctx, (tx) => findGate(tx, workspaceId, id));
-  const method = await confirmPassword(ctx.person, password);
+  const method = await confirmPassword(ctx.person, password, code);
   return withTenant(ctx, async (tx) => {
     const held = await holdGate(tx, ctx, id, digest);
     const { template, revision, gate } = held;

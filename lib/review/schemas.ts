@@ -408,7 +408,13 @@ export type ContentView = z.infer<typeof ContentView>;
 
 export const SignInput = z.object({
   digest: z.string().length(64),
-  password: z.string().min(1, 'Type your password.').max(128),
+  password: z.string().min(1, 'Type your password.').max(256),
+  /** Of the authenticator, from who has a second factor. */
+  code: z
+    .string()
+    .transform((code) => code.replace(/\s/g, ''))
+    .pipe(z.string().regex(/^\d{6}$/, 'Type the six digits that your authenticator shows.'))
+    .optional(),
 });
 export const ReturnInput = SignInput.extend({
   reason: z.string().trim().min(5, 'Say what must change.').max(2000),

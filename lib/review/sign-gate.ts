@@ -21,11 +21,11 @@ export type SignResult = { signature: SignatureView; gatePassed: boolean; locked
  */
 export async function signGate(ctx: WorkspaceContext, gateId: string, input: unknown): Promise<SignResult> {
   requirePermission(ctx, 'gate.sign');
-  const { digest, password } = parseInput(SignInput, input);
+  const { digest, password, code } = parseInput(SignInput, input);
   const id = asId(gateId, 'gate');
   const workspaceId = ctx.workspace.id;
   await withTenant(ctx, (tx) => findGate(tx, workspaceId, id));
-  const method = await confirmPassword(ctx.person, password);
+  const method = await confirmPassword(ctx.person, password, code);
   return withTenant(ctx, async (tx) => {
     const held = await holdGate(tx, ctx, id, digest);
     await requireSettled(tx, held);

@@ -2,7 +2,7 @@ import { withTenant } from '@/db/tenant';
 import type { PersonContext } from '@/lib/auth/context';
 import { enterWorkspace } from '@/lib/auth/enter';
 import { AppError, forbidden } from '@/lib/errors/app-error';
-import { signChannel, signPerson, socketIdPattern } from '@/realtime/authorize';
+import { signChannel, signSession, socketIdPattern } from '@/realtime/authorize';
 import { parseChannel, type Channel } from '@/realtime/channels';
 import { revisionExists } from './channel-data';
 
@@ -16,10 +16,10 @@ export async function authorizeChannel(ctx: PersonContext, socketId: string, cha
   return signChannel(socketId, channelName, channel, ctx.person);
 }
 
-/** Says who a socket belongs to, so that it can be ended when a membership ends. */
-export function authorizeSocket(ctx: PersonContext, socketId: string) {
-  if (!socketIdPattern.test(socketId) || socketId.length > 40) throw refused();
-  return signPerson(socketId, ctx.person);
+/** Says which session a socket belongs to, so that it ends with it, and with a membership of its person. */
+export function authorizeSocket(sessionId: string | null, socketId: string) {
+  if (!sessionId || !socketIdPattern.test(socketId) || socketId.length > 40) throw refused();
+  return signSession(socketId, sessionId);
 }
 
 async function mayListen({ person }: PersonContext, channel: Channel): Promise<boolean> {

@@ -1,17 +1,23 @@
+import { listSessionIds } from '@/lib/auth/auth-data';
 import { log } from '@/lib/log/log';
 import { endSockets } from '@/realtime/publish';
 
 /**
- * Ends a person's open sockets after a membership ended. When the realtime server cannot be reached this is
- * only logged: events carry ids alone, and each fetch reads the membership again.
+ * Ends the sockets that a session opened, once it has ended. When the realtime server cannot be reached this is
+ * only logged: events carry ids alone, and each fetch reads session and membership again.
  */
-export async function endPersonSockets(personId: string): Promise<void> {
+export async function endSessionSockets(sessionId: string): Promise<void> {
   try {
-    await endSockets(personId);
+    await endSockets(sessionId);
   } catch (error) {
     log().warn(
-      { reason: error instanceof Error ? error.message.split('\n')[0] : 'unknown', personId },
-      'sockets of a removed person could not be ended',
+      { reason: error instanceof Error ? error.message.split('\n')[0] : 'unknown', sessionId },
+      'sockets of an ended session or a removed person could not be ended',
     );
   }
+}
+
+/** Ends all open sockets of a person after a membership ended; their sessions stay. */
+export async function endPersonSockets(personId: string): Promise<void> {
+  await Promise.all((await listSessionIds(personId)).map(endSessionSockets));
 }

@@ -39,7 +39,8 @@ export async function makePerson(database: FreshDatabase, name: string): Promise
   const [id, token] = [uuidv7(), randomBytes(24).toString('base64url')];
   const password = await (hashed ??= hashPassword(testPassword));
   await database.query(
-    `with person as (insert into users (id, name, email, email_verified) values ($1, $2, $3, true)),
+    `with person as (insert into users (id, name, email, email_verified, time_zone)
+         values ($1, $2, $3, true, 'Europe/Lisbon')),
        account as (insert into accounts (id, account_id, provider_id, user_id, password)
          values (gen_random_uuid(), $1::text, 'credential', $1, $4))
      insert into sessions (id, user_id, token, expires_at) values (gen_random_uuid(), $1, $5, now() + interval '1 day')`,

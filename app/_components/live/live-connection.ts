@@ -40,7 +40,7 @@ async function authorize(socketId: string, channelName: string) {
 
 type Done = (error: Error | null, answer: unknown) => void;
 
-/** Says whose socket this is; the server ends those that nobody signs in, and those of who was removed. */
+/** Says whose socket this is; the server ends those that nobody signs in, and those of an ended session. */
 async function signIn(socketId: string) {
   const response = await fetch('/api/v1/realtime/sign-in', {
     method: 'POST',

@@ -34,6 +34,29 @@ export function resetPassword({ to, url }: Of<'reset-password'>): MailContent {
   };
 }
 
+const changes = {
+  on: [
+    'Your second factor is on',
+    'From now on signing in, and signing a gate, asks for a code of your authenticator besides the password. Your other sessions have ended.',
+  ],
+  off: ['Your second factor is off', 'Signing in and signing a gate ask for the password alone again.'],
+  'new-codes': ['You have new recovery codes', 'Those of before no longer work.'],
+  'code-spent': ['A recovery code was used to sign in', 'It does not work a second time.'],
+} as const;
+
+export function secondFactor({ what, codesLeft }: Of<'second-factor'>, url: string): MailContent {
+  const [heading, said] = changes[what];
+  return {
+    subject: `${heading} at Firstpull`,
+    heading,
+    preview: said,
+    paragraphs: [said],
+    facts: what === 'code-spent' ? [{ label: 'Codes left', value: String(codesLeft) }] : [],
+    action: { label: 'See your account', url },
+    footer: 'If it was not you, set a new password now: it ends all sessions. Then end what you do not know.',
+  };
+}
+
 const roleWords: Record<string, string> = {
   designer: 'designer: posts revisions and answers notes',
   lead: 'lead: runs workspaces, invites people, signs for the studio',

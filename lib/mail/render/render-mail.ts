@@ -1,6 +1,6 @@
 import type { MailRequest } from '../messages';
 import type { MailContent } from './content';
-import { invitation, resetPassword, verifyAddress } from './identity';
+import { invitation, resetPassword, secondFactor, verifyAddress } from './identity';
 import {
   gateWaits,
   notePosted,
@@ -32,6 +32,8 @@ function contentOf(request: MailRequest, origin: string): MailContent {
     case 'invitation':
       return invitation(request, url);
     case 'revision-posted':
+    case 'second-factor':
+      return secondFactor(request, ownLink('/account', origin));
       return revisionPosted(request, url);
     case 'revision-checked':
       return revisionChecked(request, url);

@@ -12,6 +12,7 @@ const withoutTenant = [
   'rate_limits',
   'sessions',
   'studios',
+  'two_factors',
   'users',
   'verifications',
   'workspaces',

@@ -30,6 +30,7 @@ const all: { [T in MailRequest['template']]: Extract<MailRequest, { template: T 
     to: member,
     url: `${origin}/api/auth/reset-password/token`,
   },
+  'second-factor': { template: 'second-factor', to: member, what: 'code-spent', codesLeft: 9 },
   invitation: {
     template: 'invitation',
     to: member,
