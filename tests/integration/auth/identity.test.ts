@@ -260,7 +260,7 @@ describe('the password of who is signed in', () => {
 });
 
 describe('open sockets', () => {
-  /** Stands where the realtime server is, and says which person's sockets it was told to end. */
+  /** Stands where the realtime server is, and says which sessions' sockets it was told to end. */
   async function realtime() {
     const told: string[] = [];
     let heard = () => {};
@@ -283,21 +283,24 @@ describe('open sockets', () => {
     };
   }
 
+  type Listed = { id: string; token: string };
   it.each([
-    ['/sign-out', () => ({})],
-    ['/revoke-session', (token: string) => ({ token })],
-    ['/revoke-sessions', () => ({})],
-    ['/revoke-other-sessions', () => ({})],
-  ])('end with the session: %s', async (path, body) => {
+    ['/sign-out', ['own'], () => ({})],
+    ['/revoke-session', ['other'], (token: string) => ({ token })],
+    ['/revoke-sessions', ['other', 'own'], () => ({})],
+    ['/revoke-other-sessions', ['other'], () => ({})],
+  ] as const)('end with their own session: %s ends those of %j', async (path, which, body) => {
     const { person, cookie } = await makePerson(database, 'Socket');
     await post('/sign-in/email', { email: person.email, password: testPassword });
-    const [{ token }] = (await (await get('/list-sessions', cookie)).json()) as { token: string }[];
+    const list = (await (await get('/list-sessions', cookie)).json()) as Listed[];
+    const own = list.find(({ token }) => cookie.includes(encodeURIComponent(token)))!;
+    const other = list.find(({ id }) => id !== own.id)!;
     const server = await realtime();
     try {
-      const ended = server.next();
-      expect((await post(path, body(token), cookie)).status).toBe(200);
-      await ended;
-      expect(new Set(server.told)).toEqual(new Set([person.id]));
+      expect((await post(path, body(other.token), cookie)).status).toBe(200);
+      const ids = { own: own.id, other: other.id };
+      while (new Set(server.told).size < which.length) await server.next();
+      expect([...new Set(server.told)].sort()).toEqual(which.map((one) => ids[one]).sort());
     } finally {
       server.close();
     }
