@@ -106,7 +106,8 @@ export class RayCaster {
       for (let at = start[c]; at < start[c + 1]; at++) {
         if (list[at] !== from) this.hit(list[at], x, y, z, dx, dy, dz);
       }
-      this.looks += start[c + 1] - start[c];
+      // Each hit is compared with those held: a heap costs by both.
+      this.looks += (start[c + 1] - start[c]) * (1 + (this.held >> 3));
       if (this.held > MOST_CROSSINGS || this.looks > this.mostLooks) return NaN;
       const reach = Math.min(toX, toY, toZ);
       for (;;) {

@@ -13,7 +13,7 @@ const MOST_PAIRS = 2e7;
 /**
  * Finds boundary edges in whose inside another boundary's corner lies, and splits their facets there. The corner
  * may be off the edge by `tolerance`; the surface moves by no more.
- * @returns null where there is none
+ * @returns null where there is none, or where the open edges are too many to compare
  */
 export function splitTJunctions(
   index: Uint32Array,
@@ -40,7 +40,7 @@ export function splitTJunctions(
     if (list) list.add(v);
     else onEdge.set(e, new Set([v]));
   };
-  visitPairs(buildBoxTree(boxes), tolerance, (i, j) => {
+  const searched = visitPairs(buildBoxTree(boxes), tolerance, (i, j) => {
     const [e, f] = [open[i], open[j]];
     noteOn(e, edges.low[f]);
     noteOn(e, edges.high[f]);
@@ -48,7 +48,8 @@ export function splitTJunctions(
     noteOn(f, edges.high[e]);
     return ++pairs < MOST_PAIRS;
   });
-  if (onEdge.size === 0) return null;
+  // Half a search would close some edges and leave their neighbours open.
+  if (!searched || onEdge.size === 0) return null;
   return {
     index: splitFacets(index, p, edges, onEdge),
     vertices: [...new Set([...onEdge.values()].flatMap((set) => [...set]))],

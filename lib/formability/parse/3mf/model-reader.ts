@@ -53,7 +53,7 @@ export interface Tally {
 /**
  * Takes the elements of one model part (3MF Core Specification 1.3, chapters 3 and 4; Production Extension 1.1, §3.1):
  * objects with meshes or components, build items. Metadata, materials and whatever else stands there is passed over.
- * @throws UnusableInput not_a_mesh, non_finite, out_of_range, unsupported, too_large_file; part, object, index named
+ * @throws UnusableInput not_a_mesh, non_finite, unsupported, too_large_file; part, object, index named
  */
 export class ModelReader implements XmlHandler {
   readonly part: ModelPart;
@@ -70,7 +70,7 @@ export class ModelReader implements XmlHandler {
     private readonly where: string,
     private readonly tally: Tally,
   ) {
-    this.part = { key, where, unit: 'mm', unitStated: false, objects: new Map(), items: [] };
+    this.part = { key, where, unit: 'mm', objects: new Map(), items: [] };
   }
 
   open(tag: Tag): void {
@@ -105,9 +105,7 @@ export class ModelReader implements XmlHandler {
     if (tag.local !== 'model' || tag.uri !== CORE) {
       throw new UnusableInput('not_a_mesh', `${this.where} is no 3MF model: its root is <${tag.local.slice(0, 40)}> of "${tag.uri.slice(0, 120)}"; export the 3MF again`); // prettier-ignore
     }
-    const unit = tag.attribute('unit');
-    this.part.unit = readUnit(unit, this.where);
-    this.part.unitStated = unit !== null;
+    this.part.unit = readUnit(tag.attribute('unit'), this.where);
     checkExtensions(tag, this.where);
     return Kind.Model;
   }
@@ -164,7 +162,7 @@ export class ModelReader implements XmlHandler {
     this.tally.vertices += count;
     this.tally.triangles += object.triangles.length / 3;
     if (this.highest < count) return;
-    throw new UnusableInput('out_of_range', `${this.owner()} has ${count} vertices, and its triangle ${Math.floor(this.highestAt / 3) + 1} points at vertex ${this.highest} (counted from 0); export the 3MF again`); // prettier-ignore
+    throw this.wrong(`${this.owner()} has ${count} vertices, and its triangle ${Math.floor(this.highestAt / 3) + 1} points at vertex ${this.highest} (counted from 0)`); // prettier-ignore
   }
 
   private vertex(tag: Tag): void {
@@ -210,12 +208,7 @@ export class ModelReader implements XmlHandler {
     const text = tag.value(at).trim();
     const value = /^\+?\d+$/.test(text) ? Number(text) : NaN;
     if (value <= 0xffffffff) return value;
-    if (value > 0 || /^-\d+$/.test(text)) {
-      throw new UnusableInput(
-        'out_of_range',
-        `${owner} points at vertex ${text.slice(0, 40)}; export the 3MF again`,
-      );
-    }
+    if (value > 0 || /^-\d+$/.test(text)) throw this.wrong(`${owner} points at vertex ${text.slice(0, 40)}`);
     throw this.wrong(`${owner} has v${corner + 1} = "${text.slice(0, 40)}", which is no index`);
   }
 

@@ -31,9 +31,8 @@ export interface ModelPart {
   /** Key of the part in the archive, and its name as a message shows it. */
   key: string;
   where: string;
+  /** Millimetres where the file names none (Core Specification, §3.4: the default). */
   unit: MeshUnit;
-  /** False where the file leaves the unit to its default, millimetres. */
-  unitStated: boolean;
   objects: Map<string, ModelObject>;
   /** Build items in the file's order; null: marked not to be printed. */
   items: (Reference | null)[];

@@ -1,4 +1,5 @@
 import { UnusableInput } from '../../unusable-input';
+import { MM_PER_UNIT } from '../../recipe';
 import { checkTriangles, MAX_TRIANGLES } from '../size-caps';
 import { MAX_COMPONENT_DEPTH, MAX_PLACED } from './limits';
 import type { Matrix, ModelObject, ModelPart, Reference } from './model';
@@ -21,12 +22,12 @@ export interface Assembled {
 export type LoadPart = (path: string, owner: string) => ModelPart;
 
 /**
- * The build of the start part as triangles: every item, through its components, with all transforms; a mirroring
+ * The build of the start part as triangles: every item, through its components, with all transforms, in that part's unit; a mirroring
  * transform turns the facets' winding. Objects of type `model` and `surface` are the template. `support` and
  * `solidsupport` hold it while it prints and are broken away, `other` is not printed at all (Core Specification,
  * §4.1; from memory): they are left out, with all that they consist of, and named in `leftOut`; so are items that are
  * marked not to be printed.
- * @throws UnusableInput no_triangles, not_a_mesh (cycle, missing object), unsupported, out_of_range, too_large_file
+ * @throws UnusableInput no_triangles, not_a_mesh (cycle, missing object), unsupported, too_large_file
  */
 export function placeObjects(start: ModelPart, loadPart: LoadPart): Assembled {
   const walk = new Walk(start, loadPart);
@@ -84,7 +85,9 @@ class Walk {
     if (object.type !== 'model' && object.type !== 'surface') {
       return this.leave(`${named}, of type ${object.type}`);
     }
-    const transform = multiply(reference.transform, outer);
+    const inOwnUnit =
+      part.unit === from.unit ? null : scaling(MM_PER_UNIT[part.unit] / MM_PER_UNIT[from.unit]);
+    const transform = multiply(multiply(inOwnUnit, reference.transform), outer);
     if (object.components.length === 0) return this.place(object, transform, named);
     this.path.push(object);
     for (const component of object.components)
@@ -109,6 +112,10 @@ class Walk {
       this.leftOut.set(what, (this.leftOut.get(what) ?? 0) + 1);
     }
   }
+}
+
+function scaling(factor: number): Matrix {
+  return [factor, 0, 0, 0, factor, 0, 0, 0, factor, 0, 0, 0];
 }
 
 function write({ object, transform }: Placed, coords: Float32Array, from: number): number {

@@ -11,9 +11,9 @@ import { readDirectory, show } from './zip-directory';
 
 /**
  * Reads the build of a 3MF (3MF Core Specification 1.3, Production Extension 1.1): all its items as one soup of facets,
- * in the unit of the start part, which wins over the recipe's. Only the relationships and the model parts that the
+ * in the unit of the start part, which wins over the recipe's; each part is read in its own unit. Only the relationships and the model parts that the
  * build needs are unpacked, in memory, as they are scanned; caps are absolute.
- * @throws UnusableInput empty, truncated, no_triangles, count_mismatch, non_finite, out_of_range, not_a_mesh, unsupported, too_large_file
+ * @throws UnusableInput empty, truncated, no_triangles, count_mismatch, non_finite, not_a_mesh, unsupported, too_large_file
  */
 export function read3mf(bytes: Uint8Array): RawMesh {
   const entries = readDirectory(bytes);
@@ -33,12 +33,6 @@ export function read3mf(bytes: Uint8Array): RawMesh {
     return reader.part;
   };
   const start = load(findStartPart(bytes, entries, budget), '_rels/.rels');
-  const assembled = placeObjects(start, (path, owner) => {
-    const part = load(partKey(path) ?? path, owner);
-    if (part.unitStated && part.unit !== start.unit) {
-      throw new UnusableInput('unsupported', `${part.where} is in ${part.unit} and ${start.where} in ${start.unit}; export the 3MF in one unit`); // prettier-ignore
-    }
-    return part;
-  });
+  const assembled = placeObjects(start, (path, owner) => load(partKey(path) ?? path, owner));
   return { format: '3mf', unit: start.unit, warnings: [], ...assembled };
 }

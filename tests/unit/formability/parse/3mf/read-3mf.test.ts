@@ -5,7 +5,7 @@ import { analyse } from '@/lib/formability/analyse';
 import { inspect } from '@/lib/formability/inspect';
 import { readMesh } from '@/lib/formability/parse/read-mesh';
 import { frustum } from '../../../../fixtures/meshes/solids';
-import { moved, turned } from '../../../../fixtures/meshes/triangles';
+import { moved, scaled, turned } from '../../../../fixtures/meshes/triangles';
 import {
   componentsXml,
   meshXml,
@@ -16,6 +16,11 @@ import {
   relationsXml,
 } from '../../../../fixtures/meshes/write-3mf';
 import { binaryStl } from '../../../../fixtures/meshes/write-stl';
+
+const near = (found: Float32Array, expected: number[]) => {
+  expect(found).toHaveLength(expected.length);
+  found.forEach((value, i) => expect(Math.abs(value - expected[i])).toBeLessThan(1e-4));
+};
 
 // A frustum of 60 × 40 × 20 mm at 5°: V = h (w d − s (w + d) + 4 s² / 3), s = h tan 5°.
 const mesh = frustum(60, 40, 20, 5);
@@ -129,11 +134,6 @@ describe('build items and components', () => {
   // Row vectors: a quarter turn about Z takes x to y, then moves by (100, 0, 5).
   const quarter = 'transform="0 1 0 -1 0 0 0 0 1 100 0 5"';
   const coords = (...args: Parameters<typeof modelXml>) => readMesh(packed(modelXml(...args))).coords;
-  const near = (found: Float32Array, expected: number[]) => {
-    expect(found).toHaveLength(expected.length);
-    found.forEach((value, i) => expect(Math.abs(value - expected[i])).toBeLessThan(1e-4));
-  };
-
   it('places each item by its transform, as often as it is built', () => {
     near(coords([one], ['objectid="1"', `objectid="1" ${quarter}`]), [
       ...mesh,
@@ -206,15 +206,25 @@ describe('the production extension', () => {
     expect(coords).toEqual(Float32Array.from(wanted));
   });
 
-  it('refuses a path from one part into a third, and parts of two units', () => {
+  it('reads each part in its own unit, millimetres where it names none (3MF core, model@unit)', () => {
+    const start = (unit: string) => modelXml([objectXml(2, componentsXml('r:path="/3D/far.model" objectid="1" transform="1 0 0 0 1 0 0 0 1 3 0 0"'))], ['objectid="2"', 'r:path="/3D/far.model" objectid="1"'], `${unit} ${other}`); // prettier-ignore
+    // 3 in the start part's unit, on top of the far part's own size: 25.4 to 1, and 1 to 25.4.
+    const far = (unit: string) => strToU8(modelXml([one], [], unit));
+    const inches = readMesh(packed(start('unit="inch"'), { '3D/far.model': far('') }));
+    expect(inches.unit).toBe('in');
+    near(inches.coords, [...moved(scaled(mesh, 1 / 25.4), 3, 0, 0), ...scaled(mesh, 1 / 25.4)]);
+    const back = readMesh(packed(start(''), { '3D/far.model': far('unit="inch"') }));
+    expect(back.unit).toBe('mm');
+    near(back.coords, [...moved(scaled(mesh, 25.4), 3, 0, 0), ...scaled(mesh, 25.4)]);
+    const same = readMesh(packed(start('unit="inch"'), { '3D/far.model': far('unit="inch"') }));
+    expect(same.coords).toEqual(Float32Array.from([...moved(mesh, 3, 0, 0), ...mesh]));
+  });
+
+  it('refuses a path from one part into a third', () => {
     const start = modelXml([], ['r:path="/3D/far.model" objectid="1"'], other);
     const pointing = part([objectXml(1, componentsXml('p:path="/3D/3dmodel.model" objectid="1"'))]);
     expect(() => readMesh(packed(start, { '3D/far.model': pointing }))).toThrow(
       /which only the start part may/,
-    );
-    const inches = strToU8(modelXml([one], [], 'unit="inch"'));
-    expect(() => readMesh(packed(start, { '3D/far.model': inches }))).toThrow(
-      /far.model is in in and .* in mm/,
     );
   });
 });
