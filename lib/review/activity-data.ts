@@ -6,11 +6,13 @@ import type { Content } from './content';
 
 export type EntryRow = typeof auditEntries.$inferSelect;
 
-/** Entries of the workspace's chain, newest first, older than `before`. */
+export type EntryFilter = { before: number | null; actions: string[] | null; actorId: string | null };
+
+/** Entries of the workspace's chain, newest first. */
 export async function entriesBefore(
   tx: TenantTx,
   workspaceId: string,
-  before: number | null,
+  { before, actions, actorId }: EntryFilter,
   limit: number,
 ): Promise<EntryRow[]> {
   return tx
@@ -20,6 +22,8 @@ export async function entriesBefore(
       and(
         eq(auditEntries.workspaceId, workspaceId),
         before === null ? undefined : lt(auditEntries.seq, before),
+        actions === null ? undefined : inArray(auditEntries.action, actions),
+        actorId === null ? undefined : eq(auditEntries.actorId, actorId),
       ),
     )
     .orderBy(desc(auditEntries.seq))

@@ -451,13 +451,20 @@ export type TodayView = z.infer<typeof TodayView>;
 export const ListActivityInput = z.object({
   cursor: z.string().max(400).optional(),
   limit: z.coerce.number().int().min(1).max(100).default(50),
+  about: z.enum(['agreement', 'revisions', 'docket', 'people']).optional(),
+  /** Only what this person did. */
+  by: id.optional(),
 });
+export type ListActivityInput = z.infer<typeof ListActivityInput>;
+export const ExportActivityInput = z.object({ format: z.enum(['csv', 'json']).default('csv') });
+export type ExportActivityInput = z.infer<typeof ExportActivityInput>;
 
 export const ActivityPage = z.object({
   items: z.array(
     z.object({
       seq: z.number(),
       at: instant,
+      actorId: id.nullable(),
       actorName: z.string(),
       action: z.string(),
       /** A whole sentence without the actor's name, e.g. "posted revision B of QLN-003". */

@@ -6,6 +6,7 @@ import {
   CreateTemplateInput,
   DocketView,
   DraftView,
+  ExportActivityInput,
   ListActivityInput,
   ListTemplatesInput,
   NoteInput,
@@ -71,6 +72,14 @@ const ended = z.object({
 export const reviewOperations: Operation[] = [
   get('/today', 'What waits on me, across workspaces', TodayView),
   { ...get(`${workspace}/activity`, 'What was done, newest first', ActivityPage), query: ListActivityInput },
+  {
+    ...get(
+      `${workspace}/activity/export`,
+      'The whole record as a file: CSV in words, or JSON with hashes',
+      z.string(),
+    ),
+    query: ExportActivityInput,
+  },
   { ...get(`${workspace}/templates`, 'Templates of a workspace', TemplatePage), query: ListTemplatesInput },
   post(`${workspace}/templates`, 'Open a template', {
     body: CreateTemplateInput,

@@ -3,7 +3,11 @@ import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { personContext, type WorkspaceContext } from '@/lib/auth/context';
 import { enterWorkspace } from '@/lib/auth/enter';
 import { listActivity } from '@/lib/review/list-activity';
+import { entryHash, genesis, type ChainedEntry } from '@/lib/audit/chain';
+import { actionsAbout } from '@/lib/review/activity-topics';
 import { knownActions } from '@/lib/review/activity-words';
+import { csvLine, exportActivity } from '@/lib/review/export-activity';
+import { ExportActivityInput } from '@/lib/review/schemas';
 import { openDraft } from '@/lib/review/open-draft';
 import { openThread } from '@/lib/review/open-thread';
 import { replyToThread } from '@/lib/review/reply-to-thread';
@@ -260,6 +264,51 @@ describe('Today', () => {
 });
 
 describe('activity', () => {
+  it('narrows to a topic and to a person; each action belongs to a topic', async () => {
+    const topics = ['agreement', 'revisions', 'docket', 'people'] as const;
+    expect([...new Set(topics.flatMap(actionsAbout))].sort()).toEqual([...knownActions].sort());
+    const { revisionId } = await postChecked(house);
+    await raise(reviewer, revisionId, 'Is the rim round enough?');
+    await approved(house);
+    const all = (await listActivity(reviewer, { limit: 100 })).items;
+    for (const about of topics) {
+      const { items } = await listActivity(reviewer, { about, limit: 100 });
+      expect(items.length).toBeGreaterThan(0);
+      expect(items.every(({ action }) => actionsAbout(about).includes(action))).toBe(true);
+    }
+    const [{ actorId }] = all;
+    const { items } = await listActivity(reviewer, { by: actorId!, limit: 100 });
+    const theirs = all.filter((entry) => entry.actorId === actorId);
+    expect(items.slice(0, theirs.length)).toEqual(theirs);
+    expect(items.every((entry) => entry.actorId === actorId)).toBe(true);
+    await expect(listActivity(reviewer, { about: 'weather' })).rejects.toMatchObject({ code: 'invalid' });
+  });
+
+  it('is saved whole: in words as CSV, and with all that its hashes are made of', async () => {
+    const read = async (format: string) => {
+      const file = await exportActivity(reviewer, ExportActivityInput.parse({ format }));
+      expect(file.fileName).toMatch(new RegExp(`^${house.workspace.slug}-activity-to-\\d+\\.${format}$`));
+      return new Response(file.body).text();
+    };
+    const record = JSON.parse(await read('json')) as {
+      workspace: { id: string };
+      head: { seq: number; hash: string };
+      entries: (Omit<ChainedEntry, 'workspaceId'> & { previous: string; hash: string })[];
+    };
+    let previous = genesis;
+    for (const { previous: before, hash, ...entry } of record.entries) {
+      expect(before).toBe(previous);
+      previous = entryHash(before, { ...entry, workspaceId: record.workspace.id });
+      expect(hash).toBe(previous);
+    }
+    expect(record.head).toEqual({ seq: record.entries.length, hash: previous });
+    const lines = (await read('csv')).trimEnd().split('\r\n');
+    expect(lines).toHaveLength(record.entries.length + 1);
+    expect(lines[0]).toBe('entry,time (UTC),who,what,action,hash');
+    expect(lines.at(-1)).toContain(record.head.hash);
+    expect(csvLine(['=1+1', 'say "a"', '-2', 'plain'])).toBe(`'=1+1,"say ""a""",'-2,plain\r\n`);
+  });
+
   it('tells every entry of the chain in words, page by page, without gap or repeat', async () => {
     await approved(house);
     const seen: number[] = [];

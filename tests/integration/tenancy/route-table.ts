@@ -137,6 +137,7 @@ export const routes: Record<string, Route> = {
     DELETE: { may: leads, names: { invitation: 'invitation' } },
   }),
   'workspaces/[workspace]/activity': w({ GET: { may: everyone } }),
+  'workspaces/[workspace]/activity/export': w({ GET: { may: everyone } }),
 
   'workspaces/[workspace]/templates': w({
     GET: { may: everyone },
