@@ -17,6 +17,14 @@ const sentences: Record<string, string> = {
   PASSWORD_TOO_LONG: 'The password is too long. Use 128 characters or fewer.',
   TOO_MANY_ATTEMPTS:
     'Too many tries for this address. Wait a quarter of an hour, or set a new password from the sign-in page.',
+  INVALID_CODE: 'This is not the code that your authenticator shows now. Is its clock right?',
+  CODE_USED: 'This code was used already. Wait for the next one.',
+  INVALID_BACKUP_CODE: 'This is none of your recovery codes, or it was used already.',
+  INVALID_TWO_FACTOR_COOKIE:
+    'This took too long, or too many tries. Go back to the password and start again.',
+  TOO_MANY_ATTEMPTS_REQUEST_NEW_CODE: 'Too many wrong codes. Go back to the password and start again.',
+  ACCOUNT_TEMPORARILY_LOCKED:
+    'Ten wrong codes in a row: no code is taken for a quarter of an hour. If it was not you, somebody knows your password; set a new one.',
   SESSION_NOT_FRESH: 'You signed in more than a day ago. Sign out and in again to do this.',
   SESSION_EXPIRED: 'Your session has ended. Sign in again.',
 };

@@ -2,19 +2,21 @@ import type { Metadata } from 'next';
 import { DeskFrame } from '@/app/_frames/desk-frame';
 import { enterDesk } from '@/app/_frames/enter-page';
 import { spacesOf } from '@/app/_frames/spaces';
+import { readSecondFactor } from '@/lib/auth/second-factor-data';
 import { PageHeader } from '../../_components/page-header';
 import { AccountSection } from './_components/account-section';
 import { Memberships } from './_components/memberships';
 import { NameForm } from './_components/name-form';
 import { PasswordForm } from './_components/password-form';
 import { ReadingSettings } from './_components/reading-settings';
+import { SecondFactor } from './_components/second-factor';
 import { SessionList } from './_components/session-list';
 
 export const metadata: Metadata = { title: 'Account' };
 
 export default async function AccountPage() {
   const person = await enterDesk();
-  const spaces = await spacesOf(person.id, '');
+  const [spaces, factor] = await Promise.all([spacesOf(person.id, ''), readSecondFactor(person.id)]);
   return (
     <DeskFrame person={person} crumbs={[{ label: 'Account' }]}>
       <PageHeader title="Account" lead="What is yours everywhere, in every studio and workspace." />
@@ -33,6 +35,12 @@ export default async function AccountPage() {
         </AccountSection>
         <AccountSection title="Password" lead="Setting a new one ends your sessions on all other devices.">
           <PasswordForm email={person.email} />
+        </AccountSection>
+        <AccountSection
+          title="Second factor"
+          lead="Something that you have, besides the password that you know."
+        >
+          <SecondFactor email={person.email} on={factor.on} codesLeft={factor.codesLeft} />
         </AccountSection>
         <AccountSection
           title="Sessions"

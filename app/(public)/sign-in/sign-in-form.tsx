@@ -36,6 +36,11 @@ export function SignInForm({ next, email }: { next: string; email: string }) {
       setFocus('password');
       return;
     }
+    // The right password of who has a second factor: a code is asked for on the next page.
+    if (answer.data && 'twoFactorRedirect' in answer.data) {
+      router.push(`/sign-in/code?next=${encodeURIComponent(next)}`);
+      return;
+    }
     const units = (answer.data?.user as { units?: unknown } | undefined)?.units;
     if (units === 'mm' || units === 'in') setUnits(units);
     router.replace(next);

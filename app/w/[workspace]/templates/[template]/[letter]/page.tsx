@@ -4,6 +4,7 @@ import { LiveBanner } from '@/app/_components/live/live-banner';
 import { LiveCorner } from '@/app/_components/live/live-corner';
 import { enterWorkspacePage, orNotFound } from '@/app/_frames/enter-page';
 import { WorkspaceFrame } from '@/app/_frames/workspace-frame';
+import { readSecondFactor } from '@/lib/auth/second-factor-data';
 import { viewDocket } from '@/lib/review/view-docket';
 import { viewRevisionByLetter } from '@/lib/review/view-revision';
 import { Room } from './_components/room';
@@ -26,7 +27,7 @@ export async function generateMetadata({ params }: Props): Promise<Metadata> {
 export default async function RevisionRoomPage({ params }: Props) {
   const { workspace, template, letter } = await params;
   const { ctx, revision } = await load(workspace, template, letter);
-  const docket = await viewDocket(ctx, revision.id);
+  const [docket, factor] = await Promise.all([viewDocket(ctx, revision.id), readSecondFactor(ctx.person.id)]);
   const home = `/w/${ctx.workspace.slug}`;
   return (
     <WorkspaceFrame
@@ -43,7 +44,7 @@ export default async function RevisionRoomPage({ params }: Props) {
       <Room
         key={revision.id}
         workspace={{ id: ctx.workspace.id, slug: ctx.workspace.slug, name: ctx.workspace.name }}
-        reader={{ id: ctx.person.id, name: ctx.person.name, role: ctx.role }}
+        reader={{ id: ctx.person.id, name: ctx.person.name, role: ctx.role, asksCode: factor.on }}
         revision={revision}
         docket={docket}
         loadedAt={new Date().getTime()}

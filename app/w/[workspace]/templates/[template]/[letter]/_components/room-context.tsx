@@ -10,6 +10,8 @@ export interface RoomReader {
   id: string;
   name: string;
   role: Role;
+  /** Has a second factor: signing asks for a code too. */
+  asksCode: boolean;
 }
 
 export interface RoomValue {

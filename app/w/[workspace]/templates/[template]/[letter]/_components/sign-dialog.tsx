@@ -5,6 +5,7 @@ import { explainError } from '@/app/_components/api-client';
 import { Button } from '@/app/_components/button';
 import { Dialog } from '@/app/_components/dialog';
 import { ErrorState } from '@/app/_components/error-state';
+import { CodeField } from '@/app/_components/code-field';
 import { PasswordField } from '@/app/_components/password-field';
 import { Skeleton } from '@/app/_components/skeleton';
 import { TextArea } from '@/app/_components/text-field';
@@ -34,7 +35,7 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
   const element = useRef<HTMLFormElement>(null);
   // Whoever is told what is wrong stands where it is wrong.
   useEffect(() => {
-    if (!errors.password && !errors.reason) return;
+    if (!errors.password && !errors.code && !errors.reason) return;
     element.current?.querySelector<HTMLElement>('[aria-invalid="true"]')?.focus();
   }, [errors]);
   return (
@@ -133,6 +134,15 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
           />
           {problem ? (
             <p role="alert" className="border-l-4 border-madder bg-madder-wash px-4 py-2.5">
+          {form.asksCode ? (
+            <CodeField
+              value={form.code}
+              onChange={form.setCode}
+              error={errors.code}
+              help="Each code works once."
+              roomy
+            />
+          ) : null}
               {problem}
             </p>
           ) : null}

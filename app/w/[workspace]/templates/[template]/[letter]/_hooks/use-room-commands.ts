@@ -101,6 +101,7 @@ export interface SignOff {
   gateId: string;
   digest: string;
   password: string;
+  code?: string;
   /** Given: the revision is returned with it. */
   reason?: string;
   key: string;
@@ -110,9 +111,9 @@ export interface SignOff {
 export function useSignOff(workspaceId: string, revisionId: string) {
   const refetch = useRefetchRoom(workspaceId, revisionId);
   return useMutation({
-    mutationFn: ({ gateId, digest, password, reason, key }: SignOff) =>
+    mutationFn: ({ gateId, digest, password, code, reason, key }: SignOff) =>
       api(`${workspaceApi(workspaceId)}/gates/${gateId}/${reason === undefined ? 'sign' : 'return'}`, {
-        body: reason === undefined ? { digest, password } : { digest, password, reason },
+        body: { digest, password, code, reason },
         idempotencyKey: key,
       }),
     onSuccess: refetch,

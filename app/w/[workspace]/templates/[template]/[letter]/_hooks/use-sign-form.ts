@@ -23,11 +23,14 @@ export function useSignForm(given: {
   onDone: () => void;
 }) {
   const { gate, decision, isOpen, signOff, onDone } = given;
-  const { workspace, revision } = useRoom();
+  const { workspace, revision, reader } = useRoom();
   const query = useContent(workspace.id, revision.id, isOpen);
   const [password, setPassword] = useState('');
+  const [code, setCode] = useState('');
+  /** Also when the second factor was turned on after the page was loaded. */
+  const [asksCode, setAsksCode] = useState(reader.asksCode);
   const [reason, setReason] = useState('');
-  const [errors, setErrors] = useState<{ password?: string; reason?: string }>({});
+  const [errors, setErrors] = useState<{ password?: string; code?: string; reason?: string }>({});
   const [problem, setProblem] = useState<string | null>(null);
   const [key, setKey] = useState(newIdempotencyKey);
   /** The content that the signer has read; a newer one is only shown together with what changed. */
@@ -38,6 +41,7 @@ export function useSignForm(given: {
   if (wasOpen !== isOpen) {
     setWasOpen(isOpen);
     setPassword('');
+    setCode('');
     setErrors({});
     setProblem(null);
     setRead(null);
@@ -58,6 +62,13 @@ export function useSignForm(given: {
     const { detail } = explainError(error);
     if (!(error instanceof ApiError)) return setProblem(detail);
     if (error.reason === 'wrong-password') return setErrors({ password: detail });
+    if (error.reason === 'code-needed' || error.reason === 'wrong-code') {
+      setAsksCode(true);
+      setCode('');
+      return setErrors({ code: detail });
+    }
+    // A code serves once, whatever came of it.
+    setCode('');
     if (error.reason === 'content-changed') {
       setPassword('');
       await query.refetch();
@@ -71,7 +82,8 @@ export function useSignForm(given: {
   const submit = () => {
     if (!read || signOff.isPending) return;
     const schema = decision === 'sign' ? SignInput : ReturnInput;
-    const parsed = schema.safeParse({ digest: read.digest, password, reason });
+    const given = asksCode ? { digest: read.digest, password, code } : { digest: read.digest, password };
+    const parsed = schema.safeParse({ ...given, reason });
     setProblem(null);
     if (!parsed.success) {
       const issues = Object.fromEntries(parsed.error.issues.map((i) => [i.path[0], i.message]));
@@ -81,8 +93,7 @@ export function useSignForm(given: {
     signOff.mutate(
       {
         gateId: gate.gateId,
-        digest: read.digest,
-        password,
+        ...given,
         reason: decision === 'return' ? reason.trim() : undefined,
         key,
       },
@@ -107,7 +118,10 @@ export function useSignForm(given: {
     problem,
     password,
     reason,
+    code,
+    asksCode,
     setPassword,
+    setCode,
     setReason,
     submit,
     loadError: query.isError && !read ? query.error : null,
