@@ -1,26 +1,27 @@
 import type { EffectiveRecipe } from '../recipe';
-import type { Basis, Check, CheckStatus } from '../report';
+import type { Basis, Check, CheckStatus, Place, SheetZone } from '../report';
 import type { FormedSheet } from '../sheet/form-sheet';
-import type { GaugeRemedy, ThinRemedy } from '../sheet/gauge-for';
+import type { ThinRemedy } from '../sheet/gauge-for';
+import type { FootRemedy, SheetJudgement } from '../sheet/judge-sheet';
 import { say, sayPlace } from './basis';
 import type { CheckInput } from './check-input';
 
 const BASIS: Basis = {
   source:
-    'incompressible neo-Hookean membrane, full stick, computed; held against its differential equation and the no-slip strip; margin: own estimate, no experiment',
+    'incompressible neo-Hookean membrane, full stick, computed; held against its differential equation and the no-slip strip; margin: own estimate, no experiment; trimmed at or above the foot: common practice, no source',
   kind: 'computed',
 };
 
-/** Change of the 5 % quantile against half the nodes above which the figures are the mesh's as much as the sheet's. */
-const COARSE_PERCENT = 25;
+/** Share of the sheet that does not close onto the template from which that is said, and looked at. */
+const OPEN_PERCENT = 0.5;
 
-const PLACES = {
+const PLACES: Record<SheetZone['place'], string> = {
   flat: 'on a flat',
   wall: 'on a wall',
   'inner-corner': 'in an inner corner',
   pit: 'in a pit',
   web: 'in a web',
-} as const;
+};
 
 const LOCALLY: Record<ThinRemedy, string> = {
   gauge: '',
@@ -29,8 +30,13 @@ const LOCALLY: Record<ThinRemedy, string> = {
   height: 'less height or more draft of that wall',
 };
 
-/** Is the formed part thick enough everywhere, with the honest margin of the model? Null where nothing was formed. */
-export function checkSheet({ recipe, sheet }: Pick<CheckInput, 'recipe' | 'sheet'>): Check | null {
+type Input = Pick<CheckInput, 'recipe' | 'sheet'> & { report?: Pick<CheckInput['report'], 'undercut'> };
+
+/**
+ * Is the formed part thick enough everywhere, with the honest margin of the model? The foot along the bed is told
+ * apart: it is trimmed off, unless the flange is kept. Null where nothing was formed.
+ */
+export function checkSheet({ recipe, sheet, report }: Input): Check | null {
   if (!sheet) return null;
   const limit = recipe.sheet.minFormedMm;
   const { formed } = sheet;
@@ -39,49 +45,81 @@ export function checkSheet({ recipe, sheet }: Pick<CheckInput, 'recipe' | 'sheet
     const remedy = 'Widen the frame, or make the template smaller.';
     return { id: 'sheet', status: 'not-run', measured: null, limit, unit: 'mm', basis: BASIS, message, remedy, places: [] }; // prettier-ignore
   }
-  const { report } = formed;
+  const part = zoneOf(formed);
+  const bridged = (report?.undercut.maxDepthMm ?? 0) > recipe.limits.undercutDepthMm;
   return {
     id: 'sheet',
-    status: statusOf(formed, limit, sheet.neededMm),
-    measured: report.minMm,
+    status: statusOf(formed, part, limit, sheet.neededMm),
+    measured: part.minMm,
     limit,
     unit: 'mm',
     basis: BASIS,
-    message: messageOf(formed, recipe),
-    remedy: sheet.remedy ? remedyOf(sheet.remedy, sheet.neededMm, report.marginPercent) : '',
-    places: [{ at: report.minAt, areaMm2: report.belowLimitAreaMm2 }],
+    message: messageOf(formed, part, recipe, bridged),
+    remedy: [remedyOf(sheet, part), footWords(formed, sheet.footRemedy)].filter(Boolean).join(' '),
+    places: placesOf(formed, part, limit),
   };
 }
 
-function statusOf({ outcome, report }: FormedSheet, limit: number, neededMm: number): CheckStatus {
-  if (outcome === 'volume-lost') return 'caution';
-  // Too thin whatever the model's margin, or over more than a corner.
-  if (report.minMm * (1 + report.marginPercent / 100) < limit || report.q05Mm < limit) return 'fail';
-  const sure = outcome === 'converged' && report.meshErrorPercent <= COARSE_PERCENT;
-  return sure && report.minMm >= neededMm ? 'pass' : 'caution';
+/** The part, or the whole sheet over a template that stands no higher than a foot. */
+function zoneOf({ report, minPlace, formedAreaMm2 }: FormedSheet): SheetZone {
+  return report.part ?? { ...report, place: minPlace, areaMm2: formedAreaMm2 };
 }
 
-function messageOf(
-  { report, outcome, minPlace, formedAreaMm2 }: FormedSheet,
-  recipe: EffectiveRecipe,
-): string {
+/** Both meshes must see a failure: one alone may be the mesh's doing. */
+function statusOf(
+  { outcome, report, formedAreaMm2 }: FormedSheet,
+  part: SheetZone,
+  limit: number,
+  neededMm: number,
+): CheckStatus {
+  if (outcome === 'volume-lost') return 'caution';
+  const coarseMm = part.minMm * (1 + part.meshErrorPercent / 100);
+  if (part.minMm < limit && (!isMeshLimited(part) || coarseMm < limit || part.q05Mm < limit)) return 'fail';
+  const sure = outcome === 'converged' && !isMeshLimited(part) && openPercent(report, formedAreaMm2) < OPEN_PERCENT; // prettier-ignore
+  const footHolds = !report.foot || report.foot.minMm >= limit;
+  return sure && footHolds && part.minMm >= neededMm ? 'pass' : 'caution';
+}
+
+/** Where half the nodes differ by more than the model's own margin, the figure is the mesh's as much as the sheet's. */
+function isMeshLimited({ meshErrorPercent, marginPercent }: SheetZone): boolean {
+  return meshErrorPercent > marginPercent;
+}
+
+function openPercent({ unclosedAreaMm2 }: FormedSheet['report'], formedAreaMm2: number): number {
+  return (100 * unclosedAreaMm2) / formedAreaMm2;
+}
+
+function messageOf(formed: FormedSheet, part: SheetZone, recipe: EffectiveRecipe, bridged: boolean): string {
+  const { report, outcome, formedAreaMm2 } = formed;
   const { gaugeMm, minFormedMm } = recipe.sheet;
+  if (outcome === 'volume-lost')
+    return 'The run lost sheet volume, so its figures are not to be used. Prove the thickness with a test pull.';
+  const { foot } = report;
+  const leastMm = part.minMm * (1 - part.marginPercent / 100);
   const parts = [
-    `A ${say(gaugeMm, 2)} mm sheet forms to ${say(report.minMm, 2)} mm at its thinnest, ${PLACES[minPlace]} at ${sayPlace(report.minAt)} (mean over 3 mm, give or take ${report.marginPercent} %); a twentieth of it is thinner than ${say(report.q05Mm, 2)} mm, against ${say(minFormedMm, 2)} mm wanted.`,
+    `A ${say(gaugeMm, 2)} mm sheet forms to ${say(part.minMm, 2)} mm at the part’s thinnest, ${PLACES[part.place]} at ${sayPlace(part.minAt)} (mean over 3 mm); less the model’s ${part.marginPercent} % that is ${say(leastMm, 2)} mm at least, against ${say(minFormedMm, 2)} mm wanted. A twentieth of the part is thinner than ${say(part.q05Mm, 2)} mm.`,
   ];
-  const open = (100 * report.unclosedAreaMm2) / formedAreaMm2;
-  if (open >= 0.5) parts.push(`${say(open)} % of it does not close onto the template: webs.`);
-  if (report.meshErrorPercent > COARSE_PERCENT)
+  if (foot && foot.minMm < part.minMm)
     parts.push(
-      `Half the nodes give figures ${say(report.meshErrorPercent, 0)} % away: take them as a rough guide.`,
+      `Along the bed, in the ${say(report.footHeightMm)} mm of foot that are usually trimmed off, it thins to ${say(foot.minMm, 2)} mm.`,
+    );
+  const open = openPercent(report, formedAreaMm2);
+  if (open >= OPEN_PERCENT)
+    parts.push(
+      `${say(open)} % of the sheet does not close onto the template: webs or slots too tight for it.`,
+    );
+  if (isMeshLimited(part))
+    parts.push(
+      `A mesh half as fine puts that least thickness ${say(part.meshErrorPercent, 0)} % away, more than the margin: the place is too sharp for the run, so take the figure as a rough guide.`,
     );
   if (outcome === 'not-settled') parts.push('The run did not settle: take the figures as a rough guide.');
-  if (outcome === 'volume-lost') parts.push('The run lost sheet volume: its figures are not to be used.');
+  if (bridged) parts.push('Over the undercut the sheet is taken to hang straight down.');
   parts.push('An estimate; prove it with a test pull.');
   return parts.join(' ');
 }
 
-function remedyOf(remedy: GaugeRemedy, neededMm: number, marginPercent: number): string {
+function remedyOf({ remedy, neededMm }: SheetJudgement, { marginPercent }: SheetZone): string {
+  if (!remedy) return '';
   const { gaugeMm, scaledMm, minMm, better } = remedy;
   if (gaugeMm === null) {
     const change =
@@ -90,5 +128,25 @@ function remedyOf(remedy: GaugeRemedy, neededMm: number, marginPercent: number):
   }
   const gauge = `Take a gauge of ${say(gaugeMm, 2)} mm: a run with it leaves ${say(minMm, 2)} mm, enough with the margin of ${marginPercent} %`;
   const local = LOCALLY[better];
-  return local === '' ? `${gauge}.` : `${gauge}; little of the sheet is thin, so ${local} serves better.`;
+  return local === '' ? `${gauge}.` : `${gauge}; little of the part is thin, so ${local} serves better.`;
+}
+
+/** What the foot needs, which is nothing where it is cut off. */
+function footWords({ report }: FormedSheet, remedy: FootRemedy | null): string {
+  if (!remedy) return '';
+  const { radiusMm, triedMm, minMm, runs } = remedy.radius;
+  const round =
+    radiusMm === null
+      ? `an inside radius there does not do it (${say(triedMm)} mm ${runs > 0 ? 'leave' : 'would leave about'} ${say(minMm, 2)} mm)`
+      : `round the foot with ${say(radiusMm)} mm inside (a run with it leaves ${say(minMm, 2)} mm there)`;
+  return `Trim ${say(report.footHeightMm)} mm or more above the bed and the thin foot is waste; where the flange stays on the part, ${round}, or take a gauge of ${say(remedy.gaugeMm, 2)} mm.`;
+}
+
+function placesOf({ report, webAt }: FormedSheet, part: SheetZone, limit: number): Place[] {
+  const { foot } = report;
+  return [
+    { at: part.minAt, areaMm2: part.belowLimitAreaMm2 },
+    ...(foot && foot.minMm < limit ? [{ at: foot.minAt, areaMm2: foot.belowLimitAreaMm2 }] : []),
+    ...(webAt && report.unclosedAreaMm2 > 0 ? [{ at: webAt, areaMm2: report.unclosedAreaMm2 }] : []),
+  ];
 }

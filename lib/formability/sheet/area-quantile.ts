@@ -9,7 +9,7 @@ export function orderByThickness({ thickness }: Stretches): Uint32Array {
 
 /** Thickness that a share of the formed area lies below, mm. */
 export function areaQuantile(
-  { area, thickness, formedArea }: Stretches,
+  { area, thickness, formedArea }: Pick<Stretches, 'area' | 'thickness' | 'formedArea'>,
   order: Uint32Array,
   share: number,
 ): number {

@@ -9,6 +9,10 @@ const SPACING_MM = 0.6;
 const MOST_PARTS = 24;
 /** Share of the formed area, thinnest first, in which the disc's centre is looked for. */
 const SEARCHED = 0.1;
+/** A disc that is cut off, by the frame or a zone's edge, counts from this share of its area on. */
+const LEAST_SHARE = 0.3;
+
+export type Keep = (x: number, y: number, z: number) => boolean;
 
 export interface Thinnest {
   minMm: number;
@@ -19,12 +23,18 @@ export interface Thinnest {
  * Least thickness averaged over a disc of 3 mm diameter on the formed surface. Elements are cut into points of equal
  * area with the element's thickness (nodes' means are up to half again too thick at an inner corner); a disc is all
  * points within 1.5 mm of its centre, and centres are the nodes and middles of the thinnest tenth of the surface.
- * @param thinFirst element numbers by rising thickness
+ * @param thinFirst element numbers by rising thickness: all, or those of a zone
+ * @param keep whether a point belongs to the zone; a disc at its edge is the part of it that does
  */
-export function findThinnest(sheet: Membrane, stretches: Stretches, thinFirst: Uint32Array): Thinnest {
-  const centres = listCentres(sheet, stretches, thinFirst);
+export function findThinnest(
+  sheet: Membrane,
+  stretches: Stretches,
+  thinFirst: Uint32Array,
+  keep: Keep = () => true,
+): Thinnest {
+  const centres = listCentres(sheet, stretches, thinFirst, keep);
   const bins = makeBins(centres);
-  const cloud = scatter(sheet, stretches, bins);
+  const cloud = scatter(sheet, stretches, bins, keep);
   let best: Thinnest = { minMm: Infinity, at: [0, 0, 0] };
   for (let k = 0; k < centres.length; k += 3) {
     const mean = meanAround(cloud, bins, centres[k], centres[k + 1], centres[k + 2]);
@@ -33,22 +43,24 @@ export function findThinnest(sheet: Membrane, stretches: Stretches, thinFirst: U
   return best;
 }
 
-function listCentres(sheet: Membrane, { area, formedArea }: Stretches, thinFirst: Uint32Array): Float64Array {
+function listCentres(sheet: Membrane, { area }: Stretches, thinFirst: Uint32Array, keep: Keep): Float64Array {
   const { corners, at } = sheet;
+  const whole = thinFirst.reduce((sum, e) => sum + area[e], 0);
   const centres = new Float64Array(12 * thinFirst.length);
   const taken = new Uint8Array(sheet.nodes);
   let end = 0;
   let covered = 0;
-  for (let k = 0; k < thinFirst.length && covered <= SEARCHED * formedArea; k++) {
+  for (let k = 0; k < thinFirst.length && covered <= SEARCHED * whole; k++) {
     const e = thinFirst[k];
     covered += area[e];
     for (let axis = 0; axis < 3; axis++) {
       const sum = at[3 * corners[3 * e] + axis] + at[3 * corners[3 * e + 1] + axis] + at[3 * corners[3 * e + 2] + axis]; // prettier-ignore
       centres[end++] = sum / 3;
     }
+    if (!keep(centres[end - 3], centres[end - 2], centres[end - 1])) end -= 3;
     for (let c = 3 * e; c < 3 * e + 3; c++) {
       const n = corners[c];
-      if (taken[n]) continue;
+      if (taken[n] || !keep(at[3 * n], at[3 * n + 1], at[3 * n + 2])) continue;
       taken[n] = 1;
       for (let axis = 0; axis < 3; axis++) centres[end++] = at[3 * n + axis];
     }
@@ -99,13 +111,13 @@ interface Cloud {
   values: Float64Array;
 }
 
-function scatter(sheet: Membrane, stretches: Stretches, bins: Bins): Cloud {
+function scatter(sheet: Membrane, stretches: Stretches, bins: Bins, keep: Keep): Cloud {
   const start = new Uint32Array(bins.wanted.length + 1);
-  eachPoint(sheet, stretches, bins, (bin) => start[bin + 1]++);
+  eachPoint(sheet, stretches, bins, keep, (bin) => start[bin + 1]++);
   for (let b = 0; b < bins.wanted.length; b++) start[b + 1] += start[b];
   const next = start.slice();
   const values = new Float64Array(5 * start[bins.wanted.length]);
-  eachPoint(sheet, stretches, bins, (bin, x, y, z, area, thickness) => {
+  eachPoint(sheet, stretches, bins, keep, (bin, x, y, z, area, thickness) => {
     const k = 5 * next[bin]++;
     values[k] = x;
     values[k + 1] = y;
@@ -118,7 +130,7 @@ function scatter(sheet: Membrane, stretches: Stretches, bins: Bins): Cloud {
 
 type Visit = (bin: number, x: number, y: number, z: number, area: number, thickness: number) => void;
 
-function eachPoint(sheet: Membrane, stretches: Stretches, bins: Bins, visit: Visit): void {
+function eachPoint(sheet: Membrane, stretches: Stretches, bins: Bins, keep: Keep, visit: Visit): void {
   const { at, corners, elements } = sheet;
   for (let e = 0; e < elements; e++) {
     const [a, b, c] = [corners[3 * e], corners[3 * e + 1], corners[3 * e + 2]];
@@ -139,7 +151,7 @@ function eachPoint(sheet: Membrane, stretches: Stretches, bins: Bins, visit: Vis
         const bin = binAt(bins, x, y);
         if (!bins.wanted[bin]) continue;
         const z = w * at[p + 2] + u * at[q + 2] + v * at[r + 2];
-        visit(bin, x, y, z, area, stretches.thickness[e]);
+        if (keep(x, y, z)) visit(bin, x, y, z, area, stretches.thickness[e]);
       }
     }
   }
@@ -174,5 +186,5 @@ function meanAround({ start, values }: Cloud, bins: Bins, x: number, y: number, 
       volume += values[k + 3] * values[k + 4];
     }
   }
-  return area > 0 ? volume / area : Infinity;
+  return area > LEAST_SHARE * Math.PI * RADIUS ** 2 ? volume / area : Infinity;
 }

@@ -1,9 +1,11 @@
-import type { Point, SheetReport } from '../report';
+import type { Point, SheetReport, SheetZone } from '../report';
 import { UnusableInput } from '../unusable-input';
 import { drapeAndPress, type Drape } from './drape-and-press';
+import { findFoot, type Foot } from './find-foot';
 import { DISC_MM, findThinnest } from './find-thinnest';
 import { judgePlace, marginPercent, type PlaceKind } from './judge-place';
 import { measureElements, type Stretches } from './measure-elements';
+import { measureZone, type ZoneFigures } from './measure-zone';
 import { makeRectangle, type Membrane } from './membrane';
 import { makeObstacle, type Obstacle } from './obstacle';
 import { planDrape } from './plan-drape';
@@ -77,9 +79,12 @@ export function formSheet(input: SheetInput, options: SheetOptions = {}): Formed
     const drape = drapeAndPress(sheet, template, plan, onStep);
     return { sheet, drape, hangingWebMm2, stretches: measureElements(sheet, input.gaugeMm) };
   };
-  const half = form([cells[0] / 2, cells[1] / 2], report(0, HALF_SHARE)).stretches;
-  const halfQ05 = areaQuantile(half, orderByThickness(half), 0.05);
-  const formed = summarise(input, template, form(cells, report(HALF_SHARE, 0.97)), halfQ05);
+  const foot = findFoot(template);
+  const halfShare = options.single ? 0 : HALF_SHARE;
+  const half = options.single
+    ? null
+    : measureFigures(input, foot, form([cells[0] / 2, cells[1] / 2], report(0, halfShare)));
+  const formed = summarise(input, template, foot, form(cells, report(halfShare, 0.95)), half);
   options.onProgress?.(1);
   return formed;
 }
@@ -105,20 +110,52 @@ function foldedArea({ area, folded }: Stretches): number {
   return sum;
 }
 
+/** What both meshes are measured for. */
+interface Figures {
+  order: Uint32Array;
+  q05Mm: number;
+  part: ZoneFigures | null;
+  foot: ZoneFigures | null;
+}
+
+function measureFigures({ minFormedMm }: SheetInput, foot: Foot, { sheet, stretches }: Result): Figures {
+  const order = orderByThickness(stretches);
+  const zone = (keep: Foot['holds']) => measureZone(sheet, stretches, order, keep, minFormedMm);
+  return {
+    order,
+    q05Mm: areaQuantile(stretches, order, 0.05),
+    part: zone((x, y, z) => !foot.holds(x, y, z)),
+    foot: zone(foot.holds),
+  };
+}
+
 function summarise(
   input: SheetInput,
   template: Obstacle,
-  { sheet, stretches, drape, hangingWebMm2 }: Result,
-  halfQ05: number,
+  foot: Foot,
+  result: Result,
+  half: Figures | null,
 ): FormedSheet {
+  const { sheet, stretches, drape, hangingWebMm2 } = result;
   const { frameMm, gaugeMm, minFormedMm } = input;
-  const order = orderByThickness(stretches);
+  const figures = measureFigures(input, foot, result);
+  const { order, q05Mm } = figures;
   const thinnest = findThinnest(sheet, stretches, order);
   const reach = Math.max(TIGHT_MM, 2 * sheet.cell);
   const surface = drawSurface(sheet, stretches);
-  const webbed = isWebNear(sheet, surface, thinnest.at, DISC_MM / 2);
-  const minPlace = webbed ? 'web' : judgePlace(template, thinnest.at, reach);
-  const q05Mm = areaQuantile(stretches, order, 0.05);
+  const placeOf = (at: Point): PlaceKind =>
+    isWebNear(sheet, surface, at, DISC_MM / 2) ? 'web' : judgePlace(template, at, reach);
+  const minPlace = placeOf(thinnest.at);
+  const zoneOf = (name: 'part' | 'foot'): SheetZone | null => {
+    const zone = figures[name];
+    if (!zone || zone.minMm === Infinity) return null;
+    const { at, ...rest } = zone;
+    const place = placeOf(at);
+    // A zone that the coarse mesh does not see at all is the fine mesh's word alone.
+    const coarse = (half ?? figures)[name]?.minMm ?? Infinity;
+    const meshErrorPercent = coarse === Infinity ? 100 : (100 * Math.abs(zone.minMm - coarse)) / zone.minMm;
+    return { ...rest, minAt: at, place, marginPercent: marginPercent(place), meshErrorPercent };
+  };
   const volume = frameMm[0] * frameMm[1] * gaugeMm;
   const volumeError = (stretches.volume - volume) / volume;
   const lost = !(Math.abs(volumeError) <= VOLUME_ALARM);
@@ -141,9 +178,12 @@ function summarise(
       volumeErrorPercent: 100 * volumeError,
       nodes: surface.nodes,
       steps: drape.steps,
-      meshErrorPercent: (100 * Math.abs(q05Mm - halfQ05)) / q05Mm,
+      meshErrorPercent: (100 * Math.abs(q05Mm - (half ?? figures).q05Mm)) / q05Mm,
       marginPercent: marginPercent(minPlace),
       converged: outcome === 'converged',
+      part: zoneOf('part'),
+      foot: zoneOf('foot'),
+      footHeightMm: foot.heightMm,
     },
     outcome,
     residual: drape.residual,

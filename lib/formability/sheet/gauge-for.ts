@@ -1,3 +1,4 @@
+import type { SheetReport } from '../report';
 import { formSheet, type FormedSheet } from './form-sheet';
 import type { SheetInput, SheetOptions } from './sheet-input';
 
@@ -9,7 +10,7 @@ export interface GaugeRemedy {
   gaugeMm: number | null;
   /** Gauge that scaling asks for, mm: beyond four times the present one it is not run, for no gauge mends that. */
   scaledMm: number;
-  /** Least thickness of the last run, mm. */
+  /** Least thickness of the part in the last run, mm. */
   minMm: number;
   runs: number;
   /** What would serve better than gauge where little of the sheet is thin. */
@@ -22,7 +23,7 @@ const MOST_FACTOR = 4;
 const LOCAL_SHARE = 0.05;
 
 /**
- * The gauge that gives a wanted least thickness: scaled (thickness goes with gauge while p/(μ t0) is held), then
+ * The gauge that gives the part a wanted least thickness: scaled (thickness goes with gauge while p/(μ t0) is held), then
  * verified by a run of its own, and scaled again while that falls short, as it may where a given load presses a
  * thicker sheet less far into corners.
  * @param formed the run at `input`'s own gauge
@@ -40,15 +41,16 @@ export function gaugeFor(
       `a wanted thickness of ${wantedMinMm} mm in steps of ${stepMm} mm: give numbers above 0`,
     );
   }
+  const least = ({ part, minMm }: SheetReport) => part?.minMm ?? minMm;
   const better = betterChange(formed);
   let gaugeMm = input.gaugeMm;
-  let { minMm } = formed.report;
+  let minMm = least(formed.report);
   let runs = 0;
   while (minMm < wantedMinMm && runs < MOST_RUNS) {
     const scaled = stepMm * Math.ceil((gaugeMm * wantedMinMm) / minMm / stepMm - 1e-9);
     if (scaled > MOST_FACTOR * input.gaugeMm) return { gaugeMm: null, scaledMm: scaled, minMm, runs, better };
     gaugeMm = scaled;
-    minMm = formSheet({ ...input, gaugeMm }, options).report.minMm;
+    minMm = least(formSheet({ ...input, gaugeMm }, { ...options, single: true }).report);
     runs++;
   }
   return { gaugeMm: minMm >= wantedMinMm ? gaugeMm : null, scaledMm: gaugeMm, minMm, runs, better };
@@ -59,8 +61,13 @@ export function gaugeFor(
  * pit or slot, less height on a wall (own judgement, no source).
  */
 export function betterChange({ report, minPlace, formedAreaMm2 }: FormedSheet): ThinRemedy {
-  if (report.belowLimitAreaMm2 > LOCAL_SHARE * formedAreaMm2) return 'gauge';
-  if (minPlace === 'inner-corner') return 'radius';
-  if (minPlace === 'pit' || report.unclosedAreaMm2 > report.belowLimitAreaMm2) return 'gap';
-  return minPlace === 'wall' ? 'height' : 'gauge';
+  const { place, belowLimitAreaMm2, areaMm2 } = report.part ?? {
+    place: minPlace,
+    belowLimitAreaMm2: report.belowLimitAreaMm2,
+    areaMm2: formedAreaMm2,
+  };
+  if (belowLimitAreaMm2 > LOCAL_SHARE * areaMm2) return 'gauge';
+  if (place === 'inner-corner') return 'radius';
+  if (place === 'pit' || place === 'web' || report.unclosedAreaMm2 > belowLimitAreaMm2) return 'gap';
+  return place === 'wall' ? 'height' : 'gauge';
 }

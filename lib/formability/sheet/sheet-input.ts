@@ -20,6 +20,8 @@ export interface SheetOptions {
   nodes?: number;
   /** Fewer iterations a step: a first look. */
   preview?: boolean;
+  /** No run at half the nodes: mesh errors read 0. For a run that verifies what another one found. */
+  single?: boolean;
   /** Share of the work done, 0 to 1. */
   onProgress?(share: number): void;
   /** Asked at every load step; true ends the run with UnusableInput `stopped`. */

@@ -46,12 +46,15 @@ describe('the sheet over a surveyed part', () => {
     expect(judged.remedy).toBeNull();
     const check = checkSheet({ recipe: thick, sheet: judged })!;
     expect(check).toMatchObject({ id: 'sheet', status: 'pass', limit: 0.3, unit: 'mm', remedy: '' });
-    expect(check.measured).toBe(judged.formed!.report.minMm);
+    const { minMm, marginPercent } = judged.formed!.report.part!;
+    expect(check.measured).toBe(minMm);
+    const least = (minMm * (1 - marginPercent / 100)).toFixed(2).replace(/0$/, '');
+    expect(check.message).toContain(`less the model’s ${marginPercent} % that is ${least} mm at least`);
     expect(check.message).toContain('An estimate; prove it with a test pull.');
   });
 
   it('cautions within the margin, fails below the limit, with a gauge whose own run is enough', () => {
-    const { minMm, marginPercent } = judged.formed!.report;
+    const { minMm, marginPercent } = judged.formed!.report.part!;
     const near = recipeOf(2, minMm * (1 - marginPercent / 200));
     const caution = judgeSheet(part, near, [100, 80]);
     expect(checkSheet({ recipe: near, sheet: caution })!.status).toBe('caution');
@@ -83,16 +86,45 @@ describe('the sheet over a surveyed part', () => {
       status: 'caution',
       message: expect.stringContaining('lost sheet volume'),
     });
-    expect(say(shaken({ meshErrorPercent: 60 }))).toMatchObject({
+    const { part } = judged.formed!.report;
+    expect(say(shaken({ part: { ...part, meshErrorPercent: 60 } }))).toMatchObject({
       status: 'caution',
       message: expect.stringContaining('60 % away'),
     });
-    expect(say(shaken({ unclosedAreaMm2: 900 })).message).toContain('does not close onto the template');
+    expect(say(shaken({ unclosedAreaMm2: 900 }))).toMatchObject({
+      status: 'caution',
+      message: expect.stringContaining('does not close onto the template'),
+    });
+    // One mesh alone below the limit is no failure; both of them are.
+    const thinPart = { ...part, minMm: 0.25, q05Mm: 0.4 };
+    expect(say(shaken({ part: { ...thinPart, meshErrorPercent: 50 } })).status).toBe('caution');
+    expect(say(shaken({ part: { ...thinPart, meshErrorPercent: 10 } })).status).toBe('fail');
+  });
+
+  it('tells the foot apart: too thin there is for a look, with what to do about it', () => {
+    const steep = { ...part, holes: { surface: field([60, 40], block(60, 40, 16, 1)).heights } } as Part;
+    const bare = judgeSheet(steep, recipeOf(1, 0.01), [100, 80]).formed!.report;
+    expect(bare.foot!.minMm).toBeLessThan(bare.part!.minMm);
+    expect(bare.foot!.minAt[2]).toBeLessThanOrEqual(bare.footHeightMm);
+    expect(bare.part!.minAt[2]).toBeGreaterThan(bare.footHeightMm);
+    // Between the two, and with room for the margin above the foot.
+    const wanted = bare.foot!.minMm * 1.02;
+    const recipe = recipeOf(1.6 * 1, wanted * 1.6);
+    const seen = judgeSheet(steep, recipe, [100, 80]);
+    const check = checkSheet({ recipe, sheet: seen })!;
+    expect(check.status).toBe('caution');
+    expect(check.measured).toBe(seen.formed!.report.part!.minMm);
+    expect(check.message).toContain('usually trimmed off');
+    expect(check.remedy).toContain('the thin foot is waste');
+    const { radiusMm, minMm } = seen.footRemedy!.radius;
+    expect(radiusMm).toBeGreaterThan(1.5);
+    expect(minMm).toBeGreaterThanOrEqual(wanted * 1.6);
+    expect(check.places).toHaveLength(2);
   });
 
   it('says so where no gauge mends it', () => {
     const recipe = recipeOf(2, 1.99);
-    const hopeless = checkSheet({ recipe, sheet: judgeSheet(part, recipe, [72, 52]) })!;
+    const hopeless = checkSheet({ recipe, sheet: judgeSheet(part, recipe, [66, 46]) })!;
     expect(hopeless.status).toBe('fail');
     expect(hopeless.remedy).toMatch(/^No usual gauge mends this: .* would take about \d+(\.\d)? mm of sheet/);
   });
