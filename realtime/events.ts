@@ -13,6 +13,7 @@ const fieldsOf = {
   'docket.changed': { revisionId: 'id', threadId: 'id?' },
   'job.progressed': { id: 'id', subjectId: 'id', stage: 'word', progress: 'share' },
   'people.changed': { id: 'id' },
+  'gate-plan.changed': { id: 'id', version: 'version?' },
   'today.changed': { id: 'id' },
 } as const satisfies Record<string, Record<string, Field>>;
 

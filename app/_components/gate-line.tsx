@@ -1,4 +1,5 @@
 import clsx from 'clsx';
+import { DueDay } from './due-day';
 import { StateShape, type Shape } from './state-shape';
 import { Time } from './time';
 
@@ -17,7 +18,16 @@ export interface GateStep {
   state: 'passed' | 'open' | 'ahead' | 'returned';
   signatures?: readonly GateSignature[];
   /** Who is awaited at an open gate, and since when. */
-  awaited?: { names: readonly string[]; since?: string; due?: string; have?: number; needed?: number };
+  awaited?: {
+    names: readonly string[];
+    since?: string;
+    /** A day, `2026-10-25`. */
+    due?: string;
+    have?: number;
+    needed?: number;
+    /** All of the names are needed, not some. */
+    everybody?: boolean;
+  };
   /** One plain line, such as `passed 09:42, one finding waived`, or what a gate ahead is for. */
   line?: React.ReactNode;
 }
@@ -80,12 +90,12 @@ function GateCell({ gate }: { gate: GateStep }) {
   );
 }
 
-function Awaited({ names, since, due, have, needed }: NonNullable<GateStep['awaited']>) {
+function Awaited({ names, since, due, have, needed, everybody }: NonNullable<GateStep['awaited']>) {
   return (
     <p className="text-sm text-slate">
       waits for{' '}
       <span className="font-medium text-ink">
-        {names.length > 0 ? joinNames(names) : 'someone to be named'}
+        {names.length > 0 ? joinNames(names, everybody ? 'and' : 'or') : 'someone to be named'}
       </span>
       {since ? (
         <>
@@ -95,7 +105,7 @@ function Awaited({ names, since, due, have, needed }: NonNullable<GateStep['awai
       ) : null}
       {due ? (
         <>
-          , due <Time at={due} show="day" />
+          , due <DueDay on={due} standing="in_review" />
         </>
       ) : null}
       {needed && needed > 1 ? `, ${have ?? 0} of ${needed} signed` : ''}
@@ -104,7 +114,7 @@ function Awaited({ names, since, due, have, needed }: NonNullable<GateStep['awai
 }
 
 /** `A`, `A or B`, `A, B or C`. */
-export function joinNames(names: readonly string[]): string {
+export function joinNames(names: readonly string[], last: 'or' | 'and' = 'or'): string {
   if (names.length < 2) return names[0] ?? '';
-  return `${names.slice(0, -1).join(', ')} or ${names[names.length - 1]}`;
+  return `${names.slice(0, -1).join(', ')} ${last} ${names[names.length - 1]}`;
 }

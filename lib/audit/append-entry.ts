@@ -21,6 +21,7 @@ export type AuditEvent = {
     | 'pack'
     | 'check-run'
     | 'gate-plan'
+    | 'stand-in'
     | 'draft';
   subjectId: string;
   /** JSON only; what a reader needs to understand the entry in years: letters, names, digests, reasons. */

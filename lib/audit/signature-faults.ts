@@ -5,6 +5,10 @@ import { digestOf } from './canonical';
 import type { AuditRow } from './data';
 import { sameJson } from './same-json';
 
+/** Whom a signer stood in for, as signatures are told everywhere. */
+export const signedForOf = ({ signedForId, signedForName }: SignatureRow) =>
+  signedForId || signedForName ? { id: signedForId, name: signedForName } : null;
+
 /** Holds each signature against its entry in the chain and the content that it was put to, and the other way round. */
 export function signatureFaults(
   signed: SignatureRow[],
@@ -33,6 +37,7 @@ export function signatureFaults(
       meaning: detail.meaning ?? row.meaning,
       signedAt: detail.signedAt ?? row.signedAt.toISOString(),
       reason: detail.reason ?? null,
+      signedFor: detail.signedFor ?? null,
       decision: witness.action === 'gate.signed' ? 'sign' : 'return',
     };
     const {
@@ -59,6 +64,7 @@ export function signatureFaults(
       reason,
       decision,
       signedAt: row.signedAt.toISOString(),
+      signedFor: signedForOf(row),
     };
     if (!sameJson(stored, told)) faults.push(`${name} is not as the audit chain has it`);
     if (digestOf({ ...locked, ...partsOf(detail) }) !== row.contentDigest)

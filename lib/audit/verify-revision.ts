@@ -3,7 +3,14 @@ import { findCheckRun, findReportById } from '@/lib/review/check-data';
 import { composeContent, type Content } from '@/lib/review/content';
 import { frozenRecord } from '@/lib/review/frozen-record';
 import { viewDocketRows } from '@/lib/review/docket-view';
-import { findLock, gatesOf, newestGatePlan, signaturesOf, type SignatureRow } from '@/lib/review/gate-data';
+import {
+  findLock,
+  gatesOf,
+  newestGatePlan,
+  signaturesOf,
+  type GateRow,
+  type SignatureRow,
+} from '@/lib/review/gate-data';
 import { loadDocket, type Docket } from '@/lib/review/load-docket';
 import { loadRevisionParts, type RevisionRow } from '@/lib/review/revision-data';
 import { makersOf } from '@/lib/review/who-signs';
@@ -12,6 +19,7 @@ import { digestOf } from './canonical';
 import { releaseFaults, stateFaults } from './life-faults';
 import { sameJson } from './same-json';
 import { signatureFaults } from './signature-faults';
+import type { AuditRow } from './data';
 import { entriesAbout, releaseWithPack } from './verify-data';
 
 export type StoredObject = { what: string; key: string; bytes: number; sha256: string };
@@ -43,8 +51,9 @@ export async function verifyRevision(tx: TenantTx, revision: RevisionRow): Promi
     entry('revision.locked')?.detail.contentDigest === lock.contentDigest,
     'the digest is not the one that the audit chain has for the lock',
   );
+  const witness = entry('revision.locked')?.detail.record as { schema?: unknown } | undefined;
   must(
-    sameJson(entry('revision.locked')?.detail.record, await frozenRecord(tx, revision)),
+    sameJson(witness, await frozenRecord(tx, revision, witness?.schema === 1 ? 1 : 2)),
     'the record of the revision is not, field by field, what it was when it was locked',
   );
   must(digestOf(recipe.body) === recipe.digest, 'the recipe does not have its digest');
@@ -72,7 +81,7 @@ export async function verifyRevision(tx: TenantTx, revision: RevisionRow): Promi
   }
   const signed = await signaturesOf(tx, workspaceId, id);
   faults.push(...signatureFaults(signed, entries, lock.content as Content, lock.contentDigest));
-  faults.push(...(await gateFaults(tx, revision, makersOf(revision, mesh), signed)));
+  faults.push(...(await gateFaults(tx, revision, makersOf(revision, mesh), signed, entries)));
   faults.push(...stateFaults(revision, entries));
   faults.push(...releaseFaults(found, entries));
 
@@ -135,6 +144,7 @@ async function gateFaults(
   revision: RevisionRow,
   makers: string[],
   signed: SignatureRow[],
+  entries: AuditRow[],
 ): Promise<string[]> {
   const gates = await gatesOf(tx, revision.workspaceId, revision.id);
   const faults: string[] = [];
@@ -146,8 +156,17 @@ async function gateFaults(
       ({ gateId, decision, signerId }) =>
         gateId === gate.id && decision === 'sign' && !(gate.rule.fourEyes && makers.includes(signerId)),
     );
-    if (new Set(signers.map(({ signerId }) => signerId)).size < gate.rule.quorum)
+    if (!enough(gate, signers, entries))
       faults.push(`the gate ${gate.rule.name} has fewer signatures than it asks for`);
   }
   return faults;
+}
+
+/** Where everybody has to sign, the chain says who that was when the gate passed. */
+function enough({ id, rule }: GateRow, signers: SignatureRow[], entries: AuditRow[]): boolean {
+  if (rule.quorum !== 'all') return new Set(signers.map(({ signerId }) => signerId)).size >= rule.quorum;
+  const passed = entries.find(({ action, detail }) => action === 'gate.passed' && detail.gateId === id);
+  const asked = (passed?.detail.asked ?? []) as { id: string }[];
+  const answered = new Set(signers.flatMap(({ signerId, signedForId }) => [signerId, signedForId]));
+  return passed !== undefined && signers.length > 0 && asked.every((person) => answered.has(person.id));
 }

@@ -11,9 +11,12 @@ import type { JobKind } from './jobs-data';
 import { listenForWork } from './listen';
 import { startRelay } from './relay/start-relay';
 import { runJob, type JobRunner } from './run-job';
+import { sweepGates } from './sweep-gates';
 import { sweepJobs } from './sweep-jobs';
 
 const sweepMs = 10_000;
+/** Due days count in days, and people leave rarely. */
+const gatesMs = 60_000;
 
 export type RunningWorker = {
   name: string;
@@ -23,7 +26,7 @@ export type RunningWorker = {
 
 /**
  * Everything that works in the background, in this process: the three queues, the engine's threads, the
- * sweep for jobs of killed workers, and the outbox relay. Any number of processes may do so side by side.
+ * sweeps for jobs of killed workers and for open gates, and the outbox relay. Any number of processes may do so side by side.
  */
 export async function startWorker({ threads }: { threads: number }): Promise<RunningWorker> {
   const queue = await boss({ supervise: true });
@@ -69,15 +72,24 @@ export async function startWorker({ threads }: { threads: number }): Promise<Run
   const sweep = () => void sweepJobs().catch((error) => log().warn({ err: error }, 'sweep failed'));
   const sweeper = setInterval(sweep, sweepMs);
   sweep();
+  let gates: Promise<void> | null = null;
+  const lookAfterGates = () => {
+    gates ??= sweepGates(stopping.signal)
+      .catch((error) => log().warn({ err: error }, 'gates not swept'))
+      .finally(() => (gates = null));
+  };
+  const gateSweeper = setInterval(lookAfterGates, gatesMs);
+  lookAfterGates();
   log().info({ worker: runner.worker, threads }, 'worker is ready');
 
   return {
     name: runner.worker,
     async stop() {
       clearInterval(sweeper);
+      clearInterval(gateSweeper);
       stopping.abort();
       await listener.stop();
-      await Promise.all([...inHand]);
+      await Promise.all([...inHand, gates]);
       await Promise.all([relay.stop(), runner.engine.close(), stopBoss()]);
       log().info({ worker: runner.worker }, 'worker has stopped');
     },

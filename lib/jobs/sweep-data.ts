@@ -1,6 +1,7 @@
 import { and, asc, eq, lt, or, sql } from 'drizzle-orm';
 import { relayDatabase } from '@/db/client';
 import { jobs } from '@/db/schema/checks';
+import { gates } from '@/db/schema/gates';
 
 const waitedLongS = 30;
 
@@ -17,4 +18,14 @@ export async function neglectedJobs(limit: number) {
     .where(or(silent, waiting))
     .orderBy(asc(jobs.createdAt))
     .limit(limit);
+}
+
+/** Workspaces where a gate is open. Ids only: what the gates are about is read as a job of each. */
+export async function workspacesWithOpenGates(): Promise<string[]> {
+  const rows = await relayDatabase()
+    .selectDistinct({ workspaceId: gates.workspaceId })
+    .from(gates)
+    .where(eq(gates.state, 'open'))
+    .orderBy(asc(gates.workspaceId));
+  return rows.map((row) => row.workspaceId);
 }

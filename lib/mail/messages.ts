@@ -81,6 +81,38 @@ export const mailRequest = z.discriminatedUnion('template', [
     ...revisionRef,
     gateName: z.string(),
     openItems: z.number(),
+    /** Last day for signing, in the workspace's zone. */
+    dueOn: z.iso.date().nullable().default(null),
+  }),
+  z.object({
+    template: z.literal('gate-due'),
+    to: memberRecipient,
+    ...revisionRef,
+    gateName: z.string(),
+    dueOn: z.iso.date(),
+    when: z.enum(['tomorrow', 'today']),
+    openItems: z.number(),
+    /** Whom the reader signs for while they are away. */
+    standsFor: z.string().nullable(),
+  }),
+  z.object({
+    template: z.literal('gate-short'),
+    to: memberRecipient,
+    ...revisionRef,
+    gateName: z.string(),
+    needed: z.number(),
+    have: z.number(),
+    left: z.number(),
+  }),
+  z.object({
+    template: z.literal('stand-in-named'),
+    to: memberRecipient,
+    workspaceId: z.uuid(),
+    workspaceName: z.string(),
+    path: z.string().startsWith('/'),
+    awayName: z.string(),
+    fromOn: z.iso.date(),
+    untilOn: z.iso.date(),
   }),
   z.object({
     template: z.literal('note-posted'),
@@ -100,6 +132,8 @@ export const mailRequest = z.discriminatedUnion('template', [
     signedAt: z.iso.datetime(),
     timeZone: z.string(),
     digest: z.string(),
+    /** Whom the signer stood in for. */
+    signedFor: z.string().nullable().default(null),
     locked: z.boolean(),
   }),
   z.object({

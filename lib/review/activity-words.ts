@@ -15,6 +15,8 @@ const checks = (ids: unknown) =>
 const verdictOf = ({ verdict }: Detail) => verdictTag[verdict as keyof typeof verdictTag] ?? word(verdict);
 const revision = (d: Detail, at: Place) => `${at.number} revision ${word(d.letter, '?')}`;
 const passed = (d: Detail) => (list(d.gatesPassed) ? `; passed: ${list(d.gatesPassed)}` : '');
+const standingFor = ({ signedFor }: Detail) =>
+  signedFor ? ` for ${word((signedFor as Detail).name)}` : '';
 const changed = (d: Detail) => {
   const before = d.before as Detail;
   const after = d.after as Detail;
@@ -28,6 +30,8 @@ const changed = (d: Detail) => {
 /** What was done, for each action of the chain, as the end of a sentence that begins with the actor's name. */
 const sentences: Record<string, (d: Detail, at: Place) => string> = {
   'workspace.opened': (d) => `opened the workspace ${word(d.name)}`,
+  'gate-plan.changed': (d) =>
+    `changed the gate plan to version ${String(d.number)}${list(d.changes) ? `: ${list(d.changes)}` : ''}`,
   'gate-plan.made': (d) => `set gate plan ${String(d.number)}`,
   'person.invited': (d) => `invited ${word(d.email)} as ${word(d.role)}`,
   'person.joined': (d) => `joined as ${word(d.role)}`,
@@ -66,7 +70,12 @@ const sentences: Record<string, (d: Detail, at: Place) => string> = {
   'note.posted': (d, at) => `replied on ${revision(d, at)}: ${quoted(d.text)}`,
   'thread.settled': (d, at) => `settled an item on ${revision(d, at)}`,
   'thread.reopened': (d, at) => `opened an item on ${revision(d, at)} again`,
-  'gate.signed': (d, at) => `signed ${revision(d, at)} at ${word(d.gate)}: ${quoted(d.meaning)}`,
+  'gate.signed': (d, at) =>
+    `signed ${revision(d, at)} at ${word(d.gate)}${standingFor(d)}: ${quoted(d.meaning)}`,
+  'gate.passed': (d, at) => `passed ${word(d.gate)} of ${revision(d, at)}: everybody has signed`,
+  'stand-in.named': (d) =>
+    `asked ${word(d.standInName)} to sign for them from ${word(d.fromOn)} to ${word(d.untilOn)}`,
+  'stand-in.ended': (d) => `ended that ${word(d.standInName)} signs for ${word(d.personName)}`,
   'gate.returned': (d, at) => `returned ${revision(d, at)} at ${word(d.gate)}: ${word(d.reason)}`,
 };
 
@@ -87,7 +96,7 @@ function pathOf(entry: Subject, slug: string): string | null {
   const letter = word(detail.letter);
   if (templateId) return `/w/${slug}/templates/${templateId}${letter ? `/${letter}` : ''}`;
   if (subjectKind === 'person' || subjectKind === 'invitation') return `/w/${slug}/people`;
-  if (subjectKind === 'gate-plan') return `/w/${slug}/gate-plan`;
+  if (subjectKind === 'gate-plan' || subjectKind === 'stand-in') return `/w/${slug}/gate-plan`;
   return subjectKind === 'workspace' ? `/w/${slug}` : null;
 }
 

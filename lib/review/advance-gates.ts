@@ -1,22 +1,28 @@
 import type { TenantTx } from '@/db/tenant';
 import { workspaceIdOf, type JobContext, type WorkspaceContext } from '@/lib/auth/context';
-import { findCheckRun, findingsOf } from './check-data';
-import { openMustSettle, waiversOf } from './docket-data';
+import { appendEntry } from '@/lib/audit/append-entry';
+import { openMustSettle } from './docket-data';
+import { conditionsHold } from './gate-conditions';
 import { changeGate, gatesOf, signaturesOf, type GateRow } from './gate-data';
 import { lockContent } from './lock-content';
 import { workspacePeople } from './people-data';
 import { mailAbout, tellToday } from './revision-mails';
 import { loadRevisionParts, type RevisionRow, type TemplateRow } from './revision-data';
-import { makersOf, whoMaySign } from './who-signs';
+import { activeStandIns } from './stand-in-data';
+import { tellShort } from './tell-short';
+import { askedAt, isShort, makersOf, quorumReached, whoMaySign, type GateAt } from './who-signs';
 
-/** Whether the check has finished on this revision and every failing finding is waived. */
-export async function formingHolds(tx: TenantTx, revision: RevisionRow): Promise<boolean> {
-  const { workspaceId, id } = revision;
-  const run = await findCheckRun(tx, workspaceId, id);
-  if (run?.state !== 'finished') return false;
-  const waived = new Set((await waiversOf(tx, workspaceId, id)).map((waiver) => waiver.findingId));
-  const found = await findingsOf(tx, workspaceId, id);
-  return found.every((finding) => finding.status !== 'fail' || waived.has(finding.id));
+/** A gate of a revision with the people of this moment. */
+export async function gateAt(tx: TenantTx, revision: RevisionRow, gate: GateRow): Promise<GateAt> {
+  const { workspaceId } = revision;
+  const { mesh } = await loadRevisionParts(tx, revision);
+  return {
+    gate,
+    makers: makersOf(revision, mesh),
+    people: await workspacePeople(tx, workspaceId),
+    standIns: await activeStandIns(tx, workspaceId),
+    signed: await signaturesOf(tx, workspaceId, revision.id),
+  };
 }
 
 /**
@@ -38,20 +44,45 @@ export async function advanceGates(
     if (gate.state !== 'waiting' && gate.state !== 'open') return passed;
     const opened = gate.state === 'waiting' ? await changeGate(tx, gate, 'open') : gate;
     if (gate.rule.kind === 'automatic') {
-      if (!(await formingHolds(tx, revision))) return passed;
+      if (!(await conditionsHold(tx, revision, gate.rule))) return passed;
       passed.push(await changeGate(tx, opened, 'passed'));
       continue;
     }
-    const signed = (await signaturesOf(tx, workspaceId, revision.id)).filter((s) => s.gateId === gate.id);
-    if (signed.length >= gate.rule.quorum) {
+    const at = await gateAt(tx, revision, opened);
+    if (quorumReached(at)) {
       passed.push(await changeGate(tx, opened, 'passed'));
+      if (gate.rule.quorum === 'all') await recordEverybody(tx, ctx, template, revision, at);
       continue;
     }
-    if (gate.state === 'waiting') await tellAwaited(tx, ctx, template, revision, opened);
+    if (gate.state === 'waiting') await tellAwaited(tx, ctx, template, revision, { ...at, gate: opened });
+    if (isShort(at)) await tellShort(tx, ctx, template, revision, { ...at, gate: opened });
     return passed;
   }
   if (all.length) await lockContent(tx, ctx, revision);
   return passed;
+}
+
+/** Who "everybody" was is not in the plan: it is written down when the gate passes, for whoever verifies it. */
+async function recordEverybody(
+  tx: TenantTx,
+  ctx: WorkspaceContext | JobContext,
+  template: TemplateRow,
+  revision: RevisionRow,
+  at: GateAt,
+): Promise<void> {
+  await appendEntry(tx, ctx, {
+    action: 'gate.passed',
+    subjectKind: 'revision',
+    subjectId: revision.id,
+    detail: {
+      templateId: template.id,
+      number: template.number,
+      letter: revision.letter,
+      gateId: at.gate.id,
+      gate: at.gate.rule.name,
+      asked: askedAt(at).map(({ id, name }) => ({ id, name })),
+    },
+  });
 }
 
 async function tellAwaited(
@@ -59,19 +90,17 @@ async function tellAwaited(
   ctx: WorkspaceContext | JobContext,
   template: TemplateRow,
   revision: RevisionRow,
-  gate: GateRow,
+  at: GateAt & { gate: GateRow },
 ): Promise<void> {
-  const people = await workspacePeople(tx, revision.workspaceId);
-  const signed = await signaturesOf(tx, revision.workspaceId, revision.id);
-  const { mesh } = await loadRevisionParts(tx, revision);
-  const awaited = whoMaySign(gate, makersOf(revision, mesh), people, signed);
+  const awaited = whoMaySign(at);
   const openItems = (await openMustSettle(tx, revision.workspaceId, revision.id)).length;
-  const about = { template, revision, occasion: `gate-waits:${gate.id}`, evenActor: true };
+  const about = { template, revision, occasion: `gate-waits:${at.gate.id}`, evenActor: true };
   await mailAbout(tx, ctx, awaited, about, (base) => ({
     template: 'gate-waits',
     ...base,
-    gateName: gate.rule.name,
+    gateName: at.gate.rule.name,
     openItems,
+    dueOn: at.gate.dueOn,
   }));
   await tellToday(tx, ctx, awaited, revision.id);
 }

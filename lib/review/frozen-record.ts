@@ -8,13 +8,14 @@ import { loadRevisionParts, type RevisionRow } from './revision-data';
 
 /**
  * Digest over every field that is frozen with a revision, ids and times included. Written into the audit chain
- * at the lock, so that any later change of any of them shows. Schema 1 names its fields: columns that are added
- * later belong to a next schema and leave old digests as they are.
+ * at the lock, so that any later change of any of them shows. A schema names its fields: columns that are added
+ * later belong to a next schema and leave old digests as they are. Schema 2 has due days and stand-ins.
  */
 export async function frozenRecord(
   tx: TenantTx,
   revision: RevisionRow,
-): Promise<{ schema: 1; digest: string }> {
+  schema: 1 | 2 = 2,
+): Promise<{ schema: 1 | 2; digest: string }> {
   const { workspaceId, id } = revision;
   const { mesh, recipe } = await loadRevisionParts(tx, revision);
   const run = await findCheckRun(tx, workspaceId, id);
@@ -56,17 +57,17 @@ export async function frozenRecord(
       ),
     })),
     gates: (await gatesOf(tx, workspaceId, id)).map((row) =>
-      pick(row, 'id revisionId ordinal rule state openedAt passedAt version'),
+      pick(row, `id revisionId ordinal rule state openedAt passedAt version${schema > 1 ? ' dueOn' : ''}`),
     ),
     signatures: (await signaturesOf(tx, workspaceId, id)).map((row) =>
       pick(
         row,
-        'id revisionId gateId decision signerId printedName role meaning reason contentDigest method signedAt timeZone',
+        `id revisionId gateId decision signerId printedName role meaning reason contentDigest method signedAt timeZone${schema > 1 ? ' signedForId signedForName' : ''}`,
       ),
     ),
     lock: pick(await findLock(tx, workspaceId, id), 'revisionId contentDigest content docket lockedAt'),
   };
-  return { schema: 1, digest: digestOf(record) };
+  return { schema, digest: digestOf(record) };
 }
 
 /** The named fields of a row as JSON: times in UTC with milliseconds, what is not there as null. */

@@ -1,6 +1,7 @@
 import { and, asc, desc, eq, inArray, sql } from 'drizzle-orm';
 import { gates, locks, signatures } from '@/db/schema/gates';
-import { gatePlans } from '@/db/schema/workspaces';
+import { meshes, revisions, templates } from '@/db/schema/templates';
+import { gatePlans, workspaces } from '@/db/schema/workspaces';
 import type { TenantTx } from '@/db/tenant';
 import { notFound } from '@/lib/errors/app-error';
 
@@ -32,6 +33,32 @@ export async function findGate(tx: TenantTx, workspaceId: string, gateId: string
   return row;
 }
 
+/** Open gates that people sign, of revisions in review, with whose revision it is. */
+export async function openPeopleGates(tx: TenantTx, workspaceId: string) {
+  return tx
+    .select({ gate: gates, revision: revisions, template: templates, meshBy: meshes.createdBy })
+    .from(gates)
+    .innerJoin(
+      revisions,
+      and(eq(revisions.workspaceId, gates.workspaceId), eq(revisions.id, gates.revisionId)),
+    )
+    .innerJoin(
+      templates,
+      and(eq(templates.workspaceId, revisions.workspaceId), eq(templates.id, revisions.templateId)),
+    )
+    .innerJoin(meshes, and(eq(meshes.workspaceId, revisions.workspaceId), eq(meshes.id, revisions.meshId)))
+    .where(
+      and(
+        eq(gates.workspaceId, workspaceId),
+        eq(gates.state, 'open'),
+        eq(revisions.state, 'in_review'),
+        sql`${gates.rule}->>'kind' = 'people'`,
+      ),
+    )
+    .orderBy(asc(gates.id));
+}
+export type OpenGateRow = Awaited<ReturnType<typeof openPeopleGates>>[number];
+
 /** The gates of a revision in order; with `lock` their rows are held until commit (template and revision first). */
 export async function gatesOf(
   tx: TenantTx,
@@ -47,6 +74,13 @@ export async function gatesOf(
   return options.lock ? query.for('update') : query;
 }
 
+/** So many days after today, where the workspace is; none for a gate without a due day. */
+const dueOn = ({ workspaceId, rule }: GateRow) =>
+  rule.dueDays
+    ? sql<string>`(select (clock_timestamp() at time zone w.time_zone)::date + ${rule.dueDays}::int
+        from ${workspaces} w where w.id = ${workspaceId})`
+    : null;
+
 export async function changeGate(
   tx: TenantTx,
   gate: GateRow,
@@ -58,7 +92,7 @@ export async function changeGate(
     .set({
       state,
       version: sql`${gates.version} + 1`,
-      ...(state === 'open' ? { openedAt: at } : {}),
+      ...(state === 'open' ? { openedAt: at, dueOn: dueOn(gate) } : {}),
       ...(state === 'passed' ? { passedAt: at } : {}),
     })
     .where(and(eq(gates.workspaceId, gate.workspaceId), eq(gates.id, gate.id)))

@@ -4,15 +4,18 @@ import { AppError, conflict, forbidden, notFound } from '@/lib/errors/app-error'
 import { composeContent, type Content } from './content';
 import { firstNotes, openMustSettle } from './docket-data';
 import { findGate, gatesOf, signaturesOf, type GateRow } from './gate-data';
-import { holdRole } from './people-data';
+import { holdRole, workspacePeople, type WorkspacePerson } from './people-data';
 import { loadRevisionParts, lockRevision, type RevisionRow, type TemplateRow } from './revision-data';
-import { makersOf } from './who-signs';
+import { activeStandIns } from './stand-in-data';
+import { asks, makersOf, rightAt, type GateAt } from './who-signs';
 
 export type HeldGate = {
   template: TemplateRow;
   revision: RevisionRow;
   gate: GateRow;
   role: string;
+  /** Whom the person signs for here, being their stand-in. */
+  standsFor: WorkspacePerson | null;
   content: Content;
   digest: string;
 };
@@ -40,24 +43,8 @@ export async function holdGate(
   const gates = await gatesOf(tx, workspaceId, revisionId, { lock: true });
   const gate = gates.find((row) => row.id === gateId);
   if (!gate) throw notFound('gate');
-  const role = await holdRole(tx, workspaceId, ctx.person.id);
-  const { rule } = gate;
-  if (rule.kind !== 'people')
-    throw conflict('automatic-gate', `${rule.name} is not signed by people: it passes by itself.`);
-  if (!role || !rule.roles.includes(role))
-    throw forbidden(
-      `At ${rule.name} sign: ${rule.roles.join(', ')}. Your role here is ${role ?? 'none'}.`,
-      'role',
-    );
-  const { mesh } = await loadRevisionParts(tx, revision);
-  if (rule.fourEyes && makersOf(revision, mesh).includes(ctx.person.id))
-    throw forbidden(
-      `You ${revision.authorId === ctx.person.id ? 'posted' : 'sent the mesh of'} revision ${revision.letter}; somebody else has to decide at ${rule.name}.`,
-      'four-eyes',
-    );
-  const signed = await signaturesOf(tx, workspaceId, revisionId);
-  if (signed.some((row) => row.gateId === gateId && row.signerId === ctx.person.id))
-    throw conflict('already-signed', `You have decided at ${rule.name} already; one name counts once.`);
+  const { role, at } = await holdSigners(tx, ctx, revision, gate);
+  const standsFor = requireRight(ctx, revision, role, at);
   if (revision.state !== 'in_review')
     throw conflict(
       'not-in-review',
@@ -72,7 +59,69 @@ export async function holdGate(
       'content-changed',
       'Something was added to this revision since you opened the page (a note, an answer, a waiver). Nothing was signed. Read what is new, then decide.',
     );
-  return { template, revision, gate, role, content: now.content, digest: now.digest };
+  return { template, revision, gate, role, standsFor, content: now.content, digest: now.digest };
+}
+
+/** The gate with its people as they are until commit: nobody loses their role or their stand-in meanwhile. */
+async function holdSigners(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRow, gate: GateRow) {
+  const { workspaceId } = revision;
+  const role = await holdRole(tx, workspaceId, ctx.person.id);
+  const standIns = await activeStandIns(tx, workspaceId, { heldBy: ctx.person.id });
+  for (const { personId, standInId } of standIns)
+    if (standInId === ctx.person.id) await holdRole(tx, workspaceId, personId);
+  const { mesh } = await loadRevisionParts(tx, revision);
+  const at: GateAt = {
+    gate,
+    makers: makersOf(revision, mesh),
+    people: await workspacePeople(tx, workspaceId),
+    standIns,
+    signed: await signaturesOf(tx, workspaceId, revision.id),
+  };
+  return { role: role ?? 'none', at };
+}
+
+/** Whom the person stands for, null for nobody but themselves. Throws what keeps them from deciding. */
+function requireRight(
+  ctx: WorkspaceContext,
+  revision: RevisionRow,
+  role: string,
+  at: GateAt,
+): WorkspacePerson | null {
+  const { rule } = at.gate;
+  if (rule.kind !== 'people')
+    throw conflict('automatic-gate', `${rule.name} is not signed by people: it passes by itself.`);
+  const me = at.people.find(({ id }) => id === ctx.person.id);
+  const awayId = at.standIns.find(({ standInId }) => standInId === ctx.person.id)?.personId;
+  const away = at.people.find(
+    (person) => person.id === awayId && person.role === role && asks(at.gate, person),
+  );
+  if (!me || (!asks(at.gate, me) && !away))
+    throw forbidden(
+      rule.people?.length
+        ? `At ${rule.name} sign only those whom the gate plan names; you are not among them.`
+        : `At ${rule.name} sign: ${rule.roles.join(', ')}. Your role here is ${role}.`,
+      'role',
+    );
+  const made = (id: string) => (revision.authorId === id ? 'posted' : 'sent the mesh of');
+  const fourEyes = (who: string) =>
+    forbidden(
+      `${who} revision ${revision.letter}; somebody else has to decide at ${rule.name}.`,
+      'four-eyes',
+    );
+  if (rule.fourEyes && at.makers.includes(me.id)) throw fourEyes(`You ${made(me.id)}`);
+  const right = rightAt(at, me);
+  if (right) return right.standsFor;
+  const decided = at.signed.filter(({ gateId }) => gateId === at.gate.id);
+  if (decided.some(({ signerId }) => signerId === me.id))
+    throw conflict('already-signed', `You have decided at ${rule.name} already; one name counts once.`);
+  if (away && rule.fourEyes && at.makers.includes(away.id))
+    throw fourEyes(`You stand in for ${away.name}, who ${made(away.id)}`);
+  throw conflict(
+    'already-signed',
+    away && !asks(at.gate, me)
+      ? `${away.name} has decided at ${rule.name} already; one name counts once.`
+      : `Your stand-in has signed at ${rule.name} for you; one name counts once.`,
+  );
 }
 
 /** Items that must be settled keep a people's gate shut; they are named one by one. */

@@ -42,6 +42,7 @@ export async function loadAgreed(ctx: WorkspaceContext | JobContext, revisionId:
       method: row.method,
       signedAt: row.signedAt.toISOString(),
       timeZone: row.timeZone,
+      signedFor: row.signedForName ? { id: row.signedForId, name: row.signedForName } : null,
       content: contentAsSigned(lock.content as Content, signed.get(row.id), row.contentDigest),
     }));
     return {

@@ -40,6 +40,8 @@ export async function returnGate(
       contentDigest: held.digest,
       method,
       timeZone: ctx.person.timeZone,
+      signedForId: held.standsFor?.id ?? null,
+      signedForName: held.standsFor?.name ?? null,
     });
     await changeGate(tx, gate, 'returned');
     await appendEntry(tx, ctx, {
@@ -58,6 +60,7 @@ export async function returnGate(
         reason,
         method,
         contentDigest: held.digest,
+        signedFor: held.standsFor && { id: held.standsFor.id, name: held.standsFor.name },
         docket: held.content.docket,
         named: held.content.template,
       },

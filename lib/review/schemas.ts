@@ -1,4 +1,5 @@
 import { MAX_STEP_BYTES } from '@/lib/formability/parse/size-caps';
+import { gateConditions } from '@/lib/workspaces/check-gate-plan';
 import { z } from 'zod';
 
 /**
@@ -264,6 +265,8 @@ export const SignatureView = z.object({
   contentDigest: z.string(),
   signedAt: instant,
   timeZone: z.string(),
+  /** Whom the signer stood in for, by the name of that day. */
+  signedFor: z.string().nullable().optional(),
 });
 export type SignatureView = z.infer<typeof SignatureView>;
 
@@ -274,13 +277,22 @@ export const GateView = z.object({
   name: z.string(),
   kind: z.enum(['automatic', 'people']),
   meaning: z.string(),
+  /** How many signatures close it; where everybody signs, as many as that is now. */
   quorum: z.number(),
+  /** Everybody whom it asks has to sign. */
+  everybody: z.boolean().optional(),
+  /** What an automatic gate waits for. */
+  conditions: z.array(z.enum(gateConditions)).optional(),
+  /** Last day for signing; null before it opens and where the plan sets none. */
+  dueOn: z.iso.date().nullable().optional(),
   state: z.enum(['waiting', 'open', 'passed', 'returned', 'closed']),
   openedAt: instant.nullable(),
   passedAt: instant.nullable(),
   signatures: z.array(SignatureView),
-  /** Names of those who may still sign an open gate. */
+  /** Names of those whom an open gate asks and who have not signed; with who signs for them while they are away. */
   awaited: z.array(z.string()),
+  /** Too few are left whom it asks: it cannot pass until somebody joins. */
+  short: z.boolean().optional(),
 });
 export type GateView = z.infer<typeof GateView>;
 
@@ -347,6 +359,8 @@ export const RevisionView = z.object({
         meaning: z.string(),
         /** Why signing would be refused at this moment, as a sentence; null when it would not. Returning is open. */
         blocked: z.string().nullable().optional(),
+        /** Whom the reader would sign for, being their stand-in. */
+        standsFor: z.string().nullable().optional(),
       })
       .nullable(),
     withdraw: z.boolean(),

@@ -3,6 +3,7 @@ import { appendEntry } from '@/lib/audit/append-entry';
 import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
 import { parseInput } from '@/lib/http/read-input';
 import { queueLive } from '@/lib/jobs/queue-live';
+import { advanceGates } from './advance-gates';
 import { asId } from './as-id';
 import { changedMeanwhile } from './changed-meanwhile';
 import { changeThread, findThread, insertPlacements, newestPlacement } from './docket-data';
@@ -63,6 +64,9 @@ export async function settleThread(
         mustSettle: thread.mustSettle,
       },
     });
+    // An automatic gate may have waited for this item.
+    if (settled && thread.mustSettle && revision.state === 'in_review')
+      await advanceGates(tx, ctx, template, revision);
     await queueLive(
       tx,
       ctx,

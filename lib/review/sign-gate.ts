@@ -9,9 +9,8 @@ import { asId } from './as-id';
 import { findGate, findLockDigest, insertSignature } from './gate-data';
 import { signatureView } from './gate-view';
 import { holdGate, requireSettled } from './hold-gate';
-import { workspacePeople } from './people-data';
-import { mailAbout, tellToday } from './revision-mails';
 import { SignInput, type SignatureView } from './schemas';
+import { tellSigned } from './tell-signed';
 
 export type SignResult = { signature: SignatureView; gatePassed: boolean; locked: boolean };
 
@@ -42,6 +41,8 @@ export async function signGate(ctx: WorkspaceContext, gateId: string, input: unk
       contentDigest: held.digest,
       method,
       timeZone: ctx.person.timeZone,
+      signedForId: held.standsFor?.id ?? null,
+      signedForName: held.standsFor?.name ?? null,
     });
     await appendEntry(tx, ctx, {
       action: 'gate.signed',
@@ -60,6 +61,7 @@ export async function signGate(ctx: WorkspaceContext, gateId: string, input: unk
         method,
         signedAt: signature.signedAt.toISOString(),
         contentDigest: held.digest,
+        signedFor: held.standsFor && { id: held.standsFor.id, name: held.standsFor.name },
         // Notes may still join before the last gate: the docket of this digest is kept here, title and due date too.
         docket: held.content.docket,
         named: held.content.template,
@@ -67,21 +69,7 @@ export async function signGate(ctx: WorkspaceContext, gateId: string, input: unk
     });
     const passed = await advanceGates(tx, ctx, template, revision);
     const locked = (await findLockDigest(tx, workspaceId, revision.id)) !== null;
-    const people = await workspacePeople(tx, workspaceId);
-    const concerned = people.filter((person) => locked || person.id === revision.authorId);
-    const about = { template, revision, occasion: `revision-signed:${signature.id}` };
-    await mailAbout(tx, ctx, concerned, about, (base) => ({
-      template: 'revision-signed',
-      ...base,
-      printedName: signature.printedName,
-      role: signature.role,
-      meaning: signature.meaning,
-      signedAt: signature.signedAt.toISOString(),
-      timeZone: signature.timeZone,
-      digest: held.digest,
-      locked,
-    }));
-    await tellToday(tx, ctx, people, revision.id);
+    await tellSigned(tx, ctx, { template, revision, signature, locked });
     await queueLive(
       tx,
       ctx,

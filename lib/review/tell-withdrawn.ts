@@ -1,6 +1,6 @@
 import type { TenantTx } from '@/db/tenant';
 import type { WorkspaceContext } from '@/lib/auth/context';
-import { formingHolds } from './advance-gates';
+import { formingHolds } from './gate-conditions';
 import { workspacePeople } from './people-data';
 import type { RevisionRow, TemplateRow } from './revision-data';
 import { mailAbout } from './revision-mails';

@@ -1,11 +1,14 @@
-import { and, asc, count, desc, eq, inArray, isNotNull, min, ne, or, sql } from 'drizzle-orm';
+import { alias, type PgColumn } from 'drizzle-orm/pg-core';
+import { and, asc, count, desc, eq, inArray, isNotNull, isNull, min, ne, or, sql } from 'drizzle-orm';
 import { checkRuns, findings, waivers } from '@/db/schema/checks';
 import { notes, placements, threads } from '@/db/schema/docket';
-import { gates, signatures } from '@/db/schema/gates';
+import { gates, signatures, standIns } from '@/db/schema/gates';
 import { drafts, meshes, revisions, templates } from '@/db/schema/templates';
 import { auditEntries } from '@/db/schema/trail';
+import { users } from '@/db/schema/identity';
 import { members, workspaces } from '@/db/schema/workspaces';
 import type { TenantTx } from '@/db/tenant';
+import { signingRoles } from '@/lib/workspaces/check-gate-plan';
 
 /** What every row of a desk says about where it is. */
 const place = {
@@ -36,10 +39,37 @@ const mustSettle = and(
   eq(threads.afterApproval, false),
 );
 
-/** Open people's gates that this person may sign now; those kept shut by items to settle wait on others first. */
+/** Whether an open gate asks the member in a row, by name or else by role; as `asks` in who-signs.ts. */
+const asked = (member: { userId: PgColumn; role: PgColumn }) => sql`case
+  when jsonb_array_length(coalesce(${gates.rule}->'people', '[]')) > 0
+    then ${gates.rule}->'people' ? ${member.userId}::text and ${member.role} = any(${sql.param([...signingRoles])})
+  else ${gates.rule}->'roles' ? ${member.role} end`;
+const keptAway = (userId: PgColumn) =>
+  sql`((${gates.rule}->>'fourEyes')::boolean and ${userId} in (${revisions.authorId}, ${meshes.createdBy}))`;
+/** Whether somebody has answered at the gate, themselves or through their stand-in. */
+const answered = (userId: PgColumn) => sql`exists (select 1 from ${signatures}
+  where ${signatures.workspaceId} = ${gates.workspaceId} and ${signatures.gateId} = ${gates.id}
+    and ${userId} in (${signatures.signerId}, ${signatures.signedForId}))`;
+const away = alias(members, 'away');
+
+/**
+ * Open people's gates that this person may sign now, for themselves or for whom they stand in; those kept shut by items
+ * to settle wait on others first. The same as `rightAt` in who-signs.ts, over all workspaces at once.
+ */
 export async function gatesToSign(tx: TenantTx, personId: string) {
+  const forMe = and(asked(members), sql`not ${answered(members.userId)}`);
   return tx
-    .select({ ...place, gateName: sql<string>`${gates.rule}->>'name'`, since: gates.openedAt })
+    .select({
+      ...place,
+      gateName: sql<string>`${gates.rule}->>'name'`,
+      gateDueOn: gates.dueOn,
+      since: gates.openedAt,
+      /** Whom this person would sign for, where the gate does not ask them. */
+      standsFor: sql<
+        string | null
+      >`case when not coalesce(${forMe}, false) then (select ${users.name} from ${users}
+        where ${users.id} = ${away.userId}) end`,
+    })
     .from(gates)
     .innerJoin(
       revisions,
@@ -49,15 +79,40 @@ export async function gatesToSign(tx: TenantTx, personId: string) {
     .innerJoin(templates, ofTemplate)
     .innerJoin(workspaces, ofWorkspace)
     .innerJoin(members, membership(personId))
+    .leftJoin(
+      standIns,
+      and(
+        eq(standIns.workspaceId, gates.workspaceId),
+        eq(standIns.standInId, personId),
+        isNull(standIns.endedAt),
+        sql`(clock_timestamp() at time zone ${workspaces.timeZone})::date between ${standIns.fromOn} and ${standIns.untilOn}`,
+      ),
+    )
+    .leftJoin(
+      away,
+      and(
+        eq(away.workspaceId, standIns.workspaceId),
+        eq(away.userId, standIns.personId),
+        eq(away.role, members.role),
+      ),
+    )
     .where(
       and(
         eq(gates.state, 'open'),
         eq(revisions.state, 'in_review'),
         sql`${gates.rule}->>'kind' = 'people'`,
-        sql`${gates.rule}->'roles' ? ${members.role}`,
-        sql`not ((${gates.rule}->>'fourEyes')::boolean and ${personId} in (${revisions.authorId}, ${meshes.createdBy}))`,
+        sql`not ${keptAway(members.userId)}`,
         sql`not exists (select 1 from ${signatures} where ${signatures.workspaceId} = ${gates.workspaceId}
           and ${signatures.gateId} = ${gates.id} and ${signatures.signerId} = ${personId})`,
+        or(
+          forMe,
+          and(
+            sql`${away.id} is not null`,
+            asked(away),
+            sql`not ${keptAway(away.userId)}`,
+            sql`not ${answered(away.userId)}`,
+          ),
+        ),
         sql`not exists (select 1 from ${placements} join ${threads} on ${threads.workspaceId} = ${placements.workspaceId}
           and ${threads.id} = ${placements.threadId} where ${placements.workspaceId} = ${revisions.workspaceId}
           and ${placements.revisionId} = ${revisions.id} and ${mustSettle})`,

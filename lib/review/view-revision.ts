@@ -17,6 +17,7 @@ import {
   type RevisionRow,
 } from './revision-data';
 import type { RevisionView } from './schemas';
+import { activeStandIns } from './stand-in-data';
 import { fileUrl } from './template-summary';
 import { whatReaderMayDo } from './what-reader-may-do';
 import { makersOf } from './who-signs';
@@ -44,11 +45,14 @@ export async function viewRevisionByLetter(
 async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRow): Promise<RevisionView> {
   const workspaceId = ctx.workspace.id;
   const { template, mesh, recipe } = await loadRevisionParts(tx, revision);
-  const makers = makersOf(revision, mesh);
   const lock = await findLockDigest(tx, workspaceId, revision.id);
   const gates = await gatesOf(tx, workspaceId, revision.id);
-  const signatures = await signaturesOf(tx, workspaceId, revision.id);
-  const people = await workspacePeople(tx, workspaceId);
+  const shared = {
+    makers: makersOf(revision, mesh),
+    people: await workspacePeople(tx, workspaceId),
+    standIns: await activeStandIns(tx, workspaceId),
+    signed: await signaturesOf(tx, workspaceId, revision.id),
+  };
   const release = await releaseOf(tx, workspaceId, revision.id);
   const packJob = release
     ? await latestJobOf(tx, { workspaceId, kind: 'build-pack', subjectId: release.release.id })
@@ -76,7 +80,7 @@ async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRo
     recipe: recipe.body,
     check,
     model: await modelOf(tx, ctx, revision),
-    gates: gateViews(gates, signatures, makers, people),
+    gates: gateViews(gates, shared),
     contentDigest: lock?.contentDigest ?? (await composeContent(tx, revision))?.digest ?? null,
     lockedAt: lock?.lockedAt.toISOString() ?? null,
     release: release
@@ -98,10 +102,8 @@ async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRo
     })),
     can: whatReaderMayDo(ctx, {
       revision,
-      makers,
       gates,
-      signatures,
-      people,
+      shared,
       mustSettle,
       checkFinished: check.state === 'finished',
       hasPack: Boolean(release?.pack),

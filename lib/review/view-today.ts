@@ -53,7 +53,14 @@ export async function viewToday(ctx: PersonContext): Promise<TodayView> {
   return withTenant(ctx, async (tx) => {
     const items: TodayItem[] = [];
     for (const row of await gatesToSign(tx, me))
-      items.push(item('sign', row, `Revision ${row.letter} waits for your name at ${row.gateName}`));
+      items.push(
+        // The gate's own day, where the plan sets one, comes before the template's.
+        item(
+          'sign',
+          { ...row, dueOn: row.gateDueOn ?? row.dueOn },
+          `Revision ${row.letter} waits for your name at ${row.gateName}${row.standsFor ? `, for ${row.standsFor}` : ''}`,
+        ),
+      );
     for (const row of await itemsToSettle(tx, me))
       items.push(
         item('settle', row, `${counted(row.n, 'item', 'items')} must be settled on revision ${row.letter}`),

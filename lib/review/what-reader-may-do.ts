@@ -1,19 +1,16 @@
 import type { WorkspaceContext } from '@/lib/auth/context';
 import { permits } from '@/lib/workspaces/roles';
-import type { GateRow, SignatureRow } from './gate-data';
-import type { WorkspacePerson } from './people-data';
+import type { GateRow } from './gate-data';
+import type { GatesAt } from './gate-view';
 import type { RevisionRow } from './revision-data';
 import type { RevisionView } from './schemas';
 import { mayMakeFrom } from './recalled';
-import { whoMaySign } from './who-signs';
+import { rightAt } from './who-signs';
 
 type Standing = {
   revision: RevisionRow;
-  /** Whom four eyes keep away. */
-  makers: string[];
   gates: GateRow[];
-  signatures: SignatureRow[];
-  people: WorkspacePerson[];
+  shared: GatesAt;
   mustSettle: number;
   checkFinished: boolean;
   hasPack: boolean;
@@ -37,7 +34,7 @@ export function whatReaderMayDo(ctx: WorkspaceContext, at: Standing): RevisionVi
       may('revision.withdraw') &&
       reviewed &&
       revision.authorId === ctx.person.id &&
-      at.signatures.length === 0,
+      at.shared.signed.length === 0,
     release: may('revision.release') && revision.state === 'approved',
     rebuild: may('revision.release') && at.packFailed && revision.state !== 'recalled',
     recall: may('revision.recall') && revision.state === 'released',
@@ -51,13 +48,20 @@ export function whatReaderMayDo(ctx: WorkspaceContext, at: Standing): RevisionVi
 function gateToSign(ctx: WorkspaceContext, at: Standing): RevisionView['can']['sign'] {
   const gate = at.gates.find((row) => row.state === 'open' && row.rule.kind === 'people');
   if (!gate) return null;
-  const mine = whoMaySign(gate, at.makers, at.people, at.signatures);
-  if (!mine.some((person) => person.id === ctx.person.id)) return null;
+  const me = at.shared.people.find(({ id }) => id === ctx.person.id);
+  const right = me ? rightAt({ ...at.shared, gate }, me) : null;
+  if (!right) return null;
   const items = at.mustSettle === 1 ? 'One item' : `${at.mustSettle} items`;
   const blocked = !at.checkFinished
     ? 'The check has not finished yet.'
     : at.mustSettle
       ? `${items} must be settled first.`
       : null;
-  return { gateId: gate.id, gateName: gate.rule.name, meaning: gate.rule.meaning, blocked };
+  return {
+    gateId: gate.id,
+    gateName: gate.rule.name,
+    meaning: gate.rule.meaning,
+    blocked,
+    standsFor: right.standsFor?.name ?? null,
+  };
 }

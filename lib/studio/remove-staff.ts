@@ -1,6 +1,7 @@
 import { withTenant } from '@/db/tenant';
 import { requireStudioRole, type StudioContext } from '@/lib/auth/context';
 import { notFound } from '@/lib/errors/app-error';
+import { sweepGatesOf } from '@/lib/jobs/sweep-gates';
 import { endPersonSockets } from '@/lib/workspaces/end-person-sockets';
 import { findPersonName } from '@/lib/workspaces/people-data';
 import { deleteStaff, insertStudioEntry, lockStaff, workspacesOfStudio } from './studio-data';
@@ -12,7 +13,7 @@ import { tellWorkspaces } from './tell-workspaces';
  */
 export async function removeStaff(ctx: StudioContext, personId: string): Promise<void> {
   if (personId !== ctx.person.id) requireStudioRole(ctx, 'lead');
-  await withTenant(ctx, async (tx) => {
+  const places = await withTenant(ctx, async (tx) => {
     const staff = await lockStaff(tx, ctx.studio.id, personId);
     if (!staff) throw notFound('person');
     const person = await findPersonName(tx, personId);
@@ -23,6 +24,8 @@ export async function removeStaff(ctx: StudioContext, personId: string): Promise
     await insertStudioEntry(tx, ctx, 'person.removed', { personId, ...detail });
     await deleteStaff(tx, ctx.studio.id, personId);
     await tellWorkspaces(tx, ctx, workspaces, { action: 'person.removed', personId, detail });
+    return workspaces;
   });
   await endPersonSockets(personId);
+  for (const { id } of places) await sweepGatesOf(id);
 }

@@ -4,6 +4,7 @@ import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
 import { conflict, notFound } from '@/lib/errors/app-error';
 import { parseInput } from '@/lib/http/read-input';
 import { queueLive } from '@/lib/jobs/queue-live';
+import { sweepGatesOf } from '@/lib/jobs/sweep-gates';
 import { findPersonName, lockMember, updateMemberRole } from './people-data';
 import { isStudioRole } from './roles';
 import { ClientRoleInput } from './schemas';
@@ -35,4 +36,5 @@ export async function changeMemberRole(
       detail: { name: person?.name ?? '', from: member.role, to: role },
     });
   });
+  await sweepGatesOf(ctx.workspace.id);
 }

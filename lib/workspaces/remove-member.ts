@@ -3,6 +3,7 @@ import { appendEntry } from '@/lib/audit/append-entry';
 import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
 import { conflict, notFound } from '@/lib/errors/app-error';
 import { queueLive, queueLiveToPeople } from '@/lib/jobs/queue-live';
+import { sweepGatesOf } from '@/lib/jobs/sweep-gates';
 import { endPersonSockets } from './end-person-sockets';
 import { deleteMember, findPersonName, lockMember } from './people-data';
 import { isStudioRole } from './roles';
@@ -28,4 +29,5 @@ export async function removeMember(ctx: WorkspaceContext, personId: string): Pro
     await deleteMember(tx, ctx.workspace.id, personId);
   });
   await endPersonSockets(personId);
+  await sweepGatesOf(ctx.workspace.id);
 }

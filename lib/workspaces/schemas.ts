@@ -123,23 +123,6 @@ export const WorkspaceView = z.object({
 });
 export type WorkspaceView = z.infer<typeof WorkspaceView>;
 
-export const GatePlanView = z.object({
-  number: z.number().int(),
-  madeAt: z.iso.datetime(),
-  gates: z.array(
-    z.object({
-      key: z.string(),
-      name: z.string(),
-      kind: z.enum(['automatic', 'people']),
-      roles: z.array(z.enum(roles)),
-      quorum: z.number().int(),
-      fourEyes: z.boolean(),
-      meaning: z.string(),
-    }),
-  ),
-});
-export type GatePlanView = z.infer<typeof GatePlanView>;
-
 export const InvitationView = z.object({
   workspaceName: z.string().nullable(),
   studioName: z.string(),

@@ -1,6 +1,8 @@
-import { and, asc, count, eq, inArray, sql } from 'drizzle-orm';
+import { and, asc, count, desc, eq, inArray, sql } from 'drizzle-orm';
+import { auditEntries } from '@/db/schema/trail';
 import { gatePlans, invitations, members, workspaces, type GateRule } from '@/db/schema/workspaces';
 import type { TenantTx } from '@/db/tenant';
+import type { Role } from './role-names';
 
 export type NewWorkspace = {
   id: string;
@@ -28,8 +30,9 @@ export async function findWorkspaceByCode(tx: TenantTx, studioId: string, code: 
 export async function insertGatePlan(
   tx: TenantTx,
   row: { id: string; workspaceId: string; number: number; gates: GateRule[]; createdBy: string },
-): Promise<void> {
-  await tx.insert(gatePlans).values(row);
+) {
+  const [made] = await tx.insert(gatePlans).values(row).returning();
+  return made;
 }
 
 /** The version of the gate plan that the next posted revision gets. */
@@ -41,6 +44,48 @@ export async function findLatestGatePlan(tx: TenantTx, workspaceId: string) {
     .orderBy(sql`${gatePlans.number} desc`)
     .limit(1);
   return row ?? null;
+}
+
+/** Every version of the gate plan, newest first, with the name of who made it as the audit chain has it. */
+export async function listGatePlans(tx: TenantTx, workspaceId: string, limit: number) {
+  return tx
+    .select({ plan: gatePlans, madeBy: auditEntries.actorName })
+    .from(gatePlans)
+    .leftJoin(
+      auditEntries,
+      and(
+        eq(auditEntries.workspaceId, gatePlans.workspaceId),
+        eq(auditEntries.subjectKind, 'gate-plan'),
+        eq(auditEntries.subjectId, gatePlans.id),
+      ),
+    )
+    .where(eq(gatePlans.workspaceId, workspaceId))
+    .orderBy(desc(gatePlans.number))
+    .limit(limit);
+}
+
+/** Holds the workspace's row: versions of its plan are made one after another. */
+export async function lockWorkspace(tx: TenantTx, workspaceId: string): Promise<void> {
+  await tx.select({ id: workspaces.id }).from(workspaces).where(eq(workspaces.id, workspaceId)).for('update');
+}
+
+/** Clients who are invited and may still come, by role. */
+export async function countInvited(
+  tx: TenantTx,
+  workspaceId: string,
+): Promise<Partial<Record<Role, number>>> {
+  const rows = await tx
+    .select({ role: invitations.role, n: count() })
+    .from(invitations)
+    .where(
+      and(
+        eq(invitations.workspaceId, workspaceId),
+        eq(invitations.status, 'pending'),
+        sql`${invitations.expiresAt} > now()`,
+      ),
+    )
+    .groupBy(invitations.role);
+  return Object.fromEntries(rows.map(({ role, n }) => [role, n]));
 }
 
 /** A studio's workspaces with the counts of its list, in three statements whatever their number. */

@@ -262,6 +262,8 @@ export async function fingerprint(database: FreshDatabase, workspaceId: string):
     'placements',
     'notes',
     'waivers',
+    'gate_plans',
+    'stand_ins',
     'gates',
     'signatures',
     'locks',

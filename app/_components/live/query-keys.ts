@@ -12,6 +12,8 @@ export const queryKeys = {
   upload: (workspaceId: string, uploadId: string) => ['workspace', workspaceId, 'upload', uploadId] as const,
   revision: (workspaceId: string, revisionId: string) =>
     ['workspace', workspaceId, 'revision', revisionId] as const,
+  /** Every revision that is kept. */
+  revisions: (workspaceId: string) => ['workspace', workspaceId, 'revision'] as const,
   docket: (workspaceId: string, revisionId: string) =>
     ['workspace', workspaceId, 'docket', revisionId] as const,
   /** Frozen once it is there: no event makes it stale. */
@@ -56,6 +58,9 @@ export function staleAfter(workspaceId: string | null, event: LiveEvent): readon
       ];
     case 'people.changed':
       return [queryKeys.people(workspaceId)];
+    // Who is awaited at a gate follows who stands in for whom; the page of the plan itself asks the server anew.
+    case 'gate-plan.changed':
+      return [queryKeys.revisions(workspaceId)];
     case 'job.progressed':
       return [];
   }

@@ -9,6 +9,8 @@ import {
   SetLimitsInput,
   SheetInput,
 } from '@/lib/studio/schemas';
+import { NameStandInInput, StandInsView, StandInView } from '@/lib/review/stand-in-schemas';
+import { ChangeGatePlanInput, GatePlanView } from '@/lib/workspaces/gate-plan-schemas';
 import {
   AcceptInvitationInput,
   ChannelInput,
@@ -133,6 +135,40 @@ export const identityOperations: Operation[] = [
     body: SetLimitsInput,
     answer: LimitsView,
     versioned: true,
+  },
+  {
+    method: 'get',
+    path: `${workspace}/gate-plan`,
+    summary: 'The gates that the next revision gets; the ETag is the version to change',
+    answer: GatePlanView,
+  },
+  {
+    method: 'put',
+    path: `${workspace}/gate-plan`,
+    summary: 'Make the next version of the gate plan; revisions in review keep theirs',
+    body: ChangeGatePlanInput,
+    answer: GatePlanView,
+    versioned: true,
+  },
+  {
+    method: 'get',
+    path: `${workspace}/stand-ins`,
+    summary: 'Who is away, now or soon, and who signs for them',
+    answer: StandInsView,
+  },
+  {
+    method: 'post',
+    path: `${workspace}/stand-ins`,
+    summary: 'Name who signs for oneself while away',
+    body: NameStandInInput,
+    status: 201,
+    answer: StandInView,
+  },
+  {
+    method: 'delete',
+    path: `${workspace}/stand-ins/{standIn}`,
+    summary: 'End that somebody signs for another',
+    status: 204,
   },
   { method: 'get', path: `${workspace}/people`, summary: 'Everybody in a workspace', answer: PeopleView },
   {

@@ -2,6 +2,8 @@ import type { MailRequest } from '../messages';
 import type { MailContent } from './content';
 import { invitation, resetPassword, secondFactor, verifyAddress } from './identity';
 import {
+  gateDue,
+  gateShort,
   gateWaits,
   notePosted,
   revisionRecalled,
@@ -11,6 +13,7 @@ import {
   revisionSigned,
 } from './revision';
 import { checkFails, checkGivenUp, revisionChecked, revisionPosted, revisionWithdrawn } from './posting';
+import { standInNamed } from './stand-in';
 import { toHtml } from './to-html';
 import { toText } from './to-text';
 
@@ -29,11 +32,11 @@ function contentOf(request: MailRequest, origin: string): MailContent {
       return verifyAddress({ ...request, url: ownLink(request.url, origin) });
     case 'reset-password':
       return resetPassword({ ...request, url: ownLink(request.url, origin) });
+    case 'second-factor':
+      return secondFactor(request, ownLink('/account', origin));
     case 'invitation':
       return invitation(request, url);
     case 'revision-posted':
-    case 'second-factor':
-      return secondFactor(request, ownLink('/account', origin));
       return revisionPosted(request, url);
     case 'revision-checked':
       return revisionChecked(request, url);
@@ -45,6 +48,12 @@ function contentOf(request: MailRequest, origin: string): MailContent {
       return revisionWithdrawn(request, url);
     case 'gate-waits':
       return gateWaits(request, url);
+    case 'gate-due':
+      return gateDue(request, url);
+    case 'gate-short':
+      return gateShort(request, url);
+    case 'stand-in-named':
+      return standInNamed(request, url);
     case 'note-posted':
       return notePosted(request, url);
     case 'revision-signed':

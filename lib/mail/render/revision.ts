@@ -1,4 +1,5 @@
 import { shortCautions } from '@/lib/production/cautions';
+import { writtenDay } from '@/lib/time/written-day';
 import { zonedTime } from '@/lib/time/zoned-time';
 import type { MailRequest } from '../messages';
 import { oneLine, revisionName, type MailContent } from './content';
@@ -6,14 +7,17 @@ import { facts, footer, subject } from './revision-parts';
 
 type Of<T extends MailRequest['template']> = Extract<MailRequest, { template: T }>;
 
+const openWords = (openItems: number) =>
+  openItems === 0
+    ? 'Nothing on its docket is open.'
+    : openItems === 1
+      ? 'One item on its docket is still open.'
+      : `${openItems} items on its docket are still open.`;
+const due = (on: string | null) => (on ? [{ label: 'Due', value: writtenDay(on) }] : []);
+
 export function gateWaits(request: Of<'gate-waits'>, url: string): MailContent {
   const { gateName, openItems } = request;
-  const items =
-    openItems === 0
-      ? 'Nothing on its docket is open.'
-      : openItems === 1
-        ? 'One item on its docket is still open.'
-        : `${openItems} items on its docket are still open.`;
+  const items = openWords(openItems);
   return {
     subject: subject(request, 'waits for your signature'),
     heading: `${revisionName(request)} waits for you at the gate ${gateName}`,
@@ -21,8 +25,42 @@ export function gateWaits(request: Of<'gate-waits'>, url: string): MailContent {
     paragraphs: [
       `${items} Look at the model, the findings and the notes, then sign or return it with a reason.`,
     ],
-    facts: [...facts(request), { label: 'Gate', value: gateName }],
+    facts: [...facts(request), { label: 'Gate', value: gateName }, ...due(request.dueOn)],
     action: { label: 'Look and decide', url },
+    footer: footer(request),
+  };
+}
+
+export function gateDue(request: Of<'gate-due'>, url: string): MailContent {
+  const { gateName, openItems, when, dueOn, standsFor } = request;
+  const items = openWords(openItems);
+  return {
+    subject: subject(request, `is due for your signature ${when}`),
+    heading: `${revisionName(request)} is to be decided at the gate ${gateName} ${when}`,
+    preview: items,
+    paragraphs: [
+      `${items} Sign it, or return it with a reason.`,
+      ...(standsFor ? [`You stand in for ${standsFor} at this gate.`] : []),
+    ],
+    facts: [...facts(request), { label: 'Gate', value: gateName }, ...due(dueOn)],
+    action: { label: 'Look and decide', url },
+    footer: footer(request),
+  };
+}
+
+export function gateShort(request: Of<'gate-short'>, url: string): MailContent {
+  const { gateName, needed, have, left } = request;
+  const who = left === 0 ? 'nobody is left' : left === 1 ? 'one person is left' : `${left} people are left`;
+  return {
+    subject: subject(request, `cannot pass ${gateName} as things stand`),
+    heading: `${revisionName(request)} cannot pass the gate ${gateName} as things stand`,
+    preview: oneLine(`It asks for ${needed}, has ${have}, and ${who} who may sign.`),
+    paragraphs: [
+      `The gate asks for ${needed === 1 ? 'one signature' : `${needed} signatures`} and has ${have === 0 ? 'none' : have}, but ${who} who may sign.`,
+      'Invite somebody in a role that the gate asks, or change the gate plan and post the next revision under it: a revision in review keeps the plan that it started with.',
+    ],
+    facts: [...facts(request), { label: 'Gate', value: gateName }],
+    action: { label: 'See the revision', url },
     footer: footer(request),
   };
 }
@@ -44,7 +82,9 @@ export function notePosted(request: Of<'note-posted'>, url: string): MailContent
 }
 
 export function revisionSigned(request: Of<'revision-signed'>, url: string): MailContent {
-  const { printedName, role, meaning, signedAt, timeZone, digest, locked } = request;
+  const { meaning, signedAt, timeZone, digest, locked, signedFor } = request;
+  const printedName = request.printedName;
+  const role = signedFor ? `${request.role}, for ${signedFor}` : request.role;
   return {
     subject: subject(request, locked ? 'is approved and locked' : `is signed by ${printedName}`),
     heading: locked

@@ -24,7 +24,9 @@ export function SignaturesTable({ model }: { model: CertificateModel }) {
           <View style={styles.row}>
             <View style={{ width: firstColumn, paddingRight: 8 }}>
               <Text style={styles.strong}>{drawable(one.printedName)}</Text>
-              <Text style={styles.muted}>{drawable(one.role)}</Text>
+              <Text style={styles.muted}>
+                {drawable(one.signedFor ? `${one.role}, for ${one.signedFor.name}` : one.role)}
+              </Text>
             </View>
             <Text style={[styles.figures, { width: secondColumn, paddingRight: 8, paddingTop: 1 }]}>
               {zonedTime(one.signedAt, model.timeZone).replace(' (', '\n(')}

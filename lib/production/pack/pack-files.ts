@@ -84,6 +84,8 @@ function signaturesOf(
       reason: one.reason,
       signedAt: one.signedAt,
       timeZone: one.timeZone,
+      /** Whom the signer stood in for while they were away. */
+      signedFor: one.signedFor,
       method: one.method,
       contentDigest: one.contentDigest,
       content:

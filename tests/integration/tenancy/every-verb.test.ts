@@ -2,6 +2,8 @@ import { randomUUID } from 'node:crypto';
 import { readdirSync } from 'node:fs';
 import path from 'node:path';
 import { beforeAll, describe, expect, it } from 'vitest';
+import { endStandIn } from '@/lib/review/end-stand-in';
+import { nameStandIn } from '@/lib/review/name-stand-in';
 import { openDraft } from '@/lib/review/open-draft';
 import { viewDocket } from '@/lib/review/view-docket';
 import { releaseRevision } from '@/lib/production/release-revision';
@@ -108,6 +110,13 @@ async function furnish(place: House): Promise<Names> {
     role: 'designer',
   });
   await cancelStaffInvitation(atStudio, staffInvitation.id);
+  const second = await joinWorkspace(database, lead, 'approver');
+  const standIn = await nameStandIn(await place.enter('approver'), {
+    standInId: second.person.id,
+    fromOn: '2126-01-01',
+    untilOn: '2126-01-02',
+  });
+  await endStandIn(lead, standIn.id);
   return {
     workspace: place.workspace.slug,
     studio: place.studio.slug,
@@ -123,6 +132,7 @@ async function furnish(place: House): Promise<Names> {
     invitation: invitation.id,
     staffInvitation: staffInvitation.id,
     sheet: (await readLibrary(atStudio)).sheets[0].id,
+    standIn: standIn.id,
   };
 }
 

@@ -22,6 +22,8 @@ export type Names = {
   invitation: string;
   staffInvitation: string;
   sheet: string;
+  /** The approver's, ended already. */
+  standIn: string;
 };
 
 export type Verb = {
@@ -135,6 +137,34 @@ export const routes: Record<string, Route> = {
   }),
   'workspaces/[workspace]/invitations/[invitation]': w({
     DELETE: { may: leads, names: { invitation: 'invitation' } },
+  }),
+  'workspaces/[workspace]/gate-plan': w({
+    GET: { may: everyone },
+    PUT: {
+      may: leads,
+      body: {
+        gates: [
+          { kind: 'people', name: 'Client', roles: ['approver'], quorum: 1, meaning: 'Agreed, in a test.' },
+        ],
+      },
+      headers: ifMatch,
+    },
+  }),
+  'workspaces/[workspace]/stand-ins': w({
+    GET: { may: everyone },
+    // Names nobody of the workspace: who gets as far is told so.
+    POST: {
+      may: signers,
+      body: {
+        standInId: '0192f1c4-0000-7000-8000-000000000001',
+        fromOn: '2126-01-01',
+        untilOn: '2126-01-02',
+      },
+    },
+  }),
+  // Of those whose role allows it, the two whom it concerns and a lead.
+  'workspaces/[workspace]/stand-ins/[standIn]': w({
+    DELETE: { may: ['lead', 'approver'], names: { standIn: 'standIn' } },
   }),
   'workspaces/[workspace]/activity': w({ GET: { may: everyone } }),
   'workspaces/[workspace]/activity/export': w({ GET: { may: everyone } }),

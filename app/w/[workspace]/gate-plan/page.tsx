@@ -1,11 +1,11 @@
 import type { Metadata } from 'next';
-import { roleWords } from '@/app/_components/people/role-words';
 import { PageHeader } from '@/app/_components/page-header';
 import { Time } from '@/app/_components/time';
 import { enterWorkspacePage, orNotFound } from '@/app/_frames/enter-page';
 import { WorkspaceFrame } from '@/app/_frames/workspace-frame';
 import { readGatePlan } from '@/lib/workspaces/read-gate-plan';
-import type { GatePlanView } from '@/lib/workspaces/schemas';
+import type { GateRuleView } from '@/lib/workspaces/gate-plan-schemas';
+import { whenPasses, whoSigns } from '@/lib/workspaces/gate-words';
 
 type Props = { params: Promise<{ workspace: string }> };
 
@@ -33,7 +33,7 @@ export default async function GatePlanPage({ params }: Props) {
             </span>
             <h2 className="text-lg font-semibold">{gate.name}</h2>
             <div>
-              <p>{whoSigns(gate)}</p>
+              <p>{sentence(gate)}</p>
               <p className="mt-1 text-sm text-slate">
                 {gate.kind === 'people' ? <>Signed with the words: “{gate.meaning}”</> : gate.meaning}
               </p>
@@ -49,10 +49,7 @@ export default async function GatePlanPage({ params }: Props) {
   );
 }
 
-function whoSigns(gate: GatePlanView['gates'][number]): string {
-  if (gate.kind === 'automatic')
-    return 'Passes by itself when the check run has finished and no failing finding is open. A lead may waive one with a reason.';
-  const roles = gate.roles.map((role) => roleWords[role].label.toLowerCase()).join(' or ');
-  const many = gate.quorum === 1 ? `One ${roles} signs` : `${gate.quorum} people who are ${roles} sign`;
-  return gate.fourEyes ? `${many}; never the author of the revision.` : `${many}.`;
+function sentence(gate: GateRuleView): string {
+  if (gate.kind === 'automatic') return whenPasses(gate);
+  return gate.fourEyes ? `${sentence(gate)} Never the author of the revision.` : whoSigns(gate);
 }

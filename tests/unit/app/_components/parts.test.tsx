@@ -134,7 +134,7 @@ describe('GateLine', () => {
           id: 'c',
           name: 'Client',
           state: 'open',
-          awaited: { names: ['A. Brandt', 'J. Soler'], due: '2026-07-09T10:00:00Z', have: 1, needed: 2 },
+          awaited: { names: ['A. Brandt', 'J. Soler'], due: '2026-07-09', have: 1, needed: 2 },
         },
         { id: 'd', name: 'Locked', state: 'ahead' },
       ]}

@@ -13,6 +13,7 @@ const samples: Record<(typeof liveEventNames)[number], unknown> = {
   'docket.changed': { revisionId: id },
   'job.progressed': { id, subjectId: other, stage: 'measuring draft', progress: 0.4 },
   'people.changed': { id },
+  'gate-plan.changed': { id, version: 2 },
   'today.changed': { id },
 };
 

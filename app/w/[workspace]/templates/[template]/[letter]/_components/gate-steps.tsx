@@ -21,7 +21,7 @@ export function gateSteps(revision: RevisionView, findings: FindingCounts, mustS
 function stepOf(gate: Gate, revision: RevisionView, findings: FindingCounts, mustSettle: number): GateStep {
   const signatures = gate.signatures.map((signature) => ({
     name: signature.printedName,
-    role: signature.role,
+    role: signature.signedFor ? `${signature.role}, for ${signature.signedFor}` : signature.role,
     at: signature.signedAt,
     words: signature.decision === 'return' ? (signature.reason ?? signature.meaning) : signature.meaning,
   }));
@@ -37,24 +37,36 @@ function stepOf(gate: Gate, revision: RevisionView, findings: FindingCounts, mus
   if (gate.state === 'closed') return { ...base, state: 'ahead', line: 'closed with the revision' };
   if (gate.state === 'waiting') return { ...base, state: 'ahead', line: aheadLine(gate) };
   if (gate.kind === 'automatic') {
-    return { ...base, state: 'open', line: formingLine(revision, findings, mustSettle) };
+    const line =
+      gate.conditions?.includes('checks-pass') === false
+        ? settleLine(mustSettle)
+        : formingLine(revision, findings, mustSettle);
+    return { ...base, state: 'open', line };
   }
   return {
     ...base,
     state: 'open',
-    line: mustSettle > 0 ? `${count(mustSettle, 'item', 'items')} to settle first` : undefined,
+    line: gate.short
+      ? 'too few are left who may sign: ask a lead to invite somebody'
+      : mustSettle > 0
+        ? `${count(mustSettle, 'item', 'items')} to settle first`
+        : undefined,
     awaited: {
       names: gate.awaited,
       since: gate.openedAt ?? undefined,
-      due: revision.template.dueOn ?? undefined,
+      // The plan's day for this gate, or else the template's.
+      due: gate.dueOn ?? revision.template.dueOn ?? undefined,
       have: gate.signatures.filter((signature) => signature.decision === 'sign').length,
       needed: gate.quorum,
+      everybody: gate.everybody,
     },
   };
 }
 
 /** The rule by which it opened, not a promise that the template forms. */
 function passedLine(gate: Gate, { waived, notRun }: FindingCounts): GateStep['line'] {
+  if (gate.conditions?.includes('checks-pass') === false)
+    return <>nothing left to settle, {gate.passedAt ? <Time at={gate.passedAt} show="moment" /> : null}</>;
   return (
     <>
       no failing finding open, {gate.passedAt ? <Time at={gate.passedAt} show="moment" /> : null}
@@ -75,11 +87,16 @@ function formingLine(
   if (check.state === 'running') return 'being checked';
   if (check.state === 'failed') return 'the check did not finish';
   if (failing > 0) return `${count(failing, 'finding', 'findings')} to mend or to waive`;
-  return mustSettle > 0 ? `${count(mustSettle, 'item', 'items')} to settle first` : 'about to pass';
+  return settleLine(mustSettle);
 }
 
+const settleLine = (mustSettle: number) =>
+  mustSettle > 0 ? `${count(mustSettle, 'item', 'items')} to settle first` : 'about to pass';
+
 function aheadLine(gate: Gate): string {
-  if (gate.kind === 'automatic') return 'by the check';
+  if (gate.kind === 'automatic')
+    return gate.conditions?.includes('checks-pass') === false ? 'by the docket' : 'by the check';
+  if (gate.everybody) return 'everybody signs';
   return gate.quorum > 1 ? `${gate.quorum} signatures` : 'one signature';
 }
 

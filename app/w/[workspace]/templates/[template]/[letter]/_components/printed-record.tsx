@@ -49,7 +49,10 @@ export function PrintedRecord({ revision }: { revision: RevisionView }) {
               <tr key={signature.id} className="align-top">
                 <td className="pr-2">{signature.gate}</td>
                 <td className="pr-2">{signature.printedName}</td>
-                <td className="pr-2">{signature.role}</td>
+                <td className="pr-2">
+                  {signature.role}
+                  {signature.signedFor ? `, for ${signature.signedFor}` : ''}
+                </td>
                 <td className="pr-2">{signature.decision === 'sign' ? 'signed' : 'returned'}</td>
                 <td className="pr-2">{signature.reason ?? signature.meaning}</td>
                 <td className="pr-2">

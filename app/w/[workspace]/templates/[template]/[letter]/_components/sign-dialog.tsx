@@ -113,13 +113,15 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
           <p>
             {decision === 'sign' ? (
               <>
-                By signing I, <strong className="font-semibold">{reader.name}</strong>, {reader.role}, state:{' '}
+                By signing I, <strong className="font-semibold">{reader.name}</strong>, {reader.role}
+                {gate.standsFor ? ` and stand-in for ${gate.standsFor}` : ''}, state:{' '}
                 <strong className="font-semibold">{gate.meaning}</strong>
               </>
             ) : (
               <>
-                I, <strong className="font-semibold">{reader.name}</strong>, {reader.role}, return this
-                revision at the {gate.gateName.toLowerCase()} gate.
+                I, <strong className="font-semibold">{reader.name}</strong>, {reader.role}
+                {gate.standsFor ? ` and stand-in for ${gate.standsFor}` : ''}, return this revision at the{' '}
+                {gate.gateName.toLowerCase()} gate.
               </>
             )}
           </p>
@@ -132,8 +134,6 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
             isRequired
             roomy
           />
-          {problem ? (
-            <p role="alert" className="border-l-4 border-madder bg-madder-wash px-4 py-2.5">
           {form.asksCode ? (
             <CodeField
               value={form.code}
@@ -143,6 +143,8 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
               roomy
             />
           ) : null}
+          {problem ? (
+            <p role="alert" className="border-l-4 border-madder bg-madder-wash px-4 py-2.5">
               {problem}
             </p>
           ) : null}

@@ -49,7 +49,9 @@ function stateWord({ state }: RevisionView): string {
 
 function Agreed({ revision, lockedAt }: { revision: RevisionView; lockedAt: string }) {
   const signers = revision.gates.flatMap((gate) =>
-    gate.signatures.filter((s) => s.decision === 'sign').map((s) => s.printedName),
+    gate.signatures
+      .filter((s) => s.decision === 'sign')
+      .map((s) => (s.signedFor ? `${s.printedName} (for ${s.signedFor})` : s.printedName)),
   );
   return (
     <div className="flex flex-col gap-1">
