@@ -15,8 +15,6 @@ const sentences: Record<string, string> = {
   TOKEN_EXPIRED: 'This link has run out. Ask for a new one.',
   PASSWORD_TOO_SHORT: 'The password is too short. Use 12 characters or more.',
   PASSWORD_TOO_LONG: 'The password is too long. Use 128 characters or fewer.',
-  TOO_MANY_ATTEMPTS:
-    'Too many tries for this address. Wait a quarter of an hour, or set a new password from the sign-in page.',
   INVALID_CODE: 'This is not the code that your authenticator shows now. Is its clock right?',
   CODE_USED: 'This code was used already. Wait for the next one.',
   INVALID_BACKUP_CODE: 'This is none of your recovery codes, or it was used already.',
@@ -33,6 +31,7 @@ const sentences: Record<string, string> = {
 export function explainAuth(refusal: AuthRefusal): string {
   const known = refusal.code ? sentences[refusal.code] : undefined;
   if (known) return known;
+  if (refusal.code === 'TOO_MANY_ATTEMPTS' && refusal.message) return refusal.message;
   if (refusal.status === 429) return 'Too many tries in a short time. Wait a minute, then try again.';
   if (refusal.status === 401) return 'Your session has ended. Sign in again.';
   if (refusal.status !== undefined && refusal.status >= 500)

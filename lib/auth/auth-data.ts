@@ -1,7 +1,7 @@
-import { and, asc, eq, inArray } from 'drizzle-orm';
+import { and, asc, eq, inArray, sql } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { authDatabase } from '@/db/client';
-import { sessions, users } from '@/db/schema/identity';
+import { accounts, sessions, users } from '@/db/schema/identity';
 import { outbox } from '@/db/schema/trail';
 import {
   invitations,
@@ -77,6 +77,16 @@ export async function listMemberships(personId: string) {
 export async function findPerson(personId: string) {
   const [row] = await authDatabase().select().from(users).where(eq(users.id, personId));
   return row ?? null;
+}
+
+/** The account of an address with the hash of its password; null where there is none. */
+export async function findOwner(email: string): Promise<{ id: string; passwordHash: string } | null> {
+  const [row] = await authDatabase()
+    .select({ id: users.id, passwordHash: accounts.password })
+    .from(users)
+    .innerJoin(accounts, and(eq(accounts.userId, users.id), eq(accounts.providerId, 'credential')))
+    .where(eq(sql`lower(${users.email})`, email.trim().toLowerCase()));
+  return row?.passwordHash ? { id: row.id, passwordHash: row.passwordHash } : null;
 }
 
 export async function listSessionIds(personId: string): Promise<string[]> {

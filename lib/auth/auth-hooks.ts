@@ -1,17 +1,10 @@
 import { APIError, createAuthMiddleware, getSessionFromCtx, isAPIError } from 'better-auth/api';
 import { z } from 'zod';
 import { shortText } from '@/lib/workspaces/schemas';
-import {
-  confirmAttempts,
-  countConfirmAttempt,
-  countSignInAttempt,
-  forgetConfirmAttempts,
-  forgetSignInAttempts,
-} from './attempts-data';
+import { confirmBudget, confirmKey, forgetTries, spendTry } from './attempts-data';
 import { afterSecondFactor, beforeSecondFactor } from './second-factor-hooks';
-
-/** Wrong passwords that an address may take in a quarter of an hour. */
-export const signInAttempts = 20;
+import { knowDevice, settleSignInTry, spendSignInTry } from './sign-in-tries';
+import { waitWords } from './wait-words';
 
 /** Nothing else is taken: a field too many is refused before the service looks whether the address is known. */
 const SignUp = z.strictObject({
@@ -31,6 +24,8 @@ const askingPassword = [
 ];
 /** Whose password a request has asked for, from its first hook to its last. */
 const asked = new WeakMap<object, string>();
+/** Whose mailbox a request has proven with the link in it. */
+const proven = new WeakMap<object, string>();
 
 const tooMany = (message: string, retryAfterS: number) =>
   new APIError(
@@ -39,7 +34,7 @@ const tooMany = (message: string, retryAfterS: number) =>
     { 'retry-after': String(retryAfterS) },
   );
 
-/** Before the service answers: names as ours are, and a limit for each address besides those for each caller. */
+/** Before the service answers: names as ours are, and limits for each account besides those for each caller. */
 export const before = createAuthMiddleware(async (ctx) => {
   if (ctx.path === '/sign-up/email') {
     const given = SignUp.safeParse(ctx.body);
@@ -50,28 +45,41 @@ export const before = createAuthMiddleware(async (ctx) => {
   if (ctx.path === '/sign-in/email') {
     const given = Address.safeParse(ctx.body);
     if (!given.success) return;
-    const { count, retryAfterS } = await countSignInAttempt(given.data.email);
-    if (count > signInAttempts)
+    const wait = await spendSignInTry(ctx, given.data.email);
+    if (wait > 0)
       throw tooMany(
-        'Too many attempts for this address. Wait a quarter of an hour, or reset the password.',
-        retryAfterS,
+        `Too many tries for this address. Wait ${waitWords(wait)}, or set a new password from the sign-in page.`,
+        wait,
       );
+  }
+  if (ctx.path === '/reset-password') {
+    const token = z.object({ token: z.string() }).safeParse(ctx.body);
+    const identifier = token.success ? `reset-password:${token.data.token}` : '';
+    const found = identifier ? await ctx.context.internalAdapter.findVerificationValue(identifier) : null;
+    const user = found ? await ctx.context.internalAdapter.findUserById(found.value) : null;
+    if (user) proven.set(ctx.context, user.email);
   }
   if (askingPassword.includes(ctx.path)) {
     const session = await getSessionFromCtx(ctx);
     if (!session) return;
-    const { count, retryAfterS } = await countConfirmAttempt(session.user.id);
-    if (count > confirmAttempts)
-      throw tooMany('Too many wrong passwords. Wait a quarter of an hour and try again.', retryAfterS);
+    const wait = await spendTry(confirmKey(session.user.id), confirmBudget);
+    if (wait > 0) throw tooMany(`Too many wrong passwords. Wait ${waitWords(wait)} and try again.`, wait);
     asked.set(ctx.context, session.user.id);
   }
   return beforeSecondFactor(ctx);
 });
 
 export const after = createAuthMiddleware(async (ctx) => {
-  const signedIn = ctx.context.newSession;
-  if (ctx.path === '/sign-in/email' && signedIn) await forgetSignInAttempts(signedIn.user.email);
+  const { newSession, returned } = ctx.context;
+  // Leading on to a page is an error to the service, and the end of a proven address to us.
+  const refused = isAPIError(returned) && returned.status !== 'FOUND';
+  if (refused) return;
+  if (ctx.path === '/sign-in/email') await settleSignInTry(ctx);
   const personId = asked.get(ctx.context);
-  if (personId && !isAPIError(ctx.context.returned)) await forgetConfirmAttempts(personId);
-  await afterSecondFactor(ctx, ctx.context.returned);
+  if (personId) await forgetTries(confirmKey(personId));
+  await afterSecondFactor(ctx);
+  // The right password alone makes no device known where a second factor is still asked for.
+  const half = ctx.path === '/sign-in/email' && newSession?.user.twoFactorEnabled;
+  const email = proven.get(ctx.context) ?? (half ? undefined : newSession?.user.email);
+  if (email) await knowDevice(ctx, email);
 });

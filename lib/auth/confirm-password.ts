@@ -3,9 +3,10 @@ import { and, eq } from 'drizzle-orm';
 import { authDatabase } from '@/db/client';
 import { accounts } from '@/db/schema/identity';
 import { AppError, forbidden } from '@/lib/errors/app-error';
-import { confirmAttempts, countConfirmAttempt, forgetConfirmAttempts } from './attempts-data';
+import { confirmBudget, confirmKey, forgetTries, spendTry } from './attempts-data';
 import type { Person } from './context';
 import { readSecondFactor, takeCode } from './second-factor-data';
+import { waitWords } from './wait-words';
 
 /**
  * Asks a signed-in person for their password again, as signing does, and for a code of their authenticator where
@@ -19,11 +20,11 @@ export async function confirmPassword(
   password: string,
   code?: string,
 ): Promise<'password' | 'password+totp'> {
-  const { count, retryAfterS } = await countConfirmAttempt(person.id);
-  if (count > confirmAttempts)
+  const retryAfterS = await spendTry(confirmKey(person.id), confirmBudget);
+  if (retryAfterS > 0)
     throw new AppError(
       'limit_exceeded',
-      'Too many wrong passwords. Wait a quarter of an hour and try again.',
+      `Too many wrong passwords. Wait ${waitWords(retryAfterS)} and try again.`,
       { retryAfterS },
     );
   const [account] = await authDatabase()
@@ -34,7 +35,7 @@ export async function confirmPassword(
   if (!right) throw forbidden('That is not your password. Nothing was signed.', 'wrong-password');
   const { on } = await readSecondFactor(person.id);
   if (on) await confirmCode(person, code);
-  await forgetConfirmAttempts(person.id);
+  await forgetTries(confirmKey(person.id));
   return on ? 'password+totp' : 'password';
 }
 

@@ -1,5 +1,5 @@
 import type { GenericEndpointContext } from '@better-auth/core';
-import { APIError, getSessionFromCtx, isAPIError } from 'better-auth/api';
+import { APIError, getSessionFromCtx } from 'better-auth/api';
 import { z } from 'zod';
 import { endSessionSockets } from '@/lib/workspaces/end-person-sockets';
 import { queueIdentityMail } from './auth-data';
@@ -65,9 +65,9 @@ export async function beforeSecondFactor(ctx: GenericEndpointContext) {
   return { context: { body } };
 }
 
-/** After the service has answered: sessions of before end with a new second factor, and the person is told. */
-export async function afterSecondFactor(ctx: GenericEndpointContext, returned: unknown) {
-  if (!(ctx.path in inputs) || isAPIError(returned)) return;
+/** After the service has done it: sessions of before end with a new second factor, and the person is told. */
+export async function afterSecondFactor(ctx: GenericEndpointContext) {
+  if (!(ctx.path in inputs)) return;
   const setUp = settingUp.get(ctx.context);
   const user = setUp?.user ?? ctx.context.newSession?.user ?? ctx.context.session?.user;
   if (!user) return;

@@ -22,7 +22,12 @@ const authentication = {
 };
 const site = {
   APP_URL: address(/^https?$/, 'https://proofs.example.com').transform((url) => url.replace(/\/+$/, '')),
-  TRUSTED_PROXY: word.optional(),
+  TRUSTED_PROXY: z
+    .union(
+      [z.ipv4(), z.ipv6(), z.cidrv4(), z.cidrv6()],
+      'must be an IP address or a range such as 10.0.0.0/8',
+    )
+    .optional(),
   DEMO_STUDIO: z.literal('on', 'may only be "on"; leave it out otherwise').optional(),
 };
 const storage = {

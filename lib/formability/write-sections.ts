@@ -32,6 +32,7 @@ export function writeSections(
     visibility,
     unionVolumeMm3: meshReport.unionVolumeMm3,
     sound: columns.openColumns + columns.overlapColumns === 0 && prepared.min[2] >= 0,
+    unseenMm3: undercuts.unseenMm3,
   });
   const regions = undercuts.regions.map((region) => ({ ...region, at: here(region.at) }));
   const found = measureEdges(

@@ -1,7 +1,7 @@
 import { afterAll, beforeAll, describe, expect, it, vi } from 'vitest';
 import { POST } from '@/app/api/auth/[...all]/route';
 import { GET as getMe } from '@/app/api/v1/me/route';
-import { confirmAttempts } from '@/lib/auth/attempts-data';
+import { confirmBudget } from '@/lib/auth/attempts-data';
 import { confirmPassword } from '@/lib/auth/confirm-password';
 import { readSecondFactor } from '@/lib/auth/second-factor-data';
 import { authenticator } from '@/tests/support/authenticator';
@@ -114,10 +114,14 @@ describe('setting up a second factor', () => {
 
 describe('signing in with a second factor', () => {
   it('gives no session for the password alone', async () => {
-    const { person } = await withFactor('Half');
-    const cookie = await password(person.email);
+    const one = await withFactor('Half');
+    const cookie = await password(one.person.email);
     expect(cookie).not.toMatch(/session_token=[^;]/);
     expect(await me(cookie)).toBe(401);
+    // Nor does it make the device a known one: the code does.
+    expect(cookie).not.toMatch(/known_device/);
+    const whole = await post('/two-factor/verify-totp', { code: await one.device.code() }, cookie);
+    expect(cookieOf(whole)).toMatch(/known_device=[^;]/);
   });
 
   it('takes each code once', async () => {
@@ -282,12 +286,12 @@ describe('turning a second factor off', () => {
     const one = await withFactor('Counted');
     const paths = ['/two-factor/disable', '/two-factor/generate-backup-codes', '/change-password'];
     const statuses: number[] = [];
-    for (let i = 0; i <= confirmAttempts; i++) {
+    for (let i = 0; i <= confirmBudget.burst; i++) {
       const body =
         i % 3 === 2 ? { currentPassword: 'x', newPassword: testPassword } : { password: 'not my password' };
       statuses.push((await post(paths[i % 3], body, one.cookie)).status);
     }
-    expect(statuses).toEqual([...Array<number>(confirmAttempts).fill(400), 429]);
+    expect(statuses).toEqual([...Array<number>(confirmBudget.burst).fill(400), 429]);
     await expect(confirmPassword(one.person, testPassword)).rejects.toMatchObject({ code: 'limit_exceeded' });
   });
 });
@@ -317,11 +321,11 @@ describe('proving oneself again', () => {
     const one = await withFactor('Together');
     const code = await one.device.code();
     const tries = await Promise.allSettled(
-      Array.from({ length: confirmAttempts }, () => confirmPassword(one.person, testPassword, code)),
+      Array.from({ length: confirmBudget.burst }, () => confirmPassword(one.person, testPassword, code)),
     );
     expect(tries.filter((result) => result.status === 'fulfilled')).toHaveLength(1);
     const two = await withFactor('Wrong codes');
-    for (let i = 0; i < confirmAttempts; i++)
+    for (let i = 0; i < confirmBudget.burst; i++)
       await expect(confirmPassword(two.person, testPassword, '000000')).rejects.toMatchObject({
         reason: 'wrong-code',
       });
