@@ -9,6 +9,7 @@ import { findAirTraps } from './measures/find-air-traps';
 import { findSpacing } from './measures/find-spacing';
 import { findUndercuts, type Undercuts } from './measures/find-undercuts';
 import type { Flood } from './measures/map-pockets';
+import { findThinUndercuts } from './measures/find-thin-undercuts';
 import { findVents, type Vents } from './measures/find-vents';
 import { measureDetails } from './measures/measure-details';
 import { measureDraft } from './measures/measure-draft';
@@ -79,10 +80,11 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     ...findAirTraps(holes.surface, grid, holes.vents),
     spacing: findSpacing(mesh, facetGrid, holes.surface, grid),
   }));
-  const { visibility, draft } = stages.run('facets', () => ({
-    visibility: findVisibility(mesh, facets, columns, air, perFacet),
-    draft: measureDraft(facets),
-  }));
+  const { visibility, draft } = stages.run('facets', () => {
+    const visibility = findVisibility(mesh, facets, columns, air, perFacet);
+    findThinUndercuts(mesh, facets, visibility, grid.cell, shells.ofFacet, limits.undercutDepthMm, undercuts);
+    return { visibility, draft: measureDraft(facets) };
+  });
   const { walls, detail } = stages.run('walls', () => {
     const walls = measureWalls(mesh, facets, facetGrid, columns, air, visibility, holes.bore);
     const detail = measureDetails(mesh, facets, facetGrid, visibility, holes.bore, walls.sampled);

@@ -20,6 +20,8 @@ export interface Undercuts {
   regions: UndercutRegion[];
   /** 1 for facets that face down into a pocket deeper than `textureMm`: ceilings, not walls. */
   ceiling: Uint8Array;
+  /** Air below ledges too narrow for the grid (find-thin-undercuts), mm³. */
+  unseenMm3: number;
 }
 
 /**
@@ -73,7 +75,7 @@ export function findUndercuts(columns: Columns, air: Air, textureMm: number, tri
       if (deep && columns.facet[s] >= 0) ceiling[columns.facet[s]] = 1;
     }
   }
-  return { regions: list.slice(0, MOST_REGIONS), ceiling };
+  return { regions: list.slice(0, MOST_REGIONS), ceiling, unseenMm3: 0 };
 }
 
 /**

@@ -13,6 +13,8 @@ export interface ShadowInput {
   unionVolumeMm3: number;
   /** Closed, standing on or over the bed, nothing covered twice: only then do the facets tell the envelope. */
   sound: boolean;
+  /** Air below ledges between the grid's columns, where those saw none. */
+  unseenMm3: number;
 }
 
 /** A facet seen by this share or more is seen whole; by the rest of 1 or less, not at all. */
@@ -29,7 +31,8 @@ const BELIEVED = 0.75;
 export function measureShadow(input: ShadowInput): { undercut: number; enclosed: number } {
   const { undercutVolume, enclosedVolume } = input.air;
   const counted = undercutVolume + enclosedVolume;
-  if (!input.sound || counted === 0) return { undercut: undercutVolume, enclosed: enclosedVolume };
+  if (counted === 0) return { undercut: input.unseenMm3, enclosed: 0 };
+  if (!input.sound) return { undercut: undercutVolume, enclosed: enclosedVolume };
   const shadow = envelopeVolume(input) - input.unionVolumeMm3;
   const doubt = BELIEVED * input.columns.grid.cell * jumpArea(input.columns);
   const ratio = shadow > 0 && Math.abs(shadow - counted) <= doubt ? shadow / counted : 1;

@@ -10,6 +10,10 @@ import { spreadDepth } from './find-undercuts';
 const FEW_CELLS = 3;
 const FINER = 16;
 const MOST_REFINED = 16;
+/** So are a few deeper ones, less finely: a cell more or less is some per cent of them. */
+const SOME_CELLS = 30;
+const LESS_FINE = 4;
+const MOST_DEEPER = 4;
 
 /** Facets whose plan box meets a square window. */
 export function facetsInWindow(mesh: Mesh, x: number, y: number, reach: number): Uint32Array {
@@ -45,14 +49,16 @@ export function windowColumns(
 }
 
 /**
- * Measures shallow undercuts again where they are deepest: the whole-part grid rounds a depth up to a cell, which on
- * a large part is more than the 0.2 mm that tells texture from an undercut. Changes the regions in place.
+ * Measures undercuts of few cells again where they are deepest: the whole-part grid rounds a depth up to a cell, which
+ * on a large part is more than the 0.2 mm that tells texture from an undercut. Changes the regions in place.
  */
 export function refineDepth(mesh: Mesh, regions: UndercutRegion[], cell: number, ofShell: Uint32Array): void {
-  const shallow = regions.filter((region) => region.maxDepthMm <= FEW_CELLS * cell).slice(0, MOST_REFINED);
-  for (const region of shallow) {
+  const isShallow = ({ maxDepthMm }: UndercutRegion) => maxDepthMm <= FEW_CELLS * cell;
+  const deeper = regions.filter((region) => !isShallow(region) && region.maxDepthMm <= SOME_CELLS * cell);
+  const shallow = regions.filter(isShallow);
+  for (const region of [...deeper.slice(0, MOST_DEEPER), ...shallow.slice(0, MOST_REFINED)]) {
     const reach = region.maxDepthMm + 2 * cell;
-    const cells = Math.ceil((2 * reach * FINER) / cell);
+    const cells = Math.ceil((2 * reach * (isShallow(region) ? FINER : LESS_FINE)) / cell);
     const columns = windowColumns(mesh, region.at[0], region.at[1], reach, cells, ofShell);
     const air = connectAir(columns, 'unknown');
     const depth = spreadDepth(columns, air, 'unknown');

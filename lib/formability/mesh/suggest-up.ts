@@ -4,7 +4,8 @@ import { makeGrid } from '../dexel/grid';
 import { rasterise } from '../dexel/raster';
 import type { Point } from '../report';
 import { isClosed } from './build-edges';
-import { baseOf, findStands } from './find-stands';
+import { baseOf, findStands, type Stand } from './find-stands';
+import type { Facets } from './measure-facets';
 import type { Mesh } from './mesh';
 import { turnToUp } from './place-mesh';
 import type { Prepared } from './prepare-mesh';
@@ -16,10 +17,19 @@ const LARGER_BASE = 1.005;
 const LEFT_OVER = 0.25;
 const CELLS = 96;
 const MOST_TRIED = 4;
+/** A base below this share of the better one is an edge or a point: the part cannot stand so. */
+const NO_BASE = 0.002;
+/** Walls lean by at most so much, and lean out from so much on. */
+const SIN_WALL = Math.sin(Math.PI / 3);
+const SIN_OUT = Math.sin((2.5 * Math.PI) / 180);
+/** Share of the walls that leans out where a part stands on its head, or lies on a side. */
+const ON_HEAD = 0.6;
+const ON_SIDE = 0.25;
 
 /**
  * The direction that stands the part on a larger base with far less undercut, in the file's frame; null where the
- * part stands well. Undercut is measured on coarse columns, for every stand alike.
+ * part stands well. Undercut is measured on coarse columns, for every stand alike. A part that stands on its foot and
+ * carries a wider head (T, mushroom) is meant so: only one without a base, or whose walls lean out, lies wrong.
  * @param undercutVolume of the part as it stands, mm³
  */
 export function suggestUp(prepared: Prepared, undercutVolume: number, solidVolume: number): Point | null {
@@ -29,18 +39,30 @@ export function suggestUp(prepared: Prepared, undercutVolume: number, solidVolum
   const stands = findStands(mesh, facets).filter((stand) => stand.baseMm2 > LARGER_BASE * base);
   if (stands.length === 0) return null;
   const now = undercutWith(prepared, [0, 0, 1]);
-  let best: Point | null = null;
+  let best: Stand | null = null;
   let least = LEFT_OVER * now;
-  for (const { up } of stands.slice(0, MOST_TRIED)) {
-    const undercut = undercutWith(prepared, up);
+  for (const stand of stands.slice(0, MOST_TRIED)) {
+    const undercut = undercutWith(prepared, stand.up);
     if (undercut >= least) continue;
     least = undercut;
-    best = up;
+    best = stand;
   }
   if (best === null) return null;
-  const [x, y, z] = best;
-  const inFile = turn ? [0, 1, 2].map((k) => turn[k] * x + turn[3 + k] * y + turn[6 + k] * z) : best;
+  const [x, y, z] = best.up;
+  if (base > NO_BASE * best.baseMm2 && leaningOut(facets) < (z < -0.9 ? ON_HEAD : ON_SIDE)) return null;
+  const inFile = turn ? [0, 1, 2].map((k) => turn[k] * x + turn[3 + k] * y + turn[6 + k] * z) : best.up;
   return inFile.map((value) => Math.round(value * 1e6) / 1e6 || 0) as Point;
+}
+
+/** Share of the walls' area that leans out by more than its noise. */
+function leaningOut({ area, nz, bed }: Facets): number {
+  let [walls, out] = [0, 0];
+  for (let t = 0; t < area.length; t++) {
+    if (bed[t] || nz[t] > SIN_WALL || nz[t] < -SIN_WALL) continue;
+    walls += area[t];
+    if (nz[t] < -SIN_OUT) out += area[t];
+  }
+  return walls > 0 ? out / walls : 0;
 }
 
 /** Undercut volume with `up` turned to +Z, by columns of a hundredth of the width. */

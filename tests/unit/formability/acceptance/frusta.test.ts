@@ -95,6 +95,25 @@ describe('rectangular frusta', () => {
     },
   );
 
+  it.each([2, 5, 10, 15])('walls that all lean out by %s°: the macro draft is that of the facets', (deg) => {
+    // Under each wall hangs a wedge: W = (w + 2 z s)(d + 2 z s) from the foot up, cover at the top's outline.
+    const s = Math.tan((deg * Math.PI) / 180);
+    const [w, d, h] = [80, 60, 30];
+    const volume = w * d * h + (w + d) * s * h * h + (4 * s * s * h ** 3) / 3;
+    hold(
+      frustum(w, d, h, -deg),
+      {
+        'mesh.volumeMm3': tight(volume),
+        'draft.wallMinMacroDeg': abs(-deg, 0.02),
+        'draft.minDeg': abs(-deg, 0.02),
+        'draft.minUpFacingDeg': null,
+        'undercut.undercutVolumeMm3': rel((w + 2 * h * s) * (d + 2 * h * s) * h - volume, 0.015),
+        'undercut.maxDepthMm': abs(h * s, 0.2),
+      },
+      { grid: { cellMm: 0.2 } },
+    );
+  });
+
   it('the median cusp weighs areas: 2/3 of the wall at 5°, the rest at 20°', () => {
     // Long walls 120 wide at 5°, short ones 30 wide at 20°.
     const drafts: Four = [20, 20, 5, 5];

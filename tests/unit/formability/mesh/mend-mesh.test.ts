@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { analyse } from '@/lib/formability/analyse';
-import { box, extrude, frustum } from '../../../fixtures/meshes/solids';
+import { ballOnStem, box, dome, extrude, frustum, lathe } from '../../../fixtures/meshes/solids';
 import { addFacet, flipped, mapPoints, moved, reordered, scaled, together, turned, type Triangles } from '../../../fixtures/meshes/triangles'; // prettier-ignore
 import { binaryStl } from '../../../fixtures/meshes/write-stl';
 import { checkOf, reportOn } from '../run-engine';
@@ -215,6 +215,24 @@ describe('where the part stands', () => {
   it('is given in the file’s frame where the recipe turns the part', () => {
     const found = meshOf(part, { mesh: { up: [0, 1, 0] } });
     expect(found.suggestedUp).toEqual([0, 0, 1]);
+  });
+
+  it('leaves a T, a dovetail, a mushroom and a ball on a stem alone: they stand on their foot', () => {
+    const t = (length: number) => extrude([[-10, 0], [10, 0], [10, 30], [24, 30], [24, 40], [-24, 40], [-24, 30], [-10, 30]], length); // prettier-ignore
+    const dovetail = extrude([[-20, 0], [20, 0], [30, 20], [-30, 20]], 60); // prettier-ignore
+    const mushroom = lathe([[0, 0], [10, 0], [10, 20], [30, 20], [30, 30], [0, 30]], 64); // prettier-ignore
+    for (const mesh of [t(70), t(12), dovetail, mushroom, ballOnStem(20, 6, 26, 60, 40)]) {
+      expect(meshOf(mesh)).toMatchObject({ warnings: [], suggestedUp: null });
+      expect(checkOf(reportOn(mesh, coarse), 'undercut').status).toBe('fail');
+    }
+  });
+
+  it('tells a frustum and a dome on their heads, not walls that lean out by 2° only', () => {
+    const head = (mesh: Triangles) => meshOf(mapPoints(mesh, (x, y, z) => [x, -y, 40 - z]));
+    expect(head(part)).toMatchObject({ warnings: ['orientation'], suggestedUp: [0, 0, -1] });
+    expect(head(dome(40, 48, 24))).toMatchObject({ warnings: ['orientation'], suggestedUp: [0, 0, -1] });
+    expect(meshOf(frustum(80, 60, 30, -5)).warnings).toEqual(['orientation']);
+    expect(meshOf(frustum(80, 60, 30, -2))).toMatchObject({ warnings: [], suggestedUp: null });
   });
 
   it('leaves alone what stands: hollow below, a box on any side, a slope', () => {
