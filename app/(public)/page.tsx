@@ -1,25 +1,18 @@
 import { redirect } from 'next/navigation';
 import { currentPerson } from '@/lib/auth/session';
-import { checkName, LEFT_OUT_CHECKS } from '@/lib/review/check-words';
+import { checkName } from '@/lib/review/check-words';
 import { ButtonLink } from '../_components/link';
 import { SectionDrawing } from './_components/section-drawing';
 
-const nameOf = (id: string) => checkName(id).toLowerCase();
-const physics = ['sheet', 'air', 'skin', 'walls', 'heat'] as const;
-const left: readonly string[] = LEFT_OUT_CHECKS;
 /** In the words of a sentence: a pocket without a vent is what the check on vents finds. */
 const checked = ['draft', 'undercuts', 'pockets without a vent', 'layer lines', 'edges', 'draw'].concat(
-  physics.filter((id) => !left.includes(id)).map(nameOf),
+  ['sheet', 'air', 'skin', 'walls', 'heat'].map((id) => checkName(id).toLowerCase()),
 );
 const sentence = (names: readonly string[]) => {
   const last = names[names.length - 1];
-  const words = names.length > 1 ? `${names.slice(0, -1).join(', ')} and ${last}` : last;
+  const words = `${names.slice(0, -1).join(', ')} and ${last}`;
   return words.charAt(0).toUpperCase() + words.slice(1);
 };
-const missing =
-  left.length > 0
-    ? ` ${sentence(left.map(nameOf))} ${left.length > 1 ? 'are' : 'is'} not computed yet, and every revision says so.`
-    : '';
 
 const promises = [
   {
@@ -28,7 +21,7 @@ const promises = [
   },
   {
     title: 'See whether it will form',
-    text: `${sentence(checked)} are checked on every revision: what was measured, where, what is wanted, and what to change.${missing}`,
+    text: `${sentence(checked)} are checked on every revision: what was measured, where, what is wanted, and what to change.`,
   },
   {
     title: 'Know what was agreed',

@@ -110,7 +110,9 @@ export const derivatives = pgTable(
     id: id(),
     workspaceId: workspaceId(),
     meshId: uuid('mesh_id').notNull(),
-    kind: text('kind', { enum: ['model', 'picture', 'thumbnail'] }).notNull(),
+    kind: text('kind', { enum: ['model', 'picture', 'thumbnail', 'sheet'] }).notNull(),
+    /** Of the recipe that the sheet was formed under; empty for what shows the mesh alone. */
+    recipeDigest: text('recipe_digest').notNull().default(''),
     storeKey: text('store_key').notNull(),
     bytes: bigint('bytes', { mode: 'number' }).notNull(),
     sha256: text('sha256').notNull(),
@@ -119,7 +121,7 @@ export const derivatives = pgTable(
   },
   (t) => [
     primaryKey({ columns: [t.workspaceId, t.id] }),
-    unique('derivatives_kind').on(t.workspaceId, t.meshId, t.kind),
+    unique('derivatives_kind').on(t.workspaceId, t.meshId, t.kind, t.recipeDigest),
     foreignKey({ columns: [t.workspaceId, t.meshId], foreignColumns: [meshes.workspaceId, meshes.id] }),
     workspacePolicy('derivatives'),
   ],

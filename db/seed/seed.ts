@@ -37,13 +37,13 @@ const at = (people: Cast, room: string) => ({
   valcourt: () => enterWorkspace(people.valcourt, room),
 });
 
-/** Revision A has too little draft; B is right, signed by studio and client, and released. */
+/** Revision A has too little draft and webs between its cups; B is right, signed by studio and client, and released. */
 async function releasedTray(people: Cast, rooms: Rooms): Promise<void> {
   const who = at(people, rooms.quillon);
   const template = await newTemplate(await who.ferro(), 'Tart tray, six cup', 12);
   const first = await post(await who.ferro(), template, {
     file: 'tart-tray-a.stl',
-    bytes: await tartTray({ draftDeg: 2, ventMm: 1 }),
+    bytes: await tartTray({ draftDeg: 2, ventMm: 1, footMm: 0, pitchMm: 74 }),
     note: 'First state. The cups follow your drawing exactly.',
   });
   const draftFinding = (await viewDocket(await who.brandt(), first)).findings.find(
@@ -66,8 +66,8 @@ async function releasedTray(people: Cast, rooms: Rooms): Promise<void> {
   const second = await post(await who.ferro(), template, {
     file: 'tart-tray-b.stl',
     bytes: await tartTray({ draftDeg: 9, ventMm: 1 }),
-    note: 'Cups at 9° so that the tray lifts off. Same rim height.',
-    recipe: { print: { layerMm: 0.12, sanded: true } },
+    note: 'Cups at 9° so that the tray lifts off, 10 mm further apart and rounded at the foot so that the sheet closes between them. Same rim height. Sheet of 1 mm.',
+    recipe: { print: { layerMm: 0.12, sanded: true }, sheet: { gaugeMm: 1 } },
   });
   await settleThread(await who.brandt(), thread, {
     settled: true,
@@ -91,8 +91,8 @@ async function mouldInReview(people: Cast, rooms: Rooms): Promise<void> {
   const revision = await post(await who.ferro(), template, {
     file: 'bonbon-mould-a.stl',
     bytes: await bonbonMould({ ventedRows: 2, ventMm: 1 }),
-    note: 'Please look at the spacing of the pockets, and whether 11 mm is deep enough.',
-    recipe: { print: { layerMm: 0.12, sanded: true } },
+    note: 'Please look at the spacing of the pockets, and whether 11 mm is deep enough. Sheet of 1.2 mm; 0.2 mm is enough for a mould.',
+    recipe: { print: { layerMm: 0.12, sanded: true }, sheet: { gaugeMm: 1.2, minFormedMm: 0.2 } },
   });
   const thread = await raise(
     await who.duarte(),
@@ -137,7 +137,10 @@ async function shellThatWaits(people: Cast, rooms: Rooms): Promise<void> {
     file: 'seedling-insert-a.stl',
     bytes: await seedlingInsert({ wallMm: 3.5 }),
     note: 'Hollow to save filament. Walls of 3.5 mm.',
-    recipe: { print: { layerMm: 0.12, sanded: true, shellMm: 3.5, topMm: 3.5 } },
+    recipe: {
+      print: { layerMm: 0.12, sanded: true, shellMm: 3.5, topMm: 3.5 },
+      sheet: { gaugeMm: 1.2, minFormedMm: 0.2 },
+    },
   });
   await raise(
     await who.okafor(),
@@ -161,7 +164,7 @@ async function approvedCradle(people: Cast, rooms: Rooms): Promise<void> {
     file: 'bottle-cradle-a.stl',
     bytes: await bottleCradle(),
     note: 'Troughs for 34 mm bottles, open at both ends.',
-    recipe: { print: { layerMm: 0.12, sanded: true } },
+    recipe: { print: { layerMm: 0.12, sanded: true }, sheet: { gaugeMm: 1.2 } },
   });
   await sign(await who.okafor(), revision, people.okafor.password);
   await sign(await who.valcourt(), revision, people.valcourt.password);

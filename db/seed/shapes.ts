@@ -64,6 +64,30 @@ export function draftedLevels(height: number, draftDeg: number, topRadius: numbe
   return levels;
 }
 
+/**
+ * The same wall standing on a floor at `floor`, with a rounded inside corner there: the arc is tangent to floor and
+ * wall, so the outline is widest on the floor.
+ */
+export function footedLevels(
+  floor: number,
+  footRadius: number,
+  height: number,
+  draftDeg: number,
+  topRadius: number,
+  steps = 6,
+): Level[] {
+  const draft = (draftDeg * Math.PI) / 180;
+  const wallFoot = floor + footRadius * (1 - Math.sin(draft));
+  const arc = Array.from({ length: steps + 1 }, (_, i): Level => {
+    const angle = Math.PI / 2 - ((Math.PI / 2 - draft) * i) / steps;
+    return {
+      z: floor + footRadius * (1 - Math.sin(angle)),
+      inset: wallFoot * Math.tan(draft) - footRadius * (Math.cos(draft) - Math.cos(angle)),
+    };
+  });
+  return [{ ...arc[0], z: 0 }, ...arc, ...draftedLevels(height, draftDeg, topRadius, steps).slice(1)];
+}
+
 /** Solid between outlines that shrink by scaling, so that straight walls have exactly the draft of the levels. */
 export async function loft(loop: Loop, levels: Level[]): Promise<Manifold> {
   const { Manifold: Solid, Mesh } = await solids();

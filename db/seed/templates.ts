@@ -4,6 +4,7 @@ import {
   circle,
   draftedLevels,
   flutedCircle,
+  footedLevels,
   loft,
   roundedRectangle,
   solids,
@@ -23,33 +24,51 @@ async function cut(body: Manifold, tools: Manifold[]): Promise<Manifold> {
   return (await solids()).Manifold.difference([body, ...tools]);
 }
 
-/** Pocket from the top: an upside-down drafted loft whose floor lies `depth` under `top`. */
-async function pocket(radius: number, depth: number, draftDeg: number, top: number): Promise<Manifold> {
-  const grow = Math.tan((draftDeg * Math.PI) / 180);
+/** Pocket from the top: an upside-down drafted loft whose floor lies `depth` under `top`, rounded into the wall. */
+async function pocket(
+  radius: number,
+  depth: number,
+  draftDeg: number,
+  top: number,
+  floorRadius = 0,
+): Promise<Manifold> {
+  const draft = (draftDeg * Math.PI) / 180;
+  const grow = Math.tan(draft);
   const floor = radius - depth * grow;
   const above = 1;
-  const levels = [
-    { z: top - depth, inset: 0 },
-    { z: top + above, inset: -(depth + above) * grow },
-  ];
-  return loft(circle(floor), levels);
+  const wallFoot = floorRadius * (1 - Math.sin(draft));
+  const steps = floorRadius > 0 ? 6 : 0;
+  const arc = Array.from({ length: steps + 1 }, (_, i) => {
+    const angle = Math.PI / 2 - ((Math.PI / 2 - draft) * i) / Math.max(1, steps);
+    return {
+      z: top - depth + floorRadius * (1 - Math.sin(angle)),
+      inset: floorRadius * (Math.cos(draft) - Math.cos(angle)) - wallFoot * grow,
+    };
+  });
+  return loft(circle(floor), [...arc, { z: top + above, inset: -(depth + above) * grow }]);
 }
 
-export type TartTray = { draftDeg: number; ventMm: number };
+export type TartTray = { draftDeg: number; ventMm: number; footMm?: number; pitchMm?: number };
 
-/** Six fluted cups on a drafted flange; a shallow dish in each cup is vented to the bed. */
-export async function tartTray({ draftDeg, ventMm }: TartTray): Promise<Uint8Array> {
+/** Six fluted cups on a drafted flange, rounded into it where `footMm` says so; a shallow dish in each is vented to the bed. */
+export async function tartTray({
+  draftDeg,
+  ventMm,
+  footMm = 5,
+  pitchMm = 84,
+}: TartTray): Promise<Uint8Array> {
   const base = 8;
   const height = 27;
   const cups: Manifold[] = [];
   const tools: Manifold[] = [];
-  for (const x of [-74, 0, 74])
-    for (const y of [-37, 37]) {
-      const cup = await loft(flutedCircle(25, 14, 0.03), draftedLevels(height, draftDeg, 2.5));
-      cups.push(cup.translate(x, y, 0));
+  for (const x of [-pitchMm, 0, pitchMm])
+    for (const y of [-pitchMm / 2, pitchMm / 2]) {
+      const levels =
+        footMm > 0 ? footedLevels(base, footMm, height, draftDeg, 2.5) : draftedLevels(height, draftDeg, 2.5);
+      cups.push((await loft(flutedCircle(25, 14, 0.03), levels)).translate(x, y, 0));
       tools.push((await pocket(13, 3, 20, height)).translate(x, y, 0), await bore(ventMm, height, x, y));
     }
-  const body = await join([await flange(232, 158, base), ...cups]);
+  const body = await join([await flange(84 + 2 * pitchMm, 84 + pitchMm, base), ...cups]);
   return stlBytes(await cut(body, tools), 'tart tray, six cup');
 }
 
@@ -63,7 +82,7 @@ export async function bonbonMould({ ventedRows, ventMm }: BonbonMould): Promise<
   for (let row = 0; row < 4; row++)
     for (let column = 0; column < 6; column++) {
       const [x, y] = [-70 + 28 * column, -42 + 28 * row];
-      tools.push((await pocket(10, 11, 12, height)).translate(x, y, 0));
+      tools.push((await pocket(10, 11, 12, height, 4)).translate(x, y, 0));
       if (row < ventedRows) tools.push(await bore(ventMm, height, x, y));
     }
   return stlBytes(await cut(block, tools), 'bonbon mould, twenty-four');
@@ -105,7 +124,7 @@ export async function seedlingInsert({ wallMm }: SeedlingInsert): Promise<Uint8A
   for (const x of [-48, -16, 16, 48]) {
     const post = await loft(circle(11), draftedLevels(height - 0.5, 3, 0.5));
     wells.push(post.translate(x, 0, 0));
-    holes.push((await pocket(8, 12, 10, height)).translate(x, 0, 0), await bore(1.2, height, x, 0));
+    holes.push((await pocket(9, 9, 12, height, 4)).translate(x, 0, 0), await bore(1.2, height, x, 0));
   }
   return stlBytes(await cut(await join([shell, ...wells]), holes), 'seedling insert');
 }

@@ -73,7 +73,10 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
   const advice = options.geometryOnly
     ? []
     : stages.run('advice', () => advise(part, input, checks, wallDraft.macro));
-  const geometry = stages.run('geometry', () => drawGeometry(part));
+  const geometry = stages.run('geometry', () => ({
+    ...drawGeometry(part),
+    sheet: sheet?.formed?.surface ?? null,
+  }));
   stages.finish();
   return { report: { ...sections, advice, checks, timings: stages.timings }, geometry };
 }
@@ -107,7 +110,7 @@ function drawGeometry({
   draft,
   visibility,
   walls,
-}: Part): AnalysisGeometry {
+}: Part): Omit<AnalysisGeometry, 'sheet'> {
   const { mesh } = prepared;
   const { grid, height } = columns;
   const pockets = mapPockets(mesh, facets, holes.surface, flood, grid);

@@ -1,4 +1,5 @@
 import type { EffectiveRecipe, MeshUnit, RecipeInput } from './recipe';
+import type { SheetSurface } from './sheet/sheet-surface';
 
 /** A place in millimetres: x, y in the file's own frame, z above the bed. */
 export type Point = [number, number, number];
@@ -460,6 +461,8 @@ export interface AnalysisGeometry {
   /** Level at which the pit that the facet looks into overflows its outer rim, mm above the bed; NaN without a pit. */
   facetSpillMm: Float32Array;
   heightField: HeightField;
+  /** The formed sheet as a surface; null where none was formed. */
+  sheet: SheetSurface | null;
 }
 
 export interface Analysis {

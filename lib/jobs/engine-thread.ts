@@ -5,12 +5,13 @@ import type { RecipeInput, MeshUnit } from '@/lib/formability/recipe';
 import type { Inspection, Report } from '@/lib/formability/report';
 import { UnusableInput } from '@/lib/formability/unusable-input';
 import { ENGINE_VERSION } from '@/lib/formability/version';
+import { buildSheetModel } from '@/lib/stage-model/build-sheet-model';
 import { buildStageModel } from '@/lib/stage-model/build-stage-model';
 import { renderPicture, THUMBNAIL_SIZE } from '@/lib/stage-model/render-picture';
 
 /** The input cannot be used: the engine's own words, as plain data that crosses threads. */
 export type Refused = { ok: false; code: string; message: string; reasons: string[] };
-export type Derived = { kind: 'model' | 'picture' | 'thumbnail'; bytes: Uint8Array; meta: object };
+export type Derived = { kind: 'model' | 'picture' | 'thumbnail' | 'sheet'; bytes: Uint8Array; meta: object };
 export type InspectTask = { bytes: Uint8Array; unit: MeshUnit };
 export type AnalyseTask = {
   bytes: Uint8Array;
@@ -37,9 +38,14 @@ export async function analyseMesh({ bytes, recipe, derive, progress }: AnalyseTa
     const share = derive ? 0.75 : 1;
     const say = (stage: string, fraction: number) => progress?.postMessage({ stage, fraction });
     const { report, geometry } = await analyseFile(bytes, recipe, {
+      sheet: true,
       onProgress: (stage, fraction) => say(stage, fraction * share),
     });
     const derived: Derived[] = [];
+    if (geometry.sheet) {
+      const { glb, meta } = await buildSheetModel(geometry.sheet, report.recipe.sheet.gaugeMm);
+      derived.push({ kind: 'sheet', bytes: glb, meta });
+    }
     if (derive) {
       say('model', 0.8);
       const { glb, meta } = await buildStageModel(geometry);

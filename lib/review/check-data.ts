@@ -151,15 +151,23 @@ export async function insertMesh(tx: TenantTx, row: typeof meshes.$inferInsert):
   return made.id;
 }
 
+/** What pages show of a mesh, and of the sheet formed over it under one recipe. */
 export async function derivativesOf(
   tx: TenantTx,
   workspaceId: string,
   meshId: string,
+  recipeDigest: string,
 ): Promise<DerivativeRow[]> {
   return tx
     .select()
     .from(derivatives)
-    .where(and(eq(derivatives.workspaceId, workspaceId), eq(derivatives.meshId, meshId)));
+    .where(
+      and(
+        eq(derivatives.workspaceId, workspaceId),
+        eq(derivatives.meshId, meshId),
+        inArray(derivatives.recipeDigest, ['', recipeDigest]),
+      ),
+    );
 }
 
 export async function keepDerivative(tx: TenantTx, row: typeof derivatives.$inferInsert): Promise<boolean> {

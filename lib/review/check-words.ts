@@ -47,7 +47,8 @@ const words: Record<string, CheckWords> = {
   },
   sheet: {
     name: 'Formed sheet',
-    computed: 'The sheet is laid over the template as a membrane and its thickness read everywhere.',
+    computed:
+      'The sheet is lowered over the template as a rubber-like membrane, pressed on and held where it touches; its thickness is read everywhere as the mean over 3 mm. The part is judged above the foot along the bed, where it is usually trimmed. Slip, cooling and the sheet’s bending are left out.',
   },
   air: {
     name: 'Trapped air',
@@ -105,5 +106,28 @@ export const checkName = (checkId: string): string => words[checkId]?.name ?? ch
 /** What the figures of a check are computed from, as a sentence; null for one that this list does not know. */
 export const checkComputed = (checkId: string): string | null => words[checkId]?.computed ?? null;
 
-/** Checks that a posted revision's run leaves out: forming the sheet waits for recipes to be tuned to it. */
-export const LEFT_OUT_CHECKS: readonly string[] = ['sheet'];
+const stages: Record<string, string> = {
+  reading: 'Fetching the file',
+  parse: 'Reading the mesh',
+  mesh: 'Looking over the mesh',
+  columns: 'Looking from above',
+  vents: 'Looking for vents',
+  air: 'Following the air',
+  undercut: 'Looking for undercuts',
+  sort: 'Sorting the facets',
+  pits: 'Looking for pockets',
+  facets: 'Measuring the facets',
+  walls: 'Measuring the walls',
+  draft: 'Measuring the draft',
+  sections: 'Measuring edges and sizes',
+  sheet: 'Forming the sheet',
+  physics: 'Reckoning heat, air and pressure',
+  checks: 'Making the checks',
+  advice: 'Trying changes',
+  geometry: 'Drawing the maps',
+  model: 'Making the model for the page',
+  picture: 'Drawing the picture',
+};
+
+/** What a check run is doing, in words; the stage's own name where it is newer than this list. */
+export const stageName = (stage: string): string => stages[stage] ?? stage;

@@ -8,9 +8,10 @@ import { mediaTypeOf, nameByFormat } from './mesh-format';
 import { requireNotRecalled } from './recalled';
 import { findRevision, loadRevisionParts } from './revision-data';
 
-export type RevisionFile = 'model' | 'picture' | 'thumbnail' | 'mesh';
-const types = { model: 'model/gltf-binary', picture: 'image/png', thumbnail: 'image/png' } as const;
-const endings = { model: 'glb', picture: 'png', thumbnail: 'png' } as const;
+export type RevisionFile = 'model' | 'picture' | 'thumbnail' | 'sheet' | 'mesh';
+const [glb, png] = ['model/gltf-binary', 'image/png'];
+const types = { model: glb, picture: png, thumbnail: png, sheet: glb } as const;
+const endings = { model: 'glb', picture: 'png', thumbnail: 'png', sheet: 'glb' } as const;
 
 /**
  * A short-lived address in the store for one file of a revision. The mesh is the exact bytes that were
@@ -26,13 +27,15 @@ export async function locateFile(
   const id = asId(revisionId, 'revision');
   const found = await withTenant(ctx, async (tx) => {
     const revision = await findRevision(tx, ctx.workspace.id, id);
-    const { template, mesh } = await loadRevisionParts(tx, revision);
+    const { template, mesh, recipe } = await loadRevisionParts(tx, revision);
     if (file === 'mesh') {
       requireNotRecalled(ctx, revision);
       const fileName = nameByFormat(mesh.fileName, mesh.format);
       return { key: mesh.storeKey, fileName, contentType: mediaTypeOf(mesh.format), inline: false };
     }
-    const made = (await derivativesOf(tx, ctx.workspace.id, mesh.id)).find((row) => row.kind === file);
+    const made = (await derivativesOf(tx, ctx.workspace.id, mesh.id, recipe.digest)).find(
+      (row) => row.kind === file,
+    );
     if (!made) throw notFound(file);
     const fileName = `${template.number}-${revision.letter}-${file}.${endings[file]}`;
     return { key: made.storeKey, fileName, contentType: types[file], inline: true };

@@ -49,7 +49,7 @@ export async function loadCheckInput(ctx: JobContext, revisionId: string): Promi
       recipeDigest: recipe.digest,
       engineVersion: ENGINE_VERSION,
     });
-    const made = await derivativesOf(tx, ctx.workspaceId, mesh.id);
+    const made = await derivativesOf(tx, ctx.workspaceId, mesh.id, recipe.digest);
     return {
       revisionId,
       templateId: revision.templateId,
@@ -77,7 +77,13 @@ export async function recordDerivative(
   revisionId: string,
   meshId: string,
   kind: DerivativeKind,
-  file: { storeKey: string; bytes: number; sha256: string; meta: Record<string, unknown> },
+  file: {
+    storeKey: string;
+    bytes: number;
+    sha256: string;
+    meta: Record<string, unknown>;
+    recipeDigest?: string;
+  },
 ): Promise<void> {
   await withTenant(ctx, async (tx) => {
     if (!(await holdsJob(tx, ctx, fence))) return;

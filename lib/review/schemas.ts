@@ -326,6 +326,8 @@ export const RevisionView = z.object({
   model: z
     .object({ url: z.string(), pictureUrl: z.string(), meta: z.record(z.string(), z.unknown()) })
     .nullable(),
+  /** The formed sheet as a surface; null until it was formed, and for revisions checked before it was. */
+  sheet: z.object({ url: z.string(), meta: z.record(z.string(), z.unknown()) }).nullable(),
   gates: z.array(GateView),
   /** Digest of the content as it stands now; equal to the signed one once locked. */
   contentDigest: z.string().nullable(),

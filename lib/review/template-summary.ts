@@ -9,7 +9,7 @@ import { onItsWay } from './standing';
 export const fileUrl = (
   ctx: WorkspaceContext,
   revisionId: string,
-  kind: 'model' | 'picture' | 'thumbnail' | 'mesh',
+  kind: 'model' | 'picture' | 'thumbnail' | 'sheet' | 'mesh',
 ) => `/api/v1/workspaces/${ctx.workspace.slug}/revisions/${revisionId}/${kind}`;
 
 /** The newer revision on its way, where the template stands on an older one. */

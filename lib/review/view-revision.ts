@@ -79,7 +79,7 @@ async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRo
     },
     recipe: recipe.body,
     check,
-    model: await modelOf(tx, ctx, revision),
+    ...(await shownOf(tx, ctx, revision, recipe.digest)),
     gates: gateViews(gates, shared),
     contentDigest: lock?.contentDigest ?? (await composeContent(tx, revision))?.digest ?? null,
     lockedAt: lock?.lockedAt.toISOString() ?? null,
@@ -129,17 +129,23 @@ async function checkOf(tx: TenantTx, revision: RevisionRow): Promise<RevisionVie
   };
 }
 
-async function modelOf(
+async function shownOf(
   tx: TenantTx,
   ctx: WorkspaceContext,
   revision: RevisionRow,
-): Promise<RevisionView['model']> {
-  const made = await derivativesOf(tx, revision.workspaceId, revision.meshId);
-  const model = made.find((row) => row.kind === 'model');
-  if (!model) return null;
+  recipeDigest: string,
+): Promise<Pick<RevisionView, 'model' | 'sheet'>> {
+  const made = await derivativesOf(tx, revision.workspaceId, revision.meshId, recipeDigest);
+  const of = (kind: string) => made.find((row) => row.kind === kind);
+  const [model, sheet] = [of('model'), of('sheet')];
   return {
-    url: fileUrl(ctx, revision.id, 'model'),
-    pictureUrl: fileUrl(ctx, revision.id, 'picture'),
-    meta: model.meta,
+    model: model
+      ? {
+          url: fileUrl(ctx, revision.id, 'model'),
+          pictureUrl: fileUrl(ctx, revision.id, 'picture'),
+          meta: model.meta,
+        }
+      : null,
+    sheet: sheet ? { url: fileUrl(ctx, revision.id, 'sheet'), meta: sheet.meta } : null,
   };
 }

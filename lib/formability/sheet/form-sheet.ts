@@ -142,7 +142,7 @@ function summarise(
   const { order, q05Mm } = figures;
   const thinnest = findThinnest(sheet, stretches, order);
   const reach = Math.max(TIGHT_MM, 2 * sheet.cell);
-  const surface = drawSurface(sheet, stretches);
+  const surface = drawSurface(sheet, stretches, foot);
   const placeOf = (at: Point): PlaceKind =>
     isWebNear(sheet, surface, at, DISC_MM / 2) ? 'web' : judgePlace(template, at, reach);
   const minPlace = placeOf(thinnest.at);

@@ -8,6 +8,10 @@ const DIRECTIONS = 16;
 /** Mean rise around, by the reach, from which a place counts as an inner corner, and as a pit. */
 const CORNER = 0.1;
 const PIT = 0.6;
+/** A wider pit: as far as one looks for its walls, mm, in how many steps, and the rise by distance that makes one. */
+const WIDE_MM = 15;
+const WIDE_STEPS = 6;
+const WALLED = 0.5;
 /** Rise or fall by the reach from which a place without corner counts as wall. */
 const STEEP = 0.5;
 
@@ -36,8 +40,23 @@ export function judgePlace(template: Obstacle, [x, y, z]: Point, reach: number):
     deepest = Math.max(deepest, -rise);
   }
   const mean = sum / DIRECTIONS;
-  if (mean > PIT) return 'pit';
+  if (mean > PIT || isWalledIn(template, [x, y, z], reach)) return 'pit';
   // A steep wall beside and a floor within reach below: a foot, however little it rises on the whole.
   if (mean > CORNER || (highest >= 1 && deepest < 1)) return 'inner-corner';
   return Math.max(highest, deepest) > STEEP ? 'wall' : 'flat';
+}
+
+/** Whether walls stand all round within 15 mm, half as high as they are far off at least: the floor of a deep pocket. */
+function isWalledIn(template: Obstacle, [x, y, z]: Point, reach: number): boolean {
+  const farthest = Math.max(WIDE_MM, reach);
+  for (let k = 0; k < DIRECTIONS; k++) {
+    const angle = (2 * Math.PI * (k + 0.5)) / DIRECTIONS;
+    let walled = false;
+    for (let s = 0; s <= WIDE_STEPS && !walled; s++) {
+      const r = reach + ((farthest - reach) * s) / WIDE_STEPS;
+      walled = heightAt(template, x + r * Math.cos(angle), y + r * Math.sin(angle)) - z > WALLED * r;
+    }
+    if (!walled) return false;
+  }
+  return true;
 }

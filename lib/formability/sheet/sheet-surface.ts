@@ -1,3 +1,4 @@
+import type { Foot } from './find-foot';
 import type { Membrane } from './membrane';
 import type { Stretches } from './measure-elements';
 
@@ -13,14 +14,22 @@ export interface SheetSurface {
   contact: Uint8Array;
   /** Of each triangle: 1 where hoop against meridian stretch says web, 2 where it lies on nothing at a corner. */
   web: Uint8Array;
+  /** Of each triangle: 1 where its middle lies in the foot along the bed. */
+  foot: Uint8Array;
+  /** Of each triangle, mm². */
+  areaMm2: Float32Array;
 }
 
-export function drawSurface(sheet: Membrane, stretches: Stretches): SheetSurface {
-  const { corners, free, elements } = sheet;
+export function drawSurface(sheet: Membrane, stretches: Stretches, band: Foot): SheetSurface {
+  const { at, corners, free, elements } = sheet;
   const web = new Uint8Array(elements);
+  const foot = new Uint8Array(elements);
   for (let e = 0; e < elements; e++) {
     const open = free[corners[3 * e]] | free[corners[3 * e + 1]] | free[corners[3 * e + 2]];
     web[e] = stretches.folded[e] | (open << 1);
+    const middle = (axis: number) =>
+      (at[3 * corners[3 * e] + axis] + at[3 * corners[3 * e + 1] + axis] + at[3 * corners[3 * e + 2] + axis]) / 3; // prettier-ignore
+    foot[e] = band.holds(middle(0), middle(1), middle(2)) ? 1 : 0;
   }
   return {
     nodes: [sheet.nx + 1, sheet.ny + 1],
@@ -29,5 +38,7 @@ export function drawSurface(sheet: Membrane, stretches: Stretches): SheetSurface
     thicknessMm: Float32Array.from(stretches.nodeThickness),
     contact: free.map((one) => 1 - one),
     web,
+    foot,
+    areaMm2: Float32Array.from(stretches.area),
   };
 }

@@ -1,7 +1,8 @@
 import type { SheetSurface } from './sheet-surface';
 
 /**
- * Thickness of the formed sheet over a place in plan, mm; NaN outside the frame.
+ * Thickness of the formed sheet over a place in plan, mm; NaN outside the frame. In the file's own x and y, z above the
+ * bed: a figure of the survey, which lies about the mesh's middle, is moved by `prepared.mesh.centre` first.
  * Without z the uppermost sheet there is meant; with z the sheet nearest to that height, which tells wall from floor.
  */
 export type ThicknessAt = (x: number, y: number, z?: number) => number;
@@ -10,7 +11,22 @@ export type ThicknessAt = (x: number, y: number, z?: number) => number;
 const UPPERMOST = 1e6;
 
 /** Builds the sampler: triangles in square bins of the plan, and linear thickness inside each. */
-export function makeThicknessAt(surface: SheetSurface): ThicknessAt {
+export function makeThicknessAt(surface: SampledSurface): ThicknessAt {
+  const sample = makeSheetSampler(surface);
+  return (x, y, z = Infinity) => sample(x, y, z).thicknessMm;
+}
+
+/** What a sampler needs of a surface. */
+export type SampledSurface = Pick<SheetSurface, 'nodes' | 'positions' | 'indices' | 'thicknessMm'>;
+
+/** The sheet nearest to a place: its thickness there, and how far off it lies, mm. */
+export interface SheetSample {
+  thicknessMm: number;
+  offMm: number;
+}
+
+/** The same with the distance, which tells a place that the sheet bridges from one that it touches. */
+export function makeSheetSampler(surface: SampledSurface): (x: number, y: number, z: number) => SheetSample {
   const { positions: p, indices, thicknessMm } = surface;
   const triangles = indices.length / 3;
   const [nx, ny] = [surface.nodes[0] - 1, surface.nodes[1] - 1];
@@ -36,9 +52,10 @@ export function makeThicknessAt(surface: SheetSurface): ThicknessAt {
   const listed = new Uint32Array(start[nx * ny]);
   eachBin((bin, t) => (listed[next[bin]++] = t));
 
-  return (x, y, z = Infinity) => {
+  return (x, y, z) => {
     const edge = 1e-4 * Math.max(width, depth);
-    if (!(x >= x0 - edge && x <= x0 + width + edge && y >= y0 - edge && y <= y0 + depth + edge)) return NaN;
+    if (!(x >= x0 - edge && x <= x0 + width + edge && y >= y0 - edge && y <= y0 + depth + edge))
+      return { thicknessMm: NaN, offMm: NaN };
     let best = NaN;
     let least = Infinity;
     const look = (bin: number) => {
@@ -61,7 +78,7 @@ export function makeThicknessAt(surface: SheetSurface): ThicknessAt {
     for (let b = Math.max(0, j - around); b <= Math.min(ny - 1, j + around); b++) {
       for (let a = Math.max(0, i - around); a <= Math.min(nx - 1, i + around); a++) look(b * nx + a);
     }
-    return best;
+    return { thicknessMm: best, offMm: z === Infinity ? 0 : Math.sqrt(least) };
   };
 }
 

@@ -140,6 +140,7 @@ export const reviewOperations: Operation[] = [
   file('model', 'The compact model of the stage'),
   file('picture', 'A picture of the model'),
   file('thumbnail', 'A small picture'),
+  file('sheet', 'The formed sheet as a surface with its thickness'),
   file('mesh', 'The mesh’s exact bytes'),
   file('pack', 'The release pack'),
   post(`${revision}/check`, 'Order a check again that was given up', {

@@ -22,6 +22,7 @@ const contentTypes: Record<Derived['kind'], string> = {
   model: 'model/gltf-binary',
   picture: 'image/png',
   thumbnail: 'image/png',
+  sheet: 'model/gltf-binary',
 };
 
 /** The check run of a revision: exactly the posted bytes, under exactly the frozen recipe. */
@@ -33,14 +34,14 @@ export const checkRevisionHandler: JobHandler = {
     const input = await loadCheckInput(ctx, job.subjectId);
     if (input.state === 'finished') return;
     await startCheck(ctx, fence, job.subjectId);
-    const derive = (['model', 'picture', 'thumbnail'] as const).some(
-      (kind) => !input.derivativesDone.includes(kind),
-    );
+    const missing = (kind: Derived['kind']) => !input.derivativesDone.includes(kind);
+    const derive = (['model', 'picture', 'thumbnail'] as const).some(missing);
+    const known = input.knownReport as unknown as Report | null;
+    // A sheet that could not be formed has no surface to keep.
+    const sheetKept = !known?.sheet || !missing('sheet');
     // The same bytes under the same recipe by the same engine were answered before: that answer stands.
-    if (input.knownReport && !derive) {
-      const report = input.knownReport as unknown as Report;
-      return finishCheck(ctx, fence, job.subjectId, { report, engineVersion: ENGINE_VERSION });
-    }
+    if (known && !derive && sheetKept)
+      return finishCheck(ctx, fence, job.subjectId, { report: known, engineVersion: ENGINE_VERSION });
     const bytes = await readPosted(work, input);
     const answer = await work.engine.analyse(
       { bytes, recipe: input.recipe as RecipeInput, derive },
@@ -82,5 +83,7 @@ async function keepDerived({ ctx, fence, signal }: JobAtWork, input: CheckInput,
     bytes: one.bytes.byteLength,
     sha256: sha256Of(one.bytes),
     meta: one.meta as Record<string, unknown>,
+    // The sheet is formed under one recipe; the other kinds show the mesh alone.
+    recipeDigest: one.kind === 'sheet' ? input.recipeDigest : '',
   });
 }

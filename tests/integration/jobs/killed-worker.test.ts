@@ -69,7 +69,7 @@ const exactlyOneAnswer = async () => {
     'select d.kind from derivatives d join revisions r on r.mesh_id = d.mesh_id where r.id = $1 order by 1',
     [posted.revisionId],
   );
-  expect(kinds.map(({ kind }) => kind)).toEqual(['model', 'picture', 'thumbnail']);
+  expect(kinds.map(({ kind }) => kind)).toEqual(['model', 'picture', 'sheet', 'thumbnail']);
   const view = await viewRevision(await house.enter('designer'), posted.revisionId);
   expect(view.check).toMatchObject({ state: 'finished', error: null });
   expect(view.gates[1].state).toBe('open');

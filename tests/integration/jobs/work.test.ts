@@ -126,7 +126,7 @@ describe('a 3MF and a STEP file', { timeout: 240_000 }, () => {
     expect(rows[0].body.input).toMatchObject({ format, unit, bodies: 1, bytes: bytes.length });
     expect(rows[0].recipe.mesh.unit).toBe(unit);
     expect(rows[0].body.mesh.volumeMm3).toBeCloseTo(44_582.1, 0);
-    expect(rows[0].kinds).toEqual(['model', 'picture', 'thumbnail']);
+    expect(rows[0].kinds).toEqual(['model', 'picture', 'sheet', 'thumbnail']);
     const answer = await fetch(await locateFile(await house.enter('lead'), revisionId, 'mesh'));
     expect(answer.headers.get('content-type')).toBe(given.type);
     expect(answer.headers.get('content-disposition')).toContain(`"${given.out}"`);

@@ -11,6 +11,7 @@ import { GET as model } from '@/app/api/v1/workspaces/[workspace]/revisions/[rev
 import { GET as picture } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/picture/route';
 import { GET as report } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/report/route';
 import { GET as revision } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/route';
+import { GET as sheet } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/sheet/route';
 import { POST as threadsRoute } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/threads/route';
 import { GET as thumbnail } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/thumbnail/route';
 import { POST as withdraw } from '@/app/api/v1/workspaces/[workspace]/revisions/[revision]/withdraw/route';
@@ -94,6 +95,7 @@ const table: Route[] = [
   { name: 'GET model', handler: model, call: {} },
   { name: 'GET picture', handler: picture, call: {} },
   { name: 'GET thumbnail', handler: thumbnail, call: {} },
+  { name: 'GET sheet', handler: sheet, call: {} },
   { name: 'POST threads', handler: threadsRoute, call: json('POST', note('x')) },
   { name: 'POST notes', handler: notes, call: json('POST', note('x')) },
   { name: 'PATCH thread', handler: settle, call: json('PATCH', { settled: true, version: 99 }) },

@@ -97,9 +97,11 @@ async function furnish(place: House): Promise<Names> {
   const draft = await openDraft(designer, templateId);
   // What the worker would have drawn; the bytes are not asked for here.
   await database.query(
-    `insert into derivatives (id, workspace_id, mesh_id, kind, store_key, bytes, sha256, meta)
-     select gen_random_uuid(), r.workspace_id, r.mesh_id, kind, 'derivatives/' || gen_random_uuid(), 1, '', '{}'
-     from revisions r, unnest(array['model', 'picture', 'thumbnail']) kind where r.id = $1`,
+    `insert into derivatives (id, workspace_id, mesh_id, kind, recipe_digest, store_key, bytes, sha256, meta)
+     select gen_random_uuid(), r.workspace_id, r.mesh_id, kind, case kind when 'sheet' then p.digest else '' end,
+            'derivatives/' || gen_random_uuid(), 1, '', '{}'
+     from revisions r join recipes p on p.workspace_id = r.workspace_id and p.id = r.recipe_id,
+          unnest(array['model', 'picture', 'thumbnail', 'sheet']) kind where r.id = $1`,
     [revisionId],
   );
   const docket = await viewDocket(designer, revisionId);

@@ -214,6 +214,7 @@ export const routes: Record<string, Route> = {
   'workspaces/[workspace]/revisions/[revision]/model': read(revision),
   'workspaces/[workspace]/revisions/[revision]/picture': read(revision),
   'workspaces/[workspace]/revisions/[revision]/thumbnail': read(revision),
+  'workspaces/[workspace]/revisions/[revision]/sheet': read(revision),
   'workspaces/[workspace]/revisions/[revision]/mesh': read(revision, [...signers, 'producer']),
   'workspaces/[workspace]/revisions/[revision]/threads': w({
     POST: { may: everyone, names: revision, body: note() },

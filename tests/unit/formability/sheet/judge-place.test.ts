@@ -8,6 +8,8 @@ const REACH = 3;
 describe('what sort of place a point of the sheet is', () => {
   const wall = makeObstacle(field([60, 60], block(60, 60, 30, 5)));
   const pit = makeObstacle(field([60, 60], (x, y) => (Math.hypot(x, y) < 2 ? 4 : 30)));
+  const pocket = makeObstacle(field([60, 60], (x, y) => (Math.hypot(x, y) < 9 ? 18 : 30)));
+  const dish = makeObstacle(field([60, 60], (x, y) => (Math.hypot(x, y) < 13 ? 27 : 30)));
   const slope = makeObstacle(field([60, 60], (x) => Math.max(0, 30 - Math.abs(x))));
   const wallX = (z: number) => 30 - z * Math.tan((5 * Math.PI) / 180);
 
@@ -23,6 +25,8 @@ describe('what sort of place a point of the sheet is', () => {
     ['inner-corner', wall, [30.6, 30.6, 1]],
     ['pit', pit, [0, 0, 4]],
     ['pit', pit, [0.8, 0.3, 5]],
+    ['pit', pocket, [0, 0, 18]],
+    ['flat', dish, [0, 0, 27]],
   ] as const)('%s', (kind, template, at) => {
     expect(judgePlace(template, [...at], REACH)).toBe(kind);
   });

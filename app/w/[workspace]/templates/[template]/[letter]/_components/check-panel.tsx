@@ -4,6 +4,7 @@ import { Button } from '@/app/_components/button';
 import { ErrorState } from '@/app/_components/error-state';
 import { ProgressBar } from '@/app/_components/progress-bar';
 import { asSentence, sentenceCase } from '@/app/_components/sentence-case';
+import { stageName } from '@/lib/review/check-words';
 import type { RevisionView } from '@/lib/review/schemas';
 import { useOrderAgain } from '../_hooks/use-room-commands';
 import { useCheckProgress } from '../_hooks/use-room-data';
@@ -19,7 +20,7 @@ export function CheckPanel({ revision }: { revision: RevisionView }) {
   return (
     <section aria-label="Check run" className="border border-rule bg-sheet px-4 py-3 print:hidden">
       <ProgressBar
-        label={queued ? 'Waits for the checker' : sentenceCase(progress.stage ?? 'Being checked')}
+        label={queued ? 'Waits for the checker' : sentenceCase(stageName(progress.stage ?? 'Being checked'))}
         value={queued ? null : progress.progress}
         detail={queued ? 'in the queue' : undefined}
       />
