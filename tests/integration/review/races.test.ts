@@ -26,6 +26,7 @@ import {
   shown,
   sign,
 } from '@/tests/support/factory';
+import { rounds } from '@/tests/support/rounds';
 
 let database: FreshDatabase;
 let house: House;
@@ -108,10 +109,10 @@ async function beforeClient(quorum: number): Promise<{ revisionId: string; gateI
   return { revisionId, gateId: (await gateOf(approvers[0], revisionId, 'client')).id };
 }
 
-const rounds = [1, 2, 3];
+const everyRound = Array.from({ length: rounds(3, 500) }, (_, round) => round + 1);
 
 describe('two signatures at once', () => {
-  it.each(rounds)('with a quorum of one: one lock, one signature (round %i)', async () => {
+  it.each(everyRound)('with a quorum of one: one lock, one signature (round %i)', async () => {
     const { revisionId, gateId } = await beforeClient(1);
     const seen = await shown(approvers[0], revisionId);
     const { done, codes } = await together(...approvers.map((ctx) => signGate(ctx, gateId, seen)));
@@ -122,7 +123,7 @@ describe('two signatures at once', () => {
     await requireWholeChain();
   });
 
-  it.each(rounds)('with a quorum of two: both count, one lock (round %i)', async () => {
+  it.each(everyRound)('with a quorum of two: both count, one lock (round %i)', async () => {
     const { revisionId, gateId } = await beforeClient(2);
     const seen = await shown(approvers[0], revisionId);
     const { done } = await together(...approvers.map((ctx) => signGate(ctx, gateId, seen)));
@@ -147,7 +148,7 @@ describe('two signatures at once', () => {
 });
 
 describe('signing against', () => {
-  it.each(rounds)('a return: one of them decides (round %i)', async () => {
+  it.each(everyRound)('a return: one of them decides (round %i)', async () => {
     const { revisionId, gateId } = await beforeClient(1);
     const seen = await shown(approvers[0], revisionId);
     const { done, codes } = await together(
@@ -163,7 +164,7 @@ describe('signing against', () => {
     await requireWholeChain();
   });
 
-  it.each(rounds)(
+  it.each(everyRound)(
     'the next post: locked and then followed, or replaced and not locked (round %i)',
     async () => {
       const { revisionId, gateId } = await beforeClient(1);
@@ -193,7 +194,7 @@ describe('signing against', () => {
     },
   );
 
-  it.each(rounds)('a note: it is in what was agreed, or outside and marked so (round %i)', async () => {
+  it.each(everyRound)('a note: it is in what was agreed, or outside and marked so (round %i)', async () => {
     const { revisionId, gateId } = await beforeClient(1);
     const seen = await shown(approvers[0], revisionId);
     const lead = await house.enter('lead');
@@ -211,22 +212,25 @@ describe('signing against', () => {
     }
   });
 
-  it.each(rounds)('the removal of the signer: signed while a member, or not at all (round %i)', async () => {
-    const { revisionId, gateId } = await beforeClient(1);
-    const lead = await house.enter('lead');
-    const joined = await joinWorkspace(database, lead, 'approver');
-    const leaving = await enterWorkspace(joined.person, house.workspace.id);
-    const seen = await shown(approvers[0], revisionId);
-    const { codes } = await together(signGate(leaving, gateId, seen), removeMember(lead, joined.person.id));
-    expect(['', 'forbidden', 'not_found']).toContain(codes.join());
-    const { rows } = await database.query<{ n: number }>(
-      'select count(*)::int as n from signatures where signer_id = $1',
-      [joined.person.id],
-    );
-    expect(rows[0].n).toBe(codes.length ? 0 : 1);
-    expect(await countOf('locks', revisionId)).toBe(rows[0].n);
-    await requireWholeChain();
-  });
+  it.each(everyRound)(
+    'the removal of the signer: signed while a member, or not at all (round %i)',
+    async () => {
+      const { revisionId, gateId } = await beforeClient(1);
+      const lead = await house.enter('lead');
+      const joined = await joinWorkspace(database, lead, 'approver');
+      const leaving = await enterWorkspace(joined.person, house.workspace.id);
+      const seen = await shown(approvers[0], revisionId);
+      const { codes } = await together(signGate(leaving, gateId, seen), removeMember(lead, joined.person.id));
+      expect(['', 'forbidden', 'not_found']).toContain(codes.join());
+      const { rows } = await database.query<{ n: number }>(
+        'select count(*)::int as n from signatures where signer_id = $1',
+        [joined.person.id],
+      );
+      expect(rows[0].n).toBe(codes.length ? 0 : 1);
+      expect(await countOf('locks', revisionId)).toBe(rows[0].n);
+      await requireWholeChain();
+    },
+  );
 
   it('withdrawing, before the studio has signed', async () => {
     const { revisionId } = await postChecked(house);
