@@ -34,8 +34,8 @@ export function isPrintable(nominal: number, model: HoleModel): boolean {
 }
 
 /**
- * Vents: bores found on the mesh from the bed up, and narrow columns without any solid that those do not explain
- * (holes through the skin of a hollow template), measured again on a fine window.
+ * Vents: bores found on the mesh, from the bed or a ceiling over it up, and narrow columns without any solid that those
+ * do not explain (damaged meshes, slots), measured again on a fine window.
  */
 export function findVents(
   mesh: Mesh,
@@ -45,7 +45,7 @@ export function findVents(
   ofShell: Uint32Array,
   model: HoleModel,
 ): Vents {
-  const bores = findBores(mesh, facets, edges);
+  const bores = findBores(mesh, facets, edges, columns);
   const surface = columns.height.slice();
   const bore = new Uint8Array(mesh.triangles);
   for (const found of bores) {
