@@ -13,7 +13,7 @@ const sentences: Record<string, string> = {
     'Your address is not confirmed yet. Open the link in the mail that was just sent to it.',
   INVALID_TOKEN: 'This link has been used or has run out. Ask for a new one.',
   TOKEN_EXPIRED: 'This link has run out. Ask for a new one.',
-  PASSWORD_TOO_SHORT: 'The password is too short. Use 12 characters or more.',
+  PASSWORD_TOO_SHORT: 'The password is too short. Use 15 characters or more.',
   PASSWORD_TOO_LONG: 'The password is too long. Use 128 characters or fewer.',
   INVALID_CODE: 'This is not the code that your authenticator shows now. Is its clock right?',
   CODE_USED: 'This code was used already. Wait for the next one.',
@@ -27,11 +27,14 @@ const sentences: Record<string, string> = {
   SESSION_EXPIRED: 'Your session has ended. Sign in again.',
 };
 
+/** Refusals of ours, whose message says what to do. */
+const ownWords = ['TOO_MANY_ATTEMPTS', 'WEAK_PASSWORD'];
+
 /** One sentence for a refusal of the sign-in service: what happened and what to do. */
 export function explainAuth(refusal: AuthRefusal): string {
   const known = refusal.code ? sentences[refusal.code] : undefined;
   if (known) return known;
-  if (refusal.code === 'TOO_MANY_ATTEMPTS' && refusal.message) return refusal.message;
+  if (refusal.message && ownWords.includes(refusal.code ?? '')) return refusal.message;
   if (refusal.status === 429) return 'Too many tries in a short time. Wait a minute, then try again.';
   if (refusal.status === 401) return 'Your session has ended. Sign in again.';
   if (refusal.status !== undefined && refusal.status >= 500)

@@ -1,10 +1,15 @@
 import { passwordLimits } from './password-field';
 
-/** NIST SP 800-63B-4: length counts, composition does not. */
+const { min, max } = passwordLimits;
+
+/** NIST SP 800-63B-4: length counts, in characters of any script; composition does not. The server also knows lists. */
 export const newPasswordRules = {
   required: 'Write a password.',
-  minLength: { value: passwordLimits.min, message: `Use ${passwordLimits.min} characters or more.` },
-  maxLength: { value: passwordLimits.max, message: `Use ${passwordLimits.max} characters or fewer.` },
+  validate: (password: string) => {
+    const length = [...password.normalize('NFC')].length;
+    if (length < min) return `Use ${min} characters or more.`;
+    return length <= max || `Use ${max} characters or fewer.`;
+  },
 };
 
-export const newPasswordHelp = `${passwordLimits.min} characters or more. A few unrelated words are good; nothing else is asked of it.`;
+export const newPasswordHelp = `${min} characters or more. A few unrelated words are good; nothing else is asked of it, only common passwords and your own name are refused.`;

@@ -5,7 +5,7 @@ import { useState, type Ref } from 'react';
 import { Button, Input, TextField } from 'react-aria-components';
 import { fieldClass, FieldLabel, FieldNotes, inputClass, type FieldBaseProps } from './field';
 
-export const passwordLimits = { min: 12, max: 128 } as const;
+export const passwordLimits = { min: 15, max: 128 } as const;
 
 export interface PasswordFieldProps extends FieldBaseProps {
   name?: string;

@@ -4,6 +4,7 @@ import { appendEntry } from '@/lib/audit/append-entry';
 import { claimAddress } from '@/lib/auth/claim-address';
 import { personContext, type Person } from '@/lib/auth/context';
 import { enterStudio, enterWorkspace } from '@/lib/auth/enter';
+import { weakness } from '@/lib/auth/weak-password';
 import { openStudio } from '@/lib/studio/open-studio';
 import { insertStaff, insertStudioEntry } from '@/lib/studio/studio-data';
 import { createWorkspace } from '@/lib/workspaces/create-workspace';
@@ -38,7 +39,9 @@ export async function makePeople(): Promise<{ people: Cast; signIns: DemoSignIn[
   const people = {} as Cast;
   const signIns: DemoSignIn[] = [];
   for (const [key, { name, email, at }] of Object.entries(cast) as [CastName, (typeof cast)[CastName]][]) {
-    const password = newPassword();
+    let password = newPassword();
+    // Sixteen words are few: the same one may come three times.
+    while (await weakness(password, { name, email })) password = newPassword();
     people[key] = { ...(await claimAddress({ name, email, password })), password };
     signIns.push({ name, email, password, role: at });
   }

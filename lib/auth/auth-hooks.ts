@@ -5,6 +5,7 @@ import { confirmBudget, confirmKey, forgetTries, spendTry } from './attempts-dat
 import { afterSecondFactor, beforeSecondFactor } from './second-factor-hooks';
 import { knowDevice, settleSignInTry, spendSignInTry } from './sign-in-tries';
 import { waitWords } from './wait-words';
+import { refuseWeak } from './weak-password';
 
 /** Nothing else is taken: a field too many is refused before the service looks whether the address is known. */
 const SignUp = z.strictObject({
@@ -40,6 +41,7 @@ export const before = createAuthMiddleware(async (ctx) => {
     const given = SignUp.safeParse(ctx.body);
     if (!given.success)
       throw new APIError('BAD_REQUEST', { code: 'INVALID_INPUT', message: given.error.issues[0].message });
+    await refuseWeak(given.data.password, given.data);
     return { context: { body: given.data } };
   }
   if (ctx.path === '/sign-in/email') {
@@ -57,11 +59,15 @@ export const before = createAuthMiddleware(async (ctx) => {
     const identifier = token.success ? `reset-password:${token.data.token}` : '';
     const found = identifier ? await ctx.context.internalAdapter.findVerificationValue(identifier) : null;
     const user = found ? await ctx.context.internalAdapter.findUserById(found.value) : null;
-    if (user) proven.set(ctx.context, user.email);
+    if (user) {
+      await refuseWeak(ctx.body?.newPassword, user);
+      proven.set(ctx.context, user.email);
+    }
   }
   if (askingPassword.includes(ctx.path)) {
     const session = await getSessionFromCtx(ctx);
     if (!session) return;
+    if (ctx.path === '/change-password') await refuseWeak(ctx.body?.newPassword, session.user);
     const wait = await spendTry(confirmKey(session.user.id), confirmBudget);
     if (wait > 0) throw tooMany(`Too many wrong passwords. Wait ${waitWords(wait)} and try again.`, wait);
     asked.set(ctx.context, session.user.id);

@@ -80,7 +80,8 @@ function build() {
     emailAndPassword: {
       enabled: true,
       minPasswordLength: passwordMin,
-      maxPasswordLength: passwordMax,
+      // In UTF-16 units, where ours counts characters: a character takes two at most, and two may be joined to one.
+      maxPasswordLength: passwordMax * 4,
       requireEmailVerification: true,
       revokeSessionsOnPasswordReset: true,
       sendResetPassword: async ({ user, url }) =>

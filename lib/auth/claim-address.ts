@@ -3,8 +3,9 @@ import { eq, sql } from 'drizzle-orm';
 import { uuidv7 } from 'uuidv7';
 import { authDatabase } from '@/db/client';
 import { accounts, sessions, users } from '@/db/schema/identity';
-import { conflict } from '@/lib/errors/app-error';
+import { conflict, invalid } from '@/lib/errors/app-error';
 import type { Person } from './context';
+import { weakness } from './weak-password';
 
 const withEmail = (email: string) => eq(sql`lower(${users.email})`, email.toLowerCase());
 
@@ -19,13 +20,15 @@ export async function findAccount(email: string): Promise<{ id: string; emailVer
 /**
  * Makes an account for an address that a mailed link has just proven. A sign-up that never proved the
  * address is taken over with a new password and no sessions: whoever typed it may be somebody else.
- * @throws conflict `has-account` where a proven account stands there already
+ * @throws invalid where the password is weak; conflict `has-account` where a proven account stands there already
  */
 export async function claimAddress(input: {
   email: string;
   name: string;
   password: string;
 }): Promise<Person> {
+  const sentence = await weakness(input.password, input);
+  if (sentence) throw invalid(sentence, [{ pointer: '/password', detail: sentence }]);
   const password = await hashPassword(input.password);
   return authDatabase().transaction(async (tx) => {
     const fields = { name: input.name, emailVerified: true, updatedAt: new Date() };

@@ -82,7 +82,9 @@ describe('signing up', () => {
   });
 
   it.each([
-    ['a password of eleven characters', { password: 'x'.repeat(11) }],
+    ['a password of fourteen characters', { password: 'grey gulls, 14' }],
+    ['a common password', { password: 'password12345678' }],
+    ['a password made of name, address and service', { password: 'Una-refused-Firstpull-7' }],
     ['a password of 129 characters', { password: 'x'.repeat(129) }],
     ['an empty name', { name: ' ' }],
     ['a name of two lines', { name: 'a\nb' }],
@@ -111,6 +113,15 @@ describe('signing up', () => {
 });
 
 describe('signing in', () => {
+  it('takes a password however its letters were composed', async () => {
+    const email = 'composed@example.test';
+    const password = 'café crème à la façade';
+    await post('/sign-up/email', { email, name: 'Composed', password: password.normalize('NFD') });
+    await get(pathOf((await mailsTo(email))[0].url));
+    expect((await post('/sign-in/email', { email, password: password.normalize('NFC') })).status).toBe(200);
+    expect((await post('/sign-in/email', { email, password: 'cafe creme a la facade' })).status).toBe(401);
+  });
+
   it('answers alike for a wrong password and an unknown address', async () => {
     const { person } = await makePerson(database, 'Wrong');
     const wrong = await post('/sign-in/email', { email: person.email, password: 'not the password at all' });
@@ -167,6 +178,9 @@ describe('a new password', () => {
     const back = await get(pathOf(mail.url));
     const token = new URL(back.headers.get('location')!, process.env.APP_URL).searchParams.get('token');
     const newPassword = 'twelve grey gulls over a pier';
+    const weak = await post('/reset-password', { newPassword: 'letmeinletmeinplease', token });
+    expect([weak.status, ((await weak.json()) as { code: string }).code]).toEqual([400, 'WEAK_PASSWORD']);
+    // A refusal does not use the link up.
     expect((await post('/reset-password', { newPassword, token })).status).toBe(200);
     expect((await post('/reset-password', { newPassword, token })).status).toBe(400);
     expect((await me(cookie)).status).toBe(401);
@@ -194,6 +208,10 @@ describe('a new password', () => {
     const body = { newPassword: 'thirteen grey gulls on a pier', revokeOtherSessions: true };
     const wrong = await post('/change-password', { ...body, currentPassword: 'not my password' }, cookie);
     expect(wrong.status).toBe(400);
+    for (const newPassword of ['grey gulls, 14', 'qwertyuiopasdfgh', `${person.name} ${person.email}`]) {
+      const weak = await post('/change-password', { newPassword, currentPassword: testPassword }, cookie);
+      expect([weak.status, ((await weak.json()) as { code: string }).code]).toEqual([400, 'WEAK_PASSWORD']);
+    }
     const right = await post('/change-password', { ...body, currentPassword: testPassword }, cookie);
     expect(right.status).toBe(200);
     expect((await me(other)).status).toBe(401);

@@ -209,8 +209,12 @@ describe('accepting an invitation', () => {
     expect(((await answer.json()) as { errors: { pointer: string }[] }).errors.map((e) => e.pointer)).toEqual(
       ['/name', '/password'],
     );
-    const short = await accept(token, { name: 'Nora', password: 'short' });
-    expect(short.status).toBe(422);
+    for (const password of ['short', 'passwordpassword', `Nora-${email}`]) {
+      const weak = await accept(token, { name: 'Nora', password });
+      expect(weak.status).toBe(422);
+      const { errors } = (await weak.json()) as { errors: { pointer: string }[] };
+      expect(errors.map((error) => error.pointer)).toEqual(['/password']);
+    }
     expect(await memberships(email)).toEqual([]);
   });
 

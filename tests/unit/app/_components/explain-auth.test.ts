@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { askAuth, explainAuth } from '@/app/_components/explain-auth';
 import { newPasswordRules } from '@/app/_components/new-password-rules';
 import { passwordLimits } from '@/app/_components/password-field';
-import { passwordMax, passwordMin } from '@/lib/auth/password-rules';
+import { NewPassword, passwordMax, passwordMin } from '@/lib/auth/password-rules';
 
 describe('explainAuth', () => {
   it('does not tell a wrong address from a wrong password', () => {
@@ -53,7 +53,22 @@ describe('askAuth', () => {
 describe('rules of a new password', () => {
   it('are those of the server', () => {
     expect(passwordLimits).toEqual({ min: passwordMin, max: passwordMax });
-    expect(newPasswordRules.minLength.value).toBe(passwordMin);
-    expect(newPasswordRules.maxLength.value).toBe(passwordMax);
+  });
+
+  it.each([
+    ['', 0, false],
+    ['x', passwordMin - 1, false],
+    ['x', passwordMin, true],
+    ['日', passwordMin - 1, false],
+    ['🦆', passwordMin, true],
+    // Two code points that NFC joins are one character.
+    ['e\u0301', passwordMin - 1, false],
+    ['e\u0301', passwordMin, true],
+    ['🦆', passwordMax, true],
+    ['🦆', passwordMax + 1, false],
+  ])('count characters of any script alike in the browser and on the server: %j × %i', (one, times, fits) => {
+    const password = one.repeat(times);
+    expect(newPasswordRules.validate(password) === true).toBe(fits);
+    expect(NewPassword.safeParse(password).success).toBe(fits);
   });
 });
