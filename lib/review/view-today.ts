@@ -1,7 +1,8 @@
 import { withTenant } from '@/db/tenant';
 import type { PersonContext } from '@/lib/auth/context';
 import { tell, templateOf } from './activity-words';
-import type { Standing, TodayItem, TodayView } from './schemas';
+import type { Standing } from './schemas';
+import type { TodayItem, TodayView } from './today-schemas';
 import {
   findingsToMend,
   gatesToSign,

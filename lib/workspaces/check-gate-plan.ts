@@ -156,3 +156,30 @@ export function peopleProblems(
     });
   return problems;
 }
+
+/** What a lead should know of a plan that may stand: where it could wait in vain, and what it does not wait for. */
+export function planHints(
+  gates: readonly GateInput[],
+  people: readonly PlanPerson[],
+  invited: Invited,
+): PlanProblem[] {
+  const hints: PlanProblem[] = [];
+  gates.forEach((gate, at) => {
+    if (gate.kind !== 'people' || (!gate.roles.length && !gate.people.length)) return;
+    const { most, fewest } = signersOf(gate, people, invited);
+    const needed = gate.quorum === 'all' ? 1 : gate.quorum;
+    if (most >= needed && fewest < needed)
+      hints.push({
+        at,
+        field: 'quorum',
+        detail: `When one of those whom it asks posts the revision, too few are left to sign ${gate.name}.`,
+      });
+  });
+  if (!gates.some((gate) => gate.kind === 'automatic' && gate.conditions.includes('checks-pass')))
+    hints.push({
+      at: null,
+      field: 'gates',
+      detail: 'No gate waits for the checks: a revision with failing findings could be signed.',
+    });
+  return hints;
+}

@@ -10,7 +10,7 @@ import { enterDesk } from '@/app/_frames/enter-page';
 import { DeskFrame } from '@/app/_frames/desk-frame';
 import { spacesOf } from '@/app/_frames/spaces';
 import { personContext } from '@/lib/auth/context';
-import type { TodayItem, TodayView } from '@/lib/review/schemas';
+import type { TodayItem, TodayView } from '@/lib/review/today-schemas';
 import { viewToday } from '@/lib/review/view-today';
 import { NothingWaits } from './_components/nothing-waits';
 import { Places } from './_components/places';

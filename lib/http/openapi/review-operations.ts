@@ -28,11 +28,11 @@ import {
   TemplatePage,
   TemplateSummary,
   ThreadView,
-  TodayView,
   UploadUnitInput,
   UploadView,
   WaiveInput,
 } from '@/lib/review/schemas';
+import { TodayView } from '@/lib/review/today-schemas';
 import type { Operation } from './operation';
 
 const workspace = '/workspaces/{workspace}';

@@ -1,5 +1,11 @@
 import { describe, expect, it } from 'vitest';
-import { peopleProblems, signersOf, signingRoles, type PlanPerson } from '@/lib/workspaces/check-gate-plan';
+import {
+  peopleProblems,
+  planHints,
+  signersOf,
+  signingRoles,
+  type PlanPerson,
+} from '@/lib/workspaces/check-gate-plan';
 import { defaultGatePlan } from '@/lib/workspaces/default-gate-plan';
 import { ChangeGatePlanInput, type GateInput } from '@/lib/workspaces/gate-plan-schemas';
 import { fullRule, ruleView, rulesOf } from '@/lib/workspaces/gate-rules';
@@ -157,6 +163,21 @@ describe('a plan in its workspace', () => {
       expect.stringContaining('an author could agree alone'),
     ]);
     expect(inPlace([alone, client])).toEqual([]);
+  });
+});
+
+describe('hints', () => {
+  const hints = (...gates: GateInput[]) =>
+    planHints(gates, people, {}).map(({ at, detail }) => `${at}: ${detail}`);
+
+  it('tell of a gate that an author could leave without signers, and of checks that nothing waits for', () => {
+    expect(hints(checks, signed(), client)).toEqual([]);
+    expect(hints(checks, signed({ roles: ['lead'] }), client)).toEqual([
+      expect.stringMatching(/^1: When one of those/),
+    ]);
+    expect(hints({ ...checks, conditions: ['docket-settled'] }, client)).toEqual([
+      expect.stringMatching(/^null: No gate waits for the checks/),
+    ]);
   });
 });
 
