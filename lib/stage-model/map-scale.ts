@@ -11,6 +11,8 @@ export interface StageLimits {
   stepMm: number | null;
   /** least wall */
   wallMm: number | null;
+  /** least thickness wanted of the formed sheet */
+  sheetMm: number | null;
 }
 
 /** How a figure becomes a place on the colour scale. The dark end is always the one to look at. */
@@ -40,6 +42,12 @@ export function layerMapScale(layerMm: number, { stepMm }: StageLimits): MapScal
 /** Three limits long, 6 mm at least: what is thicker is thick enough to look alike. */
 export function wallMapScale({ wallMm }: StageLimits): MapScale {
   return { max: Math.max(6, Math.ceil((wallMm ?? 0) * 3)), limit: wallMm, dark: 'low', isoStep: 1 };
+}
+
+/** As thick as the sheet was before forming, or as the limit, so that both can be seen. */
+export function sheetMapScale(gaugeMm: number, { sheetMm }: Pick<StageLimits, 'sheetMm'>): MapScale {
+  const max = Math.max(gaugeMm, (sheetMm ?? 0) * 1.25);
+  return { max, limit: sheetMm || null, dark: 'low', isoStep: roundUp(max) / 10 };
 }
 
 /** As deep as the deepest pocket, rounded up to a plain figure. */

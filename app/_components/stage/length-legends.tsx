@@ -1,12 +1,28 @@
 'use client';
 
-import { layerMapScale, trapMapScale, wallMapScale, type StageLimits } from '@/lib/stage-model/map-scale';
+import {
+  layerMapScale,
+  sheetMapScale,
+  trapMapScale,
+  wallMapScale,
+  type StageLimits,
+} from '@/lib/stage-model/map-scale';
+import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { StageMaps } from '@/lib/stage-model/stage-model-meta';
 import { convertLength, formatLength, formatNumber } from '../format-figure';
 import type { Units } from '../preferences';
 import { usePreferences } from '../preferences-context';
 import { LegendWords } from './legend-words';
-import { layerWords, STEP_DIGITS, trapWords, wallWords, WALL_DIGITS, type MapWords } from './map-words';
+import {
+  layerWords,
+  SHEET_DIGITS,
+  sheetWords,
+  STEP_DIGITS,
+  trapWords,
+  wallWords,
+  WALL_DIGITS,
+  type MapWords,
+} from './map-words';
 import { ScaleLegend } from './scale-legend';
 
 /** The step that layers leave on each slope, for the recipe's layer. */
@@ -58,6 +74,27 @@ export function WallLegend(props: {
       reading={reading}
       format={ticksIn(units, 1)}
       description={describe('wall thickness', scale, units, WALL_DIGITS, words)}
+    >
+      <LegendWords {...words} />
+    </ScaleLegend>
+  );
+}
+
+/** Thickness of the sheet once it is formed over the template. */
+export function SheetLegend(props: { sheet: SheetModelMeta; limits: StageLimits; reading: number | null }) {
+  const { sheet, limits, reading } = props;
+  const { units } = usePreferences();
+  const scale = sheetMapScale(sheet.gaugeMm, limits);
+  const words = sheetWords(sheet, limits, units);
+  return (
+    <ScaleLegend
+      title="Formed sheet"
+      caption={`thickness in ${units}, by area`}
+      scale={scale}
+      histogram={sheet.rangeMm ? sheet.histogram : null}
+      reading={reading}
+      format={ticksIn(units, SHEET_DIGITS)}
+      description={describe('the formed sheet’s thickness', scale, units, SHEET_DIGITS, words)}
     >
       <LegendWords {...words} />
     </ScaleLegend>

@@ -1,5 +1,6 @@
 import { areaAbove, areaBelow, totalArea } from '@/lib/stage-model/map-histogram';
 import type { StageLimits } from '@/lib/stage-model/map-scale';
+import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { StageMaps } from '@/lib/stage-model/stage-model-meta';
 import { convertLength, formatLength, formatNumber } from '../format-figure';
 import type { Units } from '../preferences';
@@ -16,6 +17,7 @@ export interface MapWords {
 export const STEP_DIGITS = 3;
 export const WALL_DIGITS = 2;
 export const DEPTH_DIGITS = 1;
+export const SHEET_DIGITS = 2;
 
 /** Layer lines; `maps` is missing on models that were made before areas by layer line were counted. */
 export function layerWords(
@@ -63,6 +65,22 @@ export function wallWords(
   const below = areaBelow(wall.histogram, wallMm);
   const limit = formatLength(wallMm, units, WALL_DIGITS);
   const area = `${formatArea(below, units)} of the faces measured, ${formatShare(below, all)}, below ${limit}`;
+  return { area, range, broken: below > 0 };
+}
+
+/** The formed part's own sheet; the foot along the bed, where it is trimmed, is told apart. */
+export function sheetWords(
+  { rangeMm, histogram, gaugeMm }: SheetModelMeta,
+  { sheetMm }: Pick<StageLimits, 'sheetMm'>,
+  units: Units,
+): MapWords {
+  const say = (mm: number) => formatLength(mm, units, SHEET_DIGITS);
+  if (!rangeMm) return { area: 'The template stands no higher than its foot.', range: '', broken: false };
+  const range = `${spanWords('Thickness', rangeMm, units, SHEET_DIGITS)} An estimate from ${say(gaugeMm)} of sheet; the foot along the bed is left out.`;
+  const all = totalArea(histogram);
+  if (!sheetMm) return { area: `${formatArea(all, units)} of the part`, range, broken: false };
+  const below = areaBelow(histogram, sheetMm);
+  const area = `${formatArea(below, units)} of the part, ${formatShare(below, all)}, below the ${say(sheetMm)} wanted`;
   return { area, range, broken: below > 0 };
 }
 

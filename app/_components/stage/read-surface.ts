@@ -3,7 +3,7 @@ import { FLAT_FROM_DEG } from '@/lib/stage-model/draft-scale';
 import type { StageLimits } from '@/lib/stage-model/map-scale';
 import { formatLength, formatNumber } from '../format-figure';
 import type { Units } from '../preferences';
-import { DEPTH_DIGITS, STEP_DIGITS, WALL_DIGITS } from './map-words';
+import { DEPTH_DIGITS, SHEET_DIGITS, STEP_DIGITS, WALL_DIGITS } from './map-words';
 import type { StageMap } from './stage-maps';
 import type { SurfaceHit } from './surface-picker';
 
@@ -13,6 +13,7 @@ export function figureAt(hit: SurfaceHit, map: StageMap, { layerMm }: StageLimit
   if (map === 'draft') return hit.draftDeg;
   if (map === 'layers') return layerMm === null ? null : stepAt(hit.draftDeg, layerMm);
   if (map === 'wall') return hit.wallMm;
+  if (map === 'sheet') return hit.sheetMm;
   if (map === 'trap') return hit.trapMm !== null && hit.trapMm > TRAP_FROM_MM ? hit.trapMm : null;
   return null;
 }
@@ -28,6 +29,7 @@ function readFigure(hit: SurfaceHit, map: StageMap, limits: StageLimits, units: 
   if (map === 'layers') return readStep(hit, limits, units);
   if (map === 'wall') return readWall(hit, limits, units);
   if (map === 'trap') return readTrap(hit, units);
+  if (map === 'sheet') return readSheet(hit, limits, units);
   return readDraft(hit, limits.draftDeg);
 }
 
@@ -52,6 +54,13 @@ function readWall({ wallMm }: SurfaceHit, limits: StageLimits, units: Units): st
   const say = (mm: number) => formatLength(mm, units, WALL_DIGITS);
   const below = limits.wallMm !== null && wallMm < limits.wallMm - 0.005;
   return `Wall ${say(wallMm)}${below ? `, below the limit of ${say(limits.wallMm!)}` : ''}`;
+}
+
+function readSheet({ sheetMm }: SurfaceHit, limits: StageLimits, units: Units): string {
+  if (sheetMm === null) return 'The sheet does not reach this place';
+  const say = (mm: number) => formatLength(mm, units, SHEET_DIGITS);
+  const below = limits.sheetMm !== null && sheetMm < limits.sheetMm;
+  return `Sheet about ${say(sheetMm)}${below ? `, below the ${say(limits.sheetMm!)} wanted` : ''}`;
 }
 
 function readTrap({ trapMm, unvented }: SurfaceHit, units: Units): string {

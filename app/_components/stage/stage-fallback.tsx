@@ -3,13 +3,14 @@
 import clsx from 'clsx';
 import type { ReactNode } from 'react';
 import type { StageLimits } from '@/lib/stage-model/map-scale';
+import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { formatLength } from '../format-figure';
 import type { Units } from '../preferences';
 import { usePreferences } from '../preferences-context';
 import { wallAreas } from './draft-legend';
 import { formatArea, formatShare } from './format-area';
-import { layerWords, trapWords, wallWords, type MapWords } from './map-words';
+import { layerWords, sheetWords, trapWords, wallWords, type MapWords } from './map-words';
 import type { StagePin } from './stage-props';
 
 const STATES: Record<StagePin['state'], string> = {
@@ -23,6 +24,7 @@ export function StageFallback(props: {
   title: string;
   pictureUrl: string;
   meta: StageModelMeta;
+  sheet?: { meta: SheetModelMeta } | null;
   limits: StageLimits;
   pins?: readonly StagePin[];
   activePin?: string | null;
@@ -51,7 +53,7 @@ export function StageFallback(props: {
       below > 0,
     ],
     ['Undercut area', formatArea(meta.areaMm2.undercut, units), meta.areaMm2.undercut > 0],
-    ...mapRows(meta, limits, units),
+    ...mapRows(meta, props.sheet?.meta ?? null, limits, units),
     ['Area on the bed', formatArea(meta.areaMm2.bed, units)],
   ];
   return (
@@ -113,7 +115,12 @@ export function StageFallback(props: {
 }
 
 /** What the legends of the other maps say, for the maps that this model has. */
-function mapRows({ maps }: StageModelMeta, limits: StageLimits, units: Units): [string, string, boolean][] {
+function mapRows(
+  { maps }: StageModelMeta,
+  sheet: SheetModelMeta | null,
+  limits: StageLimits,
+  units: Units,
+): [string, string, boolean][] {
   const row = (name: string, { area, range, broken }: MapWords): [string, string, boolean] => [
     name,
     range ? `${area}${area.endsWith('.') ? '' : '.'} ${range.replace(/\.$/, '')}` : area.replace(/\.$/, ''),
@@ -126,5 +133,6 @@ function mapRows({ maps }: StageModelMeta, limits: StageLimits, units: Units): [
       : []),
     ...(maps?.wall ? [row('Wall thickness', wallWords(maps.wall, limits, units))] : []),
     ...(maps?.trap ? [row('Trapped air', trapWords(maps.trap, units))] : []),
+    ...(sheet ? [row('Formed sheet', sheetWords(sheet, limits, units))] : []),
   ];
 }

@@ -4,7 +4,8 @@ import type { Ref } from 'react';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { DraftLegend } from './draft-legend';
 import type { StageLimits } from '@/lib/stage-model/map-scale';
-import { LayerLegend, TrapLegend, WallLegend } from './length-legends';
+import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
+import { LayerLegend, SheetLegend, TrapLegend, WallLegend } from './length-legends';
 import type { StageMap } from './stage-maps';
 import { UndercutLegend } from './undercut-legend';
 
@@ -13,6 +14,7 @@ export function StageFoot(props: {
   ref: Ref<HTMLDivElement>;
   map: StageMap;
   meta: StageModelMeta;
+  sheet: SheetModelMeta | null;
   limits: StageLimits;
   /** the place under the pointer in words, and its figure on the map's scale */
   reading: string | null;
@@ -33,14 +35,21 @@ export function StageFoot(props: {
   );
 }
 
-function Legend(props: { map: StageMap; meta: StageModelMeta; limits: StageLimits; figure: number | null }) {
-  const { map, meta, limits, figure } = props;
+function Legend(props: {
+  map: StageMap;
+  meta: StageModelMeta;
+  sheet: SheetModelMeta | null;
+  limits: StageLimits;
+  figure: number | null;
+}) {
+  const { map, meta, sheet, limits, figure } = props;
   const { maps } = meta;
   if (map === 'draft') return <DraftLegend meta={meta} limitDeg={limits.draftDeg} reading={figure} />;
   if (map === 'undercut') return <UndercutLegend meta={meta} />;
   if (map === 'layers' && limits.layerMm !== null)
     return <LayerLegend maps={maps} limits={limits} layerMm={limits.layerMm} reading={figure} />;
   if (map === 'wall' && maps?.wall) return <WallLegend wall={maps.wall} limits={limits} reading={figure} />;
+  if (map === 'sheet' && sheet) return <SheetLegend sheet={sheet} limits={limits} reading={figure} />;
   if (map === 'trap' && maps?.trap) return <TrapLegend maps={maps} reading={figure} />;
   return null;
 }

@@ -1,5 +1,6 @@
 import type { StageLimits } from '@/lib/stage-model/map-scale';
 import type { SectionLine } from '@/lib/stage-model/section';
+import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { StageMap } from './stage-maps';
 
@@ -33,6 +34,8 @@ export interface StageProps {
   /** address of the picture that renderPicture made; shown while loading and where WebGL is missing */
   pictureUrl: string;
   meta: StageModelMeta;
+  /** the formed sheet that buildSheetModel made; null where none was formed */
+  sheet?: { url: string; meta: SheetModelMeta } | null;
   map: StageMap;
   onMapChange: (map: StageMap) => void;
   /** what the maps are held against, and hatched beyond */

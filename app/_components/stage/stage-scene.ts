@@ -11,11 +11,13 @@ import {
   WebGLRenderer,
 } from 'three';
 import { rigAxes, type RigState } from './camera-rig';
+import type { SheetModelData } from './decode-sheet-model';
 import type { StageModelData } from './decode-stage-model';
 import { probeWebgl } from './probe-webgl';
 import type { MapScale } from '@/lib/stage-model/map-scale';
+import { createSheetMaterial } from './sheet-material';
 import type { StageMap } from './stage-maps';
-import { createTemplateMaterial, type StageColours } from './template-material';
+import { createTemplateMaterial, displayRgb, type StageColours } from './template-material';
 
 const HATCH_CSS_PX = 7;
 const MOST_PIXEL_RATIO = 2;
@@ -37,6 +39,10 @@ export class StageScene {
   private readonly coarse = new BufferGeometry();
   private readonly ink = new BufferGeometry();
   private readonly cut = new BufferGeometry();
+  private readonly sheet = new BufferGeometry();
+  private readonly sheetMaterial = createSheetMaterial(this.template.scale);
+  private readonly sheetMeshes: Mesh[];
+  private sheetOpacity = 0;
   private readonly whole: Mesh;
   private readonly light: Mesh;
   private readonly inkLines: LineSegments;
@@ -77,7 +83,14 @@ export class StageScene {
     this.coarse.setIndex(new BufferAttribute(model.coarse, 1));
     this.whole = new Mesh(this.surface, this.template.material);
     this.light = new Mesh(this.coarse, this.template.material);
-    this.scene.add(this.whole, this.light, this.inkLines, this.cutLines);
+    this.sheetMeshes = [this.sheetMaterial.depth, this.sheetMaterial.material].map((material, pass) => {
+      const mesh = new Mesh(this.sheet, material);
+      // After the template, depth before colour.
+      mesh.renderOrder = 1 + pass;
+      mesh.visible = false;
+      return mesh;
+    });
+    this.scene.add(this.whole, this.light, this.inkLines, this.cutLines, ...this.sheetMeshes);
   }
 
   resize(width: number, height: number): void {
@@ -89,8 +102,32 @@ export class StageScene {
     this.template.setMap(map, scale, layerMm);
   }
 
+  /** The formed sheet over the template and its thickness on the template's own surface; null takes it away. */
+  setSheet(sheet: SheetModelData | null, scale: MapScale | null): void {
+    if (sheet && scale) {
+      this.sheet.setAttribute('position', new BufferAttribute(sheet.positions, 3));
+      this.sheet.setAttribute('normal', new BufferAttribute(sheet.normals, 3));
+      this.sheet.setAttribute('thickness', new BufferAttribute(sheet.thicknessMm, 1));
+      this.sheet.setAttribute('lies', new BufferAttribute(sheet.lies, 1));
+      this.sheet.setIndex(new BufferAttribute(sheet.index, 1));
+      this.sheetMaterial.setScale(scale);
+      const over = new BufferAttribute(sheet.onTemplateMm, 1);
+      this.surface.setAttribute('sheet', over);
+      this.coarse.setAttribute('sheet', over);
+    }
+    if (!sheet) this.setSheetOpacity(0);
+  }
+
+  /** 0 hides the sheet, 1 covers the template with it. */
+  setSheetOpacity(opacity: number): void {
+    this.sheetOpacity = this.sheet.index ? opacity : 0;
+    this.sheetMaterial.setOpacity(this.sheetOpacity);
+    for (const mesh of this.sheetMeshes) mesh.visible = this.sheetOpacity > 0;
+  }
+
   setColours(colours: StageColours): void {
     this.template.setColours(colours);
+    this.sheetMaterial.setColours(displayRgb(colours.hatch), displayRgb(colours.ink));
     this.inkMaterial.color = new Color(colours.ink);
     this.cutMaterial.color = new Color(colours.ink);
   }
@@ -112,6 +149,7 @@ export class StageScene {
     this.light.visible = plain && hasCoarse;
     this.inkLines.visible = !plain || this.model.lines.length < 20_000;
     this.template.setPitch(HATCH_CSS_PX * ratio);
+    this.sheetMaterial.setPitch(HATCH_CSS_PX * ratio);
     this.inkMaterial.opacity = ratio >= 1.5 ? 0.8 : 0.5;
     this.aim(rig);
     this.renderer.render(this.scene, this.camera);
@@ -145,11 +183,13 @@ export class StageScene {
     this.camera.updateProjectionMatrix();
     this.camera.updateMatrixWorld();
     this.template.setEye(right, toEye);
+    this.sheetMaterial.setEye(right, toEye);
   }
 
   dispose(): void {
     cancelAnimationFrame(this.probe);
-    for (const geometry of [this.surface, this.coarse, this.ink, this.cut]) geometry.dispose();
+    for (const geometry of [this.surface, this.coarse, this.ink, this.cut, this.sheet]) geometry.dispose();
+    this.sheetMaterial.dispose();
     this.template.dispose();
     this.inkMaterial.dispose();
     this.cutMaterial.dispose();

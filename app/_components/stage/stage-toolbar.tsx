@@ -40,6 +40,28 @@ export function MapChoice(props: {
   );
 }
 
+/** How much the formed sheet covers the template: from not at all to wholly. */
+export function SheetFade(props: { value: number; onChange: (value: number) => void; isReady: boolean }) {
+  const { value, onChange, isReady } = props;
+  return (
+    <label className="flex items-center gap-2 text-sm text-slate">
+      Sheet
+      <input
+        type="range"
+        min={0}
+        max={1}
+        step={0.05}
+        value={value}
+        disabled={!isReady}
+        aria-label="Formed sheet over the template"
+        aria-valuetext={value === 0 ? 'not shown' : `${Math.round(value * 100)} percent`}
+        onChange={(event) => onChange(Number(event.target.value))}
+        className="h-6 w-24 accent-verdigris pointer-coarse:h-11"
+      />
+    </label>
+  );
+}
+
 /** Standard views and fit as plain words: what the keys 1 to 7 and F do. */
 export function ViewChoice(props: {
   onView: (id: StandardViewId) => void;

@@ -12,19 +12,22 @@ import { readStageColours } from './stage-colours';
 import { StageFallback } from './stage-fallback';
 import { StageFoot } from './stage-foot';
 import { StageMarks } from './stage-marks';
+import { sheetMapScale } from '@/lib/stage-model/map-scale';
 import { offeredMaps, scaleOfMap, STAGE_MAPS } from './stage-maps';
 import { Picture, STAGE_FRAME, STAGE_HEIGHT } from './stage-picture';
 import type { StageProps } from './stage-props';
 import type { SurfaceHit } from './surface-picker';
-import { MapChoice, ViewChoice } from './stage-toolbar';
+import { MapChoice, SheetFade, ViewChoice } from './stage-toolbar';
 import { traceOfCut } from './trace-of-cut';
+import { useSheetModel } from './use-sheet-model';
 import { useStageEngine, type EngineHandlers } from './use-stage-engine';
 
 /** The stage with its 3D code; reached through `Stage`, which loads it. */
 export default function StageView(props: StageProps) {
   const { title, meta, limits, pins = [], activePin = null, placing = false, sectionLine = null } = props;
   const { theme, units } = usePreferences();
-  const offered = offeredMaps(meta, limits);
+  const sheetMeta = props.sheet?.meta ?? null;
+  const offered = offeredMaps(meta, limits, sheetMeta);
   // A page that shows another model keeps its map where that model has it.
   const map = offered.includes(props.map) ? props.map : 'plain';
   const mapWords = STAGE_MAPS.find(({ id }) => id === map)!.words;
@@ -39,6 +42,9 @@ export default function StageView(props: StageProps) {
 
   const handlers = useRef<EngineHandlers>({ onHover: () => {}, onPress: () => {}, onRest: () => {} });
   const { host, engine, problem, lost, redraw } = useStageEngine(props.modelUrl, meta, handlers);
+
+  const sheet = useSheetModel(props.sheet, engine?.model ?? null);
+  const [fade, setFade] = useState(0);
 
   const place = (found: SurfaceHit | null) => {
     if (found && engine) props.onPlace?.(found.at, found.normal, engine.control.view);
@@ -74,9 +80,17 @@ export default function StageView(props: StageProps) {
   });
 
   useEffect(() => {
-    engine?.scene.setMap(map, scaleOfMap(map, meta, limits), limits.layerMm ?? 0);
+    engine?.scene.setMap(map, scaleOfMap(map, meta, limits, sheetMeta), limits.layerMm ?? 0);
     engine?.control.invalidate();
-  }, [engine, map, meta, limits]);
+  }, [engine, map, meta, limits, sheetMeta]);
+
+  useEffect(() => {
+    if (!engine) return;
+    engine.picker.setSheet(sheet?.onTemplateMm ?? null);
+    engine.scene.setSheet(sheet, sheetMeta && sheetMapScale(sheetMeta.gaugeMm, limits));
+    engine.scene.setSheetOpacity(sheet ? fade : 0);
+    engine.control.invalidate();
+  }, [engine, sheet, sheetMeta, limits, fade]);
 
   const shownTheme = props.theme ?? theme;
   useEffect(() => {
@@ -169,6 +183,7 @@ export default function StageView(props: StageProps) {
     <section aria-label={`Model of ${title}`} className={clsx(STAGE_FRAME, 'group/stage', props.className)}>
       <div className="relative z-10 flex flex-wrap items-center justify-between gap-x-6 px-3 pt-1.5 sm:px-4">
         <MapChoice map={map} offered={offered} onMapChange={props.onMapChange} />
+        {sheetMeta ? <SheetFade value={fade} onChange={setFade} isReady={sheet !== null} /> : null}
         <ViewChoice
           className="-mx-1.5 max-sm:order-last"
           onView={(id) => engine?.control.standard(id)}
@@ -228,6 +243,7 @@ export default function StageView(props: StageProps) {
         ref={foot}
         map={map}
         meta={meta}
+        sheet={sheetMeta}
         limits={limits}
         reading={hit ? readSurface(hit, map, limits, units) : null}
         figure={hit ? figureAt(hit, map, limits) : null}

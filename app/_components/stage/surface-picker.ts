@@ -14,6 +14,8 @@ export interface SurfaceHit {
   bed: boolean;
   /** null where none was measured */
   wallMm: number | null;
+  /** thickness of the formed sheet; null where it does not reach, or no sheet is there */
+  sheetMm: number | null;
   /** below the rim that the pocket fills to; null outside of pockets and above the rim */
   trapMm: number | null;
   /** in a pocket that no vent leads out of */
@@ -38,6 +40,7 @@ export function toScreen(at: Point, rig: RigState, { width, height }: StageSize)
 export class SurfacePicker {
   private readonly tree: MeshBVH;
   private readonly reach: number;
+  private sheetMm: Float32Array | null = null;
 
   constructor(private readonly model: StageModelData) {
     const geometry = new BufferGeometry();
@@ -46,6 +49,11 @@ export class SurfacePicker {
     this.tree = MeshBVH.deserialize({ ...model.tree, index: model.index }, geometry, { setIndex: false });
     geometry.computeBoundingSphere();
     this.reach = (geometry.boundingSphere?.radius ?? 100) * 4;
+  }
+
+  /** Thickness of the formed sheet over each vertex, mm, 0 where it does not reach. */
+  setSheet(onTemplateMm: Float32Array | null): void {
+    this.sheetMm = onTemplateMm;
   }
 
   /** The surface under a place (CSS pixels from the top left), or null where there is only paper. */
@@ -82,6 +90,7 @@ export class SurfacePicker {
       undercut: (flags & FLAG_UNDERCUT) !== 0,
       bed: (flags & FLAG_BED) !== 0,
       wallMm: known(this.model.wallMm, corners, weights, 0),
+      sheetMm: known(this.sheetMm, corners, weights, 0),
       trapMm: positive(known(this.model.trapMm, corners, weights, NO_TRAP_MM)),
       unvented: (flags & FLAG_UNVENTED) !== 0,
     };

@@ -28,22 +28,31 @@ export interface StageColours {
 /** Strokes on the light half of the scale; the same on both themes, as the map's colours are. */
 const DARK_STROKE = 'vec3(0.114, 0.137, 0.129)';
 
-const MAPS: Record<StageMap, number> = { plain: 0, draft: 1, undercut: 2, layers: 3, wall: 4, trap: 5 };
+const MAPS: Record<StageMap, number> = {
+  plain: 0,
+  draft: 1,
+  undercut: 2,
+  layers: 3,
+  wall: 4,
+  trap: 5,
+  sheet: 6,
+};
 
-// Wall and pocket come as (figure, has one), both 0 without one: between a vertex that has a figure and one that has
+// Wall, pocket and sheet come as (figure, has one), both 0 without one: between a vertex that has a figure and one that has
 // none the quotient stays the figure, so that no false thin wall appears.
 const vertexShader = /* glsl */ `
-  attribute float draft, flags, wall, trap;
+  attribute float draft, flags, wall, trap, sheet;
   varying vec3 vNormal;
   varying float vDraft;
   varying vec3 vFlags;
-  varying vec2 vWall, vTrap;
+  varying vec2 vWall, vTrap, vSheet;
   void main() {
     vNormal = normal;
     vDraft = draft;
     vFlags = vec3(mod(flags, 2.0), mod(floor(flags / 2.0), 2.0), mod(floor(flags / 4.0), 2.0));
     vWall = wall > 0.0 ? vec2(wall, 1.0) : vec2(0.0);
     vTrap = trap > ${NO_TRAP_MM.toFixed(3)} ? vec2(trap, 1.0) : vec2(0.0);
+    vSheet = sheet > 0.0 ? vec2(sheet, 1.0) : vec2(0.0);
     gl_Position = projectionMatrix * modelViewMatrix * vec4(position, 1.0);
   }
 `;
@@ -58,7 +67,7 @@ const fragmentShader = /* glsl */ `
   varying vec3 vNormal;
   varying float vDraft;
   varying vec3 vFlags;
-  varying vec2 vWall, vTrap;
+  varying vec2 vWall, vTrap, vSheet;
 
   float stripe() {
     float at = mod(gl_FragCoord.x - gl_FragCoord.y, pitch) / pitch;
@@ -95,6 +104,9 @@ const fragmentShader = /* glsl */ `
     } else if (map == 5) {
       v = vTrap.x / max(vTrap.y, 0.1);
       shown = vTrap.y > 0.5 && v > ${TRAP_FROM_MM.toFixed(2)};
+    } else if (map == 6) {
+      v = vSheet.x / max(vSheet.y, 0.1);
+      shown = vSheet.y > 0.5;
     }
     // Outside of the branch: neighbours in a block of pixels must all have a figure to differ from.
     float slope = fwidth(v);
@@ -126,6 +138,8 @@ const fragmentShader = /* glsl */ `
 
 export interface TemplateMaterial {
   material: ShaderMaterial;
+  /** the colour table, dark to light */
+  scale: DataTexture;
   /** `layerMm` is the height of a printed layer, for the map of layer lines */
   setMap(map: StageMap, scale: MapScale | null, layerMm: number): void;
   setColours(colours: StageColours): void;
@@ -170,6 +184,7 @@ export function createTemplateMaterial(): TemplateMaterial {
   });
   return {
     material,
+    scale,
     setMap(map, shown, layerMm) {
       uniforms.map.value = MAPS[map];
       uniforms.layer.value = layerMm;
@@ -199,7 +214,7 @@ export function createTemplateMaterial(): TemplateMaterial {
 }
 
 /** 0..1 as the display shows it; the shader does no colour conversion of its own. */
-function displayRgb(css: string): Vector3 {
+export function displayRgb(css: string): Vector3 {
   const c = new Color().setStyle(css, 'srgb-linear');
   return new Vector3(c.r, c.g, c.b);
 }

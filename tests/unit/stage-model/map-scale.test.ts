@@ -6,13 +6,14 @@ import {
   layerMapScale,
   placeOnScale,
   roundUp,
+  sheetMapScale,
   trapMapScale,
   wallMapScale,
   type StageLimits,
 } from '@/lib/stage-model/map-scale';
 import type { StageMaps } from '@/lib/stage-model/stage-model-meta';
 
-const limits: StageLimits = { draftDeg: 5, layerMm: 0.15, stepMm: 0.1, wallMm: 3 };
+const limits: StageLimits = { draftDeg: 5, layerMm: 0.15, stepMm: 0.1, wallMm: 3, sheetMm: 0.35 };
 const pockets = (deepest: number | null) =>
   trapMapScale({ trap: { range: deepest === null ? null : [0, deepest] } } as unknown as StageMaps);
 
@@ -44,6 +45,9 @@ describe('scales of the maps', () => {
   it('are three limits long for walls, and 6 mm where the limit is small or missing', () => {
     expect(wallMapScale(limits).max).toBe(9);
     expect(wallMapScale({ ...limits, wallMm: 0.9 }).max).toBe(6);
+    expect(sheetMapScale(1.2, limits)).toEqual({ max: 1.2, limit: 0.35, dark: 'low', isoStep: 0.12 });
+    expect(sheetMapScale(0.4, { sheetMm: 0.4 }).max).toBe(0.5);
+    expect(sheetMapScale(1, { sheetMm: 0 }).limit).toBeNull();
     expect(wallMapScale({ ...limits, wallMm: null })).toMatchObject({ max: 6, limit: null });
   });
 

@@ -18,13 +18,31 @@ describe('limits that the maps are held against', () => {
       layerMm: 0.12,
       stepMm: 0.08,
       wallMm: 0.9,
+      sheetMm: null,
     });
   });
 
   it('are the recipe’s own before a check has run, and common practice where it names none', () => {
-    expect(stageLimits([], recipe)).toEqual({ draftDeg: 6, layerMm: 0.12, stepMm: 0.08, wallMm: 4 });
-    expect(stageLimits([], {})).toEqual({ draftDeg: 5, layerMm: null, stepMm: 0.1, wallMm: 3 });
+    expect(stageLimits([], recipe)).toEqual({
+      draftDeg: 6,
+      layerMm: 0.12,
+      stepMm: 0.08,
+      wallMm: 4,
+      sheetMm: null,
+    });
+    expect(stageLimits([], {})).toEqual({
+      draftDeg: 5,
+      layerMm: null,
+      stepMm: 0.1,
+      wallMm: 3,
+      sheetMm: null,
+    });
     expect(stageLimits([{ checkId: 'shell', limit: null }], {}).wallMm).toBe(3);
+  });
+
+  it('take the thickness that the recipe wants of the formed sheet, and none where it wants none', () => {
+    expect(stageLimits([], { ...recipe, sheet: { minFormedMm: 0.25 } }).sheetMm).toBe(0.25);
+    expect(stageLimits([], { ...recipe, sheet: { minFormedMm: 0 } }).sheetMm).toBeNull();
   });
 
   it('leave steps alone on a template that is sanded', () => {

@@ -1,7 +1,7 @@
 import { renderToStaticMarkup } from 'react-dom/server';
 import type { ReactElement } from 'react';
 import { beforeAll, describe, expect, it } from 'vitest';
-import { LayerLegend, TrapLegend, WallLegend } from '@/app/_components/stage/length-legends';
+import { LayerLegend, SheetLegend, TrapLegend, WallLegend } from '@/app/_components/stage/length-legends';
 import { figureAt, readSurface } from '@/app/_components/stage/read-surface';
 import { ticksOf } from '@/app/_components/stage/scale-legend';
 import { StageFallback } from '@/app/_components/stage/stage-fallback';
@@ -9,14 +9,29 @@ import { mapOfCheck, offeredMaps, scaleOfMap, STAGE_MAPS } from '@/app/_componen
 import type { SurfaceHit } from '@/app/_components/stage/surface-picker';
 import { buildStageModel } from '@/lib/stage-model/build-stage-model';
 import type { StageLimits } from '@/lib/stage-model/map-scale';
+import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { frustum, geometryOf } from '../../stage-model/shapes';
 
-const limits: StageLimits = { draftDeg: 5, layerMm: 0.2, stepMm: 0.1, wallMm: 3 };
+const limits: StageLimits = { draftDeg: 5, layerMm: 0.2, stepMm: 0.1, wallMm: 3, sheetMm: 0.35 };
 const SIDE = 60;
 const HEIGHT = 30;
 const DRAFT = 40;
 const top = SIDE - 2 * HEIGHT * Math.tan((20 * Math.PI) / 180);
+
+/** 30 cm² of part, a third of it between 0.2 and 0.4 mm. */
+const sheet: SheetModelMeta = {
+  schema: 1,
+  nodes: [65, 65],
+  triangles: 8192,
+  bytes: 9000,
+  gaugeMm: 1,
+  quantumMm: 0.001,
+  boundsMm: { min: [-60, -60, 0], max: [60, 60, 30] },
+  rangeMm: [0.24, 0.98],
+  histogram: { edges: [0, 0.2, 0.4, 0.8, 1], areaMm2: [0, 1000, 1200, 800] },
+  areaMm2: { part: 3000, foot: 5000 },
+};
 
 /** Walls at 20°, the wall figure and the pocket of each facet as given: a part that no engine need have seen. */
 async function metaWith(wallMm: number, spillMm: number, unvented: boolean): Promise<StageModelMeta> {
@@ -54,16 +69,17 @@ beforeAll(async () => {
 });
 
 describe('maps that a model offers', () => {
-  it('are all six where it carries them and the recipe names a layer', () => {
-    expect(offeredMaps(thin, limits)).toEqual(STAGE_MAPS.map(({ id }) => id));
-    expect(offeredMaps(thin, { layerMm: null })).not.toContain('layers');
+  it('are all seven where it carries them and the recipe names a layer', () => {
+    expect(offeredMaps(thin, limits, sheet)).toEqual(STAGE_MAPS.map(({ id }) => id));
+    expect(offeredMaps(thin, { layerMm: null }, sheet)).not.toContain('layers');
   });
   it('are without wall and trapped air on a model of schema 1', () => {
-    expect(offeredMaps(old, limits)).toEqual(['plain', 'draft', 'undercut', 'layers']);
+    expect(offeredMaps(old, limits, null)).toEqual(['plain', 'draft', 'undercut', 'layers']);
+    expect(offeredMaps(thin, limits, null)).not.toContain('sheet');
   });
   it('have a scale each, but plain and undercut', () => {
-    expect(STAGE_MAPS.map(({ id }) => scaleOfMap(id, thin, limits)?.max ?? null)).toEqual([
-      null, 15, null, 0.2, 9, 12,
+    expect(STAGE_MAPS.map(({ id }) => scaleOfMap(id, thin, limits, sheet)?.max ?? null)).toEqual([
+      null, 15, null, 0.2, 9, 12, 1,
     ]); // prettier-ignore
   });
   it('are what the checks lead to', () => {
@@ -139,6 +155,21 @@ describe('ticks of a scale', () => {
   });
 });
 
+describe('the legend of the formed sheet', () => {
+  it('tells the part’s thin area against what is wanted, and that it is an estimate', () => {
+    const legend = <SheetLegend sheet={sheet} limits={limits} reading={null} />;
+    // Of 1000 mm² between 0.2 and 0.4 mm three quarters lie below 0.35 mm.
+    expect(words(legend)).toContain('750 mm² of the part, 25 %, below the 0.35 mm wanted, hatched');
+    expect(words(legend)).toContain('Thickness from 0.24 to 0.98 mm. An estimate from 1.00 mm of sheet');
+    expect(label(legend)).toContain('Limit 0.35 mm.');
+  });
+  it('hatches nothing where nothing is wanted', () => {
+    const free = <SheetLegend sheet={sheet} limits={{ ...limits, sheetMm: null }} reading={0.5} />;
+    expect(words(free)).toContain('30.0 cm² of the part');
+    expect(words(free)).not.toContain('hatched');
+  });
+});
+
 describe('the figure of the map at a place', () => {
   const hit: SurfaceHit = {
     at: [1, 2, 3],
@@ -147,6 +178,7 @@ describe('the figure of the map at a place', () => {
     undercut: false,
     bed: false,
     wallMm: 2.984,
+    sheetMm: 0.304,
     trapMm: 4.26,
     unvented: true,
   };
@@ -166,6 +198,10 @@ describe('the figure of the map at a place', () => {
     expect(read({}, 'wall')).toBe('Wall 2.98 mm, below the limit of 3.00 mm');
     expect(read({ wallMm: 2.996 }, 'wall')).toBe('Wall 3.00 mm');
     expect(read({ wallMm: null }, 'wall')).toBe('No wall measured');
+    expect(read({}, 'sheet')).toBe('Sheet about 0.30 mm, below the 0.35 mm wanted');
+    expect(read({ sheetMm: 0.4 }, 'sheet')).toBe('Sheet about 0.40 mm');
+    expect(read({ sheetMm: null }, 'sheet')).toBe('The sheet does not reach this place');
+    expect(figureAt({ ...hit }, 'sheet', limits)).toBe(0.304);
     expect(read({}, 'trap')).toBe('4.3 mm below the rim, no vent');
     expect(read({ unvented: false }, 'trap')).toBe('4.3 mm below the rim, vented');
     expect(read({ trapMm: null }, 'trap')).toBe('No pocket');
@@ -175,7 +211,7 @@ describe('the figure of the map at a place', () => {
 
   it('stands on the scale of its map, and nowhere where the map says nothing', () => {
     expect(STAGE_MAPS.map(({ id }) => figureAt(hit, id, limits))).toEqual([
-      null, 40, null, expect.closeTo(0.2 * Math.sin((40 * Math.PI) / 180), 9), 2.984, 4.26,
+      null, 40, null, expect.closeTo(0.2 * Math.sin((40 * Math.PI) / 180), 9), 2.984, 4.26, 0.304,
     ]); // prettier-ignore
     const bare = { ...hit, bed: true };
     expect(STAGE_MAPS.every(({ id }) => figureAt(bare, id, limits) === null)).toBe(true);

@@ -12,7 +12,7 @@ import type { StageLimits } from '@/lib/stage-model/map-scale';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { frustum, geometryOf } from '../../stage-model/shapes';
 
-const limits: StageLimits = { draftDeg: 5, layerMm: 0.15, stepMm: 0.1, wallMm: 3 };
+const limits: StageLimits = { draftDeg: 5, layerMm: 0.15, stepMm: 0.1, wallMm: 3, sheetMm: 0.35 };
 let four: StageModelMeta;
 let leaning: StageModelMeta;
 

@@ -9,7 +9,7 @@ import { frustum, geometryOf, hemisphere, tray } from '../../stage-model/shapes'
 
 const size = { width: 800, height: 500 };
 const rad = Math.PI / 180;
-const limits = { draftDeg: 5, layerMm: 0.15, stepMm: 0.1, wallMm: 3 };
+const limits = { draftDeg: 5, layerMm: 0.15, stepMm: 0.1, wallMm: 3, sheetMm: 0.35 };
 
 async function load(positions: Float32Array) {
   const { glb, meta } = await buildStageModel(geometryOf(positions));
@@ -114,6 +114,7 @@ describe('readSurface', () => {
     at: [12, -3.04, 18] as [number, number, number],
     normal: [0, 0, 1] as [number, number, number],
     wallMm: null,
+    sheetMm: null,
     trapMm: null,
     unvented: false,
   };

@@ -11,6 +11,7 @@ import { useDraftKeys } from '@/app/_components/note-editor/use-draft-keys';
 import { usePreferences } from '@/app/_components/preferences-context';
 import { mapOfCheck, offeredMaps, type StageMap } from '@/app/_components/stage/stage-maps';
 import type { Point, StageCamera } from '@/app/_components/stage/stage-props';
+import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { DocketView, RevisionView } from '@/lib/review/schemas';
 import { CheckPanel } from './check-panel';
@@ -64,6 +65,7 @@ export function Room({
     [docket.findings, revision.recipe],
   );
   const meta = revision.model ? (revision.model.meta as unknown as StageModelMeta) : null;
+  const sheetMeta = revision.sheet ? (revision.sheet.meta as unknown as SheetModelMeta) : null;
   const bounds = meta?.boundsMm ?? null;
   const items = docketItems(docket);
   const groups = byGroup(items);
@@ -83,7 +85,7 @@ export function Room({
   /** A finding that a map shows brings that map; a note leaves the one that is on. */
   const showMapOf = (item: DocketItem | undefined) => {
     const wanted = item?.finding ? mapOfCheck(item.finding.checkId) : null;
-    if (wanted && meta && offeredMaps(meta, limits).includes(wanted)) setMap(wanted);
+    if (wanted && meta && offeredMaps(meta, limits, sheetMeta).includes(wanted)) setMap(wanted);
   };
   const activate = (key: string) => {
     setItem(key);

@@ -12,10 +12,12 @@ type Finding = Pick<FindingView, 'checkId' | 'limit'>;
 export function stageLimits(findings: readonly Finding[], recipe: Record<string, unknown>): StageLimits {
   const print = (recipe.print ?? {}) as Record<string, unknown>;
   const { layerMm, sanded } = print;
+  const { minFormedMm } = (recipe.sheet ?? {}) as Record<string, unknown>;
   return {
     draftDeg: draftLimit(findings, recipe),
     layerMm: typeof layerMm === 'number' && layerMm > 0 ? layerMm : null,
     stepMm: sanded === true ? null : limitOf(recipe, 'cuspMaxMm', 0.1),
     wallMm: findings.find(({ checkId }) => checkId === 'shell')?.limit ?? limitOf(recipe, 'shellMinMm', 3),
+    sheetMm: typeof minFormedMm === 'number' && minFormedMm > 0 ? minFormedMm : null,
   };
 }

@@ -9,6 +9,7 @@ import type { Point, StageCamera, StagePin } from '@/app/_components/stage/stage
 import { usePreferences } from '@/app/_components/preferences-context';
 import type { StageLimits } from '@/lib/stage-model/map-scale';
 import type { SectionLine } from '@/lib/stage-model/section';
+import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { RevisionView } from '@/lib/review/schemas';
 import { useVents } from '../_hooks/use-room-data';
@@ -82,6 +83,10 @@ export function StagePanel(props: StagePanelProps) {
     );
   }
   const meta = revision.model.meta as unknown as StageModelMeta;
+  const sheet = revision.sheet as { url: string; meta: unknown } | null as {
+    url: string;
+    meta: SheetModelMeta;
+  } | null;
   return (
     <>
       <Stage
@@ -89,6 +94,7 @@ export function StagePanel(props: StagePanelProps) {
         modelUrl={revision.model.url}
         pictureUrl={revision.model.pictureUrl}
         meta={meta}
+        sheet={sheet}
         map={map}
         onMapChange={onMapChange}
         limits={limits}

@@ -1,0 +1,17 @@
+import { fetchSheetModel, sheetTransferables, type TemplateVertices } from './decode-sheet-model';
+
+/** Address, nodes and the template's vertices in, the decoded sheet (or the problem in words) out. */
+self.onmessage = async ({ data }: MessageEvent<SheetRequest>) => {
+  try {
+    const sheet = await fetchSheetModel(data.url, data.nodes, data.template);
+    self.postMessage({ sheet }, { transfer: sheetTransferables(sheet) });
+  } catch (error) {
+    self.postMessage({ problem: error instanceof Error ? error.message : String(error) });
+  }
+};
+
+export interface SheetRequest {
+  url: string;
+  nodes: [number, number];
+  template: TemplateVertices;
+}
