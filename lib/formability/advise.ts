@@ -11,7 +11,7 @@ import { recipeSchema } from './recipe-schema';
 import type { Advice, Check, CheckId, CheckStatus } from './report';
 import { scaleSheet } from './sheet/scale-sheet';
 import type { Part } from './survey-part';
-import { writePhysics } from './write-physics';
+import { writePhysics, type KnownPhysics } from './write-physics';
 
 const MOST_ADVICE = 3;
 const WEIGHT: Record<CheckStatus, number> = { fail: 3, caution: 1, pass: 0, 'not-run': 0 };
@@ -20,7 +20,13 @@ const WEIGHT: Record<CheckStatus, number> = { fail: 3, caution: 1, pass: 0, 'not
  * The changes of the recipe that buy most: each is tried by running all checks on the changed recipe, on the same mesh.
  * Ranked by what they mend, then by what they cost in print time. Those that make anything worse are left out.
  */
-export function advise(part: Part, input: CheckInput, checks: Check[], macro: MacroWalls): Advice[] {
+export function advise(
+  part: Part,
+  input: CheckInput,
+  checks: Check[],
+  macro: MacroWalls,
+  physics: KnownPhysics,
+): Advice[] {
   const before = new Map(checks.map((check) => [check.id, check.status]));
   const weight = total(checks);
   if (weight === 0) return [];
@@ -29,7 +35,7 @@ export function advise(part: Part, input: CheckInput, checks: Check[], macro: Ma
     ({ change, text }) => {
       const recipe = withChange(input.recipe, change);
       if (!recipe) return [];
-      const changed = judgeAgain(part, input, recipe, { macro, facing });
+      const changed = judgeAgain(part, input, recipe, { macro, facing, physics });
       const worse = changed.checks.some(
         (check) => WEIGHT[check.status] > WEIGHT[before.get(check.id) ?? 'pass'],
       );
@@ -79,7 +85,7 @@ function judgeAgain(
   part: Part,
   input: CheckInput,
   recipe: EffectiveRecipe,
-  known: { macro: MacroWalls; facing: ReturnType<typeof facingAreas> },
+  known: { macro: MacroWalls; facing: ReturnType<typeof facingAreas>; physics: KnownPhysics },
 ): { checks: Check[]; report: CheckInput['report'] } {
   const { print, limits } = recipe;
   const layered = print.layerMm !== input.recipe.print.layerMm;
@@ -99,7 +105,10 @@ function judgeAgain(
       recipe,
     ),
   };
-  const whole = { ...report, ...writePhysics(part, recipe, report, input.sheet, input.report.air) };
+  const whole = {
+    ...report,
+    ...writePhysics(part, recipe, report, input.sheet, known.physics, input.report.air),
+  };
   return {
     report: whole,
     checks: runChecks({

@@ -12,6 +12,8 @@ export interface AnalyseOptions {
   geometryOnly?: boolean;
   /** Form the sheet too: seconds more; left out, its check says so. */
   sheet?: boolean;
+  /** How templates of this kind ended so far, one entry each: `{ pulls, failed }`; stands in the place of the estimated life. */
+  pullLog?: unknown;
   /** Milliseconds; lent only to fill `timings`. */
   now?(): number;
 }

@@ -6,6 +6,8 @@ import { runChecks } from './checks/run-checks';
 import { facetFlags, facetPositions } from './facet-output';
 import { fillRecipe } from './fill-recipe';
 import { mapPockets } from './measures/map-pockets';
+import { judgeSureness } from './judge-sureness';
+import { readPullLog } from './life/pull-log';
 import { judgeDraft, type DraftJudgement } from './judge-draft';
 import { findOverhangs } from './measures/overhangs';
 import { checkCoordinates } from './parse/check-coordinates';
@@ -17,7 +19,7 @@ import { judgeSheet, type SheetJudgement } from './sheet/judge-sheet';
 import { Stages } from './stages';
 import { surveyPart, type Part } from './survey-part';
 import { ENGINE_VERSION } from './version';
-import { writePhysics } from './write-physics';
+import { surveyPhysics, writePhysics } from './write-physics';
 import { writeSections } from './write-sections';
 
 /**
@@ -51,6 +53,13 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
           judgeSheet(part, effective, geometric.plan.frameMm, { onProgress, shouldStop: options.shouldStop }),
         )
       : null;
+  const log = options.pullLog === undefined ? null : readPullLog(options.pullLog);
+  const physics = options.geometryOnly
+    ? null
+    : stages.run('physics', () => {
+        const known = surveyPhysics(part, geometric.plan, sheet, effective.sheet.gaugeMm, log);
+        return { known, sections: writePhysics(part, effective, geometric, sheet, known) };
+      });
   const sections = {
     schema: 1 as const,
     engine: ENGINE_VERSION,
@@ -64,15 +73,14 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
     },
     recipe: effective,
     ...geometric,
-    ...(options.geometryOnly
-      ? {}
-      : stages.run('physics', () => writePhysics(part, effective, geometric, sheet))),
+    ...physics?.sections,
+    sureness: judgeSureness(effective, { sheetRun: Boolean(sheet?.formed), pullLog: log !== null }),
   };
   const input = checkInput(part, effective, sections, wallDraft, sheet, options.geometryOnly ?? false);
   const checks = stages.run('checks', () => runChecks(input));
-  const advice = options.geometryOnly
-    ? []
-    : stages.run('advice', () => advise(part, input, checks, wallDraft.macro));
+  const advice = physics
+    ? stages.run('advice', () => advise(part, input, checks, wallDraft.macro, physics.known))
+    : [];
   const geometry = stages.run('geometry', () => ({
     ...drawGeometry(part),
     sheet: sheet?.formed?.surface ?? null,

@@ -69,7 +69,8 @@ function forStiffness(recipe: EffectiveRecipe, { skin, wallsUnderPressure }: Kno
       change: { print: { topMm } },
       text: `Print a top of ${say(topMm, 2)} mm instead of ${say(print.topMm, 2)} mm.`,
     });
-  const infill = Math.ceil(skin?.infillThatHoldsPercent ?? 0);
+  const forWalls = wallsUnderPressure?.infill ? wallsUnderPressure.infillThatHoldsPercent : 0;
+  const infill = Math.ceil(Math.max(skin?.infillThatHoldsPercent ?? 0, forWalls ?? 0));
   if (infill > print.infillPercent && infill <= 100)
     found.push({
       change: { print: { infillPercent: infill } },

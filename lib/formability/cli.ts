@@ -6,12 +6,13 @@ import { summarise } from './summarise';
 import { UnusableInput } from './unusable-input';
 
 const USAGE =
-  'npm run --silent formability -- <mesh.stl|.3mf|.step> [--recipe recipe.json] [--sheet] [--json] [--geometry-only]';
+  'npm run --silent formability -- <mesh.stl|.3mf|.step> [--recipe recipe.json] [--pull-log log.json] [--sheet] [--json] [--geometry-only]';
 const FLAGS = ['--json', '--sheet', '--geometry-only'];
 
 interface Arguments {
   mesh: string;
   recipe: string | null;
+  pullLog: string | null;
   json: boolean;
   sheet: boolean;
   geometryOnly: boolean;
@@ -24,10 +25,14 @@ function readArguments(argv: string[]): Arguments {
   const files: string[] = [];
   const flags = new Set<string>();
   let recipe: string | null = null;
+  let pullLog: string | null = null;
   for (let i = 0; i < argv.length; i++) {
-    if (argv[i] === '--recipe') {
-      recipe = argv[++i] ?? null;
-      if (recipe === null) throw new WrongUse('--recipe needs a file');
+    if (argv[i] === '--recipe' || argv[i] === '--pull-log') {
+      const option = argv[i];
+      const file = argv[++i] ?? null;
+      if (file === null) throw new WrongUse(`${option} needs a file`);
+      if (option === '--recipe') recipe = file;
+      else pullLog = file;
     } else if (FLAGS.includes(argv[i])) flags.add(argv[i]);
     else if (argv[i].startsWith('--')) throw new WrongUse(`there is no option ${argv[i]}`);
     else files.push(argv[i]);
@@ -37,6 +42,7 @@ function readArguments(argv: string[]): Arguments {
   return {
     mesh: files[0],
     recipe,
+    pullLog,
     json: flags.has('--json'),
     sheet: flags.has('--sheet'),
     geometryOnly: flags.has('--geometry-only'),
@@ -51,10 +57,11 @@ function readBytes(path: string): Uint8Array {
   return readFileSync(path);
 }
 
-function readRecipe(path: string | null): RecipeInput {
-  if (path === null) return {};
+/** What a JSON file says; undefined where none was named. */
+function readJson(path: string | null): unknown {
+  if (path === null) return undefined;
   try {
-    return JSON.parse(readFileSync(path, 'utf8')) as RecipeInput;
+    return JSON.parse(readFileSync(path, 'utf8'));
   } catch (error) {
     const why = error instanceof Error ? error.message : String(error);
     throw new UnusableInput('invalid_recipe', `${path} cannot be read as JSON (${why}); correct the file`);
@@ -80,7 +87,8 @@ export async function main(argv: string[]): Promise<void> {
   try {
     const args = readArguments(argv);
     const bytes = readBytes(args.mesh);
-    const { report } = await analyseFile(bytes, readRecipe(args.recipe), {
+    const { report } = await analyseFile(bytes, (readJson(args.recipe) ?? {}) as RecipeInput, {
+      pullLog: readJson(args.pullLog),
       geometryOnly: args.geometryOnly,
       sheet: args.sheet,
       now: () => performance.now(),

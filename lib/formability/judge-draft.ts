@@ -1,7 +1,7 @@
 import { wantedDraft } from './checks/check-draft';
 import { judgeWalls, type WallJudgement } from './measures/judge-walls';
-import { layerDraftDeg } from './measures/measure-layers';
 import { macroRegions, measureMacroDraft, type MacroWalls } from './measures/measure-macro-draft';
+import { nubDraftDeg } from './physics/layer-surface';
 import type { EffectiveRecipe } from './recipe';
 import type { DraftReport } from './report';
 import type { Part } from './survey-part';
@@ -33,7 +33,7 @@ export function judgeDraft(
     sanded: print.sanded,
     minDeg: limits.draftMinDeg,
     failDeg: limits.draftFailDeg,
-    layerDraftDeg: layerDraftDeg(print.layerMm, limits.layerGrooveMm),
+    layerDraftDeg: nubDraftDeg(print.layerMm, limits.layerGrooveMm),
   });
   const macro = known ?? measureMacroDraft(mesh, facets, notWalls(part), Math.max(...size));
   const walls = judgeWalls(mesh, facets, draft.ofFacet, visibility, holes.bore, wantedDeg);

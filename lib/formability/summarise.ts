@@ -1,13 +1,28 @@
 import { FILAMENTS } from './materials/filaments';
 import { SHEETS } from './materials/sheets';
-import type { Advice, Check, CheckStatus, Report } from './report';
+import {
+  SURE_SECTIONS,
+  type Advice,
+  type Check,
+  type CheckStatus,
+  type Report,
+  type SurenessKind,
+  type SureSection,
+} from './report';
 
 const WIDTH = 100;
 const MARK: Record<CheckStatus, string> = { pass: 'ok  ', caution: 'LOOK', fail: 'FAIL', 'not-run': '--  ' };
 
 /** The report as a page that a designer reads: title, figures, then what must be settled, then the rest. */
 export function summarise(report: Report, name: string): string {
-  const lines = [title(report, name), '', ...figures(report), ''];
+  const lines = [
+    title(report, name),
+    '',
+    ...figures(report),
+    '',
+    ...lifeLines(report),
+    ...surenessLines(report),
+  ];
   const order: CheckStatus[] = ['fail', 'caution', 'pass', 'not-run'];
   for (const status of order)
     lines.push(...report.checks.filter((c) => c.status === status).flatMap(checkLines));
@@ -39,6 +54,7 @@ function figures(report: Report): string[] {
     ['pockets', `${airTraps.length}, of which ${trapped} trap air; ${vents.length} ${vents.length === 1 ? 'vent' : 'vents'}`], // prettier-ignore
     ...sheetFigures(report),
     ['layers', `cusp up to ${fixed(layers.cuspMaxMm, 3)} mm, median ${fixed(layers.cuspMedianMm, 3)} mm`],
+    ...physicsFigures(report),
     ['print', `${fixed(print.timeS / 3600, 1)} h, ${fixed(print.massG, 0)} g, ${print.layers} layers`],
   ];
   return rows.map(([key, value]) => `  ${key.padEnd(12)} ${value}`);
@@ -50,9 +66,89 @@ function sheetFigures({ sheet }: Report): [string, string][] {
   return [['sheet', `${fixed(minMm, 2)} mm at its thinnest, a twentieth below ${fixed(q05Mm, 2)} mm, ${fixed(meanMm, 2)} mm on average, ± ${marginPercent} %`]]; // prettier-ignore
 }
 
+/** Each figure of the forming itself, marked with how sure it is. */
+function physicsFigures({
+  heat,
+  skin,
+  wallsUnderPressure: hold,
+  web,
+  ventMarks,
+  sureness,
+}: Report): [string, string][] {
+  if (!heat || !skin || !hold || !web) return [];
+  const mark = (section: SureSection) => `(${SURE[sureness[section].kind]})`;
+  const { transient } = heat;
+  const rows: [string, string][] = [
+    ['heat', `${fixed(heat.contactC, 0)} °C at the first touch, ${fixed(Math.max(...heat.peakC.slice(-1), heat.contactC), 0)} °C by build-up, ${fixed(transient.peakC, 0)} °C pull by pull, holds ${fixed(heat.limitC, 0)} °C ${mark('heat')}`], // prettier-ignore
+    ['skin', skin.sagMm === null ? 'nothing carries the top' : `sinks ${figure(skin.sagMm)} mm, ${fixed(skin.limitMm, 2)} mm show ${mark('skin')}`], // prettier-ignore
+    ['walls', `give ${figure(hold.sagMm)} mm${hold.collapseBar === null ? '' : `, buckle at ${fixed(hold.collapseBar, 2)} bar`} ${mark('wallsUnderPressure')}`], // prettier-ignore
+  ];
+  const highest = ventMarks.reduce((most, one) => Math.max(most, one.heightMm), 0);
+  if (ventMarks.length > 0)
+    rows.push(['vent marks', `up to ${fixed(highest, 2)} mm high ${mark('ventMarks')}`]);
+  if (web.outside?.webs || web.neighbours?.webs) rows.push(['web', `may fold at the corners ${mark('web')}`]);
+  return rows;
+}
+
+const SURE: Record<SurenessKind, string> = {
+  source: 'from a source',
+  calibrated: 'calibrated by the studio',
+  estimate: 'estimate',
+};
+
+function lifeLines({ life }: Report): string[] {
+  if (!life) return [];
+  const rows = life.margins.map(({ way, demand, holds, unit, ratio, text }) => {
+    const left =
+      demand === null
+        ? 'not known'
+        : `${figure(demand)} of ${figure(holds)}${unit === '°' ? '' : ' '}${unit}`;
+    return `  ${way.padEnd(12)} ${text}: ${left}${ratio === null ? '' : `, ${figure(ratio)} times over`}`;
+  });
+  return ['Life of the template:', ...rows, ...wrap(life.text, WIDTH - 2).map((line) => `  ${line}`), ''];
+}
+
+function figure(value: number): string {
+  if (Math.abs(value) >= 1000) return 'over 1000';
+  return value !== 0 && Math.abs(value) < 0.001 ? 'under 0.001' : String(Number(value.toPrecision(3)));
+}
+
+/** Sections by how sure they are; why is in the report. */
+function surenessLines({ sureness, heat }: Report): string[] {
+  if (!heat) return [];
+  const of = (kind: SurenessKind) => SURE_SECTIONS.filter((section) => sureness[section].kind === kind);
+  const lines = (['source', 'calibrated', 'estimate'] as const)
+    .map((kind): [string, readonly SureSection[]] => [SURE[kind], of(kind)])
+    .filter(([, sections]) => sections.length > 0)
+    .flatMap(([label, sections]: [string, readonly SureSection[]]) =>
+      wrap(`${label}: ${sections.map((one) => SECTION[one]).join(', ')}.`, WIDTH - 2).map(
+        (line) => `  ${line}`,
+      ),
+    );
+  return ['How sure the figures are:', ...lines, ''];
+}
+
+const SECTION: Record<SureSection, string> = {
+  draft: 'draft',
+  plan: 'draw',
+  web: 'web',
+  thinning: 'thinning by rule',
+  sheet: 'sheet',
+  layers: 'layers',
+  air: 'air',
+  ventMarks: 'vent marks',
+  heat: 'heat',
+  skin: 'skin',
+  wallsUnderPressure: 'walls',
+  life: 'life',
+  print: 'print',
+};
+
 function checkLines(check: Check): string[] {
   const head = `${MARK[check.status]} ${check.id.padEnd(9)} `;
-  const text = check.remedy ? `${check.message} ${check.remedy}` : check.message;
+  const sure =
+    check.status === 'not-run' || !check.basis.sureness ? '' : ` [${SURE[check.basis.sureness.kind]}]`;
+  const text = `${check.message}${check.remedy ? ` ${check.remedy}` : ''}${sure}`;
   return wrap(text, WIDTH - head.length).map((line, i) => (i === 0 ? head : ' '.repeat(head.length)) + line);
 }
 

@@ -11,7 +11,7 @@ import type { EffectiveRecipe } from './recipe';
 import type { Point, Report } from './report';
 import type { Part } from './survey-part';
 
-type Sections = Omit<CheckInput['report'], 'schema' | 'engine' | 'input' | 'recipe'>;
+type Sections = Omit<CheckInput['report'], 'schema' | 'engine' | 'input' | 'recipe' | 'sureness'>;
 
 /** The report's sections, with places in the file's own frame in x and y. */
 export function writeSections(
@@ -93,11 +93,17 @@ export function writeSections(
 }
 
 /** Sections whose physics this version has not: the checks say why. */
-const NOT_COMPUTED: Pick<Report, 'sheet' | 'air' | 'ventMarks' | 'heat' | 'skin' | 'wallsUnderPressure'> = {
+const NOT_COMPUTED: Pick<
+  Report,
+  'sheet' | 'air' | 'ventMarks' | 'heat' | 'skin' | 'wallsUnderPressure' | 'web' | 'thinning' | 'life'
+> = {
   sheet: null,
   air: [],
   ventMarks: [],
   heat: null,
   skin: null,
   wallsUnderPressure: null,
+  web: null,
+  thinning: null,
+  life: null,
 };

@@ -26,7 +26,7 @@ export function checkAir({ recipe, report, geometryOnly }: CheckInput): Check | 
     limit,
     unit: 's',
     basis: basisOf('airClearS', recipe),
-    message: `${message(air, shut.length, slow.length, slowest, limit)}${air.length > 0 ? ` Reckoned at ${say(over, 1)} bar over the air below, discharge ${DISCHARGE}, at constant temperature.` : ''}`,
+    message: `${message(air, shut.length, slow.length, slowest, limit)}${air.length > 0 ? ` Reckoned at ${say(over, 1)} bar over the air below, discharge ${DISCHARGE}, at constant temperature.${setText(air)}` : ''}`,
     remedy:
       bad.length > 0 ? `${recipe.machine.ventedBed ? '' : CLOSED_BED}${remedy(bad, drawnFor(recipe))}` : '',
     places: bad.map((flow) => ({
@@ -44,6 +44,14 @@ function message(air: AirFlow[], shut: number, slow: number, slowest: number, li
   if (slow > 0)
     return `${pockets(slow)} of ${air.length} ${slow === 1 ? 'needs' : 'need'} up to ${say(slowest, 2)} s to clear; the sheet sets in about ${say(limit, 2)} s.`;
   return `The air leaves ${air.length === 1 ? 'the pocket' : `all ${air.length} pockets`} in ${slowest < 0.01 ? 'less than 0.01' : say(slowest, 2)} s at most.`;
+}
+
+/** A sheet that sets over a pocket leaves what has not gone yet. */
+function setText(air: AirFlow[]): string {
+  const fall = air.reduce((most, flow) => Math.max(most, flow.fallS ?? 0), 0);
+  return fall > 0.01
+    ? ` Should the sheet set first, the air's pressure falls to a tenth in ${say(fall, 2)} s.`
+    : '';
 }
 
 function remedy(bad: AirFlow[], drawnMm: number): string {

@@ -14,6 +14,11 @@ export function checkRelease({ recipe, report, walls }: CheckInput): Check {
     report.undercut.maxDepthMm > 0.01 ? 'overhangs' : '',
   ].filter(Boolean);
   const advised = reasons.length > 1 || (reasons.length === 1 && recipe.print.sanded);
+  const force = report.life?.releaseForceN ?? 0;
+  const draws =
+    force >= 1
+      ? ` Shrunk on, the part takes about ${say(force, 0)} N to draw off (derived; friction assumed); it comes by itself from ${say(report.life?.selfReleaseDeg ?? 0)}° of draft.`
+      : '';
   const has = recipe.print.releaseAgent !== 'none';
   return {
     id: 'release',
@@ -22,9 +27,11 @@ export function checkRelease({ recipe, report, walls }: CheckInput): Check {
     limit,
     unit: 'deg',
     basis: basisOf('releaseDraftDeg', recipe),
-    message: advised
-      ? `A release agent is advised for ${reasons.join(', ')}${has ? '; the recipe has one' : ''}.`
-      : 'The template should release dry.',
+    message: `${
+      advised
+        ? `A release agent is advised for ${reasons.join(', ')}${has ? '; the recipe has one' : ''}.`
+        : 'The template should release dry.'
+    }${draws}`,
     remedy: advised
       ? `${has ? 'Spray' : 'Add to the recipe: spray'} dry PTFE thinly and wipe it touch-dry before the first pull; do not overheat it, and use only food-grade agents where the part touches food.`
       : '',

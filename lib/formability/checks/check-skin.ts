@@ -17,7 +17,15 @@ export function checkSkin({ recipe, report }: CheckInput): Check | null {
   if (!skin) return null;
   const { print, machine } = recipe;
   const sag = skin.sagMm ?? Infinity;
-  const status = sag > FAIL_AT * skin.limitMm ? 'fail' : sag > skin.limitMm ? 'caution' : 'pass';
+  const breaks = skin.stressMPa !== null && skin.stressMPa > skin.strengthMPa;
+  const status = sag > FAIL_AT * skin.limitMm || breaks ? 'fail' : sag > skin.limitMm ? 'caution' : 'pass';
+  const loose = skin.sagMostMm ?? sag;
+  const turning =
+    status === 'pass' && loose > skin.limitMm
+      ? ` Should the lines let its edges turn, it would be ${sayGive(loose)} mm.`
+      : breaks
+        ? ` It is bent to ${say(skin.stressMPa ?? 0)} MPa, more than the ${say(skin.strengthMPa, 2)} MPa that it bears so warm.`
+        : '';
   const over =
     skin.spanMm === null
       ? 'With no infill the top spans the whole template'
@@ -29,7 +37,7 @@ export function checkSkin({ recipe, report }: CheckInput): Check | null {
     limit: skin.limitMm,
     unit: 'mm',
     basis: BASIS,
-    message: `${over} at ${say(machine.pressureBar, 1)} bar and ${say(skin.atC, 0)} °C, where ${FILAMENTS[print.material].name} keeps ${say(skin.modulusMPa, 0)} MPa; ${say(skin.limitMm, 2)} mm show through.`,
+    message: `${over} at ${say(machine.pressureBar, 1)} bar and ${say(skin.atC, 0)} °C, where ${FILAMENTS[print.material].name} keeps ${say(skin.modulusMPa, 0)} MPa; ${say(skin.limitMm, 2)} mm show through.${turning}`,
     remedy: status === 'pass' ? '' : remedy(skin, print.topMm, print.infillPercent),
     places: [],
   };
@@ -41,8 +49,9 @@ function remedy(
   infillPercent: number,
 ): string {
   const ways: string[] = [];
-  if (skin.topThatHoldsMm !== null && skin.topThatHoldsMm > topMm && skin.topThatHoldsMm <= 10 * topMm)
-    ways.push(`print a top of ${say(roundUp(skin.topThatHoldsMm, 0.1), 1)} mm`);
+  const top = skin.topThatHoldsMm;
+  if (top !== null && top > topMm && top <= 10 * topMm)
+    ways.push(`print a top of ${say(roundUp(top, 0.1), 1)} mm`);
   const infill = skin.infillThatHoldsPercent;
   if (infill !== null && infill > infillPercent && infill <= 100)
     ways.push(`an infill of ${say(roundUp(infill, 1), 0)} %`);

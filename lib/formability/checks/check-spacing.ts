@@ -1,6 +1,7 @@
 import type { Check } from '../report';
 import { basisOf, roundUp, say } from './basis';
 import type { CheckInput } from './check-input';
+import { withWeb } from './say-web';
 
 /** Beyond this multiple of the limit a web is to be expected, not only possible (common practice, no source). */
 const CERTAIN = 1.75;
@@ -30,11 +31,14 @@ export function checkSpacing({ recipe, report }: CheckInput): Check {
     limit,
     unit: 'height/gap',
     basis: basisOf('heightOverGapMax', recipe),
-    message: !worst
-      ? 'No two features stand apart, so no web can hang between them.'
-      : tight.length === 0
-        ? `Neighbours stand far enough apart: the tightest gap is ${gap} mm for ${height} mm of height.`
-        : `${tight.length === 1 ? 'A gap is too narrow for the height beside it' : `${tight.length} gaps are too narrow for the heights beside them`}: the sheet bridges ${gap} mm between features ${height} mm high and may fold into a web.`,
+    message: withWeb(
+      !worst
+        ? 'No two features stand apart, so no web can hang between them.'
+        : tight.length === 0
+          ? `Neighbours stand far enough apart: the tightest gap is ${gap} mm for ${height} mm of height.`
+          : `${tight.length === 1 ? 'A gap is too narrow for the height beside it' : `${tight.length} gaps are too narrow for the heights beside them`}: the sheet bridges ${gap} mm between features ${height} mm high and may fold into a web.`,
+      report.web,
+    ),
     remedy: tight.length > 0 ? `Widen the gap to ${say(roundUp(worst.pair.heightMm / limit, 0.5))} mm, or lower the shorter neighbour to ${say(worst.gapMm * limit)} mm.` : '', // prettier-ignore
     places: tight
       .slice(0, 12)

@@ -1,15 +1,16 @@
+import { KNOCK_DOWN, WALL_GIVES_MM } from '../measures/estimate-hold';
 import type { Basis, Check, WallsUnderPressureReport } from '../report';
 import { roundUp, say, sayGive } from './basis';
 import type { CheckInput } from './check-input';
 
 const BASIS: Basis = {
   source:
-    'clamped plates (Timoshenko and Woinowsky-Krieger), ring collapse E t³ / 4 (1 − ν²) R³ (Timoshenko and Gere) with 0.4 of the ideal; limit of sag and knock-down: common practice, no source',
+    'clamped plates (Timoshenko and Woinowsky-Krieger), ring collapse E t³ / 4 (1 − ν²) R³ (Timoshenko and Gere) with 0.4 of the ideal, infill walls as long plates in compression with the same; limit of sag and knock-down: common practice, no source',
   kind: 'computed',
 };
-/** A wall that gives more than this moves the part's size, mm (common practice, no source). */
-export const WALL_GIVES_MM = 0.1;
 const SAFE = 1.5;
+/** A wall so many times as thick is another template. */
+const MOST_SHARE = 10;
 
 /** Will the walls give under pressure? */
 export function checkWalls({ recipe, report }: CheckInput): Check | null {
@@ -20,8 +21,15 @@ export function checkWalls({ recipe, report }: CheckInput): Check | null {
   const near = hold.collapseBar !== null && !collapses && hold.collapseBar < SAFE * machine.pressureBar;
   const breaks = hold.stressMPa > hold.strengthMPa;
   const gives = hold.sagMm > WALL_GIVES_MM;
+  // Between the ideal and what printed walls reach of it, they may hold or not.
+  const load = hold.infill ? hold.infill.stressMPa / hold.infill.bucklesMPa : 0;
+  const crushes = load * KNOCK_DOWN > 1;
   const status =
-    collapses || breaks || hold.sagMm > 2 * WALL_GIVES_MM ? 'fail' : gives || near ? 'caution' : 'pass';
+    collapses || breaks || crushes || hold.sagMm > 2 * WALL_GIVES_MM
+      ? 'fail'
+      : gives || near || load > 1
+        ? 'caution'
+        : 'pass';
   return {
     id: 'walls',
     status,
@@ -30,7 +38,7 @@ export function checkWalls({ recipe, report }: CheckInput): Check | null {
       : { measured: hold.sagMm, limit: WALL_GIVES_MM, unit: 'mm' }),
     basis: BASIS,
     message: message(hold, machine.pressureBar),
-    remedy: status === 'pass' ? '' : remedy(hold, machine.pressureBar),
+    remedy: status === 'pass' ? '' : remedy(hold, machine.pressureBar, recipe.print.infillPercent),
     places: [],
   };
 }
@@ -38,21 +46,35 @@ export function checkWalls({ recipe, report }: CheckInput): Check | null {
 function message(hold: WallsUnderPressureReport, bar: number): string {
   const sag = sayGive(hold.sagMm);
   const wall = `${say(hold.wallMm, 2)} mm walls`;
-  if (!hold.empty) return `Between infill lines the ${wall} give ${sag} mm under ${say(bar, 1)} bar.`;
+  if (!hold.empty)
+    return `Between infill lines the ${wall} give ${sag} mm under ${say(bar, 1)} bar.${ribs(hold)}`;
   return `Empty inside, its ${wall} give ${sag} mm under ${say(bar, 1)} bar and would buckle at about ${say(hold.collapseBar ?? 0, 2)} bar.`;
 }
 
-function remedy(hold: WallsUnderPressureReport, bar: number): string {
+function ribs({ infill }: WallsUnderPressureReport): string {
+  if (!infill) return '';
+  const load = `The infill's own walls bear ${say(infill.stressMPa)} MPa`;
+  return infill.stressMPa > infill.bucklesMPa
+    ? ` ${load} and buckle at about ${say(infill.bucklesMPa, 2)} MPa.`
+    : ` ${load}, and would buckle at about ${say(infill.bucklesMPa, 0)} MPa.`;
+}
+
+function remedy(hold: WallsUnderPressureReport, bar: number, infillPercent: number): string {
   // Sag and collapse go with the third power of the thickness, stress with the second.
   const share = Math.max(
     (hold.sagMm / WALL_GIVES_MM) ** (1 / 3),
     hold.collapseBar === null ? 0 : ((SAFE * bar) / hold.collapseBar) ** (1 / 3),
     Math.sqrt(hold.stressMPa / hold.strengthMPa),
   );
-  const wall = roundUp(hold.wallMm * share, 0.1);
-  const ways = [`Make the walls ${say(wall, 1)} mm thick`];
-  if (hold.empty)
+  const ways =
+    share > 1 && share <= MOST_SHARE
+      ? [`make the walls ${say(roundUp(hold.wallMm * share, 0.1), 1)} mm thick`]
+      : [];
+  const infill = hold.infillThatHoldsPercent;
+  if (hold.empty && share <= MOST_SHARE)
     ways.push('rib or fill it: 25 to 50 % of infill carries the walls (common practice, no source)');
-  else ways.push('more infill');
-  return `${ways.join(', or ')}.`;
+  else if (infill !== null && infill > infillPercent)
+    ways.push(`print an infill of ${say(roundUp(infill, 1), 0)} %`);
+  if (ways.length === 0) return 'It is too soft there: first mend the heat, then the walls follow.';
+  return `${ways.join(', or ').replace(/^./, (first) => first.toUpperCase())}.`;
 }

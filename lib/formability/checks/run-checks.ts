@@ -1,3 +1,4 @@
+import { ownHoles, sureOfCheck } from '../judge-sureness';
 import { CHECK_IDS, type Check, type CheckId } from '../report';
 import { checkAir } from './check-air';
 import { checkDraft } from './check-draft';
@@ -43,11 +44,12 @@ const CHECKS: Record<CheckId, (input: CheckInput) => Check | null> = {
   print: checkPrint,
 };
 
-/** Every check of the contract, in its order. */
+/** Every check of the contract, in its order, each saying how sure it is. */
 export function runChecks(input: CheckInput): Check[] {
   return CHECK_IDS.map((id) => {
     const check = CHECKS[id](input) ?? notRun(id, input.geometryOnly);
     if (!check) throw new Error(`check ${id} was not made and says no reason`);
-    return check;
+    const sureness = sureOfCheck(id, check.basis, input.report.sureness, ownHoles(input.recipe));
+    return { ...check, basis: { ...check.basis, sureness } };
   });
 }

@@ -1,6 +1,6 @@
 import { materialValue as v, type MaterialValue, type Mark } from './value';
 
-/** A generic sheet polymer. Temperatures °C, density kg/m³, conductivity W/mK, heat capacity J/kgK (mean to forming). */
+/** A generic sheet polymer. Temperatures °C, modulus at room temperature MPa, density kg/m³, conductivity W/mK, heat capacity J/kgK (mean to forming). */
 export interface SheetMaterial {
   name: string;
   glassC: MaterialValue;
@@ -9,6 +9,7 @@ export interface SheetMaterial {
   upperC: MaterialValue;
   demouldC: MaterialValue;
   shrinkPercent: MaterialValue;
+  modulusMPa: MaterialValue;
   densityKgM3: MaterialValue;
   conductivityWmK: MaterialValue;
   heatJkgK: MaterialValue;
@@ -24,6 +25,7 @@ interface Row {
   upper: Range;
   demould: Range;
   shrink: Range;
+  e: Range;
   rho: number;
   k: number;
   c: number;
@@ -41,6 +43,7 @@ function sheet(row: Row): SheetMaterial {
     upperC: v('°C', mark, ...row.upper),
     demouldC: v('°C', mark, ...row.demould),
     shrinkPercent: v('%', 'confirmed', ...row.shrink),
+    modulusMPa: v('MPa', 'memory', ...row.e),
     densityKgM3: v('kg/m³', 'confirmed', row.rho),
     conductivityWmK: v('W/mK', 'confirmed', row.k),
     heatJkgK: v('J/kgK', 'memory', row.c),
@@ -50,22 +53,22 @@ function sheet(row: Row): SheetMaterial {
 
 /**
  * Generic sheets. Forming windows are the usual handbook table (mould and set temperature, lower limit, core,
- * upper limit), from memory except the ABS row; density and conductivity agree with R. J. Crawford, Plastics
- * Engineering, 3rd ed. 1998, Table 1.8; shrinkage with two published tables (injection values). A sheet maker's
- * own data come first.
+ * upper limit), from memory except the ABS row; moduli are usual datasheet ranges, from memory; density and
+ * conductivity agree with R. J. Crawford, Plastics Engineering, 3rd ed. 1998, Table 1.8; shrinkage with two published
+ * tables (injection values). A sheet maker's own data come first.
  */
 export const SHEETS = {
-  hips: sheet({ name: 'HIPS', glass: [95, 100], lower: [127, 127], core: [146, 152], upper: [182, 182], demould: [85, 85], shrink: [0.3, 0.8], rho: 1050, k: 0.16, c: 1900 }), // prettier-ignore
-  petg: sheet({ name: 'PETG', glass: [78, 82], lower: [121, 121], core: [140, 149], upper: [166, 166], demould: [70, 77], shrink: [0.2, 0.6], rho: 1270, k: 0.2, c: 1750, note: 'Dry before forming or accept bubbles (common practice).' }), // prettier-ignore
-  apet: sheet({ name: 'APET', glass: [73, 80], lower: [105, 120], core: [120, 150], upper: [165, 165], demould: [70, 70], shrink: [0.2, 0.5], rho: 1335, k: 0.24, c: 1750, note: 'Hazes when held long above about 120 to 130 °C (from memory).' }), // prettier-ignore
-  pvc: sheet({ name: 'PVC, rigid', glass: [75, 85], lower: [100, 104], core: [135, 141], upper: [149, 155], demould: [60, 66], shrink: [0.2, 0.5], rho: 1380, k: 0.17, c: 1500, note: 'Overheated PVC gives off hydrogen chloride: local exhaust.' }), // prettier-ignore
-  abs: sheet({ name: 'ABS', glass: [100, 110], lower: [127, 127], core: [149, 154], upper: [182, 182], demould: [85, 85], shrink: [0.3, 0.8], rho: 1050, k: 0.17, c: 2000, temperatures: 'confirmed' }), // prettier-ignore
-  pp: sheet({ name: 'PP', glass: [-10, -10], lower: [129, 143], core: [154, 163], upper: [166, 166], demould: [88, 88], shrink: [1, 2.5], rho: 905, k: 0.2, c: 2400, note: 'Narrow forming window, 8 to 15 K below melting (from memory).' }), // prettier-ignore
-  pc: sheet({ name: 'PC', glass: [147, 150], lower: [168, 168], core: [188, 191], upper: [204, 204], demould: [138, 138], shrink: [0.5, 0.8], rho: 1200, k: 0.2, c: 1900, note: 'Dry before forming or accept bubbles (common practice).' }), // prettier-ignore
-  pmma: sheet({ name: 'PMMA', glass: [100, 110], lower: [149, 149], core: [175, 177], upper: [193, 193], demould: [85, 85], shrink: [0.2, 0.8], rho: 1190, k: 0.19, c: 2000, note: 'Dry before forming or accept bubbles (common practice).' }), // prettier-ignore
-  hdpe: sheet({ name: 'HDPE', glass: [-120, -120], lower: [127, 127], core: [138, 146], upper: [166, 182], demould: [82, 82], shrink: [1.5, 3.5], rho: 955, k: 0.4, c: 2700 }), // prettier-ignore
-  ldpe: sheet({ name: 'LDPE', glass: [-120, -120], lower: [110, 110], core: [118, 130], upper: [145, 145], demould: [60, 60], shrink: [1.5, 3.5], rho: 920, k: 0.33, c: 2700 }), // prettier-ignore
-  pla: sheet({ name: 'PLA', glass: [55, 62], lower: [75, 80], core: [90, 110], upper: [125, 135], demould: [45, 50], shrink: [0.2, 0.5], rho: 1240, k: 0.17, c: 1800, note: 'Formed parts serve up to about 50 °C (from memory).' }), // prettier-ignore
+  hips: sheet({ name: 'HIPS', glass: [95, 100], lower: [127, 127], core: [146, 152], upper: [182, 182], demould: [85, 85], shrink: [0.3, 0.8], e: [1600, 2400], rho: 1050, k: 0.16, c: 1900 }), // prettier-ignore
+  petg: sheet({ name: 'PETG', glass: [78, 82], lower: [121, 121], core: [140, 149], upper: [166, 166], demould: [70, 77], shrink: [0.2, 0.6], e: [1700, 2100], rho: 1270, k: 0.2, c: 1750, note: 'Dry before forming or accept bubbles (common practice).' }), // prettier-ignore
+  apet: sheet({ name: 'APET', glass: [73, 80], lower: [105, 120], core: [120, 150], upper: [165, 165], demould: [70, 70], shrink: [0.2, 0.5], e: [2000, 2800], rho: 1335, k: 0.24, c: 1750, note: 'Hazes when held long above about 120 to 130 °C (from memory).' }), // prettier-ignore
+  pvc: sheet({ name: 'PVC, rigid', glass: [75, 85], lower: [100, 104], core: [135, 141], upper: [149, 155], demould: [60, 66], shrink: [0.2, 0.5], e: [2400, 3300], rho: 1380, k: 0.17, c: 1500, note: 'Overheated PVC gives off hydrogen chloride: local exhaust.' }), // prettier-ignore
+  abs: sheet({ name: 'ABS', glass: [100, 110], lower: [127, 127], core: [149, 154], upper: [182, 182], demould: [85, 85], shrink: [0.3, 0.8], e: [1700, 2300], rho: 1050, k: 0.17, c: 2000, temperatures: 'confirmed' }), // prettier-ignore
+  pp: sheet({ name: 'PP', glass: [-10, -10], lower: [129, 143], core: [154, 163], upper: [166, 166], demould: [88, 88], shrink: [1, 2.5], e: [1100, 1600], rho: 905, k: 0.2, c: 2400, note: 'Narrow forming window, 8 to 15 K below melting (from memory).' }), // prettier-ignore
+  pc: sheet({ name: 'PC', glass: [147, 150], lower: [168, 168], core: [188, 191], upper: [204, 204], demould: [138, 138], shrink: [0.5, 0.8], e: [2000, 2400], rho: 1200, k: 0.2, c: 1900, note: 'Dry before forming or accept bubbles (common practice).' }), // prettier-ignore
+  pmma: sheet({ name: 'PMMA', glass: [100, 110], lower: [149, 149], core: [175, 177], upper: [193, 193], demould: [85, 85], shrink: [0.2, 0.8], e: [2700, 3300], rho: 1190, k: 0.19, c: 2000, note: 'Dry before forming or accept bubbles (common practice).' }), // prettier-ignore
+  hdpe: sheet({ name: 'HDPE', glass: [-120, -120], lower: [127, 127], core: [138, 146], upper: [166, 182], demould: [82, 82], shrink: [1.5, 3.5], e: [700, 1200], rho: 955, k: 0.4, c: 2700 }), // prettier-ignore
+  ldpe: sheet({ name: 'LDPE', glass: [-120, -120], lower: [110, 110], core: [118, 130], upper: [145, 145], demould: [60, 60], shrink: [1.5, 3.5], e: [150, 350], rho: 920, k: 0.33, c: 2700 }), // prettier-ignore
+  pla: sheet({ name: 'PLA', glass: [55, 62], lower: [75, 80], core: [90, 110], upper: [125, 135], demould: [45, 50], shrink: [0.2, 0.5], e: [2300, 3500], rho: 1240, k: 0.17, c: 1800, note: 'Formed parts serve up to about 50 °C (from memory).' }), // prettier-ignore
 } satisfies Record<string, SheetMaterial>;
 
 export type SheetId = keyof typeof SHEETS;

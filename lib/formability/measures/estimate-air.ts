@@ -1,5 +1,12 @@
 import { cellAt, type Grid } from '../dexel/grid';
-import { ATMOSPHERE_PA, boreFlow, expelTimeS, type Flow, type Pressures } from '../physics/gas-flow';
+import {
+  ATMOSPHERE_PA,
+  boreFlow,
+  evacuationS,
+  expelTimeS,
+  type Flow,
+  type Pressures,
+} from '../physics/gas-flow';
 import type { EffectiveRecipe } from '../recipe';
 import type { AirFlow, AirTrap, Vent } from '../report';
 import { placeVents } from './place-vents';
@@ -10,6 +17,8 @@ export const DISCHARGE = 0.6;
 const OVER_PA = 100_000;
 /** A bore narrower than this is no vent, whatever the hole model says, mm. */
 const SMALLEST_MM = 0.1;
+/** Share of the driving pressure that is left when the air counts as gone. */
+const LEFT = 0.1;
 /** No list of places is longer. */
 const MOST_PLACES = 24;
 
@@ -78,9 +87,27 @@ function flowOf(
     trap: id,
     ventAreaMm2: open.reduce((sum, vent) => sum + (Math.PI / 4) * vent.printedMm ** 2, 0),
     clearS: takes,
+    fallS: fallTime(trap, open, at),
     regime: (widest ?? one).regime,
     ventsNeeded,
     ventDiameterMm: smallest,
     ventPlaces: placeVents(surface, grid, floor, trap.spillZMm, Math.min(ventsNeeded, MOST_PLACES)),
   };
+}
+
+/** The pocket as a vessel that the set sheet closes: the vents together, as sharp holes. */
+function fallTime(
+  trap: AirTrap,
+  open: Vent[],
+  { upstreamPa, downstreamPa, kelvin }: Pressures,
+): number | null {
+  const areaMm2 = open.reduce((sum, vent) => sum + (Math.PI / 4) * vent.printedMm ** 2, 0);
+  if (areaMm2 === 0 || upstreamPa <= downstreamPa) return null;
+  const toPa = downstreamPa + LEFT * (upstreamPa - downstreamPa);
+  return evacuationS(trap.volumeMm3, areaMm2, DISCHARGE, {
+    fromPa: upstreamPa,
+    toPa,
+    againstPa: downstreamPa,
+    kelvin,
+  });
 }

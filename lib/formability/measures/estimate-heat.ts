@@ -1,6 +1,6 @@
 import { FILAMENT_IDS, FILAMENTS, type FilamentId, type FilamentMaterial } from '../materials/filaments';
 import { SHEETS } from '../materials/sheets';
-import { contactC, type ThermalBody } from '../physics/conduction';
+import { contactC, coolingTimeS, type ThermalBody } from '../physics/conduction';
 import { halfSpaceRiseK, heatOfPull, lumpedRiseK, type Cycling } from '../physics/cycle-heating';
 import type { EffectiveRecipe } from '../recipe';
 import type { HeatReport } from '../report';
@@ -26,20 +26,11 @@ export function softeningLimitC(material: FilamentMaterial): number {
  * air (the infill behind it carries hardly any); a solid print is a half-space that keeps all of it, an upper bound.
  * After each pull the larger of contact and build-up; never hotter than the sheet.
  */
-export function estimateHeat(recipe: EffectiveRecipe): HeatReport {
+export function estimateHeat(recipe: EffectiveRecipe): Omit<HeatReport, 'transient'> {
   const { run, sheet, print } = recipe;
   const filament = FILAMENTS[print.material];
   const polymer = SHEETS[sheet.material];
-  const tool: ThermalBody = {
-    conductivityWmK: filament.conductivityWmK.value,
-    densityKgM3: filament.densityGcm3.value * 1000,
-    heatJkgK: filament.heatJkgK.value,
-  };
-  const body: ThermalBody = {
-    conductivityWmK: polymer.conductivityWmK.value,
-    densityKgM3: polymer.densityKgM3.value,
-    heatJkgK: polymer.heatJkgK.value,
-  };
+  const { tool, body } = thermalBodies(recipe);
   const contact = contactC(body, sheet.formingC, tool, run.ambientC);
   const limitC = softeningLimitC(filament);
   const heatJm2 = heatOfPull(
@@ -50,6 +41,7 @@ export function estimateHeat(recipe: EffectiveRecipe): HeatReport {
   );
   const cycling: Cycling = { tool, shellMm: print.shellMm, heatJm2, cycleS: run.cycleS };
   const model = print.infillPercent < 100 ? 'lumped' : '1-d';
+  const cold = run.ambientC < polymer.demouldC.value && sheet.formingC > polymer.demouldC.value;
   const peakAfter = (at: Cycling, pull: number) => {
     const rise = model === 'lumped' ? lumpedRiseK(at, pull) : halfSpaceRiseK(at, pull);
     return Math.min(sheet.formingC, Math.max(contact, run.ambientC + rise));
@@ -65,6 +57,31 @@ export function estimateHeat(recipe: EffectiveRecipe): HeatReport {
     pullsBeforeRest: tooHot < 0 ? run.pulls : tooHot,
     cycleThatHoldsS: cycleThatHolds(cycling, (at) => peakAfter(at, run.pulls) <= limitC),
     model,
+    coolS: cold
+      ? coolingTimeS(body, sheet.gaugeMm, {
+          sheetC: sheet.formingC,
+          toolC: run.ambientC,
+          demouldC: polymer.demouldC.value,
+        })
+      : null,
+  };
+}
+
+/** Template and sheet as bodies that heat flows through. */
+export function thermalBodies({ sheet, print }: EffectiveRecipe): { tool: ThermalBody; body: ThermalBody } {
+  const filament = FILAMENTS[print.material];
+  const polymer = SHEETS[sheet.material];
+  return {
+    tool: {
+      conductivityWmK: filament.conductivityWmK.value,
+      densityKgM3: filament.densityGcm3.value * 1000,
+      heatJkgK: filament.heatJkgK.value,
+    },
+    body: {
+      conductivityWmK: polymer.conductivityWmK.value,
+      densityKgM3: polymer.densityKgM3.value,
+      heatJkgK: polymer.heatJkgK.value,
+    },
   };
 }
 
@@ -97,7 +114,7 @@ function cycleThatHolds(cycling: Cycling, holds: (at: Cycling) => boolean): numb
 }
 
 /** Hottest surface of the planned pulls, °C. */
-export function hottestC(heat: HeatReport): number {
+export function hottestC(heat: Pick<HeatReport, 'peakC' | 'contactC'>): number {
   return heat.peakC.reduce((most, peak) => Math.max(most, peak), heat.contactC);
 }
 

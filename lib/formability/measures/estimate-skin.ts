@@ -1,7 +1,17 @@
-import { FILAMENTS } from '../materials/filaments';
+import { FILAMENTS, type FilamentMaterial } from '../materials/filaments';
 import { densityForSpan, infillSpanMm } from '../physics/infill';
 import { modulusAt } from '../physics/modulus-at';
-import { clampedDisc, clampedPlate, clampedStrip, type Plate, type PlateAnswer } from '../physics/plates';
+import {
+  clampedDisc,
+  clampedPlate,
+  clampedStrip,
+  supportedDisc,
+  supportedRectangle,
+  supportedStrip,
+  supportedTriangle,
+  type Plate,
+  type PlateAnswer,
+} from '../physics/plates';
 import type { EffectiveRecipe } from '../recipe';
 import type { HeatReport, SkinReport } from '../report';
 import { hottestC } from './estimate-heat';
@@ -34,30 +44,58 @@ export function overInfill(
   }
 }
 
+/**
+ * The same where the lines hold the skin up but let its edges turn: the most that it can sag. Clamped is right for an even
+ * load on a skin that runs on over the next cells; the truth of a printed one lies between. A triangle is 1.5 spans high.
+ */
+function overYieldingInfill(
+  plate: Plate,
+  pattern: EffectiveRecipe['print']['infillPattern'],
+  spanMm: number,
+): PlateAnswer {
+  switch (pattern) {
+    case 'lines':
+      return supportedStrip(plate, spanMm);
+    case 'grid':
+      return supportedRectangle(plate, spanMm, spanMm);
+    case 'triangles':
+      return supportedTriangle(plate, 1.5 * spanMm);
+    case 'gyroid':
+      return supportedDisc(plate, spanMm / 2);
+  }
+}
+
+/** Sag that shows in a sheet of a gauge, mm. */
+export function showsMm(gaugeMm: number): number {
+  return gaugeMm < THICK_GAUGE_MM ? SHOWS_THIN_MM : SHOWS_THICK_MM;
+}
+
 /** How far the top sinks between the lines of the infill under forming pressure, at the hottest pull. */
-export function estimateSkin(recipe: EffectiveRecipe, heat: HeatReport): SkinReport {
+export function estimateSkin(
+  recipe: EffectiveRecipe,
+  heat: Pick<HeatReport, 'peakC' | 'contactC'>,
+): SkinReport {
   const { print, machine, sheet } = recipe;
   const atC = hottestC(heat);
-  const modulusMPa = modulusAt(FILAMENTS[print.material], atC);
-  const limitMm = sheet.gaugeMm < THICK_GAUGE_MM ? SHOWS_THIN_MM : SHOWS_THICK_MM;
+  const filament = FILAMENTS[print.material];
+  const modulusMPa = modulusAt(filament, atC);
+  const limitMm = showsMm(sheet.gaugeMm);
   const density = print.infillPercent / 100;
   const spanMm = infillSpanMm(print.infillPattern, print.lineMm, density);
-  const at = (thicknessMm: number, span: number) =>
-    overInfill(
-      {
-        thicknessMm,
-        pressureMPa: machine.pressureBar * MPA_PER_BAR,
-        modulusMPa: modulusMPa / CREEP,
-        poisson: POISSON,
-      },
-      print.infillPattern,
-      span,
-    );
-  const spanned = Number.isFinite(spanMm)
-    ? at(print.topMm, spanMm)
-    : { sagMm: Infinity, stressMPa: Infinity };
-  // Sag goes with span⁴ / thickness³.
-  const spanThatHolds = spanMm * (limitMm / spanned.sagMm) ** 0.25;
+  const plate: Plate = {
+    thicknessMm: print.topMm,
+    pressureMPa: machine.pressureBar * MPA_PER_BAR,
+    modulusMPa: modulusMPa / CREEP,
+    poisson: POISSON,
+  };
+  const carried = Number.isFinite(spanMm);
+  const endless = { sagMm: Infinity, stressMPa: Infinity };
+  const spanned = carried ? overInfill(plate, print.infillPattern, spanMm) : endless;
+  const yielding = carried && spanMm > 0 ? overYieldingInfill(plate, print.infillPattern, spanMm) : spanned;
+  const strengthMPa = strengthAt(filament, 'strengthXyMPa', atC);
+  // Sag goes with span⁴ / thickness³, stress with span² / thickness².
+  const bent = spanned.stressMPa / strengthMPa;
+  const spanThatHolds = spanMm * Math.min((limitMm / spanned.sagMm) ** 0.25, bent ** -0.5);
   return {
     spanMm: finite(spanMm),
     modulusMPa,
@@ -65,12 +103,24 @@ export function estimateSkin(recipe: EffectiveRecipe, heat: HeatReport): SkinRep
     sagMm: finite(spanned.sagMm),
     stressMPa: finite(spanned.stressMPa),
     limitMm,
-    topThatHoldsMm: finite(print.topMm * (spanned.sagMm / limitMm) ** (1 / 3)),
+    creepFactor: CREEP,
+    sagMostMm: finite(yielding.sagMm),
+    strengthMPa,
+    topThatHoldsMm: finite(print.topMm * Math.max((spanned.sagMm / limitMm) ** (1 / 3), bent ** 0.5)),
     infillThatHoldsPercent:
       density > 0 && spanThatHolds > 0
         ? 100 * densityForSpan(print.infillPattern, print.lineMm, spanThatHolds)
         : null,
   };
+}
+
+/** Strength of a print at a temperature, MPa: falls as its modulus does (assumed, no source). */
+export function strengthAt(
+  filament: FilamentMaterial,
+  direction: 'strengthXyMPa' | 'strengthZMPa',
+  celsius: number,
+): number {
+  return filament[direction].value * Math.min(1, modulusAt(filament, celsius) / filament.modulusMPa.value);
 }
 
 /** JSON has no infinity: an empty template has no span at all. */

@@ -1,4 +1,5 @@
 import type { Facets } from '../mesh/measure-facets';
+import { nubDraftDeg } from '../physics/layer-surface';
 import type { LayersReport } from '../report';
 import { DEG, VERTICAL_DEG } from './thresholds';
 
@@ -35,13 +36,9 @@ export function measureLayers(facets: Facets, layerMm: number, grooveMm: number)
     cuspMaxMm: layerMm * most,
     cuspMedianMm: layerMm * within,
     treadMinMm: total > 0 ? layerMm * Math.tan(Math.asin(least)) : 0,
-    layerDraftDeg: layerDraftDeg(layerMm, grooveMm),
+    layerDraftDeg: nubDraftDeg(layerMm, grooveMm),
+    show: null,
   };
-}
-
-/** Draft at which a nub of the groove's depth clears the next bead, degrees. */
-export function layerDraftDeg(layerMm: number, grooveMm: number): number {
-  return Math.atan(grooveMm / layerMm) * DEG;
 }
 
 /** The exact area-weighted median of n_z inside its bucket. */

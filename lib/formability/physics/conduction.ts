@@ -59,16 +59,18 @@ export function toolC(contact: FiniteSheet, timeS: number, depthMm = 0): number 
 }
 
 /**
- * Time until the free side of a sheet on a cold tool has fallen to `demouldC`; one term of the series, good from Fourier
- * number 0.1 on. @throws RangeError where the tool is not colder than the sheet must become.
+ * Time until the free side of a sheet on a cold tool, whose surface stays as cold, has fallen to `demouldC`, s; one term of
+ * the series, good from Fourier number 0.1 on. @throws RangeError where the tool is not colder than the sheet must become.
  */
 export function coolingTimeS(
   sheet: ThermalBody,
   thicknessMm: number,
   at: { sheetC: number; toolC: number; demouldC: number },
 ): number {
-  if (at.toolC >= at.demouldC)
+  if (!(at.toolC < at.demouldC))
     throw new RangeError('a tool that is not colder than the sheet at demoulding does not cool it');
+  if (!(at.sheetC > at.demouldC)) return 0;
+  if (!(thicknessMm > 0)) throw new RangeError(`a sheet of ${thicknessMm} mm: give a thickness above 0`);
   const length = thicknessMm / 1000;
   const ratio = ((4 / Math.PI) * (at.sheetC - at.toolC)) / (at.demouldC - at.toolC);
   return ((4 * length * length) / (Math.PI ** 2 * diffusivity(sheet))) * Math.log(ratio);

@@ -64,13 +64,41 @@ export function expelTimeS(volumeMm3: number, kgS: number, at: Pressures): numbe
   return (volumeMm3 * 1e-9 * at.upstreamPa) / (AIR.gasJkgK * at.kelvin) / kgS;
 }
 
-/** Time for a fixed volume to fall from one pressure to another through a choked orifice, s: τ ln(p₁/p₂). */
-export function chokedEvacuationS(
+/** Simpson's rule over the subcritical part of a fall. */
+const FALL_STEPS = 64;
+
+/**
+ * Time for the air in a fixed volume to fall from one pressure to another against a third, s, at constant temperature
+ * through holes: choked, it is τ ln(p₁/p₂) with τ = V / (C_d A C* √(R T)); below the critical ratio integrated.
+ * @param areaMm2 of all holes together
+ * @throws RangeError where the pressure cannot fall so far
+ */
+export function evacuationS(
   volumeMm3: number,
   areaMm2: number,
   discharge: number,
-  { fromPa, toPa, kelvin }: { fromPa: number; toPa: number; kelvin: number },
+  { fromPa, toPa, againstPa, kelvin }: { fromPa: number; toPa: number; againstPa: number; kelvin: number },
 ): number {
-  const speed = flowFunction(0) * Math.sqrt(AIR.gasJkgK * kelvin);
-  return ((volumeMm3 * 1e-9) / (discharge * areaMm2 * 1e-6 * speed)) * Math.log(fromPa / toPa);
+  if (!(fromPa >= toPa && toPa > againstPa && againstPa >= 0))
+    throw new RangeError(
+      `pressure falls from ${fromPa} to ${toPa} Pa against ${againstPa} Pa: each must be above the next`,
+    );
+  const speed = Math.sqrt(AIR.gasJkgK * kelvin);
+  const tau = (volumeMm3 * 1e-9) / (discharge * areaMm2 * 1e-6 * speed);
+  const chokedTo = Math.min(fromPa, Math.max(toPa, againstPa / CRITICAL_RATIO));
+  const choked = Math.log(fromPa / chokedTo) / flowFunction(0);
+  if (chokedTo <= toPa) return tau * choked;
+  // dt = −τ dp / (p ψ); in u = √(1 − against/p), since ψ rises like that root from nothing.
+  const root = (pa: number) => Math.sqrt(1 - againstPa / pa);
+  const [from, to] = [root(toPa), root(chokedTo)];
+  const step = (to - from) / FALL_STEPS;
+  let sum = 0;
+  for (let k = 0; k <= FALL_STEPS; k++) {
+    const u = from + k * step;
+    const ratio = 1 - u * u;
+    // dp / p = 2 u du / (1 − u²).
+    const slope = (2 * u) / (ratio * flowFunction(ratio));
+    sum += slope * (k === 0 || k === FALL_STEPS ? 1 : k & 1 ? 4 : 2);
+  }
+  return tau * (choked + (sum * step) / 3);
 }

@@ -103,9 +103,11 @@ function rungeKutta(
   return y.map((value, i) => value + (step / 6) * (k1[i] + 2 * k2[i] + 2 * k3[i] + k4[i]));
 }
 
-/** Height over radius of the disc at a pressure p a / (C₁ t₀); null above the highest pressure it can hold. */
-export function heightAtPressure(pressure: number): number | null {
-  if (pressure <= 0) return 0;
+const FLAT: Inflated = { height: 0, pressure: 0, poleStretch: 1, poleThickness: 1, edgeThickness: 1 };
+
+/** The disc at a pressure p a / (C₁ t₀), to four digits; null above the highest pressure it can hold. */
+export function stateAtPressure(pressure: number): Inflated | null {
+  if (pressure <= 0) return FLAT;
   if (pressure >= LIMIT_PRESSURE) return null;
   // False position, Illinois variant, on a pressure that rises with the stretch.
   let [low, high] = [1 + 1e-9, LIMIT_STRETCH];
@@ -125,5 +127,5 @@ export function heightAtPressure(pressure: number): number | null {
       side = -1;
     }
   }
-  return inflateMembrane(stretch, COARSE).height;
+  return inflateMembrane(stretch, COARSE);
 }

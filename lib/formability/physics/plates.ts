@@ -16,6 +16,10 @@ export interface Plate {
 
 /** Flexural rigidity E h³ / 12 (1 − ν²), N·mm. */
 export function rigidity({ thicknessMm: h, modulusMPa: e, poisson: nu }: Plate): number {
+  if (!(h > 0) || !(e > 0) || !(nu > -1 && nu <= 0.5))
+    throw new RangeError(
+      `a plate of ${h} mm, ${e} MPa, Poisson's ratio ${nu}: give a thickness and modulus above 0 and a ratio of −1 to 0.5`,
+    );
   return (e * h ** 3) / (12 * (1 - nu * nu));
 }
 
@@ -28,6 +32,15 @@ function stressOf(moment: number, h: number): number {
 export function clampedStrip(plate: Plate, spanMm: number): PlateAnswer {
   const { pressureMPa: q, thicknessMm: h } = plate;
   return { sagMm: (q * spanMm ** 4) / (384 * rigidity(plate)), stressMPa: (q * spanMm ** 2) / (2 * h * h) };
+}
+
+/** Strip simply supported along both sides, span mm. Same source. */
+export function supportedStrip(plate: Plate, spanMm: number): PlateAnswer {
+  const { pressureMPa: q, thicknessMm: h } = plate;
+  return {
+    sagMm: (5 * q * spanMm ** 4) / (384 * rigidity(plate)),
+    stressMPa: stressOf((q * spanMm ** 2) / 8, h),
+  };
 }
 
 /** Disc of a radius in mm, clamped at its rim. Same source, chapter 3. */
@@ -57,6 +70,9 @@ export function supportedTriangle(plate: Plate, heightMm: number): PlateAnswer {
   };
 }
 
+/** Terms of Navier's series either way: sag to nine digits, moment to five. */
+const NAVIER = 200;
+
 /** Rectangle simply supported on all sides (Navier's double series), sides in mm. */
 export function supportedRectangle(plate: Plate, sideMm: number, otherMm: number): PlateAnswer {
   const { pressureMPa: q, thicknessMm: h, poisson: nu } = plate;
@@ -64,8 +80,8 @@ export function supportedRectangle(plate: Plate, sideMm: number, otherMm: number
   const b = Math.max(sideMm, otherMm);
   let sag = 0;
   let mx = 0;
-  for (let m = 1; m < 400; m += 2) {
-    for (let n = 1; n < 400; n += 2) {
+  for (let m = 1; m < NAVIER; m += 2) {
+    for (let n = 1; n < NAVIER; n += 2) {
       const [x, y] = [(m * m) / (a * a), (n * n) / (b * b)];
       const sign = ((m + n) / 2) % 2 === 1 ? 1 : -1;
       const shape = sign / (m * n * (x + y) ** 2);

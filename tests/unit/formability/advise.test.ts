@@ -6,7 +6,7 @@ import { reportOn } from './run-engine';
 
 const coarse = { grid: { cellMm: 0.6 } };
 const mesh = frustum(120, 90, 40, 8);
-const weak: RecipeInput = { ...coarse, print: { material: 'petg', topMm: 1, infillPercent: 10 } };
+const weak: RecipeInput = { ...coarse, print: { material: 'pc', topMm: 1, infillPercent: 10 } };
 const rank: Record<CheckStatus, number> = { fail: 2, caution: 1, pass: 0, 'not-run': 0 };
 
 function statuses(report: Report): Map<CheckId, number> {

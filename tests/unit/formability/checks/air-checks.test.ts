@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import type { RecipeInput } from '@/lib/formability/recipe';
-import { markHeight } from '@/lib/formability/measures/estimate-vent-marks';
+import { markIn } from '@/lib/formability/measures/estimate-vent-marks';
 import { carved, rectangle, turnedRing } from '../../../fixtures/meshes/carved';
 import { checkOf, reportOn } from '../run-engine';
 
@@ -89,12 +89,14 @@ describe('air', () => {
 
 describe('vent marks', () => {
   it('thin sheet over a bore of 1 mm: 0.2656 mm (membrane); thick: 0.0343 mm (plate with shear)', () => {
-    expect(markHeight(0.4, 0.5, 0.2)).toBeCloseTo(0.2656, 3);
-    expect(markHeight(0.4, 0.4, 0.6)).toBeCloseTo(0.00222 + 0.032, 4);
+    const thin = markIn(0.4, 0.5, 0.2);
+    expect(thin.heightMm).toBeCloseTo(0.2656, 3);
+    expect(thin.tipMm).toBeCloseTo(0.2 * 0.694, 3);
+    expect(markIn(0.4, 0.4, 0.6)).toEqual({ heightMm: expect.closeTo(0.00222 + 0.032, 4), tipMm: 0.6 });
   });
 
   it('a sheet that nothing holds goes as deep as the bore is wide', () => {
-    expect(markHeight(2, 0.5, 0.1)).toBe(1);
+    expect(markIn(2, 0.5, 0.1)).toEqual({ heightMm: 1, tipMm: null });
   });
 
   it('a vent wider than the formed sheet is told to be narrower, and then passes', () => {
