@@ -15,6 +15,8 @@ export default defineConfig({
           include: ['tests/unit/**/*.test.{ts,tsx}'],
           testTimeout: 120_000,
           maxWorkers: 2,
+          // Modules are loaded once a worker, not once a file: a unit test that changes global state puts it back.
+          isolate: false,
         },
       },
       {

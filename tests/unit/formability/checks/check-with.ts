@@ -3,11 +3,11 @@ import type { Check } from '@/lib/formability/report';
 import { frustum } from '../../../fixtures/meshes/solids';
 import { reportOn } from '../run-engine';
 
-/** What the checks see of a sound template: 100 × 80 × 30 mm, walls of 8°, the recipe that stands where nothing is said. */
+/** What the checks see of a sound template with walls of 8°, and the recipe that stands where nothing is said. */
 const SOUND = soundInput();
 
 function soundInput(): CheckInput {
-  const report = reportOn(frustum(100, 80, 30, 8), { grid: { cellMm: 1 } });
+  const report = reportOn(frustum(40, 30, 12, 8), { grid: { cellMm: 2 } });
   return {
     recipe: report.recipe,
     report,
