@@ -5,11 +5,18 @@ const POINTS = 32;
 
 /**
  * Clamped rectangle under even pressure, shorter side a, longer side b = aspect · a: sag w D / q a⁴ at the middle and
- * moment |M| / q a² at the middle of the long side. Galerkin's method on (1−ξ²)²(1−η²)² P₂ᵢ(ξ) P₂ⱼ(η); agrees with
+ * moment |M| / q a² at the middle of the long side; at the middle of the plate the two curvatures, as κ D / q a². Galerkin's method on (1−ξ²)²(1−η²)² P₂ᵢ(ξ) P₂ⱼ(η); agrees with
  * S. Timoshenko, S. Woinowsky-Krieger, Theory of Plates and Shells, Table 35.
  */
-export function clampedRectangle(aspect: number): { sag: number; edgeMoment: number } {
-  const { stiff, mixed, mass, load, atMiddle, curvatureAtRim } = basisIntegrals();
+export function clampedRectangle(aspect: number): {
+  sag: number;
+  edgeMoment: number;
+  /** Across the shorter and along the longer side; M = across + ν along. */
+  centre: { across: number; along: number };
+} {
+  if (!(aspect >= 1 && Number.isFinite(aspect)))
+    throw new RangeError(`a rectangle of aspect ${aspect}: give the longer over the shorter side, from 1 up`);
+  const { stiff, mixed, mass, load, atMiddle, bentAtMiddle, curvatureAtRim } = basisIntegrals();
   const n = TERMS * TERMS;
   const matrix = new Float64Array(n * n);
   const right = new Float64Array(n);
@@ -31,14 +38,21 @@ export function clampedRectangle(aspect: number): { sag: number; edgeMoment: num
   const weight = solve(matrix, right);
   let sag = 0;
   let edge = 0;
+  let [across, along] = [0, 0];
   for (let i = 0; i < TERMS; i++) {
     for (let j = 0; j < TERMS; j++) {
       sag += weight[i * TERMS + j] * atMiddle[i] * atMiddle[j];
       edge += weight[i * TERMS + j] * curvatureAtRim[i] * atMiddle[j];
+      across -= weight[i * TERMS + j] * bentAtMiddle[i] * atMiddle[j];
+      along -= weight[i * TERMS + j] * atMiddle[i] * bentAtMiddle[j];
     }
   }
   // From half-side units to the side: (a/2)⁴ and (a/2)².
-  return { sag: sag / 16, edgeMoment: Math.abs(edge) / 4 };
+  return {
+    sag: sag / 16,
+    edgeMoment: Math.abs(edge) / 4,
+    centre: { across: across / 4, along: along / (4 * r2) },
+  };
 }
 
 interface Integrals {
@@ -47,6 +61,7 @@ interface Integrals {
   mass: number[][];
   load: number[];
   atMiddle: number[];
+  bentAtMiddle: number[];
   curvatureAtRim: number[];
 }
 
@@ -58,6 +73,7 @@ function basisIntegrals(): Integrals {
     mass: square(),
     load: new Array<number>(TERMS).fill(0),
     atMiddle: basisAt(0).value,
+    bentAtMiddle: basisAt(0).second,
     curvatureAtRim: basisAt(1).second,
   };
   for (const { at, weight } of gaussPoints(POINTS)) {

@@ -95,12 +95,13 @@ export function supportedRectangle(plate: Plate, sideMm: number, otherMm: number
   };
 }
 
-/** Rectangle clamped on all sides, sides in mm; the stress is that at the middle of the long side. */
+/** Rectangle clamped on all sides, sides in mm; the stress is the larger of rim (middle of the long side) and middle. */
 export function clampedPlate(plate: Plate, sideMm: number, otherMm: number): PlateAnswer {
-  const { pressureMPa: q, thicknessMm: h } = plate;
+  const { pressureMPa: q, thicknessMm: h, poisson } = plate;
   const a = Math.min(sideMm, otherMm);
-  const { sag, edgeMoment } = clampedRectangle(Math.max(sideMm, otherMm) / a);
-  return { sagMm: (sag * q * a ** 4) / rigidity(plate), stressMPa: stressOf(edgeMoment * q * a * a, h) };
+  const { sag, edgeMoment, centre } = clampedRectangle(Math.max(sideMm, otherMm) / a);
+  const moment = Math.max(edgeMoment, centre.across + poisson * centre.along);
+  return { sagMm: (sag * q * a ** 4) / rigidity(plate), stressMPa: stressOf(moment * q * a * a, h) };
 }
 
 /** Pressure at which a long empty ring or tube of radius R buckles, MPa: E t³ / 4 (1 − ν²) R³ (Timoshenko and Gere). */
