@@ -1,6 +1,6 @@
 import { APIError, createAuthMiddleware, getSessionFromCtx, isAPIError } from 'better-auth/api';
 import { z } from 'zod';
-import { shortText } from '@/lib/workspaces/schemas';
+import { shortText, zoneOrUtc } from '@/lib/workspaces/schemas';
 import { confirmBudget, confirmKey, forgetTries, spendTry } from './attempts-data';
 import { afterSecondFactor, beforeSecondFactor } from './second-factor-hooks';
 import { knowDevice, settleSignInTry, spendSignInTry } from './sign-in-tries';
@@ -12,6 +12,7 @@ const SignUp = z.strictObject({
   name: shortText('your name', 80),
   email: z.email().max(254),
   password: z.string(),
+  timeZone: zoneOrUtc,
   callbackURL: z.string().optional(),
   rememberMe: z.boolean().optional(),
 });

@@ -66,7 +66,8 @@ function build() {
       modelName: 'users',
       additionalFields: {
         units: { type: 'string', defaultValue: 'mm', input: false },
-        timeZone: { type: 'string', defaultValue: 'UTC', input: false },
+        // At sign-up only, where auth-hooks.ts lets real zones through; the rest of the service is closed to it.
+        timeZone: { type: 'string', defaultValue: 'UTC' },
       },
     },
     session: {

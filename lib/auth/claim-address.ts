@@ -26,12 +26,15 @@ export async function claimAddress(input: {
   email: string;
   name: string;
   password: string;
+  /** Of the browser; universal time where none is told. */
+  timeZone?: string;
 }): Promise<Person> {
   const sentence = await weakness(input.password, input);
   if (sentence) throw invalid(sentence, [{ pointer: '/password', detail: sentence }]);
   const password = await hashPassword(input.password);
   return authDatabase().transaction(async (tx) => {
-    const fields = { name: input.name, emailVerified: true, updatedAt: new Date() };
+    const timeZone = input.timeZone ?? 'UTC';
+    const fields = { name: input.name, timeZone, emailVerified: true, updatedAt: new Date() };
     await tx
       .insert(users)
       .values({ id: uuidv7(), email: input.email.toLowerCase(), ...fields, emailVerified: false })
@@ -53,7 +56,7 @@ export async function claimAddress(input: {
       name: input.name,
       email: user.email,
       units: user.units === 'in' ? 'in' : 'mm',
-      timeZone: user.timeZone,
+      timeZone,
     };
   });
 }

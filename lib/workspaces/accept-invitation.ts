@@ -59,5 +59,10 @@ async function newPerson(held: HeldInvitation, given: AcceptInvitationInput): Pr
     ...(given.password ? [] : [{ pointer: '/password', detail: 'Choose a password.' }]),
   ];
   if (missing.length) throw invalid('A new account needs a name and a password.', missing);
-  return claimAddress({ email: held.email, name: given.name!, password: given.password! });
+  return claimAddress({
+    email: held.email,
+    name: given.name!,
+    password: given.password!,
+    timeZone: given.timeZone,
+  });
 }

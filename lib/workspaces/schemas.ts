@@ -25,6 +25,14 @@ export const shortText = (what: string, max: number) =>
     );
 
 export const TimeZone = z.string().max(60).refine(knownZone, 'Give an IANA time zone, e.g. Europe/Lisbon.');
+
+/** The zone that a browser names for a new person: one that we know, or universal time. */
+export const zoneOrUtc = z
+  .string()
+  .optional()
+  .catch(undefined)
+  .transform((zone) => (TimeZone.safeParse(zone).success ? zone! : 'UTC'));
+
 const email = z
   .email('Give an address such as name@example.com.')
   .max(254, 'At most 254 characters.')
@@ -69,6 +77,7 @@ export const StaffRoleInput = InviteStaffInput.pick({ role: true });
 export const AcceptInvitationInput = z.object({
   name: shortText('your name, as it is printed beside a signature', 80).optional(),
   password: NewPassword.optional(),
+  timeZone: zoneOrUtc,
 });
 export type AcceptInvitationInput = z.infer<typeof AcceptInvitationInput>;
 

@@ -11,6 +11,7 @@ import { Link } from '../../_components/link';
 import { newPasswordHelp, newPasswordRules } from '../../_components/new-password-rules';
 import { PasswordField } from '../../_components/password-field';
 import { TextField } from '../../_components/text-field';
+import { browserZone } from '../_components/browser-zone';
 import { emailRules } from '../_components/email-rules';
 
 interface Values {
@@ -36,7 +37,8 @@ export function SignUpForm() {
         email: address,
         password,
         callbackURL: '/verify?next=/studio/new',
-      }),
+        timeZone: browserZone(),
+      } as Parameters<typeof authClient.signUp.email>[0]),
     );
     if (answer.problem) setProblem(answer.problem);
     else setSentTo(address);

@@ -68,6 +68,20 @@ describe('signing up', () => {
     expect(foreign.status).toBe(403);
   });
 
+  it.each([
+    ['Asia/Tokyo', 'Asia/Tokyo'],
+    ['Mars/Olympus', 'UTC'],
+    ["'; drop table users; --", 'UTC'],
+    [9, 'UTC'],
+    [undefined, 'UTC'],
+  ])('keeps the zone of the browser where there is such a one: %j', async (timeZone, kept) => {
+    const email = `zone.${String(timeZone).length}.${kept.length}@example.test`;
+    const answer = await post('/sign-up/email', { email, name: 'Zoe', password: testPassword, timeZone });
+    expect(answer.status).toBe(200);
+    const { rows } = await database.query('select time_zone from users where email = $1', [email]);
+    expect(rows).toEqual([{ time_zone: kept }]);
+  });
+
   it('answers alike for a known and an unknown address', async () => {
     const known = await makePerson(database, 'Known');
     const body = { name: 'Somebody', password: testPassword };

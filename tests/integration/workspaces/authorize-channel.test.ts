@@ -1,5 +1,6 @@
 import Pusher from 'pusher-js';
 import { afterEach, beforeAll, describe, expect, it } from 'vitest';
+import { POST as authRoute } from '@/app/api/auth/[...all]/route';
 import { POST as authorizeRoute } from '@/app/api/v1/realtime/authorize/route';
 import { GET as addressRoute } from '@/app/api/v1/realtime/route';
 import { POST as signInRoute } from '@/app/api/v1/realtime/sign-in/route';
@@ -8,7 +9,7 @@ import { personChannel, revisionChannel, workspaceChannel } from '@/realtime/cha
 import { publish } from '@/realtime/publish';
 import { callRoute } from '@/tests/support/call-route';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
-import { joinWorkspace, makeHouse, type House } from '@/tests/support/make-house';
+import { joinWorkspace, makeHouse, signIn, type House } from '@/tests/support/make-house';
 
 let database: FreshDatabase;
 let house: House;
@@ -214,6 +215,33 @@ describe('on the realtime server', () => {
     const answer = new Promise((resolve) => pusher.bind_global((event: string) => resolve(event)));
     expect(String(await Promise.race([refused.then(() => 'error'), answer]))).toMatch(/error/);
     expect(gotIn).toEqual([]);
+  });
+
+  it('the sockets of an ended session end at once, those of the person’s other session go on', async () => {
+    const member = await joinWorkspace(database, await house.enter('lead'), 'reviewer');
+    const elsewhere = await signIn(member.person.email);
+    const [ending, staying] = [connect(member.cookie), connect(elsewhere)];
+    const name = workspaceChannel(house.workspace.id);
+    for (const pusher of [ending, staying]) {
+      await signedIn(pusher);
+      expect(await subscribed(pusher, name)).toBe('subscribed');
+    }
+    const ended = new Promise<void>((resolve) => {
+      ending.connection.bind('state_change', ({ current }: { current: string }) => {
+        if (current !== 'connected') resolve();
+      });
+    });
+    const answer = await callRoute(authRoute, {
+      path: '/api/auth/sign-out',
+      cookie: member.cookie,
+      body: {},
+    });
+    expect(answer.status).toBe(200);
+    await ended;
+    const arrived = new Promise((resolve) => staying.channel(name).bind('people.changed', resolve));
+    await publish([{ channel: name, name: 'people.changed', data: { id: house.workspace.id } }]);
+    expect(await arrived).toEqual({ id: house.workspace.id });
+    expect(staying.connection.state).toBe('connected');
   });
 
   it('the sockets of a removed member end at once and cannot subscribe again', async () => {

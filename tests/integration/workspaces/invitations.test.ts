@@ -1,3 +1,4 @@
+import { Client } from 'pg';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { GET as readRoute } from '@/app/api/v1/invitations/[invitation]/route';
 import { POST as acceptRoute } from '@/app/api/v1/invitations/[invitation]/accept/route';
@@ -8,6 +9,7 @@ import { inviteToStudio } from '@/lib/studio/invite-to-studio';
 import { createWorkspace } from '@/lib/workspaces/create-workspace';
 import { cancelInvitation } from '@/lib/workspaces/cancel-invitation';
 import { inviteToWorkspace } from '@/lib/workspaces/invite-to-workspace';
+import { removeMember } from '@/lib/workspaces/remove-member';
 import { listPeople } from '@/lib/workspaces/list-people';
 import { callRoute, cookieOf } from '@/tests/support/call-route';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
@@ -202,6 +204,19 @@ describe('accepting an invitation', () => {
     expect(await (await read(token)).json()).toMatchObject({ state: 'accepted', hasAccount: true });
   });
 
+  it('keeps the zone of a new person’s browser, or universal time', async () => {
+    for (const [timeZone, kept] of [
+      ['America/Toronto', 'America/Toronto'],
+      ['Nowhere/Land', 'UTC'],
+      [undefined, 'UTC'],
+    ]) {
+      const { email, token } = await invite();
+      expect((await accept(token, { ...newcomer, timeZone })).status).toBe(200);
+      const { rows } = await database.query('select time_zone from users where email = $1', [email]);
+      expect(rows).toEqual([{ time_zone: kept }]);
+    }
+  });
+
   it('asks a new person for a name and a password', async () => {
     const { email, token } = await invite();
     const answer = await accept(token, {});
@@ -324,6 +339,68 @@ describe('accepting an invitation', () => {
       [email],
     );
     expect(rows).toEqual([{ role: 'reviewer', workspace_id: house.workspace.id }]);
+  });
+});
+
+describe('what was sent', () => {
+  it.each(['appUrl', 'authUrl'] as const)('is changed by no role of the product (%s)', async (url) => {
+    const { id } = await invite('reviewer');
+    const client = new Client({ connectionString: database[url] });
+    await client.connect();
+    await client.query(`select set_config('app.person', $1, false), set_config('app.workspace', $2, false)`, [
+      lead.person.id,
+      house.workspace.id,
+    ]);
+    const other = newEmail();
+    for (const [column, value] of [
+      ['role', 'approver'],
+      ['email', other],
+      ['token_hash', '0'.repeat(64)],
+      ['expires_at', '2099-01-01'],
+      ['inviter_id', lead.person.id],
+    ])
+      await expect(
+        client.query(`update invitations set ${column} = $1 where id = $2`, [value, id]),
+      ).rejects.toMatchObject({ code: '42501' });
+    const settled = await client.query(`update invitations set status = 'canceled' where id = $1`, [id]);
+    expect(settled.rowCount).toBe(1);
+    for (const status of ['pending', 'accepted'])
+      await expect(
+        client.query('update invitations set status = $1 where id = $2', [status, id]),
+      ).rejects.toMatchObject({ code: '23514' });
+    await client.end();
+  });
+
+  it('does not work again for who joined by it and was removed', async () => {
+    const known = await makePerson(database, 'Came And Went');
+    const { token } = await invite('approver', known.person.email);
+    expect((await accept(token, {}, known.cookie)).status).toBe(200);
+    await removeMember(lead, known.person.id);
+    const again = await accept(token, {}, known.cookie);
+    expect([again.status, await reasonOf(again)]).toEqual([409, 'invitation-used']);
+    expect(await memberships(known.person.email)).toEqual([]);
+  });
+
+  it('is accepted or taken back, never both', async () => {
+    const outcomes = new Set<string>();
+    for (let round = 0; round < 10; round++) {
+      const known = await makePerson(database, 'Either Or');
+      const { id, token } = await invite('approver', known.person.email);
+      const [accepted, cancelled] = await Promise.allSettled([
+        accept(token, {}, known.cookie).then((answer) => answer.status),
+        cancelInvitation(lead, id),
+      ]);
+      const joined = (await memberships(known.person.email)).length === 1;
+      expect(accepted).toEqual({ status: 'fulfilled', value: joined ? 200 : 409 });
+      expect(cancelled.status).toBe(joined ? 'rejected' : 'fulfilled');
+      const { rows } = await database.query<{ status: string }>(
+        'select status from invitations where id = $1',
+        [id],
+      );
+      outcomes.add(rows[0].status);
+      expect(rows[0].status).toBe(joined ? 'accepted' : 'canceled');
+    }
+    expect(outcomes.size).toBeGreaterThan(0);
   });
 });
 

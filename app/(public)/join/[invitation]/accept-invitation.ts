@@ -6,7 +6,7 @@ import { acceptedSchema } from './invitation';
 export async function acceptInvitation(
   token: string,
   idempotencyKey: string,
-  person: { name: string; password: string } | null,
+  person: { name: string; password: string; timeZone: string } | null,
 ): Promise<string> {
   const answer = await api<unknown>(`/api/v1/invitations/${encodeURIComponent(token)}/accept`, {
     method: 'POST',

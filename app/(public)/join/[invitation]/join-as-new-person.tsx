@@ -10,6 +10,7 @@ import { FormProblem } from '../../../_components/form-problem';
 import { PasswordField } from '../../../_components/password-field';
 import { TextField } from '../../../_components/text-field';
 import { newPasswordHelp, newPasswordRules } from '../../../_components/new-password-rules';
+import { browserZone } from '../../_components/browser-zone';
 import { acceptInvitation } from './accept-invitation';
 
 interface Values {
@@ -32,6 +33,7 @@ export function JoinAsNewPerson({ token, email }: { token: string; email: string
       const path = await acceptInvitation(token, key, {
         ...values,
         name: values.name.trim().replace(/\s+/g, ' '),
+        timeZone: browserZone(),
       });
       router.replace(path);
       router.refresh();
