@@ -15,7 +15,10 @@ export function inspect(bytes: Uint8Array, unit: MeshUnit = 'mm'): Inspection {
   return describe(readMesh(bytes), unit);
 }
 
-/** `inspect` for every format, a STEP file converted in a process of its own. */
+/**
+ * `inspect` for every format, a STEP file converted in a process of its own.
+ * @throws UnusableInput as `inspect`; stopped, and what the conversion says
+ */
 export async function inspectFile(
   bytes: Uint8Array,
   unit: MeshUnit = 'mm',

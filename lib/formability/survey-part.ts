@@ -15,6 +15,7 @@ import { measureDetails } from './measures/measure-details';
 import { measureDraft } from './measures/measure-draft';
 import { measureWalls, type Walls } from './measures/measure-walls';
 import { refineDepth } from './measures/refine-depth';
+import { refinePits } from './measures/refine-pits';
 import { findVisibility, type Visibility } from './measures/visibility';
 import type { Facets } from './mesh/measure-facets';
 import { prepareMesh, type Prepared } from './mesh/prepare-mesh';
@@ -76,10 +77,13 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     return found;
   });
   const facetGrid = stages.run('sort', () => buildFacetGrid(mesh, facets));
-  const { traps, flood, spacing } = stages.run('pits', () => ({
-    ...findAirTraps(holes.surface, grid, holes.vents),
-    spacing: findSpacing(mesh, facetGrid, holes.surface, grid),
-  }));
+  const { traps, flood, spacing } = stages.run('pits', () => {
+    const { surface, vents } = holes;
+    const found = findAirTraps(surface, grid, vents, (pits) =>
+      refinePits(mesh, facetGrid, surface, grid, shells.ofFacet, pits),
+    );
+    return { ...found, spacing: findSpacing(mesh, facetGrid, surface, grid, found.pits) };
+  });
   const { visibility, draft } = stages.run('facets', () => {
     const visibility = findVisibility(mesh, facets, columns, air, perFacet);
     findThinUndercuts(mesh, facets, visibility, grid.cell, shells.ofFacet, limits.undercutDepthMm, undercuts);

@@ -1,7 +1,7 @@
 import { floodSurface } from '../dexel/flood';
 import { cellAt, centreX, centreY, type Grid } from '../dexel/grid';
 import type { AirTrap, Vent } from '../report';
-import { findPits } from './find-pits';
+import { findPits, type Pit } from './find-pits';
 import type { Flood } from './map-pockets';
 
 /** More pits than this are noise of the surface; the largest are reported. */
@@ -11,14 +11,17 @@ const MOST_TRAPS = 200;
  * Air traps: pits of H with vents closed. A leaf pit without a vent that this printer leaves open traps air.
  * @param surface H with vents closed
  * @param vents in the mesh's frame
+ * @param refine measures some of the pits again
  */
 export function findAirTraps(
   surface: Float64Array,
   grid: Grid,
   vents: Vent[],
-): { traps: AirTrap[]; flood: Flood } {
+  refine: (pits: Pit[]) => void = () => {},
+): { traps: AirTrap[]; pits: Pit[]; flood: Flood } {
   const level = floodSurface(surface, grid);
   const pits = findPits(surface, level, grid);
+  refine(pits);
   const pitOf = new Map<number, number>();
   const ventCells = new Map(vents.map((vent, id) => [id, cellAt(grid, vent.at[0], vent.at[1])]));
   const wanted = new Set(ventCells.values());
@@ -37,13 +40,13 @@ export function findAirTraps(
       floor: [centreX(grid, pit.floor), centreY(grid, pit.floor), surface[pit.floor]],
       spillZMm: pit.spill,
       volumeMm3: pit.volume,
-      planAreaMm2: pit.cells * grid.cell * grid.cell,
+      planAreaMm2: pit.areaMm2,
       trapsAir: pit.children.length === 0 && !own.some((v) => vents[v].printable),
       parent: pit.parent === null ? null : kept.indexOf(pits[pit.parent]),
       vents: own,
     };
   });
-  return { traps, flood: { level, unvented } };
+  return { traps, pits, flood: { level, unvented } };
 }
 
 /** The largest pits together with everything that they lie in. */

@@ -10,6 +10,8 @@ export interface Pit {
   spill: number;
   volume: number;
   cells: number;
+  /** In plan, mm². */
+  areaMm2: number;
   /** Cell in the middle of its floor. */
   floor: number;
   parent: number | null;
@@ -94,7 +96,8 @@ function fillRegion(
   const close = (basin: Basin, at: number): number => {
     const volume = (at * basin.count - basin.sum) * grid.cell * grid.cell;
     const { count: cells, lowest: floor, pits: children, members } = basin;
-    return pits.push({ spill: at, volume, cells, floor, parent: null, children, members }) - 1;
+    const areaMm2 = cells * grid.cell * grid.cell;
+    return pits.push({ spill: at, volume, cells, areaMm2, floor, parent: null, children, members }) - 1;
   };
   for (const c of sortByHeight(region, surface)) {
     const height = surface[c];

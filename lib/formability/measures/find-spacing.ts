@@ -2,6 +2,8 @@ import { centreX, centreY, type Grid } from '../dexel/grid';
 import type { Mesh } from '../mesh/mesh';
 import type { Point, Spacing } from '../report';
 import type { FacetGrid } from './facet-grid';
+import { findGrooves } from './find-grooves';
+import type { Pit } from './find-pits';
 import { findValleys } from './find-valleys';
 import { measureGap } from './measure-gap';
 
@@ -35,8 +37,14 @@ const VALLEY_MM = 0.1;
  * common plate, a groove, a saddle). The gap at the bed is the nearest distance of the two walls at their foot, where
  * they become steeper than 45°, the gap at the top that at the height of the lower; both are cut from the mesh, the grid only says where.
  */
-export function findSpacing(mesh: Mesh, facets: FacetGrid, surface: Float64Array, grid: Grid): Spacing[] {
-  const found: Spacing[] = [];
+export function findSpacing(
+  mesh: Mesh,
+  facets: FacetGrid,
+  surface: Float64Array,
+  grid: Grid,
+  pits: readonly Pit[] = [],
+): Spacing[] {
+  const found = findGrooves(mesh, facets, surface, grid, pits, LEAST_HEIGHT_MM);
   const label = new Int32Array(surface.length);
   const below = new Int32Array(surface.length);
   for (const floor of findValleys(surface, grid, LEAST_HEIGHT_MM, MOST_LEVELS)) {
@@ -207,11 +215,14 @@ function nearestAt(
   z: number,
 ): { gap: number; cells: [number, number] } {
   const { nx, cell } = grid;
+  const least = z - 0.01 * z;
+  const isHigh = (c: number) => surface[c] >= least;
   const high = (island: Island) => {
-    const cells = island.cells.filter((c) => surface[c] >= z - 0.01 * z);
-    return Array.from(cells).filter((c) =>
-      [1, -1, nx, -nx].some((side) => !(surface[c + side] >= z - 0.01 * z)),
-    );
+    const rim: number[] = [];
+    for (const c of island.cells) {
+      if (isHigh(c) && !(isHigh(c + 1) && isHigh(c - 1) && isHigh(c + nx) && isHigh(c - nx))) rim.push(c);
+    }
+    return rim;
   };
   const [as, bs] = [high(a), high(b)];
   const far = (p: number, q: number) =>

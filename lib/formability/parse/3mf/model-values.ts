@@ -12,6 +12,7 @@ const UNITS: Record<string, MeshUnit> = {
   meter: 'm',
 };
 
+/** @throws UnusableInput not_a_mesh where 3MF knows no such unit */
 export function readUnit(text: string | null, where: string): MeshUnit {
   if (text === null) return 'mm';
   const unit = Object.hasOwn(UNITS, text) ? UNITS[text] : undefined;

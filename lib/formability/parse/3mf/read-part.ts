@@ -3,7 +3,10 @@ import { Transcoder } from './xml-declaration';
 import { type XmlHandler, XmlScanner } from './xml-scanner';
 import { show, type ZipEntry } from './zip-directory';
 
-/** Unpacks one XML part of the archive and hands its elements to `handler`, in one pass. */
+/**
+ * Unpacks one XML part of the archive and hands its elements to `handler`, in one pass.
+ * @throws UnusableInput truncated, not_a_mesh, unsupported, too_large_file, and what the handler throws
+ */
 export function readPart(
   bytes: Uint8Array,
   entry: ZipEntry,
