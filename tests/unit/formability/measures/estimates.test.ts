@@ -39,17 +39,14 @@ describe('skin', () => {
   });
 
   it.each([
-    ['sag', 4, 150],
-    ['stress', 30, 170],
+    ['sag', 4, 150, 0.5],
+    ['stress', 30, 170, 0.3],
   ])(
     'the top and the infill that it asks for hold just so where %s rules',
-    (what, infillPercent, celsius) => {
+    (what, infillPercent, celsius, topMm) => {
       const hot = { peakC: [celsius], contactC: celsius };
       const at = (print: object) =>
-        estimateSkin(
-          fillRecipe({ print: { infillPattern: 'lines', infillPercent, topMm: 0.3, ...print } }),
-          hot,
-        );
+        estimateSkin(fillRecipe({ print: { infillPattern: 'lines', infillPercent, topMm, ...print } }), hot);
       const first = at({});
       const share = (found: typeof first) =>
         what === 'sag' ? found.sagMm! / found.limitMm : found.stressMPa! / found.strengthMPa;
