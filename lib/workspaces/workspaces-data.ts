@@ -66,7 +66,12 @@ export async function listGatePlans(tx: TenantTx, workspaceId: string, limit: nu
 
 /** Holds the workspace's row: versions of its plan are made one after another. */
 export async function lockWorkspace(tx: TenantTx, workspaceId: string): Promise<void> {
-  await tx.select({ id: workspaces.id }).from(workspaces).where(eq(workspaces.id, workspaceId)).for('update');
+  await tx
+    .select({ id: workspaces.id })
+    .from(workspaces)
+    .where(eq(workspaces.id, workspaceId))
+    // Not 'update': rows that refer to the workspace are written by others meanwhile, some under the chain's head.
+    .for('no key update');
 }
 
 /** Clients who are invited and may still come, by role. */

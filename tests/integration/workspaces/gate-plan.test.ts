@@ -1,5 +1,8 @@
 import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { GET, PUT } from '@/app/api/v1/workspaces/[workspace]/gate-plan/route';
+import { withTenant } from '@/db/tenant';
+import { lockHead } from '@/lib/audit/data';
+import { queueLive } from '@/lib/jobs/queue-live';
 import { tell } from '@/lib/review/activity-words';
 import { viewRevision } from '@/lib/review/view-revision';
 import { changeGatePlan } from '@/lib/workspaces/change-gate-plan';
@@ -151,6 +154,29 @@ describe('a revision', () => {
     const { revisionId } = await post(await house.enter('designer'), running.templateId);
     const after = await viewRevision(lead, revisionId);
     expect(after.gates.map(({ name }) => name)).toEqual(['Forming', 'Customer']);
+  });
+});
+
+describe('a change and a command that holds the chain’s head', () => {
+  it('do not wait for each other in a ring', async () => {
+    const lead = await house.enter('lead');
+    const approver = await house.enter('approver');
+    const blocked = async () => {
+      const { rows } = await database.query<{ n: number }>(
+        `select count(*)::int as n from pg_stat_activity
+         where datname = current_database() and cardinality(pg_blocking_pids(pid)) > 0`,
+      );
+      return rows[0].n > 0;
+    };
+    let change: Promise<{ number: number }> | undefined;
+    await withTenant(approver, async (tx) => {
+      await lockHead(tx, house.workspace.id);
+      change = changeGatePlan(lead, 1, plan);
+      while (!(await blocked()));
+      // Refers to the workspace, whose row the change holds by now.
+      await queueLive(tx, approver, { name: 'people.changed', data: { id: house.workspace.id } });
+    });
+    expect((await change)?.number).toBe(2);
   });
 });
 
