@@ -8,14 +8,29 @@ const POINTS = 32;
  * moment |M| / q a² at the middle of the long side; at the middle of the plate the two curvatures, as κ D / q a². Galerkin's method on (1−ξ²)²(1−η²)² P₂ᵢ(ξ) P₂ⱼ(η); agrees with
  * S. Timoshenko, S. Woinowsky-Krieger, Theory of Plates and Shells, Table 35.
  */
-export function clampedRectangle(aspect: number): {
+export function clampedRectangle(aspect: number): ClampedRectangle {
+  if (!(aspect >= 1 && Number.isFinite(aspect)))
+    throw new RangeError(`a rectangle of aspect ${aspect}: give the longer over the shorter side, from 1 up`);
+  const known = KNOWN.get(aspect);
+  if (known) return known;
+  if (KNOWN.size >= MOST_KNOWN) KNOWN.clear();
+  const found = solveRectangle(aspect);
+  KNOWN.set(aspect, found);
+  return found;
+}
+
+export interface ClampedRectangle {
   sag: number;
   edgeMoment: number;
   /** Across the shorter and along the longer side; M = across + ν along. */
   centre: { across: number; along: number };
-} {
-  if (!(aspect >= 1 && Number.isFinite(aspect)))
-    throw new RangeError(`a rectangle of aspect ${aspect}: give the longer over the shorter side, from 1 up`);
+}
+
+/** Solved once for each aspect: advice asks for the square of the infill again and again. */
+const KNOWN = new Map<number, ClampedRectangle>();
+const MOST_KNOWN = 64;
+
+function solveRectangle(aspect: number): ClampedRectangle {
   const { stiff, mixed, mass, load, atMiddle, bentAtMiddle, curvatureAtRim } = basisIntegrals();
   const n = TERMS * TERMS;
   const matrix = new Float64Array(n * n);

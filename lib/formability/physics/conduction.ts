@@ -1,4 +1,5 @@
 import { erfc } from './erf';
+import { inRange } from './in-range';
 
 /** A body that heat flows into: conductivity W/mK, density kg/m³, heat capacity J/kgK. */
 export interface ThermalBody {
@@ -9,6 +10,9 @@ export interface ThermalBody {
 
 /** √(kρc), W√s/m²K. */
 export function effusivity({ conductivityWmK: k, densityKgM3: rho, heatJkgK: c }: ThermalBody): number {
+  inRange('conductivity (W/mK)', k, 0);
+  inRange('density (kg/m³)', rho, 0);
+  inRange('heat capacity (J/kgK)', c, 0);
   return Math.sqrt(k * rho * c);
 }
 
@@ -41,6 +45,8 @@ export interface FiniteSheet {
  */
 export function toolC(contact: FiniteSheet, timeS: number, depthMm = 0): number {
   const { sheet, tool, thicknessMm, sheetC, toolC: start } = contact;
+  inRange('sheet thickness (mm)', thicknessMm, 0);
+  inRange('depth (mm)', depthMm, 0, Infinity, true);
   if (timeS <= 0) return start;
   const [es, et] = [effusivity(sheet), effusivity(tool)];
   const reflected = (es - et) / (es + et);
@@ -70,7 +76,7 @@ export function coolingTimeS(
   if (!(at.toolC < at.demouldC))
     throw new RangeError('a tool that is not colder than the sheet at demoulding does not cool it');
   if (!(at.sheetC > at.demouldC)) return 0;
-  if (!(thicknessMm > 0)) throw new RangeError(`a sheet of ${thicknessMm} mm: give a thickness above 0`);
+  inRange('sheet thickness (mm)', thicknessMm, 0);
   const length = thicknessMm / 1000;
   const ratio = ((4 / Math.PI) * (at.sheetC - at.toolC)) / (at.demouldC - at.toolC);
   return ((4 * length * length) / (Math.PI ** 2 * diffusivity(sheet))) * Math.log(ratio);

@@ -1,3 +1,5 @@
+import { inRange } from './in-range';
+
 /** Dry air at room temperature (usual values). */
 export const AIR = { gasJkgK: 287.05, gamma: 1.4, viscosityPaS: 1.82e-5 };
 /** Standard atmosphere, Pa. */
@@ -29,16 +31,27 @@ export interface Pressures {
   kelvin: number;
 }
 
+/** Air flows down: @throws RangeError where it would not, or is no warmer than nothing. */
+function checked(at: Pressures): Pressures {
+  inRange('upstream pressure (Pa)', at.upstreamPa, 0);
+  inRange('downstream pressure (Pa)', at.downstreamPa, 0, at.upstreamPa, true);
+  inRange('temperature (K)', at.kelvin, 0);
+  return at;
+}
+
 /** Mass flow through a sharp hole, kg/s. */
 export function orificeFlow(areaMm2: number, discharge: number, at: Pressures): number {
-  const { upstreamPa, downstreamPa, kelvin } = at;
+  const { upstreamPa, downstreamPa, kelvin } = checked(at);
+  inRange('area (mm²)', areaMm2, 0, Infinity, true);
+  inRange('discharge', discharge, 0, 1);
   const psi = flowFunction(downstreamPa / upstreamPa);
   return (discharge * areaMm2 * 1e-6 * upstreamPa * psi) / Math.sqrt(AIR.gasJkgK * kelvin);
 }
 
 /** Isothermal laminar mass flow of a gas through a long bore, kg/s: π d⁴ (p₁² − p₂²) / (256 μ L R T). */
 export function laminarFlow({ diameterMm, lengthMm }: Bore, at: Pressures): number {
-  const { upstreamPa, downstreamPa, kelvin } = at;
+  const { upstreamPa, downstreamPa, kelvin } = checked(at);
+  inRange('bore (mm)', diameterMm, 0);
   const d = diameterMm / 1000;
   const length = lengthMm / 1000;
   if (length <= 0) return Infinity;

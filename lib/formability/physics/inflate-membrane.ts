@@ -1,3 +1,5 @@
+import { inRange } from './in-range';
+
 /** A clamped disc of incompressible neo-Hookean sheet, blown up: heights in radii, pressure p a / (C₁ t₀), C₁ = E / 6. */
 export interface Inflated {
   height: number;
@@ -23,6 +25,7 @@ const ROUGH = 100;
  * @param steps from pole to rim; 400 give six digits
  */
 export function inflateMembrane(poleStretch: number, steps = 400): Inflated {
+  inRange('pole stretch', poleStretch, 1, 20);
   // A flat blister is narrow in these units: Hencky's w = 0.595 a (p a / E t)^(1/3), with pole strain 0.65 (w/a)².
   const flat = 3 * (Math.sqrt((poleStretch - 1) / 0.65) / 0.595) ** 3;
   const radius = integrate(poleStretch, Math.min(4 * poleStretch, flat) / ROUGH).pressure / 2;
@@ -107,7 +110,7 @@ const FLAT: Inflated = { height: 0, pressure: 0, poleStretch: 1, poleThickness: 
 
 /** The disc at a pressure p a / (C₁ t₀), to four digits; null above the highest pressure it can hold. */
 export function stateAtPressure(pressure: number): Inflated | null {
-  if (pressure <= 0) return FLAT;
+  if (inRange('pressure p a / (C₁ t₀)', pressure, -Infinity, Infinity, true) <= 0) return FLAT;
   if (pressure >= LIMIT_PRESSURE) return null;
   // False position, Illinois variant, on a pressure that rises with the stretch.
   let [low, high] = [1 + 1e-9, LIMIT_STRETCH];

@@ -1,3 +1,5 @@
+import { inRange } from './in-range';
+
 /** What printed layers leave on a slope. Layer height and lengths in mm, draft in degrees from the vertical. */
 
 const rad = (degrees: number) => (degrees * Math.PI) / 180;
@@ -10,6 +12,8 @@ const BEAD_RA = (Math.asin(CROSSES) - (Math.PI / 4) * CROSSES) / 2;
 
 /** Distance from the step's corner to the true surface: layer × sin(draft). A. Dolenc, I. Mäkelä, CAD 26 (1994) 119–126. */
 export function cuspMm(layerMm: number, draftDeg: number): number {
+  inRange('layer (mm)', layerMm, 0);
+  inRange('draft (°)', draftDeg, -90, 90, true);
   return layerMm * Math.abs(Math.sin(rad(draftDeg)));
 }
 
@@ -43,6 +47,8 @@ export function nubDraftDeg(layerMm: number, depthMm: number): number {
  * w ≈ p a² / (2 κ G t), G = E/3. Elastic: creep makes it more. Derived.
  */
 export function bulgeMm(layerMm: number, pressureMPa: number, thicknessMm: number, hotMPa: number): number {
+  inRange('sheet thickness (mm)', thicknessMm, 0);
+  inRange('hot modulus (MPa)', hotMPa, 0);
   const half = layerMm / 2;
   return (pressureMPa * half * half) / (2 * SHEAR_SHARE * (hotMPa / 3) * thicknessMm);
 }

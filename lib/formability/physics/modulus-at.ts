@@ -1,4 +1,5 @@
 import type { FilamentMaterial } from '../materials/filaments';
+import { inRange } from './in-range';
 
 /** ISO 75-2 end point: flexural strain 6 h Δs / L² = 6 · 4 · 0.34 / 64² (4 mm bar flatwise, 64 mm span). */
 const ENDPOINT_STRAIN = (6 * 4 * 0.34) / 64 ** 2;
@@ -17,6 +18,7 @@ const HALF = 0.5;
  * Measured data come first where a studio has them.
  */
 export function modulusAt(material: FilamentMaterial, celsius: number): number {
+  inRange('temperature (°C)', celsius, -273.15, Infinity, true);
   const e23 = material.modulusMPa.value;
   const a = material.hdtAC.value;
   const b = material.hdtBC.value;

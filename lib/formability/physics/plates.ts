@@ -1,4 +1,5 @@
 import { clampedRectangle } from './clamped-rectangle';
+import { inRange } from './in-range';
 
 /** Deflection and stress of a plate under even pressure. */
 export interface PlateAnswer {
@@ -111,6 +112,9 @@ export function ringCollapseMPa(
   wallMm: number,
   radiusMm: number,
 ): number {
+  inRange('modulus (MPa)', modulusMPa, 0);
+  inRange('wall (mm)', wallMm, 0);
+  inRange('radius (mm)', radiusMm, 0);
   return (modulusMPa * wallMm ** 3) / (4 * (1 - poisson * poisson) * radiusMm ** 3);
 }
 
@@ -121,5 +125,7 @@ export function ribBucklingMPa(
   thicknessMm: number,
   widthMm: number,
 ): number {
+  inRange('modulus (MPa)', modulusMPa, 0);
+  inRange('width between ribs (mm)', widthMm, 0);
   return ((4 * Math.PI ** 2 * modulusMPa) / (12 * (1 - poisson * poisson))) * (thicknessMm / widthMm) ** 2;
 }

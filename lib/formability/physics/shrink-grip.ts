@@ -1,3 +1,5 @@
+import { inRange } from './in-range';
+
 /**
  * A formed part shrinks onto the template. Thin ring on a rigid core (Lamé) with Coulomb's friction; derived, the same form
  * is used for ejection from injection moulds. Valid for a wall thin against its radius, and no vacuum below the part.
@@ -12,11 +14,14 @@ export interface Shrunk {
 
 /** Pressure of a shrunk ring of a radius on its core, MPa: E ε t / R. */
 export function gripMPa({ modulusMPa, shrinkage, wallMm }: Shrunk, radiusMm: number): number {
+  inRange('radius (mm)', radiusMm, 0);
+  inRange('shrinkage', shrinkage, 0, 1, true);
   return (modulusMPa * shrinkage * wallMm) / radiusMm;
 }
 
 /** Draft from which the part comes off by itself, degrees: tan δ = μ. */
 export function selfReleaseDeg(friction: number): number {
+  inRange('friction', friction, 0, Infinity, true);
   return (Math.atan(friction) * 180) / Math.PI;
 }
 

@@ -38,26 +38,11 @@ export function makeRectangle(
     centre[0] + size[0] * (i / nx - 0.5),
     centre[1] + size[1] * (j / ny - 0.5),
   ];
-  return build(nx, ny, size[0] / nx, size[1] / ny, place, z);
+  return makeSheet(nx, ny, size[0] / nx, size[1] / ny, place, z);
 }
 
-/**
- * A disc about the origin, clamped at its rim, level at z: squares become circles along rays from the centre. (The smooth
- * elliptical map is singular at the corners and spoils convergence.)
- */
-export function makeDisc(radius: number, cells: number, z = 0): Membrane {
-  const place = (i: number, j: number): [number, number] => {
-    const u = (2 * i) / cells - 1;
-    const v = (2 * j) / cells - 1;
-    const far = Math.sqrt(u * u + v * v);
-    const scale = far === 0 ? 0 : (radius * Math.max(Math.abs(u), Math.abs(v))) / far;
-    return [u * scale, v * scale];
-  };
-  const cell = (2 * radius) / cells;
-  return build(cells, cells, cell, cell, place, z);
-}
-
-function build(
+/** Cells of any shape: `place` says where node (i, j) lies, level at z; the rim is clamped. */
+export function makeSheet(
   nx: number,
   ny: number,
   cellX: number,

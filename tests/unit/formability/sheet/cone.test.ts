@@ -1,12 +1,12 @@
 import { describe, expect, it } from 'vitest';
 import { drapeAndPress } from '@/lib/formability/sheet/drape-and-press';
 import { measureElements } from '@/lib/formability/sheet/measure-elements';
-import { makeDisc } from '@/lib/formability/sheet/membrane';
 import { makeObstacle } from '@/lib/formability/sheet/obstacle';
 import { planDrape } from '@/lib/formability/sheet/plan-drape';
 import { snapToPlateau } from '@/lib/formability/sheet/snap-to-plateau';
 import { drapeRound, type Ring } from './round-drape';
 import { field, frustum } from './templates';
+import { makeDisc } from './make-disc';
 
 type Where = (r: number, z: number) => boolean;
 

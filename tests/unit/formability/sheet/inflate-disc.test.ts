@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
-import { inflateDisc, type Inflated } from '@/lib/formability/sheet/inflate-disc';
 import { measureElements } from '@/lib/formability/sheet/measure-elements';
+import { inflateDisc, type Inflated } from './inflate-disc';
 import { inflate, inflateTo, type Inflation } from './inflation-ode';
 
 /** Greatest and root-mean-square relative difference of element thickness over the whole disc. */
@@ -22,6 +22,7 @@ function profileError({ sheet }: Inflated, ode: Inflation, radius: number): { mo
   return { most, rms: Math.sqrt(squares / whole) };
 }
 
+// Rows M1 to M10 and M12 beside physics/membrane.test.ts; M11 (Mooney-Rivlin) here alone.
 describe('clamped circular membrane: the reference solution', () => {
   // Computed with an eighth-order integrator at a relative tolerance of 1e-12 and confirmed by collocation and energy.
   const table: [number, number, number, number, number, number][] = [

@@ -1,8 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import { addForces, listActive } from '@/lib/formability/sheet/add-forces';
-import { makeDisc, makeRectangle, type Membrane } from '@/lib/formability/sheet/membrane';
+import { makeRectangle, type Membrane } from '@/lib/formability/sheet/membrane';
 import { cycle, fixNode, makeMultigrid } from '@/lib/formability/sheet/multigrid';
 import { dice } from '../dice';
+import { makeDisc } from './make-disc';
 
 const SEED = 20261;
 

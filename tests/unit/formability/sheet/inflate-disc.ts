@@ -1,5 +1,6 @@
-import { makeDisc, type Membrane } from './membrane';
-import { iterate, makeRun } from './relax';
+import type { Membrane } from '@/lib/formability/sheet/membrane';
+import { iterate, makeRun } from '@/lib/formability/sheet/relax';
+import { makeDisc } from './make-disc';
 
 export interface DiscInput {
   radiusMm: number;
