@@ -9,11 +9,14 @@ import type { MacroWalls } from './measures/measure-macro-draft';
 import type { EffectiveRecipe, RecipeInput } from './recipe';
 import { recipeSchema } from './recipe-schema';
 import type { Advice, Check, CheckId, CheckStatus } from './report';
+import { judgedZone } from './sheet/judge-sheet';
 import { scaleSheet } from './sheet/scale-sheet';
 import type { Part } from './survey-part';
 import { writePhysics, type KnownPhysics } from './write-physics';
 
 const MOST_ADVICE = 3;
+/** Share of the scaled thickness that the run of a gauge must show. */
+const AS_SCALED = 0.99;
 const WEIGHT: Record<CheckStatus, number> = { fail: 3, caution: 1, pass: 0, 'not-run': 0 };
 
 /**
@@ -31,7 +34,9 @@ export function advise(
   const weight = total(checks);
   if (weight === 0) return [];
   const facing = facingAreas(part.facets);
-  const tried = candidateChanges(input.recipe, input.report, before, input.sheet?.remedy?.gaugeMm).flatMap(
+  const { remedy, footRemedy } = input.sheet ?? {};
+  const provenMm = remedy?.gaugeMm ?? footRemedy?.gaugeMm;
+  const tried = candidateChanges(input.recipe, input.report, before, provenMm).flatMap(
     ({ change, text }) => {
       const recipe = withChange(input.recipe, change);
       if (!recipe) return [];
@@ -67,7 +72,16 @@ export function advise(
     const kind = kindOf(advice.change);
     return kinds.has(kind) ? false : kinds.add(kind);
   });
-  return best.slice(0, MOST_ADVICE).map(({ advice }) => advice);
+  const proven = best.slice(0, MOST_ADVICE + 1).filter(({ advice }) => formsAsScaled(input, advice));
+  return proven.slice(0, MOST_ADVICE).map(({ advice }) => advice);
+}
+
+/** A gauge that mends the sheet was scaled; the best one is proven by a run, unless the check's own remedy was. */
+function formsAsScaled({ sheet, recipe }: CheckInput, { change, mends }: Advice): boolean {
+  const gaugeMm = change.sheet?.gaugeMm;
+  if (!gaugeMm || !sheet?.formAt || !mends.includes('sheet') || gaugeMm === sheet.remedy?.gaugeMm) return true;
+  const scaled = scaleSheet(sheet, gaugeMm / recipe.sheet.gaugeMm).formed!.report;
+  return judgedZone(sheet.formAt(gaugeMm).report).minMm >= AS_SCALED * judgedZone(scaled).minMm;
 }
 
 function kindOf(change: RecipeInput): string {

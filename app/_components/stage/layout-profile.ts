@@ -1,3 +1,4 @@
+import { outerSide, type SheetRun } from '@/lib/stage-model/cut-sheet';
 import type { Section, SectionPoint } from '@/lib/stage-model/section';
 import type { SectionWall } from '@/lib/stage-model/find-section-walls';
 
@@ -46,6 +47,25 @@ export function profilePath(section: Section, scale: ProfileScale): string {
       if (closed) points.pop();
       return `M${points.map((p) => toText(p, scale)).join('L')}${closed ? 'Z' : ''}`;
     })
+    .join('');
+}
+
+/** The sheet's band along the cut: its template side there, its outer side back. */
+export function sheetPath(run: SheetRun, times: number, scale: ProfileScale): string {
+  const back = outerSide(run, times).reverse();
+  return `M${[...run.points, ...back].map((p) => toText(p, scale)).join('L')}Z`;
+}
+
+/** The outer side wherever the sheet is thinner than wanted. */
+export function thinSheetPath(run: SheetRun, times: number, wantedMm: number, scale: ProfileScale): string {
+  const outer = outerSide(run, times);
+  return outer
+    .slice(1)
+    .map((to, i) =>
+      (run.thicknessMm[i] + run.thicknessMm[i + 1]) / 2 < wantedMm
+        ? `M${toText(outer[i], scale)}L${toText(to, scale)}`
+        : '',
+    )
     .join('');
 }
 

@@ -3,10 +3,18 @@
 import clsx from 'clsx';
 import { useId } from 'react';
 import type { Section } from '@/lib/stage-model/section';
+import type { SheetRun } from '@/lib/stage-model/cut-sheet';
 import type { SectionWall } from '@/lib/stage-model/find-section-walls';
 import { formatLength } from '../format-figure';
 import type { Units } from '../preferences';
-import { layoutWallLabels, profilePath, scaleBarMm, type ProfileScale } from './layout-profile';
+import {
+  layoutWallLabels,
+  profilePath,
+  scaleBarMm,
+  sheetPath,
+  thinSheetPath,
+  type ProfileScale,
+} from './layout-profile';
 
 /** A vent that the cut may meet: where it comes out on the bed, and how wide it is. */
 export interface StripVent {
@@ -22,6 +30,8 @@ export interface ProfileDrawingProps {
   limitDeg: number;
   units: Units;
   vents: readonly StripVent[];
+  /** the formed sheet along the cut, how many times as thick it is drawn, and what is wanted of it */
+  sheet: { runs: readonly SheetRun[]; times: number; wantedMm: number | null } | null;
   active: SectionWall | null;
   onWall: (wall: SectionWall) => void;
   label: string;
@@ -31,7 +41,7 @@ const FIGURE = 'fill-current font-mono text-[11px]';
 
 /** The cut as a drawing: hatched solid, outline, bed, drafts, sizes, scale bar; what is below the limit is thick. */
 export function ProfileDrawing(props: ProfileDrawingProps) {
-  const { section, walls, scale, widthPx, limitDeg, units, active, onWall } = props;
+  const { section, walls, scale, widthPx, limitDeg, units, sheet, active, onWall } = props;
   const hatch = useId();
   const path = profilePath(section, scale);
   const labels = layoutWallLabels(walls, limitDeg, scale, widthPx);
@@ -57,6 +67,23 @@ export function ProfileDrawing(props: ProfileDrawingProps) {
         strokeLinejoin="round"
       />
       <BedLine scale={scale} section={section} />
+      {sheet?.runs.map((run, i) => (
+        <g key={i}>
+          <path
+            d={sheetPath(run, sheet.times, scale)}
+            className="fill-verdigris stroke-verdigris"
+            strokeWidth="0.6"
+            strokeLinejoin="round"
+          />
+          {sheet.wantedMm === null ? null : (
+            <path
+              d={thinSheetPath(run, sheet.times, sheet.wantedMm, scale)}
+              className="fill-none stroke-madder"
+              strokeWidth="2.6"
+            />
+          )}
+        </g>
+      ))}
       {walls.map((wall, i) => {
         const d = `M${scale.x(wall.from[0])} ${scale.y(wall.from[1])}L${scale.x(wall.to[0])} ${scale.y(wall.to[1])}`;
         return (

@@ -3,10 +3,12 @@
 import clsx from 'clsx';
 import { useCallback, useEffect, useMemo, useState } from 'react';
 import { ToggleButton, ToggleButtonGroup } from 'react-aria-components';
+import { cutSheet } from '@/lib/stage-model/cut-sheet';
 import { findSectionWalls, type SectionWall } from '@/lib/stage-model/find-section-walls';
 import { meetSection } from '@/lib/stage-model/meet-section';
 import { openSection } from '@/lib/stage-model/open-section';
 import { cutSection, type SectionLine } from '@/lib/stage-model/section';
+import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import { formatLength } from '../format-figure';
 import { NumberField } from '../number-field';
@@ -14,6 +16,8 @@ import { usePreferences } from '../preferences-context';
 import { mainWalls, scaleProfile } from './layout-profile';
 import { ProfileDrawing, type StripVent } from './profile-drawing';
 import type { Point } from './stage-props';
+import { SHEET_DIGITS } from './map-words';
+import { useSheetModel } from './use-sheet-model';
 import { useStageModel } from './use-stage-model';
 import { WallTable } from './wall-table';
 
@@ -27,6 +31,10 @@ export interface ProfileStripProps {
   /** who put the line there; one that nobody moved by hand is shifted to where it meets the template */
   cutBy?: 'opening' | 'place' | 'hand';
   limitDeg: number;
+  /** the formed sheet, drawn over the template; null where none was formed */
+  sheet?: { url: string; meta: SheetModelMeta } | null;
+  /** least thickness wanted of it */
+  sheetMm?: number | null;
   vents?: readonly StripVent[];
   /** a wall was chosen: its middle, mm, and its draft */
   onWallSelect?: (at: Point, draftDeg: number) => void;
@@ -48,9 +56,12 @@ export function ProfileStrip(props: ProfileStripProps) {
   } = props;
   const { units } = usePreferences();
   const { model, problem } = useStageModel(modelUrl);
+  const formed = useSheetModel(props.sheet, model);
+  const [exaggerated, setExaggerated] = useState(false);
   const [frame, widthPx] = useWidth();
   const { axis, atMm } = sectionLine;
   const section = useMemo(() => (model ? cutSection(model, { axis, atMm }) : null), [model, axis, atMm]);
+  const sheetRuns = useMemo(() => (formed ? cutSheet(formed, { axis, atMm }) : []), [formed, axis, atMm]);
   const { min, max } = meta.boundsMm;
   const high = max[2];
   const walls = useMemo(() => (section ? mainWalls(findSectionWalls(section), high) : []), [section, high]);
@@ -89,6 +100,16 @@ export function ProfileStrip(props: ProfileStripProps) {
       <div className="flex flex-wrap items-center gap-x-4 gap-y-1 px-3 pt-2 sm:px-4">
         <p className="text-sm font-semibold">Section A–A</p>
         <p className="text-xs text-slate max-sm:hidden">seen from the {side}</p>
+        {props.sheet ? (
+          <ToggleButton
+            isSelected={exaggerated}
+            onChange={setExaggerated}
+            isDisabled={!formed}
+            className="border-b-2 border-transparent py-1 text-xs text-slate data-hovered:text-ink data-selected:border-ink data-selected:text-ink pointer-coarse:py-2.5"
+          >
+            Sheet {EXAGGERATED} times as thick
+          </ToggleButton>
+        ) : null}
         <div className="flex grow flex-wrap items-center gap-x-3 gap-y-1 sm:justify-end">
           <ToggleButtonGroup
             aria-label="Cut at a fixed"
@@ -145,6 +166,11 @@ export function ProfileStrip(props: ProfileStripProps) {
             limitDeg={limitDeg}
             units={units}
             vents={vents}
+            sheet={
+              sheetRuns.length > 0
+                ? { runs: sheetRuns, times: exaggerated ? EXAGGERATED : 1, wantedMm: props.sheetMm ?? null }
+                : null
+            }
             active={active}
             onWall={choose}
             label={
@@ -161,6 +187,15 @@ export function ProfileStrip(props: ProfileStripProps) {
           <p className="px-4 text-sm text-slate">The line misses the template.</p>
         ) : null}
       </div>
+      {sheetRuns.length > 0 && section?.boundsMm ? (
+        <p className="px-3 pb-2 text-xs text-slate sm:px-4">
+          {sheetWordsAlong(
+            sheetRuns.flatMap(({ thicknessMm }) => thicknessMm),
+            { wantedMm: props.sheetMm ?? null, times: exaggerated ? EXAGGERATED : 1 },
+            (mm) => formatLength(mm, units, SHEET_DIGITS),
+          )}
+        </p>
+      ) : null}
       {open ? (
         <p className="px-4 pb-2 text-xs text-ochre-ink">
           The mesh is open along this cut; the outline ends where the mesh does.
@@ -178,6 +213,21 @@ export function ProfileStrip(props: ProfileStripProps) {
       ) : null}
     </section>
   );
+}
+
+/** How many times as thick the sheet is drawn on request. */
+const EXAGGERATED = 5;
+
+function sheetWordsAlong(
+  thicknessMm: readonly number[],
+  { wantedMm, times }: { wantedMm: number | null; times: number },
+  say: (mm: number) => string,
+): string {
+  const [low, high] = [Math.min(...thicknessMm), Math.max(...thicknessMm)];
+  const drawn = times === 1 ? 'drawn to scale' : `drawn ${times} times as thick`;
+  const thin =
+    wantedMm !== null && low < wantedMm ? ` Red where it is below the ${say(wantedMm)} wanted.` : '';
+  return `Formed sheet, an estimate: ${say(low)} to ${say(high)} along this cut, ${drawn}.${thin}`;
 }
 
 function useWidth(): [(element: HTMLDivElement | null) => (() => void) | undefined, number] {

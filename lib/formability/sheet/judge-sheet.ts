@@ -15,6 +15,8 @@ export interface SheetJudgement {
   neededMm: number;
   /** For the part itself; null where it is thick enough already. */
   remedy: GaugeRemedy | null;
+  /** The same sheet in another gauge, by a run of its own; null where nothing was formed. */
+  formAt: ((gaugeMm: number) => FormedSheet) | null;
   /** For the foot along the bed; null where that reaches the wanted thickness. */
   footRemedy: FootRemedy | null;
 }
@@ -49,7 +51,7 @@ export function judgeSheet(
   if (short.length > 0) {
     const axes = short.map((axis) => 'xy'[axis]).join(' and ');
     const why = `the frame opening (${frameMm.join(' × ')} mm) leaves no room round the template along ${axes}`;
-    return { formed: null, why, neededMm: wantedMm, remedy: null, footRemedy: null };
+    return { formed: null, why, neededMm: wantedMm, remedy: null, footRemedy: null, formAt: null };
   }
   const input = sheetInput(part, recipe, frameMm);
   const stage = (from: number, to: number): SheetOptions => ({
@@ -71,7 +73,10 @@ export function judgeSheet(
         }
       : null;
   options.onProgress?.(1);
-  return { formed, why: '', neededMm, remedy, footRemedy };
+  const { nodes } = stage(1, 1);
+  const { shouldStop } = options;
+  const formAt = (gaugeMm: number) => formSheet({ ...input, gaugeMm }, { nodes, shouldStop, single: true });
+  return { formed, why: '', neededMm, remedy, footRemedy, formAt };
 }
 
 /** What the verdict goes by: the part; the whole sheet where the template stands no higher than a foot. */

@@ -119,6 +119,8 @@ export function StagePanel(props: StagePanelProps) {
           onSectionLineChange={props.onLineChange}
           cutBy={props.cutBy}
           limitDeg={limits.draftDeg}
+          sheet={sheet}
+          sheetMm={limits.sheetMm}
           vents={vents}
           onWallSelect={(at) => props.onWallSelect(at)}
           className="border-t-0 print:hidden"
