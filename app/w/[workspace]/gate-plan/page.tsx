@@ -1,7 +1,6 @@
 import type { Metadata } from 'next';
 import { RefreshOnLive } from '@/app/_components/live/refresh-on-live';
 import { PageHeader } from '@/app/_components/page-header';
-import { Time } from '@/app/_components/time';
 import { enterWorkspacePage, orNotFound } from '@/app/_frames/enter-page';
 import { WorkspaceFrame } from '@/app/_frames/workspace-frame';
 import { listStandIns } from '@/lib/review/list-stand-ins';
@@ -12,6 +11,7 @@ import { ChangePlan } from './_components/change-plan';
 import { PlanHistory } from './_components/plan-history';
 import { PlanList } from './_components/plan-list';
 import { StandIns } from './_components/stand-ins';
+import { WrittenTime } from './_components/written-time';
 
 type Props = { params: Promise<{ workspace: string }> };
 
@@ -30,8 +30,8 @@ export default async function GatePlanPage({ params }: Props) {
     <>
       <PlanList gates={plan.gates} />
       <p className="mt-3 text-sm text-slate">
-        Made <Time at={plan.madeAt} show="day" />. A revision keeps the version of the plan that it was posted
-        under.
+        Made <WrittenTime at={plan.madeAt} show="day" zone={ctx.workspace.timeZone} />. A revision keeps the
+        version of the plan that it was posted under.
       </p>
     </>
   );
@@ -72,7 +72,7 @@ export default async function GatePlanPage({ params }: Props) {
             : null
         }
       />
-      <PlanHistory versions={versions} />
+      <PlanHistory versions={versions} zone={ctx.workspace.timeZone} />
     </WorkspaceFrame>
   );
 }

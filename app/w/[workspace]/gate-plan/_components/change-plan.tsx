@@ -1,15 +1,10 @@
 'use client';
 
-import dynamic from 'next/dynamic';
-import { useState, type ReactNode } from 'react';
+import { lazy, Suspense, useState, type ReactNode } from 'react';
 import { Button } from '@/app/_components/button';
-import { Skeleton } from '@/app/_components/skeleton';
 import type { PlanEditorProps } from './plan-editor';
 
-const PlanEditor = dynamic(() => import('./plan-editor').then((part) => part.PlanEditor), {
-  ssr: false,
-  loading: () => <Skeleton lines={8} label="The editor is on its way" />,
-});
+const PlanEditor = lazy(async () => ({ default: (await import('./plan-editor')).PlanEditor }));
 
 type Props = Omit<PlanEditorProps, 'onDone' | 'startedFrom'> & {
   /** The plan as it is read. */
@@ -20,7 +15,11 @@ type Props = Omit<PlanEditorProps, 'onDone' | 'startedFrom'> & {
 export function ChangePlan({ children, plan, ...rest }: Props) {
   const [startedFrom, setStartedFrom] = useState<PlanEditorProps['plan'] | null>(null);
   if (startedFrom)
-    return <PlanEditor {...rest} plan={plan} startedFrom={startedFrom} onDone={() => setStartedFrom(null)} />;
+    return (
+      <Suspense fallback={children}>
+        <PlanEditor {...rest} plan={plan} startedFrom={startedFrom} onDone={() => setStartedFrom(null)} />
+      </Suspense>
+    );
   return (
     <>
       {children}

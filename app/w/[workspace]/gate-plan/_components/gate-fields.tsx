@@ -30,6 +30,9 @@ interface Props {
   onRemove: () => void;
 }
 
+const chosen = ({ kind, conditions, who, roles, people }: DraftGate) =>
+  (kind === 'automatic' ? conditions : who === 'roles' ? roles : people).length > 0;
+
 const conditionLabels: Record<(typeof gateConditions)[number], string> = {
   'checks-pass': 'The check run has finished and no failing finding is open',
   'docket-settled': 'Nothing on the docket is left that must be settled',
@@ -72,7 +75,7 @@ export function GateFields({ gate, at, count, people, problems, hint, onChange, 
           </Button>
         </div>
         <p className="w-full text-sm text-slate" aria-live="off">
-          {gateSentence(viewOf(gate, people))}
+          {chosen(gate) ? gateSentence(viewOf(gate, people)) : 'Nothing is chosen yet.'}
         </p>
         {error('kind', 'key') ? <Wrong>{error('kind', 'key')}</Wrong> : null}
       </div>

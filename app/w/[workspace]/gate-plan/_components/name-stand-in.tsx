@@ -1,12 +1,9 @@
 'use client';
 
-import dynamic from 'next/dynamic';
-import { useState } from 'react';
+import { lazy, Suspense, useState } from 'react';
 import { Button } from '@/app/_components/button';
 
-const StandInDialog = dynamic(() => import('./stand-in-dialog').then((part) => part.StandInDialog), {
-  ssr: false,
-});
+const StandInDialog = lazy(async () => ({ default: (await import('./stand-in-dialog')).StandInDialog }));
 
 export interface NameStandInProps {
   /** Of the stand-ins. */
@@ -32,7 +29,11 @@ export function NameStandIn(props: NameStandInProps) {
       >
         I will be away
       </Button>
-      {asked ? <StandInDialog {...props} isOpen={isOpen} onOpenChange={setOpen} /> : null}
+      {asked ? (
+        <Suspense>
+          <StandInDialog {...props} isOpen={isOpen} onOpenChange={setOpen} />
+        </Suspense>
+      ) : null}
     </>
   );
 }

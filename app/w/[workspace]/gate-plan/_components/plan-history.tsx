@@ -1,11 +1,11 @@
 import { SectionHead } from '@/app/_components/section-head';
-import { Time } from '@/app/_components/time';
 import { daysWord } from '@/lib/workspaces/gate-words';
 import type { GatePlanVersion } from '@/lib/workspaces/read-gate-plan';
 import { gateSentence } from './plan-list';
+import { WrittenTime } from './written-time';
 
 /** Every version with what it changed, newest first; each opens to its gates. */
-export function PlanHistory({ versions }: { versions: readonly GatePlanVersion[] }) {
+export function PlanHistory({ versions, zone }: { versions: readonly GatePlanVersion[]; zone: string }) {
   return (
     <section aria-labelledby="versions" className="mt-10">
       <SectionHead title="Versions" id="versions" count={versions.length} />
@@ -17,7 +17,7 @@ export function PlanHistory({ versions }: { versions: readonly GatePlanVersion[]
               {index === 0 ? <span className="text-sm font-medium text-verdigris">now</span> : null}
               <span className="text-sm text-slate">
                 {version.madeBy ? `${version.madeBy}, ` : ''}
-                <Time at={version.madeAt} show="moment" />
+                <WrittenTime at={version.madeAt} show="moment" zone={zone} />
               </span>
             </p>
             {version.changes.length ? (

@@ -55,7 +55,7 @@ export function StandIns({ standIns, today, apiPath, naming }: Props) {
             <NameStandIn apiPath={`${apiPath}/stand-ins`} today={today} {...naming} />
           ) : (
             <p className="text-sm text-slate">
-              You are the only {naming.role} here, so nobody can sign for you. A lead may invite somebody.
+              You are the only {naming.role} here, so nobody can sign for you.
             </p>
           )}
         </div>
