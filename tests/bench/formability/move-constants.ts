@@ -14,13 +14,15 @@ const TIMES = path.join(ROOT, 'tests/.out/test-seconds.json');
 /**
  * Moves every constant of the engine by 1 %, one at a time, in a copy of the project, and looks for a test that fails.
  * What no test notices is printed with its place; exit code 1 then. `--only=<text>` takes files or names with that
- * text in them, `--within=<seconds>` leaves out test files that take longer, `--list` only lists.
+ * text in them, `--tests=<text>` and `--within=<seconds>` leave out other and longer test files, `--list` only lists,
+ * `--verbose` tells each test that noticed.
  */
 export async function run(): Promise<void> {
   const option = (name: string) =>
     process.argv.find((arg) => arg.startsWith(`--${name}=`))?.slice(name.length + 3);
   const only = option('only')?.split(',');
   const within = Number(option('within') ?? Infinity);
+  const among = option('tests')?.split(',');
   const all = findConstants(path.join(ROOT, ENGINE));
   const wanted = all.filter(
     ({ file, name }) => !only || only.some((text) => `${file} ${name}`.includes(text)),
@@ -41,7 +43,7 @@ export async function run(): Promise<void> {
     });
   const bench = await openTestBench(copy);
   try {
-    const known = await timeTests(copy, bench, within);
+    const known = await timeTests(copy, bench, within, among);
     console.log(`${known.size} test files, ${seconds(start)} s; ${moved.length} constants to move`);
     const survivors: Constant[] = [];
     for (const [index, constant] of moved.entries()) {
@@ -66,12 +68,12 @@ export async function run(): Promise<void> {
 type Bench = Awaited<ReturnType<typeof openTestBench>>;
 
 /** Every engine test file that passes unmoved, with its processor time in seconds. */
-async function timeTests(copy: string, bench: Bench, within: number): Promise<Known> {
+async function timeTests(copy: string, bench: Bench, within: number, among?: string[]): Promise<Known> {
   const known: Known = new Map();
   const times = lastTimes();
   for (const file of listTests(path.join(copy, 'tests/unit/formability'))) {
     const name = path.relative(copy, file);
-    if ((times[name] ?? 0) > within) continue;
+    if ((times[name] ?? 0) > within || (among && !among.some((text) => name.includes(text)))) continue;
     const from = process.cpuUsage();
     const failure = await bench.run(file);
     const { user, system } = process.cpuUsage(from);

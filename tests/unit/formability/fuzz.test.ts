@@ -59,7 +59,7 @@ describe.each([
     const roll = dice(seed);
     let reports = 0;
     let refusals = 0;
-    for (let n = 0; n < 250; n++) {
+    for (let n = 0; n < 150; n++) {
       const bytes = mutate(source, roll);
       try {
         const { report } = analyse(bytes, { grid: { cellMm: 2 } });

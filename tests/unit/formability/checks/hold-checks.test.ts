@@ -7,7 +7,7 @@ import { checkOf, reportOn } from '../run-engine';
 
 /** Heat, skin and walls at the modulus of the hottest pull. Materials are generic, figures from memory. */
 
-const coarse = { grid: { cellMm: 0.5 } };
+const coarse = { grid: { cellMm: 1 } };
 const solid = frustum(120, 90, 40, 8);
 const of = (recipe: RecipeInput, mesh = solid) => reportOn(mesh, { ...coarse, ...recipe });
 

@@ -5,7 +5,7 @@ import { box, extrude, frustum, lathe } from '../../../fixtures/meshes/solids';
 import { moved, scaled, together } from '../../../fixtures/meshes/triangles';
 import { checkOf, reportOn } from '../run-engine';
 
-const coarse = { grid: { cellMm: 0.4 } };
+const coarse = { grid: { cellMm: 0.8 } };
 const sanded = { ...coarse, print: { sanded: true } };
 const number = (text: string) => Number(/\d+(\.\d+)?/.exec(text)?.[0]);
 

@@ -2,10 +2,14 @@ import { describe, expect, it } from 'vitest';
 import { carved, rectangle, turnedRing } from '../../../fixtures/meshes/carved';
 import { lathe, plate, ring } from '../../../fixtures/meshes/solids';
 import { moved, together } from '../../../fixtures/meshes/triangles';
-import { checkOf, polygonArea, reportOn } from '../run-engine';
+import type { RecipeInput } from '@/lib/formability/recipe';
+import { checkOf, polygonArea, reportOn as reportOnGrid } from '../run-engine';
 
 type P = [number, number];
 const sides = 96;
+/** Cells of 0.2 mm, as wide as the narrowest bores: these are found on the mesh. */
+const reportOn = (mesh: number[], recipe: RecipeInput = {}) =>
+  reportOnGrid(mesh, { grid: { cellMm: 0.2 }, ...recipe });
 const near = (value: number, expected: number, share: number) =>
   expect(Math.abs(value / expected - 1), `${value} against ${expected}`).toBeLessThan(share);
 const cup = (bore: number, floor = 10): P[] => [
@@ -105,7 +109,7 @@ describe('vents, found as bores on the mesh', () => {
   it('a 0.4 mm bore in a 300 mm template, far narrower than a cell of 0.375 mm is sure to see', () => {
     const outline: P[] = [[-150, -100], [150, -100], [150, 100], [-150, 100]]; // prettier-ignore
     const bores = [[-100.03, 20.07], [0.11, -60.2], [77.7, 33.3]].map(([x, y]) => ring(0.2, 12, x, y)); // prettier-ignore
-    const { vents, recipe } = reportOn(plate(outline, bores, 0, 20));
+    const { vents, recipe } = reportOnGrid(plate(outline, bores, 0, 20));
     expect(recipe.grid.cellMm).toBeCloseTo(0.375, 6);
     expect(vents.map((vent) => vent.diameterMm.toFixed(2))).toEqual(['0.40', '0.40', '0.40']);
     expect(vents[2].at[0]).toBeCloseTo(77.7, 3);
