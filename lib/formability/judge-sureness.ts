@@ -46,7 +46,7 @@ export function judgeSureness(
       ? estimate(
           'membrane computed, held against closed forms; the sheet’s law and friction assumed, no experiment',
         )
-      : estimate('not run'),
+      : estimate('not run, so nothing is said'),
     layers: estimate(`cusp by a published rule; what shows through derived, ${thickness}`),
     air:
       holes ??

@@ -267,6 +267,8 @@ export interface PrintReport {
   massG: number;
   filamentM: number;
   timeS: number;
+  /** With beads whose ends are round: the longest that it should take. */
+  timeMostS: number;
   cost: number;
 }
 

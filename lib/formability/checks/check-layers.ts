@@ -1,3 +1,4 @@
+import { layerForCusp } from '../physics/layer-surface';
 import type { Basis, Check, LayerShowReport } from '../report';
 import { basisOf, roundDown, say, sayGive } from './basis';
 import type { CheckInput } from './check-input';
@@ -52,7 +53,8 @@ function wantedLayer(
   coarse: boolean,
   through: boolean,
 ): number {
-  const forCusp = coarse ? (print.layerMm * limits.cuspMaxMm) / cuspMaxMm : Infinity;
+  const draftDeg = (Math.asin(Math.min(1, cuspMaxMm / print.layerMm)) * 180) / Math.PI;
+  const forCusp = coarse ? layerForCusp(limits.cuspMaxMm, draftDeg, limits.layerMaxMm) : Infinity;
   const forSheet = through ? (show?.layerThatHidesMm ?? 0) : Infinity;
   return roundDown(Math.min(limits.layerMaxMm, forCusp, forSheet), 0.01);
 }

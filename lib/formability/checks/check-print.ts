@@ -17,7 +17,7 @@ export function checkPrint({ report, recipe }: CheckInput): Check {
       source: `bead flow line × layer × ${speedMmS} mm/s at ${efficiency * 100} % efficiency and ${perLayerS} s a layer, assumed (common practice, no source); rates from the recipe`,
       kind: 'computed',
     },
-    message: `Printing takes about ${say(print.timeS / 3600)} h in ${print.layers} layers, ${say(print.massG, 0)} g or ${say(print.filamentM)} m of filament, with ${say(recipe.print.infillPercent, 0)} % infill. It costs about ${say(print.cost, 2)} in the studio's currency, at ${say(recipe.costs.materialPerKg, 2)} per kg, ${say(recipe.costs.machinePerHour, 2)} per hour and ${say(recipe.costs.labour, 2)} for handling: an estimate.`,
+    message: `Printing takes about ${say(print.timeS / 3600)} h, up to ${say(print.timeMostS / 3600)} h with round beads, in ${print.layers} layers, ${say(print.massG, 0)} g or ${say(print.filamentM)} m of filament, with ${say(recipe.print.infillPercent, 0)} % infill. It costs about ${say(print.cost, 2)} in the studio's currency, at ${say(recipe.costs.materialPerKg, 2)} per kg, ${say(recipe.costs.machinePerHour, 2)} per hour and ${say(recipe.costs.labour, 2)} for handling: an estimate.`,
     remedy: '',
     places: [],
   };

@@ -1,5 +1,6 @@
 import { FILAMENTS } from '../materials/filaments';
 import type { Facets } from '../mesh/measure-facets';
+import { beadAreaMm2, roundedBeadAreaMm2 } from '../physics/bead';
 import type { EffectiveRecipe } from '../recipe';
 import type { PrintReport } from '../report';
 
@@ -35,7 +36,8 @@ export function innerVolume(part: PrintInput, shellMm: number, topMm: number): n
 
 /**
  * Time, material and cost: V_mat = V − (1 − ρ) V_inner; t = V_mat / (Q η) + N t_layer with Q = line × layer × speed.
- * Bead flow and infill arithmetic of common slicers; speed and efficiency are assumed.
+ * Bead flow and infill arithmetic of common slicers; speed and efficiency are assumed. At most it takes what beads with
+ * rounded ends take.
  */
 export function estimatePrint(part: PrintInput, recipe: EffectiveRecipe): PrintReport {
   const { print, costs } = recipe;
@@ -43,8 +45,9 @@ export function estimatePrint(part: PrintInput, recipe: EffectiveRecipe): PrintR
   const inner = innerVolume(part, print.shellMm, print.topMm);
   const materialMm3 = Math.max(0, part.volumeMm3 - (1 - print.infillPercent / 100) * inner);
   const layers = Math.ceil(part.heightMm / print.layerMm - 1e-9);
-  const flow = print.lineMm * print.layerMm * speedMmS;
-  const timeS = materialMm3 / (flow * efficiency) + layers * perLayerS;
+  const layingS = materialMm3 / (speedMmS * efficiency);
+  const timeS = layingS / beadAreaMm2(print.lineMm, print.layerMm) + layers * perLayerS;
+  const round = roundedBeadAreaMm2(Math.max(print.lineMm, print.layerMm), print.layerMm);
   const massG = (materialMm3 / 1000) * FILAMENTS[print.material].densityGcm3.value;
   return {
     layers,
@@ -52,6 +55,7 @@ export function estimatePrint(part: PrintInput, recipe: EffectiveRecipe): PrintR
     massG,
     filamentM: materialMm3 / ((Math.PI / 4) * filamentMm ** 2) / 1000,
     timeS,
+    timeMostS: Math.max(timeS, layingS / round + layers * perLayerS),
     cost: (massG / 1000) * costs.materialPerKg + (timeS / 3600) * costs.machinePerHour + costs.labour,
   };
 }
