@@ -86,7 +86,8 @@ function bedRims(mesh: Mesh, facets: Facets, edges: Edges): Rim[] {
   const { position: p } = mesh;
   const steps: Steps = new Map();
   for (let e = 0; e < edges.count; e++) {
-    const [a, b] = [edges.facetA[e], edges.facetB[e]];
+    const a = edges.facetA[e];
+    const b = edges.facetB[e];
     if (b >= 0) {
       if (facets.bed[a] !== facets.bed[b]) addStep(steps, mesh, edges, e, facets.bed[a] ? a : b);
       continue;
@@ -105,15 +106,20 @@ function bedRims(mesh: Mesh, facets: Facets, edges: Edges): Rim[] {
 function ceilingRims(mesh: Mesh, facets: Facets, edges: Edges): Rim[] {
   const { nz, bed, area } = facets;
   const steps: Steps = new Map();
-  // A level facet without area belongs to the face that it lies in.
-  const looksDown = (t: number) => nz[t] < -FLOOR_NZ || (area[t] === 0 && isLevel(mesh, t));
-  const isWall = (t: number) => area[t] > 0 && nz[t] <= FLOOR_NZ && nz[t] >= -FLOOR_NZ;
+  const [wall, ceiling] = [1, 2];
+  const role = new Uint8Array(mesh.triangles);
+  for (let t = 0; t < role.length; t++) {
+    if (bed[t]) continue;
+    // A level facet without area belongs to the face that it lies in.
+    if (area[t] === 0) role[t] = isLevel(mesh, t) ? ceiling : 0;
+    else role[t] = nz[t] < -FLOOR_NZ ? ceiling : nz[t] <= FLOOR_NZ ? wall : 0;
+  }
+  const { facetA, facetB } = edges;
   for (let e = 0; e < edges.count; e++) {
-    const [a, b] = [edges.facetA[e], edges.facetB[e]];
-    if (b < 0) continue;
-    const ceiling = looksDown(a) ? a : looksDown(b) ? b : -1;
-    if (ceiling < 0 || bed[ceiling] || !isWall(ceiling === a ? b : a)) continue;
-    addStep(steps, mesh, edges, e, ceiling);
+    const a = facetA[e];
+    const b = facetB[e];
+    if (b < 0 || role[a] + role[b] !== wall + ceiling) continue;
+    addStep(steps, mesh, edges, e, role[a] === ceiling ? a : b);
   }
   return closeLoops(mesh, steps);
 }

@@ -5,8 +5,10 @@ import type { FacetGrid } from './facet-grid';
 import { RayCaster } from './ray-caster';
 import type { Visibility } from './visibility';
 
-/** Up to so many wall facets are all looked at; of more, so many evenly by number, and the walls' samples. */
-const MOST_FACETS = 3_000;
+/** Up to so many wall facets are all looked at; of more, so many evenly by number, and as many of the walls' samples. */
+const MOST_FACETS = 2_000;
+/** Of such fine meshes only what is narrower than this, mm, is followed: no nozzle hangs on more. */
+const FINE_MM = 10;
 /** Flatter than 60° of draft is a wall. */
 const SIN_TOP = Math.sin(Math.PI / 3);
 /** Two walls bound a detail where they face each other, or turn their backs, within 31° of parallel. */
@@ -49,11 +51,11 @@ export function measureDetails(
   bore: Uint8Array,
   sampled: Int32Array,
 ): DetailReport {
-  const candidates = chooseWalls(facets, bore, sampled);
+  const { candidates, longest } = chooseWalls(facets, bore, sampled);
   const caster = new RayCaster(mesh, grid, MOST_LOOKS);
   const solids: Found[] = [];
   const gaps: Found[] = [];
-  let [leastSolid, leastGap] = [Infinity, Infinity];
+  let [leastSolid, leastGap] = [longest / STILL_FINE, longest / STILL_FINE];
   for (const facet of candidates) {
     const { visible, shadowed, enclosed } = visibility;
     const buried = visible[facet] + shadowed[facet] + enclosed[facet] < 0.5;
@@ -80,20 +82,23 @@ export function measureDetails(
   };
 }
 
-function chooseWalls(facets: Facets, bore: Uint8Array, sampled: Int32Array): Set<number> {
-  const isWall = (t: number) =>
-    !facets.bed[t] && !bore[t] && facets.area[t] > 0 && Math.abs(facets.nz[t]) <= SIN_TOP;
-  let walls = 0;
-  for (let t = 0; t < bore.length; t++) if (isWall(t)) walls++;
-  const stride = Math.max(1, Math.ceil(walls / MOST_FACETS));
-  const chosen = new Set<number>();
-  let n = 0;
-  for (let t = 0; t < bore.length; t++) if (isWall(t) && n++ % stride === 0) chosen.add(t);
-  if (stride > 1) {
-    const skip = Math.max(1, Math.ceil(sampled.length / MOST_FACETS));
-    for (let k = 0; k < sampled.length; k += skip) if (isWall(sampled[k])) chosen.add(sampled[k]);
-  }
-  return chosen;
+function chooseWalls(
+  { bed, area, nz }: Facets,
+  bore: Uint8Array,
+  sampled: Int32Array,
+): { candidates: Set<number>; longest: number } {
+  const isWall = (t: number) => !bed[t] && !bore[t] && area[t] > 0 && nz[t] <= SIN_TOP && nz[t] >= -SIN_TOP;
+  const walls: number[] = [];
+  for (let t = 0; t < bore.length; t++) if (isWall(t)) walls.push(t);
+  if (walls.length <= MOST_FACETS) return { candidates: new Set(walls), longest: Infinity };
+  const candidates = new Set<number>();
+  const take = (from: ArrayLike<number>) => {
+    const stride = Math.max(1, Math.ceil(from.length / MOST_FACETS));
+    for (let k = 0; k < from.length; k += stride) if (isWall(from[k])) candidates.add(from[k]);
+  };
+  take(walls);
+  take(sampled);
+  return { candidates, longest: FINE_MM };
 }
 
 /** Cosine between two normals. */

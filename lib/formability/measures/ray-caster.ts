@@ -99,6 +99,7 @@ export class RayCaster {
     let toZ = dz === 0 ? Infinity : (low[2] + (k + (dz > 0 ? 1 : 0)) * cell - z) / dz;
     this.held = 0;
     this.exit = -1;
+    if (this.looks > this.mostLooks) return NaN;
     let winding = 1;
     let left = NaN;
     for (;;) {
