@@ -55,10 +55,15 @@ export async function viewToday(ctx: PersonContext): Promise<TodayView> {
     const items: TodayItem[] = [];
     for (const row of await gatesToSign(tx, me))
       items.push(
-        // The gate's own day, where the plan sets one, comes before the template's.
+        // The gate's own day, where the plan sets one, comes before the template's: it can be late though an older
+        // revision of the template is agreed.
         item(
           'sign',
-          { ...row, dueOn: row.gateDueOn ?? row.dueOn },
+          {
+            ...row,
+            dueOn: row.gateDueOn ?? row.dueOn,
+            standing: row.gateDueOn ? 'in_review' : row.standing,
+          },
           `Revision ${row.letter} waits for your name at ${row.gateName}${row.standsFor ? `, for ${row.standsFor}` : ''}`,
         ),
       );

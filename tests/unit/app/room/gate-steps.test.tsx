@@ -79,4 +79,46 @@ describe('the gate line of a revision', () => {
     expect(words(view)).toContain('P. Duarte or A. Brandt');
     expect(words(view)).toContain('1 of 2 signed');
   });
+
+  it('says that everybody is needed, by which day, and for whom somebody signed', () => {
+    const everybody = gate({
+      id: ids.client,
+      name: 'Client',
+      state: 'open',
+      quorum: 3,
+      everybody: true,
+      dueOn: '2026-12-09',
+      signatures: [signature({ signedFor: 'J. Halvorsen' })],
+      awaited: ['P. Duarte', 'A. Brandt'],
+    });
+    const text = words(revision({ gates: [everybody] }));
+    expect(text).toContain('L. Okafor , lead, for J. Halvorsen,');
+    expect(text).toContain('waits for P. Duarte and A. Brandt');
+    // The gate's own day, not that of the template.
+    expect(text).toMatch(/due 9 Dec 2026 .*1 of 3 signed/);
+    expect(words(revision({ gates: [{ ...everybody, dueOn: null }] }))).toContain('due 3 Dec 2026');
+    expect(words(revision({ gates: [{ ...everybody, state: 'waiting' }] }))).toContain('everybody signs');
+  });
+
+  it('says that a gate cannot pass, and what a gate for the docket waits for', () => {
+    const short = gate({ id: ids.client, name: 'Client', state: 'open', short: true });
+    expect(words(revision({ gates: [short] }))).toContain('too few are left who may sign');
+    const docket = (change: Partial<RevisionView['gates'][number]>) =>
+      revision({
+        gates: [
+          gate({
+            id: ids.forming,
+            name: 'Docket',
+            kind: 'automatic',
+            conditions: ['docket-settled'],
+            ...change,
+          }),
+        ],
+      });
+    expect(words(docket({ state: 'open' }), { ...none, failing: 1 }, 2)).toContain('2 items to settle first');
+    expect(words(docket({ state: 'waiting' }))).toContain('by the docket');
+    expect(words(docket({ state: 'passed', passedAt: '2026-12-01T09:42:00.000Z' }))).toContain(
+      'nothing left to settle, 1 Dec 2026',
+    );
+  });
 });
