@@ -26,7 +26,7 @@ const PLACES: Record<SheetZone['place'], string> = {
 const LOCALLY: Record<ThinRemedy, string> = {
   gauge: '',
   radius: 'a larger radius in that inner corner',
-  gap: 'more room there (a wider gap, or a lower neighbour)',
+  gap: 'more room there (a wider gap or pocket, or less height beside it)',
   height: 'less height or more draft of that wall',
 };
 
