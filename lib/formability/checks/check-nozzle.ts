@@ -3,7 +3,8 @@ import { roundUp, say, sayPlace } from './basis';
 import type { CheckInput } from './check-input';
 
 const STANDARD = 0.4;
-const SIZES = [0.2, 0.25, 0.3, 0.4, 0.5, 0.6, 0.8, 1];
+/** Nozzles that are sold up to the widest that any size of template asks for, mm. */
+const SIZES = [0.2, 0.25, 0.3, 0.4, 0.5, 0.6];
 /** Lines that the thinnest solid needs side by side, and that the narrowest gap must be wide to stay open. */
 const LINES = { feature: 2, gap: 1 };
 /** Finer than this over a large template takes very long. */

@@ -6,21 +6,21 @@ import { readTable } from './read-table';
 /**
  * The usual handbook table of forming windows, from memory but for the row of ABS, with density and conductivity as
  * in R. J. Crawford, Plastics Engineering, 3rd ed. 1998, Table 1.8 and shrinkage as in two published tables.
- * Effusivity is worked out apart: √(kρc).
+ * Modulus at room temperature is the usual datasheet range, from memory. Effusivity is worked out apart: √(kρc).
  */
 const TABLE = readTable(`
-  sheet | glass      | lower   | core    | upper   | demould | shrink  | rho  | k    | c    | effusivity
-  hips  | 95 to 100  | 127     | 146–152 | 182     | 85      | 0.3–0.8 | 1050 | 0.16 | 1900 | 565.0
-  petg  | 78 to 82   | 121     | 140–149 | 166     | 70–77   | 0.2–0.6 | 1270 | 0.20 | 1750 | 666.7
-  apet  | 73 to 80   | 105–120 | 120–150 | 165     | 70      | 0.2–0.5 | 1335 | 0.24 | 1750 | 748.8
-  pvc   | 75 to 85   | 100–104 | 135–141 | 149–155 | 60–66   | 0.2–0.5 | 1380 | 0.17 | 1500 | 593.2
-  abs   | 100 to 110 | 127     | 149–154 | 182     | 85      | 0.3–0.8 | 1050 | 0.17 | 2000 | 597.5
-  pp    | -10        | 129–143 | 154–163 | 166     | 88      | 1.0–2.5 | 905  | 0.20 | 2400 | 659.1
-  pc    | 147 to 150 | 168     | 188–191 | 204     | 138     | 0.5–0.8 | 1200 | 0.20 | 1900 | 675.3
-  pmma  | 100 to 110 | 149     | 175–177 | 193     | 85      | 0.2–0.8 | 1190 | 0.19 | 2000 | 672.5
-  hdpe  | -120       | 127     | 138–146 | 166–182 | 82      | 1.5–3.5 | 955  | 0.40 | 2700 | 1015.6
-  ldpe  | -120       | 110     | 118–130 | 145     | 60      | 1.5–3.5 | 920  | 0.33 | 2700 | 905.4
-  pla   | 55 to 62   | 75–80   | 90–110  | 125–135 | 45–50   | 0.2–0.5 | 1240 | 0.17 | 1800 | 616.0
+  sheet | glass      | lower   | core    | upper   | demould | shrink  | modulus   | rho  | k    | c    | effusivity
+  hips  | 95 to 100  | 127     | 146–152 | 182     | 85      | 0.3–0.8 | 1600–2400 | 1050 | 0.16 | 1900 | 565.0
+  petg  | 78 to 82   | 121     | 140–149 | 166     | 70–77   | 0.2–0.6 | 1700–2100 | 1270 | 0.20 | 1750 | 666.7
+  apet  | 73 to 80   | 105–120 | 120–150 | 165     | 70      | 0.2–0.5 | 2000–2800 | 1335 | 0.24 | 1750 | 748.8
+  pvc   | 75 to 85   | 100–104 | 135–141 | 149–155 | 60–66   | 0.2–0.5 | 2400–3300 | 1380 | 0.17 | 1500 | 593.2
+  abs   | 100 to 110 | 127     | 149–154 | 182     | 85      | 0.3–0.8 | 1700–2300 | 1050 | 0.17 | 2000 | 597.5
+  pp    | -10        | 129–143 | 154–163 | 166     | 88      | 1.0–2.5 | 1100–1600 | 905  | 0.20 | 2400 | 659.1
+  pc    | 147 to 150 | 168     | 188–191 | 204     | 138     | 0.5–0.8 | 2000–2400 | 1200 | 0.20 | 1900 | 675.3
+  pmma  | 100 to 110 | 149     | 175–177 | 193     | 85      | 0.2–0.8 | 2700–3300 | 1190 | 0.19 | 2000 | 672.5
+  hdpe  | -120       | 127     | 138–146 | 166–182 | 82      | 1.5–3.5 | 700–1200  | 955  | 0.40 | 2700 | 1015.6
+  ldpe  | -120       | 110     | 118–130 | 145     | 60      | 1.5–3.5 | 150–350   | 920  | 0.33 | 2700 | 905.4
+  pla   | 55 to 62   | 75–80   | 90–110  | 125–135 | 45–50   | 0.2–0.5 | 2300–3500 | 1240 | 0.17 | 1800 | 616.0
 `);
 
 describe('sheets against the table', () => {
@@ -37,6 +37,7 @@ describe('sheets against the table', () => {
       upper: sheet.upperC,
       demould: sheet.demouldC,
       shrink: sheet.shrinkPercent,
+      modulus: sheet.modulusMPa,
       rho: sheet.densityKgM3,
       k: sheet.conductivityWmK,
       c: sheet.heatJkgK,
@@ -54,7 +55,7 @@ describe('sheets against the table', () => {
       const mark = id === 'abs' ? 'confirmed' : 'memory';
       for (const figure of [sheet.lowerC, sheet.formingC, sheet.upperC, sheet.demouldC])
         expect(figure.mark, id).toBe(mark);
-      expect([sheet.glassC.mark, sheet.heatJkgK.mark], id).toEqual(['memory', 'memory']);
+      expect([sheet.glassC, sheet.modulusMPa, sheet.heatJkgK].map((figure) => figure.mark), id).toEqual(['memory', 'memory', 'memory']); // prettier-ignore
       const confirmed = [sheet.shrinkPercent, sheet.densityKgM3, sheet.conductivityWmK];
       expect(new Set(confirmed.map((figure) => figure.mark)), id).toEqual(new Set(['confirmed']));
     }

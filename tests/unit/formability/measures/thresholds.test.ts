@@ -8,6 +8,7 @@ import { findOverhangs } from '@/lib/formability/measures/overhangs';
 import { measureFacets } from '@/lib/formability/mesh/measure-facets';
 import { suggestScale } from '@/lib/formability/mesh/suggest-scale';
 import { checkCoordinates } from '@/lib/formability/parse/check-coordinates';
+import { checkTriangles } from '@/lib/formability/parse/size-caps';
 import { madeFacets, type Leaning } from './made-facets';
 
 /** Thresholds of the engine's contract, each with a facet, a pit or a size just inside and one just beyond. */
@@ -207,4 +208,9 @@ it('coordinates reach to 1,000,000 mm', () => {
   const taken = (mm: number) => () => checkCoordinates(Float32Array.of(0, 0, 0, mm, 0, 0, 0, 1, 0), 1);
   expect(taken(999_900)).not.toThrow();
   expect(taken(1_000_100)).toThrow(/1,?000,?000|1e\+?6|km/i);
+});
+
+it('a part has 12,000,000 facets at most', () => {
+  expect(() => checkTriangles(12_000_000, 'it')).not.toThrow();
+  expect(() => checkTriangles(12_000_001, 'it')).toThrow('it has 12000001 facets');
 });
