@@ -347,6 +347,15 @@ describe('sessions', () => {
     expect((await me(cookie)).status).toBe(401);
   });
 
+  it('end with the account', async () => {
+    const { person, cookie } = await makePerson(database, 'Gone');
+    const signedIn = await post('/sign-in/email', { email: person.email, password: testPassword });
+    await database.query('delete from users where id = $1', [person.id]);
+    expect([(await me(cookie)).status, (await me(cookieOf(signedIn))).status]).toEqual([401, 401]);
+    const again = await post('/sign-in/email', { email: person.email, password: testPassword });
+    expect(again.status).toBe(401);
+  });
+
   it('end when they run out, and when their owner is no longer proven', async () => {
     const { person, cookie } = await makePerson(database, 'Late');
     await database.query(`update sessions set expires_at = now() - interval '1 second' where user_id = $1`, [

@@ -3,6 +3,7 @@ import {
   DELETE as removeRoute,
   PATCH as changeRoute,
 } from '@/app/api/v1/studios/[studio]/people/[person]/route';
+import { POST as inviteRoute } from '@/app/api/v1/workspaces/[workspace]/invitations/route';
 import { personContext, type StudioContext } from '@/lib/auth/context';
 import { enterStudio } from '@/lib/auth/enter';
 import { changeStaffRole } from '@/lib/studio/change-staff-role';
@@ -45,6 +46,21 @@ describe('staff of a studio', () => {
       [house.studio.id],
     );
     expect(rows).toEqual([{ was: 'designer', is: 'producer' }]);
+  });
+
+  it('do at once only what the new role allows, whatever cookie they hold', async () => {
+    const second = await joinStudio(database, lead, 'lead');
+    const invite = (email: string) =>
+      callRoute(inviteRoute, {
+        params: { workspace: house.workspace.slug },
+        cookie: second.cookie,
+        body: { email, role: 'reviewer' },
+      });
+    expect((await invite('before@example.test')).status).toBe(201);
+    await changeStaffRole(lead, second.person.id, { role: 'producer' });
+    expect((await invite('after@example.test')).status).toBe(403);
+    await removeStaff(lead, second.person.id);
+    expect((await invite('after@example.test')).status).toBe(404);
   });
 
   it('lose every workspace when they are removed', async () => {
