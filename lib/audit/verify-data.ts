@@ -2,6 +2,7 @@ import { and, asc, eq, inArray, isNotNull, ne, or } from 'drizzle-orm';
 import { locks, packs, releases } from '@/db/schema/gates';
 import { revisions, templates } from '@/db/schema/templates';
 import { auditEntries } from '@/db/schema/trail';
+import { gatePlans } from '@/db/schema/workspaces';
 import type { TenantTx } from '@/db/tenant';
 import type { AuditRow } from './data';
 
@@ -44,6 +45,14 @@ export async function subjectsOf(tx: TenantTx, workspaceId: string, action: stri
     .from(auditEntries)
     .where(and(eq(auditEntries.workspaceId, workspaceId), eq(auditEntries.action, action)))
     .orderBy(asc(auditEntries.seq));
+}
+
+export async function plansOf(tx: TenantTx, workspaceId: string) {
+  return tx
+    .select({ id: gatePlans.id, number: gatePlans.number, gates: gatePlans.gates })
+    .from(gatePlans)
+    .where(eq(gatePlans.workspaceId, workspaceId))
+    .orderBy(asc(gatePlans.number));
 }
 
 export async function releaseWithPack(tx: TenantTx, workspaceId: string, revisionId: string) {

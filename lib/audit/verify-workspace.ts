@@ -4,6 +4,7 @@ import { entriesAfter, readHead } from './data';
 import { verifyChain, verifyHead, type ChainHead, type StoredEntry } from './verify-chain';
 import { revisionsToVerify, subjectsOf } from './verify-data';
 import { verifyObject } from './verify-objects';
+import { planFaults } from './verify-plans';
 import { verifyRevision } from './verify-revision';
 
 export type WorkspaceVerdict = {
@@ -17,7 +18,7 @@ export type WorkspaceVerdict = {
 const pageSize = 1_000;
 
 /**
- * Verifies one workspace: its chain, then every locked revision against it. With `objects` the bytes in the
+ * Verifies one workspace: its chain, then its gate plans and every locked revision against it. With `objects` the bytes in the
  * store are read as well; with `anchor` a head that was kept elsewhere must still be part of the chain.
  */
 export async function verifyWorkspace(
@@ -52,6 +53,7 @@ export async function verifyWorkspace(
     verdict.faults.push(
       `audit entry ${anchor.seq}: it is not the one that was remembered; the chain was cut or rewritten`,
     );
+  verdict.faults.push(...(await planFaults(ctx)));
   await verifyRevisions(ctx, objects, verdict);
   return verdict;
 }

@@ -2,6 +2,8 @@ import { beforeAll, beforeEach, describe, expect, it } from 'vitest';
 import { GET, PUT } from '@/app/api/v1/workspaces/[workspace]/gate-plan/route';
 import { withTenant } from '@/db/tenant';
 import { lockHead } from '@/lib/audit/data';
+import { verifyWorkspace } from '@/lib/audit/verify-workspace';
+import { jobContext } from '@/lib/auth/context';
 import { queueLive } from '@/lib/jobs/queue-live';
 import { tell } from '@/lib/review/activity-words';
 import { viewRevision } from '@/lib/review/view-revision';
@@ -140,6 +142,30 @@ describe('changeGatePlan', () => {
       second.person.id,
     ]);
     expect((await readGatePlan(lead)).gates[0].people[1]).toEqual({ id: second.person.id, name: null });
+  });
+});
+
+describe('a version that a superuser changed', () => {
+  it('is found by the verifier, and so is one that is missing or was never made', async () => {
+    const lead = await house.enter('lead');
+    await changeGatePlan(lead, 1, plan);
+    const faults = async () =>
+      (await verifyWorkspace(jobContext(house.workspace.id), { objects: false })).faults;
+    const unguarded = async (sql: string) => {
+      await database.query('alter table gate_plans disable trigger user');
+      await database.query(sql, [house.workspace.id]);
+      await database.query('alter table gate_plans enable trigger user');
+    };
+    expect(await faults()).toEqual([]);
+    await unguarded(
+      `update gate_plans set gates = jsonb_set(gates, '{2,quorum}', '9') where workspace_id = $1 and number = 2`,
+    );
+    expect(await faults()).toEqual(['gate plan 2: it is not as the audit chain has it']);
+    await unguarded(`update gate_plans set id = gen_random_uuid() where workspace_id = $1 and number = 2`);
+    expect(await faults()).toEqual([
+      'gate plan 2: it has no entry in the audit chain',
+      expect.stringMatching(/^gate plan 2 of entry \d+ is missing$/),
+    ]);
   });
 });
 
