@@ -13,6 +13,7 @@ import { checkNozzle } from '@/lib/formability/checks/check-nozzle';
 import { checkPrint } from '@/lib/formability/checks/check-print';
 import { checkRelease } from '@/lib/formability/checks/check-release';
 import { checkSheet } from '@/lib/formability/checks/check-sheet';
+import { checkShell } from '@/lib/formability/checks/check-shell';
 import { checkSkin } from '@/lib/formability/checks/check-skin';
 import { checkSpacing } from '@/lib/formability/checks/check-spacing';
 import { checkUndercut } from '@/lib/formability/checks/check-undercut';
@@ -247,6 +248,9 @@ describe('heat, skin and walls', () => {
     // Sag goes with the third power: 2 mm (0.8 / 0.1)^⅓ = 4 mm. Collapse: 2 mm (6 / 0.75)^⅓ = 4 mm.
     expect(walls({ sagMm: 0.8 }).remedy).toContain('Make the walls 4 mm thick');
     expect(hollow(0.75).remedy).toContain('Make the walls 4 mm thick');
+    // Ten times as thick is another template: (98.5 / 0.1)^⅓ = 9.95, (101.5 / 0.1)^⅓ = 10.05.
+    expect(walls({ sagMm: 98.5 }).remedy).toContain('Make the walls');
+    expect(walls({ sagMm: 101.5 }).remedy).toContain('too soft');
     // 20 mm (0.79 / 0.1)^⅓ = 39.83 mm: up to the tenth.
     expect(walls({ sagMm: 0.79, wallMm: 20 }).remedy).toContain('Make the walls 39.9 mm thick');
   });
@@ -308,6 +312,28 @@ describe('air and vents', () => {
     });
     expect(check.remedy).toContain('x 3, y 0, z 1.');
     expect(check.remedy).not.toContain('x 4');
+  });
+});
+
+describe('shell', () => {
+  const shell = (print: object, hollow = false) =>
+    checkWith(checkShell, (input) => {
+      input.sizeMm = [200, 90, 40];
+      Object.assign(input.recipe.print, print);
+      Object.assign(input.report.walls, { hollow, minMm: hollow ? 6 : null, topMm: hollow ? 6 : null });
+    });
+
+  it('of 3 mm may be rounded by 0.001 mm', () => {
+    const status = (mm: number) => shell({ shellMm: mm, topMm: mm }).status;
+    expect([status(2.999005), status(2.998995)]).toEqual(['pass', 'caution']);
+  });
+
+  it('is none where all is printed solid, and none too many where a hollow model is', () => {
+    const thick = { shellMm: 6, topMm: 6 };
+    const measured = (infillPercent: number) => shell({ ...thick, infillPercent }).measured;
+    expect([measured(99.5), measured(100)]).toEqual([6, null]);
+    const status = (infillPercent: number) => shell({ ...thick, infillPercent }, true).status;
+    expect([status(99.5), status(100)]).toEqual(['caution', 'pass']);
   });
 });
 
