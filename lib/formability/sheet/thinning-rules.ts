@@ -20,6 +20,7 @@ export function coneThinning(wallDeg: number, share: number): number {
 /** Long female trough of wedge section, at a share of its half width. Derived here, no source. */
 export function wedgeThinning(wallDeg: number, share: number): number {
   const wall = radians(inRange(wallDeg, 0, 90, 'wall angle'));
+  if (wall === 0) return 1;
   return (
     (Math.sin(wall) / wall) * inRange(share, 0, 1, 'share of the half width') ** (Math.tan(wall) / wall - 1)
   );

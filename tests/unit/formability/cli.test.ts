@@ -38,6 +38,24 @@ describe('npm run formability', () => {
     expect(report.timings.parseMs).toBeGreaterThanOrEqual(0);
   });
 
+  it('takes a pull log in the place of the estimated life, and says what is wrong with one', () => {
+    const log = file('log.json', JSON.stringify([{ pulls: 80, failed: false }]));
+    const { status, out } = run(good, '--pull-log', log);
+    expect(status).toBe(0);
+    expect(out).toMatch(/By 1 logged\s+template, 0 of them worn out/);
+    expect(out).toContain('calibrated by the studio: life');
+    const broken = run(good, '--pull-log', file('broken.json', '[{"pulls":-3,"failed":true}]'));
+    expect(broken).toMatchObject({ status: 2, out: '' });
+    expect(broken.err).toContain('error: invalid_recipe: the pull log cannot be used: entry 1 has pulls -3');
+    expect(run(good, '--pull-log').err).toContain('--pull-log needs a file');
+  });
+
+  it('refuses a material that the library has not', () => {
+    const { status, err } = run(good, '--recipe', file('wood.json', '{"print":{"material":"wood"}}'));
+    expect(status).toBe(2);
+    expect(err).toContain('error: invalid_recipe: the recipe cannot be used: print.material: unknown filament "wood"');
+  });
+
   it('prints a page to read without it', () => {
     const { status, out, err } = run(good, '--geometry-only');
     expect([status, err]).toEqual([0, '']);

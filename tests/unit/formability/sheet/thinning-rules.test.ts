@@ -83,6 +83,14 @@ describe('thinning of a free sheet of even thickness that freezes on contact', (
     close(rules.ridgeThinning(gap, height, distance), wanted, relative),
   );
 
+  it('without a wall nothing thins', () => {
+    for (const share of [0.1, 0.5, 1]) {
+      expect(rules.wedgeThinning(0, share)).toBe(1);
+      expect(rules.coneThinning(0, share)).toBe(1);
+      close(rules.wedgeThinning(0.01, share), 1, 1e-5);
+    }
+  });
+
   it('refuses what the rules do not cover', () => {
     expect(() => rules.coneThinning(95, 0.5)).toThrow(/wall angle is 95: give 0 to 90/);
     expect(() => rules.wedgeThinning(45, 1.2)).toThrow(/share of the half width/);
