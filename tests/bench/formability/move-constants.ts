@@ -127,7 +127,9 @@ async function moveOne(copy: string, bench: Bench, constant: Constant, known: Kn
 /** 1 % up, for a threshold 1 % down as well; a count, which 1 % does not change, by one. */
 function valuesOf({ value, threshold, name }: Constant): string[] {
   const counts =
-    Number.isInteger(value) && value < 100 && /(MOST|LEAST|MAX|SAID|TRIES|NODES|STEPS|DEPTH)/.test(name);
+    Number.isInteger(value) &&
+    value < 100 &&
+    /(MOST|LEAST|MAX|SAID|TRIES|NODES|STEPS|DEPTH|FLAG|CONNECTED|ENCLOSED)/.test(name);
   const by = counts ? 1 : value / 100;
   const up = Number((value + by).toPrecision(12));
   const down = Number((value - by).toPrecision(12));
