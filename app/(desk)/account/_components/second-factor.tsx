@@ -21,7 +21,8 @@ export function SecondFactor({ email, on, codesLeft }: { email: string; on: bool
   };
   return (
     <div className="flex flex-col items-start gap-4">
-      <div>
+      {/* Between off and on while it is set up. */}
+      <div className={doing === 'set-up' ? 'hidden' : undefined}>
         <p>
           <StatusWord state={on ? 'done' : 'ahead'} word={on ? 'on' : 'off'} />
         </p>

@@ -62,7 +62,11 @@ function BringCode({ uri, onOn, onCancel }: { uri: string; onOn: () => void; onC
       <p>Let your authenticator read this, or type the secret into it. Neither is shown again later.</p>
       <div className="flex flex-wrap items-start gap-x-6 gap-y-4">
         <QrCode text={uri} label="The secret for your authenticator, as a QR code" />
-        <div className="flex min-w-0 flex-1 basis-56 flex-col items-start gap-2">
+        <div
+          role="group"
+          aria-label="Secret"
+          className="flex min-w-0 flex-1 basis-56 flex-col items-start gap-2"
+        >
           <p className="text-sm font-semibold">Secret</p>
           <p className="font-mono tabular break-words">{secret.match(/.{1,4}/g)?.join(' ')}</p>
           <CopyButton text={secret} what="the secret" />
