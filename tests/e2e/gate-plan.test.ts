@@ -1,3 +1,4 @@
+import { randomUUID } from 'node:crypto';
 import { describe, expect, it } from 'vitest';
 import { axeFindings } from '../support/axe';
 import { screenshot } from '../support/browser';
@@ -9,7 +10,12 @@ async function openWorkspace(lead: SignedIn): Promise<string> {
   const studio = me.body.studios[0].slug;
   const { body } = await lead.call('POST', `/api/v1/studios/${studio}/workspaces`, {
     name: 'Plan of gates',
-    code: 'GPA',
+    // Its own, so that the test can run again on the same product.
+    code: randomUUID()
+      .replaceAll(/[^a-f]/g, '')
+      .padEnd(4, 'G')
+      .slice(0, 4)
+      .toUpperCase(),
   });
   return body.slug;
 }
@@ -49,7 +55,7 @@ describe('a lead changes the gate plan', () => {
         'Move Tooling up',
       );
       await tooling.getByLabel('Due').fill('3');
-      await form.getByText('This plan ends without the client').press('Space');
+      await form.getByRole('checkbox', { name: 'This plan ends without the client' }).press('Space');
       expect(await axeFindings(page)).toEqual([]);
       expect(await overhang()).toBeLessThanOrEqual(0);
       await screenshot(page, 'gate-plan-editor-360-dark');

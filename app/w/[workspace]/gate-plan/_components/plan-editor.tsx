@@ -60,8 +60,10 @@ export function PlanEditor({ apiPath, plan, startedFrom, people, invited, onDone
   }, [gates]);
   // What is wrong is where the reader goes next.
   useEffect(() => {
-    if (problems.length)
-      form.current?.querySelector<HTMLElement>('[aria-invalid="true"], [data-wrong]')?.focus();
+    if (!problems.length) return;
+    const wrong = form.current?.querySelector<HTMLElement>('[aria-invalid="true"], [data-wrong]');
+    const itself = wrong?.matches('input, textarea, [tabindex]');
+    (itself ? wrong : wrong?.querySelector<HTMLElement>('input:checked, input'))?.focus();
   }, [problems]);
 
   const inputs = gates.map(inputOf);
