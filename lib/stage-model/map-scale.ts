@@ -24,6 +24,8 @@ export interface MapScale {
   dark: 'low' | 'high';
   /** figures differ by this from one iso-line to the next */
   isoStep: number;
+  /** no figure lies beyond the scale's end */
+  closed?: boolean;
 }
 
 /** Place in the colour table from which on hatching is dark, as light strokes would not show. */
@@ -47,7 +49,7 @@ export function wallMapScale({ wallMm }: StageLimits): MapScale {
 /** As thick as the sheet was before forming, or as the limit, so that both can be seen. */
 export function sheetMapScale(gaugeMm: number, { sheetMm }: Pick<StageLimits, 'sheetMm'>): MapScale {
   const max = Math.max(gaugeMm, (sheetMm ?? 0) * 1.25);
-  return { max, limit: sheetMm || null, dark: 'low', isoStep: roundUp(max) / 10 };
+  return { max, limit: sheetMm || null, dark: 'low', isoStep: roundUp(max) / 5, closed: true };
 }
 
 /** As deep as the deepest pocket, rounded up to a plain figure. */

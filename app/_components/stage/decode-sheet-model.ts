@@ -8,9 +8,10 @@ import {
   type Mesh,
 } from 'three';
 import { GLTFLoader } from 'three/addons/loaders/GLTFLoader.js';
-import { makeSheetSampler } from '@/lib/formability/sheet/thickness-at';
 import { LIES_ATTRIBUTE, SHEET_ATTRIBUTE, SHEET_STEP_MM } from '@/lib/stage-model/sheet-model-meta';
 import { FLAG_BED, FLAG_UNDERCUT } from '@/lib/stage-model/stage-model-meta';
+import { refineSurface, type Surface } from './refine-surface';
+import { elementMm, makeReachSampler, type SampledSheet } from './sheet-reach';
 
 /** The formed sheet ready to draw, cut and read; plain arrays, so that a worker can hand it over. */
 export interface SheetModelData {
@@ -21,24 +22,15 @@ export interface SheetModelData {
   thicknessMm: Float32Array;
   /** 1 where it lies on template or bed */
   lies: Float32Array;
-  /** thickness over each vertex of the stage model, mm; 0 where the sheet does not reach it */
-  onTemplateMm: Float32Array;
+  nodes: [number, number];
+  /** the template's surface, fine enough for the sheet's figures, with the thickness over each corner, mm; 0 without */
+  over: Surface & { sheetMm: Float32Array };
 }
-
-/** What of the stage model the sheet is laid over. */
-export interface TemplateVertices {
-  positions: Float32Array;
-  flags: Float32Array;
-}
-
-/** The sheet cuts corners of the template by about one of its elements; what lies farther off is bridged. */
-const REACH_ELEMENTS = 1.25;
-const REACH_MM = 0.5;
 
 export async function fetchSheetModel(
   url: string,
   nodes: readonly [number, number],
-  template: TemplateVertices,
+  template: Surface,
 ): Promise<SheetModelData> {
   const answer = await fetch(url, { credentials: 'same-origin' }).catch(() => null);
   if (!answer?.ok) throw new Error('The formed sheet could not be fetched. Reload the page.');
@@ -49,7 +41,7 @@ export async function fetchSheetModel(
 export async function decodeSheetModel(
   glb: ArrayBuffer,
   nodes: readonly [number, number],
-  template: TemplateVertices,
+  template: Surface,
 ): Promise<SheetModelData> {
   await MeshoptDecoder.ready.catch(() => undefined);
   if (!MeshoptDecoder.supported)
@@ -70,38 +62,32 @@ export async function decodeSheetModel(
   const positions = moved(plain(geometry.getAttribute('position'), 3), mesh.matrixWorld);
   const index = Uint32Array.from(geometry.index.array);
   const thicknessMm = plain(counts, 1).map((v) => v * SHEET_STEP_MM);
-  const surface = { nodes: [...nodes] as [number, number], positions, indices: index, thicknessMm };
+  const surface = { nodes: [...nodes] as [number, number], positions, index, thicknessMm };
   return {
     positions,
     normals: normalsOf(positions, index),
     index,
     thicknessMm,
     lies: plain(lies, 1),
-    onTemplateMm: layOver(surface, template),
+    nodes: surface.nodes,
+    over: layOver(surface, template),
   };
 }
 
-export function sheetTransferables(sheet: SheetModelData): ArrayBuffer[] {
-  return [
-    ...new Set(Object.values(sheet).map((array: Float32Array | Uint32Array) => array.buffer as ArrayBuffer)),
-  ];
+export function sheetTransferables({ over, nodes: _, ...sheet }: SheetModelData): ArrayBuffer[] {
+  const arrays = [...Object.values(sheet), ...Object.values(over)];
+  return [...new Set(arrays.map((array) => array.buffer as ArrayBuffer))];
 }
 
-/** Thickness over each vertex of the template: none on the bed, under an overhang, and where the sheet bridges it. */
-function layOver(
-  surface: Parameters<typeof makeSheetSampler>[0],
-  { positions, flags }: TemplateVertices,
-): Float32Array {
-  const sample = makeSheetSampler(surface);
-  const { positions: p, nodes } = surface;
-  const last = p.length - 3;
-  const element = Math.max((p[last] - p[0]) / (nodes[0] - 1), (p[last + 1] - p[1]) / (nodes[1] - 1));
-  const reach = REACH_ELEMENTS * element + REACH_MM;
-  return Float32Array.from(flags, (flag, v) => {
-    if (flag & (FLAG_BED | FLAG_UNDERCUT)) return 0;
-    const { thicknessMm, offMm } = sample(positions[3 * v], positions[3 * v + 1], positions[3 * v + 2]);
-    return offMm <= reach ? thicknessMm : 0;
-  });
+/** Thickness over the template's surface: none on the bed, under an overhang, and where the sheet bridges it. */
+function layOver(sheet: SampledSheet, template: Surface): SheetModelData['over'] {
+  const fine = refineSurface(template, elementMm(sheet));
+  const at = makeReachSampler(sheet);
+  const { positions: p } = fine;
+  const sheetMm = Float32Array.from(fine.flags, (flag, v) =>
+    flag & (FLAG_BED | FLAG_UNDERCUT) ? 0 : (at([p[3 * v], p[3 * v + 1], p[3 * v + 2]]) ?? 0),
+  );
+  return { ...fine, sheetMm };
 }
 
 function normalsOf(positions: Float32Array, index: Uint32Array): Float32Array {

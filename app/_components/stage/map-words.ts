@@ -80,6 +80,12 @@ export function sheetWords(
   const all = totalArea(histogram);
   if (!sheetMm) return { area: `${formatArea(all, units)} of the part`, range, broken: false };
   const below = areaBelow(histogram, sheetMm);
+  if (below === 0)
+    return {
+      area: `None of the part’s ${formatArea(all, units)} below the ${say(sheetMm)} wanted`,
+      range,
+      broken: false,
+    };
   const area = `${formatArea(below, units)} of the part, ${formatShare(below, all)}, below the ${say(sheetMm)} wanted`;
   return { area, range, broken: below > 0 };
 }

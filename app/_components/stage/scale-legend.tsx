@@ -104,7 +104,9 @@ export function ScaleLegend(props: ScaleLegendProps) {
             textAnchor={figure === 0 ? 'start' : figure === max ? 'end' : 'middle'}
             className={clsx('font-mono text-[10px]', figure === limit ? 'fill-madder' : 'fill-slate')}
           >
-            {figure === max && figure !== limit && dark === 'low' ? `${format(figure)}+` : format(figure)}
+            {figure === max && figure !== limit && dark === 'low' && !scale.closed
+              ? `${format(figure)}+`
+              : format(figure)}
           </text>
         ))}
       </svg>

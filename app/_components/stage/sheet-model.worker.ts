@@ -1,6 +1,7 @@
-import { fetchSheetModel, sheetTransferables, type TemplateVertices } from './decode-sheet-model';
+import { fetchSheetModel, sheetTransferables } from './decode-sheet-model';
+import type { Surface } from './refine-surface';
 
-/** Address, nodes and the template's vertices in, the decoded sheet (or the problem in words) out. */
+/** Address, nodes and the template's surface in, the decoded sheet (or the problem in words) out. */
 self.onmessage = async ({ data }: MessageEvent<SheetRequest>) => {
   try {
     const sheet = await fetchSheetModel(data.url, data.nodes, data.template);
@@ -13,5 +14,5 @@ self.onmessage = async ({ data }: MessageEvent<SheetRequest>) => {
 export interface SheetRequest {
   url: string;
   nodes: [number, number];
-  template: TemplateVertices;
+  template: Surface;
 }

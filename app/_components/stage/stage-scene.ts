@@ -41,6 +41,10 @@ export class StageScene {
   private readonly cut = new BufferGeometry();
   private readonly sheet = new BufferGeometry();
   private readonly sheetMaterial = createSheetMaterial(this.template.scale);
+  /** the template's surface, fine enough for the sheet's thickness: drawn instead of the model's for that map */
+  private readonly over = new BufferGeometry();
+  private readonly overMesh = new Mesh(this.over, this.template.material);
+  private map: StageMap = 'plain';
   private readonly sheetMeshes: Mesh[];
   private sheetOpacity = 0;
   private readonly whole: Mesh;
@@ -90,7 +94,7 @@ export class StageScene {
       mesh.visible = false;
       return mesh;
     });
-    this.scene.add(this.whole, this.light, this.inkLines, this.cutLines, ...this.sheetMeshes);
+    this.scene.add(this.whole, this.light, this.inkLines, this.cutLines, this.overMesh, ...this.sheetMeshes);
   }
 
   resize(width: number, height: number): void {
@@ -99,6 +103,7 @@ export class StageScene {
   }
 
   setMap(map: StageMap, scale: MapScale | null, layerMm: number): void {
+    this.map = map;
     this.template.setMap(map, scale, layerMm);
   }
 
@@ -111,9 +116,12 @@ export class StageScene {
       this.sheet.setAttribute('lies', new BufferAttribute(sheet.lies, 1));
       this.sheet.setIndex(new BufferAttribute(sheet.index, 1));
       this.sheetMaterial.setScale(scale);
-      const over = new BufferAttribute(sheet.onTemplateMm, 1);
-      this.surface.setAttribute('sheet', over);
-      this.coarse.setAttribute('sheet', over);
+      const { over } = sheet;
+      this.over.setAttribute('position', new BufferAttribute(over.positions, 3));
+      this.over.setAttribute('normal', new BufferAttribute(over.normals, 3));
+      this.over.setAttribute('flags', new BufferAttribute(over.flags, 1));
+      this.over.setAttribute('sheet', new BufferAttribute(over.sheetMm, 1));
+      this.over.setIndex(new BufferAttribute(over.index, 1));
     }
     if (!sheet) this.setSheetOpacity(0);
   }
@@ -145,7 +153,9 @@ export class StageScene {
     const ratio = plain ? Math.min(1, screen) * 0.75 : this.software ? Math.max(1.5, screen) : screen;
     if (this.renderer.getPixelRatio() !== ratio) this.renderer.setPixelRatio(ratio);
     const hasCoarse = this.model.coarse.length > 0;
-    this.whole.visible = !(plain && hasCoarse);
+    const fine = this.map === 'sheet' && this.over.index !== null && !(plain && hasCoarse);
+    this.overMesh.visible = fine;
+    this.whole.visible = !fine && !(plain && hasCoarse);
     this.light.visible = plain && hasCoarse;
     this.inkLines.visible = !plain || this.model.lines.length < 20_000;
     this.template.setPitch(HATCH_CSS_PX * ratio);
@@ -188,7 +198,8 @@ export class StageScene {
 
   dispose(): void {
     cancelAnimationFrame(this.probe);
-    for (const geometry of [this.surface, this.coarse, this.ink, this.cut, this.sheet]) geometry.dispose();
+    for (const geometry of [this.surface, this.coarse, this.ink, this.cut, this.sheet, this.over])
+      geometry.dispose();
     this.sheetMaterial.dispose();
     this.template.dispose();
     this.inkMaterial.dispose();

@@ -14,6 +14,7 @@ import { StageFoot } from './stage-foot';
 import { StageMarks } from './stage-marks';
 import { sheetMapScale } from '@/lib/stage-model/map-scale';
 import { offeredMaps, scaleOfMap, STAGE_MAPS } from './stage-maps';
+import { makeReachSampler } from './sheet-reach';
 import { Picture, STAGE_FRAME, STAGE_HEIGHT } from './stage-picture';
 import type { StageProps } from './stage-props';
 import type { SurfaceHit } from './surface-picker';
@@ -86,7 +87,7 @@ export default function StageView(props: StageProps) {
 
   useEffect(() => {
     if (!engine) return;
-    engine.picker.setSheet(sheet?.onTemplateMm ?? null);
+    engine.picker.setSheet(sheet && makeReachSampler(sheet));
     engine.scene.setSheet(sheet, sheetMeta && sheetMapScale(sheetMeta.gaugeMm, limits));
     engine.scene.setSheetOpacity(sheet ? fade : 0);
     engine.control.invalidate();

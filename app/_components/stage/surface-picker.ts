@@ -40,7 +40,7 @@ export function toScreen(at: Point, rig: RigState, { width, height }: StageSize)
 export class SurfacePicker {
   private readonly tree: MeshBVH;
   private readonly reach: number;
-  private sheetMm: Float32Array | null = null;
+  private sheetAt: (at: Point) => number | null = () => null;
 
   constructor(private readonly model: StageModelData) {
     const geometry = new BufferGeometry();
@@ -51,9 +51,9 @@ export class SurfacePicker {
     this.reach = (geometry.boundingSphere?.radius ?? 100) * 4;
   }
 
-  /** Thickness of the formed sheet over each vertex, mm, 0 where it does not reach. */
-  setSheet(onTemplateMm: Float32Array | null): void {
-    this.sheetMm = onTemplateMm;
+  /** What tells the formed sheet's thickness at a place of the surface, mm; null where it does not reach. */
+  setSheet(sheetAt: ((at: Point) => number | null) | null): void {
+    this.sheetAt = sheetAt ?? (() => null);
   }
 
   /** The surface under a place (CSS pixels from the top left), or null where there is only paper. */
@@ -90,7 +90,7 @@ export class SurfacePicker {
       undercut: (flags & FLAG_UNDERCUT) !== 0,
       bed: (flags & FLAG_BED) !== 0,
       wallMm: known(this.model.wallMm, corners, weights, 0),
-      sheetMm: known(this.sheetMm, corners, weights, 0),
+      sheetMm: flags & (FLAG_BED | FLAG_UNDERCUT) ? null : this.sheetAt(hit.point.toArray() as Point),
       trapMm: positive(known(this.model.trapMm, corners, weights, NO_TRAP_MM)),
       unvented: (flags & FLAG_UNVENTED) !== 0,
     };

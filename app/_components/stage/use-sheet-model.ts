@@ -53,9 +53,9 @@ export function useSheetModel(
   useEffect(() => {
     if (!url || !key || !model) return undefined;
     let current = true;
-    const { positions, flags } = model;
+    const { positions, normals, flags, index } = model;
     const [along, across] = nodes.split(',').map(Number);
-    loadSheet({ url, nodes: [along, across], template: { positions, flags } }).then(
+    loadSheet({ url, nodes: [along, across], template: { positions, normals, flags, index } }).then(
       (found) => current && setLoaded({ key, model, sheet: found }),
       // The model itself is what the page is about; without its sheet the map says that there is none.
       () => undefined,

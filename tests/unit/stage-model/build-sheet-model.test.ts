@@ -18,6 +18,8 @@ const wallX = 200 + 30 - 9 * Math.tan((6 * Math.PI) / 180);
 const seen = {
   positions: Float32Array.from([200, -30, 18, wallX, -30, 9, 200, -30, 0, 200, -30, 18, 200, -30, 40]),
   flags: Float32Array.from([0, 0, 1, 2, 0]),
+  normals: new Float32Array(15),
+  index: new Uint32Array(0),
 };
 const decode = async (glb: Uint8Array, nodes = surface.nodes) =>
   decodeSheetModel(glb.slice().buffer as ArrayBuffer, nodes, seen);
@@ -35,7 +37,8 @@ describe('the formed sheet for the page', () => {
   });
 
   it('lays its thickness over the template: none on the bed, under an overhang, or where it does not reach', async () => {
-    const { onTemplateMm } = await decode((await built).glb);
+    const { over } = await decode((await built).glb);
+    const onTemplateMm = over.sheetMm;
     expect(onTemplateMm[0]).toBeCloseTo(1, 2);
     expect(onTemplateMm[1]).toBeGreaterThan(0.3);
     expect(onTemplateMm[1]).toBeLessThan(0.8);

@@ -45,7 +45,13 @@ describe('scales of the maps', () => {
   it('are three limits long for walls, and 6 mm where the limit is small or missing', () => {
     expect(wallMapScale(limits).max).toBe(9);
     expect(wallMapScale({ ...limits, wallMm: 0.9 }).max).toBe(6);
-    expect(sheetMapScale(1.2, limits)).toEqual({ max: 1.2, limit: 0.35, dark: 'low', isoStep: 0.12 });
+    expect(sheetMapScale(1.2, limits)).toEqual({
+      max: 1.2,
+      limit: 0.35,
+      dark: 'low',
+      isoStep: 0.24,
+      closed: true,
+    });
     expect(sheetMapScale(0.4, { sheetMm: 0.4 }).max).toBe(0.5);
     expect(sheetMapScale(1, { sheetMm: 0 }).limit).toBeNull();
     expect(wallMapScale({ ...limits, wallMm: null })).toMatchObject({ max: 6, limit: null });

@@ -167,6 +167,8 @@ describe('the legend of the formed sheet', () => {
     const free = <SheetLegend sheet={sheet} limits={{ ...limits, sheetMm: null }} reading={0.5} />;
     expect(words(free)).toContain('30.0 cm² of the part');
     expect(words(free)).not.toContain('hatched');
+    const enough = <SheetLegend sheet={sheet} limits={{ ...limits, sheetMm: 0.2 }} reading={null} />;
+    expect(words(enough)).toContain('None of the part’s 30.0 cm² below the 0.20 mm wanted');
   });
 });
 
