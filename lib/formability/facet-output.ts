@@ -44,14 +44,16 @@ export function undercutAreas(
 ): { overhangAreaMm2: number; shadowedAreaMm2: number } {
   let overhang = 0;
   let shadowed = 0;
-  for (let t = 0; t < facets.area.length; t++) {
-    if (facets.bed[t]) continue;
-    if (facets.nz[t] < -SIN_VERTICAL) {
-      const open = facets.area[t] * (visibility.visible[t] + visibility.shadowed[t]);
+  const { area, nz, bed } = facets;
+  const { visible, shadowed: hidden } = visibility;
+  for (let t = 0; t < area.length; t++) {
+    if (bed[t]) continue;
+    if (nz[t] < -SIN_VERTICAL) {
+      const open = area[t] * (visible[t] + hidden[t]);
       overhang += open;
       shadowed += open;
     } else if (!bore[t]) {
-      shadowed += facets.area[t] * visibility.shadowed[t];
+      shadowed += area[t] * hidden[t];
     }
   }
   return { overhangAreaMm2: overhang, shadowedAreaMm2: shadowed };

@@ -1,5 +1,5 @@
 import { wantedDraft } from './checks/check-draft';
-import { judgeWalls, type WallJudgement } from './measures/judge-walls';
+import { judgeWalls, wallRegions, type WallJudgement } from './measures/judge-walls';
 import { macroRegions, measureMacroDraft, type MacroWalls } from './measures/measure-macro-draft';
 import { nubDraftDeg } from './physics/layer-surface';
 import type { EffectiveRecipe } from './recipe';
@@ -27,7 +27,7 @@ export function judgeDraft(
   { print, limits }: EffectiveRecipe,
   known?: MacroWalls,
 ): DraftJudgement {
-  const { prepared, facets, draft, visibility, holes, size } = part;
+  const { prepared, facets, draft, wallFacets, size } = part;
   const { mesh } = prepared;
   const wantedDeg = wantedDraft({
     sanded: print.sanded,
@@ -36,10 +36,10 @@ export function judgeDraft(
     layerDraftDeg: nubDraftDeg(print.layerMm, limits.layerGrooveMm),
   });
   const macro = known ?? measureMacroDraft(mesh, facets, notWalls(part), Math.max(...size));
-  const walls = judgeWalls(mesh, facets, draft.ofFacet, visibility, holes.bore, wantedDeg);
+  const walls = judgeWalls(mesh, facets, draft.ofFacet, wallFacets, wantedDeg);
   const regions = walls.stepped
     ? macroRegions(macro, wantedDeg, LEAST_AREA_MM2, MOST_REGIONS)
-    : walls.regions;
+    : wallRegions(mesh, facets, draft.ofFacet, wallFacets, walls, wantedDeg);
   const [x, y] = mesh.centre;
   return {
     walls,
@@ -57,10 +57,13 @@ export function judgeDraft(
 
 /** Facets that are no wall to the sheet: bed, bores, flat ceilings of undercuts, cavities, what lies inside solid. */
 function notWalls({ facets, holes, undercuts, visibility }: Part): Uint8Array {
-  const skip = facets.bed.slice();
+  const { bed, nz } = facets;
+  const { bore } = holes;
+  const { ceiling } = undercuts;
+  const { touched } = visibility;
+  const skip = new Uint8Array(bed.length);
   for (let t = 0; t < skip.length; t++) {
-    const ceiling = undercuts.ceiling[t] && facets.nz[t] < NZ_CEILING;
-    if (holes.bore[t] || ceiling || visibility.visible[t] + visibility.shadowed[t] < 0.5) skip[t] = 1;
+    if (touched[t] === 0 || bed[t] || bore[t] || (ceiling[t] && nz[t] < NZ_CEILING)) skip[t] = 1;
   }
   return skip;
 }

@@ -11,6 +11,7 @@ import { findUndercuts, type Undercuts } from './measures/find-undercuts';
 import type { Flood } from './measures/map-pockets';
 import { findThinUndercuts } from './measures/find-thin-undercuts';
 import { findVents, type Vents } from './measures/find-vents';
+import { findWalls, type WallFacets } from './measures/judge-walls';
 import { measureDetails } from './measures/measure-details';
 import { measureDraft } from './measures/measure-draft';
 import { measureWalls, type Walls } from './measures/measure-walls';
@@ -37,6 +38,7 @@ export interface Part {
   spacing: Spacing[];
   visibility: Visibility;
   draft: ReturnType<typeof measureDraft>;
+  wallFacets: WallFacets;
   walls: Walls;
   detail: DetailReport;
   /** Width, depth, height above the bed. */
@@ -84,10 +86,15 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     );
     return { ...found, spacing: findSpacing(mesh, facetGrid, surface, grid, found.pits) };
   });
-  const { visibility, draft } = stages.run('facets', () => {
+  const { visibility, draft, wallFacets } = stages.run('facets', () => {
     const visibility = findVisibility(mesh, facets, columns, air, perFacet);
     findThinUndercuts(mesh, facets, visibility, grid.cell, shells.ofFacet, limits.undercutDepthMm, undercuts);
-    return { visibility, draft: measureDraft(facets) };
+    const draft = measureDraft(facets);
+    return {
+      visibility,
+      draft,
+      wallFacets: findWalls(facets, draft.ofFacet, visibility.touched, holes.bore),
+    };
   });
   const { walls, detail } = stages.run('walls', () => {
     const walls = measureWalls(mesh, facets, facetGrid, columns, air, visibility, holes.bore);
@@ -106,6 +113,7 @@ export function surveyPart(raw: RawMesh, recipe: EffectiveRecipe, stages: Stages
     spacing,
     visibility,
     draft,
+    wallFacets,
     walls,
     detail,
     size,

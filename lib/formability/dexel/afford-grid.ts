@@ -17,8 +17,13 @@ export function affordGrid(mesh: Mesh, grid: Grid): Grid {
     const a = index[c] * 3;
     const b = index[c + 1] * 3;
     const d = index[c + 2] * 3;
-    area += Math.abs((p[b] - p[a]) * (p[d + 1] - p[a + 1]) - (p[b + 1] - p[a + 1]) * (p[d] - p[a])) / 2;
-    rise += Math.max(p[a + 1], p[b + 1], p[d + 1]) - Math.min(p[a + 1], p[b + 1], p[d + 1]);
+    const ya = p[a + 1];
+    const yb = p[b + 1];
+    const yd = p[d + 1];
+    area += Math.abs((p[b] - p[a]) * (yd - ya) - (yb - ya) * (p[d] - p[a])) / 2;
+    const high = ya > yb ? (ya > yd ? ya : yd) : yb > yd ? yb : yd;
+    const low = ya < yb ? (ya < yd ? ya : yd) : yb < yd ? yb : yd;
+    rise += high - low;
   }
   let { cell, nx, ny } = grid;
   const coarseEnough = () => area <= MOST_HITS * cell * cell && rise <= MOST_SPANS * cell;

@@ -39,18 +39,12 @@ export function connectAir(
   const slots = z.length;
   const joined = new UnionFind(slots);
   const mouth = new Uint8Array(slots);
-  const beyond = rim === 'open' ? -1 : -2;
-  const isGap = (c: number, s: number) => z[s] - gapFloor(columns, c, s) > GAP_MM;
   const { nx, ny } = grid;
+  markMouths(columns, surface, rim === 'open' ? 0 : Infinity, mouth);
   for (let c = 0; c < nx * ny; c++) {
-    const i = c % nx;
-    const j = (c - i) / nx;
-    markMouths(columns, surface, c, i > 0 ? c - 1 : beyond, mouth);
-    markMouths(columns, surface, c, i + 1 < nx ? c + 1 : beyond, mouth);
-    markMouths(columns, surface, c, j > 0 ? c - nx : beyond, mouth);
-    markMouths(columns, surface, c, j + 1 < ny ? c + nx : beyond, mouth);
-    if (i + 1 < nx) joinGaps(columns, c, c + 1, joined);
-    if (j + 1 < ny) joinGaps(columns, c, c + nx, joined);
+    if (count[c] === 0) continue;
+    if ((c + 1) % nx !== 0 && count[c + 1] > 0) joinGaps(start, count, z, c, c + 1, joined.parent);
+    if (c + nx < nx * ny && count[c + nx] > 0) joinGaps(start, count, z, c, c + nx, joined.parent);
   }
   const open = new Uint8Array(slots);
   for (let s = 0; s < slots; s++) if (mouth[s]) open[joined.find(s)] = 1;
@@ -62,11 +56,11 @@ export function connectAir(
   let enclosed = 0;
   for (let c = 0; c < nx * ny; c++) {
     for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
-      if (!isGap(c, s)) continue;
+      const length = k === 0 ? z[s] : z[s] - z[s - 1];
+      if (!(length > GAP_MM)) continue;
       const root = joined.find(s);
       if (number[root] < 0) number[root] = pockets++;
       pocket[s] = number[root];
-      const length = z[s] - gapFloor(columns, c, s);
       state[s] = open[root] ? CONNECTED : ENCLOSED;
       if (open[root]) undercut += length;
       else enclosed += length;
@@ -83,35 +77,62 @@ export function connectAir(
   };
 }
 
+/** @param beyond height of the surface beyond the grid */
 function markMouths(
-  columns: Columns,
+  { grid: { nx, ny }, start, count, z }: Columns,
   surface: Float64Array,
-  c: number,
-  beside: number,
+  beyond: number,
   mouth: Uint8Array,
 ): void {
-  const { start, count, z } = columns;
-  if (beside === -2) return;
-  const over = beside < 0 ? 0 : surface[beside];
-  for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
-    if (z[s] - gapFloor(columns, c, s) > GAP_MM && z[s] > over + GAP_MM) mouth[s] = 1;
+  for (let j = 0, c = 0; j < ny; j++) {
+    for (let i = 0; i < nx; i++, c++) {
+      if (count[c] === 0) continue;
+      const left = i > 0 ? surface[c - 1] : beyond;
+      const right = i + 1 < nx ? surface[c + 1] : beyond;
+      const front = j > 0 ? surface[c - nx] : beyond;
+      const back = j + 1 < ny ? surface[c + nx] : beyond;
+      const across = left < right ? left : right;
+      const along = front < back ? front : back;
+      const over = (across < along ? across : along) + GAP_MM;
+      for (let k = 0, s = start[c]; k < count[c]; k++, s += 2) {
+        if (z[s] > over && (k === 0 ? z[s] : z[s] - z[s - 1]) > GAP_MM) mouth[s] = 1;
+      }
+    }
   }
 }
 
-/** Walks both columns' gaps upwards together. */
-function joinGaps(columns: Columns, a: number, b: number, joined: UnionFind): void {
-  const { start, count, z } = columns;
+/** Walks both columns' gaps upwards together; the smaller slot becomes the root. */
+function joinGaps(
+  start: Uint32Array,
+  count: Uint32Array,
+  z: Float64Array,
+  a: number,
+  b: number,
+  parent: Int32Array,
+): void {
   let sa = start[a];
   let sb = start[b];
   const endA = sa + 2 * count[a];
   const endB = sb + 2 * count[b];
+  let floorA = 0;
+  let floorB = 0;
   while (sa < endA && sb < endB) {
-    const floorA = gapFloor(columns, a, sa);
-    const floorB = gapFloor(columns, b, sb);
-    const low = floorA > floorB ? floorA : floorB;
-    const high = z[sa] < z[sb] ? z[sa] : z[sb];
-    if (high - low > GAP_MM) joined.join(sa, sb);
-    if (z[sa] <= z[sb]) sa += 2;
-    else sb += 2;
+    const topA = z[sa];
+    const topB = z[sb];
+    if ((topA < topB ? topA : topB) - (floorA > floorB ? floorA : floorB) > GAP_MM) {
+      let ra = sa;
+      while (parent[ra] !== ra) ra = parent[ra] = parent[parent[ra]];
+      let rb = sb;
+      while (parent[rb] !== rb) rb = parent[rb] = parent[parent[rb]];
+      if (ra < rb) parent[rb] = ra;
+      else parent[ra] = rb;
+    }
+    if (topA <= topB) {
+      floorA = z[sa + 1];
+      sa += 2;
+    } else {
+      floorB = z[sb + 1];
+      sb += 2;
+    }
   }
 }

@@ -38,12 +38,16 @@ export function measureEdges(
   const sharp = Math.cos((SHARP_DEG * Math.PI) / 180);
   const flat = Math.cos((FLAT_DEG * Math.PI) / 180);
   let walks = 0;
-  for (let e = 0; e < edges.count; e++) {
-    const a = edges.facetA[e];
-    const b = edges.facetB[e];
-    if (b < 0 || facets.bed[a] || facets.bed[b] || bore[a] || bore[b]) continue;
-    const cos = facets.nx[a] * facets.nx[b] + facets.ny[a] * facets.ny[b] + facets.nz[a] * facets.nz[b];
-    if (cos > flat || facets.area[a] === 0 || facets.area[b] === 0) continue;
+  const { nx, ny, nz, bed } = facets;
+  const { count, facetA, facetB } = edges;
+  for (let e = 0; e < count; e++) {
+    const a = facetA[e];
+    const b = facetB[e];
+    if (b < 0) continue;
+    // Most edges of a fine mesh end here.
+    const cos = nx[a] * nx[b] + ny[a] * ny[b] + nz[a] * nz[b];
+    if (cos > flat || bed[a] || bed[b] || bore[a] || bore[b]) continue;
+    if (facets.area[a] === 0 || facets.area[b] === 0) continue;
     if (visibility.visible[a] < 0.5 && visibility.visible[b] < 0.5) continue;
     const length = walker.length(e);
     const convex = walker.isConvex(e);

@@ -13,6 +13,29 @@ const BUCKETS = 20_000;
  * the assumed groove between beads (derived: a nub clears the next bead once the wall has retreated by w).
  */
 export function measureLayers(facets: Facets, layerMm: number, grooveMm: number): LayersReport {
+  let slopes = known.get(facets);
+  if (!slopes) known.set(facets, (slopes = measureSlopes(facets)));
+  return {
+    cuspMaxMm: layerMm * slopes.most,
+    cuspMedianMm: layerMm * slopes.median,
+    treadMinMm: slopes.least === null ? 0 : layerMm * Math.tan(Math.asin(slopes.least)),
+    layerDraftDeg: nubDraftDeg(layerMm, grooveMm),
+    show: null,
+  };
+}
+
+/** n_z of the facets that have steps. */
+interface Slopes {
+  most: number;
+  median: number;
+  /** Null where no facet has steps. */
+  least: number | null;
+}
+
+/** What no layer changes, for advice that tries several on one part. */
+const known = new WeakMap<Facets, Slopes>();
+
+function measureSlopes(facets: Facets): Slopes {
   const { area, nz, bed } = facets;
   const low = Math.sin(VERTICAL_DEG / DEG);
   const high = Math.sin(FLAT_DEG / DEG);
@@ -23,7 +46,7 @@ export function measureLayers(facets: Facets, layerMm: number, grooveMm: number)
   for (let t = 0; t < area.length; t++) {
     const n = nz[t];
     if (bed[t] || !(n > low && n < high)) continue;
-    byNz[Math.floor(n * BUCKETS)] += area[t];
+    byNz[(n * BUCKETS) | 0] += area[t];
     total += area[t];
     if (n > most) most = n;
     if (n < least) least = n;
@@ -32,22 +55,17 @@ export function measureLayers(facets: Facets, layerMm: number, grooveMm: number)
   let below = 0;
   while (total > 0 && below + byNz[bucket] < total / 2) below += byNz[bucket++];
   const within = total > 0 && byNz[bucket] > 0 ? medianIn(facets, low, high, bucket, total / 2 - below) : 0;
-  return {
-    cuspMaxMm: layerMm * most,
-    cuspMedianMm: layerMm * within,
-    treadMinMm: total > 0 ? layerMm * Math.tan(Math.asin(least)) : 0,
-    layerDraftDeg: nubDraftDeg(layerMm, grooveMm),
-    show: null,
-  };
+  return { most, median: within, least: total > 0 ? least : null };
 }
 
 /** The exact area-weighted median of n_z inside its bucket. */
 function medianIn(facets: Facets, low: number, high: number, bucket: number, wanted: number): number {
   const found: { n: number; area: number }[] = [];
-  for (let t = 0; t < facets.area.length; t++) {
-    const n = facets.nz[t];
-    if (facets.bed[t] || !(n > low && n < high) || Math.floor(n * BUCKETS) !== bucket) continue;
-    found.push({ n, area: facets.area[t] });
+  const { area, nz, bed } = facets;
+  for (let t = 0; t < area.length; t++) {
+    const n = nz[t];
+    if (bed[t] || !(n > low && n < high) || ((n * BUCKETS) | 0) !== bucket) continue;
+    found.push({ n, area: area[t] });
   }
   found.sort((a, b) => a.n - b.n);
   let below = 0;

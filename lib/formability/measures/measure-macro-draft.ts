@@ -1,6 +1,7 @@
 import type { Facets } from '../mesh/measure-facets';
 import type { Mesh } from '../mesh/mesh';
 import type { DraftRegion } from '../report';
+import { CellTable } from './cell-table';
 import { sumCells, type CellSums } from './sum-cells';
 import { DEG } from './thresholds';
 
@@ -34,40 +35,53 @@ export function measureMacroDraft(mesh: Mesh, facets: Facets, skip: Uint8Array, 
   const sums = sumCells(mesh, facets, skip, cell);
   const whole: MacroWalls['patches'] = [];
   const cut: MacroWalls['patches'] = [];
+  const across = new Float64Array(sums.count);
+  for (let c = 0; c < sums.count; c++) across[c] = Math.hypot(sums.x[c], sums.y[c]);
+  const rough = new Float64Array(27);
   for (let c = 0; c < sums.count; c++) {
-    const [x, y, z] = [sums.x[c], sums.y[c], sums.z[c]];
-    const across = Math.hypot(x, y);
     // A cell of little but tops cannot come out as a wall.
-    if (Math.abs(z) > STEEPEST * across) continue;
-    const deg = windowDraft(sums, c);
+    if (Math.abs(sums.z[c]) > STEEPEST * across[c]) continue;
+    const deg = windowDraft(sums, across, c, rough);
     if (Math.abs(deg) >= WALL_DEG) continue;
     const own: [number, number, number] = [sums.i[c], sums.j[c], sums.k[c]];
-    const at = own.map((value) => (value + 0.5) * cell) as [number, number, number];
-    (own[2] < REACH_CELLS ? cut : whole).push({ at, cell: own, deg, areaMm2: across });
+    const at: [number, number, number] = [
+      (own[0] + 0.5) * cell,
+      (own[1] + 0.5) * cell,
+      (own[2] + 0.5) * cell,
+    ];
+    (own[2] < REACH_CELLS ? cut : whole).push({ at, cell: own, deg, areaMm2: across[c] });
   }
   const patches = whole.length > 0 ? [...whole, ...onlyCut(whole, cut)] : cut;
   return { minDeg: quantile(patches, SHARE), patches };
 }
 
-function windowDraft(sums: CellSums, c: number): number {
-  let level = 0;
-  let z = 0;
-  const rough: number[] = [];
-  for (let n = 0; n < 27; n++) {
-    const i = sums.i[c] - 1 + (n % 3);
-    const j = sums.j[c] - 1 + (Math.floor(n / 3) % 3);
-    const near = sums.table.get(i, j, sums.k[c] - 1 + Math.floor(n / 9));
-    // Opposite walls of a rib share a window; only what faces the same way in plan, or straight up, belongs.
-    if (near < 0 || sums.x[near] * sums.x[c] + sums.y[near] * sums.y[c] < 0) continue;
-    level += sums.level[near];
-    z += sums.z[near];
-    const across = Math.hypot(sums.x[near], sums.y[near]);
-    if (across > 0) rough.push(sums.level[near] / across);
+/** @param rough room for 27 numbers */
+function windowDraft(sums: CellSums, across: Float64Array, c: number, rough: Float64Array): number {
+  const { table, x, y, z, level } = sums;
+  const [i, j, k] = [sums.i[c] - 1, sums.j[c] - 1, sums.k[c] - 1];
+  let sumLevel = 0;
+  let sumZ = 0;
+  let many = 0;
+  for (let dk = 0; dk < 3; dk++) {
+    for (let dj = 0; dj < 3; dj++) {
+      for (let di = 0; di < 3; di++) {
+        const near = table.get(i + di, j + dj, k + dk);
+        // Opposite walls of a rib share a window; only what faces the same way in plan, or straight up, belongs.
+        if (near < 0 || x[near] * x[c] + y[near] * y[c] < 0) continue;
+        sumLevel += level[near];
+        sumZ += z[near];
+        if (across[near] > 0) {
+          const own = level[near] / across[near];
+          let at = many++;
+          for (; at > 0 && rough[at - 1] > own; at--) rough[at] = rough[at - 1];
+          rough[at] = own;
+        }
+      }
+    }
   }
   // By length, where two walls meet in a corner each keeps its own draft; what noise adds to the length is taken out
   // again by how rough the calmer quarter of the cells is.
-  rough.sort((p, q) => p - q);
-  return Math.atan2(z, level / (rough[rough.length >> 2] ?? 1)) * DEG;
+  return Math.atan2(sumZ, sumLevel / (many > 0 ? rough[many >> 2] : 1)) * DEG;
 }
 
 /** Patches at the bed for which no whole patch above speaks: walls lower than a window, and feet of another slope. */
@@ -108,22 +122,26 @@ export function macroRegions(
   leastAreaMm2: number,
   most: number,
 ): DraftRegion[] {
-  const low = new Map(patches.filter(({ deg }) => deg < belowDeg).map((patch) => [patch.cell.join(), patch]));
+  const low = patches.filter(({ deg }) => deg < belowDeg);
+  const table = new CellTable();
+  low.forEach(({ cell: [i, j, k] }, own) => table.find(i, j, k, own));
+  const taken = new Uint8Array(low.length);
   const regions: DraftRegion[] = [];
-  for (const [key, first] of low) {
-    if (!low.delete(key)) continue;
+  for (let first = 0; first < low.length; first++) {
+    if (taken[first]) continue;
+    taken[first] = 1;
     const queue = [first];
-    let steepest = first;
+    let steepest = low[first];
     let areaMm2 = 0;
-    for (const patch of queue) {
+    for (const own of queue) {
+      const patch = low[own];
       areaMm2 += patch.areaMm2;
       if (patch.deg < steepest.deg) steepest = patch;
       const [i, j, k] = patch.cell;
       for (let n = 0; n < 27; n++) {
-        const near = `${i - 1 + (n % 3)},${j - 1 + (Math.floor(n / 3) % 3)},${k - 1 + Math.floor(n / 9)}`;
-        const found = low.get(near);
-        if (!found) continue;
-        low.delete(near);
+        const found = table.get(i - 1 + (n % 3), j - 1 + (((n / 3) | 0) % 3), k - 1 + ((n / 9) | 0));
+        if (found < 0 || taken[found]) continue;
+        taken[found] = 1;
         queue.push(found);
       }
     }

@@ -59,18 +59,21 @@ export function measurePlan(input: PlanInput): PlanReport {
 function visibleAreas({ facets, visibility, bore }: PlanInput): { plan: number; surface: number } {
   let plan = 0;
   let surface = 0;
-  for (let t = 0; t < facets.area.length; t++) {
-    if (bore[t] || facets.nz[t] < -SIN_VERTICAL) continue;
-    const seen = facets.area[t] * visibility.visible[t];
+  const { area, nz } = facets;
+  const { visible } = visibility;
+  for (let t = 0; t < area.length; t++) {
+    if (bore[t] || nz[t] < -SIN_VERTICAL) continue;
+    const seen = area[t] * visible[t];
     surface += seen;
-    if (facets.nz[t] > 0) plan += seen * facets.nz[t];
+    if (nz[t] > 0) plan += seen * nz[t];
   }
   return { plan, surface };
 }
 
 function coveredArea(columns: Columns): number {
+  const { count } = columns;
   let covered = 0;
-  for (let c = 0; c < columns.count.length; c++) if (columns.count[c] > 0) covered++;
+  for (let c = 0; c < count.length; c++) if (count[c] > 0) covered++;
   return covered * columns.grid.cell ** 2;
 }
 
@@ -81,14 +84,16 @@ function coveredArea(columns: Columns): number {
 function lipArea({ mesh, facets, edges, columns, surface, bore }: PlanInput): number {
   const { position: p } = mesh;
   const { grid } = columns;
+  const { nz } = facets;
+  const { count, facetA, facetB } = edges;
+  const overhangs = new Uint8Array(nz.length);
+  for (let t = 0; t < nz.length; t++) if (nz[t] < -SIN_VERTICAL) overhangs[t] = 1;
   let area = 0;
-  for (let e = 0; e < edges.count; e++) {
-    const a = edges.facetA[e];
-    const b = edges.facetB[e];
-    if (b < 0 || bore[a] || bore[b]) continue;
-    const aDown = facets.nz[a] < -SIN_VERTICAL;
-    if (aDown === facets.nz[b] < -SIN_VERTICAL) continue;
-    const down = aDown ? a : b;
+  for (let e = 0; e < count; e++) {
+    const a = facetA[e];
+    const b = facetB[e];
+    if (b < 0 || overhangs[a] === overhangs[b] || bore[a] || bore[b]) continue;
+    const down = overhangs[a] ? a : b;
     if (facets.bed[down]) continue;
     const i = edges.low[e] * 3;
     const j = edges.high[e] * 3;

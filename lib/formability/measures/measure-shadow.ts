@@ -42,29 +42,33 @@ export function measureShadow(input: ShadowInput): { undercut: number; enclosed:
 function envelopeVolume({ mesh, facets, columns, visibility }: ShadowInput): number {
   const { index, position: p } = mesh;
   const { visible, shadowed, enclosed } = visibility;
-  const share = (t: number) => visible[t] / (visible[t] + shadowed[t] + enclosed[t]);
+  const { area, nz } = facets;
+  const { start, count, facet, height } = columns;
+  const whole = new Uint8Array(mesh.triangles);
   let volume = 0;
-  for (let t = 0; t < mesh.triangles; t++) {
-    if (facets.nz[t] <= 0 || !(share(t) >= WHOLE)) continue;
+  for (let t = 0; t < whole.length; t++) {
+    if (!(visible[t] / (visible[t] + shadowed[t] + enclosed[t]) >= WHOLE)) continue;
+    whole[t] = 1;
+    if (nz[t] <= 0) continue;
     const z = p[index[3 * t] * 3 + 2] + p[index[3 * t + 1] * 3 + 2] + p[index[3 * t + 2] * 3 + 2];
-    volume += (facets.area[t] * facets.nz[t] * z) / 3;
+    volume += (area[t] * nz[t] * z) / 3;
   }
   const cellArea = columns.grid.cell ** 2;
-  for (let c = 0; c < columns.count.length; c++) {
-    if (columns.count[c] === 0) continue;
-    const top = columns.facet[columns.start[c] + 2 * columns.count[c] - 1];
-    if (top < 0 || !(share(top) >= WHOLE)) volume += columns.height[c] * cellArea;
+  for (let c = 0; c < count.length; c++) {
+    if (count[c] === 0) continue;
+    const top = facet[start[c] + 2 * count[c] - 1];
+    if (top < 0 || whole[top] === 0) volume += height[c] * cellArea;
   }
   return volume;
 }
 
 /** Area of the steps of H from cell to cell. */
-function jumpArea({ grid, height }: Columns): number {
+function jumpArea({ grid: { nx, cell }, height }: Columns): number {
   let sum = 0;
   for (let c = 0; c < height.length; c++) {
-    const besideX = (c + 1) % grid.nx === 0 ? 0 : height[c + 1];
-    const besideY = c + grid.nx < height.length ? height[c + grid.nx] : 0;
+    const besideX = (c + 1) % nx === 0 ? 0 : height[c + 1];
+    const besideY = c + nx < height.length ? height[c + nx] : 0;
     sum += Math.abs(height[c] - besideX) + Math.abs(height[c] - besideY);
   }
-  return sum * grid.cell;
+  return sum * cell;
 }

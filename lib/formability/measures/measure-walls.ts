@@ -61,11 +61,10 @@ export function measureWalls(
       all: samples.map((one) => ({ ...one, thickness: thickness(one.facet, one.s, one.r) })),
     };
   };
+  const { touched } = visibility;
+  const { bed } = facets;
   const met = new Uint8Array(mesh.triangles);
-  for (let t = 0; t < met.length; t++) {
-    const touched = visibility.visible[t] + visibility.shadowed[t] >= 0.5;
-    if (touched && !facets.bed[t] && !bore[t]) met[t] = 1;
-  }
+  for (let t = 0; t < met.length; t++) if (touched[t] && !bed[t] && !bore[t]) met[t] = 1;
   const { all, ofFacet } = measured(met, mesh.triangles > LARGE_MESH ? RAYS_LARGE : RAYS);
   const found = all.filter((sample) => sample.thickness > 0).sort(byThickness);
   const walls = found.filter(({ facet }) => facets.nz[facet] < SIN_TOP);

@@ -16,12 +16,14 @@ const MOST_LOOKS = 20_000_000;
 export class RayCaster {
   /** Facet through which the last ray left, or −1. */
   exit = -1;
-  private readonly t: number[] = [];
-  private readonly facet: number[] = [];
+  private readonly t = new Float64Array(MOST_CROSSINGS + 2);
+  private readonly facet = new Int32Array(MOST_CROSSINGS + 2);
   /** −1 out of the solid, +1 into it. */
-  private readonly turn: number[] = [];
+  private readonly turn = new Int8Array(MOST_CROSSINGS + 2);
   /** Hits passed stay listed, so that no facet counts twice. */
-  private readonly passed: boolean[] = [];
+  private readonly passed = new Uint8Array(MOST_CROSSINGS + 2);
+  /** Start and direction of the ray at hand. */
+  private readonly ray = new Float64Array(6);
   private held = 0;
   private looks = 0;
 
@@ -82,8 +84,15 @@ export class RayCaster {
     dz: number,
     longest: number,
   ): number {
-    const { cell, count, low, start, facet: list } = this.grid;
+    const { cell, count, low, start, occupied } = this.grid;
+    const { ray } = this;
     const [nx, ny, nz] = count;
+    ray[0] = x;
+    ray[1] = y;
+    ray[2] = z;
+    ray[3] = dx;
+    ray[4] = dy;
+    ray[5] = dz;
     let i = clamp(Math.floor((x - low[0]) / cell), nx);
     let j = clamp(Math.floor((y - low[1]) / cell), ny);
     let k = clamp(Math.floor((z - low[2]) / cell), nz);
@@ -104,14 +113,14 @@ export class RayCaster {
     let left = NaN;
     for (;;) {
       const c = (k * ny + j) * nx + i;
-      for (let at = start[c]; at < start[c + 1]; at++) {
-        if (list[at] !== from) this.hit(list[at], x, y, z, dx, dy, dz);
+      if (occupied[c >> 5] & (1 << (c & 31))) {
+        this.lookInto(start[c], start[c + 1], from);
+        // Each hit is compared with those held: a heap costs by both.
+        this.looks += (start[c + 1] - start[c]) * (1 + (this.held >> 3));
+        if (this.held > MOST_CROSSINGS || this.looks > this.mostLooks) return NaN;
       }
-      // Each hit is compared with those held: a heap costs by both.
-      this.looks += (start[c + 1] - start[c]) * (1 + (this.held >> 3));
-      if (this.held > MOST_CROSSINGS || this.looks > this.mostLooks) return NaN;
-      const reach = Math.min(toX, toY, toZ);
-      for (;;) {
+      const reach = toX < toY ? (toX < toZ ? toX : toZ) : toY < toZ ? toY : toZ;
+      while (this.held > 0) {
         const next = this.nearest();
         if (next < 0 || this.t[next] > reach) break;
         const t = this.t[next];
@@ -127,7 +136,7 @@ export class RayCaster {
             this.exit = this.facet[next];
           }
         } else if (++winding > 0) left = NaN;
-        this.passed[next] = true;
+        this.passed[next] = 1;
       }
       if (winding <= 0 && reach > left + TOUCH_MM) return left;
       if (reach > longest) return NaN;
@@ -157,38 +166,53 @@ export class RayCaster {
     return best;
   }
 
-  /** Ray against facet (T. Möller, B. Trumbore, Journal of Graphics Tools 2 (1997) 21–28). */
-  private hit(f: number, x: number, y: number, z: number, dx: number, dy: number, dz: number): void {
+  /** The ray against the facets listed in a cell (T. Möller, B. Trumbore, Journal of Graphics Tools 2 (1997) 21–28). */
+  private lookInto(first: number, end: number, from: number): void {
+    const { facet: list } = this.grid;
     const { index, position: p } = this.mesh;
-    const a = index[3 * f] * 3;
-    const b = index[3 * f + 1] * 3;
-    const c = index[3 * f + 2] * 3;
-    const ux = p[b] - p[a];
-    const uy = p[b + 1] - p[a + 1];
-    const uz = p[b + 2] - p[a + 2];
-    const vx = p[c] - p[a];
-    const vy = p[c + 1] - p[a + 1];
-    const vz = p[c + 2] - p[a + 2];
-    const hx = dy * vz - dz * vy;
-    const hy = dz * vx - dx * vz;
-    const hz = dx * vy - dy * vx;
-    const det = ux * hx + uy * hy + uz * hz;
-    if (det === 0) return;
-    const inverse = 1 / det;
-    const ox = x - p[a];
-    const oy = y - p[a + 1];
-    const oz = z - p[a + 2];
-    const s = (ox * hx + oy * hy + oz * hz) * inverse;
-    if (s < -RIM || s > 1 + RIM) return;
-    const qx = oy * uz - oz * uy;
-    const qy = oz * ux - ox * uz;
-    const qz = ox * uy - oy * ux;
-    const r = (dx * qx + dy * qy + dz * qz) * inverse;
-    if (r < -RIM || s + r > 1 + RIM) return;
-    const t = (vx * qx + vy * qy + vz * qz) * inverse;
-    if (!(t > START_MM) || this.held > MOST_CROSSINGS) return;
-    // det > 0 where the ray meets the facet's front: it enters there.
-    const turn = det > 0 ? 1 : -1;
+    const { ray } = this;
+    const x = ray[0];
+    const y = ray[1];
+    const z = ray[2];
+    const dx = ray[3];
+    const dy = ray[4];
+    const dz = ray[5];
+    for (let at = first; at < end; at++) {
+      const f = list[at];
+      if (f === from) continue;
+      const a = index[3 * f] * 3;
+      const b = index[3 * f + 1] * 3;
+      const c = index[3 * f + 2] * 3;
+      const ux = p[b] - p[a];
+      const uy = p[b + 1] - p[a + 1];
+      const uz = p[b + 2] - p[a + 2];
+      const vx = p[c] - p[a];
+      const vy = p[c + 1] - p[a + 1];
+      const vz = p[c + 2] - p[a + 2];
+      const hx = dy * vz - dz * vy;
+      const hy = dz * vx - dx * vz;
+      const hz = dx * vy - dy * vx;
+      const det = ux * hx + uy * hy + uz * hz;
+      if (det === 0) continue;
+      const inverse = 1 / det;
+      const ox = x - p[a];
+      const oy = y - p[a + 1];
+      const oz = z - p[a + 2];
+      const s = (ox * hx + oy * hy + oz * hz) * inverse;
+      if (s < -RIM || s > 1 + RIM) continue;
+      const qx = oy * uz - oz * uy;
+      const qy = oz * ux - ox * uz;
+      const qz = ox * uy - oy * ux;
+      const r = (dx * qx + dy * qy + dz * qz) * inverse;
+      if (r < -RIM || s + r > 1 + RIM) continue;
+      const t = (vx * qx + vy * qy + vz * qz) * inverse;
+      // det > 0 where the ray meets the facet's front: it enters there.
+      if (t > START_MM) this.keep(f, t, det > 0 ? 1 : -1);
+    }
+  }
+
+  private keep(f: number, t: number, turn: number): void {
+    if (this.held > MOST_CROSSINGS) return;
     for (let h = 0; h < this.held; h++) {
       if (this.facet[h] === f) return;
       // Both facets of an edge that the ray goes through: one crossing.
@@ -197,7 +221,7 @@ export class RayCaster {
     this.t[this.held] = t;
     this.facet[this.held] = f;
     this.turn[this.held] = turn;
-    this.passed[this.held] = false;
+    this.passed[this.held] = 0;
     this.held++;
   }
 

@@ -40,6 +40,11 @@ export function sampleSurface(mesh: Mesh, facets: Facets, chosen: Uint8Array, wa
   const table = new CellTable();
   const nearest: number[] = [];
   let point = 0;
+  // Facets in the list lie by one another: most are in the patch of the one before.
+  let lastI = 0;
+  let lastJ = 0;
+  let lastK = 0;
+  let last = -1;
   for (let t = 0; t < triangles; t++) {
     if (!chosen[t] || area[t] === 0) continue;
     if (area[t] > LARGE * patch) {
@@ -71,8 +76,14 @@ export function sampleSurface(mesh: Mesh, facets: Facets, chosen: Uint8Array, wa
     const side =
       az >= ax && az >= ay ? (nz[t] > 0 ? 0 : 1) : ax >= ay ? (nx[t] > 0 ? 2 : 3) : ny[t] > 0 ? 4 : 5;
     const off = (x - i - 0.5) * (x - i - 0.5) + (y - j - 0.5) * (y - j - 0.5) + (z - k - 0.5) * (z - k - 0.5);
-    const known = table.find(i, j, k * 6 + side, samples.length);
+    const kept = 6 * k + side;
+    const same = last >= 0 && i === lastI && j === lastJ && kept === lastK;
+    const known = same ? last : table.find(i, j, kept, samples.length);
     ofFacet[t] = known;
+    lastI = i;
+    lastJ = j;
+    lastK = kept;
+    last = known;
     if (known === samples.length) {
       samples.push({ facet: t, s: 1 / 3, r: 1 / 3, area: area[t] });
       nearest.push(off);

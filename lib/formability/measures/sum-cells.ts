@@ -53,7 +53,22 @@ export function sumCells(mesh: Mesh, facets: Facets, skip: Uint8Array, cell: num
     const long = Math.sqrt(ux * ux + uy * uy + uz * uz);
     const n = Math.min(MOST_A_SIDE, Math.ceil(3 * long * scale * thin));
     if (n === 1) {
-      out.share(p[a] + (ux + vx) / 3, p[a + 1] + (uy + vy) / 3, p[a + 2] + (uz + vz) / 3, x, y, z, scale);
+      const height = (p[a + 2] + (uz + vz) / 3) * scale - 0.5;
+      const k = Math.floor(height);
+      out.move(Math.floor((p[a] + (ux + vx) / 3) * scale), Math.floor((p[a + 1] + (uy + vy) / 3) * scale), k);
+      const own = out.take(0);
+      const level = Math.sqrt(x * x + y * y);
+      const lower = k + 1 - height;
+      out.x[own] += x * lower;
+      out.y[own] += y * lower;
+      out.z[own] += z * lower;
+      out.level[own] += level * lower;
+      const above = out.take(1);
+      const upper = height - k;
+      out.x[above] += x * upper;
+      out.y[above] += y * upper;
+      out.z[above] += z * upper;
+      out.level[above] += level * upper;
       continue;
     }
     const m = Math.min(MOST_A_SIDE, Math.ceil((6 * facets.area[t] * scale * thin) / long));
@@ -75,15 +90,35 @@ export function sumCells(mesh: Mesh, facets: Facets, skip: Uint8Array, cell: num
         const up = (j + 0.5) / m;
         const us = s + up * (along - s);
         const vs = up * rise;
-        out.spread(
-          p[a] + us * ux + vs * vx,
-          p[a + 1] + us * uy + vs * vy,
-          p[a + 2] + us * uz + vs * vz,
-          x * share,
-          y * share,
-          z * share,
-          scale,
-        );
+        // Shared in plan too: points of large facets lie in rows, which a cell's rim would count unevenly.
+        const wide = (p[a] + us * ux + vs * vx) * scale - 0.5;
+        const deep = (p[a + 1] + us * uy + vs * vy) * scale - 0.5;
+        const height = (p[a + 2] + us * uz + vs * vz) * scale - 0.5;
+        const ci = Math.floor(wide);
+        const cj = Math.floor(deep);
+        const ck = Math.floor(height);
+        const fx = wide - ci;
+        const fy = deep - cj;
+        const lower = ck + 1 - height;
+        const upper = height - ck;
+        out.move(ci, cj, ck);
+        for (let side = 0; side < 4; side++) {
+          const part = (side & 1 ? fx : 1 - fx) * (side & 2 ? fy : 1 - fy);
+          const px = part * (x * share);
+          const py = part * (y * share);
+          const pz = part * (z * share);
+          const level = Math.sqrt(px * px + py * py);
+          const own = out.take(2 * side);
+          out.x[own] += px * lower;
+          out.y[own] += py * lower;
+          out.z[own] += pz * lower;
+          out.level[own] += level * lower;
+          const above = out.take(2 * side + 1);
+          out.x[above] += px * upper;
+          out.y[above] += py * upper;
+          out.z[above] += pz * upper;
+          out.level[above] += level * upper;
+        }
       }
     }
   }
@@ -107,50 +142,32 @@ class Sums implements CellSums {
   y = new Float64Array(4096);
   z = new Float64Array(4096);
   level = new Float64Array(4096);
-  /** The cells met last, one for even and one for odd levels: neighbours in the list are neighbours in space. */
-  private even = 0;
-  private odd = 0;
+  /** Numbers of a cell and its neighbours at +1: two levels, by x, then y; −1 where not looked up yet. */
+  private readonly block = new Int32Array(8);
+  private atI = -0x40000000;
+  private atJ = 0;
+  private atK = 0;
 
-  /** Gives an area vector at a point to the two cells nearest in height. */
-  share(px: number, py: number, pz: number, x: number, y: number, z: number, scale: number): void {
-    const height = pz * scale - 0.5;
-    const k = Math.floor(height);
-    const i = Math.floor(px * scale);
-    const j = Math.floor(py * scale);
-    this.add(i, j, k, x, y, z, k + 1 - height);
-    this.add(i, j, k + 1, x, y, z, height - k);
+  /** Makes a cell the one that `take` counts from: neighbours in the list are neighbours in space, so most stay. */
+  move(i: number, j: number, k: number): void {
+    if (i === this.atI && j === this.atJ && k === this.atK) return;
+    this.atI = i;
+    this.atJ = j;
+    this.atK = k;
+    this.block.fill(-1);
   }
 
-  /** The same, shared in plan too: points of large facets lie in rows, which a cell's rim would count unevenly. */
-  spread(px: number, py: number, pz: number, x: number, y: number, z: number, scale: number): void {
-    const wide = px * scale - 0.5;
-    const deep = py * scale - 0.5;
-    const i = Math.floor(wide);
-    const j = Math.floor(deep);
-    const [fx, fy] = [wide - i, deep - j];
-    const at = (i + 0.5) / scale;
-    const beside = (i + 1.5) / scale;
-    const front = (j + 0.5) / scale;
-    const back = (j + 1.5) / scale;
-    const [a, b, c, d] = [(1 - fx) * (1 - fy), fx * (1 - fy), (1 - fx) * fy, fx * fy];
-    this.share(at, front, pz, a * x, a * y, a * z, scale);
-    this.share(beside, front, pz, b * x, b * y, b * z, scale);
-    this.share(at, back, pz, c * x, c * y, c * z, scale);
-    this.share(beside, back, pz, d * x, d * y, d * z, scale);
-  }
-
-  private add(i: number, j: number, k: number, x: number, y: number, z: number, share: number): void {
-    let c = k & 1 ? this.odd : this.even;
-    if (this.count === 0 || this.i[c] !== i || this.j[c] !== j || this.k[c] !== k) {
-      c = this.table.find(i, j, k, this.count);
-      if (c === this.count) this.begin(i, j, k);
-      if (k & 1) this.odd = c;
-      else this.even = c;
-    }
-    this.x[c] += x * share;
-    this.y[c] += y * share;
-    this.z[c] += z * share;
-    this.level[c] += Math.sqrt(x * x + y * y) * share;
+  /** The number of a cell of the block: bit 0 one up, bit 1 one along x, bit 2 one along y. */
+  take(which: number): number {
+    const known = this.block[which];
+    if (known >= 0) return known;
+    const i = this.atI + ((which >> 1) & 1);
+    const j = this.atJ + (which >> 2);
+    const k = this.atK + (which & 1);
+    const c = this.table.find(i, j, k, this.count);
+    if (c === this.count) this.begin(i, j, k);
+    this.block[which] = c;
+    return c;
   }
 
   private begin(i: number, j: number, k: number): void {

@@ -11,6 +11,8 @@ export interface Visibility {
   /** Connected air with solid above. */
   shadowed: Float32Array;
   enclosed: Float32Array;
+  /** 1 where half of it or more faces air that hangs together with the air above: what the sheet can touch. */
+  touched: Uint8Array;
 }
 
 /** A facet with this many grid hits is judged by them; one with fewer by points on it. */
@@ -20,6 +22,8 @@ const SMALL_CELLS = 8;
 /** How far outside the surface a point is looked at, in cells: the cell's centre is then outside too. */
 const OUTSIDE = 0.75;
 const MOST_SAMPLES_A_SIDE = 128;
+/** Share of a facet that counts for all of it. */
+const TOUCHED = 0.5;
 
 const VISIBLE = 3;
 const BURIED = 0;
@@ -36,38 +40,58 @@ export function findVisibility(
   const visible = new Float32Array(n);
   const shadowed = new Float32Array(n);
   const enclosed = new Float32Array(n);
-  const { start, count, facet } = columns;
-  for (let c = 0; c + 1 < start.length; c++) {
-    const last = start[c] + 2 * count[c] - 2;
-    for (let s = start[c]; s <= last; s += 2) {
-      const below = facet[s];
-      if (below >= 0) {
-        if (air.state[s] === CONNECTED) shadowed[below]++;
-        else if (air.state[s] === ENCLOSED) enclosed[below]++;
-      }
-      const above = facet[s + 1];
-      if (above < 0) continue;
-      if (s === last) visible[above]++;
-      else if (air.state[s + 2] === CONNECTED) shadowed[above]++;
-      else if (air.state[s + 2] === ENCLOSED) enclosed[above]++;
-    }
-  }
+  countHits(columns.start, columns.count, columns.facet, air.state, visible, shadowed, enclosed);
+  const { area, bed } = facets;
   const shares = new Float64Array(4);
   const small = SMALL_CELLS * columns.grid.cell ** 2;
   for (let t = 0; t < n; t++) {
     const hits = perFacet[t];
-    if (hits >= ENOUGH_HITS || (hits > 0 && facets.area[t] < small)) {
+    if (hits >= ENOUGH_HITS || (hits > 0 && area[t] < small)) {
       visible[t] /= hits;
       shadowed[t] /= hits;
       enclosed[t] /= hits;
-    } else if (facets.area[t] > 0 && !facets.bed[t]) {
-      sampleFacet(mesh, t, facets.area[t], columns, air, shares);
+    } else if (area[t] > 0 && bed[t] === 0) {
+      sampleFacet(mesh, t, area[t], columns, air, shares);
       visible[t] = shares[VISIBLE];
       shadowed[t] = shares[CONNECTED];
       enclosed[t] = shares[ENCLOSED];
     }
   }
-  return { visible, shadowed, enclosed };
+  return { visible, shadowed, enclosed, touched: markTouched(visible, shadowed) };
+}
+
+/** 1 where the sheet can touch half of a facet or more. */
+export function markTouched(visible: Float32Array, shadowed: Float32Array): Uint8Array {
+  const touched = new Uint8Array(visible.length);
+  for (let t = 0; t < touched.length; t++) if (visible[t] + shadowed[t] >= TOUCHED) touched[t] = 1;
+  return touched;
+}
+
+/** Each facet's grid hits by what lies in front of them. */
+function countHits(
+  start: Uint32Array,
+  count: Uint32Array,
+  facet: Int32Array,
+  state: Uint8Array,
+  visible: Float32Array,
+  shadowed: Float32Array,
+  enclosed: Float32Array,
+): void {
+  for (let c = 0; c < count.length; c++) {
+    const last = start[c] + 2 * count[c] - 2;
+    for (let s = start[c]; s <= last; s += 2) {
+      const below = facet[s];
+      if (below >= 0) {
+        if (state[s] === CONNECTED) shadowed[below]++;
+        else if (state[s] === ENCLOSED) enclosed[below]++;
+      }
+      const above = facet[s + 1];
+      if (above < 0) continue;
+      if (s === last) visible[above]++;
+      else if (state[s + 2] === CONNECTED) shadowed[above]++;
+      else if (state[s + 2] === ENCLOSED) enclosed[above]++;
+    }
+  }
 }
 
 /** Looks from the middles of m² equal parts of the facet. */

@@ -23,30 +23,35 @@ export interface Edges {
 export function buildEdges(index: Uint32Array, vertices: number): Edges {
   const corners = index.length;
   const head = new Int32Array(vertices).fill(-1);
-  const next = new Int32Array(corners);
+  // Higher vertex and next edge of the list, side by side: a step along a list is one look into memory.
+  const link = new Int32Array(2 * corners);
   const low = new Uint32Array(corners);
   const high = new Uint32Array(corners);
   const forward = new Uint8Array(corners);
   const backward = new Uint8Array(corners);
   const facetA = new Int32Array(corners);
   const facetB = new Int32Array(corners);
-  const ofCorner = new Int32Array(corners).fill(-1);
+  const ofCorner = new Int32Array(corners);
   let count = 0;
   for (let c = 0, facet = 0; c < corners; c += 3, facet++) {
     const a = index[c];
     const b = index[c + 1];
     const d = index[c + 2];
-    if (a === b || b === d || d === a) continue;
+    if (a === b || b === d || d === a) {
+      ofCorner[c] = ofCorner[c + 1] = ofCorner[c + 2] = -1;
+      continue;
+    }
     for (let side = 0; side < 3; side++) {
       const from = side === 0 ? a : side === 1 ? b : d;
       const to = side === 0 ? b : side === 1 ? d : a;
       const lower = from < to ? from : to;
       const higher = from < to ? to : from;
       let e = head[lower];
-      while (e >= 0 && high[e] !== higher) e = next[e];
+      while (e >= 0 && link[2 * e] !== higher) e = link[2 * e + 1];
       if (e < 0) {
         e = count++;
-        next[e] = head[lower];
+        link[2 * e] = higher;
+        link[2 * e + 1] = head[lower];
         head[lower] = e;
         low[e] = lower;
         high[e] = higher;

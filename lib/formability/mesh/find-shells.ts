@@ -9,9 +9,15 @@ export interface Shells {
 /** Connected components over shared vertices. */
 export function findShells(index: Uint32Array, vertices: number): Shells {
   const joined = new UnionFind(vertices);
+  const { parent } = joined;
   for (let c = 0; c < index.length; c += 3) {
-    joined.join(index[c], index[c + 1]);
-    joined.join(index[c], index[c + 2]);
+    const a = index[c];
+    const b = index[c + 1];
+    const d = index[c + 2];
+    // In a mesh in order most vertices hang on one root by now.
+    if (parent[a] === parent[b] && parent[b] === parent[d]) continue;
+    joined.join(a, b);
+    joined.join(a, d);
   }
   const number = new Int32Array(vertices).fill(-1);
   const ofFacet = new Uint32Array(index.length / 3);

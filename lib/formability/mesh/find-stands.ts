@@ -23,7 +23,8 @@ export function findStands(mesh: Mesh, facets: Facets): Stand[] {
   const stands: Stand[] = [];
   for (const normal of flatSides(facets)) {
     const up: Point = [-normal[0] || 0, -normal[1] || 0, -normal[2] || 0];
-    stands.push({ up, baseMm2: baseOf(mesh, facets, up) });
+    // The part as it stands is no other stand.
+    if (up[2] < 1) stands.push({ up, baseMm2: baseOf(mesh, facets, up) });
   }
   return stands.filter((stand) => stand.baseMm2 > 0).sort((a, b) => b.baseMm2 - a.baseMm2);
 }

@@ -45,12 +45,11 @@ export function measureFacets(mesh: Mesh): Facets {
     const y = uz * vx - ux * vz;
     const z = ux * vy - uy * vx;
     const twice = Math.sqrt(x * x + y * y + z * z);
-    const longest = Math.max(
-      ux * ux + uy * uy + uz * uz,
-      vx * vx + vy * vy + vz * vz,
-      (ux - vx) * (ux - vx) + (uy - vy) * (uy - vy) + (uz - vz) * (uz - vz),
-    );
-    if (!(twice > NEEDLE * longest)) {
+    const one = ux * ux + uy * uy + uz * uz;
+    const other = vx * vx + vy * vy + vz * vz;
+    const third = (ux - vx) * (ux - vx) + (uy - vy) * (uy - vy) + (uz - vz) * (uz - vz);
+    const longer = one > other ? one : other;
+    if (!(twice > NEEDLE * (longer > third ? longer : third))) {
       degenerate++;
       continue;
     }

@@ -11,7 +11,7 @@ function soundInput(): CheckInput {
   return {
     recipe: report.recipe,
     report,
-    walls: { facetDeg: 8, stepped: false, areaBelowMm2: 0, wallAreaMm2: 10_000, regions: [], heightMm: 30 },
+    walls: { facetDeg: 8, stepped: false, areaBelowMm2: 0, wallAreaMm2: 10_000, heightMm: 30 },
     wantedDraftDeg: 5,
     overhangs: { areaMm2: 0, worstDeg: 0, places: [] },
     sheet: null,

@@ -1,6 +1,6 @@
 import type { Facets } from '@/lib/formability/mesh/measure-facets';
 import type { Mesh } from '@/lib/formability/mesh/mesh';
-import type { Visibility } from '@/lib/formability/measures/visibility';
+import { markTouched, type Visibility } from '@/lib/formability/measures/visibility';
 
 export interface Leaning {
   /** Draft of the facet, degrees. */
@@ -33,11 +33,10 @@ export function madeFacets(leaning: readonly Leaning[]) {
     position: Float64Array.from(corners),
     centre: [0, 0],
   };
-  const seen: Visibility = {
-    visible: new Float32Array(count).fill(1),
-    shadowed: new Float32Array(count),
-    enclosed: new Float32Array(count),
-  };
+  const visible = new Float32Array(count).fill(1);
+  const shadowed = new Float32Array(count);
+  const touched = markTouched(visible, shadowed);
+  const seen: Visibility = { visible, shadowed, enclosed: new Float32Array(count), touched };
   return {
     facets,
     mesh,

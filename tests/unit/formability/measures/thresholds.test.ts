@@ -1,10 +1,11 @@
 import { describe, expect, it } from 'vitest';
 import { facetFlags } from '@/lib/formability/facet-output';
 import { findPits } from '@/lib/formability/measures/find-pits';
-import { judgeWalls } from '@/lib/formability/measures/judge-walls';
+import { findWalls, judgeWalls, wallRegions } from '@/lib/formability/measures/judge-walls';
 import { DRAFT_BIN_EDGES, measureDraft } from '@/lib/formability/measures/measure-draft';
 import { measureLayers } from '@/lib/formability/measures/measure-layers';
 import { findOverhangs } from '@/lib/formability/measures/overhangs';
+import { markTouched } from '@/lib/formability/measures/visibility';
 import { measureFacets } from '@/lib/formability/mesh/measure-facets';
 import { suggestScale } from '@/lib/formability/mesh/suggest-scale';
 import { checkCoordinates } from '@/lib/formability/parse/check-coordinates';
@@ -54,7 +55,9 @@ describe('layers: steps from 0.25° to 89.5° of draft', () => {
 describe('walls that the sheet touches: from −45° to 60° of draft', () => {
   const judge = (leaning: Leaning[], limitDeg = 5) => {
     const { mesh, facets, seen, none, draft } = madeFacets(leaning);
-    return judgeWalls(mesh, facets, draft, seen, none, limitDeg);
+    const walls = findWalls(facets, draft, seen.touched, none);
+    const judged = judgeWalls(mesh, facets, draft, walls, limitDeg);
+    return { ...judged, regions: wallRegions(mesh, facets, draft, walls, judged, limitDeg) };
   };
 
   it('what leans out further is a ceiling, what lies flatter a slope', () => {
@@ -90,9 +93,8 @@ describe('walls that the sheet touches: from −45° to 60° of draft', () => {
 
   it('facets that the sheet sees less than half of are none', () => {
     const seen = (share: number) => {
-      const made = madeFacets(one(3));
-      made.seen.visible.fill(share);
-      return judgeWalls(made.mesh, made.facets, made.draft, made.seen, made.none, 5).wallAreaMm2;
+      const { facets, draft, none, seen: all } = madeFacets(one(3));
+      return findWalls(facets, draft, markTouched(all.visible.fill(share), all.shadowed), none).areaMm2;
     };
     expect([seen(0.4975), seen(0.5025)]).toEqual([0, 10]);
   });
