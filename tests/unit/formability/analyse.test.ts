@@ -74,9 +74,10 @@ describe('the same input gives the same bits', () => {
   });
 
   it('without a clock there are no timings; with one only they differ', () => {
-    const plain = analyse(bytes).report;
+    const coarse = { grid: { cellMm: 0.5 } };
+    const plain = analyse(bytes, coarse).report;
     let now = 0;
-    const timed = analyse(bytes, {}, { now: () => (now += 5) }).report;
+    const timed = analyse(bytes, coarse, { now: () => (now += 5) }).report;
     expect(plain.timings).toEqual({});
     expect(Object.keys(timed.timings)).toContain('parseMs');
     expect({ ...timed, timings: {} }).toEqual(plain);
@@ -84,10 +85,10 @@ describe('the same input gives the same bits', () => {
 
   it('leaves the bytes and the recipe it was given alone', () => {
     const copy = bytes.slice();
-    const recipe = { limits: { draftMinDeg: 4 } };
+    const recipe = { grid: { cellMm: 0.5 }, limits: { draftMinDeg: 4 } };
     analyse(bytes, recipe);
     expect(Buffer.compare(Buffer.from(bytes), Buffer.from(copy))).toBe(0);
-    expect(recipe).toEqual({ limits: { draftMinDeg: 4 } });
+    expect(recipe).toEqual({ grid: { cellMm: 0.5 }, limits: { draftMinDeg: 4 } });
   });
 });
 
@@ -137,9 +138,9 @@ describe('property: any frustum (fast-check, seed 20)', () => {
         (w, d, h, a, turn) => {
           const inset = h * Math.tan((a * Math.PI) / 180);
           fc.pre(2 * inset < Math.min(w, d) - 2);
-          const { draft, mesh, undercut, airTraps, plan } = reportOn(turned(frustum(w, d, h, a), turn), {
-            grid: { cellMm: 1 },
-          });
+          const bytes = binaryStl(turned(frustum(w, d, h, a), turn));
+          const { report } = analyse(bytes, { grid: { cellMm: 1 } }, { geometryOnly: true });
+          const { draft, mesh, undercut, airTraps, plan } = report;
           const volume = h * (w * d - inset * (w + d) + (4 * inset * inset) / 3);
           expect(Math.abs((draft.minUpFacingDeg ?? 0) - a)).toBeLessThan(0.02);
           expect(Math.abs(mesh.volumeMm3 / volume - 1)).toBeLessThan(1e-5);
