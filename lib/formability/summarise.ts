@@ -62,8 +62,9 @@ function figures(report: Report): string[] {
 
 function sheetFigures({ sheet }: Report): [string, string][] {
   if (!sheet) return [];
-  const { minMm, q05Mm, meanMm, marginPercent } = sheet;
-  return [['sheet', `${fixed(minMm, 2)} mm at its thinnest, a twentieth below ${fixed(q05Mm, 2)} mm, ${fixed(meanMm, 2)} mm on average, ± ${marginPercent} %`]]; // prettier-ignore
+  const { minMm, q05Mm, marginPercent } = sheet.part ?? sheet;
+  const foot = sheet.foot ? `, foot along the bed ${fixed(sheet.foot.minMm, 2)} mm` : '';
+  return [['sheet', `${fixed(minMm, 2)} mm at the part's thinnest, ± ${marginPercent} %, a twentieth of it below ${fixed(q05Mm, 2)} mm${foot}`]]; // prettier-ignore
 }
 
 /** Each figure of the forming itself, marked with how sure it is. */
