@@ -35,7 +35,7 @@ const EXEMPT: Exemption[] = [
     reason: 'number of samples, rays, cells, buckets or halvings, or where samples lie: more only refine',
     files: /^(mesh|measures|dexel)\//,
     names:
-      /^(RAYS|BED_RAYS|FOLLOWED|HALVINGS|FINER|FEW_CELLS|FINE_MM|COARSE|CELLS|MAP|BUCKETS|LEAF|AXIS_CELLS|ITEM_SPAN|CELL\b|BITS|GAPS|SHIFT|USUAL_CELLS|VISIBLE|SMALL_CELLS|DIRECTIONS|CROSSING_STEPS|sampleSurface|sortColumn|sortByHeight|sortTriangles|isLocal|mortonOrder|noise|perturbMesh|keyOf|share|spread|sumCells|affordGrid|SHELL_SHIFT|VERTEX_SHIFT|COARSE_STEP_MM|HEIGHTS)/,
+      /^(RAYS|BED_RAYS|FOLLOWED|HALVINGS|FINER|FEW_CELLS|FINE_MM|BINS_A_DEG|COARSE|CELLS|MAP|BUCKETS|LEAF|AXIS_CELLS|ITEM_SPAN|CELL\b|BITS|GAPS|SHIFT|USUAL_CELLS|VISIBLE|SMALL_CELLS|DIRECTIONS|CROSSING_STEPS|sampleSurface|sortColumn|sortByHeight|sortTriangles|isLocal|mortonOrder|noise|perturbMesh|keyOf|share|spread|sumCells|affordGrid|SHELL_SHIFT|VERTEX_SHIFT|COARSE_STEP_MM|HEIGHTS)/,
   },
   {
     reason:
