@@ -412,6 +412,8 @@ export interface WallsUnderPressureReport {
   collapseBar: number | null;
   /** Compression of the infill's own walls, and where they buckle, with knock-down; null when empty or solid. */
   infill: { stressMPa: number; bucklesMPa: number } | null;
+  /** Of an empty template: widest spacing of ribs between which its walls hold; null otherwise. */
+  ribSpacingMm: number | null;
   /** Infill at which walls and infill hold; null where none does. */
   infillThatHoldsPercent: number | null;
 }

@@ -1,6 +1,6 @@
 import { KNOCK_DOWN, WALL_GIVES_MM } from '../measures/estimate-hold';
 import type { Basis, Check, WallsUnderPressureReport } from '../report';
-import { roundUp, say, sayGive } from './basis';
+import { roundDown, roundUp, say, sayGive } from './basis';
 import type { CheckInput } from './check-input';
 
 const BASIS: Basis = {
@@ -72,7 +72,9 @@ function remedy(hold: WallsUnderPressureReport, bar: number, infillPercent: numb
       : [];
   const infill = hold.infillThatHoldsPercent;
   if (hold.empty && share <= MOST_SHARE)
-    ways.push('rib or fill it: 25 to 50 % of infill carries the walls (common practice, no source)');
+    ways.push(
+      `rib or fill it: ${hold.ribSpacingMm === null ? '' : `ribs no more than ${say(roundDown(hold.ribSpacingMm, 0.1))} mm apart, or `}25 to 50 % of infill, carry the walls (share: common practice, no source)`,
+    );
   else if (infill !== null && infill > infillPercent)
     ways.push(`print an infill of ${say(roundUp(infill, 1), 0)} %`);
   if (ways.length === 0) return 'It is too soft there: first mend the heat, then the walls follow.';

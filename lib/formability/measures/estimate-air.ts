@@ -60,7 +60,7 @@ function flowOf(
   clearS: number,
 ): AirFlow {
   const open = recipe.machine.ventedBed
-    ? trap.vents.map((v) => vents[v]).filter((vent) => vent.printable)
+    ? trap.vents.map((v) => vents[v]).filter((vent) => vent.printable && vent.printedMm > 0)
     : [];
   const flows = open.map((vent): [Vent, Flow] => [
     vent,

@@ -1,7 +1,7 @@
 import { FILAMENTS } from '../materials/filaments';
 import { densityForSpan, infillSpanMm } from '../physics/infill';
 import { modulusAt } from '../physics/modulus-at';
-import { clampedPlate, ribBucklingMPa, ringCollapseMPa, type Plate } from '../physics/plates';
+import { clampedPlate, clampedStrip, ribBucklingMPa, ringCollapseMPa, type Plate } from '../physics/plates';
 import type { EffectiveRecipe } from '../recipe';
 import type { HeatReport, WallsReport, WallsUnderPressureReport } from '../report';
 import { hottestC } from './estimate-heat';
@@ -53,8 +53,17 @@ export function estimateHold(
             bucklesMPa: KNOCK_DOWN * ribBucklingMPa(modulusMPa, POISSON, print.lineMm, spanMm),
           }
         : null,
+    ribSpacingMm: empty ? ribSpacing(plate, strengthAt(filament, 'strengthZMPa', atC)) : null,
     infillThatHoldsPercent: infillThatHolds({ ...plate, thicknessMm: print.shellMm }, print),
   };
+}
+
+/** Widest spacing of ribs between which an empty wall gives no more than the limit and does not break, mm: a clamped strip. */
+function ribSpacing(plate: Plate, strengthMPa: number): number | null {
+  if (plate.pressureMPa === 0) return null;
+  // Sag goes with span⁴, stress with span².
+  const { sagMm, stressMPa } = clampedStrip(plate, 1);
+  return Math.min((WALL_GIVES_MM / sagMm) ** 0.25, (strengthMPa / stressMPa) ** 0.5);
 }
 
 /** Infill at which the walls give no more than the limit and its own walls do not buckle, %; null where none does. */

@@ -33,6 +33,8 @@ export function overInfill(
   pattern: EffectiveRecipe['print']['infillPattern'],
   spanMm: number,
 ): PlateAnswer {
+  // Solid: no cell is free.
+  if (spanMm === 0) return { sagMm: 0, stressMPa: 0 };
   switch (pattern) {
     case 'lines':
       return clampedStrip(plate, spanMm);

@@ -80,6 +80,18 @@ describe('air', () => {
     expect(printed).toBeCloseTo((Math.PI / 4) * 0.8 ** 2, 2);
   });
 
+  it('a hole model that leaves nothing of a vent, and calls that open, leaves the pocket shut', () => {
+    const shut = { ...coarse, print: { holeModel: { slope: 1, offsetMm: -3, minOpenMm: 0 } } };
+    expect(reportOn(pit(1), shut).air[0]).toMatchObject({ clearS: null, fallS: null, ventAreaMm2: 0 });
+  });
+
+  it('a pocket that the sheet closes over empties through its vents too, by the fall of its pressure', () => {
+    const [flow] = reportOn(pit(1), exact).air;
+    // From 2.01 to 1.11 bar absolute: nearly all of it subcritical, a little more than the time at constant pressure.
+    expect(flow.fallS).toBeGreaterThan(0.5 * (flow.clearS ?? Infinity));
+    expect(flow.fallS).toBeLessThan(2 * (flow.clearS ?? 0));
+  });
+
   it('without a pocket there is nothing to clear', () => {
     const report = reportOn(carved(block, 30, []), coarse);
     expect(report.air).toEqual([]);

@@ -181,6 +181,15 @@ describe('walls and infill', () => {
     expect(checkOf(again(percent - 2), 'walls').status).not.toBe('pass');
   });
 
+  it('a solid print has no span: nothing sinks, gives or buckles between lines', () => {
+    for (const infillPattern of ['lines', 'grid', 'triangles', 'gyroid'] as const) {
+      const report = of({ print: { infillPattern, infillPercent: 100 } });
+      expect(report.skin).toMatchObject({ spanMm: 0, sagMm: 0, sagMostMm: 0 });
+      expect(report.wallsUnderPressure).toMatchObject({ sagMm: 0, infill: null, ribSpacingMm: null });
+      expect([checkOf(report, 'skin').status, checkOf(report, 'walls').status]).toEqual(['pass', 'pass']);
+    }
+  });
+
   it('skin: clamped is the least, edges that turn the most', () => {
     for (const infillPattern of ['lines', 'grid', 'triangles', 'gyroid'] as const) {
       const { skin } = of({ print: { infillPattern, infillPercent: 12, topMm: 1 } });

@@ -117,7 +117,14 @@ describe('walls', () => {
     expect(hold?.collapseBar).toBeCloseTo((0.4 * ring) / 0.1, 6);
     const check = checkOf(report, 'walls');
     expect(check).toMatchObject({ status: 'fail', unit: 'bar', limit: 4 });
-    expect(check.remedy).toMatch(/^Make the walls [\d.]+ mm thick, or rib or fill it/);
+    expect(check.remedy).toMatch(
+      /^Make the walls [\d.]+ mm thick, or rib or fill it: ribs no more than [\d.]+ mm apart/,
+    );
+    // Between ribs a clamped strip, q s⁴ / 384 D, gives the 0.1 mm that it may, or bends to its strength, q s² / 2 h².
+    const [s, h] = [hold?.ribSpacingMm ?? 0, hold?.wallMm ?? 0];
+    const sag = (0.4 * s ** 4) / (384 * ((modulus * h ** 3) / (12 * (1 - 0.35 ** 2))));
+    const share = (0.4 * s * s) / (2 * h * h) / (hold?.strengthMPa ?? 1);
+    expect(Math.max(sag / 0.1, share)).toBeCloseTo(1, 9);
   });
 
   it('the wall that it asks for holds', () => {
