@@ -12,6 +12,8 @@ const CUT_MM = 0.01;
 const REACH_CELLS = 6;
 const REACH_MM = 1.5;
 const MOST_GROOVES = 60;
+/** The deepest pits are looked at; more are a rough surface. */
+const MOST_PITS = 300;
 /** Nearer than this, mm, walls touch. */
 const TOUCH_MM = 1e-3;
 
@@ -29,10 +31,13 @@ export function findGrooves(
   least: number,
 ): Spacing[] {
   const found: Spacing[] = [];
-  for (const pit of pits) {
+  const depth = (pit: Pit) => pit.spill - surface[pit.floor];
+  const deep = pits
+    .filter((pit) => pit.members.length > 0 && depth(pit) >= least)
+    .sort((a, b) => depth(b) - depth(a) || a.floor - b.floor);
+  for (const pit of deep.slice(0, MOST_PITS)) {
     const floor = surface[pit.floor];
-    const heightMm = pit.spill - floor;
-    if (pit.members.length === 0 || heightMm < least) continue;
+    const heightMm = depth(pit);
     const shape = shapeOf(pit.members, grid);
     if (!(shape.length >= LONG * shape.width)) continue;
     const half = shape.width / 2;

@@ -1,4 +1,5 @@
 import { CONNECTED, connectAir, gapFloor } from '../dexel/air';
+import { centreX, centreY } from '../dexel/grid';
 import type { Facets } from '../mesh/measure-facets';
 import type { Mesh } from '../mesh/mesh';
 import type { Point, UndercutRegion } from '../report';
@@ -65,11 +66,7 @@ export function findThinUndercuts(
         if (depth[s] <= region.maxDepthMm) continue;
         region.maxDepthMm = depth[s];
         const { grid } = columns;
-        region.at = [
-          grid.x0 + ((c % cells) + 0.5) * grid.cell,
-          grid.y0 + (Math.floor(c / cells) + 0.5) * grid.cell,
-          columns.z[s],
-        ];
+        region.at = [centreX(grid, c), centreY(grid, c), columns.z[s]];
       }
     }
   }

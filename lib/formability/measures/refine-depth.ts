@@ -1,4 +1,5 @@
 import { CONNECTED, connectAir, gapFloor } from '../dexel/air';
+import { affordWindow } from '../dexel/afford-window';
 import { buildColumns, type Columns } from '../dexel/columns';
 import type { Grid } from '../dexel/grid';
 import { rasterise } from '../dexel/raster';
@@ -35,7 +36,7 @@ export function facetsInWindow(mesh: Mesh, x: number, y: number, reach: number):
   return Uint32Array.from(found);
 }
 
-/** The columns of a small square window, `cells` to a side. */
+/** The columns of a small square window, `cells` to a side, fewer over a heap of facets. */
 export function windowColumns(
   mesh: Mesh,
   x: number,
@@ -44,8 +45,10 @@ export function windowColumns(
   cells: number,
   ofShell: Uint32Array,
 ): Columns {
-  const grid: Grid = { cell: (2 * reach) / cells, nx: cells, ny: cells, x0: x - reach, y0: y - reach };
-  return buildColumns(rasterise(mesh, grid, 2, facetsInWindow(mesh, x, y, reach)), grid, ofShell);
+  const wanted: Grid = { cell: (2 * reach) / cells, nx: cells, ny: cells, x0: x - reach, y0: y - reach };
+  const facets = facetsInWindow(mesh, x, y, reach);
+  const grid = affordWindow(mesh, facets, wanted);
+  return buildColumns(rasterise(mesh, grid, 2, facets), grid, ofShell);
 }
 
 /**

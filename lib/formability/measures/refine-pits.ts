@@ -1,4 +1,5 @@
 import type { Grid } from '../dexel/grid';
+import { affordWindow } from '../dexel/afford-window';
 import { buildColumns } from '../dexel/columns';
 import { rasterise } from '../dexel/raster';
 import type { Mesh } from '../mesh/mesh';
@@ -30,8 +31,10 @@ export function refinePits(
     .filter((pit) => pit.spill - surface[pit.floor] > LEAST_DEPTH_MM)
     .sort((a, b) => b.volume - a.volume || a.floor - b.floor);
   for (const pit of small.slice(0, MOST_REFINED)) {
-    const fine = windowOver(pit, grid);
-    const list = facetsOver(facets, fine);
+    const wanted = windowOver(pit, grid);
+    const list = facetsOver(facets, wanted);
+    const fine = affordWindow(mesh, list, wanted);
+    if (fine.cell >= grid.cell) continue;
     const columns = buildColumns(rasterise(mesh, fine, 2, list), fine, ofShell);
     const found = volumeBelow(columns.height, fine, surface[pit.floor], pit.spill);
     if (found) {

@@ -10,6 +10,8 @@ import { sharedVertices } from './shared-vertices';
 const MOST_LISTED = 20_000;
 /** Facet pairs of near boxes that are looked at, for each facet, before the search gives up: a heap, not a body. */
 export const MOST_PAIRS_PER_FACET = 30;
+/** So it does after so many crossings. */
+const MOST_CROSSINGS = 300_000;
 /** Small meshes may use up more for each. */
 export const LEAST_PAIRS = 1e6;
 
@@ -57,6 +59,7 @@ export function findMeetings(
   const tree = buildBoxTree(facetBoxes(index, p, facets), apart ? (i) => ofFacet[facets[i]] : undefined);
   const most = LEAST_PAIRS + MOST_PAIRS_PER_FACET * facets.length;
   let pairs = 0;
+  let crossings = 0;
   const searched = visitPairs(tree, count > 1 ? tolerance : 0, (i, j) => {
     if (++pairs > most) return false;
     const [f, g] = [facets[i], facets[j]];
@@ -70,6 +73,7 @@ export function findMeetings(
     const depth = crossingDepth(p, index, f, g, tolerance);
     if (depth < 0) return true;
     if (depth > 0) {
+      if (++crossings > MOST_CROSSINGS) return false;
       note(s === t ? found.own : found.between, f, g, middle);
       if (s !== t) crossed.add(pairKey(s, t, count));
     } else if (s !== t) {

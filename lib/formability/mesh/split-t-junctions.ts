@@ -8,7 +8,7 @@ export interface Split {
 }
 
 /** Edge pairs looked at before the search gives up: an open lace, not a body with a few T-junctions. */
-const MOST_PAIRS = 2e7;
+const MOST_PAIRS = 5e6;
 
 /**
  * Finds boundary edges in whose inside another boundary's corner lies, and splits their facets there. The corner
