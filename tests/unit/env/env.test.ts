@@ -29,6 +29,7 @@ async function withEnvironment(source: Record<string, string>) {
     'RELAY_DATABASE_URL',
     'OWNER_DATABASE_URL',
     'WORKER_THREADS',
+    'TRUSTED_PROXY',
   ]) {
     vi.stubEnv(name, source[name]);
   }
@@ -76,6 +77,17 @@ describe('env', () => {
     expect(env()).not.toHaveProperty('RELAY_DATABASE_URL');
     expect(workerEnv()).toMatchObject({ RELAY_DATABASE_URL: url('firstpull_relay'), WORKER_THREADS: 3 });
     expect(ownerEnv().OWNER_DATABASE_URL).toBe(url('firstpull_owner'));
+  });
+
+  it('trusts a proxy by its address or range alone: a name would trust everybody', async () => {
+    for (const proxy of ['192.0.2.1', '10.0.0.0/8', '2001:db8::1', 'fd00::/8']) {
+      const { authEnv } = await withEnvironment({ ...complete, TRUSTED_PROXY: proxy });
+      expect(authEnv().TRUSTED_PROXY).toBe(proxy);
+    }
+    for (const proxy of ['nginx', '10.0.0.0/99', '192.0.2.1, 192.0.2.2', 'true']) {
+      const { authEnv } = await withEnvironment({ ...complete, TRUSTED_PROXY: proxy });
+      expect(() => authEnv()).toThrow(/TRUSTED_PROXY: must be an IP address or a range/);
+    }
   });
 
   it('refuses an address of the wrong kind', async () => {
