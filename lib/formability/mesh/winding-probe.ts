@@ -3,7 +3,7 @@ const BUCKETS = 0.7;
 /** Buckets that would hold more entries than this are made wider: facets that all reach far fill every bucket. */
 const MOST_ENTRIES = 2 ** 23;
 /** Facets looked at by all rays together, a second or two: many shells that all lie over one another want more. */
-const MOST_LOOKS = 2e7;
+const MOST_LOOKS = 1e7;
 
 /** Winding numbers at points, by signed crossings of a vertical ray with the facets of the bucket it runs through. */
 export class WindingProbe {
