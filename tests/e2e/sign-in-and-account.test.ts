@@ -16,6 +16,7 @@ async function signIn(page: Page, next: string, password = someone.password): Pr
 const publicPages = [
   '/',
   '/sign-in',
+  '/sign-in/code',
   '/forgot',
   '/reset',
   '/reset?token=x',
