@@ -1,18 +1,21 @@
+import { readFileSync } from 'node:fs';
 import { analyse } from '@/lib/formability/analyse';
 import { buildColumns } from '@/lib/formability/dexel/columns';
 import { makeGrid } from '@/lib/formability/dexel/grid';
 import { rasterise } from '@/lib/formability/dexel/raster';
 import { prepareMesh } from '@/lib/formability/mesh/prepare-mesh';
 import { readMesh } from '@/lib/formability/parse/read-mesh';
-import { binaryStl } from '../../fixtures/meshes/write-stl';
-import { benchMesh } from './bench-mesh';
 
 export interface EngineTimes {
   triangles: number;
   nx: number;
   ny: number;
+  /** With physics and advice. */
   bestMs: number;
   cpuMs: number;
+  /** Without. */
+  geometryMs: number;
+  geometryCpuMs: number;
   columnsMs: number;
   hits: number;
   peakMB: number;
@@ -21,8 +24,29 @@ export interface EngineTimes {
 
 const ROUNDS = 5;
 
-function timeEngine(size: number, order: 'ordered' | 'shuffled'): EngineTimes {
-  const bytes = binaryStl(Float32Array.from(benchMesh(size, order)));
+function timeEngine(file: string): EngineTimes {
+  const { buffer, byteOffset, byteLength } = readFileSync(file);
+  const bytes = new Uint8Array(buffer, byteOffset, byteLength);
+  const whole = timeReport(bytes, false);
+  const geometry = timeReport(bytes, true);
+  const peakMB = process.resourceUsage().maxRSS / 1024;
+  const { columnsMs, hits } = timeColumns(bytes, whole.field.cellMm);
+  return {
+    triangles: (bytes.length - 84) / 50,
+    nx: whole.field.nx,
+    ny: whole.field.ny,
+    bestMs: whole.bestMs,
+    cpuMs: whole.cpuMs,
+    geometryMs: geometry.bestMs,
+    geometryCpuMs: geometry.cpuMs,
+    columnsMs,
+    hits,
+    peakMB,
+    stages: whole.stages,
+  };
+}
+
+function timeReport(bytes: Uint8Array, geometryOnly: boolean) {
   let bestMs = Infinity;
   let cpuMs = Infinity;
   let stages: Record<string, number> = {};
@@ -30,7 +54,7 @@ function timeEngine(size: number, order: 'ordered' | 'shuffled'): EngineTimes {
   for (let round = 0; round < ROUNDS; round++) {
     const cpu = process.cpuUsage();
     const began = performance.now();
-    const { report, geometry } = analyse(bytes, {}, { now: () => performance.now() });
+    const { report, geometry } = analyse(bytes, {}, { now: () => performance.now(), geometryOnly });
     const took = performance.now() - began;
     const used = process.cpuUsage(cpu);
     cpuMs = Math.min(cpuMs, (used.user + used.system) / 1000);
@@ -39,10 +63,7 @@ function timeEngine(size: number, order: 'ordered' | 'shuffled'): EngineTimes {
     stages = report.timings;
     field = geometry.heightField;
   }
-  const peakMB = process.resourceUsage().maxRSS / 1024;
-  const { columnsMs, hits } = timeColumns(bytes, field.cellMm);
-  const triangles = (bytes.length - 84) / 50;
-  return { triangles, nx: field.nx, ny: field.ny, bestMs, cpuMs, columnsMs, hits, peakMB, stages };
+  return { bestMs, cpuMs, stages, field };
 }
 
 /** The core alone: raster of both passes, sort, winding, intervals. */
@@ -70,5 +91,4 @@ function timeColumns(bytes: Uint8Array, cellMm: number): { columnsMs: number; hi
   return { columnsMs, hits };
 }
 
-const [size, order] = process.argv.slice(2);
-process.stdout.write(JSON.stringify(timeEngine(Number(size), order as 'ordered' | 'shuffled')));
+process.stdout.write(JSON.stringify(timeEngine(process.argv[2])));
