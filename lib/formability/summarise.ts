@@ -1,14 +1,7 @@
 import { FILAMENTS } from './materials/filaments';
 import { SHEETS } from './materials/sheets';
-import {
-  SURE_SECTIONS,
-  type Advice,
-  type Check,
-  type CheckStatus,
-  type Report,
-  type SurenessKind,
-  type SureSection,
-} from './report';
+import type { Advice, Check, CheckStatus, Report } from './report';
+import { SURE_SECTIONS, type SurenessKind, type SureSection } from './report-forming';
 
 const WIDTH = 100;
 const MARK: Record<CheckStatus, string> = { pass: 'ok  ', caution: 'LOOK', fail: 'FAIL', 'not-run': '--  ' };
@@ -62,9 +55,10 @@ function figures(report: Report): string[] {
 
 function sheetFigures({ sheet }: Report): [string, string][] {
   if (!sheet) return [];
-  const { minMm, q05Mm, marginPercent } = sheet.part ?? sheet;
+  const { minMm, minAt, q05Mm, marginPercent } = sheet.part ?? sheet;
+  const where = minAt.map((mm) => fixed(mm, 1)).join(', ');
   const foot = sheet.foot ? `, foot along the bed ${fixed(sheet.foot.minMm, 2)} mm` : '';
-  return [['sheet', `${fixed(minMm, 2)} mm at the part's thinnest, ± ${marginPercent} %, a twentieth of it below ${fixed(q05Mm, 2)} mm${foot}`]]; // prettier-ignore
+  return [['sheet', `${fixed(minMm, 2)} mm at the part's thinnest (${where}), ± ${marginPercent} %, a twentieth of it below ${fixed(q05Mm, 2)} mm${foot}`]]; // prettier-ignore
 }
 
 /** Each figure of the forming itself, marked with how sure it is. */

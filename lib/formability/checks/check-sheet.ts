@@ -3,7 +3,7 @@ import type { Basis, Check, CheckStatus, Place, SheetZone } from '../report';
 import type { FormedSheet } from '../sheet/form-sheet';
 import type { ThinRemedy } from '../sheet/gauge-for';
 import type { FootRemedy, SheetJudgement } from '../sheet/judge-sheet';
-import { say, sayPlace } from './basis';
+import { say } from './basis';
 import type { CheckInput } from './check-input';
 
 const BASIS: Basis = {
@@ -97,23 +97,23 @@ function messageOf(formed: FormedSheet, part: SheetZone, recipe: EffectiveRecipe
   const { foot } = report;
   const leastMm = part.minMm * (1 - part.marginPercent / 100);
   const parts = [
-    `A ${say(gaugeMm, 2)} mm sheet forms to ${say(part.minMm, 2)} mm at the part’s thinnest, ${PLACES[part.place]} at ${sayPlace(part.minAt)} (mean over 3 mm); less the model’s ${part.marginPercent} % that is ${say(leastMm, 2)} mm at least, against ${say(minFormedMm, 2)} mm wanted. A twentieth of the part is thinner than ${say(part.q05Mm, 2)} mm.`,
+    `From ${say(gaugeMm, 2)} mm the part forms to about ${say(part.minMm, 2)} mm at its thinnest, ${PLACES[part.place]}; with the model’s margin of ${part.marginPercent} % it is ${say(leastMm, 2)} mm at least, against ${say(minFormedMm, 2)} mm wanted.`,
   ];
   if (foot && foot.minMm < part.minMm)
     parts.push(
-      `Along the bed, in the ${say(report.footHeightMm)} mm of foot that are usually trimmed off, it thins to ${say(foot.minMm, 2)} mm.`,
+      `The foot, the ${say(report.footHeightMm)} mm along the bed that are usually trimmed off, thins to ${say(foot.minMm, 2)} mm.`,
     );
   const open = openPercent(report, formedAreaMm2);
   if (open >= OPEN_PERCENT)
     parts.push(
-      `${say(open)} % of the sheet does not close onto the template: webs or slots too tight for it.`,
+      `${say(open)} % of the sheet does not close onto the template: webs, or slots too tight for it.`,
     );
   if (isMeshLimited(part))
     parts.push(
-      `A mesh half as fine puts that least thickness ${say(part.meshErrorPercent, 0)} % away, more than the margin: the place is too sharp for the run, so take the figure as a rough guide.`,
+      `That place is too sharp for the run: a mesh half as fine differs there by ${say(part.meshErrorPercent, 0)} %, more than the margin. Take the figure as a rough guide.`,
     );
   if (outcome === 'not-settled') parts.push('The run did not settle: take the figures as a rough guide.');
-  if (bridged) parts.push('Over the undercut the sheet is taken to hang straight down.');
+  if (bridged) parts.push('Beside the undercut the sheet is taken to hang straight down.');
   parts.push('An estimate; prove it with a test pull.');
   return parts.join(' ');
 }

@@ -49,7 +49,9 @@ describe('the sheet over a surveyed part', () => {
     const { minMm, marginPercent } = judged.formed!.report.part!;
     expect(check.measured).toBe(minMm);
     const least = (minMm * (1 - marginPercent / 100)).toFixed(2).replace(/0$/, '');
-    expect(check.message).toContain(`less the model’s ${marginPercent} % that is ${least} mm at least`);
+    expect(check.message).toContain(
+      `with the model’s margin of ${marginPercent} % it is ${least} mm at least`,
+    );
     expect(check.message).toContain('An estimate; prove it with a test pull.');
   });
 
@@ -89,7 +91,7 @@ describe('the sheet over a surveyed part', () => {
     const { part } = judged.formed!.report;
     expect(say(shaken({ part: { ...part, meshErrorPercent: 60 } }))).toMatchObject({
       status: 'caution',
-      message: expect.stringContaining('60 % away'),
+      message: expect.stringContaining('differs there by 60 %'),
     });
     expect(say(shaken({ unclosedAreaMm2: 900 }))).toMatchObject({
       status: 'caution',
