@@ -2,7 +2,8 @@ import { FILAMENTS } from './materials/filaments';
 import { SHEETS } from './materials/sheets';
 import type { MaterialValue } from './materials/value';
 import { defaultRecipe, type EffectiveRecipe } from './recipe';
-import type { Basis, CheckId, Sureness, SureSection } from './report';
+import type { Basis, CheckId } from './report';
+import type { Sureness, SureSection } from './report-forming';
 
 /** Figures that are measured on the mesh: what is uncertain there is the limit alone. */
 const MEASURED: ReadonlySet<CheckId> = new Set([

@@ -1,5 +1,6 @@
 import { DISCHARGE, drivingPressures } from '../measures/estimate-air';
-import type { AirFlow, Check } from '../report';
+import type { Check } from '../report';
+import type { AirFlow } from '../report-forming';
 import { basisOf, drawnFor, say, sayPlace } from './basis';
 import type { CheckInput } from './check-input';
 

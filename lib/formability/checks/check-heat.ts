@@ -1,7 +1,8 @@
 import { FILAMENTS } from '../materials/filaments';
 import { filamentsThatHold, hottestC } from '../measures/estimate-heat';
 import type { EffectiveRecipe } from '../recipe';
-import type { Basis, Check, HeatReport } from '../report';
+import type { Basis, Check } from '../report';
+import type { HeatReport } from '../report-forming';
 import { say } from './basis';
 import type { CheckInput } from './check-input';
 

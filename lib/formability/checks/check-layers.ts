@@ -1,5 +1,6 @@
 import { layerForCusp } from '../physics/layer-surface';
-import type { Basis, Check, LayerShowReport } from '../report';
+import type { Basis, Check } from '../report';
+import type { LayerShowReport } from '../report-forming';
 import { basisOf, roundDown, say, sayGive } from './basis';
 import type { CheckInput } from './check-input';
 

@@ -1,5 +1,6 @@
 import { KNOCK_DOWN, WALL_GIVES_MM } from '../measures/estimate-hold';
-import type { Basis, Check, WallsUnderPressureReport } from '../report';
+import type { Basis, Check } from '../report';
+import type { WallsUnderPressureReport } from '../report-forming';
 import { roundDown, roundUp, say, sayGive } from './basis';
 import type { CheckInput } from './check-input';
 

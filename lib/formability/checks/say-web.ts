@@ -1,4 +1,4 @@
-import type { WebReport, WebRing } from '../report';
+import type { WebReport, WebRing } from '../report-forming';
 import { say } from './basis';
 
 /**

@@ -1,4 +1,4 @@
-import type { PullLogReport } from '../report';
+import type { PullLogReport } from '../report-forming';
 import { fitWeibull, weibullMean, weibullQuantile } from './fit-weibull';
 import type { LoggedTemplate } from './pull-log';
 import { meanAtLeast, provenReliability, survival } from './survival';

@@ -8,7 +8,8 @@ import {
   type Pressures,
 } from '../physics/gas-flow';
 import type { EffectiveRecipe } from '../recipe';
-import type { AirFlow, AirTrap, Vent } from '../report';
+import type { AirTrap, Vent } from '../report';
+import type { AirFlow } from '../report-forming';
 import { placeVents } from './place-vents';
 
 /** Sharp printed or drilled hole (0.6 to 0.7: common practice, no source; the smaller is used). */

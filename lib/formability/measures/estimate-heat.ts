@@ -3,7 +3,7 @@ import { SHEETS } from '../materials/sheets';
 import { contactC, coolingTimeS, type ThermalBody } from '../physics/conduction';
 import { halfSpaceRiseK, heatOfPull, lumpedRiseK, type Cycling } from '../physics/cycle-heating';
 import type { EffectiveRecipe } from '../recipe';
-import type { HeatReport } from '../report';
+import type { HeatReport } from '../report-forming';
 
 /** Distance kept from the softening of amorphous polymers, K (common practice, no source). */
 const MARGIN_K = 10;

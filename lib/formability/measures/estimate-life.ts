@@ -5,17 +5,16 @@ import { FILAMENTS } from '../materials/filaments';
 import { SHEETS } from '../materials/sheets';
 import { releaseForceN, selfReleaseDeg } from '../physics/shrink-grip';
 import type { EffectiveRecipe } from '../recipe';
+import type { DraftReport, PlanReport } from '../report';
 import type {
-  DraftReport,
   HeatReport,
   LifeMargin,
   LifeReport,
   LifeWay,
-  PlanReport,
   PullLogReport,
   SkinReport,
   WallsUnderPressureReport,
-} from '../report';
+} from '../report-forming';
 import { hottestC } from './estimate-heat';
 import { WALL_GIVES_MM } from './estimate-hold';
 

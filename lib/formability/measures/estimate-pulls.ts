@@ -4,7 +4,7 @@ import { toolC } from '../physics/conduction';
 import { LOSS_WM2K } from '../physics/cycle-heating';
 import { followPulls, type FollowedPulls } from '../physics/follow-pulls';
 import type { EffectiveRecipe } from '../recipe';
-import type { HeatReport, TransientReport } from '../report';
+import type { HeatReport, TransientReport } from '../report-forming';
 import { softeningLimitC, thermalBodies } from './estimate-heat';
 
 /** Depths below the template's surface that the report tells, mm. */

@@ -13,7 +13,7 @@ import {
   type PlateAnswer,
 } from '../physics/plates';
 import type { EffectiveRecipe } from '../recipe';
-import type { HeatReport, SkinReport } from '../report';
+import type { HeatReport, SkinReport } from '../report-forming';
 import { hottestC } from './estimate-heat';
 
 /** Creep under minutes of load in warmth: modulus divided by 3 (2 to 5: common practice, no source). */

@@ -1,5 +1,6 @@
 import { drapedShare, skirtShare } from '../physics/drape-rules';
-import type { AirTrap, PlanReport, Point, Spacing, ThinningEstimate } from '../report';
+import type { AirTrap, PlanReport, Point, Spacing } from '../report';
+import type { ThinningEstimate } from '../report-forming';
 import type { ThicknessAt } from '../sheet/thickness-at';
 import {
   coneThinning,

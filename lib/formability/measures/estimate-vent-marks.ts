@@ -1,7 +1,8 @@
 import { stateAtPressure } from '../physics/inflate-membrane';
 import { clampedDisc } from '../physics/plates';
 import type { EffectiveRecipe } from '../recipe';
-import type { ThicknessFrom, Vent, VentMark } from '../report';
+import type { Vent } from '../report';
+import type { ThicknessFrom, VentMark } from '../report-forming';
 import { MPA_PER_BAR } from './estimate-skin';
 
 /** Modulus of a sheet at forming temperature, MPa (1 to 5 is the usual rubbery range: common practice, no source). */

@@ -1,6 +1,7 @@
 import { cellAt, centreX, centreY, type Grid } from '../dexel/grid';
 import { ringToFoot, webCriterion } from '../physics/web-criterion';
-import type { Point, Spacing, WebReport, WebRing } from '../report';
+import type { Point, Spacing } from '../report';
+import type { WebReport, WebRing } from '../report-forming';
 
 /** Higher than this stands above the bed, mm. */
 const STANDS_MM = 0.05;

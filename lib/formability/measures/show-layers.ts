@@ -1,6 +1,6 @@
 import { bulgeMm, cuspMm, nubDraftDeg, roughnessUm, stepThroughMm } from '../physics/layer-surface';
 import type { EffectiveRecipe } from '../recipe';
-import type { LayerShowReport, ThicknessFrom } from '../report';
+import type { LayerShowReport, ThicknessFrom } from '../report-forming';
 import { MPA_PER_BAR, showsMm } from './estimate-skin';
 import { HOT_MPA } from './estimate-vent-marks';
 import type { Slope } from './survey-slopes';

@@ -5,8 +5,9 @@ const POINTS = 32;
 
 /**
  * Clamped rectangle under even pressure, shorter side a, longer side b = aspect · a: sag w D / q a⁴ at the middle and
- * moment |M| / q a² at the middle of the long side; at the middle of the plate the two curvatures, as κ D / q a². Galerkin's method on (1−ξ²)²(1−η²)² P₂ᵢ(ξ) P₂ⱼ(η); agrees with
- * S. Timoshenko, S. Woinowsky-Krieger, Theory of Plates and Shells, Table 35.
+ * moment |M| / q a² at the middle of the long side; at the middle of the plate the two curvatures, as κ D / q a².
+ * Galerkin's method on (1−ξ²)²(1−η²)² P₂ᵢ(ξ) P₂ⱼ(η); agrees with S. Timoshenko, S. Woinowsky-Krieger, Theory of Plates
+ * and Shells, Table 35. @throws RangeError for an aspect below 1
  */
 export function clampedRectangle(aspect: number): ClampedRectangle {
   if (!(aspect >= 1 && Number.isFinite(aspect)))
