@@ -353,7 +353,7 @@ describe('sheet', () => {
   });
 
   it('takes the margin off: 6 mm less 20 % is 4.8 mm', () => {
-    expect(formed({ minMm: 6 }).message).toContain('that is 4.8 mm at least');
+    expect(formed({ minMm: 6 }).message).toContain('it is 4.8 mm at least');
   });
 
   it('fails where half the nodes see it too: 0.28 mm and 25 % are 0.35 mm', () => {
