@@ -4,6 +4,8 @@ import type { Advice, Check, CheckStatus, Report } from './report';
 import { SURE_SECTIONS, type SurenessKind, type SureSection } from './report-forming';
 
 const WIDTH = 100;
+/** Rules of thinning told on the page; the rest are in the report. */
+const SAID_RULES = 3;
 const MARK: Record<CheckStatus, string> = { pass: 'ok  ', caution: 'LOOK', fail: 'FAIL', 'not-run': '--  ' };
 
 /** The report as a page that a designer reads: title, figures, then what must be settled, then the rest. */
@@ -68,6 +70,7 @@ function physicsFigures({
   wallsUnderPressure: hold,
   web,
   ventMarks,
+  thinning,
   sureness,
 }: Report): [string, string][] {
   if (!heat || !skin || !hold || !web) return [];
@@ -78,6 +81,11 @@ function physicsFigures({
     ['skin', skin.sagMm === null ? 'nothing carries the top' : `sinks ${figure(skin.sagMm)} mm, ${fixed(skin.limitMm, 2)} mm show ${mark('skin')}`], // prettier-ignore
     ['walls', `give ${figure(hold.sagMm)} mm${hold.collapseBar === null ? '' : `, buckle at ${fixed(hold.collapseBar, 2)} bar`} ${mark('wallsUnderPressure')}`], // prettier-ignore
   ];
+  const rules = (thinning ?? []).map(
+    ({ rule, ruleMm }) => `${rule.replace('-', ' ')} ${fixed(ruleMm, 2)} mm`,
+  );
+  if (rules.length > 0)
+    rows.push(['by rule', `${rules.slice(0, SAID_RULES).join(', ')} ${mark('thinning')}`]);
   const highest = ventMarks.reduce((most, one) => Math.max(most, one.heightMm), 0);
   if (ventMarks.length > 0)
     rows.push(['vent marks', `up to ${fixed(highest, 2)} mm high ${mark('ventMarks')}`]);

@@ -47,7 +47,7 @@ export function checkHeat({ recipe, report }: CheckInput): Check | null {
 /** What following the pulls adds: later ones meet a warm template, and the sheet must set on it. */
 function inDepth({ transient, coolS }: HeatReport, pulls: number): string {
   const { setFirstS, setLastS, setPulls, peakC, softensToMm, settled } = transient;
-  const soft = softensToMm > 0 ? `, soft to a depth of ${say(softensToMm)} mm` : '';
+  const soft = softensToMm >= 0.05 ? `, soft to a depth of ${say(softensToMm)} mm` : '';
   const comes = `Followed pull by pull it comes to ${say(peakC, 0)} °C${soft}${settled ? '' : ' and still rises'}`;
   const least = coolS === null ? '' : `, on a template that stays cold in ${say(coolS, 1)} s`;
   if (setFirstS === null) return `${comes}; no sheet sets within the cycle${least}.`;

@@ -273,6 +273,7 @@ describe('how sure the figures are', () => {
     const page = summarise(of(), 'part.stl');
     expect(page).toContain('Life of the template:');
     expect(page).toMatch(/How sure the figures are:\n {2}from a source: draft, draw\./);
+    expect(page).toMatch(/by rule +skirt [\d.]+ mm, (foot|drape) [\d.]+ mm \(estimate\)/);
     expect(page).toMatch(/heat +\d+ °C at the first touch, .* \(estimate\)/);
   });
 
