@@ -232,12 +232,13 @@ describe('limits: a verdict changes at the published value', () => {
   });
 
   it(`layerMinMm: finer layers than 0.1 mm are not asked for (${PRACTICE})`, () => {
-    const remedy = (cuspMaxMm: number) =>
+    const remedy = (wantedCuspMm: number) =>
       checkWith(checkLayers, ({ recipe, report }) => {
-        recipe.print.layerMm = 0.2;
-        report.layers.cuspMaxMm = cuspMaxMm;
+        recipe.print.layerMm = report.layers.cuspMaxMm = 0.2;
+        recipe.limits.cuspMaxMm = wantedCuspMm;
       }).remedy;
-    expect(remedy(0.1999)).toMatch(/^Print in layers of 0.1 mm/);
-    expect(remedy(0.2001)).toMatch(/^Sand the slopes/);
+    // On a slope of 90° the layer is the cusp, in whole hundredths: 0.1 and 0.09 mm.
+    expect(remedy(0.1001)).toMatch(/^Print in layers of 0.1 mm/);
+    expect(remedy(0.0999)).toMatch(/^Sand the slopes/);
   });
 });
