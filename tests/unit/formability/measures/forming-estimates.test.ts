@@ -121,6 +121,10 @@ describe('life', () => {
     expect([pulls(0.0995), pulls(0.1005)]).toEqual([50, 0]);
   });
 
+  it('22 templates without a failure would prove 90 % with 90 % confidence (row L10)', () => {
+    expect(life('none').text).toContain(' 22 templates that come so far without a failure');
+  });
+
   it('without walls there is nothing to grip: 90° of draft', () => {
     const grip = life('none', { draft: { wallMinMacroDeg: null, wantedDeg: 5 } }).margins.find(({ way }) => way === 'grip'); // prettier-ignore
     expect(grip).toMatchObject({ demand: null, holds: 90, ratio: null });
