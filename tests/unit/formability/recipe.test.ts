@@ -119,6 +119,10 @@ describe('what a recipe may say', () => {
     expect([7, 1025, 64.5].map((sheetNodes) => taken({ grid: { sheetNodes } }))).toEqual([false, false, false]); // prettier-ignore
   });
 
+  it('schema 1 and no other', () => {
+    expect([1, 2].map((schema) => taken({ schema }))).toEqual([true, false]);
+  });
+
   it('mesh.up longer than a millionth', () => {
     const up = (z: number) => taken({ mesh: { up: [0, 0, z] } });
     expect([up(1.005e-6), up(0.995e-6)]).toEqual([true, false]);

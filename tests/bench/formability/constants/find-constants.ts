@@ -110,6 +110,7 @@ function isStructural(node: ts.NumericLiteral, whole: boolean): boolean {
     if (ts.isBinaryExpression(up) && whole && BITS.has(up.operatorToken.kind)) return true;
     if (ts.isBinaryExpression(up) && up.operatorToken.kind === ts.SyntaxKind.PercentToken && whole)
       return true;
+    if (ts.isPropertyAssignment(up) && /Digits$/.test(up.name.getText())) return true;
     if (ts.isNewExpression(up) && /Array|Buffer$|View$|Growing/.test(up.expression.getText())) return true;
     if (ts.isCallExpression(up) && up.expression !== at) {
       const callee = ts.isPropertyAccessExpression(up.expression)
