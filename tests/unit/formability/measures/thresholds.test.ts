@@ -161,7 +161,7 @@ describe('scale: a plan of 20 to 2000 mm is a template’s', () => {
     expect(suggestScale([2010, 5, 5])).not.toBeNull();
   });
 
-  it.each([
+  it.each<[number[], number, string]>([
     [[80 / 25.4, 60 / 25.4, 30 / 25.4], 25.4, 'inches'],
     [[12, 8.5, 4], 10, 'centimetres'],
     [[0.3, 0.2, 0.05], 1000, 'metres'],
@@ -170,7 +170,7 @@ describe('scale: a plan of 20 to 2000 mm is a template’s', () => {
     [[2032, 1536.7, 762], 1 / 25.4, 'inches read as millimetres twice'],
     [[3010, 2000, 1500], 0.1, 'tenths'],
     [[300_000, 200_000, 50_000], 0.001, 'microns'],
-  ] as const)('%j asks for × %f (%s)', (sizes, factor) => {
+  ])('%j asks for × %f (%s)', (sizes, factor) => {
     expect(suggestScale(sizes)).toBeCloseTo(factor, 12);
   });
 
