@@ -252,7 +252,9 @@ describe('heat, skin and walls', () => {
     expect(walls({ sagMm: 98.5 }).remedy).toContain('Make the walls');
     expect(walls({ sagMm: 101.5 }).remedy).toContain('too soft');
     // Ribs in whole tenths of a millimetre, down; steps of 0.101 mm would say 80.1.
-    expect(walls({ sagMm: 0.8, empty: true, ribSpacingMm: 80.099 }).remedy).toContain('ribs no more than 80 mm');
+    expect(walls({ sagMm: 0.8, empty: true, ribSpacingMm: 80.099 }).remedy).toContain(
+      'ribs no more than 80 mm',
+    );
     // 19.5 mm (0.8 / 0.1)^⅓ = 39 mm: to the tenth; steps of 0.101 mm would say 39.1.
     expect(walls({ sagMm: 0.8, wallMm: 19.5 }).remedy).toContain('Make the walls 39 mm thick');
   });
