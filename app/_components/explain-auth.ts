@@ -28,7 +28,7 @@ const sentences: Record<string, string> = {
 };
 
 /** Refusals of ours, whose message says what to do. */
-const ownWords = ['TOO_MANY_ATTEMPTS', 'WEAK_PASSWORD'];
+const ownWords = ['TOO_MANY_ATTEMPTS', 'WEAK_PASSWORD', 'WRONG_CODE', 'CODE_NEEDED'];
 
 /** One sentence for a refusal of the sign-in service: what happened and what to do. */
 export function explainAuth(refusal: AuthRefusal): string {

@@ -9,6 +9,8 @@ export type Budget = { burst: number; everyMs: number };
 /** How often a signed-in person may give a wrong password or code, wherever they are asked for it. */
 export const confirmBudget: Budget = { burst: 5, everyMs: 3 * 60_000 };
 export const confirmKey = (personId: string) => `confirm:${personId}`;
+/** Codes have a count of their own: the right password elsewhere does not make it whole again. */
+export const codeKey = (personId: string) => `code:${personId}`;
 
 const now = sql`(extract(epoch from clock_timestamp()) * 1000)::bigint`;
 /** When the budget will be whole again: `last_request` of our keys. */
@@ -55,5 +57,7 @@ export async function forgetTries(key: string): Promise<void> {
 async function forgetOldTries(): Promise<void> {
   await authDatabase()
     .delete(rateLimits)
-    .where(sql`${rateLimits.key} ~ '^(confirm|sign-in):' and ${rateLimits.lastRequest} < ${now} - 86400000`);
+    .where(
+      sql`${rateLimits.key} ~ '^(confirm|code|sign-in):' and ${rateLimits.lastRequest} < ${now} - 86400000`,
+    );
 }

@@ -3,7 +3,7 @@ import { and, eq } from 'drizzle-orm';
 import { authDatabase } from '@/db/client';
 import { accounts } from '@/db/schema/identity';
 import { AppError, forbidden } from '@/lib/errors/app-error';
-import { confirmBudget, confirmKey, forgetTries, spendTry } from './attempts-data';
+import { codeKey, confirmBudget, confirmKey, forgetTries, spendTry } from './attempts-data';
 import type { Person } from './context';
 import { readSecondFactor, takeCode } from './second-factor-data';
 import { waitWords } from './wait-words';
@@ -45,6 +45,13 @@ async function confirmCode(person: Person, code: string | undefined): Promise<vo
       'Your second factor is on: give the code that your authenticator shows. Nothing was signed.',
       'code-needed',
     );
+  const retryAfterS = await spendTry(codeKey(person.id), confirmBudget);
+  if (retryAfterS > 0)
+    throw new AppError(
+      'limit_exceeded',
+      `Too many wrong codes. Wait ${waitWords(retryAfterS)} and try again.`,
+      { retryAfterS },
+    );
   const taken = await takeCode(person.id, code);
   if (taken === 'used')
     throw forbidden('This code was used already. Wait for the next one. Nothing was signed.', 'wrong-code');
@@ -53,4 +60,5 @@ async function confirmCode(person: Person, code: string | undefined): Promise<vo
       'That is not the code that your authenticator shows now. Nothing was signed.',
       'wrong-code',
     );
+  await forgetTries(codeKey(person.id));
 }

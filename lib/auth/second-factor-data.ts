@@ -3,6 +3,7 @@ import { symmetricDecrypt } from 'better-auth/crypto';
 import { authDatabase } from '@/db/client';
 import { sessions, twoFactors, users } from '@/db/schema/identity';
 import { authEnv } from '@/lib/env/env';
+import { hashRecoveryCode } from './recovery-codes';
 import { stepOfCode } from './totp';
 
 /** Whether a person's second factor is on, and how many recovery codes are left. */
@@ -42,6 +43,15 @@ export async function takeCode(personId: string, code: string): Promise<'taken' 
     )
     .returning({ id: twoFactors.id });
   return marked.length > 0 ? 'taken' : 'used';
+}
+
+/** Whether this is one of a person's recovery codes; it is not spent. */
+export async function isRecoveryCode(personId: string, code: string): Promise<boolean> {
+  const [row] = await authDatabase()
+    .select({ codes: twoFactors.backupCodes })
+    .from(twoFactors)
+    .where(eq(twoFactors.userId, personId));
+  return row ? (JSON.parse(row.codes) as string[]).includes(hashRecoveryCode(code)) : false;
 }
 
 /** Ends every session of a person but one; returns the ids of those that ended. */

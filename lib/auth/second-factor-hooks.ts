@@ -1,12 +1,17 @@
 import type { GenericEndpointContext } from '@better-auth/core';
 import { APIError, getSessionFromCtx } from 'better-auth/api';
+import { verifyPassword } from 'better-auth/crypto';
 import { z } from 'zod';
 import { endSessionSockets } from '@/lib/workspaces/end-person-sockets';
-import { queueIdentityMail } from './auth-data';
+import { codeKey, confirmBudget, forgetTries, spendTry } from './attempts-data';
+import { findOwner, queueIdentityMail } from './auth-data';
 import { hashRecoveryCode } from './recovery-codes';
-import { endOtherSessions, readSecondFactor, takeCode } from './second-factor-data';
+import { endOtherSessions, isRecoveryCode, readSecondFactor, takeCode } from './second-factor-data';
+import { waitWords } from './wait-words';
 
 const Password = z.strictObject({ password: z.string().max(256) });
+/** Whoever has a session and the password of another may not do away with the factor that they lack. */
+const Both = Password.extend({ code: z.string().max(60).optional() });
 const Code = z.strictObject({
   code: z
     .string()
@@ -17,10 +22,10 @@ const Code = z.strictObject({
 const RecoveryCode = z.strictObject({ code: z.string().min(1).max(60) });
 
 /** What each endpoint takes, and nothing else: no device is trusted without a code, no other kind of factor is set up. */
-const inputs: Record<string, z.ZodType<Record<string, string>>> = {
+const inputs: Record<string, z.ZodType<{ password?: string; code?: string }>> = {
   '/two-factor/enable': Password,
-  '/two-factor/disable': Password,
-  '/two-factor/generate-backup-codes': Password,
+  '/two-factor/disable': Both,
+  '/two-factor/generate-backup-codes': Both,
   '/two-factor/verify-totp': Code,
   '/two-factor/verify-backup-code': RecoveryCode,
 };
@@ -47,22 +52,63 @@ export async function beforeSecondFactor(ctx: GenericEndpointContext) {
   const given = shape.safeParse(ctx.body);
   if (!given.success)
     throw new APIError('BAD_REQUEST', { code: 'INVALID_INPUT', message: given.error.issues[0].message });
-  const body = given.data;
-  if (!ctx.path.startsWith('/two-factor/verify-')) return { context: { body } };
+  const { password, code = '' } = given.data;
   const session = await getSessionFromCtx(ctx);
+  if (!ctx.path.startsWith('/two-factor/verify-')) {
+    if (shape === Both && session) await proveFactor(session.user, password ?? '', given.data.code);
+    return { context: { body: { password } } };
+  }
   // Who is signed in has nothing to prove here, except the code that ends setting up.
   if (session && (session.user.twoFactorEnabled || ctx.path !== '/two-factor/verify-totp'))
     throw new APIError('BAD_REQUEST', { code: 'SIGNED_IN_ALREADY', message: 'You are signed in already.' });
   if (ctx.path === '/two-factor/verify-backup-code')
-    return { context: { body: { code: hashRecoveryCode(body.code) } } };
+    return { context: { body: { code: hashRecoveryCode(code) } } };
   if (session) settingUp.set(ctx.context, session);
   const personId = session?.user.id ?? (await challenged(ctx));
-  if (personId && (await takeCode(personId, body.code)) === 'used')
-    throw new APIError('UNAUTHORIZED', {
+  if (personId && (await takeCode(personId, code)) === 'used') throw refuse.used();
+  return { context: { body: { code } } };
+}
+
+const refuse = {
+  used: () =>
+    new APIError('UNAUTHORIZED', {
       code: 'CODE_USED',
       message: 'This code was used already. Wait for the next one.',
-    });
-  return { context: { body } };
+    }),
+  wrong: () =>
+    new APIError('UNAUTHORIZED', {
+      code: 'WRONG_CODE',
+      message: 'This is neither the code that your authenticator shows now nor one of your recovery codes.',
+    }),
+  missing: () =>
+    new APIError('BAD_REQUEST', {
+      code: 'CODE_NEEDED',
+      message: 'Your second factor is on: give a code of your authenticator, or a recovery code.',
+    }),
+};
+
+/**
+ * Where a second factor is on, it ends and its recovery codes change only with a code of it, or a recovery code. A wrong
+ * password goes on to the service, which refuses it, before any code is marked as used.
+ */
+async function proveFactor({ id, email }: Asked['user'], password: string, code?: string): Promise<void> {
+  if (!(await readSecondFactor(id)).on) return;
+  const owner = await findOwner(email);
+  if (!owner || !(await verifyPassword({ hash: owner.passwordHash, password }))) return;
+  if (!code?.trim()) throw refuse.missing();
+  const wait = await spendTry(codeKey(id), confirmBudget);
+  if (wait > 0)
+    throw new APIError(
+      'TOO_MANY_REQUESTS',
+      { code: 'TOO_MANY_ATTEMPTS', message: `Too many wrong codes. Wait ${waitWords(wait)} and try again.` },
+      { 'retry-after': String(wait) },
+    );
+  const digits = code.replace(/\s/g, '');
+  if (/^\d{6}$/.test(digits)) {
+    const taken = await takeCode(id, digits);
+    if (taken !== 'taken') throw refuse[taken]();
+  } else if (!(await isRecoveryCode(id, code))) throw refuse.wrong();
+  await forgetTries(codeKey(id));
 }
 
 /** After the service has done it: sessions of before end with a new second factor, and the person is told. */

@@ -234,7 +234,7 @@ describe('recovery codes', () => {
     expect((await readSecondFactor(one.person.id)).codesLeft).toBe(9);
   });
 
-  it('are all replaced by who gives the password; a stored hash is no code', async () => {
+  it('are all replaced by who gives password and code; a stored hash is no code', async () => {
     const one = await withFactor('Renew');
     const { rows } = await database.query<{ codes: string }>(
       'select backup_codes as codes from two_factors where user_id = $1',
@@ -249,7 +249,14 @@ describe('recovery codes', () => {
     expect(stolen.status).toBe(401);
     const wrong = await post('/two-factor/generate-backup-codes', { password: 'x' }, one.cookie);
     expect(wrong.status).toBe(400);
-    const renewed = await post('/two-factor/generate-backup-codes', { password: testPassword }, one.cookie);
+    const passwordOnly = await post(
+      '/two-factor/generate-backup-codes',
+      { password: testPassword },
+      one.cookie,
+    );
+    expect([passwordOnly.status, await codeOf(passwordOnly)]).toEqual([400, 'CODE_NEEDED']);
+    const both = { password: testPassword, code: await one.device.code() };
+    const renewed = await post('/two-factor/generate-backup-codes', both, one.cookie);
     const { backupCodes } = (await renewed.json()) as { backupCodes: string[] };
     expect(backupCodes.some((code) => one.codes.includes(code))).toBe(false);
     const old = await post(
@@ -268,18 +275,64 @@ describe('recovery codes', () => {
 });
 
 describe('turning a second factor off', () => {
-  it('asks the password; then the password alone signs in again', async () => {
+  it('asks the password and a code; then the password alone signs in again', async () => {
     const one = await withFactor('Off');
-    expect((await post('/two-factor/disable', { password: 'x' }, one.cookie)).status).toBe(400);
-    expect((await post('/two-factor/disable', { password: testPassword })).status).toBe(401);
+    const code = await one.device.code();
+    const refused = async (body: Record<string, string>, cookie?: string) => {
+      const answer = await post('/two-factor/disable', body, cookie);
+      return [answer.status, await codeOf(answer)];
+    };
+    // A wrong password spends no code.
+    expect(await refused({ password: 'x', code }, one.cookie)).toEqual([400, 'INVALID_PASSWORD']);
+    expect((await refused({ password: testPassword, code }))[0]).toBe(401);
+    // A session and the password in the hands of another do not do away with the factor that they lack.
+    expect(await refused({ password: testPassword }, one.cookie)).toEqual([400, 'CODE_NEEDED']);
+    expect(await refused({ password: testPassword, code: '000000' }, one.cookie)).toEqual([
+      401,
+      'WRONG_CODE',
+    ]);
+    expect(await refused({ password: testPassword, code: 'nor-this' }, one.cookie)).toEqual([
+      401,
+      'WRONG_CODE',
+    ]);
     expect((await readSecondFactor(one.person.id)).on).toBe(true);
-    const off = await post('/two-factor/disable', { password: testPassword }, one.cookie);
+    const off = await post('/two-factor/disable', { password: testPassword, code }, one.cookie);
     expect(off.status).toBe(200);
     expect([await me(one.cookie), await me(cookieOf(off))]).toEqual([401, 200]);
     expect(await readSecondFactor(one.person.id)).toEqual({ on: false, codesLeft: 0 });
     const signedIn = await post('/sign-in/email', { email: one.person.email, password: testPassword });
     expect(await me(cookieOf(signedIn))).toBe(200);
     expect((await mailsTo(one.person.email)).at(-1)).toMatchObject({ what: 'off' });
+  });
+
+  it('takes a recovery code from who has lost the authenticator, and no code twice', async () => {
+    const one = await withFactor('Lost');
+    const code = await one.device.code();
+    expect(await confirmPassword(one.person, testPassword, code)).toBe('password+totp');
+    const used = await post('/two-factor/disable', { password: testPassword, code }, one.cookie);
+    expect([used.status, await codeOf(used)]).toEqual([401, 'CODE_USED']);
+    const written = one.codes[3].toUpperCase().replaceAll('-', ' ');
+    const off = await post('/two-factor/disable', { password: testPassword, code: written }, one.cookie);
+    expect(off.status).toBe(200);
+    expect((await readSecondFactor(one.person.id)).on).toBe(false);
+  });
+
+  it('counts wrong codes together with signing, and the right password elsewhere does not forgive them', async () => {
+    const one = await withFactor('Guesser');
+    for (let i = 0; i < confirmBudget.burst; i++) {
+      const body = { password: testPassword, code: '000000' };
+      expect((await post('/two-factor/disable', body, one.cookie)).status).toBe(401);
+      // The right password makes its own count whole, not that of the codes.
+      const changed = { currentPassword: testPassword, newPassword: testPassword };
+      expect((await post('/change-password', changed, one.cookie)).status).toBe(200);
+    }
+    const right = { password: testPassword, code: await one.device.code() };
+    expect((await post('/two-factor/disable', right, one.cookie)).status).toBe(429);
+    await expect(confirmPassword(one.person, testPassword, right.code)).rejects.toMatchObject({
+      code: 'limit_exceeded',
+      message: expect.stringContaining('wrong codes'),
+    });
+    expect((await readSecondFactor(one.person.id)).on).toBe(true);
   });
 
   it('counts wrong passwords together with signing', async () => {

@@ -12,7 +12,7 @@ interface ChangeProps {
   onDone: () => void;
 }
 
-/** New recovery codes, or no second factor any more; both ask for the password. */
+/** New recovery codes, or no second factor any more; both ask for the password and for a code. */
 export default function ChangeSecondFactor({ email, what, onDone }: ChangeProps) {
   const queries = useQueryClient();
   const [codes, setCodes] = useState<string[] | null>(null);
@@ -23,6 +23,7 @@ export default function ChangeSecondFactor({ email, what, onDone }: ChangeProps)
         email={email}
         path="/two-factor/generate-backup-codes"
         action="Make new codes"
+        withCode
         onAnswer={(answer) => setCodes(answer.backupCodes)}
         onCancel={onDone}
       />
@@ -32,6 +33,7 @@ export default function ChangeSecondFactor({ email, what, onDone }: ChangeProps)
       email={email}
       path="/two-factor/disable"
       action="Turn it off"
+      withCode
       isDanger
       onAnswer={() => {
         notify('Your second factor is off.');
