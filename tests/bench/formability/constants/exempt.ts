@@ -33,9 +33,9 @@ const EXEMPT: Exemption[] = [
   },
   {
     reason: 'number of samples, rays, cells, buckets or halvings, or where samples lie: more only refine',
-    files: /^(mesh|measures|dexel)\//,
+    files: /^(mesh|measures|dexel)\/|^sheet\/(find-thinnest|form-sheet)/,
     names:
-      /^(RAYS|BED_RAYS|FOLLOWED|HALVINGS|FINER|FEW_CELLS|FINE_MM|BINS_A_DEG|COARSE|CELLS|MAP|BUCKETS|LEAF|AXIS_CELLS|ITEM_SPAN|CELL\b|BITS|GAPS|SHIFT|USUAL_CELLS|VISIBLE|SMALL_CELLS|DIRECTIONS|CROSSING_STEPS|sampleSurface|sortColumn|sortByHeight|sortTriangles|isLocal|mortonOrder|noise|perturbMesh|keyOf|share|spread|sumCells|affordGrid|SHELL_SHIFT|VERTEX_SHIFT|COARSE_STEP_MM|HEIGHTS)/,
+      /^(RAYS|SPACING_MM|MOST_PARTS|SEARCHED|USUAL_NODES|PREVIEW_NODES|BED_RAYS|FOLLOWED|HALVINGS|FINER|FEW_CELLS|FINE_MM|BINS_A_DEG|COARSE|CELLS|MAP|BUCKETS|LEAF|AXIS_CELLS|ITEM_SPAN|CELL\b|BITS|GAPS|SHIFT|USUAL_CELLS|VISIBLE|SMALL_CELLS|DIRECTIONS|CROSSING_STEPS|sampleSurface|sortColumn|sortByHeight|sortTriangles|isLocal|mortonOrder|noise|perturbMesh|keyOf|share|spread|sumCells|affordGrid|SHELL_SHIFT|VERTEX_SHIFT|COARSE_STEP_MM|HEIGHTS)/,
   },
   {
     reason:
@@ -49,7 +49,7 @@ const EXEMPT: Exemption[] = [
     files:
       /^physics\/(clamped-rectangle|conduct|conduction|erf|follow-pulls|inflate-membrane|layer-surface|plates)\.ts$|^sheet\/thinning-rules\.ts$/,
     names:
-      /^(TERMS|POINTS|STEPS|gaussPoints|toolC|MOST_KNOWN|SERIES_TO|series|fraction|SHEET_CELLS|TOOL_CELLS|FIRST_CELL|FIRST_STEP|ALIKE_K|MOST_PULLS|COARSE|ROUGH|inflateMembrane|integrate|MOST_STEPS|atRim|meridianStretch|heightAtPressure|supportedRectangle$|NAVIER|shareThrough|stateAtPressure|growing)/,
+      /^(TERMS|POINTS|STEPS|gaussPoints|toolC|MOST_KNOWN|SERIES_TO|series|fraction|SHEET_CELLS|TOOL_CELLS|FIRST_CELL|FIRST_STEP|ALIKE_K|MOST_PULLS|COARSE|ROUGH|inflateMembrane|integrate|MOST_STEPS|atRim|meridianStretch|heightAtPressure|supportedRectangle$|NAVIER|stepTimes|shareThrough|stateAtPressure|growing)/,
   },
   {
     reason: 'bound of a search, or how finely it ends: the answer is rounded more coarsely',
