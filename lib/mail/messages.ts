@@ -103,6 +103,8 @@ export const mailRequest = z.discriminatedUnion('template', [
     needed: z.number(),
     have: z.number(),
     left: z.number(),
+    /** The names are there, but not under what stands there now; left out in mails of before. */
+    held: z.boolean().optional(),
   }),
   z.object({
     template: z.literal('stand-in-named'),

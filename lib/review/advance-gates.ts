@@ -3,8 +3,9 @@ import { workspaceIdOf, type JobContext, type WorkspaceContext } from '@/lib/aut
 import { appendEntry } from '@/lib/audit/append-entry';
 import { openMustSettle } from './docket-data';
 import { conditionsHold } from './gate-conditions';
-import { changeGate, gatesOf, signaturesOf, type GateRow } from './gate-data';
+import { changeGate, gatesOf, signaturesOf, type GateRow, type SignatureRow } from './gate-data';
 import { lockContent } from './lock-content';
+import { mayPass } from './may-pass';
 import { workspacePeople } from './people-data';
 import { mailAbout, tellToday } from './revision-mails';
 import { loadRevisionParts, type RevisionRow, type TemplateRow } from './revision-data';
@@ -13,7 +14,11 @@ import { tellShort } from './tell-short';
 import { askedAt, isShort, makersOf, quorumReached, whoMaySign, type GateAt } from './who-signs';
 
 /** A gate of a revision with the people of this moment. */
-export async function gateAt(tx: TenantTx, revision: RevisionRow, gate: GateRow): Promise<GateAt> {
+export async function gateAt(
+  tx: TenantTx,
+  revision: RevisionRow,
+  gate: GateRow,
+): Promise<GateAt & { signed: SignatureRow[] }> {
   const { workspaceId } = revision;
   const { mesh } = await loadRevisionParts(tx, revision);
   return {
@@ -50,6 +55,11 @@ export async function advanceGates(
     }
     const at = await gateAt(tx, revision, opened);
     if (quorumReached(at)) {
+      const isLast = gate === all.at(-1);
+      if (!(await mayPass(tx, revision, at.signed, isLast))) {
+        if (isLast) await tellShort(tx, ctx, template, revision, { ...at, gate: opened });
+        return passed;
+      }
       passed.push(await changeGate(tx, opened, 'passed'));
       if (gate.rule.quorum === 'all') await recordEverybody(tx, ctx, template, revision, at);
       continue;

@@ -2,7 +2,7 @@ import type { GateRow, SignatureRow } from './gate-data';
 import { waitsFor } from './gate-conditions';
 import type { WorkspacePerson } from './people-data';
 import type { GateView, SignatureView } from './schemas';
-import { isShort, missingAt, rightAt, signedAt, type GateAt } from './who-signs';
+import { isShort, missingAt, quorumReached, rightAt, signedAt, type GateAt } from './who-signs';
 
 export const signatureView = (row: SignatureRow): SignatureView => ({
   id: row.id,
@@ -48,6 +48,7 @@ export function gateViews(gates: GateRow[], shared: GatesAt): GateView[] {
       signatures: shared.signed.filter((row) => row.gateId === gate.id).map(signatureView),
       awaited: missing.map((person) => nameAwaited(at, person)),
       short: asking && isShort(at),
+      held: asking && quorumReached(at),
     };
   });
 }

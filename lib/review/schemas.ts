@@ -293,6 +293,8 @@ export const GateView = z.object({
   awaited: z.array(z.string()),
   /** Too few are left whom it asks: it cannot pass until somebody joins. */
   short: z.boolean().optional(),
+  /** Whoever was missing has left, but an item is open, or what is there is not what the last name stands on. */
+  held: z.boolean().optional(),
 });
 export type GateView = z.infer<typeof GateView>;
 

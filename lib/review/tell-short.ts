@@ -3,11 +3,12 @@ import type { JobContext, WorkspaceContext } from '@/lib/auth/context';
 import type { GateRow } from './gate-data';
 import type { RevisionRow, TemplateRow } from './revision-data';
 import { mailAbout } from './revision-mails';
-import { missingAt, signedAt, type GateAt } from './who-signs';
+import { missingAt, quorumReached, signedAt, type GateAt } from './who-signs';
 
 /**
- * Tells the leads that a gate cannot pass as things stand. Once for a gate; the outbox forgets a sent mail after a
- * week, and then it is said again while it stays so.
+ * Tells the leads that a gate cannot pass as things stand: too few are left, or all of them signed something else than
+ * stands there now. Once for a gate; the outbox forgets a sent mail after a week, and then it is said again while it
+ * stays so.
  */
 export async function tellShort(
   tx: TenantTx,
@@ -26,5 +27,6 @@ export async function tellShort(
     needed: rule.quorum === 'all' ? 1 : rule.quorum,
     have: signedAt(at),
     left: missingAt(at).length,
+    held: quorumReached(at),
   }));
 }

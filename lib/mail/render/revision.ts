@@ -51,12 +51,15 @@ export function gateDue(request: Of<'gate-due'>, url: string): MailContent {
 export function gateShort(request: Of<'gate-short'>, url: string): MailContent {
   const { gateName, needed, have, left } = request;
   const who = left === 0 ? 'nobody is left' : left === 1 ? 'one person is left' : `${left} people are left`;
+  const why = request.held
+    ? 'Somebody whose name was missing has left, and all who are left have signed, but something was changed since (a note, an answer, a waiver, the title): nobody has signed what stands there now'
+    : `The gate asks for ${needed === 1 ? 'one signature' : `${needed} signatures`} and has ${have === 0 ? 'none' : have}, but ${who} who may sign`;
   return {
     subject: subject(request, `cannot pass ${gateName} as things stand`),
     heading: `${revisionName(request)} cannot pass the gate ${gateName} as things stand`,
-    preview: oneLine(`It asks for ${needed}, has ${have}, and ${who} who may sign.`),
+    preview: oneLine(`${why}.`),
     paragraphs: [
-      `The gate asks for ${needed === 1 ? 'one signature' : `${needed} signatures`} and has ${have === 0 ? 'none' : have}, but ${who} who may sign.`,
+      `${why}.`,
       'Invite somebody in a role that the gate asks, or change the gate plan and post the next revision under it: a revision in review keeps the plan that it started with.',
     ],
     facts: [...facts(request), { label: 'Gate', value: gateName }],

@@ -80,6 +80,45 @@ describe('a quorum', () => {
     await sound();
   });
 
+  it('of everybody locks nothing that nobody signed, whoever leaves', async () => {
+    const second = await another();
+    await setPlan(lead, [formingGate, peopleGate({ quorum: 'all' })]);
+    const { revisionId } = await postChecked(house);
+    await sign(approver, revisionId);
+    const thread = await raise(second, revisionId, 'The rim is too thin.', { mustSettle: true });
+    await removeMember(second, second.person.id);
+    expect(await viewRevision(lead, revisionId)).toMatchObject({ state: 'in_review', lockedAt: null });
+    await settleThread(approver, thread.id, { settled: true, version: thread.version });
+    // Settled, but the only signature stands on the docket of before.
+    await sweepGates();
+    expect(await viewRevision(lead, revisionId)).toMatchObject({ state: 'in_review', lockedAt: null });
+    expect(await gate(lead, revisionId)).toMatchObject({ held: true, short: false, awaited: [] });
+    const told = await mailsOf(database, house.workspace.id, 'gate-short');
+    expect(told).toEqual([
+      { person: lead.person.id, payload: expect.objectContaining({ held: true, have: 1, left: 0 }) },
+    ]);
+    expect((await sign(await another(), revisionId)).locked).toBe(true);
+    await sound();
+  });
+
+  it('of everybody at a gate before the last waits for open items, then passes by itself', async () => {
+    const second = await another();
+    await setPlan(lead, [
+      formingGate,
+      peopleGate({ key: 'first', name: 'First', quorum: 'all' }),
+      peopleGate(),
+    ]);
+    const { revisionId } = await postChecked(house);
+    await sign(approver, revisionId);
+    const thread = await raise(second, revisionId, 'The rim is too thin.', { mustSettle: true });
+    await removeMember(second, second.person.id);
+    expect((await gateOf(lead, revisionId, 'first')).state).toBe('open');
+    await settleThread(approver, thread.id, { settled: true, version: thread.version });
+    expect((await gateOf(lead, revisionId, 'first')).state).toBe('passed');
+    expect((await sign(approver, revisionId)).locked).toBe(true);
+    await sound();
+  });
+
   it('tells the leads when the last who may sign leaves, once, and passes when somebody joins and signs', async () => {
     await setPlan(lead, [formingGate, peopleGate()]);
     const { revisionId } = await postChecked(house);

@@ -103,6 +103,8 @@ describe('the gate line of a revision', () => {
   it('says that a gate cannot pass, and what a gate for the docket waits for', () => {
     const short = gate({ id: ids.client, name: 'Client', state: 'open', short: true });
     expect(words(revision({ gates: [short] }))).toContain('too few are left who may sign');
+    const held = gate({ id: ids.client, name: 'Client', state: 'open', held: true });
+    expect(words(revision({ gates: [held] }))).toContain('added since the last signature');
     const docket = (change: Partial<RevisionView['gates'][number]>) =>
       revision({
         gates: [

@@ -50,7 +50,9 @@ function stepOf(gate: Gate, revision: RevisionView, findings: FindingCounts, mus
       ? 'too few are left who may sign: ask a lead to invite somebody'
       : mustSettle > 0
         ? `${count(mustSettle, 'item', 'items')} to settle first`
-        : undefined,
+        : gate.held
+          ? 'something was added since the last signature, and all who are left have signed: ask a lead to invite somebody, or post the next revision'
+          : undefined,
     awaited: {
       names: gate.awaited,
       since: gate.openedAt ?? undefined,
