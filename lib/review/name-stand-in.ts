@@ -6,8 +6,9 @@ import { parseInput } from '@/lib/http/read-input';
 import { queueLive, queueLiveToPeople } from '@/lib/jobs/queue-live';
 import { queueMail } from '@/lib/jobs/queue-mail';
 import { lockWorkspace } from '@/lib/workspaces/workspaces-data';
+import { recordEnd } from './end-stand-in';
 import { workspacePeople, type WorkspacePerson } from './people-data';
-import { comingStandIns, dayOfWorkspace, insertStandIn, type StandInRow } from './stand-in-data';
+import { comingStandIns, dayOfWorkspace, insertStandIn, lockStandIn, type StandInRow } from './stand-in-data';
 import { NameStandInInput, type StandInView } from './stand-in-schemas';
 import { standInView } from './list-stand-ins';
 
@@ -28,7 +29,9 @@ export async function nameStandIn(ctx: WorkspaceContext, input: unknown): Promis
       ]);
     const people = await workspacePeople(tx, workspaceId);
     const standIn = sameRole(ctx, people, wanted.standInId);
-    const standing = await comingStandIns(tx, workspaceId);
+    const coming = await comingStandIns(tx, workspaceId);
+    const isVoid = (row: StandInRow) => standInView(ctx, row, people, today) === null;
+    const standing = coming.filter((row) => !isVoid(row));
     const twice = standing.find(
       (row) =>
         row.personId === ctx.person.id &&
@@ -38,6 +41,8 @@ export async function nameStandIn(ctx: WorkspaceContext, input: unknown): Promis
     );
     if (twice) return standInView(ctx, twice, people, today)!;
     refuseOverlap(ctx, wanted, standing, people);
+    // Nobody is shown a row that is void, and none may come back beside this one when its people do.
+    for (const row of coming.filter(isVoid)) await endVoid(tx, ctx, row, people);
     const made = await insertStandIn(tx, { workspaceId, personId: ctx.person.id, ...wanted });
     await appendEntry(tx, ctx, {
       action: 'stand-in.named',
@@ -58,6 +63,16 @@ export async function nameStandIn(ctx: WorkspaceContext, input: unknown): Promis
   });
 }
 
+async function endVoid(
+  tx: TenantTx,
+  ctx: WorkspaceContext,
+  { id }: StandInRow,
+  people: WorkspacePerson[],
+): Promise<void> {
+  const row = await lockStandIn(tx, ctx.workspace.id, id);
+  if (row && !row.endedAt) await recordEnd(tx, ctx, row, people);
+}
+
 function sameRole(ctx: WorkspaceContext, people: WorkspacePerson[], id: string): WorkspacePerson {
   const role = people.find((person) => person.id === ctx.person.id)?.role;
   const standIn = people.find((person) => person.id === id && id !== ctx.person.id && person.role === role);
@@ -73,7 +88,7 @@ function refuseOverlap(
   standing: StandInRow[],
   people: WorkspacePerson[],
 ): void {
-  const nameOf = (id: string) => people.find((person) => person.id === id)?.name ?? 'somebody who has left';
+  const nameOf = (id: string) => people.find((person) => person.id === id)?.name ?? '';
   for (const row of standing) {
     if (row.untilOn < wanted.fromOn || row.fromOn > wanted.untilOn) continue;
     const days = `from ${row.fromOn} to ${row.untilOn}`;

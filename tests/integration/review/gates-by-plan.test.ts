@@ -354,6 +354,27 @@ describe('a stand-in', () => {
     await sound();
   });
 
+  it('who has left keeps nobody from naming another for the same days, and does not come back beside them', async () => {
+    const second = await another();
+    const third = await another();
+    await nameStandIn(approver, { standInId: second.person.id, ...away });
+    await removeMember(lead, second.person.id);
+    expect((await listStandIns(approver)).standIns).toEqual([]);
+    await nameStandIn(approver, { standInId: third.person.id, ...away });
+    const { rows } = await database.query<{ id: string }>(
+      'select stand_in_id as id from stand_ins where workspace_id = $1 and ended_at is null',
+      [house.workspace.id],
+    );
+    expect(rows).toEqual([{ id: third.person.id }]);
+    const ended = (await entries(database, house.workspace.id, 5)).find(
+      ({ action }) => action === 'stand-in.ended',
+    );
+    expect(ended?.detail).toMatchObject({
+      personName: approver.person.name,
+      standInName: 'somebody who has left',
+    });
+  });
+
   it('has the same role, and stands for one person at a time', async () => {
     const second = await another();
     const third = await another();

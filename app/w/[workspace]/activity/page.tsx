@@ -29,7 +29,15 @@ export default async function ActivityPage({ params, searchParams }: Props) {
   const files = `/api/v1/workspaces/${ctx.workspace.slug}/activity/export`;
   return (
     <WorkspaceFrame ctx={ctx} page="activity">
-      <RefreshOnLive events={['revision.changed', 'docket.changed', 'template.changed', 'people.changed']} />
+      <RefreshOnLive
+        events={[
+          'revision.changed',
+          'docket.changed',
+          'template.changed',
+          'people.changed',
+          'gate-plan.changed',
+        ]}
+      />
       <PageHeader
         title="Activity"
         kicker={ctx.workspace.name}
