@@ -74,6 +74,7 @@ export default async function ActivityPage({ params, searchParams }: Props) {
                 {entry.actorId ? (
                   <NextLink
                     href={activityAddress(home, { about: state.about, by: entry.actorId })}
+                    prefetch={false}
                     aria-label={`Only what ${entry.actorName} did`}
                     className="font-semibold text-ink no-underline hover:underline"
                   >

@@ -22,6 +22,7 @@ export function ActivityFilters({ home, state, byName }: Props) {
             <NextLink
               key={label}
               href={activityAddress(home, { ...state, about })}
+              prefetch={false}
               aria-current={current ? 'true' : undefined}
               className={
                 current
