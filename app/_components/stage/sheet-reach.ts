@@ -1,7 +1,12 @@
 import { makeSheetSampler } from '@/lib/formability/sheet/thickness-at';
-import type { SheetModelData } from './decode-sheet-model';
 
-export type SampledSheet = Pick<SheetModelData, 'positions' | 'nodes' | 'index' | 'thicknessMm'>;
+/** Of the decoded sheet, what tells its thickness by place. */
+export interface SampledSheet {
+  positions: Float32Array;
+  nodes: [number, number];
+  index: Uint32Array;
+  thicknessMm: Float32Array;
+}
 
 /** The sheet cuts corners of the template by about one of its elements; what lies farther off is bridged. */
 const REACH_ELEMENTS = 1.25;

@@ -86,7 +86,8 @@ export async function postFile(
   const draft = await openDraft(designer, templateId);
   const { version } = await saveDraft(designer, templateId, {
     uploadId,
-    recipe: draft.recipe,
+    // A coarse sheet: these tests are about the run, not its figures.
+    recipe: { ...draft.recipe, grid: { sheetNodes: 32 } },
     note: 'Ready to agree.',
     version: draft.version,
   });
