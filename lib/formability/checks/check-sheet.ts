@@ -1,9 +1,9 @@
 import type { EffectiveRecipe } from '../recipe';
 import type { Basis, Check, CheckStatus, Place, SheetZone } from '../report';
 import type { FormedSheet } from '../sheet/form-sheet';
-import type { ThinRemedy } from '../sheet/gauge-for';
+import { isUsualGauge, type ThinRemedy } from '../sheet/gauge-for';
 import type { FootRemedy, SheetJudgement } from '../sheet/judge-sheet';
-import { say } from './basis';
+import { say, sayPlace } from './basis';
 import type { CheckInput } from './check-input';
 
 const BASIS: Basis = {
@@ -14,6 +14,9 @@ const BASIS: Basis = {
 
 /** Share of the sheet that does not close onto the template from which that is said, and looked at. */
 const OPEN_PERCENT = 0.5;
+
+/** The most nodes that a recipe may ask for. */
+const FINEST_NODES = 512;
 
 const PLACES: Record<SheetZone['place'], string> = {
   flat: 'on a flat',
@@ -46,16 +49,24 @@ export function checkSheet({ recipe, sheet, report }: Input): Check | null {
     return { id: 'sheet', status: 'not-run', measured: null, limit, unit: 'mm', basis: BASIS, message, remedy, places: [] }; // prettier-ignore
   }
   const part = zoneOf(formed);
+  const status = statusOf(formed, part, limit, sheet.neededMm);
   const bridged = (report?.undercut.maxDepthMm ?? 0) > recipe.limits.undercutDepthMm;
   return {
     id: 'sheet',
-    status: statusOf(formed, part, limit, sheet.neededMm),
+    status,
     measured: part.minMm,
     limit,
     unit: 'mm',
     basis: BASIS,
     message: messageOf(formed, part, recipe, bridged),
-    remedy: [remedyOf(sheet, part), footWords(formed, sheet.footRemedy)].filter(Boolean).join(' '),
+    remedy: [
+      remedyOf(sheet, part),
+      openWords(formed, sheet.remedy),
+      footWords(formed, sheet.footRemedy, recipe.sheet.gaugeMm),
+      status === 'pass' ? '' : surerWords(formed, part, recipe.grid.sheetNodes),
+    ]
+      .filter(Boolean)
+      .join(' '),
     places: placesOf(formed, part, limit),
   };
 }
@@ -131,15 +142,35 @@ function remedyOf({ remedy, neededMm }: SheetJudgement, { marginPercent }: Sheet
   return local === '' ? `${gauge}.` : `${gauge}; little of the part is thin, so ${local} serves better.`;
 }
 
+/** No gauge closes a web: room does. Said already where that serves better than gauge. */
+function openWords({ report, formedAreaMm2, webAt }: FormedSheet, remedy: SheetJudgement['remedy']): string {
+  if (openPercent(report, formedAreaMm2) < OPEN_PERCENT || remedy?.better === 'gap') return '';
+  const where = webAt ? ` at ${sayPlace(webAt)}` : '';
+  return `So that the sheet closes${where}, give it a wider gap, less height or more draft beside it, or a larger radius.`;
+}
+
+/** What makes a figure surer that is the run's as much as the sheet's. */
+function surerWords({ outcome }: FormedSheet, part: SheetZone, nodes: number): string {
+  if (outcome === 'converged' && !isMeshLimited(part)) return '';
+  const finer =
+    nodes < FINEST_NODES ? ` in a run with grid.sheetNodes of ${Math.min(FINEST_NODES, 2 * nodes)}` : '';
+  return `Round that place and form it again${finer}, or measure it on a test pull.`;
+}
+
 /** What the foot needs, which is nothing where it is cut off. */
-function footWords({ report }: FormedSheet, remedy: FootRemedy | null): string {
+function footWords({ report }: FormedSheet, remedy: FootRemedy | null, presentMm: number): string {
   if (!remedy) return '';
   const { radiusMm, triedMm, minMm, runs } = remedy.radius;
   const round =
     radiusMm === null
       ? `an inside radius there does not do it (${say(triedMm)} mm ${runs > 0 ? 'leave' : 'would leave about'} ${say(minMm, 2)} mm)`
       : `round the foot with ${say(radiusMm)} mm inside (a run with it leaves ${say(minMm, 2)} mm there)`;
-  return `Trim ${say(report.footHeightMm)} mm or more above the bed and the thin foot is waste; where the flange stays on the part, ${round}, or take a gauge of ${say(remedy.gaugeMm, 2)} mm.`;
+  const gauge = isUsualGauge(remedy.gaugeMm, presentMm)
+    ? `, or take a gauge of ${say(remedy.gaugeMm, 2)} mm`
+    : radiusMm === null
+      ? ', nor does a usual gauge'
+      : '';
+  return `Trim ${say(report.footHeightMm)} mm or more above the bed and the thin foot is waste; where the flange stays on the part, ${round}${gauge}.`;
 }
 
 function placesOf({ report, webAt }: FormedSheet, part: SheetZone, limit: number): Place[] {

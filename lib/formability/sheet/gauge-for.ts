@@ -8,7 +8,7 @@ export type ThinRemedy = 'gauge' | 'radius' | 'gap' | 'height';
 export interface GaugeRemedy {
   /** Least gauge, rounded up to the step, whose own run reached the thickness; null where none did. */
   gaugeMm: number | null;
-  /** Gauge that scaling asks for, mm: beyond four times the present one it is not run, for no gauge mends that. */
+  /** Gauge that scaling asks for, mm: beyond four times the present one, or 20 mm, it is not run, for no gauge mends that. */
   scaledMm: number;
   /** Least thickness of the part in the last run, mm. */
   minMm: number;
@@ -19,6 +19,8 @@ export interface GaugeRemedy {
 
 const MOST_RUNS = 4;
 const MOST_FACTOR = 4;
+/** The thickest sheet that a recipe takes, mm. */
+const MOST_GAUGE_MM = 20;
 /** Share of the formed area below the limit up to which the template is better changed than the whole sheet. */
 const LOCAL_SHARE = 0.05;
 
@@ -48,12 +50,17 @@ export function gaugeFor(
   let runs = 0;
   while (minMm < wantedMinMm && runs < MOST_RUNS) {
     const scaled = stepMm * Math.ceil((gaugeMm * wantedMinMm) / minMm / stepMm - 1e-9);
-    if (scaled > MOST_FACTOR * input.gaugeMm) return { gaugeMm: null, scaledMm: scaled, minMm, runs, better };
+    if (!isUsualGauge(scaled, input.gaugeMm)) return { gaugeMm: null, scaledMm: scaled, minMm, runs, better };
     gaugeMm = scaled;
     minMm = least(formSheet({ ...input, gaugeMm }, { ...options, single: true }).report);
     runs++;
   }
   return { gaugeMm: minMm >= wantedMinMm ? gaugeMm : null, scaledMm: gaugeMm, minMm, runs, better };
+}
+
+/** Whether a gauge may be advised in the place of another: up to four times it, and no more than a recipe takes. */
+export function isUsualGauge(gaugeMm: number, presentMm: number): boolean {
+  return gaugeMm <= Math.min(MOST_FACTOR * presentMm, MOST_GAUGE_MM);
 }
 
 /**

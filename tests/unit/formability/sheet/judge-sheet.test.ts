@@ -97,6 +97,26 @@ describe('the sheet over a surveyed part', () => {
       status: 'caution',
       message: expect.stringContaining('does not close onto the template'),
     });
+    // Whatever asks for a look says what would help.
+    const webAt = {
+      ...shaken({ unclosedAreaMm2: 900 }).formed!,
+      webAt: [1, 2, 3] as [number, number, number],
+    };
+    expect(say({ ...judged, formed: webAt }).remedy).toBe(
+      'So that the sheet closes at x 1, y 2, z 3, give it a wider gap, less height or more draft beside it, or a larger radius.',
+    );
+    for (const unsure of [
+      shaken({}, 'not-settled'),
+      shaken({}, 'volume-lost'),
+      shaken({ part: { ...part, meshErrorPercent: 60 } }),
+    ])
+      // prettier-ignore
+      expect(say(unsure).remedy).toContain('in a run with grid.sheetNodes of 64, or measure it');
+    // A foot for which no usual gauge does is told so, not sent for 9 mm of sheet.
+    const radius = { radiusMm: null, triedMm: 8, minMm: 0.05, runs: 0 };
+    const foot = (gaugeMm: number) => say({ ...judged, footRemedy: { gaugeMm, radius } }).remedy;
+    expect(foot(8)).toContain('or take a gauge of 8 mm.');
+    expect(foot(8.05)).toContain('does not do it (8 mm would leave about 0.05 mm), nor does a usual gauge.');
     // One mesh alone below the limit is no failure; both of them are.
     const thinPart = { ...part, minMm: 0.25, q05Mm: 0.4 };
     expect(say(shaken({ part: { ...thinPart, meshErrorPercent: 50 } })).status).toBe('caution');
