@@ -95,9 +95,10 @@ export function estimateSkin(
   const spanned = carried ? overInfill(plate, print.infillPattern, spanMm) : endless;
   const yielding = carried && spanMm > 0 ? overYieldingInfill(plate, print.infillPattern, spanMm) : spanned;
   const strengthMPa = strengthAt(filament, 'strengthXyMPa', atC);
-  // Sag goes with span⁴ / thickness³, stress with span² / thickness².
+  // Sag goes with span⁴ / thickness³, stress with span² / thickness²; from 1 mm, for an empty print has no span of its own.
   const bent = spanned.stressMPa / strengthMPa;
-  const spanThatHolds = spanMm * Math.min((limitMm / spanned.sagMm) ** 0.25, bent ** -0.5);
+  const one = overInfill(plate, print.infillPattern, 1);
+  const spanThatHolds = Math.min((limitMm / one.sagMm) ** 0.25, (strengthMPa / one.stressMPa) ** 0.5);
   return {
     spanMm: finite(spanMm),
     modulusMPa,
@@ -110,7 +111,7 @@ export function estimateSkin(
     strengthMPa,
     topThatHoldsMm: finite(print.topMm * Math.max((spanned.sagMm / limitMm) ** (1 / 3), bent ** 0.5)),
     infillThatHoldsPercent:
-      density > 0 && spanThatHolds > 0
+      spanMm > 0 && spanThatHolds < Infinity
         ? 100 * densityForSpan(print.infillPattern, print.lineMm, spanThatHolds)
         : null,
   };

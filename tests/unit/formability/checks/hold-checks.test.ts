@@ -100,8 +100,29 @@ describe('skin', () => {
   it('without infill nothing carries the top, and the report stays JSON', () => {
     const report = of({ print: { infillPercent: 0 } });
     expect(report.skin).toMatchObject({ spanMm: null, sagMm: null });
-    expect(checkOf(report, 'skin').status).toBe('fail');
+    const { status, remedy } = checkOf(report, 'skin');
+    expect(status).toBe('fail');
+    const infillPercent = Number(/infill of (\d+) %/i.exec(remedy)?.[1]);
+    expect(infillPercent).toBeGreaterThan(0);
+    expect(checkOf(of({ print: { infillPercent } }), 'skin').status).toBe('pass');
     expect(JSON.parse(JSON.stringify(report)).skin).toEqual(report.skin);
+  });
+});
+
+describe('the top of a hollow template', () => {
+  it('has no infill below: it is asked for a look as a plate over the whole plan, and what it asks for holds', () => {
+    const of2 = (topMm: number) => checkOf(of({}, openFrustum(60, 50, 20, 8, 2, topMm)), 'skin');
+    const thin = of2(2);
+    expect(thin.status).toBe('caution');
+    expect(thin.message).toContain('no infill carries its 2 mm top');
+    const wanted = Number(/top ([\d.]+) mm thick/.exec(thin.remedy)?.[1]);
+    expect(wanted).toBeGreaterThan(2);
+    expect(of2(wanted + 0.05).status).toBe('pass');
+    expect(of2(wanted - 0.2).status).toBe('caution');
+  });
+
+  it('of a solid print has no free span', () => {
+    expect(checkOf(of({ print: { infillPercent: 100 } }), 'skin').message).toContain('has no free span');
   });
 });
 
