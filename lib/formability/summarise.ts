@@ -50,7 +50,7 @@ function figures(report: Report): string[] {
     ...sheetFigures(report),
     ['layers', `cusp up to ${fixed(layers.cuspMaxMm, 3)} mm, median ${fixed(layers.cuspMedianMm, 3)} mm`],
     ...physicsFigures(report),
-    ['print', `${fixed(print.timeS / 3600, 1)} h, ${fixed(print.massG, 0)} g, ${print.layers} layers`],
+    ['print', `${print.timeS < 3600 ? `${Math.ceil(print.timeS / 60)} min` : `${fixed(print.timeS / 3600, 1)} h`}, ${fixed(print.massG, print.massG < 1 ? 2 : 0)} g, ${print.layers} layers`], // prettier-ignore
   ];
   return rows.map(([key, value]) => `  ${key.padEnd(12)} ${value}`);
 }
@@ -106,7 +106,8 @@ function lifeLines({ life }: Report): string[] {
       demand === null
         ? 'not known'
         : `${figure(demand)} of ${figure(holds)}${unit === '°' ? '' : ' '}${unit}`;
-    return `  ${way.padEnd(12)} ${text}: ${left}${ratio === null ? '' : `, ${figure(ratio)} times over`}`;
+    const over = ratio === null ? '' : ratio < 1 ? ', falls short' : `, ${figure(ratio)} times over`;
+    return `  ${way.padEnd(12)} ${text}: ${left}${over}`;
   });
   return ['Life of the template:', ...rows, ...wrap(life.text, WIDTH - 2).map((line) => `  ${line}`), ''];
 }

@@ -68,7 +68,7 @@ export function surveyPhysics(
 export function writePhysics(
   part: Part,
   recipe: EffectiveRecipe,
-  geometric: Pick<Report, 'walls' | 'plan' | 'layers' | 'draft' | 'airTraps' | 'spacing'>,
+  geometric: Pick<Report, 'walls' | 'plan' | 'layers' | 'draft' | 'undercut' | 'airTraps' | 'spacing'>,
   sheet: SheetJudgement | null,
   known: KnownPhysics,
   knownAir?: Report['air'],
@@ -105,12 +105,7 @@ export function writePhysics(
       gaugeMm,
       thicknessAt,
     ),
-    life: estimateLife(
-      recipe,
-      { heat, skin, wallsUnderPressure, draft: geometric.draft, plan: geometric.plan },
-      size[2],
-      known.log,
-    ),
+    life: estimateLife(recipe, { ...geometric, heat, skin, wallsUnderPressure }, size[2], known.log),
   };
 
   /** Over a vent as the sheet was formed; without that, its mean. */

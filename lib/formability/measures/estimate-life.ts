@@ -5,7 +5,7 @@ import { FILAMENTS } from '../materials/filaments';
 import { SHEETS } from '../materials/sheets';
 import { releaseForceN, selfReleaseDeg } from '../physics/shrink-grip';
 import type { EffectiveRecipe } from '../recipe';
-import type { DraftReport, PlanReport } from '../report';
+import type { DraftReport, PlanReport, UndercutReport } from '../report';
 import type {
   HeatReport,
   LifeMargin,
@@ -29,6 +29,7 @@ export interface LifeInput {
   skin: SkinReport;
   wallsUnderPressure: WallsUnderPressureReport;
   draft: Pick<DraftReport, 'wallMinMacroDeg' | 'wantedDeg'>;
+  undercut: Pick<UndercutReport, 'maxDepthMm'>;
   plan: Pick<PlanReport, 'arealDrawRatio'>;
 }
 
@@ -63,7 +64,8 @@ export function estimateLife(
   const judged = log && judgePullLog(log, run.pulls);
   const soft = heat.transient.surfaceC.findIndex((surface) => surface > heat.limitC);
   const beforeSoft = Math.min(heat.pullsBeforeRest, soft < 0 ? Infinity : soft);
-  const pulls = judged ? fromLog(judged) : expectedPulls(margins, beforeSoft, run.pulls);
+  const locked = report.undercut.maxDepthMm > recipe.limits.undercutDepthMm;
+  const pulls = judged ? fromLog(judged) : locked ? 0 : expectedPulls(margins, beforeSoft, run.pulls);
   return {
     limitedBy: worst?.way ?? null,
     margins,
@@ -83,7 +85,7 @@ export function estimateLife(
     selfReleaseDeg: selfReleaseDeg(friction),
     pulls,
     basis: judged ? 'pull-log' : 'estimate',
-    text: `${limiting(worst, FILAMENTS[print.material].name)} ${judged ? logText(judged, run.pulls) : startText(pulls, run.pulls)}`,
+    text: `${limiting(worst, FILAMENTS[print.material].name)} ${judged ? logText(judged, run.pulls) : locked ? LOCKED : startText(pulls, run.pulls)}`,
     log: judged,
   };
 }
@@ -181,9 +183,12 @@ function limiting(worst: LifeMargin | null, name: string): string {
   const figures =
     demand === null || ratio === null
       ? ''
-      : ` (${short(demand)} ${unit} asked of ${short(holds)} ${unit}, ${short(ratio)} times over)`;
+      : ` (${unit === 'mm' && demand > 5 ? 'more than 5' : short(demand)} ${unit} asked of ${short(holds)} ${unit}${ratio < 1 ? '' : `, ${short(ratio)} times over`})`;
   return `In ${name} it is limited by ${WAYS[worst.way]}${worst.way === 'grip' ? '' : figures}.`;
 }
+
+const LOCKED =
+  'An undercut locks the first part on it: until that is mended it comes through no pull that can be counted on.';
 
 function startText(pulls: number | null, planned: number): string {
   if (pulls === 0) return 'As planned it does not come through the first pull.';

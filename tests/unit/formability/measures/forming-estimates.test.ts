@@ -94,6 +94,7 @@ describe('life', () => {
         skin: { sagMm: 0.01, limitMm: 0.05 },
         wallsUnderPressure: { sagMm: 0.01, stressMPa: 1, strengthMPa: 10, collapseBar: null, infill: null },
         draft: { wallMinMacroDeg: 5, wantedDeg: 5 },
+        undercut: { maxDepthMm: 0 },
         plan: { arealDrawRatio: 2 },
         ...changes,
       } as unknown as LifeInput,
@@ -119,6 +120,18 @@ describe('life', () => {
   it('a top that sinks to twice what shows is spoilt by the first pull', () => {
     const pulls = (sagMm: number) => life('none', { skin: { sagMm, limitMm: 0.05 } }).pulls;
     expect([pulls(0.0995), pulls(0.1005)]).toEqual([50, 0]);
+  });
+
+  it('an undercut deeper than texture locks the first part: no pull is promised', () => {
+    const locked = (maxDepthMm: number) => life('none', { undercut: { maxDepthMm } });
+    expect([locked(0.199).pulls, locked(0.201).pulls]).toEqual([50, 0]);
+    expect(locked(3).text).toContain('An undercut locks the first part on it');
+    expect(locked(3).text).not.toContain('should come through');
+  });
+
+  it('what asks for more than there is is not said to be so many times over', () => {
+    const { text } = life('none', { skin: { sagMm: 26_000, limitMm: 0.05 } });
+    expect(text).toContain('(more than 5 mm asked of 0.05 mm)');
   });
 
   it('22 templates without a failure would prove 90 % with 90 % confidence (row L10)', () => {
