@@ -45,8 +45,9 @@ export function checkDraft({ recipe, report, walls, wantedDraftDeg }: CheckInput
   const wider = height * (Math.tan(wantedDraftDeg * PER_DEG) - Math.tan(measured * PER_DEG));
   const sandingHelps = !print.sanded && measured >= limits.draftMinDeg - ROUNDING_DEG;
   const { regions } = report.draft;
-  const area = regions.reduce((sum, region) => sum + region.areaMm2, 0);
-  const where = regions.length > 0 ? ` at ${sayPlace(regions[0].at)}` : '';
+  // Walls too small for a region each are told by their sum.
+  const area = regions.reduce((sum, region) => sum + region.areaMm2, 0) || walls.areaBelowMm2;
+  const where = regions.length > 0 ? `, the largest at ${sayPlace(regions[0].at)}` : '';
   return {
     ...base,
     status,
@@ -57,7 +58,7 @@ export function checkDraft({ recipe, report, walls, wantedDraftDeg }: CheckInput
         : `Walls of ${say(area, 0)} mm² lean back by ${lean} at least; ${wanted}, or the part grips the template as it shrinks.`,
     remedy:
       [
-        `Add ${say(missing)}° to these walls, the largest${where}: over their ${say(height)} mm of height that is ${say(wider)} mm more at the foot of each`,
+        `Add ${say(missing)}° to these walls${where}: over their ${say(height)} mm of height that is ${say(wider, wider < 0.1 ? 2 : 1)} mm more at the foot of each`,
         sandingHelps ? `or sand them, which makes ${say(limits.draftMinDeg)}° enough` : '',
       ]
         .filter(Boolean)

@@ -17,8 +17,18 @@ export function checkPrint({ report, recipe }: CheckInput): Check {
       source: `bead flow line × layer × ${speedMmS} mm/s at ${efficiency * 100} % efficiency and ${perLayerS} s a layer, assumed (common practice, no source); rates from the recipe`,
       kind: 'computed',
     },
-    message: `Printing takes about ${say(print.timeS / 3600)} h, up to ${say(print.timeMostS / 3600)} h with round beads, in ${print.layers} layers, ${say(print.massG, 0)} g or ${say(print.filamentM)} m of filament, with ${say(recipe.print.infillPercent, 0)} % infill. It costs about ${say(print.cost, 2)} in the studio's currency, at ${say(recipe.costs.materialPerKg, 2)} per kg, ${say(recipe.costs.machinePerHour, 2)} per hour and ${say(recipe.costs.labour, 2)} for handling: an estimate.`,
+    message: `Printing takes about ${time(print.timeS)}, up to ${time(print.timeMostS)} with round beads, in ${print.layers} layers, ${small(print.massG, 0)} g or ${small(print.filamentM)} m of filament, with ${say(recipe.print.infillPercent, 0)} % infill. It costs about ${say(print.cost, 2)} in the studio's currency, at ${say(recipe.costs.materialPerKg, 2)} per kg, ${say(recipe.costs.machinePerHour, 2)} per hour and ${say(recipe.costs.labour, 2)} for handling: an estimate.`,
     remedy: '',
     places: [],
   };
+}
+
+/** Below an hour in minutes. */
+function time(seconds: number): string {
+  return seconds < 3600 ? `${Math.max(1, Math.ceil(seconds / 60))} min` : `${say(seconds / 3600)} h`;
+}
+
+/** With more digits below 1. */
+function small(value: number, digits = 1): string {
+  return say(value, value < 1 ? 2 : digits);
 }

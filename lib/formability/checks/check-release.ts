@@ -1,3 +1,4 @@
+import { VERTICAL_DEG } from '../measures/thresholds';
 import type { Check } from '../report';
 import { basisOf, say } from './basis';
 import type { CheckInput } from './check-input';
@@ -8,7 +9,7 @@ export function checkRelease({ recipe, report, walls }: CheckInput): Check {
   const macro = report.draft.wallMinMacroDeg;
   const least = walls.stepped && macro !== null ? macro : walls.facetDeg;
   const reasons = [
-    least !== null && least < limit && (walls.areaBelowMm2 > 0 || least < limit) ? `walls of ${say(Math.max(least, 0))}°` : '', // prettier-ignore
+    least !== null && least < limit && (walls.areaBelowMm2 > 0 || least < limit) ? (least < -VERTICAL_DEG ? 'walls that lean out' : `walls of ${say(Math.max(least, 0))}°`) : '', // prettier-ignore
     report.plan.depthRatio > 0.5 ? `a depth of ${say(report.plan.depthRatio, 2)} of the frame's width` : '',
     !recipe.print.sanded ? 'unsanded layers' : '',
     report.undercut.maxDepthMm > 0.01 ? 'overhangs' : '',

@@ -56,7 +56,7 @@ function ribs({ infill }: WallsUnderPressureReport): string {
   if (!infill) return '';
   const load = `The infill's own walls bear ${say(infill.stressMPa)} MPa`;
   return infill.stressMPa > infill.bucklesMPa
-    ? ` ${load} and buckle at about ${say(infill.bucklesMPa, 2)} MPa.`
+    ? ` ${load} and buckle at ${infill.bucklesMPa < 0.01 ? 'less than 0.01' : `about ${say(infill.bucklesMPa, 2)}`} MPa.`
     : ` ${load}, and would buckle at about ${say(infill.bucklesMPa, 0)} MPa.`;
 }
 

@@ -391,6 +391,10 @@ describe('mesh and print', () => {
     expect(checkWith(checkPrint, ({ report }) => (report.print.timeS = 360_000)).message).toMatch(
       /about 100 h\b/,
     );
+    const short = checkWith(checkPrint, ({ report }) =>
+      Object.assign(report.print, { timeS: 90, massG: 0.18 }),
+    );
+    expect(short.message).toMatch(/about 2 min, .* 0\.18 g or/);
     expect(check.basis.source).toContain('60 mm/s at 70 % efficiency and 2 s a layer');
   });
 });
