@@ -53,7 +53,11 @@ export function secondFactor({ what, codesLeft }: Of<'second-factor'>, url: stri
     paragraphs: [said],
     facts: what === 'code-spent' ? [{ label: 'Codes left', value: String(codesLeft) }] : [],
     action: { label: 'See your account', url },
-    footer: 'If it was not you, set a new password now: it ends all sessions. Then end what you do not know.',
+    // A new password alone would not help against a factor that somebody else has set up.
+    footer:
+      what === 'on'
+        ? 'If it was not you, somebody has your password and can sign as you: tell a lead of the studio at once, who takes this address out and invites another one of yours.'
+        : 'If it was not you, set a new password now: it ends all sessions. Then end what you do not know.',
   };
 }
 

@@ -264,6 +264,20 @@ it.each(['revision-released', 'revision-recalled'] as const)('%s names the cauti
   expect(text).toMatch(/Compressed air/);
 });
 
+it('a second factor that somebody else set up is nothing that a new password mends', () => {
+  const text = (what: 'on' | 'off') =>
+    renderMail({ ...all['second-factor'], what }, origin).text.replace(/\s+/g, ' ');
+  expect(text('on')).toContain('tell a lead of the studio at once');
+  expect(text('off')).toContain('set a new password now');
+});
+
+it('a gate that has its names, but not under what stands there now, says so', () => {
+  const text = (held: boolean) =>
+    renderMail({ ...all['gate-short'], held }, origin).text.replace(/\s+/g, ' ');
+  expect(text(true)).toContain('nobody has signed what stands there now');
+  expect(text(false)).toContain('The gate asks for 2 signatures and has none, but one person is left');
+});
+
 it('a path that leads elsewhere is refused', () => {
   const away = { ...all['gate-waits'], path: '//elsewhere.example/x' };
   expect(() => renderMail(away, origin)).toThrow(/our own host/);
