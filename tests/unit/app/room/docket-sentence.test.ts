@@ -13,6 +13,8 @@ const sentence = (given: Parameters<typeof docket>[0], view = revision()) =>
 describe('docketSentence', () => {
   it('counts what must be settled before the gate that is open', () => {
     expect(sentence({})).toBe('2 to settle before the client gate, 2 to look at, 2 settled');
+    const named = revision({ gates: [{ ...revision().gates.at(-1)!, name: 'QA', state: 'open' }] });
+    expect(sentence({}, named)).toContain('2 to settle before the gate QA, ');
   });
 
   it('says that nothing must be settled only once the check has finished', () => {

@@ -11,6 +11,11 @@ const nothing = { ...revision().can, sign: null, release: false, post: false, do
 describe('primaryStep', () => {
   it('offers an approver to sign, in the words of the gate', () => {
     expect(primaryStep(revision(), addresses)).toMatchObject({ kind: 'sign', label: 'Sign for the client' });
+    // A name that a lead gave stays as it was written.
+    const sign = { ...revision().can.sign!, gateName: 'QA of Ines' };
+    expect(primaryStep(revision({ can: { ...nothing, sign } }), addresses)?.label).toBe(
+      'Sign for QA of Ines',
+    );
   });
 
   it('sends a signer to the open items first while they keep the gate shut', () => {

@@ -1,5 +1,6 @@
 import type { RevisionView } from '@/lib/review/schemas';
 import type { DocketGroup, DocketItem } from './docket-items';
+import { theGate } from './gate-in-words';
 
 /** `2 to settle before the client gate, 3 to look at, 11 settled`. */
 export function docketSentence(
@@ -9,8 +10,7 @@ export function docketSentence(
   const next = gates.find((gate) => gate.state === 'open' || gate.state === 'waiting');
   const parts: string[] = [];
   const settle = groups.settle.length;
-  if (settle > 0)
-    parts.push(`${settle} to settle${next ? ` before the ${next.name.toLowerCase()} gate` : ''}`);
+  if (settle > 0) parts.push(`${settle} to settle${next ? ` before ${theGate(next.name)}` : ''}`);
   else if (check.state === 'finished') parts.push('nothing to settle');
   else parts.push('the findings come with the check');
   if (groups.look.length > 0) parts.push(`${groups.look.length} to look at`);

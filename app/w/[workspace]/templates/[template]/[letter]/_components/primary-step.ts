@@ -1,4 +1,5 @@
 import type { RevisionView } from '@/lib/review/schemas';
+import { gateInWords } from './gate-in-words';
 
 /** The one main step of this reader on this page, if there is one. */
 export type PrimaryStep =
@@ -26,7 +27,7 @@ export function primaryStep(
   if (can.sign) {
     return {
       kind: 'sign',
-      label: `Sign for the ${can.sign.gateName.toLowerCase()}`,
+      label: `Sign for ${gateInWords(can.sign.gateName)}`,
       detail: 'shows exactly what you sign',
     };
   }

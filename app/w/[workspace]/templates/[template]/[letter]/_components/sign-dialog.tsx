@@ -12,6 +12,7 @@ import { TextArea } from '@/app/_components/text-field';
 import { useSignOff } from '../_hooks/use-room-commands';
 import { useSignForm, type SigningGate } from '../_hooks/use-sign-form';
 import { ContentSummary } from './content-summary';
+import { gateInWords, theGate } from './gate-in-words';
 import { useRoom } from './room-context';
 
 export interface SignDialogProps {
@@ -28,7 +29,7 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
   const signOff = useSignOff(workspace.id, revision.id);
   const title =
     decision === 'sign'
-      ? `Sign for the ${gate.gateName.toLowerCase()}`
+      ? `Sign for ${gateInWords(gate.gateName)}`
       : `Return revision ${revision.letter} of ${revision.template.number}`;
   const form = useSignForm({ gate, decision, isOpen, signOff, onDone: () => onOpenChange(false) });
   const { content, problem, errors } = form;
@@ -120,8 +121,8 @@ export function SignDialog({ gate, decision, isOpen, onOpenChange }: SignDialogP
             ) : (
               <>
                 I, <strong className="font-semibold">{reader.name}</strong>, {reader.role}
-                {gate.standsFor ? ` and stand-in for ${gate.standsFor}` : ''}, return this revision at the{' '}
-                {gate.gateName.toLowerCase()} gate.
+                {gate.standsFor ? ` and stand-in for ${gate.standsFor}` : ''}, return this revision at{' '}
+                {theGate(gate.gateName)}.
               </>
             )}
           </p>

@@ -5,6 +5,7 @@ import { ApiError, explainError, newIdempotencyKey } from '@/app/_components/api
 import { notify } from '@/app/_components/notices';
 import { ReturnInput, SignInput, type ContentView, type RevisionView } from '@/lib/review/schemas';
 import { contentChanges } from '../_components/content-changes';
+import { gateInWords } from '../_components/gate-in-words';
 import { useRoom } from '../_components/room-context';
 import type { useSignOff } from './use-room-commands';
 import { useContent } from './use-room-data';
@@ -101,7 +102,7 @@ export function useSignForm(given: {
         onSuccess: () => {
           notify(
             decision === 'sign'
-              ? `Signed for the ${gate.gateName.toLowerCase()}. Your signature is recorded.`
+              ? `Signed for ${gateInWords(gate.gateName)}. Your signature is recorded.`
               : 'Returned. The studio has been told why.',
           );
           onDone();
