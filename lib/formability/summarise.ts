@@ -1,3 +1,4 @@
+import { folds } from './checks/say-web';
 import { FILAMENTS } from './materials/filaments';
 import { SHEETS } from './materials/sheets';
 import type { Advice, Check, CheckStatus, Report } from './report';
@@ -89,7 +90,8 @@ function physicsFigures({
   const highest = ventMarks.reduce((most, one) => Math.max(most, one.heightMm), 0);
   if (ventMarks.length > 0)
     rows.push(['vent marks', `up to ${fixed(highest, 2)} mm high ${mark('ventMarks')}`]);
-  if (web.outside?.webs || web.neighbours?.webs) rows.push(['web', `may fold at the corners ${mark('web')}`]);
+  if (folds(web.outside) || folds(web.neighbours))
+    rows.push(['web', `may fold at the corners ${mark('web')}`]);
   return rows;
 }
 

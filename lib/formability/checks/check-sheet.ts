@@ -63,7 +63,7 @@ export function checkSheet({ recipe, sheet, report }: Input): Check | null {
       remedyOf(sheet, part),
       openWords(formed, sheet.remedy),
       footWords(formed, sheet.footRemedy, recipe.sheet.gaugeMm),
-      status === 'pass' ? '' : surerWords(formed, part, recipe.grid.sheetNodes),
+      status === 'caution' ? surerWords(formed, part, recipe.grid.sheetNodes) : '',
     ]
       .filter(Boolean)
       .join(' '),

@@ -10,6 +10,7 @@ const BASIS: Basis = {
     'clamped plate over one cell of the infill (Timoshenko and Woinowsky-Krieger) at the modulus of the hottest pull (ISO 75 construction, derived) with creep factor 3; sag that shows: common practice, no source',
   kind: 'computed',
 };
+
 type Skin = NonNullable<CheckInput['report']['skin']>;
 
 /** Sag of this many limits is no matter of taste. */
@@ -56,7 +57,7 @@ export function checkSkin(input: CheckInput): Check | null {
  * No infill lies below the top of a hollow template. How far a cavity reaches is not measured, so the whole plan stands for
  * it: the most that the top can sink, for a look and never a failure.
  */
-function overCavity({ recipe, report, sizeMm }: CheckInput, skin: Skin, topMm: number): Check {
+function overCavity({ recipe, sizeMm }: CheckInput, skin: Skin, topMm: number): Check {
   const { machine, sheet } = recipe;
   const [long, wide] = sizeMm;
   const plate = {
@@ -89,7 +90,7 @@ function remedy(skin: Skin, topMm: number, infillPercent: number): string {
     ways.push(`print a top of ${say(roundUp(top, 0.1), 1)} mm`);
   const infill = skin.infillThatHoldsPercent;
   if (infill !== null && infill > infillPercent && infill <= 100)
-    ways.push(`an infill of ${say(roundUp(infill, 1), 0)} %`);
+    ways.push(`${ways.length === 0 ? 'print ' : ''}an infill of ${say(roundUp(infill, 1), 0)} %`);
   if (ways.length === 0) return 'It is too soft there: first mend the heat, then the skin follows.';
   return `${ways.join(', or ').replace(/^./, (first) => first.toUpperCase())}.`;
 }

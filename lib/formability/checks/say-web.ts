@@ -1,6 +1,14 @@
 import type { WebReport, WebRing } from '../report-forming';
 import { say } from './basis';
 
+/** Less length to gather than this share is lost in the sheet's own give (own judgement, no source). */
+const NO_FOLD = 0.005;
+
+/** Whether a ring folds by more than its figures mean. */
+export function folds(ring: WebRing | null): ring is WebRing {
+  return ring !== null && ring.webs && ring.limit - ring.hoopStretch > NO_FOLD;
+}
+
 /**
  * A message with the criterion of hoop against meridian stretch in a sentence: what the sheet must gather on its way to the
  * foot, and what it shortens by itself. As it was where nothing was reckoned, or nothing folds.
@@ -18,7 +26,7 @@ export function withWeb(message: string, web: WebReport | null): string {
 
 /** @param sides of the gap that the sheet comes down on */
 function ring(found: WebRing | null, where: string, sides: number): string {
-  if (!found?.webs) return '';
+  if (!folds(found)) return '';
   const { hoopStretch, limit, gapMm, gapThatHoldsMm } = found;
   const cure =
     gapThatHoldsMm === null

@@ -51,11 +51,12 @@ export function estimateLife(
   const friction = FRICTION[print.releaseAgent];
   const polymer = SHEETS[sheet.material];
   const draftDeg = report.draft.wallMinMacroDeg;
+  const grip = gripMargin(draftDeg, report.draft.wantedDeg);
   const margins = [
     heatMargin(heat.limitC, Math.max(hottestC(heat), heat.transient.peakC), run.ambientC),
     skinMargin(skin),
     wallsMargin(hold, machine.pressureBar),
-    gripMargin(draftDeg, report.draft.wantedDeg),
+    grip,
   ];
   const known = (one: LifeMargin) => one.ratio ?? Infinity;
   const worst = margins
@@ -85,7 +86,7 @@ export function estimateLife(
     selfReleaseDeg: selfReleaseDeg(friction),
     pulls,
     basis: judged ? 'pull-log' : 'estimate',
-    text: `${limiting(worst, FILAMENTS[print.material].name)} ${judged ? logText(judged, run.pulls) : locked ? LOCKED : startText(pulls, run.pulls)}`,
+    text: `${limiting(worst, FILAMENTS[print.material].name)} ${judged ? logText(judged, run.pulls) : locked ? LOCKED : startText(pulls, run.pulls, (grip.ratio ?? 1) > 0.999)}`,
     log: judged,
   };
 }
@@ -190,11 +191,11 @@ function limiting(worst: LifeMargin | null, name: string): string {
 const LOCKED =
   'An undercut locks the first part on it: until that is mended it comes through no pull that can be counted on.';
 
-function startText(pulls: number | null, planned: number): string {
+function startText(pulls: number | null, planned: number, comesOff: boolean): string {
   if (pulls === 0) return 'As planned it does not come through the first pull.';
   if (pulls !== null && pulls < planned)
     return `It should come through ${pulls} of the ${planned} planned pulls before it needs a rest.`;
-  return `It should come through the ${planned} planned pulls; how many more is unknown, for no formula tells wear. Log the pulls: the log then stands in the place of this estimate. ${successRun(PROVEN, PROVEN)} templates that come so far without a failure would show that nine in ten do, with 90 % confidence.`;
+  return `It should come through the ${planned} planned pulls${comesOff ? '' : ', if each part can be drawn off its walls'}; how many more is unknown, for no formula tells wear. Log the pulls: the log then stands in the place of this estimate. ${successRun(PROVEN, PROVEN)} templates that come so far without a failure would show that nine in ten do, with 90 % confidence.`;
 }
 
 function logText({ templates, failures, weibull, meanAtLeastPulls }: PullLogReport, planned: number): string {

@@ -19,6 +19,7 @@ import { checkSpacing } from '@/lib/formability/checks/check-spacing';
 import { checkUndercut } from '@/lib/formability/checks/check-undercut';
 import { checkVents } from '@/lib/formability/checks/check-vents';
 import { checkWalls } from '@/lib/formability/checks/check-walls';
+import { withWeb } from '@/lib/formability/checks/say-web';
 import type { Point } from '@/lib/formability/report';
 import { checkWith } from './check-with';
 
@@ -232,7 +233,7 @@ describe('heat, skin and walls', () => {
           infillThatHoldsPercent,
         }),
       ).remedy;
-    expect(infill(99.9)).toBe('An infill of 100 %.');
+    expect(infill(99.9)).toBe('Print an infill of 100 %.');
     expect(infill(100.5)).toContain('too soft');
   });
 
@@ -397,6 +398,14 @@ describe('mesh and print', () => {
     expect(short.message).toMatch(/about 2 min, .* 0\.18 g or/);
     expect(check.basis.source).toContain('60 mm/s at 70 % efficiency and 2 s a layer');
   });
+});
+
+it('a ring of sheet folds from half a percent of its length that is too much', () => {
+  const ring = { perimeterMm: 1, gapMm: 1, heightMm: 1, ringMm: 1, meridianStretch: 1, gapThatHoldsMm: null };
+  const found = (tooMuch: number) => ({ ...ring, webs: tooMuch > 0, limit: 0.9, hoopStretch: 0.9 - tooMuch });
+  const outside = (tooMuch: number) => withWeb('Apart.', { outside: found(tooMuch), neighbours: null });
+  expect([0.00495, -0.1].map(outside)).toEqual(['Apart.', 'Apart.']);
+  expect(outside(0.00505)).toContain('may fold at the corners');
 });
 
 it('deflections are said from 0.001 to 5 mm', () => {

@@ -134,6 +134,12 @@ describe('life', () => {
     expect(text).toContain('(more than 5 mm asked of 0.05 mm)');
   });
 
+  it('planned pulls hang on the part coming off where the walls have too little draft', () => {
+    const at = (wallMinMacroDeg: number) => life('none', { draft: { wallMinMacroDeg, wantedDeg: 5 } }).text;
+    expect(at(4.99)).toContain('50 planned pulls, if each part can be drawn off its walls;');
+    expect(at(5)).not.toContain('drawn off its walls');
+  });
+
   it('22 templates without a failure would prove 90 % with 90 % confidence (row L10)', () => {
     expect(life('none').text).toContain(' 22 templates that come so far without a failure');
   });
