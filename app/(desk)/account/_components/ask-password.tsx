@@ -22,6 +22,8 @@ interface AskPasswordProps<T> {
   onCancel: () => void;
 }
 
+const codeRefusals = ['CODE_NEEDED', 'CODE_USED', 'WRONG_CODE'];
+
 /** Asks for the password again, and sends it along with what is to be done. */
 export function AskPassword<T>(props: AskPasswordProps<T>) {
   const { email, path, action, withCode, isDanger, onAnswer, onCancel } = props;
@@ -36,6 +38,8 @@ export function AskPassword<T>(props: AskPasswordProps<T>) {
     const answer = await askAuth(() => authClient.$fetch<T>(path, { method: 'POST', body }));
     if (answer.refusal?.code === 'INVALID_PASSWORD' && answer.problem)
       setError('password', { message: answer.problem }, { shouldFocus: true });
+    else if (answer.problem && codeRefusals.includes(answer.refusal?.code ?? ''))
+      setError('code', { message: answer.problem }, { shouldFocus: true });
     else if (answer.problem) setProblem(answer.problem);
     else onAnswer(answer.data as T);
   }
