@@ -11,12 +11,22 @@ export default defineConfig({
       {
         resolve: { alias },
         test: {
-          name: 'unit',
-          include: ['tests/unit/**/*.test.{ts,tsx}'],
+          name: 'engine',
+          include: ['tests/unit/formability/**/*.test.ts'],
           testTimeout: 120_000,
           maxWorkers: 2,
-          // Modules are loaded once a worker, not once a file: a unit test that changes global state puts it back.
+          // The engine keeps no state: its modules are loaded once a worker, not once a file.
           isolate: false,
+        },
+      },
+      {
+        resolve: { alias },
+        test: {
+          name: 'unit',
+          include: ['tests/unit/**/*.test.{ts,tsx}'],
+          exclude: ['tests/unit/formability/**'],
+          testTimeout: 120_000,
+          maxWorkers: 2,
         },
       },
       {

@@ -58,9 +58,9 @@ const quick = [
   .concat('--exclude', '**/parse/step/**', '--exclude', '**/fuzz.test.ts');
 // Checks and unit tests do not touch one another and run side by side; services and the browser get the machine alone.
 const phases = verifyOnly
-  ? [[...checks, vitest('quick engine tests', 'unit', ...quick)]]
+  ? [[...checks, vitest('quick engine tests', 'engine', ...quick)]]
   : [
-      [...checks, vitest('unit tests', 'unit')],
+      [vitest('engine tests', 'engine'), ...checks, vitest('unit tests', 'unit')],
       [vitest('integration tests', 'integration')],
       [check('production build', build)],
       [vitest('browser tests', 'e2e')],
