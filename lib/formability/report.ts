@@ -12,6 +12,8 @@ import type {
   WallsUnderPressureReport,
   WebReport,
 } from './report-forming';
+import type { SheetReport } from './report-sheet';
+import type { WallsReport, DetailReport, EdgesReport } from './report-walls';
 import type { SheetSurface } from './sheet/sheet-surface';
 
 /** A place in millimetres: x, y in the file's own frame, z above the bed. */
@@ -195,51 +197,6 @@ export interface Spacing {
   between: [Point, Point];
 }
 
-/** Thickness along the surface's normal, of solid parts too; null where nothing bounds it. */
-export interface WallsReport {
-  /** Least thickness of walls (draft below 60°), and where. */
-  minMm: number | null;
-  minAt: Point | null;
-  /** Thickness that 5 % and 50 % of the walls' area lie below. */
-  p05Mm: number | null;
-  medianMm: number | null;
-  /** Least thickness of tops (draft from 60° on) of a hollow part. */
-  topMm: number | null;
-  /** Least thickness between the bed and a sealed cavity. */
-  floorMm: number | null;
-  hollow: boolean;
-  /** A cavity closed all round, or closed by the bed only; vents count as closed. A part may have both. */
-  sealed: boolean;
-  openAtBed: boolean;
-}
-
-/** The finest solid and the finest air between two walls, measured level; null where there is none. */
-export interface DetailReport {
-  smallestFeatureMm: number | null;
-  smallestFeatureAt: Point | null;
-  smallestGapMm: number | null;
-  smallestGapAt: Point | null;
-}
-
-export interface EdgesReport {
-  sharpConvexMm: number;
-  sharpConcaveMm: number;
-  minConvexRadiusMm: number | null;
-  minConcaveRadiusMm: number | null;
-  places: Place[];
-  /** Edges tighter than the sheet wants, the longest first. */
-  lines: EdgeLine[];
-}
-
-/** An edge as a line along it (a rounded one: along its middle); at most 120 lines of at most 64 points. */
-export interface EdgeLine {
-  kind: 'convex' | 'concave';
-  /** 0 where it is sharp. */
-  radiusMm: number;
-  lengthMm: number;
-  points: Point[];
-}
-
 export interface LayersReport {
   cuspMaxMm: number;
   cuspMedianMm: number;
@@ -258,47 +215,6 @@ export interface PrintReport {
   /** With beads whose ends are round: the longest that it should take. */
   timeMostS: number;
   cost: number;
-}
-
-/** A zone of the formed sheet: the part itself, or the foot along the bed. */
-export interface SheetZone {
-  /** Least thickness over a disc of 3 mm, as far as that lies in the zone. */
-  minMm: number;
-  minAt: Point;
-  place: 'flat' | 'wall' | 'inner-corner' | 'pit' | 'web';
-  /** Honest margin of the model at that place. */
-  marginPercent: number;
-  /** Thickness that 5 % of the zone lies below. */
-  q05Mm: number;
-  areaMm2: number;
-  belowLimitAreaMm2: number;
-  /** Change of minMm against a run at half the nodes; above marginPercent the figure is the mesh's as much as the sheet's. */
-  meshErrorPercent: number;
-}
-
-/** The membrane run; null where the sheet was not asked for or could not be formed. */
-export interface SheetReport {
-  /** Anywhere, the foot included; `part` and `foot` tell the two apart. */
-  minMm: number;
-  minAt: Point;
-  meanMm: number;
-  q01Mm: number;
-  q05Mm: number;
-  belowLimitAreaMm2: number;
-  webAreaMm2: number;
-  unclosedAreaMm2: number;
-  volumeErrorPercent: number;
-  nodes: [number, number];
-  steps: number;
-  meshErrorPercent: number;
-  marginPercent: number;
-  converged: boolean;
-  /** All above the foot, and bed level that the template encloses; null where the template is lower than any foot. */
-  part: SheetZone | null;
-  /** Bed level outside: what is trimmed off, unless the flange is kept. */
-  foot: SheetZone | null;
-  /** How high the foot reaches above the bed. */
-  footHeightMm: number;
 }
 
 export interface Advice {
@@ -366,7 +282,7 @@ export interface Check {
   places: Place[];
 }
 
-/** The report of engine.md: a schema-1 document; sections this version cannot compute are null or empty. */
+/** What a run says: a schema-1 document; sections that were not asked for, or cannot be computed, are null or empty. */
 export interface Report {
   schema: 1;
   engine: string;

@@ -22,7 +22,8 @@ import type { Facets } from './mesh/measure-facets';
 import { prepareMesh, type Prepared } from './mesh/prepare-mesh';
 import type { RawMesh } from './parse/raw-mesh';
 import { MM_PER_UNIT, type EffectiveRecipe } from './recipe';
-import type { AirTrap, DetailReport, Point, Spacing } from './report';
+import type { AirTrap, Point, Spacing } from './report';
+import type { DetailReport } from './report-walls';
 import type { Stages } from './stages';
 
 /** Everything that the report is written from, in the mesh's own frame. */

@@ -3,7 +3,6 @@ import type { Rgb } from './cividis';
 /** The paper-and-ink colours of rendered pictures (the light theme's, so that a picture prints as it looks). */
 export const PAPER: Rgb = [0xfe, 0xfd, 0xfa];
 export const INK: Rgb = [0x1d, 0x23, 0x21];
-export const RULE: Rgb = [0xd9, 0xd4, 0xc7];
 export const MADDER: Rgb = [0xa2, 0x35, 0x2b];
 /** Plain template: the lit and the turned-away tone. */
 export const CLAY_LIGHT: Rgb = [0xf1, 0xec, 0xdf];

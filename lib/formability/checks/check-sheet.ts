@@ -1,5 +1,6 @@
 import type { EffectiveRecipe } from '../recipe';
-import type { Basis, Check, CheckStatus, Place, SheetZone } from '../report';
+import type { Basis, Check, CheckStatus, Place } from '../report';
+import type { SheetZone } from '../report-sheet';
 import type { FormedSheet } from '../sheet/form-sheet';
 import { isUsualGauge, type ThinRemedy } from '../sheet/gauge-for';
 import type { FootRemedy, SheetJudgement } from '../sheet/judge-sheet';

@@ -1,8 +1,7 @@
 import { UnionFind } from '../mesh/union-find';
 import { GAP_MM, type Columns } from './columns';
 
-/** Gap states. */
-export const NO_GAP = 0;
+/** Gap states; 0 where there is no gap. */
 export const CONNECTED = 1;
 export const ENCLOSED = 2;
 

@@ -1,6 +1,7 @@
 import type { Edges } from '../mesh/build-edges';
 import type { Mesh } from '../mesh/mesh';
-import type { EdgeLine, Point } from '../report';
+import type { Point } from '../report';
+import type { EdgeLine } from '../report-walls';
 
 const MOST_LINES = 120;
 const MOST_POINTS = 64;

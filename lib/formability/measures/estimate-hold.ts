@@ -3,7 +3,7 @@ import { densityForSpan, infillSpanMm } from '../physics/infill';
 import { modulusAt } from '../physics/modulus-at';
 import { clampedPlate, clampedStrip, ribBucklingMPa, ringCollapseMPa, type Plate } from '../physics/plates';
 import type { EffectiveRecipe } from '../recipe';
-import type { WallsReport } from '../report';
+import type { WallsReport } from '../report-walls';
 import type { HeatReport, WallsUnderPressureReport } from '../report-forming';
 import { hottestC } from './estimate-heat';
 import { CREEP, MPA_PER_BAR, overInfill, POISSON, strengthAt } from './estimate-skin';

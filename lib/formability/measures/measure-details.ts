@@ -1,6 +1,7 @@
 import type { Facets } from '../mesh/measure-facets';
 import type { Mesh } from '../mesh/mesh';
-import type { DetailReport, Point } from '../report';
+import type { Point } from '../report';
+import type { DetailReport } from '../report-walls';
 import type { FacetGrid } from './facet-grid';
 import { RayCaster } from './ray-caster';
 import type { Visibility } from './visibility';

@@ -1,7 +1,7 @@
 import type { Edges } from '../mesh/build-edges';
 import type { Facets } from '../mesh/measure-facets';
 import type { Mesh } from '../mesh/mesh';
-import type { EdgesReport } from '../report';
+import type { EdgesReport } from '../report-walls';
 import { chainEdges, type FoundEdge } from './chain-edges';
 import { FoldWalker } from './fold-walker';
 import type { Visibility } from './visibility';

@@ -1,4 +1,5 @@
-import type { Point, SheetReport, SheetZone } from '../report';
+import type { Point } from '../report';
+import type { SheetReport, SheetZone } from '../report-sheet';
 import { UnusableInput } from '../unusable-input';
 import { drapeAndPress, type Drape } from './drape-and-press';
 import { findFoot, type Foot } from './find-foot';

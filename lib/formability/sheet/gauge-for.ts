@@ -1,4 +1,4 @@
-import type { SheetReport } from '../report';
+import type { SheetReport } from '../report-sheet';
 import { formSheet, type FormedSheet } from './form-sheet';
 import type { SheetInput, SheetOptions } from './sheet-input';
 

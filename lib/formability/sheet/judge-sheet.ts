@@ -1,5 +1,5 @@
 import type { EffectiveRecipe } from '../recipe';
-import type { SheetReport, SheetZone } from '../report';
+import type { SheetReport, SheetZone } from '../report-sheet';
 import type { Part } from '../survey-part';
 import { formSheet, type FormedSheet } from './form-sheet';
 import { gaugeFor, type GaugeRemedy } from './gauge-for';

@@ -1,4 +1,4 @@
-import type { SheetZone } from '../report';
+import type { SheetZone } from '../report-sheet';
 import type { SheetJudgement } from './judge-sheet';
 
 /** A judgement with another gauge: in this model every thickness goes with it. The area below the limit is left as it was. */
