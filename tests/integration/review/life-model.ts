@@ -1,6 +1,6 @@
 import type { Role } from '@/lib/workspaces/roles';
 
-/** What product.md's drawing of a revision's life says, written down a second time, without the product's code. */
+/** The life of a revision, written down a second time, without the product's code. */
 export type State =
   'in_review' | 'returned' | 'withdrawn' | 'approved' | 'released' | 'superseded' | 'recalled' | 'retired';
 

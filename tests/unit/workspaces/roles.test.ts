@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { defaultGatePlan } from '@/lib/workspaces/default-gate-plan';
 import { permits, roles, sideOf, type Permission, type Role } from '@/lib/workspaces/roles';
 
-/** The table of product.md, "Who uses it": who may do what. */
+/** Who may do what, as a table of its own. */
 const allowed: [Permission, Role[]][] = [
   ['workspace.read', ['designer', 'lead', 'producer', 'reviewer', 'approver']],
   ['docket.note', ['designer', 'lead', 'producer', 'reviewer', 'approver']],
