@@ -13,12 +13,14 @@ export async function enterDesk(): Promise<Person> {
   redirect(`/sign-in?next=${encodeURIComponent(path)}`);
 }
 
-/** Turns a verb's `not_found` into the page for it; other errors go to the error page. */
+const nowhere = ['not_found', 'forbidden', 'invalid'];
+
+/** There is no page for what is missing, closed, or asked for by an address that means nothing; else the error page. */
 export async function orNotFound<T>(work: Promise<T>): Promise<T> {
   try {
     return await work;
   } catch (error) {
-    if (error instanceof AppError && (error.code === 'not_found' || error.code === 'forbidden')) notFound();
+    if (error instanceof AppError && nowhere.includes(error.code)) notFound();
     throw error;
   }
 }

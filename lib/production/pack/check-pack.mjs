@@ -51,10 +51,12 @@ async function readSums() {
 }
 
 const sums = await readSums();
+// What file managers leave in a folder that was looked at.
+const leftovers = ['.DS_Store', 'Thumbs.db', 'desktop.ini'];
 const names = await readdir(folder);
 const found = new Map();
 for (const name of names) {
-  if (name === 'SHA256SUMS') continue;
+  if (name === 'SHA256SUMS' || leftovers.includes(name)) continue;
   if (!sums.has(name)) fault(name, 'does not belong to the pack (SHA256SUMS does not name it)');
   else found.set(name, await sumOfFile(name));
 }

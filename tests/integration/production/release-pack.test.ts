@@ -200,7 +200,9 @@ describe('the release pack', () => {
     await writeFile(path.join(folder, 'extra.stl'), 'solid');
     expect((await check()).stdout).toContain('extra.stl: does not belong to the pack');
     await rm(path.join(folder, 'extra.stl'));
+    await writeFile(path.join(folder, '.DS_Store'), '');
     expect((await check()).code).toBe(0);
+    await rm(path.join(folder, '.DS_Store'));
   });
 
   it('holds a certificate that names signers, meanings, times with zone and digest, and the cautions', async () => {

@@ -6,7 +6,7 @@ import { RefreshOnLive } from '@/app/_components/live/refresh-on-live';
 import { PageHeader } from '@/app/_components/page-header';
 import { Paging } from '@/app/_components/paging';
 import { Time } from '@/app/_components/time';
-import { enterWorkspacePage } from '@/app/_frames/enter-page';
+import { enterWorkspacePage, orNotFound } from '@/app/_frames/enter-page';
 import { WorkspaceFrame } from '@/app/_frames/workspace-frame';
 import { listActivity } from '@/lib/review/list-activity';
 import { activityAddress, type ActivityState } from './_components/activity-address';
@@ -23,7 +23,7 @@ export const metadata: Metadata = { title: 'Activity' };
 export default async function ActivityPage({ params, searchParams }: Props) {
   const ctx = await enterWorkspacePage((await params).workspace);
   const { cursor, about, by } = await searchParams;
-  const page = await listActivity(ctx, { cursor, about, by });
+  const page = await orNotFound(listActivity(ctx, { cursor, about, by }));
   const home = `/w/${ctx.workspace.slug}/activity`;
   const state = { about, by } as ActivityState;
   const files = `/api/v1/workspaces/${ctx.workspace.slug}/activity/export`;
