@@ -109,11 +109,11 @@ function messageOf(formed: FormedSheet, part: SheetZone, recipe: EffectiveRecipe
   const { foot } = report;
   const leastMm = part.minMm * (1 - part.marginPercent / 100);
   const parts = [
-    `From ${say(gaugeMm, 2)} mm the part forms to about ${say(part.minMm, 2)} mm at its thinnest, ${PLACES[part.place]}; with the model’s margin of ${part.marginPercent} % it is ${say(leastMm, 2)} mm at least, against ${say(minFormedMm, 2)} mm wanted.`,
+    `From ${say(gaugeMm, 2)} mm the part forms to ${about(part.minMm)} mm at its thinnest, ${PLACES[part.place]}; with the model’s margin of ${part.marginPercent} % it is ${least(leastMm)}, against ${say(minFormedMm, 2)} mm wanted.`,
   ];
   if (foot && foot.minMm < part.minMm)
     parts.push(
-      `The foot, the ${say(report.footHeightMm)} mm along the bed that are usually trimmed off, thins to ${say(foot.minMm, 2)} mm.`,
+      `The foot, the ${say(report.footHeightMm)} mm along the bed that are usually trimmed off, thins to ${thick(foot.minMm)} mm.`,
     );
   const open = openPercent(report, formedAreaMm2);
   if (open >= OPEN_PERCENT)
@@ -128,6 +128,19 @@ function messageOf(formed: FormedSheet, part: SheetZone, recipe: EffectiveRecipe
   if (bridged) parts.push('Beside the undercut the sheet is taken to hang straight down.');
   parts.push('An estimate; prove it with a test pull.');
   return parts.join(' ');
+}
+
+/** What runs say below a hundredth means no more than that. */
+function thick(mm: number): string {
+  return mm < 0.01 ? 'less than 0.01' : say(mm, 2);
+}
+
+function about(mm: number): string {
+  return `${mm < 0.01 ? '' : 'about '}${thick(mm)}`;
+}
+
+function least(mm: number): string {
+  return mm < 0.01 ? 'next to nothing' : `${say(mm, 2)} mm at least`;
 }
 
 function remedyOf({ remedy, neededMm }: SheetJudgement, { marginPercent }: SheetZone): string {
@@ -164,7 +177,7 @@ function footWords({ report }: FormedSheet, remedy: FootRemedy | null, presentMm
   const { radiusMm, triedMm, minMm, runs } = remedy.radius;
   const round =
     radiusMm === null
-      ? `an inside radius there does not do it (${say(triedMm)} mm ${runs > 0 ? 'leave' : 'would leave about'} ${say(minMm, 2)} mm)`
+      ? `an inside radius there does not do it (${say(triedMm)} mm ${runs > 0 ? `leave ${thick(minMm)}` : `would leave ${about(minMm)}`} mm)`
       : `round the foot with ${say(radiusMm)} mm inside (a run with it leaves ${say(minMm, 2)} mm there)`;
   const gauge = isUsualGauge(remedy.gaugeMm, presentMm)
     ? `, or take a gauge of ${say(remedy.gaugeMm, 2)} mm`

@@ -27,8 +27,12 @@ export function readPullLog(given: unknown): LoggedTemplate[] {
       typeof entry === 'object' && entry !== null ? entry : {}
     ) as Partial<LoggedTemplate>;
     if (!Number.isInteger(pulls) || Number(pulls) < 1 || Number(pulls) > MOST_PULLS)
-      return refuse(`entry ${k + 1} has pulls ${JSON.stringify(pulls)}`);
-    if (typeof failed !== 'boolean') return refuse(`entry ${k + 1} has failed ${JSON.stringify(failed)}`);
+      return refuse(`entry ${k + 1} ${told('pulls', pulls)}`);
+    if (typeof failed !== 'boolean') return refuse(`entry ${k + 1} ${told('failed', failed)}`);
     return { pulls: Number(pulls), failed };
   });
+}
+
+function told(field: string, value: unknown): string {
+  return value === undefined ? `has no "${field}"` : `has ${field} ${JSON.stringify(value)}`;
 }

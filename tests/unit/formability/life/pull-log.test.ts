@@ -126,8 +126,8 @@ describe('reading a log', () => {
     ['no list', {}, /not a list/],
     ['none', [], /empty/],
     ['a part of a pull', [{ pulls: 3.5, failed: true }], /entry 1 has pulls 3.5/],
-    ['no verdict', [{ pulls: 3, failed: true }, { pulls: 4 }], /entry 2 has failed undefined/],
-    ['a word', ['12'], /entry 1 has pulls undefined/],
+    ['no verdict', [{ pulls: 3, failed: true }, { pulls: 4 }], /entry 2 has no "failed"/],
+    ['a word', ['12'], /entry 1 has no "pulls"/],
   ])('refuses %s', (_, given, message) => {
     expect(() => readPullLog(given)).toThrow(message);
   });

@@ -117,6 +117,9 @@ describe('the sheet over a surveyed part', () => {
     const foot = (gaugeMm: number) => say({ ...judged, footRemedy: { gaugeMm, radius } }).remedy;
     expect(foot(8)).toContain('or take a gauge of 8 mm.');
     expect(foot(8.05)).toContain('does not do it (8 mm would leave about 0.05 mm), nor does a usual gauge.');
+    const sliver = say(shaken({ part: { ...part, minMm: 0.004 }, foot: { ...part, minMm: 0.002 } })).message;
+    expect(sliver).toContain('forms to less than 0.01 mm at its thinnest');
+    expect(sliver).toMatch(/it is next to nothing, against .* thins to less than 0.01 mm\./);
     // One mesh alone below the limit is no failure; both of them are.
     const thinPart = { ...part, minMm: 0.25, q05Mm: 0.4 };
     expect(say(shaken({ part: { ...thinPart, meshErrorPercent: 50 } })).status).toBe('caution');
