@@ -37,6 +37,7 @@ import { writeSections } from './write-sections';
 export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: AnalyseOptions = {}): Analysis {
   const stages = new Stages(options);
   const effective = fillRecipe(recipe);
+  const log = options.pullLog === undefined ? null : readPullLog(options.pullLog);
   const raw = stages.run('parse', () => {
     const parsed = options.mesh ?? readMesh(bytes);
     if (parsed.unit) effective.mesh.unit = parsed.unit;
@@ -53,7 +54,6 @@ export function analyse(bytes: Uint8Array, recipe: RecipeInput = {}, options: An
           judgeSheet(part, effective, geometric.plan.frameMm, { onProgress, shouldStop: options.shouldStop }),
         )
       : null;
-  const log = options.pullLog === undefined ? null : readPullLog(options.pullLog);
   const physics = options.geometryOnly
     ? null
     : stages.run('physics', () => {

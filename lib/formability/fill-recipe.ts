@@ -25,7 +25,7 @@ export function fillRecipe(given: RecipeInput | unknown): EffectiveRecipe {
     const reasons = parsed.error.issues.map(
       (issue) => `${issue.path.join('.') || 'recipe'}: ${issue.message}`,
     );
-    throw new UnusableInput('invalid_recipe', `the recipe cannot be used: ${reasons.join('; ')}. Correct these fields.`, reasons); // prettier-ignore
+    throw new UnusableInput('invalid_recipe', `the recipe cannot be used: ${reasons.map((one) => one.replace(/\.$/, '')).join('; ')}. Correct these fields.`, reasons); // prettier-ignore
   }
   const input = parsed.data;
   const base = defaultRecipe();

@@ -13,6 +13,13 @@ describe('fillRecipe', () => {
     expect(fillRecipe({ sheet: { formingC: null, gaugeMm: null }, print: null })).toEqual(defaultRecipe());
   });
 
+  it('refuses in one sentence', () => {
+    const refused = refusal(() => fillRecipe({ print: { nozzleMm: 0 }, run: { cycleS: 0 } }));
+    expect(refused.message).toBe(
+      'the recipe cannot be used: print.nozzleMm: At least 0.1 mm; run.cycleS: At least 1 s. Correct these fields.',
+    );
+  });
+
   it('takes forming temperature from the sheet and line width from the nozzle', () => {
     expect(fillRecipe({ sheet: { material: 'abs' } }).sheet.formingC).toBe(151.5);
     expect(fillRecipe({ sheet: { material: 'abs', formingC: 160 } }).sheet.formingC).toBe(160);

@@ -239,7 +239,11 @@ describe('life', () => {
     expect(found).toMatchObject({ basis: 'pull-log', log: { templates: 7, failures: 6 } });
     expect(found?.pulls).toBe(Math.floor(found?.log?.weibull?.b10Pulls ?? 0));
     expect(life({}, [{ pulls: 60, failed: false }])).toMatchObject({ pulls: 26, log: { weibull: null } });
-    expect(() => life({}, 'many')).toThrow(/pull log cannot be used: it is not a list/);
+    // Before the mesh is looked at: nobody waits for a run to learn it.
+    const noMesh = new Uint8Array(0);
+    expect(() => analyse(noMesh, {}, { pullLog: 'many' })).toThrow(
+      /pull log cannot be used: it is not a list/,
+    );
   });
 });
 
