@@ -36,33 +36,31 @@ export function advise(
   const facing = facingAreas(part.facets);
   const { remedy, footRemedy } = input.sheet ?? {};
   const provenMm = remedy?.gaugeMm ?? footRemedy?.gaugeMm;
-  const tried = candidateChanges(input.recipe, input.report, before, provenMm).flatMap(
-    ({ change, text }) => {
-      const recipe = withChange(input.recipe, change);
-      if (!recipe) return [];
-      const changed = judgeAgain(part, input, recipe, { macro, facing, physics });
-      const worse = changed.checks.some(
-        (check) => WEIGHT[check.status] > WEIGHT[before.get(check.id) ?? 'pass'],
-      );
-      const mends = changed.checks
-        .filter((check) => WEIGHT[check.status] < WEIGHT[before.get(check.id) ?? 'pass'])
-        .map((check): CheckId => check.id);
-      if (worse || mends.length === 0) return [];
-      const { print } = input.report;
-      return [
-        {
-          gain: weight - total(changed.checks),
-          advice: {
-            change,
-            mends,
-            costS: changed.report.print.timeS - print.timeS,
-            costG: changed.report.print.massG - print.massG,
-            text,
-          },
+  const tried = candidateChanges(input.recipe, input.report, before, provenMm).flatMap(({ change, text }) => {
+    const recipe = withChange(input.recipe, change);
+    if (!recipe) return [];
+    const changed = judgeAgain(part, input, recipe, { macro, facing, physics });
+    const worse = changed.checks.some(
+      (check) => WEIGHT[check.status] > WEIGHT[before.get(check.id) ?? 'pass'],
+    );
+    const mends = changed.checks
+      .filter((check) => WEIGHT[check.status] < WEIGHT[before.get(check.id) ?? 'pass'])
+      .map((check): CheckId => check.id);
+    if (worse || mends.length === 0) return [];
+    const { print } = input.report;
+    return [
+      {
+        gain: weight - total(changed.checks),
+        advice: {
+          change,
+          mends,
+          costS: changed.report.print.timeS - print.timeS,
+          costG: changed.report.print.massG - print.massG,
+          text,
         },
-      ];
-    },
-  );
+      },
+    ];
+  });
   tried.sort(
     (a, b) => b.gain - a.gain || a.advice.costS - b.advice.costS || (a.advice.text < b.advice.text ? -1 : 1),
   );
@@ -79,7 +77,8 @@ export function advise(
 /** A gauge that mends the sheet was scaled; the best one is proven by a run, unless the check's own remedy was. */
 function formsAsScaled({ sheet, recipe }: CheckInput, { change, mends }: Advice): boolean {
   const gaugeMm = change.sheet?.gaugeMm;
-  if (!gaugeMm || !sheet?.formAt || !mends.includes('sheet') || gaugeMm === sheet.remedy?.gaugeMm) return true;
+  if (!gaugeMm || !sheet?.formAt || !mends.includes('sheet') || gaugeMm === sheet.remedy?.gaugeMm)
+    return true;
   const scaled = scaleSheet(sheet, gaugeMm / recipe.sheet.gaugeMm).formed!.report;
   return judgedZone(sheet.formAt(gaugeMm).report).minMm >= AS_SCALED * judgedZone(scaled).minMm;
 }

@@ -15,8 +15,7 @@ const checks = (ids: unknown) =>
 const verdictOf = ({ verdict }: Detail) => verdictTag[verdict as keyof typeof verdictTag] ?? word(verdict);
 const revision = (d: Detail, at: Place) => `${at.number} revision ${word(d.letter, '?')}`;
 const passed = (d: Detail) => (list(d.gatesPassed) ? `; passed: ${list(d.gatesPassed)}` : '');
-const standingFor = ({ signedFor }: Detail) =>
-  signedFor ? ` for ${word((signedFor as Detail).name)}` : '';
+const standingFor = ({ signedFor }: Detail) => (signedFor ? ` for ${word((signedFor as Detail).name)}` : '');
 const changed = (d: Detail) => {
   const before = d.before as Detail;
   const after = d.after as Detail;

@@ -53,7 +53,9 @@ describe('npm run formability', () => {
   it('refuses a material that the library has not', () => {
     const { status, err } = run(good, '--recipe', file('wood.json', '{"print":{"material":"wood"}}'));
     expect(status).toBe(2);
-    expect(err).toContain('error: invalid_recipe: the recipe cannot be used: print.material: unknown filament "wood"');
+    expect(err).toContain(
+      'error: invalid_recipe: the recipe cannot be used: print.material: unknown filament "wood"',
+    );
   });
 
   it('prints a page to read without it', () => {
