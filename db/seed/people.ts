@@ -67,7 +67,11 @@ async function joinStaff(people: Cast, studioId: string, key: CastName, role: St
   const person = people[key];
   await withTenant(lead, async (tx) => {
     await insertStaff(tx, { id: uuidv7(), studioId, userId: person.id, role });
-    await insertStudioEntry(tx, lead, 'person.joined', { personId: person.id, name: person.name, role });
+    await insertStudioEntry(tx, { ...lead, person }, 'person.joined', {
+      personId: person.id,
+      name: person.name,
+      role,
+    });
   });
 }
 
@@ -76,11 +80,15 @@ async function joinClient(people: Cast, workspaceId: string, key: CastName, role
   const person = people[key];
   await withTenant(lead, async (tx) => {
     await insertMember(tx, { id: uuidv7(), workspaceId, userId: person.id, role });
-    await appendEntry(tx, lead, {
-      action: 'person.joined',
-      subjectKind: 'person',
-      subjectId: person.id,
-      detail: { name: person.name, role },
-    });
+    await appendEntry(
+      tx,
+      { ...lead, person },
+      {
+        action: 'person.joined',
+        subjectKind: 'person',
+        subjectId: person.id,
+        detail: { name: person.name, role },
+      },
+    );
   });
 }

@@ -75,7 +75,9 @@ async function releasedTray(people: Cast, rooms: Rooms): Promise<void> {
   });
   await sign(await who.okafor(), second, people.okafor.password);
   await sign(await who.brandt(), second, people.brandt.password);
-  await releaseRevision(await who.halvorsen(), second, { note: 'One copy, sanded, for 200 pulls.' });
+  await releaseRevision(await who.halvorsen(), second, {
+    note: 'One copy, sanded, for a first run of 50 pulls.',
+  });
 }
 
 async function threadVersion(ctx: Parameters<typeof viewDocket>[0], revisionId: string, threadId: string) {
@@ -136,7 +138,7 @@ async function shellThatWaits(people: Cast, rooms: Rooms): Promise<void> {
   const revision = await post(await who.ferro(), template, {
     file: 'seedling-insert-a.stl',
     bytes: await seedlingInsert({ wallMm: 3.5 }),
-    note: 'Hollow to save filament. Walls of 3.5 mm.',
+    note: 'Hollow to save filament. Will it be stiff enough?',
     recipe: {
       print: { layerMm: 0.12, sanded: true, shellMm: 3.5, topMm: 3.5 },
       sheet: { gaugeMm: 1.2, minFormedMm: 0.2 },

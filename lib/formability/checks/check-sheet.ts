@@ -167,7 +167,9 @@ function openWords({ report, formedAreaMm2, webAt }: FormedSheet, remedy: SheetJ
 function surerWords({ outcome }: FormedSheet, part: SheetZone, nodes: number): string {
   if (outcome === 'converged' && !isMeshLimited(part)) return '';
   const finer =
-    nodes < FINEST_NODES ? ` in a run with grid.sheetNodes of ${Math.min(FINEST_NODES, 2 * nodes)}` : '';
+    nodes < FINEST_NODES
+      ? ` on a finer grid (grid.sheetNodes ${Math.min(FINEST_NODES, 2 * nodes)} on the command line)`
+      : '';
   return `Round that place and form it again${finer}, or measure it on a test pull.`;
 }
 

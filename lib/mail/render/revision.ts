@@ -9,10 +9,10 @@ type Of<T extends MailRequest['template']> = Extract<MailRequest, { template: T 
 
 const openWords = (openItems: number) =>
   openItems === 0
-    ? 'Nothing on its docket is open.'
+    ? 'Nothing on its docket must be settled first.'
     : openItems === 1
-      ? 'One item on its docket is still open.'
-      : `${openItems} items on its docket are still open.`;
+      ? 'One item on its docket must be settled first.'
+      : `${openItems} items on its docket must be settled first.`;
 const due = (on: string | null) => (on ? [{ label: 'Due', value: writtenDay(on) }] : []);
 
 export function gateWaits(request: Of<'gate-waits'>, url: string): MailContent {

@@ -45,10 +45,10 @@ export default async function ActivityPage({ params, searchParams }: Props) {
         actions={
           <>
             <a href={`${files}?format=csv`} download className={buttonClass()}>
-              Save as CSV
+              Save all as CSV
             </a>
             <a href={`${files}?format=json`} download className={buttonClass()}>
-              Save with hashes
+              Save all as JSON
             </a>
           </>
         }

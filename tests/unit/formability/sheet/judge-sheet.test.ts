@@ -111,7 +111,7 @@ describe('the sheet over a surveyed part', () => {
       shaken({ part: { ...part, meshErrorPercent: 60 } }),
     ])
       // prettier-ignore
-      expect(say(unsure).remedy).toContain('in a run with grid.sheetNodes of 64, or measure it');
+      expect(say(unsure).remedy).toContain('on a finer grid (grid.sheetNodes 64 on the command line), or measure it');
     // A foot for which no usual gauge does is told so, not sent for 9 mm of sheet.
     const radius = { radiusMm: null, triedMm: 8, minMm: 0.05, runs: 0 };
     const foot = (gaugeMm: number) => say({ ...judged, footRemedy: { gaugeMm, radius } }).remedy;
