@@ -100,6 +100,29 @@ export async function findReportDigest(tx: TenantTx, workspaceId: string, report
   return row ?? null;
 }
 
+type HelpInReport = {
+  engineVersion: string;
+  advice: { text: string; mends: string[]; costS: number; costG: number }[] | null;
+  life: string | null;
+};
+
+/** What a page says of a report besides its findings; reports of older engines have less. */
+export async function findHelpInReport(
+  tx: TenantTx,
+  workspaceId: string,
+  reportId: string,
+): Promise<HelpInReport | null> {
+  const [row] = await tx
+    .select({
+      engineVersion: reports.engineVersion,
+      advice: sql<HelpInReport['advice']>`${reports.body}->'advice'`,
+      life: sql<string | null>`${reports.body}->'life'->>'text'`,
+    })
+    .from(reports)
+    .where(and(eq(reports.workspaceId, workspaceId), eq(reports.id, reportId)));
+  return row ?? null;
+}
+
 export async function insertFindings(tx: TenantTx, rows: (typeof findings.$inferInsert)[]): Promise<void> {
   if (rows.length) await tx.insert(findings).values(rows);
 }

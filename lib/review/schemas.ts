@@ -324,6 +324,12 @@ export const RevisionView = z.object({
     error: z.string().nullable(),
     finishedAt: instant.nullable(),
     engineVersion: z.string().nullable(),
+    /** The changes of the recipe that buy most, each tried with all checks; costs are of printing. */
+    advice: z
+      .array(z.object({ text: z.string(), mends: z.array(z.string()), costS: z.number(), costG: z.number() }))
+      .optional(),
+    /** What limits the template, in words. */
+    life: z.string().nullable().optional(),
   }),
   model: z
     .object({ url: z.string(), pictureUrl: z.string(), meta: z.record(z.string(), z.unknown()) })

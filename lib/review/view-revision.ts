@@ -2,7 +2,7 @@ import { withTenant, type TenantTx } from '@/db/tenant';
 import { requirePermission, type WorkspaceContext } from '@/lib/auth/context';
 import { latestJobOf } from '@/lib/jobs/jobs-data';
 import { asId } from './as-id';
-import { derivativesOf, findCheckRun, findJob, findReportDigest } from './check-data';
+import { derivativesOf, findCheckRun, findJob, findHelpInReport } from './check-data';
 import { composeContent } from './content';
 import { openMustSettle } from './docket-data';
 import { findLockDigest, gatesOf, signaturesOf } from './gate-data';
@@ -116,7 +116,7 @@ async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRo
 async function checkOf(tx: TenantTx, revision: RevisionRow): Promise<RevisionView['check']> {
   const run = await findCheckRun(tx, revision.workspaceId, revision.id);
   const job = run ? await findJob(tx, revision.workspaceId, run.jobId) : null;
-  const report = run?.reportId ? await findReportDigest(tx, revision.workspaceId, run.reportId) : null;
+  const report = run?.reportId ? await findHelpInReport(tx, revision.workspaceId, run.reportId) : null;
   const done = run?.state === 'finished';
   return {
     state: run?.state ?? 'queued',
@@ -126,6 +126,8 @@ async function checkOf(tx: TenantTx, revision: RevisionRow): Promise<RevisionVie
     error: run?.error ?? null,
     finishedAt: run?.finishedAt?.toISOString() ?? null,
     engineVersion: report?.engineVersion ?? null,
+    advice: (report?.advice ?? []).map(({ text, mends, costS, costG }) => ({ text, mends, costS, costG })),
+    life: report?.life ?? null,
   };
 }
 

@@ -1,7 +1,9 @@
 import { beforeAll, describe, expect, it } from 'vitest';
 import type { WorkspaceContext } from '@/lib/auth/context';
 import { failCheck } from '@/lib/review/record-check';
+import { readReport } from '@/lib/review/read-report';
 import { viewDocket } from '@/lib/review/view-docket';
+import { viewRevision } from '@/lib/review/view-revision';
 import { waiveFinding } from '@/lib/review/waive-finding';
 import { withdrawRevision } from '@/lib/review/withdraw-revision';
 import { freshDatabase, type FreshDatabase } from '@/tests/support/database';
@@ -34,6 +36,15 @@ async function told(template: string, posted: { templateId: string; letter: stri
 }
 
 describe('the end of a check', () => {
+  it('brings onto the page what would help, and what limits the template', async () => {
+    const { revisionId } = await postChecked(house);
+    const { check } = await viewRevision(lead, revisionId);
+    const { body } = await readReport(lead, revisionId);
+    const advice = (body.advice as { text: string }[]).map(({ text }) => text);
+    expect(check.advice?.map(({ text }) => text)).toEqual(advice);
+    expect(check.life).toBe((body.life as { text: string }).text);
+  });
+
   it('mails the poster once when checks fail: which, and the first sentence of each remedy', async () => {
     const posted = await postChecked(house, { statuses: { draft: 'fail', vents: 'fail' } });
     const { people, payloads } = await told('check-fails', posted);

@@ -14,6 +14,7 @@ import type { Point, StageCamera } from '@/app/_components/stage/stage-props';
 import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { StageModelMeta } from '@/lib/stage-model/stage-model-meta';
 import type { DocketView, RevisionView } from '@/lib/review/schemas';
+import { AdvicePanel } from './advice-panel';
 import { CheckPanel } from './check-panel';
 import { Docket } from './docket';
 import { byGroup, docketItems, filterItems, groupOrder, type DocketItem } from './docket-items';
@@ -186,6 +187,7 @@ export function Room({
         <StateBanner revision={revision} />
         <CheckPanel revision={revision} />
         <RecipePanel recipe={revision.recipe} />
+        <AdvicePanel check={revision.check} />
         <div className="grid items-start gap-6 print:block lg:grid-cols-[minmax(0,1fr)_minmax(20rem,27rem)]">
           <div
             id="stage"
