@@ -1,3 +1,4 @@
+import { floodFrom } from '../dexel/flood-from';
 import { cellAt, centreX, centreY, type Grid } from '../dexel/grid';
 import { ringToFoot, webCriterion } from '../physics/web-criterion';
 import type { Point, Spacing } from '../report';
@@ -36,7 +37,8 @@ function aroundNeighbour(surface: Float64Array, grid: Grid, pair: Spacing): WebR
   // Halfway up the lower one, where the two are still apart.
   const level = pair.heightMm / 2;
   const perimeters = pair.between.map(([x, y]) => {
-    const seen = floodAbove(surface, grid, nearestAbove(surface, grid, cellAt(grid, x, y), level), level);
+    const first = nearestAbove(surface, grid, cellAt(grid, x, y), level);
+    const seen = first < 0 ? null : floodFrom(grid, first, (c) => surface[c] > level).seen;
     return seen ? hullPerimeter(grid, (c) => seen[c] === 1) : 0;
   });
   const gap = pair.gapAtBedMm > 0 ? pair.gapAtBedMm : pair.gapMm;
@@ -119,33 +121,4 @@ function nearestAbove(surface: Float64Array, { nx, ny }: Grid, from: number, lev
     }
   }
   return -1;
-}
-
-/** Marks the connected cells above a level (4 neighbours). */
-function floodAbove(
-  surface: Float64Array,
-  { nx, ny }: Grid,
-  first: number,
-  level: number,
-): Uint8Array | null {
-  if (first < 0) return null;
-  const seen = new Uint8Array(nx * ny);
-  const queue = new Int32Array(nx * ny);
-  let end = 1;
-  queue[0] = first;
-  seen[first] = 1;
-  const visit = (c: number) => {
-    if (seen[c] || !(surface[c] > level)) return;
-    seen[c] = 1;
-    queue[end++] = c;
-  };
-  for (let at = 0; at < end; at++) {
-    const c = queue[at];
-    const i = c % nx;
-    if (i > 0) visit(c - 1);
-    if (i + 1 < nx) visit(c + 1);
-    if (c >= nx) visit(c - nx);
-    if (c < nx * (ny - 1)) visit(c + nx);
-  }
-  return seen;
 }

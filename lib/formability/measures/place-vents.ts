@@ -1,3 +1,4 @@
+import { floodFrom } from '../dexel/flood-from';
 import { centreX, centreY, type Grid } from '../dexel/grid';
 
 /** Cells this little above the pit's lowest point belong to its floor, mm. */
@@ -46,27 +47,8 @@ export function placeVents(
 }
 
 function floorCells(surface: Float64Array, grid: Grid, first: number, rim: number): Int32Array {
-  const { nx, ny } = grid;
   const high = Math.min(surface[first] + FLOOR_MM, rim);
-  const seen = new Uint8Array(nx * ny);
-  const cells = new Int32Array(nx * ny);
-  let end = 1;
-  cells[0] = first;
-  seen[first] = 1;
-  const visit = (n: number) => {
-    if (seen[n] || surface[n] > high) return;
-    seen[n] = 1;
-    cells[end++] = n;
-  };
-  for (let at = 0; at < end; at++) {
-    const c = cells[at];
-    const i = c % nx;
-    if (i > 0) visit(c - 1);
-    if (i + 1 < nx) visit(c + 1);
-    if (c >= nx) visit(c - nx);
-    if (c < nx * (ny - 1)) visit(c + nx);
-  }
-  return cells.subarray(0, end);
+  return floodFrom(grid, first, (c) => !(surface[c] > high)).cells;
 }
 
 /** Cells at least `reach` cells inside the floor's rim; the innermost there are where the floor is narrow. */
