@@ -4,7 +4,7 @@ import { DataTable, type Column } from '../data-table';
 import { SectionHead } from '../section-head';
 import { StatusWord } from '../status-word';
 import { Time } from '../time';
-import { CancelInvitation } from './cancel-invitation';
+import { DeleteButton } from '../delete-button';
 import { PersonActions } from './person-actions';
 import { roleWords } from './role-words';
 
@@ -95,7 +95,13 @@ export function OpenInvitations({ invitations, apiPath }: InvitationProps) {
             label: 'Change',
             align: 'end',
             cell: (row) => (
-              <CancelInvitation apiPath={`${apiPath}/invitations/${row.id}`} email={row.email} />
+              <DeleteButton
+                apiPath={`${apiPath}/invitations/${row.id}`}
+                label={`Take back ${row.email}`}
+                done={`The invitation of ${row.email} was taken back; its link no longer works.`}
+              >
+                Take back
+              </DeleteButton>
             ),
           },
         ]}

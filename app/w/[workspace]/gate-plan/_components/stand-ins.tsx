@@ -2,7 +2,7 @@ import { SectionHead } from '@/app/_components/section-head';
 import { StatusWord } from '@/app/_components/status-word';
 import type { StandInsView } from '@/lib/review/stand-in-schemas';
 import { writtenDay } from '@/lib/time/written-day';
-import { EndStandIn } from './end-stand-in';
+import { DeleteButton } from '@/app/_components/delete-button';
 import { NameStandIn, type NameStandInProps } from './name-stand-in';
 
 type Props = StandInsView & {
@@ -34,10 +34,13 @@ export function StandIns({ standIns, today, apiPath, naming }: Props) {
                 </span>
               </p>
               {one.mayEnd ? (
-                <EndStandIn
+                <DeleteButton
                   apiPath={`${apiPath}/stand-ins/${one.id}`}
                   label={`End that ${one.standIn.name} signs for ${one.away.name}`}
-                />
+                  done="It was ended. What was signed meanwhile stays."
+                >
+                  End
+                </DeleteButton>
               ) : null}
             </li>
           ))}
