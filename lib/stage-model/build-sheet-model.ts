@@ -1,6 +1,4 @@
-import { Document, WebIO } from '@gltf-transform/core';
-import { EXTMeshoptCompression, KHRMeshQuantization } from '@gltf-transform/extensions';
-import { MeshoptEncoder } from 'meshoptimizer/encoder';
+import { Document } from '@gltf-transform/core';
 import { binOf } from './map-histogram';
 import {
   LIES_ATTRIBUTE,
@@ -9,6 +7,7 @@ import {
   type FormedSurface,
   type SheetModelMeta,
 } from './sheet-model-meta';
+import { compressGlb } from './compress-glb';
 
 export interface SheetModel {
   /** binary glTF 2.0 with EXT_meshopt_compression and KHR_mesh_quantization */
@@ -25,7 +24,6 @@ const MOST_COUNT = 65535;
  * thickness up by place.
  */
 export async function buildSheetModel(surface: FormedSurface, gaugeMm: number): Promise<SheetModel> {
-  await MeshoptEncoder.ready;
   const { positions, indices, thicknessMm, contact, nodes } = surface;
   const { min, max } = boundsOf(positions);
   const step = Math.max(...max.map((m, a) => m - min[a])) / MOST_COUNT || 1e-6;
@@ -52,15 +50,7 @@ export async function buildSheetModel(surface: FormedSurface, gaugeMm: number): 
   });
   const node = doc.createNode('formed sheet').setMesh(shape).setTranslation(min);
   doc.createScene().addChild(node.setScale([step, step, step]));
-  doc.createExtension(KHRMeshQuantization).setRequired(true);
-  doc
-    .createExtension(EXTMeshoptCompression)
-    .setRequired(true)
-    .setEncoderOptions({ method: EXTMeshoptCompression.EncoderMethod.QUANTIZE });
-  const io = new WebIO()
-    .registerExtensions([EXTMeshoptCompression, KHRMeshQuantization])
-    .registerDependencies({ 'meshopt.encoder': MeshoptEncoder });
-  const glb = await io.writeBinary(doc);
+  const glb = await compressGlb(doc, 'QUANTIZE');
   const meta: SheetModelMeta = {
     schema: 1,
     nodes: [...nodes],

@@ -1,5 +1,4 @@
-import { Document, WebIO, type Accessor } from '@gltf-transform/core';
-import { EXTMeshoptCompression, KHRMeshQuantization } from '@gltf-transform/extensions';
+import { Document, type Accessor } from '@gltf-transform/core';
 import { MeshoptEncoder } from 'meshoptimizer/encoder';
 import { measureDraftArea } from './draft-histogram';
 import { findCreaseEdges } from './find-crease-edges';
@@ -19,6 +18,7 @@ import {
   type StageGeometry,
   type StageModelMeta,
 } from './stage-model-meta';
+import { compressGlb } from './compress-glb';
 
 export interface StageModel {
   /** binary glTF 2.0 with EXT_meshopt_compression and KHR_mesh_quantization */
@@ -114,15 +114,7 @@ async function writeGlb(
   const node = doc.createNode('template').setMesh(shape).setTranslation(mesh.origin);
   node.setScale([mesh.stepMm, mesh.stepMm, mesh.stepMm]);
   doc.createScene().addChild(node);
-  doc.createExtension(KHRMeshQuantization).setRequired(true);
-  doc
-    .createExtension(EXTMeshoptCompression)
-    .setRequired(true)
-    .setEncoderOptions({ method: EXTMeshoptCompression.EncoderMethod.FILTER });
-  const io = new WebIO()
-    .registerExtensions([EXTMeshoptCompression, KHRMeshQuantization])
-    .registerDependencies({ 'meshopt.encoder': MeshoptEncoder });
-  return io.writeBinary(doc);
+  return compressGlb(doc, 'FILTER');
 }
 
 /** Vertices in the order of the reordered index; `remap` holds 0xffffffff for those no triangle uses. */

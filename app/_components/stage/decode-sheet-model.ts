@@ -1,15 +1,7 @@
-import { MeshoptDecoder } from 'meshoptimizer/decoder';
-import {
-  BufferAttribute,
-  BufferGeometry,
-  type Matrix4,
-  Vector3,
-  type InterleavedBufferAttribute,
-  type Mesh,
-} from 'three';
-import { GLTFLoader } from 'three/addons/loaders/GLTFLoader.js';
+import { BufferAttribute, BufferGeometry, type Mesh } from 'three';
 import { LIES_ATTRIBUTE, SHEET_ATTRIBUTE, SHEET_STEP_MM } from '@/lib/stage-model/sheet-model-meta';
 import { FLAG_BED, FLAG_UNDERCUT } from '@/lib/stage-model/stage-model-meta';
+import { moved, openGlb, plain } from './open-glb';
 import { refineSurface, type Surface } from './refine-surface';
 import { elementMm, makeReachSampler, type SampledSheet } from './sheet-reach';
 
@@ -43,13 +35,7 @@ export async function decodeSheetModel(
   nodes: readonly [number, number],
   template: Surface,
 ): Promise<SheetModelData> {
-  await MeshoptDecoder.ready.catch(() => undefined);
-  if (!MeshoptDecoder.supported)
-    throw new Error('This browser does not allow WebAssembly, which the formed sheet needs.');
-  const loader = new GLTFLoader();
-  loader.setMeshoptDecoder(MeshoptDecoder);
-  const { scene } = await loader.parseAsync(glb, '');
-  scene.updateMatrixWorld(true);
+  const scene = await openGlb(glb, 'the formed sheet');
   let mesh: Mesh | undefined;
   scene.traverse((object) => {
     if ((object as Mesh).isMesh) mesh = object as Mesh;
@@ -96,21 +82,4 @@ function normalsOf(positions: Float32Array, index: Uint32Array): Float32Array {
   geometry.setIndex(new BufferAttribute(index, 1));
   geometry.computeVertexNormals();
   return geometry.getAttribute('normal').array as Float32Array;
-}
-
-/** The node's scale and place turn grid counts into mm. */
-function moved(points: Float32Array, matrix: Matrix4): Float32Array {
-  const point = new Vector3();
-  for (let i = 0; i < points.length; i += 3)
-    point.fromArray(points, i).applyMatrix4(matrix).toArray(points, i);
-  return points;
-}
-
-/** Tightly packed floats of an attribute that may be quantised and strided. */
-function plain(attribute: BufferAttribute | InterleavedBufferAttribute, size: 1 | 3): Float32Array {
-  const out = new Float32Array(attribute.count * size);
-  for (let i = 0; i < attribute.count; i++) {
-    for (let c = 0; c < size; c++) out[i * size + c] = attribute.getComponent(i, c);
-  }
-  return out;
 }

@@ -1,12 +1,4 @@
-import { MeshoptDecoder } from 'meshoptimizer/decoder';
-import {
-  BufferAttribute,
-  BufferGeometry,
-  type InterleavedBufferAttribute,
-  type Matrix4,
-  type Object3D,
-} from 'three';
-import { GLTFLoader } from 'three/addons/loaders/GLTFLoader.js';
+import { BufferAttribute, BufferGeometry, type Object3D } from 'three';
 import { MeshBVH, type SerializedBVH } from 'three-mesh-bvh';
 import {
   COARSE_ROLE,
@@ -18,6 +10,7 @@ import {
   TRAP_NONE,
   WALL_ATTRIBUTE,
 } from '@/lib/stage-model/stage-model-meta';
+import { moved, openGlb, plain } from './open-glb';
 
 /** A stage model ready to draw, cut and pick; plain arrays, so that a worker can hand it over. */
 export interface StageModelData {
@@ -52,13 +45,7 @@ export async function fetchStageModel(url: string): Promise<StageModelData> {
 
 /** Throws when the bytes are not a stage model. */
 export async function decodeStageModel(glb: ArrayBuffer): Promise<StageModelData> {
-  await MeshoptDecoder.ready.catch(() => undefined);
-  if (!MeshoptDecoder.supported)
-    throw new Error('This browser does not allow WebAssembly, which the model needs.');
-  const loader = new GLTFLoader();
-  loader.setMeshoptDecoder(MeshoptDecoder);
-  const { scene } = await loader.parseAsync(glb, '');
-  scene.updateMatrixWorld(true);
+  const scene = await openGlb(glb, 'the model');
   const found: { surface?: Drawn; coarse?: Drawn; ink?: Drawn } = {};
   scene.traverse((object) => {
     if ((object as { isLineSegments?: boolean }).isLineSegments) found.ink = object as Drawn;
@@ -104,22 +91,4 @@ function withTree(model: Omit<StageModelData, 'tree'>): StageModelData {
 function lengths(geometry: BufferGeometry, name: string): Float32Array | null {
   const attribute = geometry.getAttribute(name.toLowerCase());
   return attribute ? plain(attribute, 1).map((v) => v * MAP_STEP_MM) : null;
-}
-
-/** Tightly packed floats of an attribute that may be quantised and strided. */
-function plain(attribute: BufferAttribute | InterleavedBufferAttribute, size: 1 | 3): Float32Array {
-  const out = new Float32Array(attribute.count * size);
-  for (let i = 0; i < attribute.count; i++) {
-    for (let c = 0; c < size; c++) out[i * size + c] = attribute.getComponent(i, c);
-  }
-  return out;
-}
-
-/** The node's scale and place turn grid counts into mm. */
-function moved(points: Float32Array, { elements: m }: Matrix4): Float32Array {
-  for (let i = 0; i < points.length; i += 3) {
-    const [x, y, z] = [points[i], points[i + 1], points[i + 2]];
-    for (let a = 0; a < 3; a++) points[i + a] = m[a] * x + m[4 + a] * y + m[8 + a] * z + m[12 + a];
-  }
-  return points;
 }

@@ -5,7 +5,7 @@ import type { Surface } from './refine-surface';
 self.onmessage = async ({ data }: MessageEvent<SheetRequest>) => {
   try {
     const sheet = await fetchSheetModel(data.url, data.nodes, data.template);
-    self.postMessage({ sheet }, { transfer: sheetTransferables(sheet) });
+    self.postMessage({ made: sheet }, { transfer: sheetTransferables(sheet) });
   } catch (error) {
     self.postMessage({ problem: error instanceof Error ? error.message : String(error) });
   }

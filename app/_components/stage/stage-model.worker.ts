@@ -4,7 +4,7 @@ import { fetchStageModel, transferables } from './decode-stage-model';
 self.onmessage = async ({ data: url }: MessageEvent<string>) => {
   try {
     const model = await fetchStageModel(url);
-    self.postMessage({ model }, { transfer: transferables(model) });
+    self.postMessage({ made: model }, { transfer: transferables(model) });
   } catch (error) {
     self.postMessage({ problem: error instanceof Error ? error.message : String(error) });
   }

@@ -4,38 +4,22 @@ import { useEffect, useState } from 'react';
 import type { SheetModelMeta } from '@/lib/stage-model/sheet-model-meta';
 import type { SheetModelData } from './decode-sheet-model';
 import type { StageModelData } from './decode-stage-model';
-import { stageModelKey } from './load-stage-model';
+import { addressKey, inWorker, loadOnce } from './load-once';
 import type { SheetRequest } from './sheet-model.worker';
 
 const sheets = new Map<string, Promise<SheetModelData>>();
 
 /** Fetched and laid over the template once per address, off the main thread where the browser allows it. */
 function loadSheet(request: SheetRequest): Promise<SheetModelData> {
-  const key = stageModelKey(request.url);
-  const known = sheets.get(key);
-  if (known) return known;
-  const absolute = { ...request, url: new URL(request.url, document.baseURI).href };
-  const sheet = inWorker(absolute).catch(async () => {
-    const { fetchSheetModel } = await import('./decode-sheet-model');
-    return fetchSheetModel(absolute.url, absolute.nodes, absolute.template);
-  });
-  sheets.set(key, sheet);
-  sheet.catch(() => sheets.delete(key));
-  if (sheets.size > 3) sheets.delete(sheets.keys().next().value!);
-  return sheet;
-}
-
-function inWorker(request: SheetRequest): Promise<SheetModelData> {
-  return new Promise((resolve, reject) => {
-    const worker = new Worker(new URL('./sheet-model.worker.ts', import.meta.url), { type: 'module' });
-    const done = (act: () => void) => {
-      worker.terminate();
-      act();
-    };
-    worker.onmessage = ({ data }: MessageEvent<{ sheet?: SheetModelData; problem?: string }>) =>
-      done(() => (data.sheet ? resolve(data.sheet) : reject(new Error(data.problem))));
-    worker.onerror = () => done(() => reject(new Error('The sheet could not be read in the background.')));
-    worker.postMessage(request);
+  return loadOnce(sheets, request.url, () => {
+    const absolute = { ...request, url: new URL(request.url, document.baseURI).href };
+    const start = () => new Worker(new URL('./sheet-model.worker.ts', import.meta.url), { type: 'module' });
+    return inWorker<SheetModelData>(start, absolute, 'The sheet could not be read in the background.').catch(
+      async () => {
+        const { fetchSheetModel } = await import('./decode-sheet-model');
+        return fetchSheetModel(absolute.url, absolute.nodes, absolute.template);
+      },
+    );
   });
 }
 
@@ -48,7 +32,7 @@ export function useSheetModel(
     null,
   );
   const url = sheet?.url ?? null;
-  const key = url && stageModelKey(url);
+  const key = url && addressKey(url);
   const nodes = sheet?.meta.nodes.join() ?? '';
   useEffect(() => {
     if (!url || !key || !model) return undefined;

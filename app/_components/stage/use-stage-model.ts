@@ -2,7 +2,8 @@
 
 import { useEffect, useRef, useState } from 'react';
 import type { StageModelData } from './decode-stage-model';
-import { loadStageModel, stageModelKey } from './load-stage-model';
+import { addressKey } from './load-once';
+import { loadStageModel } from './load-stage-model';
 
 /** The decoded model of an address, or why there is none; both null while it is on its way. `attempt` asks anew. */
 export function useStageModel(
@@ -12,7 +13,7 @@ export function useStageModel(
   const [loaded, setLoaded] = useState<{ key: string; model?: StageModelData; problem?: string } | null>(
     null,
   );
-  const key = stageModelKey(url);
+  const key = addressKey(url);
   const address = useRef(url);
   useEffect(() => {
     address.current = url;

@@ -2,7 +2,7 @@ import { renderToStaticMarkup } from 'react-dom/server';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { DraftLegend, wallAreas } from '@/app/_components/stage/draft-legend';
 import { formatArea, formatShare } from '@/app/_components/stage/format-area';
-import { stageModelKey } from '@/app/_components/stage/load-stage-model';
+import { addressKey } from '@/app/_components/stage/load-once';
 import { Stage } from '@/app/_components/stage/stage';
 import { StageFallback } from '@/app/_components/stage/stage-fallback';
 import type { StagePin } from '@/app/_components/stage/stage-props';
@@ -130,10 +130,10 @@ describe('areas and shares', () => {
   ])('%d of %d is %s', (part, whole, text) => expect(formatShare(part, whole)).toBe(text));
 });
 
-describe('stageModelKey', () => {
+describe('addressKey', () => {
   it('sees through a new signature on the same object, and through nothing else', () => {
     const signed = (s: string) => `https://store.example/b/m.glb?X-Amz-Date=${s}&X-Amz-Signature=${s}`;
-    expect(stageModelKey(signed('1'))).toBe(stageModelKey(signed('2')));
-    expect(stageModelKey('/api/v1/model?revision=a')).not.toBe(stageModelKey('/api/v1/model?revision=b'));
+    expect(addressKey(signed('1'))).toBe(addressKey(signed('2')));
+    expect(addressKey('/api/v1/model?revision=a')).not.toBe(addressKey('/api/v1/model?revision=b'));
   });
 });
