@@ -3,32 +3,15 @@ import { workspaceIdOf, type JobContext, type WorkspaceContext } from '@/lib/aut
 import { appendEntry } from '@/lib/audit/append-entry';
 import { openMustSettle } from './docket-data';
 import { conditionsHold } from './gate-conditions';
-import { changeGate, gatesOf, signaturesOf, type GateRow, type SignatureRow } from './gate-data';
+import { changeGate, gatesOf, type GateRow } from './gate-data';
+import type { GatesAt } from './gate-view';
 import { lockContent } from './lock-content';
 import { mayPass } from './may-pass';
-import { workspacePeople } from './people-data';
 import { mailAbout, tellToday } from './revision-mails';
 import { loadRevisionParts, type RevisionRow, type TemplateRow } from './revision-data';
-import { activeStandIns } from './stand-in-data';
+import { signersOf } from './signers-of';
 import { tellShort } from './tell-short';
-import { askedAt, isShort, makersOf, quorumReached, whoMaySign, type GateAt } from './who-signs';
-
-/** A gate of a revision with the people of this moment. */
-export async function gateAt(
-  tx: TenantTx,
-  revision: RevisionRow,
-  gate: GateRow,
-): Promise<GateAt & { signed: SignatureRow[] }> {
-  const { workspaceId } = revision;
-  const { mesh } = await loadRevisionParts(tx, revision);
-  return {
-    gate,
-    makers: makersOf(revision, mesh),
-    people: await workspacePeople(tx, workspaceId),
-    standIns: await activeStandIns(tx, workspaceId),
-    signed: await signaturesOf(tx, workspaceId, revision.id),
-  };
-}
+import { askedAt, isShort, quorumReached, whoMaySign, type GateAt } from './who-signs';
 
 /**
  * Lets a revision in review go as far along its gates as it can: opens the next gate, passes an automatic one
@@ -43,6 +26,7 @@ export async function advanceGates(
 ): Promise<GateRow[]> {
   const workspaceId = workspaceIdOf(ctx);
   const passed: GateRow[] = [];
+  let shared: GatesAt | null = null;
   const all = await gatesOf(tx, workspaceId, revision.id, { lock: true });
   for (const gate of all) {
     if (gate.state === 'passed') continue;
@@ -53,19 +37,20 @@ export async function advanceGates(
       passed.push(await changeGate(tx, opened, 'passed'));
       continue;
     }
-    const at = await gateAt(tx, revision, opened);
+    shared ??= await signersOf(tx, revision, (await loadRevisionParts(tx, revision)).mesh);
+    const at = { ...shared, gate: opened };
     if (quorumReached(at)) {
       const isLast = gate === all.at(-1);
       if (!(await mayPass(tx, revision, at.signed, isLast))) {
-        if (isLast) await tellShort(tx, ctx, template, revision, { ...at, gate: opened });
+        if (isLast) await tellShort(tx, ctx, template, revision, at);
         return passed;
       }
       passed.push(await changeGate(tx, opened, 'passed'));
       if (gate.rule.quorum === 'all') await recordEverybody(tx, ctx, template, revision, at);
       continue;
     }
-    if (gate.state === 'waiting') await tellAwaited(tx, ctx, template, revision, { ...at, gate: opened });
-    if (isShort(at)) await tellShort(tx, ctx, template, revision, { ...at, gate: opened });
+    if (gate.state === 'waiting') await tellAwaited(tx, ctx, template, revision, at);
+    if (isShort(at)) await tellShort(tx, ctx, template, revision, at);
     return passed;
   }
   if (all.length) await lockContent(tx, ctx, revision);

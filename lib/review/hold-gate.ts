@@ -3,11 +3,12 @@ import type { WorkspaceContext } from '@/lib/auth/context';
 import { AppError, conflict, forbidden, notFound } from '@/lib/errors/app-error';
 import { composeContent, type Content } from './content';
 import { firstNotes, openMustSettle } from './docket-data';
-import { findGate, gatesOf, signaturesOf, type GateRow } from './gate-data';
-import { holdRole, workspacePeople, type WorkspacePerson } from './people-data';
+import { findGate, gatesOf, type GateRow } from './gate-data';
+import { holdRole, type WorkspacePerson } from './people-data';
 import { loadRevisionParts, lockRevision, type RevisionRow, type TemplateRow } from './revision-data';
+import { signersOf } from './signers-of';
 import { activeStandIns } from './stand-in-data';
-import { asks, makersOf, rightAt, type GateAt } from './who-signs';
+import { asks, rightAt, type GateAt } from './who-signs';
 
 export type HeldGate = {
   template: TemplateRow;
@@ -70,14 +71,7 @@ async function holdSigners(tx: TenantTx, ctx: WorkspaceContext, revision: Revisi
   for (const { personId, standInId } of standIns)
     if (standInId === ctx.person.id) await holdRole(tx, workspaceId, personId);
   const { mesh } = await loadRevisionParts(tx, revision);
-  const at: GateAt = {
-    gate,
-    makers: makersOf(revision, mesh),
-    people: await workspacePeople(tx, workspaceId),
-    standIns,
-    signed: await signaturesOf(tx, workspaceId, revision.id),
-  };
-  return { role: role ?? 'none', at };
+  return { role: role ?? 'none', at: { ...(await signersOf(tx, revision, mesh, standIns)), gate } };
 }
 
 /** Whom the person stands for, null for nobody but themselves. Throws what keeps them from deciding. */

@@ -10,7 +10,7 @@ import { lockRevision, type RevisionRow } from './revision-data';
 import { mailAbout } from './revision-mails';
 import { activeStandIns } from './stand-in-data';
 import { tellSigned } from './tell-signed';
-import { isShort, quorumReached, rightAt, type GateAt } from './who-signs';
+import { isShort, makersOf, quorumReached, rightAt, type GateAt } from './who-signs';
 
 /**
  * Looks after the open gates of a workspace when no command does: one passes when those whose names were missing have
@@ -27,7 +27,7 @@ export async function lookAfterGates(ctx: JobContext, now = new Date()): Promise
     const stuck: RevisionRow[] = [];
     for (const row of open) {
       const signed = await signaturesOf(tx, workspaceId, row.revision.id);
-      const makers = [row.revision.authorId, row.meshBy];
+      const makers = makersOf(row.revision, { createdBy: row.meshBy });
       const at = { gate: row.gate, makers, people, standIns, signed };
       if (quorumReached(at) || isShort(at)) stuck.push(row.revision);
       else await remind(tx, ctx, row, at, now);
@@ -65,11 +65,12 @@ async function remind(
 ): Promise<void> {
   const { dueOn, openedAt } = gate;
   if (!dueOn || !openedAt) return;
+  let openItems: number | null = null;
   for (const person of at.people) {
     const right = rightAt(at, person);
     const when = right && reminderDue({ dueOn, openedAt }, person.timeZone, now);
     if (!when) continue;
-    const openItems = (await openMustSettle(tx, revision.workspaceId, revision.id)).length;
+    const items = (openItems ??= (await openMustSettle(tx, revision.workspaceId, revision.id)).length);
     const about = { template, revision, occasion: `gate-due:${gate.id}:${when}` };
     await mailAbout(tx, ctx, [person], about, (base) => ({
       template: 'gate-due',
@@ -77,7 +78,7 @@ async function remind(
       gateName: gate.rule.name,
       dueOn,
       when,
-      openItems,
+      openItems: items,
       standsFor: right.standsFor?.name ?? null,
     }));
   }

@@ -5,9 +5,8 @@ import { asId } from './as-id';
 import { derivativesOf, findCheckRun, findJob, findHelpInReport } from './check-data';
 import { composeContent } from './content';
 import { openMustSettle } from './docket-data';
-import { findLockDigest, gatesOf, signaturesOf } from './gate-data';
+import { findLockDigest, gatesOf } from './gate-data';
 import { gateViews } from './gate-view';
-import { workspacePeople } from './people-data';
 import { releaseOf } from './release-data';
 import {
   findRevision,
@@ -17,10 +16,9 @@ import {
   type RevisionRow,
 } from './revision-data';
 import type { RevisionView } from './schemas';
-import { activeStandIns } from './stand-in-data';
+import { signersOf } from './signers-of';
 import { fileUrl } from './template-summary';
 import { whatReaderMayDo } from './what-reader-may-do';
-import { makersOf } from './who-signs';
 
 /** A revision as its page shows it, with what the reader may do here and now. */
 export async function viewRevision(ctx: WorkspaceContext, revisionId: string): Promise<RevisionView> {
@@ -47,12 +45,7 @@ async function compose(tx: TenantTx, ctx: WorkspaceContext, revision: RevisionRo
   const { template, mesh, recipe } = await loadRevisionParts(tx, revision);
   const lock = await findLockDigest(tx, workspaceId, revision.id);
   const gates = await gatesOf(tx, workspaceId, revision.id);
-  const shared = {
-    makers: makersOf(revision, mesh),
-    people: await workspacePeople(tx, workspaceId),
-    standIns: await activeStandIns(tx, workspaceId),
-    signed: await signaturesOf(tx, workspaceId, revision.id),
-  };
+  const shared = await signersOf(tx, revision, mesh);
   const release = await releaseOf(tx, workspaceId, revision.id);
   const packJob = release
     ? await latestJobOf(tx, { workspaceId, kind: 'build-pack', subjectId: release.release.id })
