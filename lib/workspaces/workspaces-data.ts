@@ -74,6 +74,9 @@ export async function lockWorkspace(tx: TenantTx, workspaceId: string): Promise<
     .for('no key update');
 }
 
+/** An invitation that was neither answered nor taken back, and has not run out. */
+const mayStillJoin = and(eq(invitations.status, 'pending'), sql`${invitations.expiresAt} > now()`);
+
 /** Clients who are invited and may still come, by role. */
 export async function countInvited(
   tx: TenantTx,
@@ -82,13 +85,7 @@ export async function countInvited(
   const rows = await tx
     .select({ role: invitations.role, n: count() })
     .from(invitations)
-    .where(
-      and(
-        eq(invitations.workspaceId, workspaceId),
-        eq(invitations.status, 'pending'),
-        sql`${invitations.expiresAt} > now()`,
-      ),
-    )
+    .where(and(eq(invitations.workspaceId, workspaceId), mayStillJoin))
     .groupBy(invitations.role);
   return Object.fromEntries(rows.map(({ role, n }) => [role, n]));
 }
@@ -110,13 +107,7 @@ export async function listStudioWorkspaces(tx: TenantTx, studioId: string) {
   const pending = await tx
     .select({ id: invitations.workspaceId, n: count() })
     .from(invitations)
-    .where(
-      and(
-        inArray(invitations.workspaceId, ids),
-        eq(invitations.status, 'pending'),
-        sql`${invitations.expiresAt} > now()`,
-      ),
-    )
+    .where(and(inArray(invitations.workspaceId, ids), mayStillJoin))
     .groupBy(invitations.workspaceId);
   const of = (counts: { id: string; n: number }[], id: string) => counts.find((c) => c.id === id)?.n ?? 0;
   return rows.map((row) => ({ ...row, clients: of(clients, row.id), pending: of(pending, row.id) }));
