@@ -1,11 +1,9 @@
-import { verifyPassword } from 'better-auth/crypto';
-import { and, eq } from 'drizzle-orm';
-import { authDatabase } from '@/db/client';
-import { accounts } from '@/db/schema/identity';
 import { AppError, forbidden } from '@/lib/errors/app-error';
-import { codeKey, confirmBudget, confirmKey, forgetTries, spendTry } from './attempts-data';
+import { confirmBudget, confirmKey, forgetTries, spendTry } from './attempts-data';
 import type { Person } from './context';
-import { readSecondFactor, takeCode } from './second-factor-data';
+import { isPassword } from './is-password';
+import { readSecondFactor } from './second-factor-data';
+import { tryCode } from './try-code';
 import { waitWords } from './wait-words';
 
 /**
@@ -27,12 +25,8 @@ export async function confirmPassword(
       `Too many wrong passwords. Wait ${waitWords(retryAfterS)} and try again.`,
       { retryAfterS },
     );
-  const [account] = await authDatabase()
-    .select({ password: accounts.password })
-    .from(accounts)
-    .where(and(eq(accounts.userId, person.id), eq(accounts.providerId, 'credential')));
-  const right = account?.password ? await verifyPassword({ hash: account.password, password }) : false;
-  if (!right) throw forbidden('That is not your password. Nothing was signed.', 'wrong-password');
+  if (!(await isPassword(person.id, password)))
+    throw forbidden('That is not your password. Nothing was signed.', 'wrong-password');
   const { on } = await readSecondFactor(person.id);
   if (on) await confirmCode(person, code);
   await forgetTries(confirmKey(person.id));
@@ -45,20 +39,18 @@ async function confirmCode(person: Person, code: string | undefined): Promise<vo
       'Your second factor is on: give the code that your authenticator shows. Nothing was signed.',
       'code-needed',
     );
-  const retryAfterS = await spendTry(codeKey(person.id), confirmBudget);
-  if (retryAfterS > 0)
+  const tried = await tryCode(person.id, code);
+  if (typeof tried === 'object')
     throw new AppError(
       'limit_exceeded',
-      `Too many wrong codes. Wait ${waitWords(retryAfterS)} and try again.`,
-      { retryAfterS },
+      `Too many wrong codes. Wait ${waitWords(tried.waitS)} and try again.`,
+      { retryAfterS: tried.waitS },
     );
-  const taken = await takeCode(person.id, code);
-  if (taken === 'used')
+  if (tried === 'used')
     throw forbidden('This code was used already. Wait for the next one. Nothing was signed.', 'wrong-code');
-  if (taken === 'wrong')
+  if (tried === 'wrong')
     throw forbidden(
       'That is not the code that your authenticator shows now. Nothing was signed.',
       'wrong-code',
     );
-  await forgetTries(codeKey(person.id));
 }

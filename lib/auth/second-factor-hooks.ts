@@ -1,12 +1,12 @@
 import type { GenericEndpointContext } from '@better-auth/core';
 import { APIError, getSessionFromCtx } from 'better-auth/api';
-import { verifyPassword } from 'better-auth/crypto';
 import { z } from 'zod';
 import { endSessionSockets } from '@/lib/workspaces/end-person-sockets';
-import { codeKey, confirmBudget, forgetTries, spendTry } from './attempts-data';
-import { findOwner, queueIdentityMail } from './auth-data';
+import { queueIdentityMail } from './auth-data';
+import { isPassword } from './is-password';
 import { hashRecoveryCode } from './recovery-codes';
-import { endOtherSessions, isRecoveryCode, readSecondFactor, takeCode } from './second-factor-data';
+import { endOtherSessions, readSecondFactor, takeCode } from './second-factor-data';
+import { tryCode } from './try-code';
 import { waitWords } from './wait-words';
 
 const Password = z.strictObject({ password: z.string().max(256) });
@@ -55,7 +55,7 @@ export async function beforeSecondFactor(ctx: GenericEndpointContext) {
   const { password, code = '' } = given.data;
   const session = await getSessionFromCtx(ctx);
   if (!ctx.path.startsWith('/two-factor/verify-')) {
-    if (shape === Both && session) await proveFactor(session.user, password ?? '', given.data.code);
+    if (shape === Both && session) await proveFactor(session.user.id, password ?? '', given.data.code);
     return { context: { body: { password } } };
   }
   // Who is signed in has nothing to prove here, except the code that ends setting up.
@@ -91,24 +91,21 @@ const refuse = {
  * Where a second factor is on, it ends and its recovery codes change only with a code of it, or a recovery code. A wrong
  * password goes on to the service, which refuses it, before any code is marked as used.
  */
-async function proveFactor({ id, email }: Asked['user'], password: string, code?: string): Promise<void> {
+async function proveFactor(id: string, password: string, code?: string): Promise<void> {
   if (!(await readSecondFactor(id)).on) return;
-  const owner = await findOwner(email);
-  if (!owner || !(await verifyPassword({ hash: owner.passwordHash, password }))) return;
+  if (!(await isPassword(id, password))) return;
   if (!code?.trim()) throw refuse.missing();
-  const wait = await spendTry(codeKey(id), confirmBudget);
-  if (wait > 0)
+  const tried = await tryCode(id, code.replace(/\s/g, ''), true);
+  if (typeof tried === 'object')
     throw new APIError(
       'TOO_MANY_REQUESTS',
-      { code: 'TOO_MANY_ATTEMPTS', message: `Too many wrong codes. Wait ${waitWords(wait)} and try again.` },
-      { 'retry-after': String(wait) },
+      {
+        code: 'TOO_MANY_ATTEMPTS',
+        message: `Too many wrong codes. Wait ${waitWords(tried.waitS)} and try again.`,
+      },
+      { 'retry-after': String(tried.waitS) },
     );
-  const digits = code.replace(/\s/g, '');
-  if (/^\d{6}$/.test(digits)) {
-    const taken = await takeCode(id, digits);
-    if (taken !== 'taken') throw refuse[taken]();
-  } else if (!(await isRecoveryCode(id, code))) throw refuse.wrong();
-  await forgetTries(codeKey(id));
+  if (tried !== 'taken') throw refuse[tried]();
 }
 
 /** After the service has done it: sessions of before end with a new second factor, and the person is told. */
